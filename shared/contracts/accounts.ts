@@ -1,0 +1,104 @@
+/** Sign-in, the first admin, invitations, password reset, members. */
+import { z } from 'zod';
+import { idSchema, isoTimeSchema, nameSchema } from './common';
+import { roleSchema } from './roles';
+
+export const emailSchema = z
+  .string()
+  .trim()
+  .toLowerCase()
+  .max(254)
+  .pipe(z.email('Write an e-mail address like name@example.org.'));
+export const passwordSchema = z
+  .string()
+  .min(10, 'At least 10 characters.')
+  .max(200, 'At most 200 characters.');
+
+export const signInSchema = z.object({
+  email: emailSchema,
+  password: z.string().min(1, 'Enter the password.').max(200),
+});
+export type SignIn = z.infer<typeof signInSchema>;
+
+/** Makes the first admin and workspace; answered 409 once anybody exists. */
+export const firstAdminSchema = z.object({
+  email: emailSchema,
+  password: passwordSchema,
+  name: nameSchema,
+  workspaceName: nameSchema,
+});
+export type FirstAdmin = z.infer<typeof firstAdminSchema>;
+
+/** GET /installation: what the sign-in page must know before anybody signs in. */
+export const installationSchema = z.object({
+  needsFirstAdmin: z.boolean(),
+  demo: z.boolean().describe('The seeded demo is present.'),
+  demoPeople: z.array(
+    z.object({ email: z.string(), name: z.string(), role: roleSchema, password: z.string() }),
+  ),
+  mailSink: z.boolean().describe('Mail goes to the local sink; an admin reads it in the app.'),
+});
+export type Installation = z.infer<typeof installationSchema>;
+
+export const meSchema = z.object({
+  user: z.object({ id: idSchema, email: z.string(), name: z.string() }),
+  workspaces: z.array(z.object({ id: idSchema, name: z.string(), role: roleSchema })),
+});
+export type Me = z.infer<typeof meSchema>;
+
+export const resetRequestSchema = z.object({ email: emailSchema });
+export const resetSchema = z.object({ token: z.string().min(20).max(200), password: passwordSchema });
+export type PasswordReset = z.infer<typeof resetSchema>;
+
+export const invitationCreateSchema = z.object({ email: emailSchema, role: roleSchema });
+export type InvitationCreate = z.infer<typeof invitationCreateSchema>;
+export const invitationSchema = z.object({
+  id: idSchema,
+  email: z.string(),
+  role: roleSchema,
+  invitedBy: z.string(),
+  createdAt: isoTimeSchema,
+  expiresAt: isoTimeSchema,
+});
+export type Invitation = z.infer<typeof invitationSchema>;
+/** GET /invitations/:token (no sign-in): whose invitation this is. */
+export const invitationPreviewSchema = z.object({
+  email: z.string(),
+  role: roleSchema,
+  workspaceName: z.string(),
+  hasAccount: z.boolean(),
+});
+export type InvitationPreview = z.infer<typeof invitationPreviewSchema>;
+/** POST /invitations/:token/accept. A person who already has an account gives its password. */
+export const invitationAcceptSchema = z.object({ name: nameSchema.optional(), password: passwordSchema });
+export type InvitationAccept = z.infer<typeof invitationAcceptSchema>;
+
+export const memberSchema = z.object({
+  userId: idSchema,
+  name: z.string(),
+  email: z.string(),
+  role: roleSchema,
+  joinedAt: isoTimeSchema,
+});
+export type Member = z.infer<typeof memberSchema>;
+export const memberPatchSchema = z.object({ role: roleSchema });
+
+/** A message held by the local mail sink (GET /mail, admins only). */
+export const sinkMessageSchema = z.object({
+  id: idSchema,
+  to: z.string(),
+  subject: z.string(),
+  text: z.string(),
+  sentAt: isoTimeSchema,
+});
+export type SinkMessage = z.infer<typeof sinkMessageSchema>;
+
+export const auditEntrySchema = z.object({
+  id: idSchema,
+  at: isoTimeSchema,
+  actor: z.string(),
+  action: z.string(),
+  subject: z.string(),
+  detail: z.record(z.string(), z.unknown()),
+});
+export type AuditEntry = z.infer<typeof auditEntrySchema>;

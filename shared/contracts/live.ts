@@ -1,0 +1,29 @@
+/** The socket.io namespace of live runs. */
+import type { RunState, RunSummary } from './runs';
+
+export const LIVE_NAMESPACE = '/live';
+
+export interface RunProgress {
+  runId: string;
+  state: RunState;
+  /** 0…1 */
+  progress: number;
+}
+export interface RunFailed {
+  runId: string;
+  state: 'failed' | 'cancelled' | 'superseded';
+  reason: string;
+}
+export type FollowAnswer = { ok: true } | { ok: false; reason: string };
+
+export interface ClientToServerEvents {
+  'run:follow': (message: { runId: string }, answer: (result: FollowAnswer) => void) => void;
+  'run:unfollow': (message: { runId: string }) => void;
+}
+export interface ServerToClientEvents {
+  /** An encoded frame (contracts/frames.ts). Volatile: a slow client misses frames, never the summary. */
+  'run:frame': (frame: ArrayBuffer) => void;
+  'run:progress': (message: RunProgress) => void;
+  'run:summary': (message: { runId: string; summary: RunSummary; hasSeries: boolean }) => void;
+  'run:failed': (message: RunFailed) => void;
+}

@@ -1,0 +1,115 @@
+/**
+ * The filter's parameters: the one object that the bench slides, a run stores, a version keeps and an integrator fetches.
+ * Every field has a default, so that `{}` is a complete, sensible set for an industrial MEMS sensor.
+ * Units are in the names, SI and radians.
+ */
+import { z } from 'zod';
+import { vector3Schema } from './common';
+
+const positive = (low: number, high: number) => z.number().min(low).max(high);
+
+export const biasModelSchema = z.enum(['random-walk', 'gauss-markov', 'turn-on-plus-wander']);
+export type BiasModel = z.infer<typeof biasModelSchema>;
+
+export const gyroParametersSchema = z.object({
+  whiteNoiseRadPerSqrtS: positive(1e-9, 1).default(8.7e-5).describe('Angle random walk N_g, rad/√s.'),
+  biasModel: biasModelSchema.default('turn-on-plus-wander'),
+  biasInstabilityRadPerS: positive(1e-10, 1).default(4.8e-5).describe('In-run bias wander σ, rad/s (1σ).'),
+  biasCorrelationTimeS: positive(1, 1e6).default(300).describe('Correlation time τ of the wander, s.'),
+  turnOnBiasSigmaRadPerS: positive(1e-10, 1).default(3.5e-3).describe('Turn-on bias 1σ, rad/s.'),
+  biasRandomWalkRadPerSPerSqrtS: positive(1e-12, 1)
+    .default(1e-6)
+    .describe('Rate random walk K_g, rad/s/√s; used by the random-walk bias model.'),
+});
+
+export const accelParametersSchema = z.object({
+  whiteNoiseMPerSPerSqrtS: positive(1e-8, 10).default(1e-3).describe('Velocity random walk N_a, m/s/√s.'),
+  biasModel: biasModelSchema.default('turn-on-plus-wander'),
+  biasInstabilityMPerS2: positive(1e-9, 10).default(5e-4).describe('In-run bias wander σ, m/s² (1σ).'),
+  biasCorrelationTimeS: positive(1, 1e6).default(300).describe('Correlation time τ of the wander, s.'),
+  turnOnBiasSigmaMPerS2: positive(1e-9, 10).default(0.05).describe('Turn-on bias 1σ, m/s².'),
+  biasRandomWalkMPerS2PerSqrtS: positive(1e-10, 10)
+    .default(2e-5)
+    .describe('Acceleration random walk K_a, m/s²/√s; used by the random-walk bias model.'),
+});
+
+export const gnssParametersSchema = z.object({
+  usePosition: z.boolean().default(true),
+  useVelocity: z.boolean().default(true),
+  sigmaSource: z
+    .enum(['receiver', 'fixed'])
+    .default('receiver')
+    .describe("receiver: the log's own accuracies, the fixed ones where it gives none."),
+  positionScale: positive(0.01, 100).default(1).describe('Factor on the position σ.'),
+  velocityScale: positive(0.01, 100).default(1).describe('Factor on the velocity σ.'),
+  positionSigmaHorizontalM: positive(1e-4, 1e4).default(1.5).describe('Each of north and east, 1σ, m.'),
+  positionSigmaVerticalM: positive(1e-4, 1e4).default(2.5),
+  velocitySigmaHorizontalMPerS: positive(1e-4, 1e3).default(0.1),
+  velocitySigmaVerticalMPerS: positive(1e-4, 1e3).default(0.15),
+  positionFloorM: positive(0, 1e3).default(0.01).describe('No position σ is taken below this, m.'),
+  velocityFloorMPerS: positive(0, 1e2).default(0.005).describe('No velocity σ is taken below this, m/s.'),
+  latencyS: z.number().min(-5).max(5).default(0).describe('Measurement time = epoch − latency, s.'),
+});
+
+export const gateParametersSchema = z.object({
+  enabled: z.boolean().default(true),
+  probability: z
+    .number()
+    .min(0.5)
+    .max(0.9999999)
+    .default(0.999)
+    .describe('χ² probability that a good measurement group passes.'),
+  recoveryAfterS: positive(0.1, 3600)
+    .default(10)
+    .describe('After this long with nothing accepted the filter re-initialises what the group measures, s.'),
+});
+
+/**
+ * The state at the start. What is given is used as it stands; what is left out is found from the data
+ * (position and velocity from GNSS, roll and pitch from gravity, heading from GNSS course).
+ * σ: north, east, down; attitude about north, east, down for roll, pitch, yaw respectively small angles.
+ */
+export const initialParametersSchema = z.object({
+  timeS: z
+    .number()
+    .optional()
+    .describe('Start here on the recording’s axis, s; left out: at the first usable moment.'),
+  position: z.object({ latDeg: z.number(), lonDeg: z.number(), heightM: z.number() }).optional(),
+  velocityNedMPerS: vector3Schema.optional(),
+  attitude: z.object({ rollDeg: z.number(), pitchDeg: z.number(), yawDeg: z.number() }).optional(),
+  headingDeg: z.number().optional().describe('Heading alone, when roll and pitch are to be levelled.'),
+  positionSigmaNedM: vector3Schema.optional(),
+  velocitySigmaNedMPerS: vector3Schema.optional(),
+  attitudeSigmaDeg: vector3Schema.optional().describe('roll, pitch, yaw, 1σ.'),
+  gyroBiasRadPerS: vector3Schema.optional(),
+  accelBiasMPerS2: vector3Schema.optional(),
+  courseSpeedMPerS: positive(0.1, 100)
+    .default(2)
+    .describe('GNSS course is taken as heading above this speed, m/s.'),
+});
+
+export const mechanisationParametersSchema = z.object({
+  scheme: z
+    .enum(['coning-sculling', 'trapezoidal', 'rectangular'])
+    .default('coning-sculling')
+    .describe('The last two are for study.'),
+  covarianceIntervalS: z.number().min(0).max(1).default(0.05).describe('0: at every sample, s.'),
+});
+
+export const parametersSchema = z.object({
+  gyro: gyroParametersSchema.prefault({}),
+  accel: accelParametersSchema.prefault({}),
+  gnss: gnssParametersSchema.prefault({}),
+  gate: gateParametersSchema.prefault({}),
+  initial: initialParametersSchema.prefault({}),
+  mechanisation: mechanisationParametersSchema.prefault({}),
+  leverArmM: vector3Schema
+    .optional()
+    .describe("GNSS antenna seen from the IMU, forward, right, down, m; left out: the vehicle's."),
+});
+/** Complete parameters, defaults filled in. */
+export type Parameters = z.infer<typeof parametersSchema>;
+/** What a request may send: any part. */
+export type ParametersInput = z.input<typeof parametersSchema>;
+
+export const defaultParameters = (): Parameters => parametersSchema.parse({});

@@ -1,0 +1,265 @@
+/** Recordings: upload, channel map, decoding, what the intake found, decimated series. */
+import { z } from 'zod';
+import { idSchema, isoTimeSchema, nameSchema } from './common';
+import { axisMapSchema } from './vehicles';
+
+export const recordingStatusSchema = z.enum(['uploaded', 'decoding', 'ready', 'needs-mapping', 'rejected']);
+export type RecordingStatus = z.infer<typeof recordingStatusSchema>;
+
+const column = z.string().min(1).max(200).describe('Header of the column, as the file writes it.');
+const columns3 = z.tuple([column, column, column]);
+
+/** How a file tells time. With two columns the first is whole seconds (or GPS week), the second the fraction. */
+export const timeMapSchema = z.object({
+  columns: z.array(column).min(1).max(2),
+  base: z.enum(['s', 'ms', 'us', 'ns', 's+ns', 'gps-week+s', 'iso8601']),
+  offsetS: z
+    .number()
+    .default(0)
+    .describe('Seconds added after conversion, to bring this file onto the time axis of the IMU file.'),
+  stamp: z
+    .enum(['end', 'middle', 'start'])
+    .default('end')
+    .describe('Where in its interval a sample is stamped.'),
+});
+export type TimeMap = z.infer<typeof timeMapSchema>;
+
+export const gyroUnitSchema = z.enum(['rad/s', 'deg/s', 'deg/h', 'rad', 'deg']);
+export const accelUnitSchema = z.enum(['m/s^2', 'g', 'mg', 'm/s', 'g*s']);
+export type GyroUnit = z.infer<typeof gyroUnitSchema>;
+export type AccelUnit = z.infer<typeof accelUnitSchema>;
+
+export const imuMapSchema = z.object({
+  time: timeMapSchema,
+  gyro: z.object({ columns: columns3, unit: gyroUnitSchema }),
+  accel: z.object({
+    columns: columns3,
+    unit: accelUnitSchema,
+    sign: z
+      .enum(['specific-force', 'opposite'])
+      .default('specific-force')
+      .describe('specific-force: an accelerometer lying still, z down, reads −g.'),
+  }),
+  sampling: z
+    .enum(['mean-rate', 'instantaneous', 'increment'])
+    .default('mean-rate')
+    .describe('Mean rates over the interval that ends at the stamp, instantaneous rates, or increments.'),
+  axes: axisMapSchema.optional().describe("Sensor axes as mounted; left out: the vehicle's."),
+});
+export type ImuMap = z.infer<typeof imuMapSchema>;
+
+export const angleUnitSchema = z.enum(['deg', 'rad']);
+export const speedUnitSchema = z.enum(['m/s', 'km/h', 'kn']);
+
+export const positionMapSchema = z.object({
+  lat: column,
+  lon: column,
+  height: column.optional(),
+  unit: angleUnitSchema.default('deg'),
+  heightUnit: z.enum(['m', 'mm']).default('m'),
+  heightDatum: z.enum(['ellipsoid', 'sea-level']).default('ellipsoid'),
+});
+export const velocityMapSchema = z.discriminatedUnion('frame', [
+  z.object({ frame: z.enum(['ned', 'enu', 'neu']), columns: columns3, unit: speedUnitSchema.default('m/s') }),
+  z.object({
+    frame: z.literal('speed-course'),
+    speed: column,
+    course: column,
+    unit: speedUnitSchema.default('m/s'),
+    courseUnit: angleUnitSchema.default('deg'),
+  }),
+]);
+/** σ columns: one horizontal and one vertical, or one an axis (north, east, down). */
+export const sigmaMapSchema = z.object({
+  columns: z.union([z.tuple([column, column]), columns3]),
+  unit: z.enum(['m', 'mm', 'm/s', 'mm/s']),
+});
+
+export const gnssMapSchema = z.object({
+  time: timeMapSchema,
+  position: positionMapSchema,
+  velocity: velocityMapSchema.optional(),
+  positionSigma: sigmaMapSchema.optional(),
+  velocitySigma: sigmaMapSchema.optional(),
+  quality: column.optional(),
+});
+export type GnssMap = z.infer<typeof gnssMapSchema>;
+
+export const referenceMapSchema = z.object({
+  time: timeMapSchema,
+  position: positionMapSchema,
+  velocity: velocityMapSchema.optional(),
+  attitude: z.object({ columns: columns3.describe('roll, pitch, yaw'), unit: angleUnitSchema }).optional(),
+});
+export type ReferenceMap = z.infer<typeof referenceMapSchema>;
+
+export const channelMapSchema = z.object({
+  imu: imuMapSchema.optional(),
+  gnss: gnssMapSchema.optional(),
+  reference: referenceMapSchema.optional(),
+});
+/** A file whose part is left out is mapped from its headers. */
+export type ChannelMap = z.infer<typeof channelMapSchema>;
+
+/** The JSON part `meta` of POST /recordings. */
+export const recordingMetaSchema = z.object({
+  name: nameSchema,
+  vehicleId: idSchema.optional(),
+  channelMap: channelMapSchema.optional(),
+});
+export type RecordingMeta = z.infer<typeof recordingMetaSchema>;
+
+export const recordingPatchSchema = z.object({
+  name: nameSchema.optional(),
+  vehicleId: idSchema.nullable().optional(),
+  notes: z.string().max(2000).optional(),
+});
+export type RecordingPatch = z.infer<typeof recordingPatchSchema>;
+
+export const fileRoleSchema = z.enum(['imu', 'gnss', 'reference']);
+export type FileRole = z.infer<typeof fileRoleSchema>;
+
+/** Why a file could not be used: what, where, and what to do. `line` counts from 1 and includes the header. */
+export const intakeProblemSchema = z.object({
+  code: z.string(),
+  file: fileRoleSchema.nullable(),
+  line: z.number().int().nullable(),
+  column: z.string().nullable(),
+  message: z.string(),
+  remedy: z.string(),
+});
+export type IntakeProblem = z.infer<typeof intakeProblemSchema>;
+
+/** What the mapping screen shows of a file: headers, first rows, and what was guessed. */
+export const filePreviewSchema = z.object({
+  role: fileRoleSchema,
+  headers: z.array(z.string()),
+  rows: z.array(z.array(z.string())).describe('The first rows, as text.'),
+  missing: z.array(z.string()).describe('Channels that no column was found for, in plain words.'),
+});
+export type FilePreview = z.infer<typeof filePreviewSchema>;
+
+export const severitySchema = z.enum(['info', 'warn', 'stop']);
+export type Severity = z.infer<typeof severitySchema>;
+
+/** One thing the intake found. Times are on the recording's axis, seconds. */
+export const healthFindingSchema = z.object({
+  code: z.string(),
+  severity: severitySchema,
+  sentence: z.string(),
+  figure: z.object({ value: z.number(), unit: z.string() }).nullable(),
+  intervalsS: z.array(z.tuple([z.number(), z.number()])),
+  remedy: z.string().nullable(),
+});
+export type HealthFinding = z.infer<typeof healthFindingSchema>;
+
+export const healthReportSchema = z.object({
+  verdict: z.enum(['usable', 'with-care', 'not-usable']),
+  sentence: z.string(),
+  imu: z.object({ samples: z.number().int(), rateHz: z.number(), gaps: z.number().int() }),
+  gnss: z.object({
+    epochs: z.number().int(),
+    rateHz: z.number(),
+    hasVelocity: z.boolean(),
+    hasPositionSigma: z.boolean(),
+    hasVelocitySigma: z.boolean(),
+  }),
+  overlapS: z.tuple([z.number(), z.number()]).describe('Where IMU and GNSS both have data, s.'),
+  findings: z.array(healthFindingSchema),
+});
+export type HealthReport = z.infer<typeof healthReportSchema>;
+
+/** The thin drawing of a whole recording. Every array has one entry a bucket of equal time. */
+export const stripSchema = z.object({
+  startS: z.number(),
+  endS: z.number(),
+  speedMPerS: z.array(z.number().nullable()).describe('Largest horizontal speed in the bucket, m/s.'),
+  gnssFixes: z.array(z.number().int()).describe('GNSS fixes in the bucket.'),
+  gapsS: z.array(z.tuple([z.number(), z.number()])).describe('IMU stretches without samples, s.'),
+  clippedS: z.array(z.tuple([z.number(), z.number()])).describe('Stretches at the sensor range, s.'),
+});
+export type Strip = z.infer<typeof stripSchema>;
+
+/** Which instant of the source's clock is 0 on the recording's axis. */
+export const timeOriginSchema = z.object({
+  sourceS: z
+    .number()
+    .describe("The IMU file's own clock at 0 on the axis, s. A log in plain seconds keeps its zero."),
+  utc: isoTimeSchema.nullable(),
+  gpsWeek: z.number().int().nullable(),
+  gpsTowS: z.number().nullable(),
+});
+export type TimeOrigin = z.infer<typeof timeOriginSchema>;
+
+export const recordingFileSchema = z.object({
+  role: fileRoleSchema,
+  name: z.string(),
+  bytes: z.number(),
+  sha256: z.string(),
+});
+export type RecordingFile = z.infer<typeof recordingFileSchema>;
+
+export const recordingSchema = z.object({
+  id: idSchema,
+  name: z.string(),
+  notes: z.string(),
+  status: recordingStatusSchema,
+  progress: z.number().min(0).max(1).describe('Of decoding.'),
+  problems: z.array(intakeProblemSchema),
+  vehicleId: idSchema.nullable(),
+  vehicleName: z.string().nullable(),
+  createdAt: isoTimeSchema,
+  createdBy: z.string(),
+  startS: z.number().nullable(),
+  endS: z.number().nullable(),
+  durationS: z.number().nullable(),
+  hasReference: z.boolean(),
+  timeOrigin: timeOriginSchema.nullable(),
+  health: healthReportSchema.nullable(),
+  strip: stripSchema.nullable(),
+  files: z.array(recordingFileSchema),
+  channelMap: channelMapSchema.nullable().describe('The map in force: given, or guessed from the headers.'),
+  previews: z.array(filePreviewSchema),
+});
+export type Recording = z.infer<typeof recordingSchema>;
+
+/** Every channel of a decoded recording that plots may ask for, with its unit. */
+export const SERIES_CHANNELS = {
+  gyro_x: '°/s',
+  gyro_y: '°/s',
+  gyro_z: '°/s',
+  accel_x: 'm/s²',
+  accel_y: 'm/s²',
+  accel_z: 'm/s²',
+  gnss_north: 'm',
+  gnss_east: 'm',
+  gnss_height: 'm',
+  gnss_vn: 'm/s',
+  gnss_ve: 'm/s',
+  gnss_vd: 'm/s',
+} as const;
+export type SeriesChannel = keyof typeof SERIES_CHANNELS;
+
+export const seriesQuerySchema = z.object({
+  channels: z
+    .string()
+    .transform((text) => text.split(','))
+    .pipe(z.array(z.enum(Object.keys(SERIES_CHANNELS) as [SeriesChannel, ...SeriesChannel[]])).min(1)),
+  from: z.coerce.number().optional(),
+  to: z.coerce.number().optional(),
+  points: z.coerce.number().int().min(10).max(10_000).default(1500),
+});
+export type SeriesQuery = z.infer<typeof seriesQuerySchema>;
+
+/** Min–max decimated: a one-sample spike is kept. NaN is sent as null. */
+export const seriesSchema = z.object({
+  channels: z.array(
+    z.object({
+      name: z.string(),
+      unit: z.string(),
+      timeS: z.array(z.number()),
+      values: z.array(z.number().nullable()),
+    }),
+  ),
+});
+export type Series = z.infer<typeof seriesSchema>;

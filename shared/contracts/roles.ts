@@ -1,0 +1,31 @@
+/** The four roles and what each may do. The server enforces this table on every route; the client mirrors it. */
+import { z } from 'zod';
+
+export const roleSchema = z.enum(['viewer', 'engineer', 'approver', 'admin']);
+export type Role = z.infer<typeof roleSchema>;
+
+const READ = ['workspace:read', 'export:read'] as const;
+const ENGINEER = ['recording:write', 'vehicle:write', 'run:create', 'set:draft'] as const;
+const APPROVER = ['set:review'] as const;
+const ADMIN = ['team:manage', 'token:manage', 'audit:read', 'mail:read', 'recording:delete'] as const;
+
+export type Permission =
+  (typeof READ)[number] | (typeof ENGINEER)[number] | (typeof APPROVER)[number] | (typeof ADMIN)[number];
+
+const GRANTS: Record<Role, readonly Permission[]> = {
+  viewer: READ,
+  engineer: [...READ, ...ENGINEER, 'recording:delete'],
+  approver: [...READ, ...ENGINEER, ...APPROVER, 'recording:delete'],
+  admin: [...READ, ...ENGINEER, ...ADMIN],
+};
+
+/** Whether `role` may do `permission`. */
+export const can = (role: Role, permission: Permission): boolean => GRANTS[role].includes(permission);
+export const permissionsOf = (role: Role): readonly Permission[] => GRANTS[role];
+
+export const ROLE_SUMMARY: Record<Role, string> = {
+  viewer: 'Reads recordings, runs, sets and reports.',
+  engineer: 'Uploads, tunes and drafts parameter sets.',
+  approver: 'Does what an engineer does, and reviews and releases sets that somebody else wrote.',
+  admin: 'Manages people, tokens and deletion; uploads, tunes and drafts.',
+};

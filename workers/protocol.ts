@@ -1,0 +1,167 @@
+/**
+ * What the server and the worker processes say to each other. Workers know no database and no HTTP:
+ * they take parameters and store keys, read and write the store, report events, hear cancel.
+ */
+import type { Outage, Provenance, RunSummary } from '@/shared/contracts/runs';
+import type { Parameters } from '@/shared/contracts/parameters';
+import type {
+  ChannelMap,
+  FilePreview,
+  FileRole,
+  HealthReport,
+  IntakeProblem,
+  Series,
+  SeriesChannel,
+  Strip,
+  TimeOrigin,
+} from '@/shared/contracts/recordings';
+import type { AxisMap } from '@/shared/contracts/vehicles';
+
+export interface DecodeJob {
+  kind: 'decode';
+  recordingId: string;
+  files: { role: FileRole; name: string; key: string }[];
+  /** What the uploader said; parts left out are guessed from headers. */
+  channelMap: ChannelMap | null;
+  /** Used where the channel map says nothing of axes. */
+  vehicleAxes: AxisMap;
+}
+/** A bad file is an outcome, not an error: nothing of it is kept in the store but the raw upload. */
+export type DecodeResult =
+  | {
+      outcome: 'ready';
+      channelMap: ChannelMap;
+      startS: number;
+      endS: number;
+      hasReference: boolean;
+      timeOrigin: TimeOrigin;
+      health: HealthReport;
+      strip: Strip;
+      /** Over the decoded channel files. */
+      sha256: string;
+    }
+  | { outcome: 'needs-mapping'; channelMap: ChannelMap; problems: IntakeProblem[]; previews: FilePreview[] }
+  | { outcome: 'rejected'; problems: IntakeProblem[]; previews: FilePreview[] };
+
+export interface RunSpec {
+  runId: string;
+  recordingId: string;
+  parameters: Parameters;
+  leverArmM: [number, number, number];
+  outages: Outage[];
+  outputRateHz: number;
+}
+export interface RunJob extends RunSpec {
+  kind: 'run';
+  /** Columns that a screen can show: frames are thinned to about this many points a series. 0: no frames. */
+  framePoints: number;
+}
+export interface RunJobResult {
+  summary: RunSummary;
+  resultSha256: string;
+  provenance: Omit<Provenance, 'files' | 'resultSha256'>;
+}
+
+export interface RecordingSeriesJob {
+  kind: 'recording-series';
+  recordingId: string;
+  channels: SeriesChannel[];
+  fromS: number | null;
+  toS: number | null;
+  points: number;
+}
+/** GNSS-only baseline track, thinned, north/east of the first fix. */
+export interface BaselineTrackJob {
+  kind: 'baseline-track';
+  recordingId: string;
+  points: number;
+}
+export interface BaselineTrack {
+  timeS: number[];
+  latDeg: number[];
+  lonDeg: number[];
+}
+/** A stored run as one encoded frame (shared/contracts/frames.ts). */
+export interface RunSeriesJob {
+  kind: 'run-series';
+  runId: string;
+  fromS: number | null;
+  toS: number | null;
+  points: number;
+}
+/** Writes a file under storeKeys.export and answers its key. A rate above the kept one runs the filter again. */
+export interface RunExportJob {
+  kind: 'run-export';
+  run: RunSpec;
+  format: 'solution-csv' | 'innovations-csv' | 'geojson' | 'kml' | 'gpx';
+  /** Hz; null: the kept rate. */
+  rateHz: number | null;
+  name: string;
+  /** UTC of the axis' zero where known, ISO 8601. */
+  utcOrigin: string | null;
+}
+
+export interface JobResults {
+  decode: DecodeResult;
+  run: RunJobResult;
+  'recording-series': Series;
+  'baseline-track': BaselineTrack;
+  'run-series': Uint8Array;
+  'run-export': { key: string; bytes: number };
+}
+export type WorkerJob =
+  DecodeJob | RunJob | RecordingSeriesJob | BaselineTrackJob | RunSeriesJob | RunExportJob;
+export type JobKind = WorkerJob['kind'];
+
+/** What a job reports while it works. */
+export type JobEvent = { type: 'progress'; progress: number } | { type: 'frame'; frame: Uint8Array };
+
+/** Parent → child. `cancel` may come at any time. */
+export type ToWorker = { type: 'job'; id: number; job: WorkerJob } | { type: 'cancel'; id: number };
+/** Child → parent. */
+export type FromWorker =
+  | { type: 'ready' }
+  | { type: 'event'; id: number; event: JobEvent }
+  | { type: 'result'; id: number; result: JobResults[JobKind] }
+  | { type: 'cancelled'; id: number }
+  | { type: 'failed'; id: number; code: string; message: string };
+
+/** The job could not be done and says why in words for people (an EngineError, a missing file). */
+export class JobFailed extends Error {
+  constructor(
+    readonly code: string,
+    message: string,
+  ) {
+    super(message);
+    this.name = 'JobFailed';
+  }
+}
+export class JobCancelled extends Error {
+  constructor(readonly superseded: boolean) {
+    super(superseded ? 'A newer change took its place.' : 'It was cancelled.');
+    this.name = 'JobCancelled';
+  }
+}
+/** The worker process died under the job. */
+export class WorkerCrashed extends Error {
+  constructor(readonly signal: string | null) {
+    super('The computing process stopped unexpectedly.');
+    this.name = 'WorkerCrashed';
+  }
+}
+
+/** The pool as the server sees it (workers/pool.ts implements it; tests may stand in for it). */
+export interface Pool {
+  submit<J extends WorkerJob>(
+    job: J,
+    options?: {
+      /** A newer job of the same key supersedes the older one: its promise rejects with JobCancelled(superseded). */
+      latestKey?: string;
+      /** Jobs of one affinity prefer the same process, which keeps that recording in memory. */
+      affinity?: string;
+      onEvent?: (event: JobEvent) => void;
+    },
+  ): { result: Promise<JobResults[J['kind']]>; cancel(): void };
+  close(): Promise<void>;
+  readonly stats: { size: number; busy: number; waiting: number };
+}

@@ -1,0 +1,44 @@
+/** Where raw uploads, decoded recordings and run results live. Keys are relative paths with '/'. */
+import type { Readable } from 'node:stream';
+
+export interface Store {
+  /** Writes `source` under `key`. The key appears whole or not at all, also when the process dies in between. */
+  put(key: string, source: Readable | Uint8Array): Promise<{ bytes: number }>;
+  /** Takes over a finished local file (an upload); moves it where the backing can. */
+  adopt(key: string, localPath: string): Promise<{ bytes: number }>;
+  /** Throws StoreKeyMissing. */
+  stream(key: string): Promise<Readable>;
+  /** Throws StoreKeyMissing. */
+  bytes(key: string): Promise<Uint8Array>;
+  has(key: string): Promise<boolean>;
+  /** Keys that start with `prefix`, in any order. */
+  list(prefix: string): Promise<string[]>;
+  /** Removes every key that starts with `prefix`; silent where there is none. */
+  removePrefix(prefix: string): Promise<void>;
+}
+
+export class StoreKeyMissing extends Error {
+  constructor(readonly key: string) {
+    super(`Nothing is stored under ${key}.`);
+    this.name = 'StoreKeyMissing';
+  }
+}
+
+/** How a worker process opens the same store as the server. */
+export type StoreConfig = { kind: 'folder'; root: string };
+
+/** The one place that knows the layout of keys. */
+export const storeKeys = {
+  recording: (recordingId: string) => `recordings/${recordingId}/`,
+  raw: (recordingId: string, role: string) => `recordings/${recordingId}/raw/${role}`,
+  imu: (recordingId: string) => `recordings/${recordingId}/imu.arrow`,
+  gnss: (recordingId: string) => `recordings/${recordingId}/gnss.arrow`,
+  reference: (recordingId: string) => `recordings/${recordingId}/reference.arrow`,
+  /** GNSS-only baseline track. */
+  gnssOnly: (recordingId: string) => `recordings/${recordingId}/gnss-only.arrow`,
+  run: (runId: string) => `runs/${runId}/`,
+  solution: (runId: string) => `runs/${runId}/solution.arrow`,
+  innovations: (runId: string) => `runs/${runId}/innovations.arrow`,
+  coasting: (runId: string) => `runs/${runId}/coasting.arrow`,
+  export: (runId: string, name: string) => `runs/${runId}/exports/${name}`,
+};
