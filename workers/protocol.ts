@@ -15,6 +15,7 @@ import type {
   Strip,
   TimeOrigin,
 } from '@/shared/contracts/recordings';
+import type { Scenario } from '@/shared/contracts/scenarios';
 import type { AxisMap } from '@/shared/contracts/vehicles';
 
 export interface DecodeJob {
@@ -42,6 +43,16 @@ export type DecodeResult =
     }
   | { outcome: 'needs-mapping'; channelMap: ChannelMap; problems: IntakeProblem[]; previews: FilePreview[] }
   | { outcome: 'rejected'; problems: IntakeProblem[]; previews: FilePreview[] };
+
+/** Simulates a scenario and writes it as raw uploads (IMU, GNSS and reference CSV) that are then decoded like any others. */
+export interface ScenarioJob {
+  kind: 'scenario';
+  recordingId: string;
+  scenario: Scenario;
+}
+export interface ScenarioResult {
+  files: { role: FileRole; name: string; key: string; bytes: number; sha256: string }[];
+}
 
 export interface RunSpec {
   runId: string;
@@ -103,6 +114,7 @@ export interface RunExportJob {
 
 export interface JobResults {
   decode: DecodeResult;
+  scenario: ScenarioResult;
   run: RunJobResult;
   'recording-series': Series;
   'baseline-track': BaselineTrack;
