@@ -1,0 +1,14 @@
+/** npm run build: client and server, each only where something has changed. */
+import { buildClient } from './build/client-export';
+import { buildServer } from './build/server-bundle';
+import { failWith } from './lib/project';
+
+/** Brings dist/ up to date. */
+export async function buildAll(log: (line: string) => void): Promise<void> {
+  await buildServer();
+  buildClient(log);
+}
+
+if (require.main === module) {
+  buildAll(console.log).then(() => console.log('dist/ is up to date.'), failWith);
+}

@@ -1,0 +1,47 @@
+/** The server and its worker process as two plain JavaScript files. Packages stay outside, so that native ones work. */
+import { existsSync } from 'node:fs';
+import path from 'node:path';
+import { build, type BuildOptions } from 'esbuild';
+import { BUILD, inRoot, ROOT } from '../lib/project';
+import { hashInputs, isStamped, writeStamp } from './stamp';
+
+const INPUTS = [
+  'server',
+  'workers',
+  'shared',
+  'fixtures',
+  'package-lock.json',
+  'tsconfig.json',
+  'scripts/build',
+];
+
+const COMMON: BuildOptions = {
+  absWorkingDir: ROOT,
+  bundle: true,
+  platform: 'node',
+  target: 'node20',
+  format: 'cjs',
+  packages: 'external',
+  alias: { '@': ROOT },
+  sourcemap: true,
+  logLevel: 'warning',
+};
+
+/** Bundles where something has changed; answers whether it did. */
+export async function buildServer(): Promise<boolean> {
+  const hash = hashInputs(INPUTS);
+  if (isStamped('server', hash) && [BUILD.server, BUILD.worker].every((file) => existsSync(file)))
+    return false;
+  await build({
+    ...COMMON,
+    entryPoints: { index: inRoot('server/index.ts'), worker: inRoot('workers/entry.ts') },
+    outdir: path.dirname(BUILD.server),
+  });
+  writeStamp('server', hash);
+  return true;
+}
+
+/** The worker process alone, for tests that need no server: always built, in a moment. */
+export async function buildWorker(outfile: string): Promise<void> {
+  await build({ ...COMMON, entryPoints: [inRoot('workers/entry.ts')], outfile });
+}

@@ -1,0 +1,27 @@
+/**
+ * Before the API tests: one throwaway PostgreSQL and one worker bundle for the whole test run.
+ * Test files find them through the environment: TEST_POSTGRES_URL (a role that may create databases; the database of
+ * the URL itself is empty) and WORKER_ENTRY.
+ */
+import { mkdtempSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import path from 'node:path';
+import { buildWorker } from '../../scripts/build/server-bundle';
+import { startLocalPostgres, type LocalPostgres } from '../../scripts/local-postgres';
+
+export interface TestStack {
+  postgres: LocalPostgres;
+  folder: string;
+}
+declare global {
+  var testStack: TestStack | undefined;
+}
+
+export default async function setup(): Promise<void> {
+  const folder = mkdtempSync(path.join(tmpdir(), 'driftwright-tests-'));
+  const workerEntry = path.join(folder, 'worker.js');
+  const [postgres] = await Promise.all([startLocalPostgres({ log: console.log }), buildWorker(workerEntry)]);
+  process.env.TEST_POSTGRES_URL = postgres.url;
+  process.env.WORKER_ENTRY = workerEntry;
+  globalThis.testStack = { postgres, folder };
+}
