@@ -1,0 +1,41 @@
+/** Linear maps between values and pixels. */
+import { scaleLinear, scaleLog, type ScaleContinuousNumeric } from 'd3-scale';
+
+export type Extent = readonly [number, number];
+
+export interface Scale {
+  domain: Extent;
+  range: Extent;
+  /** Value → pixel. */
+  (value: number): number;
+  /** Pixel → value. */
+  invert(pixel: number): number;
+}
+
+/** `value ↦ pixel` with `domain` onto `range`. Plain arithmetic: it is called for every point of every frame. */
+export function linearScale(domain: Extent, range: Extent): Scale {
+  const span = domain[1] - domain[0] || 1;
+  const perUnit = (range[1] - range[0]) / span;
+  const map = (value: number) => range[0] + (value - domain[0]) * perUnit;
+  return Object.assign(map, {
+    domain,
+    range,
+    invert: (pixel: number) => domain[0] + (pixel - range[0]) / perUnit,
+  });
+}
+
+/** Logarithmic map; both ends of `domain` are above zero. */
+export function logScale(domain: Extent, range: Extent): Scale {
+  const inner: ScaleContinuousNumeric<number, number> = scaleLog().domain(domain).range(range);
+  return Object.assign((value: number) => inner(value), {
+    domain,
+    range,
+    invert: (pixel: number) => inner.invert(pixel),
+  });
+}
+
+/** `extent` widened to round values. */
+export function niceExtent(extent: Extent, count = 4): Extent {
+  const [low, high] = scaleLinear().domain(extent).nice(count).domain();
+  return [low!, high!];
+}
