@@ -1,7 +1,6 @@
 /** Labels under the strip that never touch each other: lengths of windows first, then the clock where room is left. */
 import { timeTicks } from '@/components/charts/model/ticks';
 import type { Scale } from '@/components/charts/model/scale';
-import { formatNumber } from '@/shared/format';
 
 export interface PlacedLabel {
   text: string;
@@ -35,7 +34,7 @@ export function placeLabels({ x, windows, selected, characterPx }: LabelInput): 
     .map((window, index) => ({ window, index }))
     .sort((a, b) => rank(b, selected) - rank(a, selected));
   for (const { window, index } of order) {
-    const text = `${formatNumber(window.endS - window.startS, 4)} s`;
+    const text = lengthLabel(window.endS - window.startS);
     const at = inside(x((window.startS + window.endS) / 2), text);
     if (fits(at, text)) placed.push({ text, x: at, kind: 'window', window: index });
   }
@@ -46,6 +45,9 @@ export function placeLabels({ x, windows, selected, characterPx }: LabelInput): 
   }
   return placed;
 }
+
+/** A window's length: whole seconds where it is whole. */
+export const lengthLabel = (seconds: number) => `${Number(seconds.toFixed(1))} s`;
 
 const rank = (
   entry: { window: { startS: number; endS: number }; index: number },
