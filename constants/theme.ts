@@ -64,13 +64,15 @@ export const palettes: Record<'paper' | 'night', Palette> = {
   },
 };
 
+/** Behind the bundled faces: Greek letters (σ, χ) that Barlow lacks, and everything until the fonts have loaded. */
+const FALLBACK = '"Noto Sans", "Segoe UI", "Helvetica Neue", Arial, system-ui, sans-serif';
 export const fonts = {
-  text: 'Barlow_400Regular',
-  textStrong: 'Barlow_600SemiBold',
-  label: 'BarlowSemiCondensed_500Medium',
-  labelStrong: 'BarlowSemiCondensed_600SemiBold',
+  text: `Barlow_400Regular, ${FALLBACK}`,
+  textStrong: `Barlow_600SemiBold, ${FALLBACK}`,
+  label: `BarlowSemiCondensed_500Medium, ${FALLBACK}`,
+  labelStrong: `BarlowSemiCondensed_600SemiBold, ${FALLBACK}`,
   /** Digits alone: words beside them are Semi Condensed. */
-  number: 'AzeretMono_400Regular',
+  number: 'AzeretMono_400Regular, ui-monospace, Menlo, Consolas, monospace',
 } as const;
 
 export const typeScale = { small: 12, label: 14, body: 16, heading: 20, title: 28 } as const;
