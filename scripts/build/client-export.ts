@@ -9,7 +9,7 @@ const INPUTS = [
   ...['app', 'components', 'hooks', 'constants', 'shared', 'assets'],
   ...['app.json', 'babel.config.js', 'metro.config.js', 'package-lock.json', 'tsconfig.json'],
 ];
-const QUIET = { EXPO_NO_TELEMETRY: '1', EXPO_OFFLINE: '1', CI: '1', NODE_ENV: 'production' };
+const QUIET = { EXPO_NO_TELEMETRY: '1', EXPO_OFFLINE: '1', CI: '1', NODE_ENV: 'production' } as const;
 
 /** Exports where something has changed; answers whether it did. The old build stays until the new one is whole. */
 export function buildClient(log: (line: string) => void): boolean {

@@ -115,5 +115,5 @@ export function decodeFrame(data: ArrayBuffer | ArrayBufferView): Frame {
     }
     tables[name] = columns;
   }
-  return { head, tables: tables as FrameTables };
+  return { head, tables };
 }
