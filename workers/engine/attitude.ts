@@ -3,6 +3,7 @@
  * Euler angles 3-2-1: C = R_z(yaw) R_y(pitch) R_x(roll). Direction cosine matrices row by row, Float64Array(9).
  * `out` may be one of the inputs.
  */
+import { wrapAngle } from './geodesy';
 
 /** Quaternion n←b from roll, pitch, yaw (rad). */
 export function quatFromEuler(roll: number, pitch: number, yaw: number, out: Float64Array): Float64Array {
@@ -21,32 +22,31 @@ export function quatFromEuler(roll: number, pitch: number, yaw: number, out: Flo
 
 /**
  * Roll, pitch, yaw (rad) in `out[0..2]`; roll and yaw in (−π, π], pitch in [−π/2, π/2]. At pitch ±90° only
- * yaw ∓ roll is defined: roll is put to 0 and yaw carries it.
+ * yaw ∓ roll is defined: roll is put to 0 and yaw carries it. Works on half sums and differences of the angles, which
+ * keep full digits at every attitude (Bernardes & Viollet, PLoS ONE 17, 2022).
  */
 export function eulerFromQuat(q: Float64Array, out: Float64Array): Float64Array {
-  const w = q[0]!;
-  const x = q[1]!;
-  const y = q[2]!;
-  const z = q[3]!;
-  const sinPitch = 2 * (w * y - x * z);
-  // cos(pitch) from both of its columns: keeps full digits where asin alone loses half of them.
-  const c11 = w * w + x * x - y * y - z * z;
-  const c21 = 2 * (x * y + w * z);
-  const c32 = 2 * (y * z + w * x);
-  const c33 = w * w - x * x - y * y + z * z;
-  const cosPitch = Math.hypot(c11, c21);
-  out[1] = Math.atan2(sinPitch, cosPitch);
-  if (cosPitch > GIMBAL_COS) {
-    out[0] = Math.atan2(c32, c33);
-    out[2] = Math.atan2(c21, c11);
+  // w + y = (cos p/2 + sin p/2)·cos((yaw − roll)/2), z − x the sine; w − y and z + x likewise with the sum.
+  const differenceCos = q[0]! + q[2]!;
+  const differenceSin = q[3]! - q[1]!;
+  const sumCos = q[0]! - q[2]!;
+  const sumSin = q[3]! + q[1]!;
+  const high = Math.sqrt(differenceCos * differenceCos + differenceSin * differenceSin);
+  const low = Math.sqrt(sumCos * sumCos + sumSin * sumSin);
+  out[1] = 2 * Math.atan2(high, low) - Math.PI / 2;
+  const halfDifference = Math.atan2(differenceSin, differenceCos);
+  const halfSum = Math.atan2(sumSin, sumCos);
+  if (low < GIMBAL || high < GIMBAL) {
+    out[0] = 0;
+    out[2] = wrapAngle(2 * (low < GIMBAL ? halfDifference : halfSum));
     return out;
   }
-  out[0] = 0;
-  out[2] = Math.atan2(2 * (w * z - x * y), w * w - x * x + y * y - z * z);
+  out[0] = wrapAngle(halfSum - halfDifference);
+  out[2] = wrapAngle(halfSum + halfDifference);
   return out;
 }
-/** Below this cos(pitch), roll and yaw can no longer be told apart in double precision. */
-const GIMBAL_COS = 1e-9;
+/** Below this, roll and yaw can no longer be told apart in double precision. */
+const GIMBAL = 1e-12;
 
 /** Direction cosine matrix n←b of a unit quaternion, row by row in `out[0..8]`. */
 export function dcmFromQuat(q: Float64Array, out: Float64Array): Float64Array {
