@@ -4,9 +4,9 @@ import { buildServer } from './build/server-bundle';
 import { failWith } from './lib/project';
 
 /** Brings dist/ up to date. */
-export async function buildAll(log: (line: string) => void): Promise<void> {
+export async function buildAll(log: (line: string) => void, signal?: AbortSignal): Promise<void> {
   await buildServer();
-  buildClient(log);
+  await buildClient(log, signal);
 }
 
 if (require.main === module) {

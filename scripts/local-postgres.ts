@@ -32,6 +32,8 @@ export interface LocalPostgres {
   adminUrl: string;
   /** False where it was running already, or is somebody else's: then stop() leaves it alone. */
   started: boolean;
+  /** Resolves when the server is gone, stopped or not; never where it was not started here. */
+  ended: Promise<void>;
   stop(): Promise<void>;
 }
 
@@ -64,6 +66,7 @@ export async function startLocalPostgres(options: LocalPostgresOptions = {}): Pr
   return {
     ...urlsOf(secret, server.port),
     started: true,
+    ended: server.ended,
     stop: async () => {
       await server.stop();
       if (cluster.throwaway) rmSync(cluster.home, { recursive: true, force: true });
@@ -75,6 +78,7 @@ const foreign = (url: string, adminUrl: string): LocalPostgres => ({
   url,
   adminUrl,
   started: false,
+  ended: new Promise(() => undefined),
   stop: async () => undefined,
 });
 

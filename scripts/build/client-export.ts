@@ -1,8 +1,8 @@
 /** The web client as static files. */
-import { spawnSync } from 'node:child_process';
 import { existsSync, renameSync, rmSync } from 'node:fs';
 import path from 'node:path';
 import { BUILD, inRoot, ROOT } from '../lib/project';
+import { runAside } from '../lib/shell';
 import { hashInputs, isStamped, writeStamp } from './stamp';
 
 const INPUTS = [
@@ -12,13 +12,13 @@ const INPUTS = [
 const QUIET = { EXPO_NO_TELEMETRY: '1', EXPO_OFFLINE: '1', CI: '1', NODE_ENV: 'production' } as const;
 
 /** Exports where something has changed; answers whether it did. The old build stays until the new one is whole. */
-export function buildClient(log: (line: string) => void): boolean {
+export async function buildClient(log: (line: string) => void, signal?: AbortSignal): Promise<boolean> {
   const hash = hashInputs(INPUTS);
   if (isStamped('client', hash) && existsSync(path.join(BUILD.client, 'index.html'))) return false;
   log('Building the client (about a minute the first time) …');
   const unfinished = `${BUILD.client}.new`;
   rmSync(unfinished, { recursive: true, force: true });
-  expo(['export', '--platform', 'web', '--output-dir', path.relative(ROOT, unfinished)]);
+  await expo(['export', '--platform', 'web', '--output-dir', path.relative(ROOT, unfinished)], signal);
   rmSync(BUILD.client, { recursive: true, force: true });
   renameSync(unfinished, BUILD.client);
   writeStamp('client', hash);
@@ -26,18 +26,15 @@ export function buildClient(log: (line: string) => void): boolean {
 }
 
 /** Types of the routes in app/, which are generated and not kept in git. */
-export function writeRouteTypes(): void {
-  expo(['customize', 'tsconfig.json']);
+export async function writeRouteTypes(): Promise<void> {
+  await expo(['customize', 'tsconfig.json']);
 }
 
-function expo(args: string[]): void {
-  const result = spawnSync(process.execPath, [inRoot('node_modules/expo/bin/cli'), ...args], {
+async function expo(args: string[], signal?: AbortSignal): Promise<void> {
+  const result = await runAside(process.execPath, [inRoot('node_modules/expo/bin/cli'), ...args], {
     cwd: ROOT,
     env: { ...process.env, ...QUIET },
-    encoding: 'utf8',
-    stdio: ['ignore', 'pipe', 'pipe'],
+    signal,
   });
-  if (result.status !== 0) {
-    throw new Error(`"expo ${args[0]}" failed:\n${result.stdout}${result.stderr}`);
-  }
+  if (!result.ok) throw new Error(`"expo ${args[0]}" failed:\n${result.stdout}${result.stderr}`);
 }

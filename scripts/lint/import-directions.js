@@ -122,7 +122,7 @@ module.exports = {
       ExportAllDeclaration: (node) => check(node.source),
       ExportNamedDeclaration: (node) => check(node.source),
       ImportExpression: (node) => check(node.source),
-      TSImportType: (node) => check(node.argument.literal ?? node.argument),
+      TSImportType: (node) => check(node.source),
       CallExpression: (node) => node.callee.name === 'require' && check(node.arguments[0]),
     };
   },

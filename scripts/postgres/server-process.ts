@@ -4,12 +4,14 @@ import { closeSync, openSync, readFileSync } from 'node:fs';
 import type { Socket } from 'node:net';
 import path from 'node:path';
 import { freePort, isPortFree } from '../lib/ports';
-import { pause, run } from '../lib/shell';
+import { ended, hasEnded, pause, run } from '../lib/shell';
 import { giveTo } from './account';
 import { runAs, type Cluster } from './cluster';
 
 export interface ServerProcess {
   port: number;
+  /** Resolves when the server is gone, for whatever reason. */
+  ended: Promise<void>;
   stop(): Promise<void>;
 }
 
@@ -49,7 +51,7 @@ export async function startServer(cluster: Cluster, preferredPort: number): Prom
       // Neither the process nor its pipe keeps our event loop alive.
       child.unref();
       (child.stdin as Socket).unref();
-      return { port, stop: stopper(child) };
+      return { port, ended: ended(child), stop: stopper(child) };
     }
     child.stdin?.end();
     // The port was taken meanwhile, or processes of a killed server are still leaving.
@@ -94,8 +96,6 @@ async function becomesReady(cluster: Cluster, child: ChildProcess, port: number)
   return false;
 }
 
-const hasEnded = (child: ChildProcess) => child.exitCode !== null || child.signalCode !== null;
-
 function stopper(child: ChildProcess): () => Promise<void> {
   let stopping: Promise<void> | undefined;
   return () => (stopping ??= stop(child));
@@ -104,10 +104,9 @@ function stopper(child: ChildProcess): () => Promise<void> {
 async function stop(child: ChildProcess): Promise<void> {
   if (hasEnded(child)) return;
   child.ref();
-  const gone = new Promise<void>((resolve) => child.once('exit', () => resolve()));
   child.stdin?.end();
   const force = setTimeout(() => killGroup(child), STOP_LIMIT_MS);
-  await gone;
+  await ended(child);
   clearTimeout(force);
 }
 
