@@ -1,4 +1,4 @@
-import { router, type Href } from 'expo-router';
+import { router } from 'expo-router';
 import { Button } from '@/components/ui/Button';
 
 /** Back in the history, or to the page above when this one was opened directly. */
@@ -9,7 +9,7 @@ export function BackButton({ fallback }: { fallback: string }) {
       icon="back"
       iconOnly
       kind="plain"
-      onPress={() => (router.canGoBack() ? router.back() : router.replace(fallback as Href))}
+      onPress={() => (router.canGoBack() ? router.back() : router.replace(fallback))}
     />
   );
 }

@@ -1,0 +1,1 @@
+export { FirstAdminScreen as default } from '@/components/auth/FirstAdminScreen';

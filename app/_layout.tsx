@@ -1,0 +1,26 @@
+import { QueryClientProvider } from '@tanstack/react-query';
+import { Slot } from 'expo-router';
+import { StatusBar } from 'expo-status-bar';
+import { useState } from 'react';
+import { AppFonts } from '@/components/layout/AppFonts';
+import { ThemeProvider } from '@/components/ui/ThemeProvider';
+import { ToastProvider } from '@/components/ui/ToastProvider';
+import { makeQueryClient } from '@/hooks/query-client';
+
+export { RouteError as ErrorBoundary } from '@/components/layout/RouteError';
+
+export default function RootLayout() {
+  const [client] = useState(makeQueryClient);
+  return (
+    <ThemeProvider>
+      <QueryClientProvider client={client}>
+        <ToastProvider>
+          <StatusBar style="auto" />
+          <AppFonts>
+            <Slot />
+          </AppFonts>
+        </ToastProvider>
+      </QueryClientProvider>
+    </ThemeProvider>
+  );
+}

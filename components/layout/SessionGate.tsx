@@ -1,0 +1,99 @@
+import { useQueryClient } from '@tanstack/react-query';
+import { Redirect, usePathname, useGlobalSearchParams } from 'expo-router';
+import { useEffect, useMemo, useState, type ReactNode } from 'react';
+import { View } from 'react-native';
+import { space } from '@/constants/theme';
+import { ErrorState } from '@/components/ui/ErrorState';
+import { Notice } from '@/components/ui/Notice';
+import { SkeletonList } from '@/components/ui/Skeleton';
+import { setApiWorkspace, setSignedOutHandler } from '@/hooks/api';
+import { endSession, SessionContext, useMe, type Session } from '@/hooks/session';
+import { signInPath } from './next-path';
+
+const STORAGE_KEY = 'driftwright.workspace';
+
+/** Lets the signed-in through and gives them their session; everybody else signs in first and comes back here. */
+export function SessionGate({ children }: { children: ReactNode }) {
+  const me = useMe();
+  const client = useQueryClient();
+  const here = useHere();
+  const [chosen, setChosen] = useState<string | null>(storedWorkspace);
+  useEffect(() => setSignedOutHandler(() => endSession(client)), [client]);
+
+  const person = me.data;
+  const workspace = person?.workspaces.find((w) => w.id === chosen) ?? person?.workspaces[0];
+  // Before the children's first request, hence not in an effect.
+  setApiWorkspace(workspace?.id ?? null);
+  const session = useMemo<Session | null>(() => {
+    if (!person || !workspace) return null;
+    return {
+      user: person.user,
+      workspace,
+      workspaces: person.workspaces,
+      switchWorkspace: (id) => {
+        storeWorkspace(id);
+        setApiWorkspace(id);
+        setChosen(id);
+        client.removeQueries({ predicate: (query) => query.queryKey[0] !== 'me' });
+      },
+    };
+  }, [person, workspace, client]);
+
+  if (me.isPending)
+    return (
+      <Waiting>
+        <SkeletonList label="your workspace" rows={3} />
+      </Waiting>
+    );
+  if (me.isError)
+    return (
+      <Waiting>
+        <ErrorState
+          title="Driftwright could not be reached"
+          error={me.error}
+          onRetry={() => void me.refetch()}
+        />
+      </Waiting>
+    );
+  if (!person) return <Redirect href={signInPath(here)} />;
+  if (!session)
+    return (
+      <Waiting>
+        <Notice tone="ochre" title="No workspace yet">
+          You belong to no workspace. Ask an admin to invite you again.
+        </Notice>
+      </Waiting>
+    );
+  return <SessionContext.Provider value={session}>{children}</SessionContext.Provider>;
+}
+
+function Waiting({ children }: { children: ReactNode }) {
+  return (
+    <View role="main" style={{ padding: space.xl, maxWidth: 720, width: '100%', alignSelf: 'center' }}>
+      {children}
+    </View>
+  );
+}
+
+/** The path with its query, to come back to after signing in. */
+function useHere(): string {
+  const path = usePathname();
+  useGlobalSearchParams(); // the query may change while the path stays
+  const query = typeof location === 'undefined' || location.pathname !== path ? '' : location.search;
+  return path + query;
+}
+
+function storedWorkspace(): string | null {
+  try {
+    return globalThis.localStorage?.getItem(STORAGE_KEY) ?? null;
+  } catch {
+    return null;
+  }
+}
+function storeWorkspace(id: string) {
+  try {
+    globalThis.localStorage?.setItem(STORAGE_KEY, id);
+  } catch {
+    // storage may be forbidden: the first workspace is then taken at the next load
+  }
+}
