@@ -2,6 +2,5 @@
 import { prepare } from './lib/prepare.mjs';
 
 const startedAt = performance.now();
-await prepare();
-const { start } = await import('./start.ts');
-await start(startedAt);
+const require = await prepare();
+await require('./start.ts').start(startedAt);

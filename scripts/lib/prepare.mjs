@@ -4,18 +4,20 @@
  */
 import { spawn } from 'node:child_process';
 import { existsSync, readFileSync } from 'node:fs';
+import { createRequire } from 'node:module';
 import path from 'node:path';
 import { fileURLToPath } from 'node:url';
 
 const ROOT = path.resolve(path.dirname(fileURLToPath(import.meta.url)), '../..');
 const LEAST_NODE = [20, 19, 4];
 
-/** Checks Node, installs packages where they differ from the lock file, and lets `import` read TypeScript. */
+/** Checks Node, installs packages where they differ from the lock file; answers a `require` that reads TypeScript. */
 export async function prepare() {
   process.chdir(ROOT);
   requireNode(process.versions.node);
   if (!packagesMatch()) await installPackages();
   await import('tsx');
+  return createRequire(path.join(ROOT, 'scripts/'));
 }
 
 function requireNode(version) {

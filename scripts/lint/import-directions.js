@@ -79,11 +79,13 @@ const zoneOf = (file) =>
   NAMES.find((zone) => file === zone || file.startsWith(`${zone}/`) || file.startsWith(`${zone}.`));
 const rulesOf = (zone) => ZONES[ENTRIES.includes(zone) ? 'workers' : zone];
 
-/** Path of what is imported relative to the root, or undefined for a package. */
+/** Path of what is imported relative to the root, or undefined for a package. A bare folder means its index. */
 function target(specifier, file) {
-  if (specifier.startsWith('@/')) return specifier.slice(2);
-  if (specifier.startsWith('.')) return path.posix.join(path.posix.dirname(file), specifier);
-  return undefined;
+  if (!/^(@\/|\.)/.test(specifier)) return undefined;
+  const imported = specifier.startsWith('@/')
+    ? specifier.slice(2)
+    : path.posix.join(path.posix.dirname(file), specifier);
+  return imported === 'workers' ? 'workers/index' : imported;
 }
 
 /** What is wrong with importing `specifier` from `file` (relative to the root, with '/'), or undefined. */

@@ -24,6 +24,7 @@ describe('imports that go the right way', () => {
     ['components/bench/Bench.tsx', `import { Text } from '../ui/Text';`],
     ['hooks/runs.ts', `import { runSchema } from '@/shared/contracts/runs';`],
     ['server/services/runs.ts', `import { startPool } from '@/workers/index';`],
+    ['server/services/runs.ts', `import { startPool } from '@/workers';`],
     ['server/services/runs.ts', `import type { Pool } from '@/workers/protocol';`],
     ['server/services/runs.ts', `import { storeKeys } from '@/workers/store/types';`],
     ['server/demo/seed.ts', `import { demo } from '@/fixtures/demo';`],
