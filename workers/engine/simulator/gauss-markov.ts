@@ -1,0 +1,26 @@
+/** First-order Gauss–Markov process, discretised exactly. */
+import type { RandomSource } from '../random';
+
+/**
+ * Zero-mean process with standard deviation σ and correlation time τ (s), stationary from the start:
+ * x ← φx + w, φ = e^(−Δt/τ), var w = σ²(1 − φ²) (Gelb 1974). τ = 0 is white.
+ */
+export class GaussMarkov {
+  value: number;
+
+  constructor(
+    private readonly sigma: number,
+    private readonly tauS: number,
+    private readonly random: RandomSource,
+  ) {
+    this.value = sigma * random.normal();
+  }
+
+  /** The value after `dt` seconds. */
+  step(dt: number): number {
+    if (this.tauS === 0) return (this.value = this.sigma * this.random.normal());
+    const x = dt / this.tauS;
+    const drive = this.sigma * Math.sqrt(-Math.expm1(-2 * x));
+    return (this.value = Math.exp(-x) * this.value + drive * this.random.normal());
+  }
+}
