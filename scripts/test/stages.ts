@@ -3,7 +3,6 @@ import { spawn, type ChildProcess } from 'node:child_process';
 import { existsSync, readFileSync } from 'node:fs';
 import path from 'node:path';
 import { writeRouteTypes } from '../build/client-export';
-import { buildAll } from '../build';
 import { findChromium } from '../lib/chromium';
 import { inRoot, ROOT } from '../lib/project';
 
@@ -55,7 +54,6 @@ export const STAGES: Stage[] = [
     name: 'browser',
     run: async (context) => {
       findChromium(console.log);
-      await buildAll(console.log, context.stopping);
       return jest(context, 'browser', ['e2e'], ['--runInBand']);
     },
   },
