@@ -27,6 +27,7 @@ export interface LiveTransport {
   unfollow: (runId: string) => void;
   /** Answers a function that stops listening. */
   listen: (handlers: LiveHandlers) => () => void;
+  close: () => void;
 }
 
 export type LivePhase = 'idle' | 'starting' | 'running' | 'done' | 'failed' | 'cancelled';
@@ -68,29 +69,41 @@ export class LiveController {
   private posting = false;
   private startedAt = -Infinity;
   private timer: ReturnType<typeof setTimeout> | null = null;
-  private closed = false;
   private readonly stateListeners = new Set<() => void>();
   private readonly dataListeners = new Set<() => void>();
-  private readonly stopListening: () => void;
-  /** Frames that overtake the answer of their own POST. */
-  private early: Frame[] = [];
 
   /** The run that is coming in; null before the first. */
   private incoming: RunData | null = null;
   /** Curves on screen: the newest run that has drawn anything, and the one before for what it has not reached. */
   data: { current: RunData | null; previous: RunData | null } = { current: null, previous: null };
 
+  private transport: LiveTransport | null = null;
+
+  /** Nothing is sent before `open`. */
   constructor(
-    private readonly transport: LiveTransport,
+    private readonly connect: () => LiveTransport,
     private readonly now: () => number = () => performance.now(),
-  ) {
-    this.stopListening = transport.listen({
+  ) {}
+
+  /** Connects, and sends what was asked for meanwhile. Answers a function that disconnects. */
+  open(): () => void {
+    const transport = this.connect();
+    this.transport = transport;
+    const stopListening = transport.listen({
       frame: (frame) => this.onFrame(frame),
       progress: (message) => this.onProgress(message),
       summary: (runId, summary) => void this.onSummary(runId, summary),
       failed: (message) => this.onFailed(message),
       reconnected: () => void this.onReconnected(),
     });
+    this.pump();
+    return () => {
+      if (this.timer) clearTimeout(this.timer);
+      if (this.current.runId) transport.unfollow(this.current.runId);
+      stopListening();
+      transport.close();
+      this.transport = null;
+    };
   }
 
   get state(): LiveState {
@@ -125,7 +138,7 @@ export class LiveController {
     this.wanted = null;
     const { runId, phase } = this.current;
     if (!runId || phase !== 'running') return;
-    await this.transport.cancel(runId).catch(() => undefined);
+    await this.transport?.cancel(runId).catch(() => undefined);
   }
 
   /** Shows a finished run without starting one: for those who may only look. */
@@ -135,17 +148,11 @@ export class LiveController {
     await this.finishFrom(run);
   }
 
-  close(): void {
-    this.closed = true;
-    if (this.timer) clearTimeout(this.timer);
-    if (this.current.runId) this.transport.unfollow(this.current.runId);
-    this.stopListening();
-  }
-
   private pump(): void {
     if (this.timer) clearTimeout(this.timer);
     this.timer = null;
-    if (!this.wanted || this.posting || this.closed) return;
+    const { transport } = this;
+    if (!this.wanted || this.posting || !transport) return;
     const going = this.current.phase === 'running' || this.current.phase === 'starting';
     const wait = this.startedAt + DRAG_INTERVAL_MS - this.now();
     if (going && !this.wanted.settled && wait > 0) {
@@ -154,23 +161,22 @@ export class LiveController {
     }
     const { request } = this.wanted;
     this.wanted = null;
-    void this.start(request);
+    void this.start(transport, request);
   }
 
-  private async start(request: RunCreateInput): Promise<void> {
+  private async start(transport: LiveTransport, request: RunCreateInput): Promise<void> {
     this.posting = true;
     this.startedAt = this.now();
     this.patch({ phase: 'starting', reason: null, tookS: null });
     try {
-      const run = await this.transport.create(request);
-      if (this.closed) return;
+      const run = await transport.create(request);
+      if (this.transport !== transport) return;
       this.begin(run.id, request);
       if (isOver(run)) await this.finishFrom(run);
     } catch (error) {
       this.patch({ phase: 'failed', reason: wordsOf(error) });
     } finally {
       this.posting = false;
-      this.early = [];
       this.pump();
     }
   }
@@ -178,25 +184,22 @@ export class LiveController {
   /** From here on only frames of `runId` count. */
   private begin(runId: string, request: RunCreateInput): void {
     const before = this.current.runId;
-    if (before && before !== runId) this.transport.unfollow(before);
+    if (before && before !== runId) this.transport?.unfollow(before);
     this.incoming = new RunData(runId);
     this.activeRequest = request;
     this.patch({ phase: 'running', runId, progress: 0, reason: null });
-    this.transport.follow(runId);
-    for (const frame of this.early) this.onFrame(frame);
+    this.transport?.follow(runId);
   }
 
   private onFrame(frame: Frame): void {
     const { incoming } = this;
-    if (this.posting && frame.head.runId !== incoming?.runId) {
-      if (this.early.length < 200) this.early.push(frame);
-    }
     if (!incoming || frame.head.runId !== incoming.runId || incoming.complete) return;
     const result = incoming.append(frame);
     if (result === 'ignored') return;
     this.showIncoming();
     this.patch({ progress: incoming.progress });
-    if (result === 'gap') void this.mend(incoming);
+    // Where the server has no series before the end, the summary brings it.
+    if (result === 'gap') void this.fetchInto(incoming, false);
   }
 
   /** The first rows of a newer run put it on screen; the one before stays behind for what is not reached yet. */
@@ -220,8 +223,9 @@ export class LiveController {
     const { incoming } = this;
     if (!incoming || runId !== incoming.runId || incoming.complete) return;
     if (incoming.holed || incoming.empty || !reached(incoming, summary)) {
-      await this.fetchInto(incoming, true);
+      const problem = await this.fetchInto(incoming, true);
       if (this.incoming !== incoming) return;
+      if (problem) return this.patch({ phase: 'failed', reason: problem });
     }
     this.complete(incoming, summary);
   }
@@ -252,40 +256,47 @@ export class LiveController {
   /** After a break the run may have gone on or ended unheard. */
   private async onReconnected(): Promise<void> {
     const { runId, phase } = this.current;
-    if (!runId || phase !== 'running') return;
-    this.transport.follow(runId);
+    const { transport } = this;
+    if (!transport || !runId || phase !== 'running') return;
+    transport.follow(runId);
     try {
-      const run = await this.transport.fetchRun(runId);
+      const run = await transport.fetchRun(runId);
       if (this.current.runId !== runId || this.current.phase !== 'running') return;
       if (isOver(run)) await this.finishFrom(run);
-      else if (this.incoming) await this.mend(this.incoming);
+      else if (this.incoming) await this.fetchInto(this.incoming, false);
     } catch (error) {
       if (this.current.runId === runId) this.patch({ phase: 'failed', reason: wordsOf(error) });
     }
   }
 
-  /** Fetches what was missed; where the server has no series before the end, the summary brings it. */
-  private async mend(data: RunData): Promise<void> {
-    await this.fetchInto(data, false).catch(() => undefined);
-  }
-
-  private async fetchInto(data: RunData, complete: boolean): Promise<void> {
-    const frame = await this.transport.fetchSeries(data.runId);
-    if (this.incoming !== data || data.complete) return;
-    data.replace(frame, complete);
-    this.showIncoming();
+  /** Fetches all that the run has so far. Answers what went wrong, in words, or null. */
+  private async fetchInto(data: RunData, complete: boolean): Promise<string | null> {
+    try {
+      const frame = await this.transport?.fetchSeries(data.runId);
+      if (!frame) return null;
+      if (this.incoming !== data || data.complete) return null;
+      data.replace(frame, complete);
+      this.showIncoming();
+      return null;
+    } catch (error) {
+      return wordsOf(error);
+    }
   }
 
   private async finishFrom(run: Run): Promise<void> {
     const { incoming } = this;
     if (!incoming || incoming.runId !== run.id) return;
     if (run.state !== 'done' || !run.summary) {
-      const reason = run.failure ?? (run.state === 'superseded' ? 'A newer run took its place.' : 'The run was cancelled.');
+      const reason =
+        run.failure ??
+        (run.state === 'superseded' ? 'A newer run took its place.' : 'The run was cancelled.');
       this.patch({ phase: run.state === 'failed' ? 'failed' : 'cancelled', reason });
       return;
     }
-    if (run.hasSeries) await this.fetchInto(incoming, true);
-    if (this.incoming === incoming) this.complete(incoming, run.summary);
+    const problem = run.hasSeries ? await this.fetchInto(incoming, true) : null;
+    if (this.incoming !== incoming) return;
+    if (problem) return this.patch({ phase: 'failed', reason: problem });
+    this.complete(incoming, run.summary);
   }
 
   private patch(change: Partial<LiveState>): void {

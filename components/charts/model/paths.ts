@@ -24,7 +24,7 @@ export function linePath(line: Polyline): string {
 export function bandPath(upper: Polyline, lower: Polyline): string {
   const [tops, bottoms] = [pieces(upper), pieces(lower)];
   return tops
-    .map((top, i) => (bottoms[i] ? `${joined(top)}L${joined(bottoms[i]!.reverse()).slice(1)}Z` : ''))
+    .map((top, i) => (bottoms[i] ? `${joined(top)}L${joined(bottoms[i].reverse()).slice(1)}Z` : ''))
     .join('');
 }
 

@@ -1,0 +1,103 @@
+import { useSyncExternalStore } from 'react';
+import { StyleSheet, View } from 'react-native';
+import Svg, { Path, Rect } from 'react-native-svg';
+import { Text } from '@/components/ui/Text';
+import { useTheme } from '@/components/ui/ThemeProvider';
+import { fonts, space } from '@/constants/theme';
+import { formatNumber } from '@/shared/format';
+import type { ChartGroup } from './chart-group';
+import { inkOf } from './drawing/layer-style';
+import type { ChartContent, Layer } from './model/layers';
+import { nearestIndex } from './model/series';
+import { formatAxisTime } from './model/ticks';
+
+/** Title, what each line is, and at the cursor its value; the unit to the right. */
+export function ChartLegend({
+  content,
+  group,
+  beyond,
+}: {
+  content: ChartContent;
+  group: ChartGroup;
+  beyond: string;
+}) {
+  const cursor = useSyncExternalStore(group.cursor.subscribe, () => group.cursor.current);
+  const named = content.layers.filter((layer) => layer.label !== undefined);
+  return (
+    <View style={styles.row}>
+      <Text variant="label" strong level={3}>
+        {content.title}
+      </Text>
+      <View style={styles.legend}>
+        {named.map((layer) => (
+          <View key={layer.id} style={styles.entry}>
+            <Sample layer={layer} />
+            <Text variant="small" tone="soft">
+              {layer.label}
+            </Text>
+            {cursor === null ? null : <Reading layer={layer} timeS={cursor} />}
+          </View>
+        ))}
+      </View>
+      <Text variant="small" tone="soft" style={styles.unit}>
+        {[cursor === null ? beyond : `at ${formatAxisTime(cursor, 0.1)}`, content.remark, content.unit]
+          .filter(Boolean)
+          .join(' · ')}
+      </Text>
+    </View>
+  );
+}
+
+function Reading({ layer, timeS }: { layer: Layer; timeS: number }) {
+  const value = readLayer(layer, timeS);
+  if (value === null) return null;
+  return (
+    <Text variant="small" style={styles.number}>
+      {(layer.kind === 'band' ? '±' : '') + formatNumber(value, 3)}
+    </Text>
+  );
+}
+
+/** The layer's value at `timeS`; null where it has none within a few of its own intervals. */
+export function readLayer(layer: Layer, timeS: number): number | null {
+  if (layer.kind === 'rules') return layer.values()[0] ?? null;
+  const series = layer.series();
+  if (!series) return null;
+  const index = nearestIndex(series, timeS);
+  if (index < 0) return null;
+  const value = series.at(index);
+  const spacing =
+    series.length > 1 ? (series.time[series.length - 1]! - series.time[0]!) / (series.length - 1) : 1;
+  const near = Math.abs(series.time[index]! - timeS) <= Math.max(1, 3 * spacing);
+  return near && Number.isFinite(value) ? value : null;
+}
+
+function Sample({ layer }: { layer: Layer }) {
+  const { palette } = useTheme();
+  const ink = inkOf(layer, palette);
+  if (layer.kind === 'band' || layer.kind === 'area')
+    return (
+      <Svg width={16} height={10} aria-hidden>
+        <Rect x={0.5} y={1} width={15} height={8} {...ink} strokeOpacity={0.6} fillOpacity={0.2} />
+      </Svg>
+    );
+  const d =
+    layer.kind === 'dots'
+      ? 'M3 5h0M8 3h0M13 6h0'
+      : layer.kind === 'diamonds'
+        ? 'M8 1l4 4l-4 4l-4 -4Z'
+        : 'M0 5H18';
+  return (
+    <Svg width={18} height={10} aria-hidden>
+      <Path d={d} {...ink} />
+    </Svg>
+  );
+}
+
+const styles = StyleSheet.create({
+  row: { flexDirection: 'row', flexWrap: 'wrap', alignItems: 'center', columnGap: space.m, minHeight: 24 },
+  legend: { flexDirection: 'row', flexWrap: 'wrap', flexGrow: 1, columnGap: space.m, alignItems: 'center' },
+  entry: { flexDirection: 'row', alignItems: 'center', gap: space.xs },
+  unit: { marginLeft: 'auto' },
+  number: { fontFamily: fonts.number },
+});

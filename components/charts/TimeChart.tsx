@@ -1,0 +1,210 @@
+import { useCallback, useEffect, useLayoutEffect, useMemo, useRef, useState } from 'react';
+import { StyleSheet, View } from 'react-native';
+import Svg, { ClipPath, Defs, G, Path, Rect } from 'react-native-svg';
+import { useTheme } from '@/components/ui/ThemeProvider';
+import { web } from '@/components/ui/web-props';
+import { formatNumber } from '@/shared/format';
+import { bindChartGestures, chartKey } from './chart-gestures';
+import type { ChartGroup } from './chart-group';
+import { ChartLegend } from './ChartLegend';
+import { ChartTable } from './ChartTable';
+import { ChartAnnotations, ChartAxes, type AxesDrawing } from './drawing/ChartAxes';
+import { inkOf } from './drawing/layer-style';
+import { ShapeSet } from './drawing/shape-set';
+import type { ChartContent } from './model/layers';
+import { chartBuffers, drawChart, type PlotBox } from './model/time-chart';
+
+export interface TimeChartProps {
+  content: ChartContent;
+  group: ChartGroup;
+  /** Of the whole chart: title, plot, time axis. */
+  height: number;
+  /** Clock labels below; the last chart of a stack shows them for all. */
+  timeAxis?: boolean;
+}
+
+const GUTTER_PX = 46;
+const HEAD_PX = 26;
+
+/** One chart of a stack that shares time and cursor. React draws frame and axes; curves are set straight on the page. */
+export function TimeChart({ content, group, height, timeAxis = true }: TimeChartProps) {
+  const { palette } = useTheme();
+  const [width, setWidth] = useState(0);
+  const [headPx, setHeadPx] = useState(HEAD_PX);
+  const [axes, setAxes] = useState<AxesDrawing & { beyond: string }>(NO_AXES);
+  const plotHeight = Math.max(40, height - headPx);
+  const box = useMemo<PlotBox>(
+    () => ({
+      left: GUTTER_PX,
+      top: 4,
+      right: Math.max(GUTTER_PX + 10, width - 10),
+      bottom: plotHeight - (timeAxis ? 24 : 8),
+    }),
+    [width, plotHeight, timeAxis],
+  );
+  const [shapes] = useState(() => new ShapeSet());
+  const clipId = `clip-${content.id}`;
+  const { surface, onKeyDown } = useChartSurface(group, box);
+  useDrawing({ content, group, box, width, shapes, setAxes });
+
+  return (
+    <View style={{ height }} onLayout={(event) => setWidth(event.nativeEvent.layout.width)}>
+      <View
+        style={[styles.head, { paddingLeft: GUTTER_PX }]}
+        onLayout={(event) => setHeadPx(event.nativeEvent.layout.height)}
+      >
+        <ChartLegend content={content} group={group} beyond={axes.beyond} />
+      </View>
+      <View
+        ref={surface}
+        role="group"
+        aria-label={`${content.title}. ${content.sentence()} ${KEYS_HINT}`}
+        {...web({ tabIndex: 0, onKeyDown, 'aria-roledescription': 'chart over time' })}
+        style={[styles.surface, { height: plotHeight }]}
+      >
+        {width > 0 ? (
+          <Svg width={width} height={plotHeight} aria-hidden>
+            <Defs>
+              <ClipPath id={clipId}>
+                <Rect
+                  x={box.left}
+                  y={box.top}
+                  width={box.right - box.left}
+                  height={Math.max(1, box.bottom - box.top)}
+                />
+              </ClipPath>
+            </Defs>
+            <Path ref={shapes.ref('tint')} d="" fill={palette.vermilion} fillOpacity={0.08} />
+            <ChartAxes axes={axes} box={box} timeAxis={timeAxis} />
+            <Path
+              ref={shapes.ref('hatch')}
+              d=""
+              stroke={palette.vermilion}
+              strokeOpacity={0.38}
+              strokeWidth={1}
+            />
+            <Path
+              ref={shapes.ref('edges')}
+              d=""
+              stroke={palette.vermilion}
+              strokeOpacity={0.5}
+              strokeWidth={1}
+            />
+            <G clipPath={`url(#${clipId})`}>
+              {content.layers.map((layer) => {
+                const { fill, fillOpacity, ...stroke } = inkOf(layer, palette);
+                return (
+                  <G key={layer.id}>
+                    <Path
+                      ref={shapes.ref(`${layer.id}.fill`)}
+                      d=""
+                      fill={fill}
+                      fillOpacity={fillOpacity}
+                      stroke="none"
+                    />
+                    <Path
+                      ref={shapes.ref(`${layer.id}.stroke`)}
+                      d=""
+                      fill="none"
+                      {...stroke}
+                      strokeLinejoin="round"
+                    />
+                  </G>
+                );
+              })}
+            </G>
+            <ChartAnnotations annotations={axes.annotations} />
+            <Path ref={shapes.ref('cursor')} d="" stroke={palette.petrol} strokeWidth={1.5} />
+          </Svg>
+        ) : null}
+      </View>
+      <ChartTable content={content} group={group} />
+    </View>
+  );
+}
+
+interface DrawingInput {
+  content: ChartContent;
+  group: ChartGroup;
+  box: PlotBox;
+  width: number;
+  shapes: ShapeSet;
+  setAxes: (axes: AxesDrawing & { beyond: string }) => void;
+}
+
+/** Draws with the group's frames: paths straight to the page, axes to React only when they differ. */
+function useDrawing({ content, group, box, width, shapes, setAxes }: DrawingInput): void {
+  const keep = useRef(chartBuffers());
+  const lastAxes = useRef('');
+  useLayoutEffect(() => {
+    if (width === 0) return;
+    const drawCursor = () => {
+      const at = group.cursor.current;
+      const [from, to] = group.viewport.current;
+      const inView = at !== null && at >= from && at <= to;
+      const x = inView ? box.left + ((at - from) / (to - from || 1)) * (box.right - box.left) : 0;
+      shapes.set('cursor', inView ? `M${Math.round(x * 10) / 10} ${box.top}V${box.bottom}` : '');
+    };
+    const draw = () => {
+      const drawing = drawChart(content, group.viewport.current, box, keep.current);
+      for (const [id, paths] of Object.entries(drawing.layers)) {
+        shapes.set(`${id}.fill`, paths.fill);
+        shapes.set(`${id}.stroke`, paths.stroke);
+      }
+      shapes.set('tint', drawing.ground.tint);
+      shapes.set('hatch', drawing.ground.hatch);
+      shapes.set('edges', drawing.ground.edges);
+      drawCursor();
+      const axes = {
+        valueTicks: drawing.valueTicks,
+        timeTicks: drawing.timeTicks,
+        annotations: drawing.annotations,
+        beyond: beyondText(drawing.beyond, content.unit),
+      };
+      const key = JSON.stringify(axes);
+      if (key !== lastAxes.current) {
+        lastAxes.current = key;
+        setAxes(axes);
+      }
+    };
+    const remove = group.add(draw);
+    const unsubscribe = group.cursor.subscribe(drawCursor);
+    return () => {
+      remove();
+      unsubscribe();
+    };
+  }, [content, group, box, width, shapes, setAxes]);
+}
+
+function useChartSurface(group: ChartGroup, box: PlotBox) {
+  const surface = useRef<View>(null);
+  const edges = useRef(box);
+  useEffect(() => {
+    edges.current = box;
+  }, [box]);
+  useEffect(() => {
+    const element = surface.current as unknown as HTMLElement | null;
+    if (!element?.addEventListener) return;
+    return bindChartGestures(element, group, () => edges.current);
+  }, [group]);
+  const onKeyDown = useCallback(
+    (event: { key: string; shiftKey: boolean; preventDefault: () => void }) => {
+      if (chartKey(group, event.key, event.shiftKey)) event.preventDefault();
+    },
+    [group],
+  );
+  return { surface, onKeyDown };
+}
+
+const beyondText = ({ count, largest }: { count: number; largest: number }, unit: string) =>
+  count === 0
+    ? ''
+    : `${count} beyond the scale, largest ${formatNumber(largest, 3)}${unit ? ` ${unit}` : ''}`;
+
+const NO_AXES = { valueTicks: [], timeTicks: [], annotations: [], beyond: '' };
+const KEYS_HINT = 'Arrow keys move the cursor, plus and minus zoom, 0 shows all.';
+
+const styles = StyleSheet.create({
+  head: { paddingRight: 10 },
+  surface: { userSelect: 'none', cursor: 'auto' },
+});

@@ -1,0 +1,63 @@
+/** Runs over REST: one, its series, lists. Live frames bypass this cache (live/). */
+import { useQuery } from '@tanstack/react-query';
+import { decodeFrame } from '@/shared/contracts/frames';
+import type { Page } from '@/shared/contracts/common';
+import type { Run, RunListItem, RunState } from '@/shared/contracts/runs';
+import { api, apiBytes, apiUrl } from './api';
+import { RunData } from './live/run-data';
+import { STALE } from './query-client';
+
+export const runKeys = {
+  all: ['runs'] as const,
+  lists: ['runs', 'list'] as const,
+  list: (query: RunListQuery) => ['runs', 'list', query] as const,
+  one: (id: string) => ['runs', 'one', id] as const,
+  curves: (id: string) => ['runs', 'curves', id] as const,
+};
+
+export interface RunListQuery {
+  recordingId?: string;
+  state?: RunState;
+  limit?: number;
+}
+
+/** GET /runs/:id; not asked while `id` is null. */
+export function useRun(id: string | null) {
+  return useQuery({
+    queryKey: runKeys.one(id ?? ''),
+    queryFn: () => api<Run>(`/runs/${id}`),
+    enabled: id !== null,
+    staleTime: STALE.slow,
+  });
+}
+
+/** GET /runs, newest first. */
+export function useRuns(query: RunListQuery, enabled = true) {
+  return useQuery({
+    queryKey: runKeys.list(query),
+    queryFn: () => api<Page<RunListItem>>('/runs', { query: { ...query } }),
+    enabled,
+  });
+}
+
+/** A finished run's curves, whole: for a baseline's ghost. */
+export function useRunCurves(id: string | null) {
+  return useQuery({
+    queryKey: runKeys.curves(id ?? ''),
+    queryFn: async () => fetchCurves(id ?? ''),
+    enabled: id !== null,
+    staleTime: Infinity,
+  });
+}
+
+/** Address of a run's file for download. */
+export const runFileUrl = (
+  id: string,
+  file: 'solution.csv' | 'innovations.csv' | 'track.geojson' | 'track.kml' | 'track.gpx',
+) => apiUrl(`/runs/${id}/${file}`);
+
+async function fetchCurves(id: string): Promise<RunData> {
+  const data = new RunData(id);
+  data.replace(decodeFrame(await apiBytes(`/runs/${id}/series`, { query: { points: 3000 } })), true);
+  return data;
+}
