@@ -3,4 +3,4 @@ import { prepare } from './lib/prepare.mjs';
 
 const startedAt = performance.now();
 const require = await prepare();
-await require('./start.ts').start(startedAt);
+await require('./start.ts').start({ startedAt });

@@ -5,7 +5,7 @@ import { BUILD, inRoot, ROOT } from '../lib/project';
 import { runAside } from '../lib/shell';
 import { hashInputs, isStamped, writeStamp } from './stamp';
 
-const INPUTS = [
+export const CLIENT_INPUTS = [
   ...['app', 'components', 'hooks', 'constants', 'shared', 'assets'],
   ...['app.json', 'babel.config.js', 'metro.config.js', 'package-lock.json', 'tsconfig.json'],
 ];
@@ -13,7 +13,7 @@ const QUIET = { EXPO_NO_TELEMETRY: '1', EXPO_OFFLINE: '1', CI: '1', NODE_ENV: 'p
 
 /** Exports where something has changed; answers whether it did. The old build stays until the new one is whole. */
 export async function buildClient(log: (line: string) => void, signal?: AbortSignal): Promise<boolean> {
-  const hash = hashInputs(INPUTS);
+  const hash = hashInputs(CLIENT_INPUTS);
   if (isStamped('client', hash) && existsSync(path.join(BUILD.client, 'index.html'))) return false;
   log('Building the client (about a minute the first time) …');
   const unfinished = `${BUILD.client}.new`;

@@ -5,7 +5,7 @@ import { build, type BuildOptions } from 'esbuild';
 import { BUILD, inRoot, ROOT } from '../lib/project';
 import { hashInputs, isStamped, writeStamp } from './stamp';
 
-const INPUTS = [
+export const SERVER_INPUTS = [
   'server',
   'workers',
   'shared',
@@ -29,7 +29,7 @@ const COMMON: BuildOptions = {
 
 /** Bundles where something has changed; answers whether it did. */
 export async function buildServer(): Promise<boolean> {
-  const hash = hashInputs(INPUTS);
+  const hash = hashInputs(SERVER_INPUTS);
   if (isStamped('server', hash) && [BUILD.server, BUILD.worker].every((file) => existsSync(file)))
     return false;
   await build({

@@ -2,18 +2,18 @@
 import { createHash } from 'node:crypto';
 import { existsSync, mkdirSync, readdirSync, readFileSync, statSync, writeFileSync } from 'node:fs';
 import path from 'node:path';
-import { BUILD, inRoot } from '../lib/project';
+import { BUILD, ROOT } from '../lib/project';
 
 export type BuildPart = 'client' | 'server';
 type Stamps = Partial<Record<BuildPart, string>>;
 
-/** Hex SHA-256 over the names and contents of files and folders, given relative to the project's root. */
-export function hashInputs(inputs: readonly string[]): string {
+/** Hex SHA-256 over the names and contents of files and folders, given relative to `root`; what is missing counts as empty. */
+export function hashInputs(inputs: readonly string[], root: string = ROOT): string {
   const hash = createHash('sha256');
-  for (const file of inputs.flatMap(filesUnder)) {
+  for (const file of inputs.flatMap((input) => filesUnder(root, input))) {
     hash
       .update(`${file}\0`)
-      .update(readFileSync(inRoot(file)))
+      .update(readFileSync(path.join(root, file)))
       .update('\0');
   }
   return hash.digest('hex');
@@ -35,10 +35,11 @@ function readStamps(): Stamps {
   }
 }
 
-function filesUnder(input: string): string[] {
-  if (!existsSync(inRoot(input))) return [];
-  if (!statSync(inRoot(input)).isDirectory()) return [input];
-  return readdirSync(inRoot(input))
+function filesUnder(root: string, input: string): string[] {
+  const place = path.join(root, input);
+  if (!existsSync(place)) return [];
+  if (!statSync(place).isDirectory()) return [input];
+  return readdirSync(place)
     .sort()
-    .flatMap((name) => filesUnder(path.join(input, name)));
+    .flatMap((name) => filesUnder(root, path.join(input, name)));
 }
