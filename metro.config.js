@@ -1,21 +1,36 @@
+const path = require('node:path');
 const { getDefaultConfig } = require('expo/metro-config');
-const path = require('path');
+const { FileStore } = require('metro-cache');
 
 /** @type {import('expo/metro-config').MetroConfig} */
 const config = getDefaultConfig(__dirname);
 
-// Keep the bundler (crawler, watcher, resolver) out of the server-side folders.
-const esc = (s) => s.replace(/[.*+?^${}()|[\]\\]/g, '\\$&');
-const outside = ['server', 'workers', 'tests', 'fixtures', 'dist', '.data', 'coverage'].map(
-  (d) => new RegExp('^' + esc(path.join(__dirname, d)) + '(/|$)'),
-);
+// Keep the bundler (crawler, watcher, resolver) out of the folders that no client code may import.
+const OUTSIDE = [
+  'server',
+  'workers',
+  'tests',
+  'fixtures',
+  'scripts',
+  'dist',
+  '.data',
+  'artifacts',
+  'coverage',
+];
+const escaped = (text) => text.replace(/[.*+?^${}()|[\]\\]/g, '\\$&');
+const outside = OUTSIDE.map((folder) => new RegExp(`^${escaped(path.join(__dirname, folder))}(/|$)`));
 const existing = config.resolver.blockList;
 config.resolver.blockList = [
   ...(Array.isArray(existing) ? existing : existing ? [existing] : []),
   ...outside,
 ];
 
-// zod's index re-exports every locale and Metro does not drop unused re-exports: keep English only.
+// Beside the packages instead of in the common temporary folder: there, two users of one machine would share it.
+const cache = path.join(__dirname, 'node_modules/.cache/metro');
+config.cacheStores = [new FileStore({ root: cache })];
+config.fileMapCacheDirectory = cache;
+
+// zod's index re-exports every locale, and Metro does not drop unused re-exports: keep English alone.
 const upstream = config.resolver.resolveRequest;
 config.resolver.resolveRequest = (context, name, platform) => {
   if (/locales\/index\.js$/.test(name) && /[\\/]node_modules[\\/]zod[\\/]/.test(context.originModulePath)) {
