@@ -1,6 +1,7 @@
 import { Redirect, useLocalSearchParams } from 'expo-router';
 import { View } from 'react-native';
 import { nextPath } from '@/components/layout/next-path';
+import { hrefOf } from '@/components/layout/paths';
 import { messageOf } from '@/components/ui/ErrorState';
 import { Notice } from '@/components/ui/Notice';
 import { TextLink } from '@/components/ui/TextLink';
@@ -18,7 +19,7 @@ export function SignInScreen() {
   const installation = useInstallation();
   const signIn = useSignIn();
   const demo = useSignIn();
-  if (me.data) return <Redirect href={nextPath(next)} />;
+  if (me.data) return <Redirect href={hrefOf(nextPath(next))} />;
   if (installation.data?.needsFirstAdmin) return <Redirect href="/first-admin" />;
   return (
     <AuthPage title="Sign in" lead={next ? 'Then on to the page that you asked for.' : undefined}>

@@ -20,12 +20,7 @@ export function FormChoice<T extends FieldValues, V extends string>({
       control={control}
       name={name}
       render={({ field, fieldState }) => (
-        <Choice
-          {...rest}
-          value={field.value}
-          onChange={field.onChange}
-          error={fieldState.error?.message}
-        />
+        <Choice {...rest} value={field.value} onChange={field.onChange} error={fieldState.error?.message} />
       )}
     />
   );

@@ -1,3 +1,4 @@
+import type { Href } from 'expo-router';
 import type { ReactNode } from 'react';
 import { ScrollView, StyleSheet, View } from 'react-native';
 import { space } from '@/constants/theme';
@@ -13,7 +14,7 @@ export interface ScreenProps {
   /** A line under the title. */
   subtitle?: ReactNode;
   /** Where the back button leads when there is no history; left out: no back button. */
-  back?: string;
+  back?: Href;
   actions?: ReactNode;
   children: ReactNode;
   /** Widest the content grows; `full` takes the screen. */

@@ -9,6 +9,7 @@ import { SkeletonList } from '@/components/ui/Skeleton';
 import { setApiWorkspace, setSignedOutHandler } from '@/hooks/api';
 import { endSession, SessionContext, useMe, type Session } from '@/hooks/session';
 import { signInPath } from './next-path';
+import { hrefOf } from './paths';
 
 const STORAGE_KEY = 'driftwright.workspace';
 
@@ -55,7 +56,7 @@ export function SessionGate({ children }: { children: ReactNode }) {
         />
       </Waiting>
     );
-  if (!person) return <Redirect href={signInPath(here)} />;
+  if (!person) return <Redirect href={hrefOf(signInPath(here))} />;
   if (!session)
     return (
       <Waiting>

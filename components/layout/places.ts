@@ -1,10 +1,11 @@
+import type { Href } from 'expo-router';
 import type { IconName } from '@/components/ui/Icon';
 import type { Permission } from '@/shared/contracts/roles';
 
 export interface Place {
   name: string;
   label: string;
-  href: string;
+  href: Href & string;
   icon: IconName;
   /** Left out of the way for those who may not. */
   needs?: Permission;

@@ -1,10 +1,10 @@
-import { Link } from 'expo-router';
+import { Link, type Href } from 'expo-router';
 import { StyleSheet } from 'react-native';
 import { fonts, touchTarget, typeScale } from '@/constants/theme';
 import { useTheme } from './ThemeProvider';
 
 export interface TextLinkProps {
-  href: string;
+  href: Href;
   label: string;
   /** Where the same words lead to several places: "Open Breakwater loop 3". */
   spoken?: string;

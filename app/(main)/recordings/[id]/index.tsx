@@ -1,0 +1,7 @@
+import { useLocalSearchParams } from 'expo-router';
+import { RecordingScreen } from '@/components/recordings/RecordingScreen';
+
+export default function RecordingRoute() {
+  const { id } = useLocalSearchParams<{ id: string }>();
+  return <RecordingScreen id={id} />;
+}

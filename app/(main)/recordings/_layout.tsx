@@ -1,0 +1,1 @@
+export { RecordingsLayout as default } from '@/components/recordings/RecordingsLayout';

@@ -1,0 +1,1 @@
+export { UploadScreen as default } from '@/components/recordings/UploadScreen';

@@ -1,0 +1,19 @@
+/** Addresses of pages that take an id. */
+import type { Href } from 'expo-router';
+
+export const recordingPath = (id: string): Href => ({ pathname: '/recordings/[id]', params: { id } });
+export const mappingPath = (id: string): Href => ({ pathname: '/recordings/[id]/mapping', params: { id } });
+export const setPath = (id: string): Href => ({ pathname: '/sets/[id]', params: { id } });
+export const vehiclePath = (id: string): Href => ({ pathname: '/vehicles/[id]', params: { id } });
+
+/** The bench over a recording, optionally with a version's parameters. */
+export const benchPath = (recordingId: string, version?: { setId: string; number: number }): Href => ({
+  pathname: '/bench/[recordingId]',
+  params: version ? { recordingId, set: version.setId, version: String(version.number) } : { recordingId },
+});
+
+/** A path that is only known while running, as the router's type. */
+export function hrefOf(path: string): Href;
+export function hrefOf(path: unknown): unknown {
+  return path;
+}

@@ -1,0 +1,143 @@
+import { StyleSheet, View } from 'react-native';
+import { Card } from '@/components/ui/Card';
+import { Figures } from '@/components/ui/Figures';
+import { Icon } from '@/components/ui/Icon';
+import { Quantity } from '@/components/ui/Quantity';
+import { Text } from '@/components/ui/Text';
+import { useTheme } from '@/components/ui/ThemeProvider';
+import { hairline, space } from '@/constants/theme';
+import { formatClock } from '@/shared/format';
+import type { HealthFinding, HealthReport, Severity } from '@/shared/contracts/recordings';
+import { VERDICTS } from './status';
+
+/** What the intake found: the verdict first, then each finding with its figure, its times and what to do. */
+export function HealthCard({ health }: { health: HealthReport }) {
+  const { palette } = useTheme();
+  const verdict = VERDICTS[health.verdict];
+  return (
+    <Card bare>
+      <View style={[styles.verdict, { borderLeftColor: palette[verdict.tone] }]}>
+        <Text variant="heading" tone={verdict.tone}>
+          {capital(verdict.word)}
+        </Text>
+        <Text>{health.sentence}</Text>
+      </View>
+      <View style={[styles.figures, { borderTopColor: palette.rule }]}>
+        <Headline
+          label="IMU rate"
+          value={health.imu.rateHz}
+          unit="Hz"
+          note={`${count(health.imu.samples)} samples`}
+        />
+        <Headline
+          label="GNSS rate"
+          value={health.gnss.rateHz}
+          unit="Hz"
+          note={`${count(health.gnss.epochs)} fixes`}
+        />
+        <Headline
+          label="IMU gaps"
+          value={health.imu.gaps}
+          unit=""
+          note={health.imu.gaps === 0 ? 'none' : 'marked on the strip'}
+        />
+      </View>
+      {health.findings.map((finding) => (
+        <Finding key={`${finding.code}-${finding.intervalsS[0]?.[0] ?? ''}`} finding={finding} />
+      ))}
+    </Card>
+  );
+}
+
+function Headline({
+  label,
+  value,
+  unit,
+  note,
+}: {
+  label: string;
+  value: number;
+  unit: string;
+  note: string;
+}) {
+  return (
+    <View style={styles.headline}>
+      <Text variant="label" tone="soft">
+        {label}
+      </Text>
+      <Quantity value={value} unit={unit} size="heading" />
+      <Figures variant="small" tone="soft">
+        {note}
+      </Figures>
+    </View>
+  );
+}
+
+function Finding({ finding }: { finding: HealthFinding }) {
+  const { palette } = useTheme();
+  const { tone, icon, word } = SEVERITIES[finding.severity];
+  return (
+    <View style={[styles.finding, { borderTopColor: palette.rule, borderLeftColor: palette[tone] }]}>
+      <Icon name={icon} tone={tone} size={20} />
+      <View style={styles.words}>
+        <Text variant="small" tone={tone} strong>
+          {word}
+        </Text>
+        <Figures variant="body">{finding.sentence}</Figures>
+        {finding.intervalsS.length > 0 ? (
+          <Figures tone="soft">{`At ${times(finding.intervalsS)}`}</Figures>
+        ) : null}
+        {finding.remedy ? (
+          <Text variant="label" tone="soft">
+            {finding.remedy}
+          </Text>
+        ) : null}
+      </View>
+      {finding.figure ? (
+        <Quantity value={finding.figure.value} unit={finding.figure.unit} size="label" align="right" />
+      ) : null}
+    </View>
+  );
+}
+
+/** "7:00–8:00, 13:20 and 12 more" */
+export function times(intervals: readonly (readonly [number, number])[], shown = 3): string {
+  const named = intervals
+    .slice(0, shown)
+    .map(([from, to]) => (to - from < 1 ? formatClock(from) : `${formatClock(from)}–${formatClock(to)}`))
+    .join(', ');
+  const rest = intervals.length - shown;
+  return rest > 0 ? `${named} and ${rest} more` : named;
+}
+
+const count = (n: number) => n.toLocaleString('en').replaceAll(',', '\u2009');
+const capital = (word: string) => word.charAt(0).toUpperCase() + word.slice(1);
+
+const SEVERITIES: Record<
+  Severity,
+  { tone: 'petrol' | 'ochre' | 'vermilion'; icon: 'info' | 'warn' | 'stop'; word: string }
+> = {
+  info: { tone: 'petrol', icon: 'info', word: 'Good to know' },
+  warn: { tone: 'ochre', icon: 'warn', word: 'With care' },
+  stop: { tone: 'vermilion', icon: 'stop', word: 'Stops its use' },
+};
+
+const styles = StyleSheet.create({
+  verdict: { padding: space.l, gap: space.xs, borderLeftWidth: 3, borderTopLeftRadius: 5 },
+  figures: {
+    flexDirection: 'row',
+    flexWrap: 'wrap',
+    padding: space.l,
+    gap: space.l,
+    borderTopWidth: hairline,
+  },
+  headline: { flexGrow: 1, flexBasis: 96, minWidth: 0 },
+  finding: {
+    flexDirection: 'row',
+    gap: space.m,
+    padding: space.l,
+    borderTopWidth: hairline,
+    borderLeftWidth: 3,
+  },
+  words: { flex: 1, gap: 2 },
+});

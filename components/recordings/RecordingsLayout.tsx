@@ -1,0 +1,22 @@
+import { usePathname } from 'expo-router';
+import { MasterDetail } from '@/components/layout/MasterDetail';
+import { usePathId } from '@/components/layout/use-path-id';
+import { itemsOf, useRecordings } from '@/hooks/recordings';
+import { RecordingList } from './RecordingList';
+import { UploadButton } from './UploadButton';
+
+/** The list beside whatever recording is open. */
+export function RecordingsLayout() {
+  const path = usePathname();
+  const opened = usePathId('recordings');
+  const first = itemsOf(useRecordings().data)[0]?.id;
+  const whole = path === '/recordings/upload' || path.endsWith('/mapping');
+  return (
+    <MasterDetail
+      title="Recordings"
+      action={<UploadButton />}
+      list={<RecordingList currentId={opened ?? first} />}
+      showList={!whole && first !== undefined}
+    />
+  );
+}

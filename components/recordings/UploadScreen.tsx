@@ -1,0 +1,173 @@
+import { zodResolver } from '@hookform/resolvers/zod';
+import { router } from 'expo-router';
+import { useCallback } from 'react';
+import { useForm, type UseFormReturn } from 'react-hook-form';
+import { View } from 'react-native';
+import { z } from 'zod';
+import { FormChoice } from '@/components/forms/FormChoice';
+import { FormField } from '@/components/forms/FormField';
+import { recordingPath } from '@/components/layout/paths';
+import { Screen } from '@/components/layout/Screen';
+import { Button } from '@/components/ui/Button';
+import { Card } from '@/components/ui/Card';
+import { messageOf } from '@/components/ui/ErrorState';
+import { NoPermission } from '@/components/ui/NoPermission';
+import { Notice } from '@/components/ui/Notice';
+import { Text } from '@/components/ui/Text';
+import { space } from '@/constants/theme';
+import { useCan } from '@/hooks/session';
+import { useUpload, type UploadState } from '@/hooks/use-upload';
+import { useVehicles } from '@/hooks/vehicles';
+import { nameSchema } from '@/shared/contracts/common';
+import type { Recording } from '@/shared/contracts/recordings';
+import { FilePick } from './FilePick';
+import { UploadProgress } from './UploadProgress';
+
+const file = (what: string) => z.custom<File>((value) => Boolean(value), `Choose the ${what}.`);
+const uploadSchema = z.object({
+  name: nameSchema,
+  vehicleId: z.string(),
+  imu: file('IMU log'),
+  gnss: file('GNSS log'),
+  reference: z.custom<File | undefined>(() => true),
+});
+type UploadForm = z.infer<typeof uploadSchema>;
+
+/** Pick the logs of one drive, name it, send it; then the recording's own page watches it decode. */
+export function UploadScreen() {
+  const mayUpload = useCan('recording:write');
+  const form = useForm<UploadForm>({
+    resolver: zodResolver(uploadSchema),
+    defaultValues: { name: '', vehicleId: '' },
+  });
+  const done = useCallback((recording: Recording) => router.replace(recordingPath(recording.id)), []);
+  const upload = useUpload(done);
+  const sending = upload.state.phase === 'sending';
+  const submit = form.handleSubmit(async ({ name, vehicleId, ...files }) => {
+    await upload.start({ meta: { name, vehicleId: vehicleId || undefined }, ...files });
+  });
+  if (!mayUpload)
+    return (
+      <Screen title="Upload a recording" back="/recordings" width="text">
+        <NoPermission message="Viewers read; an engineer, approver or admin uploads recordings." />
+      </Screen>
+    );
+  return (
+    <Screen
+      title="Upload a recording"
+      subtitle="The logs of one drive or flight. Nothing is kept of an upload that does not arrive whole."
+      back="/recordings"
+      width="text"
+    >
+      <Card title="Files">
+        <Files form={form} disabled={sending} />
+      </Card>
+      <Card title="What it is">
+        <About form={form} disabled={sending} />
+      </Card>
+      <Outcome state={upload.state} />
+      {upload.state.phase === 'sending' ? (
+        <UploadProgress state={upload.state} onCancel={upload.cancel} />
+      ) : (
+        <View style={{ flexDirection: 'row', justifyContent: 'flex-end' }}>
+          <Button label="Upload" icon="upload" kind="primary" onPress={() => void submit()} />
+        </View>
+      )}
+    </Screen>
+  );
+}
+
+function Files({ form, disabled }: { form: UseFormReturn<UploadForm>; disabled: boolean }) {
+  const { errors } = form.formState;
+  const [imu, gnss, reference] = form.watch(['imu', 'gnss', 'reference']);
+  const take = (role: 'imu' | 'gnss' | 'reference') => (chosen: File | undefined) => {
+    form.setValue(role, chosen as File, { shouldValidate: form.formState.isSubmitted });
+    if (role === 'imu' && chosen && form.getValues('name') === '')
+      form.setValue('name', nameFromFile(chosen.name), { shouldValidate: form.formState.isSubmitted });
+  };
+  return (
+    <View style={{ gap: space.m }}>
+      <FilePick
+        label="IMU log"
+        hint="CSV with time, three gyro and three accelerometer columns; gzip is fine."
+        file={imu}
+        onPick={take('imu')}
+        error={errors.imu?.message}
+        disabled={disabled}
+      />
+      <FilePick
+        label="GNSS log"
+        hint="CSV with time, latitude and longitude; velocity and accuracies if the receiver gives them."
+        file={gnss}
+        onPick={take('gnss')}
+        error={errors.gnss?.message}
+        disabled={disabled}
+      />
+      <FilePick
+        label="Reference trajectory"
+        hint="A better trajectory of the same drive, against which drift is then measured."
+        file={reference}
+        onPick={take('reference')}
+        optional
+        disabled={disabled}
+      />
+      <Text variant="label" tone="soft">
+        Columns whose headers name channel and unit, like time_s, gyro_x_deg_s or lat_deg, are understood; for
+        any others you say on the next page what they mean.
+      </Text>
+    </View>
+  );
+}
+
+function About({ form, disabled }: { form: UseFormReturn<UploadForm>; disabled: boolean }) {
+  const vehicles = useVehicles();
+  return (
+    <View style={{ gap: space.l }}>
+      <FormField
+        control={form.control}
+        name="name"
+        label="Name"
+        placeholder="Breakwater loop 3"
+        editable={!disabled}
+        required
+      />
+      <FormChoice
+        control={form.control}
+        name="vehicleId"
+        label="Vehicle"
+        placeholder="No vehicle yet"
+        options={(vehicles.data ?? []).map((vehicle) => ({ value: vehicle.id, label: vehicle.name }))}
+        hint="It gives the antenna’s lever arm and how the IMU is mounted; it can be set later."
+        disabled={disabled}
+      />
+    </View>
+  );
+}
+
+function Outcome({ state }: { state: UploadState }) {
+  if (state.phase === 'failed')
+    return (
+      <Notice tone="vermilion" urgent title="The upload did not arrive">
+        {`${messageOf(state.error)} The files are still chosen.`}
+      </Notice>
+    );
+  if (state.phase === 'cancelled')
+    return (
+      <Notice tone="ochre" urgent title="Cancelled">
+        Nothing of it was kept. The files are still chosen.
+      </Notice>
+    );
+  return null;
+}
+
+/** "breakwater_loop-3_imu.csv.gz" → "Breakwater loop 3" */
+export function nameFromFile(name: string): string {
+  const plain = name
+    .replace(/\.gz$/i, '')
+    .replace(/\.[a-z0-9]+$/i, '')
+    .replace(/[_-]+/g, ' ')
+    .replace(/\b(imu|log|data)\b/gi, '')
+    .replace(/\s+/g, ' ')
+    .trim();
+  return plain.charAt(0).toUpperCase() + plain.slice(1);
+}

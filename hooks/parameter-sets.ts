@@ -1,0 +1,56 @@
+/** Parameter sets and their versions. */
+import { useInfiniteQuery, useMutation, useQuery, useQueryClient } from '@tanstack/react-query';
+import type { Page } from '@/shared/contracts/common';
+import type {
+  ParameterSet,
+  ParameterSetCreateInput,
+  ParameterSetDetail,
+  ParameterSetVersion,
+  VersionCreateInput,
+} from '@/shared/contracts/parameter-sets';
+import { api } from './api';
+import { STALE } from './query-client';
+
+export const setKeys = {
+  all: ['parameter-sets'] as const,
+  list: (search: string) => ['parameter-sets', 'list', search] as const,
+  one: (id: string) => ['parameter-sets', 'one', id] as const,
+};
+
+export function useParameterSets(search = '') {
+  return useInfiniteQuery({
+    queryKey: setKeys.list(search),
+    queryFn: ({ pageParam, signal }) =>
+      api<Page<ParameterSet>>('/parameter-sets', { query: { search, cursor: pageParam, limit: 50 }, signal }),
+    initialPageParam: '',
+    getNextPageParam: (page) => page.nextCursor ?? undefined,
+    staleTime: STALE.list,
+  });
+}
+
+/** One set with all its versions. */
+export function useParameterSet(id: string) {
+  return useQuery({
+    queryKey: setKeys.one(id),
+    queryFn: ({ signal }) => api<ParameterSetDetail>(`/parameter-sets/${id}`, { signal }),
+    enabled: id !== '',
+  });
+}
+
+export function useCreateParameterSet() {
+  const client = useQueryClient();
+  return useMutation({
+    mutationFn: (input: ParameterSetCreateInput) =>
+      api<ParameterSetDetail>('/parameter-sets', { method: 'POST', body: input }),
+    onSuccess: () => client.invalidateQueries({ queryKey: setKeys.all }),
+  });
+}
+
+export function useCreateVersion(setId: string) {
+  const client = useQueryClient();
+  return useMutation({
+    mutationFn: (input: VersionCreateInput) =>
+      api<ParameterSetVersion>(`/parameter-sets/${setId}/versions`, { method: 'POST', body: input }),
+    onSuccess: () => client.invalidateQueries({ queryKey: setKeys.all }),
+  });
+}
