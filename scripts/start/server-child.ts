@@ -2,10 +2,8 @@
 import { spawn, type ChildProcess } from 'node:child_process';
 import { closeSync, openSync, readFileSync } from 'node:fs';
 import { BUILD } from '../lib/project';
-import { hasEnded, pause } from '../lib/shell';
 
 export interface ServerOptions {
-  address: string;
   logFile: string;
   env: Record<string, string>;
 }
@@ -25,25 +23,23 @@ export function launchServer(options: ServerOptions): ChildProcess {
   return child;
 }
 
-/** Resolves when the server answers, or when `stopping` is aborted; throws with the end of its log when it does not. */
+/** Resolves when the server takes requests, or `stopping` is aborted; throws with the end of its log where it does not. */
 export async function serverReady(
   child: ChildProcess,
-  options: ServerOptions,
+  logFile: string,
   stopping?: AbortSignal,
 ): Promise<void> {
-  const deadline = Date.now() + READY_LIMIT_MS;
-  while (!hasEnded(child) && Date.now() < deadline) {
-    if (stopping?.aborted || (await answers(options.address))) return;
-    await pause(50);
-  }
-  const end = readFileSync(options.logFile, 'utf8').trim().split('\n').slice(-8).join('\n');
-  throw new Error(`The server did not start. The end of ${options.logFile}:\n${end}`);
-}
-
-async function answers(address: string): Promise<boolean> {
-  try {
-    return (await fetch(`${address}/api/v1/health`, { signal: AbortSignal.timeout(2000) })).ok;
-  } catch {
-    return false; // not listening yet
-  }
+  const ready = await new Promise<boolean>((resolve) => {
+    const limit = setTimeout(() => resolve(false), READY_LIMIT_MS);
+    const settle = (answer: boolean) => {
+      clearTimeout(limit);
+      resolve(answer);
+    };
+    child.once('message', () => settle(true));
+    child.once('exit', () => settle(false));
+    stopping?.addEventListener('abort', () => settle(true));
+  });
+  if (ready) return;
+  const end = readFileSync(logFile, 'utf8').trim().split('\n').slice(-8).join('\n');
+  throw new Error(`The server did not start. The end of ${logFile}:\n${end}`);
 }

@@ -73,7 +73,6 @@ export class Stack {
   private async startServer(databaseUrl: string): Promise<void> {
     if (this.stopping.aborted) return;
     const options: ServerOptions = {
-      address: this.address,
       logFile: this.logFile,
       env: {
         DATABASE_URL: databaseUrl,
@@ -85,7 +84,7 @@ export class Stack {
       },
     };
     this.server = launchServer(options);
-    await serverReady(this.server, options, this.stopping);
+    await serverReady(this.server, this.logFile, this.stopping);
   }
 
   /** Resolves with the name of what is gone, a restart of our own apart. */

@@ -59,9 +59,8 @@ export class Stack {
   }
 
   async start(): Promise<void> {
-    const options = { address: this.url, logFile: this.logFile, env: this.env };
-    this.server = launchServer(options);
-    await serverReady(this.server, options);
+    this.server = launchServer({ logFile: this.logFile, env: this.env });
+    await serverReady(this.server, this.logFile);
   }
 
   /** kill -9 of the server. */
