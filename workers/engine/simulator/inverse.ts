@@ -21,7 +21,7 @@ const LATITUDE_LIMIT = (89.5 * Math.PI) / 180;
 /**
  * Truth at each of `timeS` (s, increasing; the place holds at the first), and the IMU samples that belong to the
  * intervals ending there: ∫ω dt and ∫f dt in body axes by four-point Gauss–Legendre quadrature over panels shorter than
- * a quarter period of the motion's highest frequency. The first sample's interval is as long as the second's.
+ * a sixth of the period of the motion's highest frequency. The first sample's interval is as long as the second's.
  * @throws EngineError 'latitude' when the track leaves ±89.5°.
  */
 export function inverseMechanisation(
@@ -70,7 +70,7 @@ export class TrackWalker {
     this.lat = start.latRad;
     this.lon = start.lonRad;
     this.height = start.heightM;
-    this.panelS = Math.min(0.25 / motion.bandwidthHz, 0.05);
+    this.panelS = Math.min(0.15 / motion.bandwidthHz, 0.05);
   }
 
   /** Moves to `t`, leaving the increments since the last call in `sums`. */
