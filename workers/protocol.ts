@@ -17,6 +17,7 @@ import type {
 } from '@/shared/contracts/recordings';
 import type { Scenario } from '@/shared/contracts/scenarios';
 import type { AxisMap } from '@/shared/contracts/vehicles';
+import type { StoreConfig } from './store/types';
 
 export interface DecodeJob {
   kind: 'decode';
@@ -122,14 +123,18 @@ export interface JobResults {
   'run-export': { key: string; bytes: number };
 }
 export type WorkerJob =
-  DecodeJob | RunJob | RecordingSeriesJob | BaselineTrackJob | RunSeriesJob | RunExportJob;
+  DecodeJob | ScenarioJob | RunJob | RecordingSeriesJob | BaselineTrackJob | RunSeriesJob | RunExportJob;
 export type JobKind = WorkerJob['kind'];
+export type JobOf<K extends JobKind> = Extract<WorkerJob, { kind: K }>;
 
 /** What a job reports while it works. */
 export type JobEvent = { type: 'progress'; progress: number } | { type: 'frame'; frame: Uint8Array };
 
-/** Parent → child. `cancel` may come at any time. */
-export type ToWorker = { type: 'job'; id: number; job: WorkerJob } | { type: 'cancel'; id: number };
+/** Parent → child. `init` comes first and once; `cancel` may come at any time. */
+export type ToWorker =
+  | { type: 'init'; store: StoreConfig; cacheBytes: number }
+  | { type: 'job'; id: number; job: WorkerJob }
+  | { type: 'cancel'; id: number };
 /** Child → parent. */
 export type FromWorker =
   | { type: 'ready' }
@@ -171,6 +176,8 @@ export interface Pool {
       latestKey?: string;
       /** Jobs of one affinity prefer the same process, which keeps that recording in memory. */
       affinity?: string;
+      /** Runs the job once more, from the start, when its process dies under it; left out: WorkerCrashed at once. */
+      retryOnCrash?: boolean;
       onEvent?: (event: JobEvent) => void;
     },
   ): { result: Promise<JobResults[J['kind']]>; cancel(): void };

@@ -1,6 +1,6 @@
 /** Recordings: upload, channel map, decoding, what the intake found, decimated series. */
 import { z } from 'zod';
-import { idSchema, isoTimeSchema, nameSchema } from './common';
+import { idSchema, isoTimeSchema, nameSchema, pageQuerySchema } from './common';
 import { axisMapSchema } from './vehicles';
 
 export const recordingStatusSchema = z.enum(['uploaded', 'decoding', 'ready', 'needs-mapping', 'rejected']);
@@ -49,7 +49,7 @@ export const imuMapSchema = z.object({
 export type ImuMap = z.infer<typeof imuMapSchema>;
 
 export const angleUnitSchema = z.enum(['deg', 'rad']);
-export const speedUnitSchema = z.enum(['m/s', 'km/h', 'kn']);
+export const speedUnitSchema = z.enum(['m/s', 'mm/s', 'km/h', 'kn']);
 
 export const positionMapSchema = z.object({
   lat: column,
@@ -222,6 +222,25 @@ export const recordingSchema = z.object({
   previews: z.array(filePreviewSchema),
 });
 export type Recording = z.infer<typeof recordingSchema>;
+
+/** GET /recordings. `sort` is a field, with a minus sign for descending. */
+export const recordingListQuerySchema = pageQuerySchema.extend({
+  sort: z.enum(['-createdAt', 'createdAt', 'name', '-name']).default('-createdAt'),
+  status: recordingStatusSchema.optional(),
+  vehicleId: idSchema.optional(),
+});
+export type RecordingListQuery = z.infer<typeof recordingListQuerySchema>;
+
+/** GET /recordings/:id/baseline-track: the GNSS-only solution, thinned. */
+export const baselineTrackQuerySchema = z.object({
+  points: z.coerce.number().int().min(10).max(10_000).default(1500),
+});
+export const baselineTrackSchema = z.object({
+  timeS: z.array(z.number()),
+  latDeg: z.array(z.number()),
+  lonDeg: z.array(z.number()),
+});
+export type BaselineTrack = z.infer<typeof baselineTrackSchema>;
 
 /** Every channel of a decoded recording that plots may ask for, with its unit. */
 export const SERIES_CHANNELS = {

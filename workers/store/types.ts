@@ -11,6 +11,8 @@ export interface Store {
   /** Throws StoreKeyMissing. */
   bytes(key: string): Promise<Uint8Array>;
   has(key: string): Promise<boolean>;
+  /** Bytes stored under `key`. Throws StoreKeyMissing. */
+  size(key: string): Promise<number>;
   /** Keys that start with `prefix`, in any order. */
   list(prefix: string): Promise<string[]>;
   /** Removes every key that starts with `prefix`; silent where there is none. */
@@ -24,6 +26,18 @@ export class StoreKeyMissing extends Error {
   }
 }
 
+/** The backing refused (disk full, no permission …): `message` says so in plain words, `code` is the system's. */
+export class StoreFailed extends Error {
+  constructor(
+    readonly code: string,
+    message: string,
+    options?: ErrorOptions,
+  ) {
+    super(message, options);
+    this.name = 'StoreFailed';
+  }
+}
+
 /** How a worker process opens the same store as the server. */
 export type StoreConfig = { kind: 'folder'; root: string };
 
@@ -34,6 +48,8 @@ export const storeKeys = {
   imu: (recordingId: string) => `recordings/${recordingId}/imu.arrow`,
   gnss: (recordingId: string) => `recordings/${recordingId}/gnss.arrow`,
   reference: (recordingId: string) => `recordings/${recordingId}/reference.arrow`,
+  /** What the decoded files are and their hashes; written last, so that a recording without it is not decoded. */
+  decoded: (recordingId: string) => `recordings/${recordingId}/decoded.json`,
   /** GNSS-only baseline track. */
   gnssOnly: (recordingId: string) => `recordings/${recordingId}/gnss-only.arrow`,
   run: (runId: string) => `runs/${runId}/`,

@@ -1,0 +1,8 @@
+/** What the server may use of the workers: the pool with its messages, and the store. */
+export * from './protocol';
+export { createPool, WorkerPool, type PoolOptions } from './pool';
+export type { PoolLog } from './worker-process';
+export { openStore, sweepStore } from './store/open';
+export { safeFileName } from './store/keys';
+export { storeKeys, StoreFailed, StoreKeyMissing, type Store, type StoreConfig } from './store/types';
+export { ENGINE_VERSION } from './engine/types';

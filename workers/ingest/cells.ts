@@ -1,0 +1,20 @@
+/** Cells of a table as numbers. */
+
+const MISSING = /^(nan|[-+]?inf(inity)?|null|none|na|n\/a|-+|nil)?$/i;
+
+/**
+ * The number in a cell: NaN where there is none (empty, NaN, infinite, or beyond the end of a short row), undefined where
+ * there is something else than a number.
+ */
+export function numberIn(cell: string | undefined, decimalComma: boolean): number | undefined {
+  if (cell === undefined) return NaN;
+  const value = Number(decimalComma ? cell.replace(',', '.') : cell);
+  // An empty cell would count as 0; hexadecimal and the like are no measurements.
+  if (value - value === 0 && value !== 0) return /[xXbBoO]/.test(cell) ? undefined : value;
+  const text = cell.trim();
+  if (MISSING.test(text)) return NaN;
+  return value === 0 ? 0 : undefined;
+}
+
+/** Number of the column that `name` stands for, or -1. Blanks around it do not matter. */
+export const columnIndex = (headers: readonly string[], name: string) => headers.indexOf(name.trim());

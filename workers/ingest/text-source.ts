@@ -1,0 +1,170 @@
+/** A raw upload as text, chunk by chunk: unpacked where it is gzip, decoded as UTF-8 or UTF-16, refused where it is binary. */
+import { Readable } from 'node:stream';
+import { createGunzip } from 'node:zlib';
+import type { FileRole } from '@/shared/contracts/recordings';
+import type { Store } from '../store/types';
+import { FILE_NAMES, rejection } from './problems';
+
+export interface RawFile {
+  role: FileRole;
+  name: string;
+  key: string;
+}
+
+export interface TextSource {
+  /** Line ends are '\n'; a byte-order mark is gone. */
+  chunks: AsyncGenerator<string>;
+  /** Share of the stored bytes that has been read, 0…1. */
+  readShare(): number;
+}
+
+/** Text logs shrink about tenfold; far beyond it is no honest log. */
+const MAX_EXPANSION = 250;
+const EXPANSION_FREE_BYTES = 32 * 1024 * 1024;
+const PROBE_BYTES = 64 * 1024;
+const UTF16_MARKS = ['fffe', 'feff'];
+
+/** Throws (while it is read) IntakeRejected: empty, binary, damaged or over-expanding gzip. Throws StoreKeyMissing. */
+export async function openText(store: Store, file: RawFile): Promise<TextSource> {
+  const total = Math.max(1, await store.size(file.key));
+  const stream = await store.stream(file.key);
+  let read = 0;
+  const counted = async function* () {
+    for await (const chunk of stream as AsyncIterable<Uint8Array>) {
+      read += chunk.length;
+      yield chunk;
+    }
+  };
+  return {
+    chunks: closing(
+      normalised(
+        decoded(
+          unpacked(counted(), file, () => read),
+          file,
+        ),
+      ),
+      stream,
+    ),
+    readShare: () => Math.min(1, read / total),
+  };
+}
+
+/** Whoever stops reading early leaves no open file behind. */
+async function* closing(chunks: AsyncGenerator<string>, stream: Readable): AsyncGenerator<string> {
+  try {
+    yield* chunks;
+  } finally {
+    stream.destroy();
+  }
+}
+
+async function* unpacked(
+  bytes: AsyncGenerator<Uint8Array>,
+  file: RawFile,
+  readBytes: () => number,
+): AsyncGenerator<Uint8Array> {
+  const [first, rest] = await probed(bytes, 2);
+  if (first[0] !== 0x1f || first[1] !== 0x8b) {
+    yield first;
+    yield* rest;
+    return;
+  }
+  const chained = async function* () {
+    yield first;
+    yield* rest;
+  };
+  const gunzip = createGunzip();
+  const packed = Readable.from(chained(), { objectMode: false });
+  packed.on('error', (error) => gunzip.destroy(error));
+  let unpackedBytes = 0;
+  try {
+    for await (const chunk of packed.pipe(gunzip) as AsyncIterable<Uint8Array>) {
+      unpackedBytes += chunk.length;
+      if (unpackedBytes > EXPANSION_FREE_BYTES && unpackedBytes > MAX_EXPANSION * readBytes())
+        throw rejection(
+          'gzip-expands', { file: file.role },
+          `The ${FILE_NAMES[file.role]} unpacks to more than ${MAX_EXPANSION} times its size, which no log does.`,
+          'Upload the log itself, or pack it again from the original.',
+        ); // prettier-ignore
+      yield chunk;
+    }
+  } catch (error) {
+    throw isZlibError(error) ? damagedGzip(file) : error;
+  } finally {
+    packed.destroy();
+    gunzip.destroy();
+  }
+}
+
+async function* decoded(bytes: AsyncGenerator<Uint8Array>, file: RawFile): AsyncGenerator<string> {
+  const [first, rest] = await probed(bytes, PROBE_BYTES);
+  if (first.length === 0) throw empty(file);
+  const mark = Buffer.from(first.subarray(0, 2)).toString('hex');
+  const isUtf16 = UTF16_MARKS.includes(mark);
+  if (!isUtf16) refuseBinary(first, file);
+  const decoder = new TextDecoder(mark === 'feff' ? 'utf-16be' : isUtf16 ? 'utf-16le' : 'utf-8');
+  yield decoder.decode(first, { stream: true });
+  for await (const chunk of rest) yield decoder.decode(chunk, { stream: true });
+  yield decoder.decode();
+}
+
+/** Every kind of line end becomes '\n', also where a '\r\n' lies across two chunks. */
+async function* normalised(text: AsyncGenerator<string>): AsyncGenerator<string> {
+  let held = '';
+  for await (const piece of text) {
+    let chunk = held + piece;
+    held = '';
+    if (chunk.endsWith('\r')) {
+      held = '\r';
+      chunk = chunk.slice(0, -1);
+    }
+    if (chunk.includes('\r')) chunk = chunk.replace(/\r\n?/g, '\n');
+    if (chunk) yield chunk;
+  }
+  if (held) yield '\n';
+}
+
+/** At least `length` bytes from the start (fewer only where there are no more), and what follows. */
+async function probed(
+  bytes: AsyncGenerator<Uint8Array>,
+  length: number,
+): Promise<[Uint8Array, AsyncGenerator<Uint8Array>]> {
+  const parts: Uint8Array[] = [];
+  let size = 0;
+  while (size < length) {
+    const next = await bytes.next();
+    if (next.done) break;
+    parts.push(next.value);
+    size += next.value.length;
+  }
+  return [parts.length === 1 ? parts[0]! : Buffer.concat(parts), bytes];
+}
+
+function refuseBinary(start: Uint8Array, file: RawFile): void {
+  const probe = start.subarray(0, PROBE_BYTES);
+  const control = probe.reduce((count, byte) => count + (byte < 9 || (byte > 13 && byte < 32) ? 1 : 0), 0);
+  if (!probe.includes(0) && control <= probe.length * 0.02) return;
+  const isZip = probe[0] === 0x50 && probe[1] === 0x4b;
+  throw rejection(
+    'binary', { file: file.role },
+    `The ${FILE_NAMES[file.role]} is ${isZip ? 'a ZIP archive or a spreadsheet' : 'binary'}, not text.`,
+    'Export the log as CSV (plain or packed with gzip) and upload that.',
+  ); // prettier-ignore
+}
+
+export const empty = (file: { role: FileRole }) =>
+  rejection(
+    'empty', { file: file.role },
+    `The ${FILE_NAMES[file.role]} is empty.`,
+    'Check that the log was copied completely, then upload it again.',
+  ); // prettier-ignore
+
+const damagedGzip = (file: RawFile) =>
+  rejection(
+    'gzip-damaged', { file: file.role },
+    `The ${FILE_NAMES[file.role]} is packed with gzip but cannot be unpacked to its end.`,
+    'Check that the log was copied completely, pack it again and upload it.',
+  ); // prettier-ignore
+
+const isZlibError = (error: unknown) =>
+  String((error as NodeJS.ErrnoException | null)?.code).startsWith('Z_');

@@ -1,0 +1,96 @@
+/** Raw uploads to a checked, decoded recording in the store. A bad file is an outcome that says what to do, not an error. */
+import { createHash } from 'node:crypto';
+import type { FileRole, IntakeProblem } from '@/shared/contracts/recordings';
+import { previewOf, settleMaps } from '../ingest/channel-maps';
+import { headerOnly, readHead, type CsvHead } from '../ingest/csv';
+import { decodeFiles, type DecodedFiles } from '../ingest/decode-files';
+import { IntakeRejected } from '../ingest/problems';
+import { openText, type RawFile } from '../ingest/text-source';
+import type { DecodeJob, DecodeResult } from '../protocol';
+import { writeDecodedNote } from '../recordings/files';
+import { storeKeys, type Store } from '../store/types';
+import { writeBaselineTrack } from './baseline-track';
+import type { JobHelpers } from './helpers';
+
+export async function decode(job: DecodeJob, helpers: JobHelpers): Promise<DecodeResult> {
+  const { store } = helpers;
+  const { heads, problems } = await readHeads(job, store);
+  const previews = () => [...heads].map(([role, head]) => previewOf(role, head, []));
+  if (problems.length > 0) return { outcome: 'rejected', problems, previews: previews() };
+  const settled = settleMaps(heads, job.channelMap);
+  if (settled.problems.length > 0)
+    return {
+      outcome: 'needs-mapping',
+      channelMap: settled.map,
+      problems: settled.problems,
+      previews: settled.previews,
+    };
+
+  await removeDecoded(store, job.recordingId);
+  try {
+    const decoded = await decodeFiles({
+      store,
+      recordingId: job.recordingId,
+      files: new Map(job.files.map((file) => [file.role, file])),
+      heads,
+      map: settled.map,
+      vehicleAxes: job.vehicleAxes,
+      assumed: settled.assumed,
+      progress: (share) => helpers.progress(share * 0.95),
+      breathe: helpers.breathe,
+    });
+    await writeBaselineTrack(store, job.recordingId, decoded.gnss);
+    const sha256 = hashOf(decoded.written);
+    await writeDecodedNote(store, job.recordingId, {
+      sha256,
+      hasReference: decoded.written.reference !== null,
+    });
+    helpers.progress(1);
+    return {
+      outcome: 'ready',
+      channelMap: settled.map,
+      startS: decoded.startS,
+      endS: decoded.endS,
+      hasReference: decoded.written.reference !== null,
+      timeOrigin: decoded.timeOrigin,
+      health: decoded.health,
+      strip: decoded.strip,
+      sha256,
+    };
+  } catch (error) {
+    await removeDecoded(store, job.recordingId);
+    if (error instanceof IntakeRejected)
+      return { outcome: 'rejected', problems: [...error.problems], previews: previews() };
+    throw error;
+  }
+}
+
+/** Heads of all files; what is wrong with any of them is told at once. */
+async function readHeads(job: DecodeJob, store: Store) {
+  const heads = new Map<FileRole, CsvHead>();
+  const problems: IntakeProblem[] = [];
+  for (const file of job.files) {
+    try {
+      const head = await readHead((await openText(store, file satisfies RawFile)).chunks, file.role);
+      heads.set(file.role, head);
+      if (head.complete && head.rows.length < 2) throw headerOnly(file.role);
+    } catch (error) {
+      if (!(error instanceof IntakeRejected)) throw error;
+      problems.push(...error.problems);
+    }
+  }
+  return { heads, problems };
+}
+
+/** Over the hashes of the files, in the order IMU, GNSS, reference. */
+function hashOf({ imu, gnss, reference }: DecodedFiles['written']): string {
+  const hash = createHash('sha256');
+  for (const file of [imu, gnss, reference]) if (file) hash.update(file.sha256, 'hex');
+  return hash.digest('hex');
+}
+
+/** The note goes first: without it nobody takes the rest for a whole recording. */
+async function removeDecoded(store: Store, recordingId: string): Promise<void> {
+  const { decoded, imu, gnss, reference, gnssOnly } = storeKeys;
+  for (const key of [decoded, imu, gnss, reference, gnssOnly]) await store.removePrefix(key(recordingId));
+}
