@@ -1,0 +1,244 @@
+/** Where the filter can start and what attitude the vehicle has there: given, levelled at rest, or levelled moving. */
+import type { Parameters } from '@/shared/contracts/parameters';
+import type { RunSummary } from '@/shared/contracts/runs';
+import { degToRad } from '@/shared/units';
+import type { Fixes } from '../filter/fixes';
+import { EARTH_RATE } from '../geodesy';
+import { normalGravity } from '../gravity';
+import { medianSpacing } from '../strapdown/imu-intervals';
+import { EngineError, type ImuColumns } from '../types';
+import { headingFromCourse, type CourseHeading } from './course-heading';
+import { levelMoving } from './moving-level';
+import { findStaticStretch, type StaticStretch } from './static-stretch';
+
+type Three = [number, number, number];
+
+export interface FoundAttitude {
+  /** IMU sample of the start, and the fix that gives the position there; −1: the position is given. */
+  sample: number;
+  fix: number;
+  roll: number;
+  pitch: number;
+  yaw: number;
+  /** Variances of roll, pitch, yaw (rad²) beyond what biases explain. */
+  eulerVariance: Three;
+  headingArm: Three | null;
+  rest: StaticStretch | null;
+  /** Factor from gyro column to rad/s, and what is to be taken off it (bias, at rest the Earth rate too), rad/s. */
+  rateScale: number;
+  gyroOffset: Three;
+  levelling: RunSummary['alignment']['levelling'];
+  heading: RunSummary['alignment']['heading'];
+  levelSentence: string;
+  headingSentence: string;
+}
+
+/** 1σ of a given attitude whose σ was not given, rad. */
+const GIVEN_TILT_SIGMA = degToRad(1);
+const GIVEN_HEADING_SIGMA = degToRad(5);
+
+interface Situation {
+  imu: ImuColumns;
+  fixes: Fixes;
+  parameters: Parameters;
+  leverArm: readonly [number, number, number];
+  sample: number;
+  fix: number;
+  rest: StaticStretch | null;
+  rateScale: number;
+  gyroOffset: Three;
+}
+
+/** Throws EngineError when there is no place to start, no level or no heading. */
+export function findAttitude(
+  imu: ImuColumns,
+  fixes: Fixes,
+  parameters: Parameters,
+  leverArm: readonly [number, number, number],
+): FoundAttitude {
+  const { sample, fix } = firstUsable(imu, fixes, parameters);
+  const rest = findStaticStretch(imu, fixes, sample);
+  const rateScale = imu.sampling === 'increment' ? 1 / medianSpacing(imu.timeS) : 1;
+  const gyroOffset: Three = parameters.initial.gyroBiasRadPerS ?? rest?.gyro ?? [0, 0, 0];
+  const situation = { imu, fixes, parameters, leverArm, sample, fix, rest, rateScale, gyroOffset };
+  if (parameters.initial.attitude !== undefined) return givenAttitude(situation);
+  return rest !== null ? levelledAtRest(situation, rest) : levelledMoving(situation);
+}
+
+/** The first sample at or after the wanted start with a position: given, or a fix at or before it. */
+function firstUsable(imu: ImuColumns, fixes: Fixes, parameters: Parameters): { sample: number; fix: number } {
+  const time = imu.timeS;
+  const last = time.length - 1;
+  const wanted = Math.max(time[0]!, parameters.initial.timeS ?? -Infinity);
+  let fix = -1;
+  let from = wanted;
+  if (parameters.initial.position === undefined) {
+    fix = firstPosition(fixes, wanted);
+    if (fix < 0 || fixes.timeS[fix]! > time[last]!) throw noOverlap(imu, fixes);
+    from = fixes.timeS[fix]!;
+  }
+  let sample = 0;
+  while (sample <= last && time[sample]! < from - 1e-7) sample += 1;
+  if (sample >= last)
+    throw new EngineError(
+      'nothing-to-filter',
+      `The IMU log ends at ${time[last]!.toFixed(2)} s, before the start at ${from.toFixed(2)} s. Start earlier (initial.timeS) or check the clocks of both files.`,
+    );
+  return { sample, fix };
+}
+
+function firstPosition(fixes: Fixes, fromS: number): number {
+  let poor = -1;
+  for (let j = 0; j < fixes.count; j += 1) {
+    if (fixes.timeS[j]! < fromS - 1e-7 || fixes.positionAxes[j] === 0) continue;
+    if ((fixes.positionAxes[j]! & 4) !== 0) return j;
+    if (poor < 0) poor = j;
+  }
+  return poor;
+}
+
+function noOverlap(imu: ImuColumns, fixes: Fixes): EngineError {
+  const range = (t: Float64Array) =>
+    t.length === 0 ? 'empty' : `${t[0]!.toFixed(2)} to ${t[t.length - 1]!.toFixed(2)} s`;
+  return new EngineError(
+    'no-overlap',
+    `No GNSS position lies within the IMU log (IMU ${range(imu.timeS)}, GNSS ${range(fixes.timeS)}). Check the clocks of both files, or give initial.position.`,
+  );
+}
+
+function givenAttitude(s: Situation): FoundAttitude {
+  const { attitude, attitudeSigmaDeg } = s.parameters.initial;
+  const sigma = attitudeSigmaDeg?.map(degToRad) ?? [GIVEN_TILT_SIGMA, GIVEN_TILT_SIGMA, GIVEN_HEADING_SIGMA];
+  return {
+    ...common(s),
+    roll: degToRad(attitude!.rollDeg),
+    pitch: degToRad(attitude!.pitchDeg),
+    yaw: degToRad(attitude!.yawDeg),
+    eulerVariance: sigma.map((x) => x * x) as Three,
+    headingArm: null,
+    levelling: 'given',
+    heading: 'given',
+    levelSentence: 'Attitude as given;',
+    headingSentence: 'heading as given',
+  };
+}
+
+function common({ sample, fix, rest, rateScale, gyroOffset }: Situation) {
+  return { sample, fix, rest, rateScale, gyroOffset };
+}
+
+function levelledAtRest(s: Situation, rest: StaticStretch): FoundAttitude {
+  const { parameters } = s;
+  const bias = parameters.initial.accelBiasMPerS2 ?? [0, 0, 0];
+  const [fx, fy, fz] = rest.accel.map((f, i) => f - bias[i]!) as Three;
+  const roll = Math.atan2(-fy, -fz);
+  const pitch = Math.atan2(fx, Math.hypot(fy, fz));
+  const g = normalGravity(latitude(s), 0);
+  const noise = parameters.accel.whiteNoiseMPerSPerSqrtS ** 2 / rest.meanDurationS / (g * g);
+  const heading = findHeading(s, roll, pitch);
+  return {
+    ...common(s),
+    ...heading,
+    roll,
+    pitch,
+    eulerVariance: [noise, noise, heading.yawVariance],
+    levelling: 'static',
+    levelSentence: `Levelled over ${rest.meanDurationS.toFixed(1)} s at rest;`,
+  };
+}
+
+function levelledMoving(s: Situation): FoundAttitude {
+  const { imu, fixes, parameters } = s;
+  const start = parameters.initial.headingDeg === undefined ? sampleOfFirstCourse(s) : s;
+  const situation = { ...s, ...start };
+  const heading = findHeading(situation, 0, 0);
+  const bias = parameters.initial.accelBiasMPerS2 ?? [0, 0, 0];
+  const level = levelMoving(imu, fixes, start.sample, heading.yaw, s.gyroOffset, bias);
+  if (level === null)
+    throw new EngineError(
+      'no-level',
+      'Roll and pitch cannot be found: the vehicle never stands still at the start and GNSS gives no velocity to level against. Give initial.attitude, or start at a standstill (initial.timeS).',
+    );
+  const gyroDrift = (parameters.gyro.turnOnBiasSigmaRadPerS * level.durationS) / 2;
+  const variance = level.sigma ** 2 + gyroDrift ** 2;
+  return {
+    ...common(situation),
+    ...heading,
+    roll: level.roll,
+    pitch: level.pitch,
+    eulerVariance: [variance, variance, heading.yawVariance],
+    levelling: 'moving',
+    levelSentence: `Levelled while moving against ${level.durationS.toFixed(1)} s of GNSS velocity;`,
+  };
+}
+
+/** Moves the start to where the first usable course is: before it there is neither level nor heading. */
+function sampleOfFirstCourse(s: Situation): { sample: number; fix: number } {
+  const { imu, fixes, parameters } = s;
+  const course = headingFromCourse(
+    imu, fixes, s.sample, 0, 0, s.gyroOffset, s.leverArm, parameters.initial.courseSpeedMPerS,
+  ); // prettier-ignore
+  if (course === null) throw noHeading(parameters);
+  let fix = -1;
+  for (let j = 0; j < fixes.count && fixes.timeS[j]! <= course.firstS + 1e-7; j += 1)
+    if (fixes.positionAxes[j] !== 0) fix = j;
+  let sample = s.sample;
+  while (sample < imu.timeS.length - 1 && imu.timeS[sample]! < course.firstS) sample += 1;
+  return { sample, fix: s.fix < 0 ? -1 : Math.max(fix, s.fix) };
+}
+
+interface FoundHeading {
+  yaw: number;
+  yawVariance: number;
+  headingArm: Three | null;
+  heading: FoundAttitude['heading'];
+  headingSentence: string;
+}
+
+function findHeading(s: Situation, roll: number, pitch: number): FoundHeading {
+  const { parameters, imu, fixes, gyroOffset, leverArm } = s;
+  const { headingDeg, attitudeSigmaDeg, courseSpeedMPerS } = parameters.initial;
+  if (headingDeg !== undefined) {
+    const sigma = attitudeSigmaDeg ? degToRad(attitudeSigmaDeg[2]) : GIVEN_HEADING_SIGMA;
+    return {
+      yaw: degToRad(headingDeg),
+      yawVariance: sigma * sigma,
+      headingArm: null,
+      heading: 'given',
+      headingSentence: 'heading as given',
+    };
+  }
+  const course = headingFromCourse(
+    imu, fixes, s.sample, roll, pitch, gyroOffset, leverArm, courseSpeedMPerS,
+  ); // prettier-ignore
+  if (course === null) throw noHeading(parameters);
+  return courseResult(s, course);
+}
+
+function courseResult(s: Situation, course: CourseHeading): FoundHeading {
+  // Angle random walk of the carrying counts once more when the filter runs over the same stretch.
+  const carried = s.parameters.gyro.whiteNoiseRadPerSqrtS ** 2 * course.carriedS;
+  // An offset not read at rest holds no Earth rate: its vertical part turns the heading carried.
+  const restOffset = s.rest !== null && s.parameters.initial.gyroBiasRadPerS === undefined;
+  const earth = !restOffset ? -EARTH_RATE * Math.sin(latitude(s)) * course.carriedS : 0;
+  const back = course.carriedS > 1 ? ', carried back to the start by the gyros' : '';
+  return {
+    yaw: course.yaw + earth,
+    yawVariance: course.sigma ** 2 + carried,
+    headingArm: course.biasArm,
+    heading: 'course',
+    headingSentence: `heading from GNSS course at ${course.timeS.toFixed(1)} s (${course.speed.toFixed(1)} m/s)${back}`,
+  };
+}
+
+function noHeading(parameters: Parameters): EngineError {
+  return new EngineError(
+    'no-heading',
+    `Heading cannot be found: the log never exceeds ${parameters.initial.courseSpeedMPerS} m/s. Give initial.headingDeg, or lower initial.courseSpeedMPerS.`,
+  );
+}
+
+function latitude(s: Situation): number {
+  if (s.parameters.initial.position) return degToRad(s.parameters.initial.position.latDeg);
+  return s.fixes.latRad[s.fix]!;
+}

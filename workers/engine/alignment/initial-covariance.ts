@@ -1,0 +1,99 @@
+/**
+ * Covariance at the start as J S Jᵀ: S holds the variances of independent causes, J says how each cause enters the
+ * error states. Only so are the correlations right: a levelled tilt is the accelerometer bias over gravity, a heading
+ * carried back by the gyros is wrong by their bias.
+ */
+import { Matrix } from 'ml-matrix';
+import { EARTH_RATE } from '../geodesy';
+import { ACCEL_BIAS, ATTITUDE, GYRO_BIAS, POSITION, STATES, VELOCITY } from '../filter/states';
+
+/** Independent causes of the initial error. */
+export interface InitialCauses {
+  /** n←b at the start, row by row. */
+  dcm: Float64Array;
+  latRad: number;
+  gravity: number;
+  /** Antenna seen from the IMU where the position came from an antenna fix, in n, m. */
+  armNed: readonly [number, number, number] | null;
+  positionVariance: readonly [number, number, number];
+  velocityVariance: readonly [number, number, number];
+  /** Bias variances left after whatever was learnt, and whether the gyro bias was taken from rest. */
+  gyroBiasVariance: readonly [number, number, number];
+  accelBiasVariance: readonly [number, number, number];
+  gyroBiasFromRest: boolean;
+  /** Level from gravity: accelerometer bias tilts it. Variance of what else tilts, rad², about n and e. */
+  levelled: boolean;
+  /** Attitude of its own, rad², 3×3 in n (about north, east, down), row by row. */
+  attitudeVariance: Float64Array;
+  /** Heading carried by the gyros: ∫C_D· dt, s; null if not. */
+  headingArm: readonly [number, number, number] | null;
+}
+
+/** P (15×15, row by row). */
+export function initialCovariance(causes: InitialCauses): Float64Array {
+  const j = Matrix.zeros(STATES, STATES);
+  const s = Matrix.zeros(STATES, STATES);
+  for (let i = 0; i < 3; i += 1) {
+    // Causes, in the places of the states that they are the own part of.
+    s.set(POSITION + i, POSITION + i, causes.positionVariance[i]!);
+    s.set(VELOCITY + i, VELOCITY + i, causes.velocityVariance[i]!);
+    s.set(GYRO_BIAS + i, GYRO_BIAS + i, causes.gyroBiasVariance[i]!);
+    s.set(ACCEL_BIAS + i, ACCEL_BIAS + i, causes.accelBiasVariance[i]!);
+    for (let k = 0; k < 3; k += 1) s.set(ATTITUDE + i, ATTITUDE + k, causes.attitudeVariance[3 * i + k]!);
+  }
+  for (let i = 0; i < STATES; i += 1) j.set(i, i, 1);
+  addLevelling(j, causes);
+  addHeadingArm(j, causes);
+  addEarthRate(j, causes);
+  addLeverArm(j, causes);
+  const p = j.mmul(s).mmul(j.transpose());
+  const out = new Float64Array(STATES * STATES);
+  for (let r = 0; r < STATES; r += 1)
+    for (let c = 0; c < STATES; c += 1) out[r * STATES + c] = 0.5 * (p.get(r, c) + p.get(c, r));
+  return out;
+}
+
+/** 0 = f_n×φ − C δb_a in north and east at rest, f_n = (0, 0, −g): φ_N = −(C δb_a)_E/g, φ_E = (C δb_a)_N/g. */
+function addLevelling(j: Matrix, { levelled, dcm, gravity }: InitialCauses): void {
+  if (!levelled) return;
+  for (let i = 0; i < 3; i += 1) {
+    j.set(ATTITUDE, ACCEL_BIAS + i, -dcm[3 + i]! / gravity);
+    j.set(ATTITUDE + 1, ACCEL_BIAS + i, dcm[i]! / gravity);
+  }
+}
+
+/** φ_D(start) = φ_D(course) − ∫C_D· dt δb_g. */
+function addHeadingArm(j: Matrix, { headingArm }: InitialCauses): void {
+  if (headingArm === null) return;
+  for (let i = 0; i < 3; i += 1) j.set(ATTITUDE + 2, GYRO_BIAS + i, -headingArm[i]!);
+}
+
+/** A bias read at rest took the Earth rate off with the computed attitude: δb_g = n + Cᵀ(ω_ie × φ). */
+function addEarthRate(j: Matrix, { gyroBiasFromRest, dcm, latRad }: InitialCauses): void {
+  if (!gyroBiasFromRest) return;
+  const north = EARTH_RATE * Math.cos(latRad);
+  const down = -EARTH_RATE * Math.sin(latRad);
+  // [ω_ie×] row by row.
+  const cross = [0, -down, 0, down, 0, -north, 0, north, 0];
+  for (let axis = 0; axis < 3; axis += 1)
+    for (let cause = 0; cause < STATES; cause += 1) {
+      let sum = j.get(GYRO_BIAS + axis, cause);
+      for (let r = 0; r < 3; r += 1)
+        for (let c = 0; c < 3; c += 1)
+          sum += dcm[3 * r + axis]! * cross[3 * r + c]! * j.get(ATTITUDE + c, cause);
+      j.set(GYRO_BIAS + axis, cause, sum);
+    }
+}
+
+/** r̂ = antenna − Ĉl: δr = w − (C l)×φ. */
+function addLeverArm(j: Matrix, { armNed }: InitialCauses): void {
+  if (armNed === null) return;
+  const [n, e, d] = armNed;
+  const cross = [0, -d, e, d, 0, -n, -e, n, 0];
+  for (let r = 0; r < 3; r += 1)
+    for (let cause = 0; cause < STATES; cause += 1) {
+      let sum = j.get(POSITION + r, cause);
+      for (let c = 0; c < 3; c += 1) sum -= cross[3 * r + c]! * j.get(ATTITUDE + c, cause);
+      j.set(POSITION + r, cause, sum);
+    }
+}

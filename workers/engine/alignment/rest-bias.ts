@@ -1,0 +1,27 @@
+/** Gyro bias read off a static stretch: the mean rate less the Earth's, weighed against the turn-on prior. */
+import type { Parameters } from '@/shared/contracts/parameters';
+import { initialBiasVariance, biasNoiseDensity } from '../filter/bias-models';
+import { biasParameters } from '../filter/bias-parameters';
+import { EARTH_RATE } from '../geodesy';
+import type { StaticStretch } from './static-stretch';
+
+/** Bias (rad/s) and variance (rad²/s²) per body axis at the stretch's start, for an attitude n←b. */
+export function restGyroBias(
+  rest: StaticStretch,
+  parameters: Parameters,
+  dcm: Float64Array,
+  latRad: number,
+): { bias: [number, number, number]; variance: [number, number, number] } {
+  const model = biasParameters(parameters).gyro;
+  const prior = initialBiasVariance(model);
+  const duration = rest.meanDurationS;
+  // White noise of the mean, and how far the bias wandered between the start and the mean (a third of its walk).
+  const noise =
+    parameters.gyro.whiteNoiseRadPerSqrtS ** 2 / duration + (biasNoiseDensity(model) * duration) / 3;
+  const weight = prior / (prior + noise);
+  const earthN = EARTH_RATE * Math.cos(latRad);
+  const earthD = -EARTH_RATE * Math.sin(latRad);
+  const bias = [0, 1, 2].map((i) => weight * (rest.gyro[i]! - dcm[i]! * earthN - dcm[6 + i]! * earthD));
+  const variance = weight * noise;
+  return { bias: bias as [number, number, number], variance: [variance, variance, variance] };
+}

@@ -1,0 +1,346 @@
+/**
+ * The 15-state error-state filter over a recording: strapdown at full rate, covariance at its own rate, GNSS fixes
+ * at their exact measurement times, errors fed back at once (closed loop).
+ *
+ * Read in this order: `advanceSample` (one IMU interval with the fixes that lie in it), `covarianceStep`,
+ * `applyFix`, `feedBack`, `recover`.
+ */
+import type { Parameters } from '@/shared/contracts/parameters';
+import type { ImuColumns } from '../types';
+import { ANGLE, ANGLE_BEND, DURATION, ImuIntervals } from '../strapdown/imu-intervals';
+import { MERIDIAN_PLUS_H, TRANSVERSE_PLUS_H } from '../strapdown/local-earth';
+import { HEIGHT, LAT, LON, NAV_ACCEL_BIAS, NAV_GYRO_BIAS, QUAT, VN } from '../strapdown/navigation-state';
+import { Strapdown } from '../strapdown/strapdown';
+import { biasDecayRate, biasNoiseDensity, halfBiasNoise } from './bias-models';
+import { biasParameters } from './bias-parameters';
+import type { Fixes } from './fixes';
+import { gapDisturbance } from './gap-noise';
+import { Gate } from './gate';
+import { GnssModels } from './gnss-models';
+import { MeasurementUpdate } from './measurement-update';
+import { fillHalfNoise, Propagation } from './propagation';
+import { recoverGroups } from './recovery';
+import { ACCEL_BIAS, ATTITUDE, GYRO_BIAS, POSITION, STATES, VELOCITY } from './states';
+
+/** A fix this close to an IMU sample, s, counts as simultaneous. */
+const SAME_TIME_S = 1e-7;
+/** Gaps are bridged in steps of at most this, s. */
+const GAP_STEP_S = 0.02;
+
+export type GroupName = 'position' | 'velocity';
+
+/** Hears of every measurement group that was judged, before it changes the state. */
+export interface FilterListener {
+  onInnovation(
+    group: GroupName,
+    timeS: number,
+    axes: number,
+    update: MeasurementUpdate,
+    accepted: boolean,
+  ): void;
+  onWarning(code: string, sentence: string, timeS: number): void;
+}
+
+/** All that a filter carries from one sample to the next. */
+export interface FilterSnapshot {
+  strapdown: readonly Float64Array[];
+  p: Float64Array;
+  sample: number;
+  fix: number;
+  gates: readonly (readonly number[])[];
+}
+
+export class ErrorStateFilter {
+  readonly strapdown: Strapdown;
+  /** Covariance of the error states, 15×15, row by row. */
+  readonly p = new Float64Array(STATES * STATES);
+  /** IMU sample that the state belongs to. */
+  sample = 0;
+  /** Next fix to be looked at. */
+  private fix = 0;
+  readonly gates: { position: Gate; velocity: Gate };
+  private readonly intervals: ImuIntervals;
+  private readonly propagation = new Propagation();
+  private readonly update = new MeasurementUpdate();
+  private readonly models: GnssModels;
+  private readonly halfNoise = new Float64Array(STATES);
+  private readonly rate = new Float64Array(3);
+  private readonly white: { gyroWhite: number; accelWhite: number };
+  private readonly gyroBias: { density: number; decay: number };
+  private readonly accelBias: { density: number; decay: number };
+  private readonly stepS: number;
+
+  /** `withheld`: bits of `withheldBy` for each fix. */
+  constructor(
+    private readonly imu: ImuColumns,
+    private readonly fixes: Fixes,
+    private withheld: Uint8Array,
+    readonly parameters: Parameters,
+    leverArmM: readonly [number, number, number],
+    private readonly listener: FilterListener,
+  ) {
+    this.strapdown = new Strapdown(parameters.mechanisation.scheme);
+    this.intervals = new ImuIntervals(imu);
+    this.gates = { position: new Gate(parameters.gate), velocity: new Gate(parameters.gate) };
+    const gyroDensity = parameters.gyro.whiteNoiseRadPerSqrtS ** 2;
+    this.white = { gyroWhite: gyroDensity, accelWhite: parameters.accel.whiteNoiseMPerSPerSqrtS ** 2 };
+    // A rate drawn on from the last two intervals has 2.5 times the variance of one.
+    const rateNoise = this.intervals.nominalS > 0 ? (2.5 * gyroDensity) / this.intervals.nominalS : 0;
+    this.models = new GnssModels(leverArmM, rateNoise);
+    const bias = biasParameters(parameters);
+    this.gyroBias = { density: biasNoiseDensity(bias.gyro), decay: biasDecayRate(bias.gyro) };
+    this.accelBias = { density: biasNoiseDensity(bias.accel), decay: biasDecayRate(bias.accel) };
+    this.stepS = parameters.mechanisation.covarianceIntervalS - 0.5 * this.intervals.nominalS;
+  }
+
+  /** Starts at IMU sample `sample` with a state and covariance (both copied); fixes before `fix` are past. */
+  start(sample: number, fix: number, nav: Float64Array, p: Float64Array): void {
+    this.sample = sample;
+    this.fix = fix;
+    this.strapdown.start(nav);
+    this.p.set(p);
+  }
+
+  get timeS(): number {
+    return this.imu.timeS[this.sample]!;
+  }
+
+  /** Moves on to the next IMU sample, taking in the fixes measured on the way, those at its own time included. */
+  advanceSample(): void {
+    const { intervals, fixes, imu } = this;
+    const k = this.sample + 1;
+    intervals.load(k);
+    const start = imu.timeS[k - 1]!;
+    const end = imu.timeS[k]!;
+    const duration = end - start;
+    if (intervals.isGap) this.reportGap(start, end);
+    let from = 0;
+    while (this.fix < fixes.count && fixes.timeS[this.fix]! <= end + SAME_TIME_S) {
+      const j = this.fix;
+      this.fix += 1;
+      if ((fixes.positionAxes[j]! | fixes.velocityAxes[j]!) === 0) continue;
+      const time = fixes.timeS[j]!;
+      const to = end - time <= SAME_TIME_S ? 1 : Math.max(from, (time - start) / duration);
+      if (to > from) this.move(from, to);
+      from = to;
+      this.applyFix(j, to);
+    }
+    if (from < 1) this.move(from, 1);
+    this.sample = k;
+    if (this.strapdown.sumForce[3]! >= this.stepS) this.covarianceStep();
+  }
+
+  /** Strapdown over a part of the loaded interval; a gap goes in small steps with noise of its own. */
+  private move(from: number, to: number): void {
+    const { interval, isGap } = this.intervals;
+    if (!isGap) {
+      this.strapdown.advance(interval, from, to);
+      return;
+    }
+    const duration = interval[DURATION]!;
+    const disturbance = gapDisturbance(this.imu, this.sample + 1, this.intervals.nominalS);
+    const { gyroWhite, accelWhite } = this.white;
+    // White noise that by the gap's end has spread as far as a constant unknown would have.
+    this.white.gyroWhite += disturbance.rate ** 2 * duration;
+    this.white.accelWhite += disturbance.accel ** 2 * duration;
+    const steps = Math.ceil(((to - from) * duration) / GAP_STEP_S);
+    for (let i = 0; i < steps; i += 1) {
+      const a = from + ((to - from) * i) / steps;
+      const b = from + ((to - from) * (i + 1)) / steps;
+      this.strapdown.advance(interval, a, b);
+      this.covarianceStep();
+    }
+    this.white.gyroWhite = gyroWhite;
+    this.white.accelWhite = accelWhite;
+  }
+
+  private reportGap(start: number, end: number): void {
+    this.covarianceStep();
+    this.listener.onWarning(
+      'gap-bridged',
+      `The IMU gave nothing for ${(end - start).toFixed(2)} s; the last rates were held and the uncertainty widened.`,
+      start,
+    );
+  }
+
+  /** Carries the covariance (and decaying biases) up to the strapdown's time. */
+  covarianceStep(): void {
+    const { strapdown, propagation, gyroBias, accelBias } = this;
+    const dt = strapdown.sumForce[3]!;
+    if (dt === 0) return;
+    propagation.formTransition(strapdown, gyroBias.decay, accelBias.decay);
+    this.fillNoise(dt);
+    propagation.propagate(this.p, this.halfNoise);
+    strapdown.resetSums();
+    if (gyroBias.decay > 0) this.decay(NAV_GYRO_BIAS, Math.exp(-gyroBias.decay * dt));
+    if (accelBias.decay > 0) this.decay(NAV_ACCEL_BIAS, Math.exp(-accelBias.decay * dt));
+  }
+
+  private fillNoise(dt: number): void {
+    const { gyroBias, accelBias } = this;
+    fillHalfNoise(
+      this.halfNoise,
+      this.white,
+      dt,
+      halfBiasNoise(gyroBias.density, gyroBias.decay, dt),
+      halfBiasNoise(accelBias.density, accelBias.decay, dt),
+    );
+  }
+
+  private decay(at: number, factor: number): void {
+    const { nav } = this.strapdown;
+    for (let i = 0; i < 3; i += 1) nav[at + i] = nav[at + i]! * factor;
+  }
+
+  /** The covariance at the current sample in `out`, the filter's own left as it is between its steps. */
+  covarianceNow(out: Float64Array): Float64Array {
+    out.set(this.p);
+    const dt = this.strapdown.sumForce[3]!;
+    if (dt === 0) return out;
+    this.propagation.formTransition(this.strapdown, this.gyroBias.decay, this.accelBias.decay);
+    this.fillNoise(dt);
+    this.propagation.propagate(out, this.halfNoise);
+    return out;
+  }
+
+  /** Position, then velocity of fix j, at the share `at` of the loaded interval. */
+  private applyFix(j: number, at: number): void {
+    const { fixes, strapdown, update, parameters } = this;
+    const withheld = this.withheld[j]!;
+    const positionAxes = parameters.gnss.usePosition && (withheld & 1) === 0 ? fixes.positionAxes[j]! : 0;
+    const velocityAxes = parameters.gnss.useVelocity && (withheld & 2) === 0 ? fixes.velocityAxes[j]! : 0;
+    if ((positionAxes | velocityAxes) === 0) return;
+    this.covarianceStep();
+    if (positionAxes !== 0) {
+      this.models.position(strapdown, fixes, j, positionAxes, update);
+      this.judge('position', j, positionAxes);
+    }
+    if (velocityAxes !== 0) {
+      this.rateAt(at);
+      this.models.velocity(strapdown, this.rate, fixes, j, velocityAxes, update);
+      this.judge('velocity', j, velocityAxes);
+    }
+  }
+
+  /** Angular rate at the share `at` of the loaded interval, rates linear in time, bias taken off. */
+  private rateAt(at: number): void {
+    const { interval } = this.intervals;
+    for (let i = 0; i < 3; i += 1)
+      this.rate[i] =
+        (interval[ANGLE + i]! + (2 * at - 1) * interval[ANGLE_BEND + i]!) / interval[DURATION]! -
+        this.strapdown.nav[NAV_GYRO_BIAS + i]!;
+  }
+
+  private judge(group: GroupName, j: number, axes: number): void {
+    const { update, fixes } = this;
+    update.prepare(this.p);
+    const time = fixes.timeS[j]!;
+    const verdict = this.gates[group].judge(time, update.rows, update.nis);
+    this.listener.onInnovation(group, time, axes, update, verdict === 'accept');
+    if (verdict === 'accept') {
+      update.apply(this.p);
+      this.feedBack(update.correction);
+    } else if (verdict === 'recover') {
+      recoverGroups(this, group, time, axes, update);
+    }
+  }
+
+  /** Adds a correction (measured − predicted, through the gain) to the state and turns P into the new attitude. */
+  feedBack(correction: Float64Array): void {
+    const { strapdown, p } = this;
+    const { nav, earth } = strapdown;
+    nav[LON] = nav[LON]! + correction[POSITION + 1]! / (earth[TRANSVERSE_PLUS_H]! * Math.cos(nav[LAT]!));
+    nav[LAT] = nav[LAT]! + correction[POSITION]! / earth[MERIDIAN_PLUS_H]!;
+    nav[HEIGHT] = nav[HEIGHT]! - correction[POSITION + 2]!;
+    for (let i = 0; i < 3; i += 1) {
+      nav[VN + i] = nav[VN + i]! + correction[VELOCITY + i]!;
+      nav[NAV_GYRO_BIAS + i] = nav[NAV_GYRO_BIAS + i]! + correction[GYRO_BIAS + i]!;
+      nav[NAV_ACCEL_BIAS + i] = nav[NAV_ACCEL_BIAS + i]! + correction[ACCEL_BIAS + i]!;
+    }
+    turnAttitude(nav, correction);
+    strapdown.attitudeChanged();
+    resetAttitudeCovariance(p, correction);
+  }
+
+  warn(code: string, sentence: string, timeS: number): void {
+    this.listener.onWarning(code, sentence, timeS);
+  }
+
+  /** Replaces the outage mask: what is withheld from here on. */
+  withhold(withheld: Uint8Array): void {
+    this.withheld = withheld;
+  }
+
+  save(): FilterSnapshot {
+    return {
+      strapdown: this.strapdown.save(),
+      p: this.p.slice(),
+      sample: this.sample,
+      fix: this.fix,
+      gates: [this.gates.position.save(), this.gates.velocity.save()],
+    };
+  }
+
+  restore(saved: FilterSnapshot): void {
+    this.strapdown.restore(saved.strapdown);
+    this.p.set(saved.p);
+    this.sample = saved.sample;
+    this.fix = saved.fix;
+    this.gates.position.restore(saved.gates[0]!);
+    this.gates.velocity.restore(saved.gates[1]!);
+  }
+}
+
+/** q ← q(−c) ⊗ q for the attitude part c of a correction (rad, in n). */
+function turnAttitude(nav: Float64Array, correction: Float64Array): void {
+  const cn = correction[ATTITUDE]!;
+  const ce = correction[ATTITUDE + 1]!;
+  const cd = correction[ATTITUDE + 2]!;
+  const angle = Math.sqrt(cn * cn + ce * ce + cd * cd);
+  if (angle === 0) return;
+  const w = Math.cos(angle / 2);
+  const k = -Math.sin(angle / 2) / angle;
+  const n = k * cn;
+  const e = k * ce;
+  const d = k * cd;
+  const q0 = nav[QUAT]!;
+  const q1 = nav[QUAT + 1]!;
+  const q2 = nav[QUAT + 2]!;
+  const q3 = nav[QUAT + 3]!;
+  nav[QUAT] = w * q0 - n * q1 - e * q2 - d * q3;
+  nav[QUAT + 1] = w * q1 + n * q0 + e * q3 - d * q2;
+  nav[QUAT + 2] = w * q2 - n * q3 + e * q0 + d * q1;
+  nav[QUAT + 3] = w * q3 + n * q2 - e * q1 + d * q0;
+}
+
+/**
+ * P ← GPGᵀ with G = I − ½[c×] on the attitude: what is left of φ after the feedback is measured from the corrected
+ * attitude (Markley, JGCD 26, 2003, 311–317).
+ */
+function resetAttitudeCovariance(p: Float64Array, correction: Float64Array): void {
+  const n = 0.5 * correction[ATTITUDE]!;
+  const e = 0.5 * correction[ATTITUDE + 1]!;
+  const d = 0.5 * correction[ATTITUDE + 2]!;
+  if (n * n + e * e + d * d < 1e-14) return;
+  const at = ATTITUDE * STATES;
+  for (let j = 0; j < STATES; j += 1) {
+    const x = p[at + j]!;
+    const y = p[at + STATES + j]!;
+    const z = p[at + 2 * STATES + j]!;
+    p[at + j] = x - (e * z - d * y);
+    p[at + STATES + j] = y - (d * x - n * z);
+    p[at + 2 * STATES + j] = z - (n * y - e * x);
+  }
+  for (let i = 0; i < STATES; i += 1) {
+    const row = i * STATES + ATTITUDE;
+    const x = p[row]!;
+    const y = p[row + 1]!;
+    const z = p[row + 2]!;
+    p[row] = x - (e * z - d * y);
+    p[row + 1] = y - (d * x - n * z);
+    p[row + 2] = z - (n * y - e * x);
+  }
+  // Equal to the last bit again.
+  for (let i = ATTITUDE; i < GYRO_BIAS; i += 1)
+    for (let j = ATTITUDE; j < i; j += 1) p[i * STATES + j] = p[j * STATES + i]!;
+}

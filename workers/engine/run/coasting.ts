@@ -1,0 +1,109 @@
+/** Compares the coasting solution with its reference: the coasting table, and drift points per window. */
+import type { DriftPoint, OutageResult } from '@/shared/contracts/runs';
+import { radToDeg } from '@/shared/units';
+import { POSITION, STATES } from '../filter/states';
+import { NAV_SIZE } from '../strapdown/navigation-state';
+import type { ReferenceColumns } from '../types';
+import { emptyError, emptyReference, referenceFromNav, ReferenceReader, stateError } from './reference';
+import { CoastingWriter } from './tables';
+import { comparedSamples, type CoastWindow } from './windows';
+
+const DOWN = (POSITION + 2) * (STATES + 1);
+
+export class CoastingComparison {
+  readonly writer: CoastingWriter;
+  private readonly samples: Int32Array;
+  /** Aided navigation states at `samples`, NAV_SIZE each. */
+  private readonly aided: Float64Array;
+  private recorded = 0;
+  private next = 0;
+  private readonly error = emptyError();
+  private readonly aidedState = emptyReference();
+  private readonly points: DriftPoint[][];
+
+  constructor(
+    private readonly windows: readonly CoastWindow[],
+    private readonly kept: Uint8Array,
+    private readonly timeS: Float64Array,
+    private readonly truth: ReferenceColumns | null,
+  ) {
+    this.samples = comparedSamples(windows, kept);
+    this.aided = truth === null ? new Float64Array(this.samples.length * NAV_SIZE) : new Float64Array(0);
+    this.writer = new CoastingWriter(this.samples.length);
+    this.points = windows.map(() => []);
+    this.reader = truth === null ? null : new ReferenceReader(truth);
+  }
+
+  private readonly reader: ReferenceReader | null;
+
+  /** The aided pass at sample k: kept for later where the coasting pass will want it. */
+  record(k: number, nav: Float64Array): void {
+    if (this.reader !== null || this.samples[this.recorded] !== k) return;
+    this.aided.set(nav, this.recorded * NAV_SIZE);
+    this.recorded += 1;
+  }
+
+  /** Does the coasting pass have to be compared at sample k? */
+  wants(k: number): boolean {
+    return this.samples[this.next] === k;
+  }
+
+  /** The coasting pass at a wanted sample, with its covariance there. */
+  compare(k: number, nav: Float64Array, p: Float64Array): void {
+    const at = this.next;
+    this.next += 1;
+    const timeS = this.timeS[k]!;
+    if (this.reader === null) {
+      referenceFromNav(this.aided.subarray(at * NAV_SIZE, (at + 1) * NAV_SIZE), this.aidedState);
+      stateError(nav, this.aidedState, this.error);
+    } else {
+      if (!this.reader.read(timeS)) return;
+      stateError(nav, this.reader.state, this.error);
+    }
+    const w = this.windows.findIndex((window) => k >= window.first && k <= window.last);
+    const { position, velocity, attitude } = this.error;
+    const predicted = Math.sqrt(p[0]! + p[STATES + 1]!);
+    const predictedVertical = Math.sqrt(p[DOWN]!);
+    const horizontal = Math.hypot(position[0]!, position[1]!);
+    if (this.kept[k] === 1)
+      this.writer.write({
+        time_s: timeS,
+        outage: this.windows[w]!.index,
+        horizontal_m: horizontal,
+        vertical_m: Math.abs(position[2]!),
+        north_m: position[0]!,
+        east_m: position[1]!,
+        predicted_horizontal_m: predicted,
+        predicted_vertical_m: predictedVertical,
+      });
+    for (const { afterS, sample } of this.windows[w]!.drift) {
+      if (sample !== k) continue;
+      this.points[w]!.push({
+        afterS,
+        horizontalM: horizontal,
+        verticalM: Math.abs(position[2]!),
+        velocityMPerS: Math.hypot(velocity[0]!, velocity[1]!, velocity[2]!),
+        headingDeg: Math.abs(radToDeg(attitude[2]!)),
+        predictedHorizontalM: predicted,
+        predictedVerticalM: predictedVertical,
+      });
+    }
+  }
+
+  /** One result a window, in the request's order. */
+  results(): OutageResult[] {
+    return this.windows
+      .map(({ outage, index }, w) => ({
+        index,
+        result: {
+          startS: outage.startS,
+          endS: outage.endS,
+          withhold: outage.withhold,
+          reference: this.truth === null ? ('aided' as const) : ('truth' as const),
+          points: this.points[w]!,
+        },
+      }))
+      .sort((a, b) => a.index - b.index)
+      .map(({ result }) => result);
+  }
+}

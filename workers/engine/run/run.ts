@@ -1,0 +1,227 @@
+/**
+ * A run: alignment, then the filter over the recording, slice by slice.
+ *
+ * Without outage windows, or where truth covers them, one pass does it. Else the fully aided pass goes first: until
+ * the first window it is the reported solution, so that results come at once; there a snapshot is taken, the aided pass
+ * goes on unreported to the end as the reference, and the coasting pass forks from the snapshot and reports the rest.
+ */
+import { radToDeg } from '@/shared/units';
+import { align, type Alignment } from '../alignment/align';
+import { ErrorStateFilter, type FilterListener, type FilterSnapshot } from '../filter/error-state-filter';
+import { prepareFixes, withheldBy } from '../filter/fixes';
+import { STATES } from '../filter/states';
+import { HEIGHT, LAT, LON, VN } from '../strapdown/navigation-state';
+import {
+  EngineError,
+  type EngineRun,
+  type RecordingColumns,
+  type RunRequest,
+  type RunResult,
+} from '../types';
+import { CoastingComparison } from './coasting';
+import { countKept, keptSamples } from './output-grid';
+import { truthCovers } from './reference';
+import { summarise } from './summary';
+import { InnovationWriter, SolutionWriter } from './tables';
+import { TruthComparison } from './truth-comparison';
+import { layWindows, lowerBound, type CoastWindow } from './windows';
+
+export interface RunWarning {
+  code: string;
+  sentence: string;
+  timeS: number | null;
+}
+
+/** More warnings of one kind than this are only counted. */
+const MAX_WARNINGS_OF_A_KIND = 20;
+
+/** Checks, aligns and makes ready. Throws EngineError for data or parameters that do not allow a run. */
+export function createRun(recording: RecordingColumns, request: RunRequest): EngineRun {
+  return new Run(recording, request);
+}
+
+export class Run implements EngineRun {
+  readonly extentS: readonly [number, number];
+  readonly origin: { latDeg: number; lonDeg: number; heightM: number };
+  readonly warnings: RunWarning[] = [];
+  readonly alignment: Alignment;
+  readonly solution: SolutionWriter;
+  readonly position: InnovationWriter;
+  readonly velocity: InnovationWriter;
+  readonly coasting: CoastingComparison;
+  readonly truth: TruthComparison | null;
+  private readonly filter: ErrorStateFilter;
+  private readonly windows: CoastWindow[];
+  private readonly kept: Uint8Array;
+  private readonly withheld: Uint8Array;
+  private readonly timeS: Float64Array;
+  private readonly last: number;
+  private readonly p = new Float64Array(STATES * STATES);
+  /** Last sample before the first window: where the passes part; −1 where one pass does it. */
+  private readonly forkSample: number;
+  private snapshot: FilterSnapshot | null = null;
+  private phase: 'reported' | 'reference' | 'done' = 'reported';
+  private done = 0;
+
+  constructor(
+    readonly recording: RecordingColumns,
+    readonly request: RunRequest,
+  ) {
+    const { imu, gnss, reference } = recording;
+    const { parameters, leverArmM, outages } = request;
+    checkRecording(recording);
+    this.timeS = imu.timeS;
+    this.last = imu.timeS.length - 1;
+    const fixes = prepareFixes(gnss, parameters.gnss);
+    this.alignment = align(imu, fixes, parameters, leverArmM);
+    const start = this.alignment.sample;
+    this.extentS = [imu.timeS[start]!, imu.timeS[this.last]!];
+    this.windows = layWindows(imu.timeS, start, outages);
+    this.withheld = withheldBy(fixes, outages);
+    this.kept = keptSamples(imu.timeS, start, request.outputRateHz);
+
+    const truthServes = reference !== null && truthCovers(reference, this.windows, imu.timeS);
+    this.coasting = new CoastingComparison(
+      this.windows, this.kept, imu.timeS, truthServes ? reference : null,
+    ); // prettier-ignore
+    const forks = this.windows.length > 0 && !truthServes;
+    this.forkSample = forks ? Math.max(start, lowerBound(imu.timeS, this.windows[0]!.outage.startS) - 1) : -1;
+    const withheldAtFirst = forks ? new Uint8Array(fixes.count) : this.withheld;
+    this.filter = new ErrorStateFilter(imu, fixes, withheldAtFirst, parameters, leverArmM, this.listener());
+    this.filter.start(start, this.alignment.fix, this.alignment.nav, this.alignment.p);
+
+    this.solution = new SolutionWriter(countKept(this.kept));
+    this.position = new InnovationWriter(fixes.count);
+    this.velocity = new InnovationWriter(fixes.count);
+    this.truth = reference === null ? null : new TruthComparison(reference);
+    const { nav } = this.alignment;
+    this.origin = { latDeg: radToDeg(nav[LAT]!), lonDeg: radToDeg(nav[LON]!), heightM: nav[HEIGHT]! };
+    this.report();
+    if (this.filter.sample === this.forkSample) this.fork();
+  }
+
+  private listener(): FilterListener {
+    return {
+      onInnovation: (group, timeS, axes, update, accepted) => {
+        if (this.phase !== 'reported') return;
+        (group === 'position' ? this.position : this.velocity).write(timeS, axes, update, accepted);
+      },
+      onWarning: (code, sentence, timeS) => {
+        if (this.phase !== 'reported') return;
+        if (this.warnings.filter((w) => w.code === code).length < MAX_WARNINGS_OF_A_KIND)
+          this.warnings.push({ code, sentence, timeS });
+      },
+    };
+  }
+
+  get tables() {
+    return {
+      solution: this.solution.table,
+      position: this.position.table,
+      velocity: this.velocity.table,
+      coasting: this.coasting.writer.table,
+    };
+  }
+
+  get counts() {
+    return {
+      solution: this.solution.count,
+      position: this.position.count,
+      velocity: this.velocity.count,
+      coasting: this.coasting.writer.count,
+    };
+  }
+
+  get progress(): number {
+    if (this.phase === 'done') return 1;
+    const start = this.alignment.sample;
+    const total = this.last - start + (this.forkSample >= 0 ? this.last - this.forkSample : 0);
+    return total === 0 ? 1 : this.done / total;
+  }
+
+  get reachedS(): number {
+    const { count, table } = this.solution;
+    return count === 0 ? this.extentS[0] : table.time_s![count - 1]!;
+  }
+
+  get imuSamples(): number {
+    return this.last - this.alignment.sample + 1;
+  }
+
+  advance(samples: number): boolean {
+    const { filter } = this;
+    for (let i = 0; i < samples && this.phase !== 'done'; i += 1) {
+      if (filter.sample === this.last) {
+        this.endPass();
+        continue;
+      }
+      filter.advanceSample();
+      this.done += 1;
+      if (this.phase === 'reported') this.report();
+      else this.coasting.record(filter.sample, filter.strapdown.nav);
+      if (filter.sample === this.forkSample && this.snapshot === null) this.fork();
+    }
+    if (filter.sample === this.last && this.phase !== 'done') this.endPass();
+    return this.phase === 'done';
+  }
+
+  /** The reported solution at the filter's sample, where it is kept or compared. */
+  private report(): void {
+    const { filter, kept } = this;
+    const k = filter.sample;
+    const compared = this.coasting.wants(k);
+    if (kept[k] === 0 && !compared) return;
+    const { nav } = filter.strapdown;
+    if (!Number.isFinite(nav[VN]! + nav[LAT]! + nav[LON]!))
+      throw new EngineError(
+        'not-finite',
+        `The solution broke down near ${this.timeS[k]!.toFixed(2)} s: an IMU value there is not a number. Check the recording's health report.`,
+      );
+    filter.covarianceNow(this.p);
+    if (kept[k] === 1) {
+      this.solution.write(this.timeS[k]!, nav, this.p);
+      this.truth?.add(this.timeS[k]!, nav, this.p);
+    }
+    if (compared) this.coasting.compare(k, nav, this.p);
+  }
+
+  private fork(): void {
+    this.snapshot = this.filter.save();
+    this.phase = 'reference';
+  }
+
+  private endPass(): void {
+    if (this.phase !== 'reference') {
+      this.phase = 'done';
+      return;
+    }
+    this.filter.restore(this.snapshot!);
+    this.filter.withhold(this.withheld);
+    this.phase = 'reported';
+  }
+
+  finish(): RunResult {
+    if (this.phase !== 'done') throw new Error('finish() before advance() answered true.');
+    return {
+      solution: this.solution.finish(),
+      position: this.position.finish(),
+      velocity: this.velocity.finish(),
+      coasting: this.coasting.writer.finish(),
+      summary: summarise(this),
+    };
+  }
+}
+
+function checkRecording({ imu }: RecordingColumns): void {
+  if (imu.timeS.length < 10)
+    throw new EngineError(
+      'too-short',
+      `The IMU log holds ${imu.timeS.length} samples; a run needs at least 10. Upload the whole log.`,
+    );
+  for (let k = 1; k < imu.timeS.length; k += 1)
+    if (!(imu.timeS[k]! > imu.timeS[k - 1]!))
+      throw new EngineError(
+        'time-order',
+        `IMU times must increase: sample ${k + 1} at ${imu.timeS[k]} s follows ${imu.timeS[k - 1]} s. Decode the recording again.`,
+      );
+}

@@ -1,0 +1,139 @@
+/** The tables of a run: columns allocated once at their largest length, filled row by row, cut at the end. */
+import { FRAME_TABLES } from '@/shared/contracts/frames';
+import { SOLUTION_COLUMNS } from '@/shared/contracts/runs';
+import { radToDeg } from '@/shared/units';
+import { eulerSigmas } from '../alignment/euler-errors';
+import { eulerFromQuat } from '../attitude';
+import type { MeasurementUpdate } from '../filter/measurement-update';
+import { ACCEL_BIAS, GYRO_BIAS, POSITION, STATES, VELOCITY } from '../filter/states';
+import { HEIGHT, LAT, LON, NAV_ACCEL_BIAS, NAV_GYRO_BIAS, QUAT, VN } from '../strapdown/navigation-state';
+import { MAX_ROWS } from '../filter/measurement-update';
+import type { CoastingTable, InnovationTable, SolutionTable } from '../types';
+
+export const COVARIANCE_COLUMN = 'cov_ne_m2';
+
+export class SolutionWriter {
+  readonly table: SolutionTable;
+  count = 0;
+  private readonly columns: readonly Float64Array[];
+  private readonly quaternion = new Float64Array(4);
+  private readonly euler = new Float64Array(3);
+  private readonly sigma = new Float64Array(3);
+
+  constructor(capacity: number) {
+    const names = [...SOLUTION_COLUMNS, COVARIANCE_COLUMN];
+    this.columns = names.map(() => new Float64Array(capacity));
+    this.table = Object.fromEntries(names.map((name, i) => [name, this.columns[i]!]));
+  }
+
+  /** One row; `nav` as in navigation-state.ts, P 15×15. Order of columns: SOLUTION_COLUMNS. */
+  write(timeS: number, nav: Float64Array, p: Float64Array): void {
+    const { columns, quaternion, euler, sigma } = this;
+    const row = this.count;
+    const put = (column: number, value: number) => {
+      columns[column]![row] = value;
+    };
+    for (let i = 0; i < 4; i += 1) quaternion[i] = nav[QUAT + i]!;
+    eulerFromQuat(quaternion, euler);
+    eulerSigmas(p, euler[1]!, euler[2]!, sigma);
+    put(0, timeS);
+    put(1, radToDeg(nav[LAT]!));
+    put(2, radToDeg(nav[LON]!));
+    put(3, nav[HEIGHT]!);
+    for (let i = 0; i < 3; i += 1) {
+      put(4 + i, nav[VN + i]!);
+      put(7 + i, radToDeg(euler[i]!));
+      put(10 + i, nav[NAV_GYRO_BIAS + i]!);
+      put(13 + i, nav[NAV_ACCEL_BIAS + i]!);
+      put(16 + i, deviation(p, POSITION + i));
+      put(19 + i, deviation(p, VELOCITY + i));
+      put(22 + i, radToDeg(sigma[i]!));
+      put(25 + i, deviation(p, GYRO_BIAS + i));
+      put(28 + i, deviation(p, ACCEL_BIAS + i));
+    }
+    put(31, p[1]!);
+    this.count += 1;
+  }
+
+  finish(): SolutionTable {
+    return cut(this.table, this.count);
+  }
+}
+
+const deviation = (p: Float64Array, i: number) => Math.sqrt(p[i * (STATES + 1)]!);
+
+export class InnovationWriter {
+  readonly table: InnovationTable;
+  count = 0;
+  /** Measured rows of each epoch (1…3): the dimension of its NIS. */
+  readonly dimension: Uint8Array;
+
+  constructor(capacity: number) {
+    const three = () =>
+      [new Float64Array(capacity), new Float64Array(capacity), new Float64Array(capacity)] as const;
+    this.dimension = new Uint8Array(capacity);
+    this.table = {
+      timeS: new Float64Array(capacity),
+      innovation: three(),
+      sigma: three(),
+      nis: new Float64Array(capacity),
+      accepted: new Uint8Array(capacity),
+    };
+  }
+
+  /** Axes (bits) that were not measured stay NaN. */
+  write(timeS: number, axes: number, update: MeasurementUpdate, accepted: boolean): void {
+    const { table } = this;
+    const row = this.count;
+    let m = 0;
+    for (let axis = 0; axis < 3; axis += 1) {
+      const measured = ((axes >> axis) & 1) === 1;
+      table.innovation[axis as 0 | 1 | 2][row] = measured ? update.innovation[m]! : NaN;
+      table.sigma[axis as 0 | 1 | 2][row] = measured ? Math.sqrt(update.s[m * (MAX_ROWS + 1)]!) : NaN;
+      if (measured) m += 1;
+    }
+    table.timeS[row] = timeS;
+    table.nis[row] = update.nis;
+    table.accepted[row] = accepted ? 1 : 0;
+    this.dimension[row] = update.rows;
+    this.count += 1;
+  }
+
+  finish(): InnovationTable {
+    const n = this.count;
+    const three = (columns: InnovationTable['sigma']) =>
+      [columns[0].slice(0, n), columns[1].slice(0, n), columns[2].slice(0, n)] as const;
+    const { table } = this;
+    return {
+      timeS: table.timeS.slice(0, n),
+      innovation: three(table.innovation),
+      sigma: three(table.sigma),
+      nis: table.nis.slice(0, n),
+      accepted: table.accepted.slice(0, n),
+    };
+  }
+}
+
+export type CoastingRow = Record<(typeof FRAME_TABLES)['coasting'][number], number>;
+
+export class CoastingWriter {
+  readonly table: CoastingTable;
+  count = 0;
+
+  constructor(capacity: number) {
+    this.table = Object.fromEntries(FRAME_TABLES.coasting.map((name) => [name, new Float64Array(capacity)]));
+  }
+
+  write(row: CoastingRow): void {
+    for (const name of FRAME_TABLES.coasting) this.table[name]![this.count] = row[name];
+    this.count += 1;
+  }
+
+  finish(): CoastingTable {
+    return cut(this.table, this.count);
+  }
+}
+
+function cut(table: Record<string, Float64Array>, rows: number): Record<string, Float64Array> {
+  return Object.fromEntries(Object.entries(table).map(([name, column]) => [name, column.slice(0, rows)]));
+}

@@ -1,0 +1,310 @@
+/**
+ * Strapdown mechanisation in the local level frame north–east–down (Titterton & Weston, Strapdown Inertial Navigation
+ * Technology, 2004, ch. 3 and 11; Savage, JGCD 21, 1998, 19–28 and 208–221).
+ *
+ * One step takes the bias-free rotation and velocity increments of an interval or of a part of it. Earth and transport
+ * rate, Coriolis and gravity are taken at the step's middle; position is trapezoidal. While it goes it sums ∫C dt and
+ * ∫f_n dt, which the covariance needs.
+ */
+import { EARTH_RATE } from '../geodesy';
+import { EngineError } from '../types';
+import { ANGLE, ANGLE_BEND, DURATION, VELOCITY_BEND, VELOCITY_INCREMENT } from './imu-intervals';
+import { GRAVITY, localEarth, MERIDIAN_PLUS_H, TRANSVERSE_PLUS_H } from './local-earth';
+import {
+  HEIGHT,
+  LAT,
+  LON,
+  NAV_ACCEL_BIAS,
+  NAV_GYRO_BIAS,
+  NAV_SIZE,
+  QUAT,
+  VD,
+  VE,
+  VN,
+} from './navigation-state';
+
+export type Scheme = 'coning-sculling' | 'trapezoidal' | 'rectangular';
+
+/** Beyond this the local level frame turns too fast to be useful. */
+export const MAX_LATITUDE_RAD = (89.5 * Math.PI) / 180;
+
+export class Strapdown {
+  readonly nav = new Float64Array(NAV_SIZE);
+  /** n←b, row by row, of `nav`'s quaternion. */
+  readonly dcm = new Float64Array(9);
+  /** R_M + h, R_N + h (m), gravity (m/s²) at the middle of the last step. */
+  readonly earth = new Float64Array(3);
+  /** Since `resetSums`: ∫C dt (s). */
+  readonly sumDcm = new Float64Array(9);
+  /** Since `resetSums`: ∫f_n dt (m/s), and the time itself (s) as the fourth. */
+  readonly sumForce = new Float64Array(4);
+  /** Rotation vector of the step (rad) and its velocity increment in the axes of the step's start (m/s). */
+  private readonly increment = new Float64Array(6);
+  /** Rotation of n in the step, rad. */
+  private readonly frameTurn = new Float64Array(3);
+  /** Gravity and Coriolis of the last step, m/s²: predicts the middle of the next one. */
+  private readonly field = new Float64Array(3);
+
+  constructor(readonly scheme: Scheme) {}
+
+  /** Takes over `nav` (copied) and makes what hangs on it. */
+  start(nav: Float64Array): void {
+    this.nav.set(nav);
+    this.attitudeChanged();
+    const s = Math.sin(nav[LAT]!);
+    localEarth(s * s, nav[HEIGHT]!, this.earth);
+    this.field.fill(0);
+    this.field[2] = this.earth[GRAVITY]!;
+    this.resetSums();
+  }
+
+  /** Makes `dcm` from `nav`'s quaternion; to be called after the latter was changed from outside. */
+  attitudeChanged(): void {
+    const { nav, dcm } = this;
+    const w = nav[QUAT]!;
+    const x = nav[QUAT + 1]!;
+    const y = nav[QUAT + 2]!;
+    const z = nav[QUAT + 3]!;
+    dcm[0] = w * w + x * x - y * y - z * z;
+    dcm[1] = 2 * (x * y - w * z);
+    dcm[2] = 2 * (x * z + w * y);
+    dcm[3] = 2 * (x * y + w * z);
+    dcm[4] = w * w - x * x + y * y - z * z;
+    dcm[5] = 2 * (y * z - w * x);
+    dcm[6] = 2 * (x * z - w * y);
+    dcm[7] = 2 * (y * z + w * x);
+    dcm[8] = w * w - x * x - y * y + z * z;
+  }
+
+  resetSums(): void {
+    this.sumDcm.fill(0);
+    this.sumForce.fill(0);
+  }
+
+  /** Copies of all that carries over from step to step; `restore` goes on from there to the same bits. */
+  save(): readonly Float64Array[] {
+    return [this.nav, this.earth, this.field, this.sumDcm, this.sumForce].map((part) => part.slice());
+  }
+
+  restore(saved: readonly Float64Array[]): void {
+    const parts = [this.nav, this.earth, this.field, this.sumDcm, this.sumForce];
+    parts.forEach((part, i) => part.set(saved[i]!));
+    this.attitudeChanged();
+  }
+
+  /**
+   * Moves the state over the part (from, to] of an interval (shares of its duration, 0 ≤ from < to ≤ 1).
+   * Throws EngineError near a pole, where local level axes fail.
+   */
+  advance(interval: Float64Array, from: number, to: number): void {
+    if (this.scheme === 'rectangular') {
+      this.sumIncrements(interval, from, to);
+      this.stepRectangular(interval[DURATION]! * (to - from));
+    } else {
+      this.formIncrements(interval, from, to);
+      this.step(interval[DURATION]! * (to - from));
+    }
+    const lat = this.nav[LAT]!;
+    if (lat > MAX_LATITUDE_RAD || lat < -MAX_LATITUDE_RAD)
+      throw new EngineError(
+        'near-pole',
+        'The solution reached a latitude beyond 89.5°, where north and east cannot be told apart. Recordings next to a pole are not supported; check the position columns.',
+      );
+  }
+
+  /**
+   * Rotation vector and velocity increment of a part of an interval, biases taken off. With rates linear in time over
+   * the interval, the part's own increments are share·Δ − shift·bend, and its coning and sculling integrals those of
+   * the whole times share³.
+   */
+  private formIncrements(interval: Float64Array, from: number, to: number): void {
+    const { nav, increment } = this;
+    const duration = interval[DURATION]!;
+    const share = to - from;
+    // Whole interval, biases taken off: angle a, velocity v; bends e and d.
+    const ax = interval[ANGLE]! - nav[NAV_GYRO_BIAS]! * duration;
+    const ay = interval[ANGLE + 1]! - nav[NAV_GYRO_BIAS + 1]! * duration;
+    const az = interval[ANGLE + 2]! - nav[NAV_GYRO_BIAS + 2]! * duration;
+    const vx = interval[VELOCITY_INCREMENT]! - nav[NAV_ACCEL_BIAS]! * duration;
+    const vy = interval[VELOCITY_INCREMENT + 1]! - nav[NAV_ACCEL_BIAS + 1]! * duration;
+    const vz = interval[VELOCITY_INCREMENT + 2]! - nav[NAV_ACCEL_BIAS + 2]! * duration;
+    const bent = this.scheme === 'coning-sculling' ? 1 : 0;
+    const ex = bent * interval[ANGLE_BEND]!;
+    const ey = bent * interval[ANGLE_BEND + 1]!;
+    const ez = bent * interval[ANGLE_BEND + 2]!;
+    const dx = bent * interval[VELOCITY_BEND]!;
+    const dy = bent * interval[VELOCITY_BEND + 1]!;
+    const dz = bent * interval[VELOCITY_BEND + 2]!;
+
+    const shift = to * (1 - to) - from * (1 - from);
+    const px = share * ax - shift * ex;
+    const py = share * ay - shift * ey;
+    const pz = share * az - shift * ez;
+    const ux = share * vx - shift * dx;
+    const uy = share * vy - shift * dy;
+    const uz = share * vz - shift * dz;
+
+    // Coning Δθ×e/6: the rotation vector of the part.
+    const sixth = (share * share * share) / 6;
+    increment[0] = px + sixth * (ay * ez - az * ey);
+    increment[1] = py + sixth * (az * ex - ax * ez);
+    increment[2] = pz + sixth * (ax * ey - ay * ex);
+
+    // Rotation compensation ((1−cos θ)/θ²) θ×Δv + ((θ−sin θ)/θ³) θ×(θ×Δv), coefficients by series.
+    const p2 = px * px + py * py + pz * pz;
+    const first = 0.5 - p2 / 24 + (p2 * p2) / 720;
+    const second = 1 / 6 - p2 / 120 + (p2 * p2) / 5040;
+    const cx = py * uz - pz * uy;
+    const cy = pz * ux - px * uz;
+    const cz = px * uy - py * ux;
+    // Sculling (Δθ×d + Δv×e)/6.
+    increment[3] =
+      ux + first * cx + second * (py * cz - pz * cy) + sixth * (ay * dz - az * dy + vy * ez - vz * ey);
+    increment[4] =
+      uy + first * cy + second * (pz * cx - px * cz) + sixth * (az * dx - ax * dz + vz * ex - vx * ez);
+    increment[5] =
+      uz + first * cz + second * (px * cy - py * cx) + sixth * (ax * dy - ay * dx + vx * ey - vy * ex);
+  }
+
+  /** One step of `dt` s with the increments formed. */
+  private step(dt: number): void {
+    const { nav, dcm, earth, field, increment, frameTurn, sumDcm, sumForce } = this;
+    const lat = nav[LAT]!;
+    const height = nav[HEIGHT]!;
+    const vn = nav[VN]!;
+    const ve = nav[VE]!;
+    const vd = nav[VD]!;
+    const ux = increment[3]!;
+    const uy = increment[4]!;
+    const uz = increment[5]!;
+
+    // Velocity increment in the axes of n at the step's start.
+    const an = dcm[0]! * ux + dcm[1]! * uy + dcm[2]! * uz;
+    const ae = dcm[3]! * ux + dcm[4]! * uy + dcm[5]! * uz;
+    const ad = dcm[6]! * ux + dcm[7]! * uy + dcm[8]! * uz;
+
+    // Middle of the step, predicted: velocity, latitude, height; radii, gravity, Earth and transport rate there.
+    const half = 0.5 * dt;
+    const vnMid = vn + 0.5 * an + half * field[0]!;
+    const veMid = ve + 0.5 * ae + half * field[1]!;
+    const vdMid = vd + 0.5 * ad + half * field[2]!;
+    const latMid = lat + (half * vn) / earth[MERIDIAN_PLUS_H]!;
+    const sinLat = Math.sin(latMid);
+    const cosLat = Math.cos(latMid);
+    localEarth(sinLat * sinLat, height - half * vd, earth);
+    const inverseM = 1 / earth[MERIDIAN_PLUS_H]!;
+    const inverseN = 1 / earth[TRANSVERSE_PLUS_H]!;
+    const earthN = EARTH_RATE * cosLat;
+    const earthD = -EARTH_RATE * sinLat;
+    const transportN = veMid * inverseN;
+    const transportE = -vnMid * inverseM;
+    const transportD = (-veMid * inverseN * sinLat) / cosLat;
+
+    // Gravity and Coriolis: g − (2ω_ie + ω_en) × v.
+    const wn = 2 * earthN + transportN;
+    const wd = 2 * earthD + transportD;
+    const fieldN = -(transportE * vdMid - wd * veMid);
+    const fieldE = -(wd * vnMid - wn * vdMid);
+    const fieldD = earth[GRAVITY]! - (wn * veMid - transportE * vnMid);
+    field[0] = fieldN;
+    field[1] = fieldE;
+    field[2] = fieldD;
+
+    // The frame turns by ζ = (ω_ie + ω_en) dt in the step: half of it is taken off the increment.
+    const zn = (earthN + transportN) * dt;
+    const ze = transportE * dt;
+    const zd = (earthD + transportD) * dt;
+    const forceN = an - 0.5 * (ze * ad - zd * ae);
+    const forceE = ae - 0.5 * (zd * an - zn * ad);
+    const forceD = ad - 0.5 * (zn * ae - ze * an);
+    const vnNew = vn + forceN + fieldN * dt;
+    const veNew = ve + forceE + fieldE * dt;
+    const vdNew = vd + forceD + fieldD * dt;
+    nav[VN] = vnNew;
+    nav[VE] = veNew;
+    nav[VD] = vdNew;
+    nav[LAT] = lat + half * (vn + vnNew) * inverseM;
+    nav[LON] = nav[LON]! + (half * (ve + veNew) * inverseN) / cosLat;
+    nav[HEIGHT] = height - half * (vd + vdNew);
+
+    frameTurn[0] = zn;
+    frameTurn[1] = ze;
+    frameTurn[2] = zd;
+    sumForce[0] = sumForce[0]! + forceN;
+    sumForce[1] = sumForce[1]! + forceE;
+    sumForce[2] = sumForce[2]! + forceD;
+    sumForce[3] = sumForce[3]! + dt;
+    // ∫C dt by the mean of the step's ends.
+    for (let i = 0; i < 9; i += 1) sumDcm[i] = sumDcm[i]! + half * dcm[i]!;
+    this.rotate();
+    this.attitudeChanged();
+    for (let i = 0; i < 9; i += 1) sumDcm[i] = sumDcm[i]! + half * dcm[i]!;
+  }
+
+  /** q ← q(−ζ) ⊗ q ⊗ q(σ): the body turns by σ (rad, body axes), the frame by ζ (rad, n axes, tiny). */
+  private rotate(): void {
+    const { nav, increment, frameTurn } = this;
+    const sx = increment[0]!;
+    const sy = increment[1]!;
+    const sz = increment[2]!;
+    const s2 = sx * sx + sy * sy + sz * sz;
+    let w: number;
+    let k: number;
+    if (s2 < 0.01) {
+      w = 1 - s2 / 8 + (s2 * s2) / 384 - (s2 * s2 * s2) / 46080;
+      k = 0.5 - s2 / 48 + (s2 * s2) / 3840 - (s2 * s2 * s2) / 645120;
+    } else {
+      const angle = Math.sqrt(s2);
+      w = Math.cos(angle / 2);
+      k = Math.sin(angle / 2) / angle;
+    }
+    const x = k * sx;
+    const y = k * sy;
+    const z = k * sz;
+    const q0 = nav[QUAT]!;
+    const q1 = nav[QUAT + 1]!;
+    const q2 = nav[QUAT + 2]!;
+    const q3 = nav[QUAT + 3]!;
+    const r0 = q0 * w - q1 * x - q2 * y - q3 * z;
+    const r1 = q0 * x + q1 * w + q2 * z - q3 * y;
+    const r2 = q0 * y - q1 * z + q2 * w + q3 * x;
+    const r3 = q0 * z + q1 * y - q2 * x + q3 * w;
+    const hn = -0.5 * frameTurn[0]!;
+    const he = -0.5 * frameTurn[1]!;
+    const hd = -0.5 * frameTurn[2]!;
+    const n0 = r0 - hn * r1 - he * r2 - hd * r3;
+    const n1 = r1 + hn * r0 + he * r3 - hd * r2;
+    const n2 = r2 - hn * r3 + he * r0 + hd * r1;
+    const n3 = r3 + hn * r2 - he * r1 + hd * r0;
+    // One Newton step to unit length: the square is within 1e-9 of 1.
+    const scale = 1.5 - 0.5 * (n0 * n0 + n1 * n1 + n2 * n2 + n3 * n3);
+    nav[QUAT] = n0 * scale;
+    nav[QUAT + 1] = n1 * scale;
+    nav[QUAT + 2] = n2 * scale;
+    nav[QUAT + 3] = n3 * scale;
+  }
+
+  /** For study: increments as they stand, no compensation of any kind. */
+  private sumIncrements(interval: Float64Array, from: number, to: number): void {
+    const { nav, increment } = this;
+    const share = to - from;
+    for (let i = 0; i < 3; i += 1) {
+      increment[i] = share * (interval[ANGLE + i]! - nav[NAV_GYRO_BIAS + i]! * interval[DURATION]!);
+      increment[i + 3] =
+        share * (interval[VELOCITY_INCREMENT + i]! - nav[NAV_ACCEL_BIAS + i]! * interval[DURATION]!);
+    }
+  }
+
+  /** For study: attitude, gravity and Coriolis of the step's start, position with the velocity of its end. */
+  private stepRectangular(dt: number): void {
+    const { nav, earth } = this;
+    const lat = nav[LAT]!;
+    const height = nav[HEIGHT]!;
+    const lon = nav[LON]!;
+    this.step(dt);
+    const cosLat = Math.cos(lat);
+    nav[LAT] = lat + (nav[VN]! * dt) / earth[MERIDIAN_PLUS_H]!;
+    nav[LON] = lon + (nav[VE]! * dt) / (earth[TRANSVERSE_PLUS_H]! * cosLat);
+    nav[HEIGHT] = height - nav[VD]! * dt;
+  }
+}
