@@ -154,7 +154,7 @@ test('outliers: their share and their size, position and velocity apart', () => 
   for (let k = 0; k < n; k += 1) {
     const error = positionError(received, k);
     const size = Math.hypot(
-      ...[0, 1, 2].map((axis) => error[axis]! / received.gnss.positionSigma[axis as 0]![k]!),
+      ...[0, 1, 2].map((axis) => error[axis]! / received.gnss.positionSigma[axis as 0][k]!),
     );
     const spoilt = (received.outlier[k]! & 1) === 1;
     if (spoilt) marked += 1;
