@@ -1,4 +1,5 @@
 /** The socket.io namespace of live runs. */
+import type { RecordingStatus } from './recordings';
 import type { RunState, RunSummary } from './runs';
 
 export const LIVE_NAMESPACE = '/live';
@@ -14,6 +15,15 @@ export interface RunFailed {
   state: 'failed' | 'cancelled' | 'superseded';
   reason: string;
 }
+/** Sent to everybody of the workspace whose recording it is. */
+export interface RecordingChanged {
+  workspaceId: string;
+  recordingId: string;
+  /** Null: it was deleted. */
+  status: RecordingStatus | null;
+  /** Of decoding, 0…1 */
+  progress: number;
+}
 export type FollowAnswer = { ok: true } | { ok: false; reason: string };
 
 export interface ClientToServerEvents {
@@ -26,4 +36,5 @@ export interface ServerToClientEvents {
   'run:progress': (message: RunProgress) => void;
   'run:summary': (message: { runId: string; summary: RunSummary; hasSeries: boolean }) => void;
   'run:failed': (message: RunFailed) => void;
+  'recording:changed': (message: RecordingChanged) => void;
 }

@@ -1,0 +1,16 @@
+/** Every migration, oldest first. A migration is never changed once it has left this machine; write a new one. */
+import { createAccounts } from './2026-01-10-create-accounts';
+import { createMessages } from './2026-01-10-create-messages';
+import { createRecordings } from './2026-01-11-create-recordings';
+import { createRunsAndSets } from './2026-01-12-create-runs-and-sets';
+import { runMigrations, type Migration } from './runner';
+
+export const MIGRATIONS: readonly Migration[] = [
+  createAccounts,
+  createMessages,
+  createRecordings,
+  createRunsAndSets,
+];
+
+/** Brings the database at `url` up to date; answers the names that were applied. */
+export const migrate = (url: string) => runMigrations(url, MIGRATIONS);

@@ -1,0 +1,56 @@
+/** The database as services see it: one connection pool, its models bound to it. */
+import { Sequelize, type Transaction } from 'sequelize';
+import type { Logger } from 'pino';
+import { bindAccounts } from './accounts';
+import { bindMessages } from './messages';
+import { bindParameterSet, bindSetVersion } from './parameter-set';
+import { bindRecording, bindRecordingFile } from './recording';
+import { bindRun } from './run';
+import { bindVehicle } from './vehicle';
+
+export type Database = ReturnType<typeof bindModels> & {
+  sequelize: Sequelize;
+  transaction<T>(work: (transaction: Transaction) => Promise<T>): Promise<T>;
+  close(): Promise<void>;
+};
+
+/** Opens a pool on `url` (lazily: nothing connects until the first query). */
+export function openDatabase(url: string, log: Logger): Database {
+  const sequelize = new Sequelize(url, {
+    dialect: 'postgres',
+    logging: (sql) => log.trace({ sql }, 'query'),
+    pool: { max: 12, min: 1, acquire: 8_000, idle: 30_000 },
+    dialectOptions: { connectionTimeoutMillis: 5_000, keepAlive: true },
+  });
+  return {
+    sequelize,
+    ...bindModels(sequelize),
+    transaction: (work) => sequelize.transaction(work),
+    close: () => sequelize.close(),
+  };
+}
+
+function bindModels(sequelize: Sequelize) {
+  const models = {
+    ...bindAccounts(sequelize),
+    ...bindMessages(sequelize),
+    Vehicle: bindVehicle(sequelize),
+    Recording: bindRecording(sequelize),
+    RecordingFile: bindRecordingFile(sequelize),
+    Run: bindRun(sequelize),
+    ParameterSet: bindParameterSet(sequelize),
+    SetVersion: bindSetVersion(sequelize),
+  };
+  const { Recording, RecordingFile, Run, ParameterSet, SetVersion, User, Vehicle } = models;
+  Recording.belongsTo(Vehicle, { as: 'vehicle', foreignKey: 'vehicleId' });
+  Recording.belongsTo(User, { as: 'createdBy', foreignKey: 'createdById' });
+  Recording.hasMany(RecordingFile, { as: 'files', foreignKey: 'recordingId' });
+  Run.belongsTo(Recording, { as: 'recording', foreignKey: 'recordingId' });
+  Run.belongsTo(User, { as: 'createdBy', foreignKey: 'createdById' });
+  ParameterSet.belongsTo(Vehicle, { as: 'vehicle', foreignKey: 'vehicleId' });
+  ParameterSet.belongsTo(User, { as: 'createdBy', foreignKey: 'createdById' });
+  ParameterSet.hasMany(SetVersion, { as: 'versions', foreignKey: 'setId' });
+  SetVersion.belongsTo(User, { as: 'createdBy', foreignKey: 'createdById' });
+  SetVersion.belongsTo(User, { as: 'reviewedBy', foreignKey: 'reviewedById' });
+  return models;
+}

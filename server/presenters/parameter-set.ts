@@ -1,0 +1,51 @@
+import type {
+  ParameterSet,
+  ParameterSetDetail,
+  ParameterSetVersion,
+} from '@/shared/contracts/parameter-sets';
+import type { SetVersion } from '../models/parameter-set';
+import type { WholeSet } from '../services/parameter-sets';
+
+export function presentSet({ set, versions }: WholeSet): ParameterSet {
+  const latest = versions[0];
+  if (!latest) throw new Error(`Parameter set ${set.id} has no version.`);
+  return {
+    id: set.id,
+    name: set.name,
+    vehicleId: set.vehicleId,
+    vehicleName: set.vehicle?.name ?? null,
+    createdAt: set.createdAt.toISOString(),
+    createdBy: set.createdBy?.name ?? '',
+    latest: {
+      number: latest.number,
+      state: latest.state,
+      note: latest.note,
+      createdAt: latest.createdAt.toISOString(),
+      createdBy: latest.createdBy?.name ?? '',
+    },
+    versionCount: versions.length,
+  };
+}
+
+export const presentSetDetail = (whole: WholeSet): ParameterSetDetail => ({
+  ...presentSet(whole),
+  versions: whole.versions.map(presentVersion),
+});
+
+export const presentVersion = (row: SetVersion): ParameterSetVersion => ({
+  id: row.id,
+  number: row.number,
+  state: row.state,
+  note: row.note,
+  parameters: row.parameters,
+  outages: row.outages,
+  runId: row.runId,
+  recordingId: row.recordingId,
+  parentNumber: row.parentNumber,
+  createdAt: row.createdAt.toISOString(),
+  createdBy: row.createdBy?.name ?? '',
+  createdById: row.createdById,
+  reviewComment: row.reviewComment,
+  reviewedBy: row.reviewedBy?.name ?? null,
+  reviewedAt: row.reviewedAt?.toISOString() ?? null,
+});

@@ -1,0 +1,13 @@
+import type { Vehicle } from '@/shared/contracts/vehicles';
+import type { CountedVehicle } from '../services/vehicles';
+
+export const presentVehicle = ({ vehicle, recordingCount }: CountedVehicle): Vehicle => ({
+  id: vehicle.id,
+  name: vehicle.name,
+  kind: vehicle.kind,
+  leverArmM: vehicle.leverArmM,
+  axes: vehicle.axes,
+  notes: vehicle.notes,
+  createdAt: vehicle.createdAt.toISOString(),
+  recordingCount,
+});

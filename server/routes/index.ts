@@ -1,0 +1,19 @@
+/** Every route of the API, version 1. */
+import { accountRoutes } from './accounts';
+import { parameterSetRoutes } from './parameter-sets';
+import { recordingRoutes } from './recordings';
+import type { Route } from './route';
+import { runRoutes } from './runs';
+import { statusRoutes } from './status';
+import { teamRoutes } from './team';
+import { vehicleRoutes } from './vehicles';
+
+export const ROUTES: readonly Route[] = [
+  ...statusRoutes,
+  ...accountRoutes,
+  ...teamRoutes,
+  ...vehicleRoutes,
+  ...recordingRoutes,
+  ...runRoutes,
+  ...parameterSetRoutes,
+];

@@ -1,0 +1,52 @@
+/** The audit trail: written in the transaction of the change itself, read by admins, changed by nobody. */
+import { Op, type Transaction, type WhereOptions } from 'sequelize';
+import type { PageQuery } from '@/shared/contracts/common';
+import type { Actor, Context } from '../context';
+import type { AuditEntry } from '../models/messages';
+import { type Found, newestFirst } from './paging';
+
+interface Entry {
+  workspaceId: string;
+  /** Null: the server itself. */
+  by: { userId: string; name: string; address: string | null } | null;
+  action: string;
+  subject: string;
+  detail?: Record<string, unknown>;
+}
+
+export async function record(ctx: Context, entry: Entry, transaction: Transaction): Promise<void> {
+  await ctx.db.AuditEntry.create(
+    {
+      workspaceId: entry.workspaceId,
+      actorId: entry.by?.userId ?? null,
+      actorName: entry.by?.name ?? 'Server',
+      action: entry.action,
+      subject: entry.subject,
+      detail: entry.detail ?? {},
+      address: entry.by?.address ?? null,
+    },
+    { transaction },
+  );
+}
+
+/** What `actor` did in their workspace. */
+export const recordBy = (
+  ctx: Context,
+  actor: Actor,
+  what: Pick<Entry, 'action' | 'subject' | 'detail'>,
+  transaction: Transaction,
+): Promise<void> => record(ctx, { workspaceId: actor.workspaceId, by: actor, ...what }, transaction);
+
+export function listAudit(ctx: Context, actor: Actor, query: PageQuery): Promise<Found<AuditEntry>> {
+  const pattern = query.search ? `%${escapeLike(query.search)}%` : null;
+  const where: WhereOptions<AuditEntry> = pattern
+    ? {
+        workspaceId: actor.workspaceId,
+        [Op.or]: ['action', 'subject', 'actorName'].map((column) => ({ [column]: { [Op.iLike]: pattern } })),
+      }
+    : { workspaceId: actor.workspaceId };
+  return newestFirst(ctx.db.AuditEntry, query, where);
+}
+
+/** `text` as it stands inside a LIKE pattern. */
+export const escapeLike = (text: string): string => text.replace(/[\\%_]/g, '\\$&');

@@ -1,0 +1,99 @@
+/** Clears up after servers that died: what they had half done is finished, taken up again or told as failed. */
+import { Op } from 'sequelize';
+import type { RunState } from '@/shared/contracts/runs';
+import { storeKeys } from '@/workers';
+import type { Context } from '../context';
+import { isDatabaseAway, pause } from '../database-state';
+import { announce, sendDecode } from './decoding';
+import { discardFiles } from './discard';
+import { forget } from './recordings';
+import { launch, RESTARTED } from './run-launch';
+
+const LOOK_EVERY_MS = 30_000;
+const GOING: RunState[] = ['queued', 'running'];
+
+/** At start, and every half minute for the sake of other servers, until the server stops. */
+export async function keepRecovering(ctx: Context): Promise<void> {
+  while (!ctx.stopping.aborted) {
+    await pause(LOOK_EVERY_MS, ctx.stopping);
+    if (ctx.stopping.aborted) return;
+    await recover(ctx).catch((error: unknown) => {
+      if (!isDatabaseAway(error)) ctx.log.error({ err: error }, 'recovery');
+    });
+  }
+}
+
+export async function recover(ctx: Context): Promise<void> {
+  const dead = await ctx.instance.deadAmong(await holders(ctx));
+  await dropUnconfirmed(ctx, dead);
+  await finishDeletions(ctx);
+  await decodeAgain(ctx, dead);
+  await endRuns(ctx, dead);
+}
+
+/** Servers that rows in hand name. */
+async function holders(ctx: Context): Promise<string[]> {
+  const where = { instanceId: { [Op.ne]: null } };
+  const recordings = await ctx.db.Recording.findAll({
+    where,
+    attributes: ['instanceId'],
+    group: ['instanceId'],
+  });
+  const runs = await ctx.db.Run.findAll({
+    where: { ...where, state: GOING },
+    attributes: ['instanceId'],
+    group: ['instanceId'],
+  });
+  const ids = [...recordings, ...runs].map((row) => row.instanceId);
+  return [...new Set(ids.filter((id) => id !== null))];
+}
+
+/** Uploads that were never confirmed: nobody was told that they are kept. */
+async function dropUnconfirmed(ctx: Context, dead: string[]): Promise<void> {
+  const where = { confirmedAt: null, instanceId: dead };
+  for (const { id } of await ctx.db.Recording.findAll({ where, attributes: ['id'] })) {
+    ctx.log.info({ recordingId: id }, 'an upload that was cut off is cleared away');
+    await forget(ctx, id);
+  }
+}
+
+/** A deletion that was cut off between its steps. One that is going on just now is none the worse for it. */
+async function finishDeletions(ctx: Context): Promise<void> {
+  const where = { deletedAt: { [Op.ne]: null } };
+  for (const { id } of await ctx.db.Recording.findAll({ where, attributes: ['id'] })) await forget(ctx, id);
+}
+
+async function decodeAgain(ctx: Context, dead: string[]): Promise<void> {
+  const where = { status: 'decoding' as const, instanceId: dead };
+  for (const recording of await ctx.db.Recording.findAll({ where })) {
+    ctx.log.info({ recordingId: recording.id }, 'a decoding that was cut off is taken up again');
+    await ctx.db.transaction(async (transaction) => {
+      await recording.update({ status: 'uploaded', progress: 0, instanceId: null }, { transaction });
+      await sendDecode(ctx, recording, transaction);
+    });
+    announce(ctx, recording);
+  }
+}
+
+/** A bench's run is told as failed: its slider has moved on or is moved again. Any other is computed anew. */
+async function endRuns(ctx: Context, dead: string[]): Promise<void> {
+  const where = { state: GOING, instanceId: dead };
+  for (const run of await ctx.db.Run.findAll({ where })) {
+    await discardFiles(ctx, storeKeys.run(run.id));
+    const recording = run.benchId
+      ? null
+      : await ctx.db.Recording.findOne({
+          where: { id: run.recordingId, status: 'ready' },
+          include: ['files'],
+        });
+    if (recording) {
+      await run.update({ state: 'queued', instanceId: ctx.instance.id });
+      ctx.log.info({ runId: run.id }, 'a run that was cut off is computed anew');
+      launch(ctx, run, recording);
+      continue;
+    }
+    const ended = { state: 'failed', failure: RESTARTED, finishedAt: ctx.clock(), instanceId: null } as const;
+    await ctx.db.Run.update(ended, { where: { id: run.id, state: GOING } });
+    ctx.live.failed({ runId: run.id, state: 'failed', reason: RESTARTED });
+  }
+}
