@@ -2,6 +2,7 @@
 import { buildAll } from './build';
 import { isPortFree } from './lib/ports';
 import { failWith, readSettings } from './lib/project';
+import { stopSignal } from './lib/stop-signal';
 import { announce } from './start/announce';
 import { takeLock } from './start/lock';
 import { Stack } from './start/stack';
@@ -35,7 +36,7 @@ async function startLocked(options: StartOptions): Promise<void> {
         `Port ${port} of ${host} is taken by another program: free it, or choose another (PORT=4601 npm start).`,
       );
     }
-    const stopping = stopSignal();
+    const stopping = stopSignal(() => console.log('\nStopping …'));
     await runStack(new Stack({ host, port, dataFolder }, address, stopping), stopping, options);
   } finally {
     lock.release();
@@ -55,16 +56,4 @@ async function runStack(stack: Stack, stopping: AbortSignal, options: StartOptio
   } finally {
     await stack.down();
   }
-}
-
-/** Aborted by the first signal that asks us to stop; the second one does not wait for anybody. */
-function stopSignal(): AbortSignal {
-  const controller = new AbortController();
-  const stop = () => {
-    if (controller.signal.aborted) process.exit(130);
-    console.log('\nStopping …');
-    controller.abort();
-  };
-  for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP'] as const) process.on(signal, stop);
-  return controller.signal;
 }

@@ -2,6 +2,7 @@
 import { mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
+import { stopSignal } from './lib/stop-signal';
 import { STAGES, type Count, type Stage, type StageContext } from './test/stages';
 
 /** `names` picks stages (npm test -- types lint); all of them without. Sets the exit code. */
@@ -15,14 +16,13 @@ export async function test(names: string[]): Promise<void> {
     return;
   }
   const stages = STAGES.filter(({ name }) => names.length === 0 || names.includes(name));
-  const stopping = new AbortController();
-  for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP'] as const) process.on(signal, () => stopping.abort());
+  const stopping = stopSignal();
   const folder = mkdtempSync(path.join(tmpdir(), 'driftwright-test-'));
   const total: Count = { passed: 0, failed: 0 };
   const lines: string[] = [];
   for (const stage of stages) {
     const startedAt = performance.now();
-    const count = await runStage(stage, { folder, stopping: stopping.signal });
+    const count = await runStage(stage, { folder, stopping });
     total.passed += count.passed;
     total.failed += count.failed;
     const seconds = ((performance.now() - startedAt) / 1000).toFixed(1);
