@@ -29,7 +29,7 @@ export function gnssReport(columns: Columns, facts: GnssFacts): GnssReport {
     ...facts,
     startS: time[0] ?? NaN,
     endS: time.at(-1) ?? NaN,
-    rateHz: nominalS > 0 ? 1 / nominalS : 0,
+    rateHz: nominalS > 0 ? Number((1 / nominalS).toPrecision(6)) : 0,
     hasVelocity: holds('vn_m_s'),
     hasHeight: holds('height_m'),
     hasPositionSigma: holds('sigma_n_m'),

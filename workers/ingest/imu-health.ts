@@ -102,7 +102,7 @@ export class ImuHealth {
       startS: this.startS,
       endS: this.lastS,
       nominalS: this.nominalS,
-      rateHz: coveredS > 0 ? intervals / coveredS : 0,
+      rateHz: coveredS > 0 ? Number((intervals / coveredS).toPrecision(6)) : 0,
       jitterS: intervals > 0 ? Math.sqrt(this.squaredJitter / intervals) : 0,
       gapsS: this.gaps,
       gapCount: this.gapCount,

@@ -34,7 +34,7 @@ async function tablesFor(job: RunExportJob, helpers: JobHelpers): Promise<RunTab
 }
 
 async function textOf(job: RunExportJob, tables: RunTables): Promise<Iterable<string>> {
-  const info = { name: job.name, utcOrigin: job.utcOrigin };
+  const info = { name: job.name.replace(/\.[a-z0-9]+$/i, ''), utcOrigin: job.utcOrigin };
   switch (job.format) {
     case 'solution-csv':
       return solutionCsv(tables);

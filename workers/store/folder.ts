@@ -31,7 +31,7 @@ export class FolderStore implements Store {
       return { bytes: size };
     } catch (error) {
       if (source instanceof Readable) source.destroy();
-      await rm(temporary, { force: true });
+      await rm(temporary, { force: true }).catch(() => undefined);
       throw inPlainWords(error, 'write');
     }
   }
