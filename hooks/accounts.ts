@@ -25,7 +25,7 @@ export function useFirstAdmin() {
   const client = useQueryClient();
   return useMutation({
     mutationFn: (input: FirstAdmin) =>
-      api<Me>('/installation', { method: 'POST', body: input, anonymous: true }),
+      api<Me>('/installation/first-admin', { method: 'POST', body: input, anonymous: true }),
     onSuccess: async () => {
       await client.invalidateQueries({ queryKey: sessionKeys.installation });
       await client.invalidateQueries({ queryKey: sessionKeys.me });

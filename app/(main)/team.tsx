@@ -1,5 +1,1 @@
-import { Screen } from '@/components/layout/Screen';
-
-export default function Today() {
-  return <Screen title="Today">{null}</Screen>;
-}
+export { TeamScreen as default } from '@/components/team/TeamScreen';

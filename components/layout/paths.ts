@@ -1,5 +1,6 @@
 /** Addresses of pages that take an id. */
 import type { Href } from 'expo-router';
+import { benchHref } from '@/components/bench/bench-link';
 
 export const recordingPath = (id: string): Href => ({ pathname: '/recordings/[id]', params: { id } });
 export const mappingPath = (id: string): Href => ({ pathname: '/recordings/[id]/mapping', params: { id } });
@@ -7,10 +8,8 @@ export const setPath = (id: string): Href => ({ pathname: '/sets/[id]', params: 
 export const vehiclePath = (id: string): Href => ({ pathname: '/vehicles/[id]', params: { id } });
 
 /** The bench over a recording, optionally with a version's parameters. */
-export const benchPath = (recordingId: string, version?: { setId: string; number: number }): Href => ({
-  pathname: '/bench/[recordingId]',
-  params: version ? { recordingId, set: version.setId, version: String(version.number) } : { recordingId },
-});
+export const benchPath = (recordingId: string, version?: { setId: string; number: number }): Href =>
+  hrefOf(benchHref({ recordingId, setId: version?.setId, version: version?.number }));
 
 /** A path that is only known while running, as the router's type. */
 export function hrefOf(path: string): Href;

@@ -81,7 +81,7 @@ function Files({ form, disabled }: { form: UseFormReturn<UploadForm>; disabled: 
   const { errors } = form.formState;
   const [imu, gnss, reference] = form.watch(['imu', 'gnss', 'reference']);
   const take = (role: 'imu' | 'gnss' | 'reference') => (chosen: File | undefined) => {
-    form.setValue(role, chosen as File, { shouldValidate: form.formState.isSubmitted });
+    form.setValue(role, chosen, { shouldValidate: form.formState.isSubmitted });
     if (role === 'imu' && chosen && form.getValues('name') === '')
       form.setValue('name', nameFromFile(chosen.name), { shouldValidate: form.formState.isSubmitted });
   };

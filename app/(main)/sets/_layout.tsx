@@ -1,0 +1,1 @@
+export { SetsLayout as default } from '@/components/sets/SetsLayout';

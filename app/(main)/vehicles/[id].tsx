@@ -1,0 +1,7 @@
+import { useLocalSearchParams } from 'expo-router';
+import { VehicleScreen } from '@/components/vehicles/VehicleScreen';
+
+export default function VehicleRoute() {
+  const { id } = useLocalSearchParams<{ id: string }>();
+  return <VehicleScreen id={id} />;
+}

@@ -1,0 +1,1 @@
+export { VehiclesLayout as default } from '@/components/vehicles/VehiclesLayout';

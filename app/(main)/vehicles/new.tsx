@@ -1,0 +1,1 @@
+export { NewVehicleScreen as default } from '@/components/vehicles/VehicleScreen';

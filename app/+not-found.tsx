@@ -1,0 +1,3 @@
+import { NotFound } from '@/components/layout/NotFound';
+
+export default NotFound;

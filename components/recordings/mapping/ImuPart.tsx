@@ -1,0 +1,92 @@
+import { Controller, useFormState, useWatch } from 'react-hook-form';
+import { View } from 'react-native';
+import { AxisPicker } from '@/components/vehicles/AxisPicker';
+import { accelUnitSchema, gyroUnitSchema, imuMapSchema } from '@/shared/contracts/recordings';
+import { Column, fields, Group, Pick, plain, type PartProps } from './parts';
+import { TimePart } from './TimePart';
+
+const GYRO_UNITS = plain(gyroUnitSchema.options, {
+  'deg/s': '°/s',
+  'deg/h': '°/h',
+  rad: 'rad, an angle a sample',
+  deg: '°, an angle a sample',
+});
+const ACCEL_UNITS = plain(accelUnitSchema.options, {
+  'm/s^2': 'm/s²',
+  'm/s': 'm/s, a velocity a sample',
+  'g*s': 'g·s, a velocity a sample',
+});
+const SIGNS = plain(imuMapSchema.shape.accel.shape.sign.unwrap().options, {
+  'specific-force': 'specific force: lying still, z down reads −9.8 m/s²',
+  opposite: 'opposite: lying still, z down reads +9.8 m/s²',
+});
+const SAMPLING = plain(imuMapSchema.shape.sampling.unwrap().options, {
+  'mean-rate': 'mean rates over each interval',
+  instantaneous: 'rates at the instant of the stamp',
+  increment: 'increments over each interval',
+});
+const AXES_FROM = [
+  { value: 'vehicle', label: 'as the vehicle says' },
+  { value: 'own', label: 'different in this file' },
+] as const;
+const AXES = ['x', 'y', 'z'] as const;
+
+/** Gyro and accelerometer columns, their units, and how the sensor sits. */
+export function ImuPart({ control, headers }: PartProps) {
+  const axesFrom = useWatch({ control, name: 'imu.axesFrom' });
+  const { errors } = useFormState({ control });
+  const axesError = errors.imu?.axes?.message ?? errors.imu?.axes?.root?.message;
+  return (
+    <>
+      <TimePart control={control} headers={headers} role="imu" />
+      <Group title="Gyro">
+        <View style={fields.row}>
+          {AXES.map((axis, i) => (
+            <Column
+              key={axis}
+              control={control}
+              headers={headers}
+              name={`imu.gyro.${i}` as 'imu.gyro.0'}
+              label={`Gyro ${axis}`}
+            />
+          ))}
+          <Pick control={control} name="imu.gyroUnit" label="Gyro unit" options={GYRO_UNITS} />
+        </View>
+      </Group>
+      <Group title="Accelerometer">
+        <View style={fields.row}>
+          {AXES.map((axis, i) => (
+            <Column
+              key={axis}
+              control={control}
+              headers={headers}
+              name={`imu.accel.${i}` as 'imu.accel.0'}
+              label={`Accelerometer ${axis}`}
+            />
+          ))}
+          <Pick control={control} name="imu.accelUnit" label="Accelerometer unit" options={ACCEL_UNITS} />
+        </View>
+        <View style={fields.row}>
+          <Pick control={control} name="imu.accelSign" label="Sign" options={SIGNS} />
+          <Pick control={control} name="imu.sampling" label="The values are" options={SAMPLING} />
+        </View>
+      </Group>
+      <Group title="Sensor axes">
+        <Pick control={control} name="imu.axesFrom" label="The sensor is mounted" options={AXES_FROM} />
+        {axesFrom === 'own' ? (
+          <Controller
+            control={control}
+            name="imu.axes"
+            render={({ field }) =>
+              field.value ? (
+                <AxisPicker value={field.value} onChange={field.onChange} error={axesError} />
+              ) : (
+                <></>
+              )
+            }
+          />
+        ) : null}
+      </Group>
+    </>
+  );
+}

@@ -1,0 +1,106 @@
+import { router } from 'expo-router';
+import { useState } from 'react';
+import { StyleSheet, View } from 'react-native';
+import { benchPath } from '@/components/layout/paths';
+import { RecordingPicker } from '@/components/recordings/RecordingPicker';
+import { Button } from '@/components/ui/Button';
+import { Card } from '@/components/ui/Card';
+import { Figures } from '@/components/ui/Figures';
+import { formatMoment } from '@/components/ui/format-day';
+import { Text } from '@/components/ui/Text';
+import { space } from '@/constants/theme';
+import { useRecording } from '@/hooks/recordings';
+import type { ParameterSetDetail, ParameterSetVersion } from '@/shared/contracts/parameter-sets';
+import { changeCount, parameterSections } from './parameter-rows';
+import { ParameterTable } from './ParameterTable';
+import { VERSION_STATES } from './version-words';
+
+export interface VersionCardProps {
+  set: ParameterSetDetail;
+  version: ParameterSetVersion;
+}
+
+/** One version: why, by whom, what it holds, and what it changed. */
+export function VersionCard({ set, version }: VersionCardProps) {
+  const parent = set.versions.find((other) => other.number === version.parentNumber) ?? null;
+  const sections = parameterSections(version.parameters, parent?.parameters ?? null);
+  const { word, tone } = VERSION_STATES[version.state];
+  return (
+    <>
+      <Card>
+        <View style={styles.head}>
+          <View style={styles.words}>
+            <Text variant="heading">{`Version ${version.number}`}</Text>
+            <Figures tone="soft">{`${version.createdBy}, ${formatMoment(version.createdAt)}`}</Figures>
+          </View>
+          <Text variant="label" strong tone={tone}>
+            {word}
+          </Text>
+        </View>
+        <Text>{version.note}</Text>
+        <Tuned version={version} setId={set.id} />
+      </Card>
+      <Card title="Parameters" action={<Summary parent={parent} changes={changeCount(sections)} />}>
+        <ParameterTable sections={sections} parentName={parent ? `version ${parent.number}` : null} />
+      </Card>
+    </>
+  );
+}
+
+function Summary({ parent, changes }: { parent: ParameterSetVersion | null; changes: number }) {
+  if (!parent)
+    return (
+      <Text variant="label" tone="soft">
+        first version
+      </Text>
+    );
+  return (
+    <Figures tone="soft">
+      {changes === 0
+        ? `nothing changed against version ${parent.number}`
+        : `${changes} changed against version ${parent.number}`}
+    </Figures>
+  );
+}
+
+/** Which recording it was tuned on, and the ways to the bench. */
+function Tuned({ version, setId }: { version: ParameterSetVersion; setId: string }) {
+  const [picking, setPicking] = useState(false);
+  const recording = useRecording(version.recordingId ?? '');
+  const open = (recordingId: string) =>
+    router.push(benchPath(recordingId, { setId, number: version.number }));
+  const tunedOn = version.recordingId && recording.data?.status === 'ready' ? recording.data : null;
+  return (
+    <>
+      {tunedOn ? (
+        <Figures tone="soft">{`Tuned on ${tunedOn.name}${outageWords(version.outages.length)}`}</Figures>
+      ) : null}
+      <View style={styles.buttons}>
+        {tunedOn ? (
+          <Button label="Open on the bench" kind="primary" icon="bench" onPress={() => open(tunedOn.id)} />
+        ) : null}
+        <Button
+          label={tunedOn ? 'On another recording' : 'Open on the bench'}
+          icon={tunedOn ? undefined : 'bench'}
+          onPress={() => setPicking(true)}
+        />
+      </View>
+      {picking ? (
+        <RecordingPicker
+          title={`Version ${version.number} on which recording?`}
+          onPick={(chosen) => open(chosen.id)}
+          onClose={() => setPicking(false)}
+        />
+      ) : null}
+    </>
+  );
+}
+
+const outageWords = (count: number) =>
+  count === 0 ? '' : count === 1 ? ', with 1 outage window' : `, with ${count} outage windows`;
+
+const styles = StyleSheet.create({
+  head: { flexDirection: 'row', flexWrap: 'wrap', justifyContent: 'space-between', gap: space.m },
+  words: { flexShrink: 1 },
+  buttons: { flexDirection: 'row', flexWrap: 'wrap', gap: space.s },
+});

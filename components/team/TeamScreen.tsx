@@ -1,0 +1,25 @@
+import { Screen } from '@/components/layout/Screen';
+import { useBreakpoint } from '@/components/layout/use-breakpoint';
+import { NoPermission } from '@/components/ui/NoPermission';
+import { useCan, useSession } from '@/hooks/session';
+import { InvitationsCard } from './InvitationsCard';
+import { MembersCard } from './MembersCard';
+
+/** Who belongs to the workspace, with which role, and who is invited. */
+export function TeamScreen() {
+  const { wide } = useBreakpoint();
+  const { workspace } = useSession();
+  const mayManage = useCan('team:manage');
+  return (
+    <Screen title="Team" subtitle={workspace.name} back={wide ? undefined : '/more'} width="text">
+      {mayManage ? (
+        <>
+          <MembersCard />
+          <InvitationsCard />
+        </>
+      ) : (
+        <NoPermission message="Only an admin manages members, roles and invitations." />
+      )}
+    </Screen>
+  );
+}

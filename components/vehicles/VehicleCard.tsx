@@ -1,0 +1,46 @@
+import { StyleSheet, View } from 'react-native';
+import { vehiclePath } from '@/components/layout/paths';
+import { CardLink } from '@/components/ui/CardLink';
+import { Figures } from '@/components/ui/Figures';
+import { Text } from '@/components/ui/Text';
+import { space } from '@/constants/theme';
+import { formatNumber } from '@/shared/format';
+import type { Vehicle } from '@/shared/contracts/vehicles';
+import { axesSentence } from './axes';
+import { KINDS } from './vehicle-words';
+
+/** One vehicle in the list. */
+export function VehicleCard({ vehicle, current }: { vehicle: Vehicle; current?: boolean }) {
+  const count = `${vehicle.recordingCount} ${vehicle.recordingCount === 1 ? 'recording' : 'recordings'}`;
+  return (
+    <CardLink
+      href={vehiclePath(vehicle.id)}
+      label={`${vehicle.name}, ${KINDS[vehicle.kind]}, ${count}`}
+      current={current}
+    >
+      <View style={styles.head}>
+        <Text strong style={styles.name}>
+          {vehicle.name}
+        </Text>
+        <Figures tone="soft">{count}</Figures>
+      </View>
+      <Figures tone="soft">{`${KINDS[vehicle.kind]} · IMU ${axesSentence(vehicle.axes)}`}</Figures>
+      <Figures tone="soft">{`antenna ${leverArmLine(vehicle.leverArmM)}`}</Figures>
+    </CardLink>
+  );
+}
+
+/** "0.4 m forward, 0 m right, −1.2 m down" */
+export const leverArmLine = (arm: Vehicle['leverArmM']): string =>
+  `${formatNumber(arm[0])} m forward, ${formatNumber(arm[1])} m right, ${formatNumber(arm[2])} m down`;
+
+const styles = StyleSheet.create({
+  head: {
+    flexDirection: 'row',
+    flexWrap: 'wrap',
+    justifyContent: 'space-between',
+    alignItems: 'baseline',
+    columnGap: space.m,
+  },
+  name: { fontSize: 17, flexShrink: 1 },
+});
