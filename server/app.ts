@@ -70,7 +70,8 @@ const requestLog = (ctx: Context): RequestHandler =>
   pinoHttp({
     logger: ctx.log,
     autoLogging: { ignore: (req) => !req.url?.startsWith(API_PREFIX) || req.url === `${API_PREFIX}/health` },
-    customLogLevel: (_req, res) => (res.statusCode >= 500 ? 'error' : 'info'),
+    customLogLevel: (_req, res) => (res.statusCode >= 500 ? 'warn' : 'info'),
+    customErrorObject: (_req, _res, _error, line: object) => ({ ...line, err: undefined }), // logged where it was caught
     serializers: {
       req: (req: { method: string; url: string }) => ({ method: req.method, url: withoutToken(req.url) }),
       res: (res: { statusCode: number }) => ({ status: res.statusCode }),

@@ -1,8 +1,7 @@
 /** Everything a service may need from outside, handed down; tests swap members. */
 import type { Logger } from 'pino';
 import type { Role } from '@/shared/contracts/roles';
-import type { Pool } from '@/workers';
-import type { Store } from '@/workers';
+import type { Pool, Store } from '@/workers';
 import type { Config } from './config';
 import type { Instance } from './instance';
 import type { Mailer } from './mail/mailer';

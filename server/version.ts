@@ -1,3 +1,2 @@
-import { version } from '../package.json';
-
-export const VERSION: string = version;
+/** As package.json says (a test holds them together). */
+export const VERSION = '0.1.0';

@@ -119,7 +119,10 @@ function hashingStorage(folder: string): StorageEngine {
         size += chunk.length;
       });
       pipeline(file.stream, fs.createWriteStream(target, { mode: 0o600 })).then(
-        () => done(null, { path: target, size, sha256: hash.digest('hex') } as Stored),
+        () => {
+          const stored: Stored = { path: target, size, sha256: hash.digest('hex') };
+          done(null, stored);
+        },
         (error: unknown) => done(storageFault(error)),
       );
     },

@@ -1,5 +1,5 @@
 /** What every table has, and how a model class is bound to one connection. */
-import { DataTypes, type InitOptions, Model, type ModelAttributes, type Sequelize } from 'sequelize';
+import { DataTypes, type InitOptions, type Model, type ModelAttributes, type Sequelize } from 'sequelize';
 
 /** Primary key; made by the server, so that a row's id is known before it is written. */
 export const idColumn = { type: DataTypes.UUID, defaultValue: DataTypes.UUIDV4, primaryKey: true } as const;

@@ -74,8 +74,9 @@ export async function openQueue(url: string, sequelize: Sequelize, log: Logger):
 /** Lets the queue write through a transaction of ours. */
 function within(sequelize: Sequelize, transaction: Transaction): PgBoss.Db {
   return {
-    async executeSql(text, values) {
-      const rows = await sequelize.query(text, { bind: values, transaction, type: QueryTypes.SELECT });
+    async executeSql(text, values: unknown[]) {
+      const bind = values.map((value) => value ?? null);
+      const rows = await sequelize.query(text, { bind, transaction, type: QueryTypes.SELECT });
       return { rows };
     },
   };

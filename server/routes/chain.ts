@@ -45,7 +45,8 @@ async function identify(
 
 /** `workspace` stands in for the header where a browser follows a link; it is no field of the route's own. */
 function ownQuery(req: Request): Record<string, unknown> {
-  const { workspace: _workspace, ...own } = req.query;
+  const own: Record<string, unknown> = { ...req.query };
+  delete own.workspace;
   return own;
 }
 

@@ -67,7 +67,7 @@ export function publicRoute<P extends Schema, Q extends Schema, B extends Schema
   declaration: Declaration<P, Q, B> & { handle(call: Call<P, Q, B>): Promise<unknown> },
 ): Route {
   const { handle, ...rest } = declaration;
-  return { ...rest, access: 'public', run: (call) => handle(call as Call<P, Q, B>) };
+  return { ...rest, access: 'public', run: (call) => handle(call) };
 }
 
 /** For anybody signed in, whatever the workspace. */

@@ -22,9 +22,19 @@ export class ActiveRuns {
   private readonly runs = new Map<string, ActiveRun>();
   private readonly timers = new Set<NodeJS.Timeout>();
 
-  add(run: Pick<ActiveRun, 'runId' | 'recordingId' | 'cancel' | 'ended'>): ActiveRun {
-    const active: ActiveRun = { ...run, state: 'queued', progress: 0, frames: [], keptBytes: 0 };
-    this.runs.set(run.runId, active);
+  /** Who adds it sets `cancel` and `ended` at once. */
+  add(runId: string, recordingId: string): ActiveRun {
+    const active: ActiveRun = {
+      runId,
+      recordingId,
+      state: 'queued',
+      progress: 0,
+      frames: [],
+      keptBytes: 0,
+      cancel: () => undefined,
+      ended: Promise.resolve(),
+    };
+    this.runs.set(runId, active);
     return active;
   }
 

@@ -29,18 +29,18 @@ type Outcome =
 /** Starts computing; answers at once. */
 export function launch(ctx: Context, run: Run, recording: Recording): void {
   const { benchId, workspaceId, recordingId } = run;
-  let active: ActiveRun | undefined;
+  const active = ctx.activeRuns.add(run.id, recordingId);
   const job = ctx.pool.submit(
     { kind: 'run', ...specOf(run), framePoints: FRAME_POINTS },
     {
       ...(benchId ? { latestKey: `${workspaceId}:${benchId}` } : {}),
       affinity: recordingId,
       retryOnCrash: true,
-      onEvent: (event) => active && relay(ctx, active, event),
+      onEvent: (event) => relay(ctx, active, event),
     },
   );
-  const ended = see(ctx, run, recording, job.result, () => active);
-  active = ctx.activeRuns.add({ runId: run.id, recordingId, cancel: () => job.cancel(), ended });
+  active.cancel = () => job.cancel();
+  active.ended = see(ctx, run, recording, active, job.result);
 }
 
 /** What a worker must know of a run. */
@@ -57,12 +57,11 @@ async function see(
   ctx: Context,
   run: Run,
   recording: Recording,
+  active: ActiveRun,
   result: Promise<RunJobResult>,
-  active: () => ActiveRun | undefined,
 ): Promise<void> {
   const outcome = await result.then(succeeded, fallen(ctx));
-  const held = active();
-  if (held) held.state = outcome.state;
+  active.state = outcome.state;
   try {
     if (await persist(() => write(ctx, run, recording, outcome), ctx)) tell(ctx, run.id, outcome);
     if (outcome.state !== 'done') await discardFiles(ctx, storeKeys.run(run.id));
@@ -70,7 +69,7 @@ async function see(
   } catch (error) {
     ctx.log.error({ err: error, runId: run.id }, 'the end of a run could not be written');
   } finally {
-    if (held) ctx.activeRuns.finish(held);
+    ctx.activeRuns.finish(active);
   }
 }
 
