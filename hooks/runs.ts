@@ -2,6 +2,7 @@
 import { useQuery } from '@tanstack/react-query';
 import { decodeFrame } from '@/shared/contracts/frames';
 import type { Page } from '@/shared/contracts/common';
+import type { BaselineTrack } from '@/shared/contracts/recordings';
 import type { Run, RunListItem, RunState } from '@/shared/contracts/runs';
 import { api, apiBytes, apiUrl } from './api';
 import { RunData } from './live/run-data';
@@ -46,6 +47,16 @@ export function useRunCurves(id: string | null) {
     queryKey: runKeys.curves(id ?? ''),
     queryFn: async () => fetchCurves(id ?? ''),
     enabled: id !== null,
+    staleTime: Infinity,
+  });
+}
+
+/** GET /recordings/:id/baseline-track: the GNSS-only solution that a run is looked at beside. */
+export function useGnssOnlyTrack(recordingId: string) {
+  return useQuery({
+    queryKey: ['recordings', 'gnss-only', recordingId],
+    queryFn: ({ signal }) =>
+      api<BaselineTrack>(`/recordings/${recordingId}/baseline-track`, { query: { points: 3000 }, signal }),
     staleTime: Infinity,
   });
 }

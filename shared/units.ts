@@ -26,6 +26,14 @@ export const QUANTITIES = {
     { symbol: 'µg/√Hz', toSi: STANDARD_GRAVITY_M_S2 * 1e-6 },
     { symbol: 'm/s/√s', toSi: 1 },
   ],
+  rateRandomWalk: [
+    { symbol: '°/h/√h', toSi: RAD_PER_DEG / 3600 / 60 },
+    { symbol: 'rad/s/√s', toSi: 1 },
+  ],
+  accelRandomWalk: [
+    { symbol: 'mg/√h', toSi: (STANDARD_GRAVITY_M_S2 * 1e-3) / 60 },
+    { symbol: 'm/s²/√s', toSi: 1 },
+  ],
   gyroBias: [
     { symbol: '°/h', toSi: RAD_PER_DEG / 3600 },
     { symbol: '°/s', toSi: RAD_PER_DEG },

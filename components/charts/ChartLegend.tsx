@@ -15,11 +15,11 @@ import { formatAxisTime } from './model/ticks';
 export function ChartLegend({
   content,
   group,
-  beyond,
+  aside,
 }: {
   content: ChartContent;
   group: ChartGroup;
-  beyond: string;
+  aside: string;
 }) {
   const cursor = useSyncExternalStore(group.cursor.subscribe, () => group.cursor.current);
   const named = content.layers.filter((layer) => layer.label !== undefined);
@@ -40,7 +40,7 @@ export function ChartLegend({
         ))}
       </View>
       <Text variant="small" tone="soft" style={styles.unit}>
-        {[cursor === null ? beyond : `at ${formatAxisTime(cursor, 0.1)}`, content.remark, content.unit]
+        {[cursor === null ? aside : `at ${formatAxisTime(cursor, 0.1)}`, content.unit]
           .filter(Boolean)
           .join(' · ')}
       </Text>

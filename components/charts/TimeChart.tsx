@@ -31,7 +31,7 @@ export function TimeChart({ content, group, height, timeAxis = true }: TimeChart
   const { palette } = useTheme();
   const [width, setWidth] = useState(0);
   const [headPx, setHeadPx] = useState(HEAD_PX);
-  const [axes, setAxes] = useState<AxesDrawing & { beyond: string }>(NO_AXES);
+  const [axes, setAxes] = useState<AxesDrawing & { aside: string }>(NO_AXES);
   const plotHeight = Math.max(40, height - headPx);
   const box = useMemo<PlotBox>(
     () => ({
@@ -53,7 +53,7 @@ export function TimeChart({ content, group, height, timeAxis = true }: TimeChart
         style={[styles.head, { paddingLeft: GUTTER_PX }]}
         onLayout={(event) => setHeadPx(event.nativeEvent.layout.height)}
       >
-        <ChartLegend content={content} group={group} beyond={axes.beyond} />
+        <ChartLegend content={content} group={group} aside={axes.aside} />
       </View>
       <View
         ref={surface}
@@ -129,7 +129,7 @@ interface DrawingInput {
   box: PlotBox;
   width: number;
   shapes: ShapeSet;
-  setAxes: (axes: AxesDrawing & { beyond: string }) => void;
+  setAxes: (axes: AxesDrawing & { aside: string }) => void;
 }
 
 /** Draws with the group's frames: paths straight to the page, axes to React only when they differ. */
@@ -159,7 +159,7 @@ function useDrawing({ content, group, box, width, shapes, setAxes }: DrawingInpu
         valueTicks: drawing.valueTicks,
         timeTicks: drawing.timeTicks,
         annotations: drawing.annotations,
-        beyond: beyondText(drawing.beyond, content.unit),
+        aside: [beyondText(drawing.beyond, content.unit), content.remark?.()].filter(Boolean).join(' · '),
       };
       const key = JSON.stringify(axes);
       if (key !== lastAxes.current) {
@@ -201,7 +201,7 @@ const beyondText = ({ count, largest }: { count: number; largest: number }, unit
     ? ''
     : `${count} beyond the scale, largest ${formatNumber(largest, 3)}${unit ? ` ${unit}` : ''}`;
 
-const NO_AXES = { valueTicks: [], timeTicks: [], annotations: [], beyond: '' };
+const NO_AXES = { valueTicks: [], timeTicks: [], annotations: [], aside: '' };
 const KEYS_HINT = 'Arrow keys move the cursor, plus and minus zoom, 0 shows all.';
 
 const styles = StyleSheet.create({

@@ -36,9 +36,10 @@ export function inkOf(layer: Layer, palette: Palette): Ink {
       return {
         ...base,
         strokeWidth: 1,
+        strokeDasharray: layer.kind === 'band' ? layer.dash : undefined,
         strokeOpacity: 0.45 * (layer.opacity ?? 1),
         fill: colour,
-        fillOpacity: (layer.kind === 'band' ? 0.09 : 0.16) * (layer.opacity ?? 1),
+        fillOpacity: (layer.kind === 'band' ? 0.06 : 0.16) * (layer.opacity ?? 1),
       };
     case 'dots':
       return { ...base, strokeWidth: 2.6, strokeLinecap: 'round' };

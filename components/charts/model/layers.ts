@@ -24,10 +24,12 @@ export interface LineLayer extends LayerLook {
   /** Name in the legend and the cursor's reading; left out: in neither (ghosts, remainders). */
   label?: string;
 }
-/** Ground between −value and +value (a σ band), with a hairline edge. */
+/** Ground between −value and +value (a σ band) about zero or about a centre, with a hairline edge. */
 export interface BandLayer extends LayerLook {
   kind: 'band';
   series: () => TimeSeries | null;
+  centre?: () => TimeSeries | null;
+  dash?: string;
   breaks?: boolean;
   label?: string;
 }
@@ -75,7 +77,7 @@ export interface ChartContent {
   /** Unit of the value axis. */
   unit: string;
   /** A remark beside the unit: what is compared with what. */
-  remark?: string;
+  remark?: () => string;
   /** Drawn in this order, the last on top. */
   layers: readonly Layer[];
   windows: () => readonly TimeWindow[];

@@ -122,18 +122,28 @@ function drawLayer(layer: Layer, context: LayerContext): LayerPaths {
   const series = layer.fromS ? startingAt(whole, layer.fromS()) : whole;
   if (isMarks(layer)) return drawMarks(layer.kind, series, context);
 
-  const breaksS = layer.breaks ? context.breaksS : [];
-  const [fromS, toS] = context.view;
-  const points = (buffer: Polyline, map: (value: number) => number) =>
-    decimate({ series, fromS, toS, x, y: map, breaksS }, buffer);
-  const upper = points(context.keep.upper, y);
-  if (layer.kind === 'line') {
-    if (layer.label !== undefined) countBeyond(series, context);
-    return { stroke: linePath(upper), fill: '' };
+  const { keep } = context;
+  const points = (buffer: Polyline, source: TimeSeries) => {
+    const [fromS, toS] = context.view;
+    const breaksS = layer.breaks ? context.breaksS : [];
+    return decimate({ series: source, fromS, toS, x, y, breaksS }, buffer);
+  };
+  if (layer.kind === 'band') {
+    const centre = layer.centre?.() ?? null;
+    const upper = points(keep.upper, shifted(series, centre, 1));
+    const lower = points(keep.lower, shifted(series, centre, -1));
+    return { stroke: linePath(upper) + linePath(lower), fill: bandPath(upper, lower) };
   }
-  if (layer.kind === 'area') return { stroke: linePath(upper), fill: areaPath(upper, y(0)) };
-  const lower = points(context.keep.lower, (value) => y(-value));
-  return { stroke: linePath(upper) + linePath(lower), fill: bandPath(upper, lower) };
+  const line = points(keep.upper, series);
+  if (layer.kind === 'area') return { stroke: linePath(line), fill: areaPath(line, y(0)) };
+  if (layer.label !== undefined) countBeyond(series, context);
+  return { stroke: linePath(line), fill: '' };
+}
+
+/** centre ± half, point by point; both share one time axis. */
+function shifted(half: TimeSeries, centre: TimeSeries | null, sign: 1 | -1): TimeSeries {
+  const { time, length, at } = half;
+  return { time, length, at: centre ? (i) => centre.at(i) + sign * at(i) : (i) => sign * at(i) };
 }
 
 function drawMarks(kind: 'dots' | 'diamonds', series: TimeSeries, context: LayerContext): LayerPaths {

@@ -1,0 +1,95 @@
+import { StyleSheet, View } from 'react-native';
+import { useTheme } from '@/components/ui/ThemeProvider';
+import { web } from '@/components/ui/web-props';
+import { formatClock } from '@/shared/format';
+import type { Outage } from '@/shared/contracts/runs';
+import { lengthLabel } from './labels';
+import type { StripGeometry } from './strip-model';
+import type { WindowLimits, WindowPart } from './window-model';
+
+export interface WindowHandlesProps {
+  geometry: StripGeometry;
+  windows: readonly Outage[];
+  limits: WindowLimits;
+  selected: number | null;
+  onFocus: (index: number) => void;
+  /** Answers whether the key did something. */
+  onKey: (index: number, part: WindowPart, key: string, shift: boolean) => boolean;
+}
+
+export const WITHHELD: Record<Outage['withhold'], string> = {
+  gnss: 'all GNSS',
+  position: 'position',
+  velocity: 'velocity',
+};
+
+/** What the keyboard and the screen reader hold of each window: the window and its two edges. The pointer goes through. */
+export function WindowHandles(props: WindowHandlesProps) {
+  return props.windows.map((window, index) => (
+    <Handles key={index} {...props} window={window} index={index} />
+  ));
+}
+
+function Handles({
+  geometry,
+  limits,
+  selected,
+  onFocus,
+  onKey,
+  window,
+  index,
+}: WindowHandlesProps & { window: Outage; index: number }) {
+  const { palette } = useTheme();
+  const [left, right] = [geometry.x(window.startS), geometry.x(window.endS)];
+  const { tickBottom } = geometry.layout;
+  const grip = { height: 22, top: tickBottom / 2 - 11 };
+  const listen = (part: WindowPart) =>
+    web({
+      tabIndex: 0,
+      onKeyDown: (event) => {
+        if (onKey(index, part, event.key, event.shiftKey)) event.preventDefault();
+      },
+    });
+  const name = `Outage window ${index + 1}`;
+  const edge = (part: 'start' | 'end', at: number, valueS: number) => (
+    <View
+      role="slider"
+      aria-label={`${name}, ${part}`}
+      aria-valuemin={limits.startS}
+      aria-valuemax={limits.endS}
+      aria-valuenow={valueS}
+      aria-valuetext={`${formatClock(valueS)}, ${lengthLabel(window.endS - window.startS)} long`}
+      onFocus={() => onFocus(index)}
+      {...listen(part)}
+      style={[
+        styles.grip,
+        grip,
+        {
+          left: at - 4,
+          borderColor: palette.vermilion,
+          backgroundColor: selected === index ? palette.vermilion : palette.sheet,
+        },
+      ]}
+    />
+  );
+  return (
+    <>
+      <View
+        role="button"
+        aria-label={`${name}: ${formatClock(window.startS)} to ${formatClock(window.endS)}, ${lengthLabel(
+          window.endS - window.startS,
+        )}, ${WITHHELD[window.withhold]} withheld. Arrow keys move it, Enter opens its times, Delete removes it.`}
+        onFocus={() => onFocus(index)}
+        {...listen('body')}
+        style={[styles.body, { left, width: Math.max(2, right - left), height: tickBottom }]}
+      />
+      {edge('start', left, window.startS)}
+      {edge('end', right, window.endS)}
+    </>
+  );
+}
+
+const styles = StyleSheet.create({
+  body: { position: 'absolute', top: 0, pointerEvents: 'none' },
+  grip: { position: 'absolute', width: 8, borderRadius: 3, borderWidth: 1.5, pointerEvents: 'none' },
+});

@@ -1,0 +1,167 @@
+/** Pointer on the full-width strip: draws on empty ground, moves by the body, resizes by the edges, moves the cursor. */
+import type { Outage } from '@/shared/contracts/runs';
+import type { Scale } from '@/components/charts/model/scale';
+import {
+  drawWindow,
+  moveWindow,
+  resizeWindow,
+  sortWindows,
+  type WindowLimits,
+  type WindowPart,
+} from './window-model';
+
+export interface StripGestureHost {
+  x: () => Scale;
+  limits: () => WindowLimits;
+  windows: () => readonly Outage[];
+  /** False: only the cursor moves. */
+  editable: () => boolean;
+  change: (windows: Outage[], settled: boolean) => void;
+  select: (index: number | null) => void;
+  cursor: (timeS: number | null) => void;
+}
+
+/** What lies under `x` px: a window's edge before its body; `reachPx` is how far beside an edge still counts. */
+export function hitWindow(
+  windows: readonly Outage[],
+  scale: Scale,
+  x: number,
+  reachPx: number,
+): { index: number; part: WindowPart } | null {
+  let best: { index: number; part: WindowPart; distance: number } | null = null;
+  windows.forEach((window, index) => {
+    const [left, right] = [scale(window.startS), scale(window.endS)];
+    // Inside, an edge takes at most a third of the window, so that a narrow one can still be moved.
+    const inner = Math.min(reachPx, (right - left) / 3);
+    const consider = (part: WindowPart, edge: number, outside: number) => {
+      const distance = Math.abs(x - edge);
+      const reach = outside > 0 ? reachPx : inner;
+      if (distance <= reach && (!best || distance < best.distance)) best = { index, part, distance };
+    };
+    consider('start', left, left - x);
+    consider('end', right, x - right);
+    if (x > left && x < right && !best) best = { index, part: 'body', distance: reachPx };
+  });
+  const found = best as { index: number; part: WindowPart; distance: number } | null;
+  return found && { index: found.index, part: found.part };
+}
+
+const SLOP_PX = 4;
+const MOUSE_REACH_PX = 9;
+/** Half of a touch target. */
+const TOUCH_REACH_PX = 22;
+
+interface Drag {
+  pointer: number;
+  startX: number;
+  moved: boolean;
+  hit: { index: number; part: WindowPart } | null;
+  before: readonly Outage[];
+}
+
+/** Listens on `element`; answers a function that stops. */
+export function bindStripGestures(element: HTMLElement, host: StripGestureHost): () => void {
+  let drag: Drag | null = null;
+  const local = (event: PointerEvent) => event.clientX - element.getBoundingClientRect().left;
+  const reach = (event: PointerEvent) => (event.pointerType === 'mouse' ? MOUSE_REACH_PX : TOUCH_REACH_PX);
+  const timeAt = (x: number) => {
+    const { startS, endS } = host.limits();
+    return Math.min(endS, Math.max(startS, host.x().invert(x)));
+  };
+
+  function onDown(event: PointerEvent) {
+    if (drag || (event.pointerType === 'mouse' && event.button !== 0)) return;
+    // A handle that has the focus keeps it; the ground must not steal the pointer from buttons on it.
+    const x = local(event);
+    const hit = host.editable() ? hitWindow(host.windows(), host.x(), x, reach(event)) : null;
+    drag = { pointer: event.pointerId, startX: x, moved: false, hit, before: host.windows() };
+    element.setPointerCapture?.(event.pointerId);
+    if (hit) host.select(hit.index);
+  }
+
+  function onMove(event: PointerEvent) {
+    const x = local(event);
+    if (!drag) {
+      if (event.pointerType === 'mouse') hover(x, event);
+      return;
+    }
+    if (event.pointerId !== drag.pointer) return;
+    if (Math.abs(x - drag.startX) > SLOP_PX) drag.moved = true;
+    if (!drag.moved) return;
+    if (!host.editable()) return host.cursor(timeAt(x));
+    const next = dragged(drag, x, event.shiftKey);
+    if (next) host.change(next, false);
+  }
+
+  function hover(x: number, event: PointerEvent) {
+    host.cursor(timeAt(x));
+    const hit = host.editable() ? hitWindow(host.windows(), host.x(), x, reach(event)) : null;
+    element.style.cursor = !host.editable()
+      ? 'default'
+      : !hit
+        ? 'crosshair'
+        : hit.part === 'body'
+          ? 'grab'
+          : 'ew-resize';
+  }
+
+  function dragged({ hit, before, startX }: Drag, x: number, fine: boolean): Outage[] | null {
+    const [scale, limits, snapS] = [host.x(), host.limits(), fine ? 0.1 : 1];
+    if (!hit) {
+      const drawn = drawWindow(before, limits, timeAt(startX), timeAt(x), snapS);
+      return drawn && sortWindows([...before, drawn]);
+    }
+    const window = before[hit.index];
+    if (!window) return null;
+    const byS = scale.invert(x) - scale.invert(startX);
+    if (hit.part === 'body') return moveWindow(before, limits, hit.index, window.startS + byS, snapS);
+    const edge = hit.part === 'start' ? window.startS : window.endS;
+    return resizeWindow(before, limits, hit.index, hit.part, edge + byS, snapS);
+  }
+
+  function onUp(event: PointerEvent) {
+    if (!drag || event.pointerId !== drag.pointer) return;
+    const ended = drag;
+    drag = null;
+    const x = local(event);
+    if (event.type === 'pointercancel') {
+      // The page scrolls instead: nothing was meant.
+      if (ended.moved && host.editable()) host.change([...ended.before], true);
+      return;
+    }
+    if (!ended.moved) {
+      if (!ended.hit) {
+        host.select(null);
+        host.cursor(timeAt(x));
+      }
+      return;
+    }
+    if (!host.editable()) return;
+    const next = dragged(ended, x, event.shiftKey);
+    if (!next) return;
+    host.change(next, true);
+    if (!ended.hit) {
+      const from = Math.min(timeAt(ended.startX), timeAt(x));
+      const at = next.findIndex((window) => !ended.before.includes(window) && window.endS > from);
+      host.select(at >= 0 ? at : null);
+    }
+  }
+
+  const onLeave = (event: PointerEvent) => {
+    if (event.pointerType === 'mouse' && !drag) host.cursor(null);
+  };
+
+  element.style.touchAction = 'pan-y';
+  element.addEventListener('pointerdown', onDown);
+  element.addEventListener('pointermove', onMove);
+  element.addEventListener('pointerup', onUp);
+  element.addEventListener('pointercancel', onUp);
+  element.addEventListener('pointerleave', onLeave);
+  return () => {
+    element.removeEventListener('pointerdown', onDown);
+    element.removeEventListener('pointermove', onMove);
+    element.removeEventListener('pointerup', onUp);
+    element.removeEventListener('pointercancel', onUp);
+    element.removeEventListener('pointerleave', onLeave);
+  };
+}
