@@ -2,7 +2,7 @@ import { QueryClientProvider } from '@tanstack/react-query';
 import { Slot } from 'expo-router';
 import { StatusBar } from 'expo-status-bar';
 import { useState } from 'react';
-import { AppFonts } from '@/components/layout/AppFonts';
+import { AppReady } from '@/components/layout/AppReady';
 import { ThemeProvider } from '@/components/ui/ThemeProvider';
 import { ToastProvider } from '@/components/ui/ToastProvider';
 import { makeQueryClient } from '@/hooks/query-client';
@@ -16,9 +16,9 @@ export default function RootLayout() {
       <QueryClientProvider client={client}>
         <ToastProvider>
           <StatusBar style="auto" />
-          <AppFonts>
+          <AppReady>
             <Slot />
-          </AppFonts>
+          </AppReady>
         </ToastProvider>
       </QueryClientProvider>
     </ThemeProvider>

@@ -52,18 +52,23 @@ export function useSignOut() {
   const client = useQueryClient();
   return useMutation({
     mutationFn: () => api<void>('/sessions/current', { method: 'DELETE', anonymous: true }),
-    onSettled: () => endSession(client),
+    onSettled: () => endSession(client, true),
   });
 }
 
-/** Forgets everything of the person who was signed in. */
-export function endSession(client: ReturnType<typeof useQueryClient>) {
+/** Forgets everything of the person who was signed in; `byChoice`: the next one begins at the first page. */
+export function endSession(client: ReturnType<typeof useQueryClient>, byChoice = false) {
   setApiWorkspace(null);
-  client.removeQueries({
-    predicate: (query) => query.queryKey[0] !== 'me' && query.queryKey[0] !== 'installation',
-  });
+  leftByChoice = byChoice;
+  client.removeQueries({ predicate: (query) => !KEPT.includes(query.queryKey[0]) });
   client.setQueryData(sessionKeys.me, null);
 }
+
+/** Whether the last session was ended by its person, not by running out. */
+export const wasLeftByChoice = (): boolean => leftByChoice;
+
+let leftByChoice = false;
+const KEPT: readonly unknown[] = [sessionKeys.me[0], sessionKeys.installation[0]];
 
 async function fetchMe(): Promise<Me | null> {
   try {

@@ -1,12 +1,11 @@
 import { zodResolver } from '@hookform/resolvers/zod';
 import { Redirect } from 'expo-router';
 import { useForm } from 'react-hook-form';
-import { View } from 'react-native';
+import { Form } from '@/components/forms/Form';
 import { FormField } from '@/components/forms/FormField';
 import { FormProblem } from '@/components/forms/FormProblem';
 import { showProblem } from '@/components/forms/problem';
 import { Button } from '@/components/ui/Button';
-import { space } from '@/constants/theme';
 import { useFirstAdmin, useInstallation } from '@/hooks/accounts';
 import { useMe } from '@/hooks/session';
 import { firstAdminSchema, type FirstAdmin } from '@/shared/contracts/accounts';
@@ -35,7 +34,7 @@ export function FirstAdminScreen() {
       title="Set up Driftwright"
       lead="Nobody is here yet. You become the admin of the first workspace and invite the others."
     >
-      <View style={{ gap: space.l }}>
+      <Form label="Set up Driftwright">
         <FormProblem title="Not set up yet" message={formState.errors.root?.message} />
         <FormField control={control} name="name" label="Your name" autoComplete="name" required />
         <FormField
@@ -71,7 +70,7 @@ export function FirstAdminScreen() {
           busy={formState.isSubmitting}
           onPress={() => void submit()}
         />
-      </View>
+      </Form>
     </AuthPage>
   );
 }

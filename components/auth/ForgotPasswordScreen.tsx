@@ -1,13 +1,12 @@
 import { zodResolver } from '@hookform/resolvers/zod';
 import { useForm } from 'react-hook-form';
-import { View } from 'react-native';
+import { Form } from '@/components/forms/Form';
 import { FormField } from '@/components/forms/FormField';
 import { FormProblem } from '@/components/forms/FormProblem';
 import { showProblem } from '@/components/forms/problem';
 import { Button } from '@/components/ui/Button';
 import { Notice } from '@/components/ui/Notice';
 import { TextLink } from '@/components/ui/TextLink';
-import { space } from '@/constants/theme';
 import { useInstallation, useRequestReset } from '@/hooks/accounts';
 import { resetRequestSchema } from '@/shared/contracts/accounts';
 import { AuthPage } from './AuthPage';
@@ -37,7 +36,7 @@ export function ForgotPasswordScreen() {
           {`If the address belongs to an account, a link is on its way to it.${whereMailGoes}`}
         </Notice>
       ) : (
-        <View style={{ gap: space.l }}>
+        <Form label="Reset the password">
           <FormProblem title="Not sent" message={formState.errors.root?.message} />
           <FormField
             control={control}
@@ -56,7 +55,7 @@ export function ForgotPasswordScreen() {
             busy={formState.isSubmitting}
             onPress={() => void submit()}
           />
-        </View>
+        </Form>
       )}
       <TextLink href="/sign-in" label="Back to sign-in" />
     </AuthPage>

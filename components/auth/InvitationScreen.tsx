@@ -1,7 +1,7 @@
 import { zodResolver } from '@hookform/resolvers/zod';
 import { router, useLocalSearchParams } from 'expo-router';
 import { useForm } from 'react-hook-form';
-import { View } from 'react-native';
+import { Form } from '@/components/forms/Form';
 import { FormField } from '@/components/forms/FormField';
 import { FormProblem } from '@/components/forms/FormProblem';
 import { showProblem } from '@/components/forms/problem';
@@ -10,7 +10,6 @@ import { ErrorState } from '@/components/ui/ErrorState';
 import { Notice } from '@/components/ui/Notice';
 import { SkeletonList } from '@/components/ui/Skeleton';
 import { TextLink } from '@/components/ui/TextLink';
-import { space } from '@/constants/theme';
 import { useAcceptInvitation, useInvitationPreview } from '@/hooks/accounts';
 import {
   invitationAcceptSchema,
@@ -70,7 +69,7 @@ function AcceptForm({ token, preview }: { token: string; preview: InvitationPrev
     }
   });
   return (
-    <View style={{ gap: space.l }}>
+    <Form label="Join">
       <FormProblem title="Not joined yet" message={formState.errors.root?.message} />
       {preview.hasAccount ? null : (
         <FormField control={control} name="name" label="Your name" autoComplete="name" required />
@@ -86,6 +85,6 @@ function AcceptForm({ token, preview }: { token: string; preview: InvitationPrev
         onSubmitEditing={() => void submit()}
       />
       <Button label="Join" kind="primary" wide busy={formState.isSubmitting} onPress={() => void submit()} />
-    </View>
+    </Form>
   );
 }

@@ -1,14 +1,13 @@
 import { zodResolver } from '@hookform/resolvers/zod';
 import { useLocalSearchParams } from 'expo-router';
 import { useForm } from 'react-hook-form';
-import { View } from 'react-native';
+import { Form } from '@/components/forms/Form';
 import { FormField } from '@/components/forms/FormField';
 import { FormProblem } from '@/components/forms/FormProblem';
 import { showProblem } from '@/components/forms/problem';
 import { Button } from '@/components/ui/Button';
 import { Notice } from '@/components/ui/Notice';
 import { TextLink } from '@/components/ui/TextLink';
-import { space } from '@/constants/theme';
 import { useResetPassword } from '@/hooks/accounts';
 import { resetSchema, type PasswordReset } from '@/shared/contracts/accounts';
 import { AuthPage } from './AuthPage';
@@ -48,7 +47,7 @@ export function ResetPasswordScreen() {
     );
   return (
     <AuthPage title="Choose a new password">
-      <View style={{ gap: space.l }}>
+      <Form label="New password">
         <FormProblem title="Not changed" message={formState.errors.root?.message} />
         <FormField
           control={control}
@@ -67,7 +66,7 @@ export function ResetPasswordScreen() {
           busy={formState.isSubmitting}
           onPress={() => void submit()}
         />
-      </View>
+      </Form>
       <TextLink href="/forgot-password" label="Ask for a new link" />
     </AuthPage>
   );

@@ -1,11 +1,10 @@
 import { zodResolver } from '@hookform/resolvers/zod';
 import { useForm } from 'react-hook-form';
-import { View } from 'react-native';
+import { Form } from '@/components/forms/Form';
 import { FormField } from '@/components/forms/FormField';
 import { FormProblem } from '@/components/forms/FormProblem';
 import { showProblem } from '@/components/forms/problem';
 import { Button } from '@/components/ui/Button';
-import { space } from '@/constants/theme';
 import { signInSchema, type SignIn } from '@/shared/contracts/accounts';
 
 export interface SignInFormProps {
@@ -27,7 +26,7 @@ export function SignInForm({ onSubmit }: SignInFormProps) {
     }
   });
   return (
-    <View style={{ gap: space.l }}>
+    <Form label="Sign in">
       <FormProblem title="Not signed in" message={formState.errors.root?.message} />
       <FormField
         control={control}
@@ -55,6 +54,6 @@ export function SignInForm({ onSubmit }: SignInFormProps) {
         busy={formState.isSubmitting}
         onPress={() => void submit()}
       />
-    </View>
+    </Form>
   );
 }

@@ -3,11 +3,9 @@ import { Redirect, usePathname, useGlobalSearchParams } from 'expo-router';
 import { useEffect, useMemo, useState, type ReactNode } from 'react';
 import { View } from 'react-native';
 import { space } from '@/constants/theme';
-import { ErrorState } from '@/components/ui/ErrorState';
 import { Notice } from '@/components/ui/Notice';
-import { SkeletonList } from '@/components/ui/Skeleton';
 import { setApiWorkspace, setSignedOutHandler } from '@/hooks/api';
-import { endSession, SessionContext, useMe, type Session } from '@/hooks/session';
+import { endSession, SessionContext, useMe, wasLeftByChoice, type Session } from '@/hooks/session';
 import { signInPath } from './next-path';
 import { hrefOf } from './paths';
 
@@ -40,23 +38,7 @@ export function SessionGate({ children }: { children: ReactNode }) {
     };
   }, [person, workspace, client]);
 
-  if (me.isPending)
-    return (
-      <Waiting>
-        <SkeletonList label="your workspace" rows={3} />
-      </Waiting>
-    );
-  if (me.isError)
-    return (
-      <Waiting>
-        <ErrorState
-          title="Driftwright could not be reached"
-          error={me.error}
-          onRetry={() => void me.refetch()}
-        />
-      </Waiting>
-    );
-  if (!person) return <Redirect href={hrefOf(signInPath(here))} />;
+  if (!person) return <Redirect href={hrefOf(signInPath(wasLeftByChoice() ? '/' : here))} />;
   if (!session)
     return (
       <Waiting>

@@ -4,13 +4,13 @@ import { Barlow_600SemiBold } from '@expo-google-fonts/barlow/600SemiBold';
 import { BarlowSemiCondensed_500Medium } from '@expo-google-fonts/barlow-semi-condensed/500Medium';
 import { BarlowSemiCondensed_600SemiBold } from '@expo-google-fonts/barlow-semi-condensed/600SemiBold';
 import { useFonts } from 'expo-font';
-import { useEffect, useState, type ReactNode } from 'react';
+import { useEffect, useState } from 'react';
 
 /** A slow line shows the page in fallback faces after this long, ms. */
 const PATIENCE_MS = 1500;
 
-/** Holds the first drawing until the bundled fonts are there, but never for long. */
-export function AppFonts({ children }: { children: ReactNode }) {
+/** True once the bundled fonts are there, or have been waited for long enough. */
+export function useAppFonts(): boolean {
   const [loaded, error] = useFonts({
     AzeretMono_400Regular,
     Barlow_400Regular,
@@ -23,5 +23,5 @@ export function AppFonts({ children }: { children: ReactNode }) {
     const timer = setTimeout(() => setWaited(true), PATIENCE_MS);
     return () => clearTimeout(timer);
   }, []);
-  return loaded || error || waited ? children : null;
+  return loaded || error !== null || waited;
 }
