@@ -22,6 +22,7 @@ import { ActiveRuns } from './services/active-runs';
 import { decode } from './services/decoding';
 import { keepRecovering, recover } from './services/recovery';
 import { sweepUploads } from './services/upload-folder';
+import { answerStarting } from './starting';
 
 /** How long jobs in hand and open connections may take to end, ms. */
 const GRACE_MS = 4_000;
@@ -57,7 +58,7 @@ async function open(
   }
   const log = pino({ level: config.logLevel, base: null, timestamp: pino.stdTimeFunctions.isoTime });
   const clock = () => new Date();
-  const server = http.createServer();
+  const server = http.createServer(answerStarting);
   await listen(server, config); // first, so that a busy port is told before anything else is touched
   closers.push(async () => void server.close());
 
@@ -105,6 +106,7 @@ async function open(
   await queue.consume({ decode: (payload, lastAttempt) => decode(ctx, payload, lastAttempt) }, consumers);
   if (config.demo) await seedDemo(ctx);
   void keepRecovering(ctx);
+  server.off('request', answerStarting);
   live.attach(server, ctx, sessions);
   server.on('request', createApp(ctx, sessions));
   const { port } = server.address() as AddressInfo;
