@@ -2,13 +2,16 @@
 import type { Parameters } from '@/shared/contracts/parameters';
 import type { RunSummary } from '@/shared/contracts/runs';
 import { degToRad } from '@/shared/units';
+import { initialBiasVariance } from '../filter/bias-models';
+import { biasParameters } from '../filter/bias-parameters';
 import type { Fixes } from '../filter/fixes';
 import { EARTH_RATE } from '../geodesy';
 import { normalGravity } from '../gravity';
 import { medianSpacing } from '../strapdown/imu-intervals';
 import { EngineError, type ImuColumns } from '../types';
-import { headingFromCourse, type CourseHeading } from './course-heading';
+import { searchHeading, type FoundHeading, type HeadingQuestion } from './heading-search';
 import { levelMoving } from './moving-level';
+import { restBiasVariance } from './rest-bias';
 import { findStaticStretch, type StaticStretch } from './static-stretch';
 
 type Three = [number, number, number];
@@ -175,9 +178,7 @@ function levelledMoving(s: Situation): FoundAttitude {
 /** Moves the start to where the first usable course is: before it there is neither level nor heading. */
 function sampleOfFirstCourse(s: Situation): { sample: number; fix: number } {
   const { imu, fixes, parameters } = s;
-  const course = headingFromCourse(
-    imu, fixes, s.sample, 0, 0, s.gyroOffset, s.leverArm, parameters.initial.courseSpeedMPerS,
-  ); // prettier-ignore
+  const course = searchHeading(question(s, 0, 0));
   if (course === null) throw noHeading(parameters);
   let fix = -1;
   for (let j = 0; j < fixes.count && fixes.timeS[j]! <= course.firstS + 1e-7; j += 1)
@@ -187,7 +188,7 @@ function sampleOfFirstCourse(s: Situation): { sample: number; fix: number } {
   return { sample, fix: s.fix < 0 ? -1 : Math.max(fix, s.fix) };
 }
 
-interface FoundHeading {
+interface HeadingPart {
   yaw: number;
   yawVariance: number;
   headingArm: Three | null;
@@ -195,9 +196,8 @@ interface FoundHeading {
   headingSentence: string;
 }
 
-function findHeading(s: Situation, roll: number, pitch: number): FoundHeading {
-  const { parameters, imu, fixes, gyroOffset, leverArm } = s;
-  const { headingDeg, attitudeSigmaDeg, courseSpeedMPerS } = parameters.initial;
+function findHeading(s: Situation, roll: number, pitch: number): HeadingPart {
+  const { headingDeg, attitudeSigmaDeg } = s.parameters.initial;
   if (headingDeg !== undefined) {
     const sigma = attitudeSigmaDeg ? degToRad(attitudeSigmaDeg[2]) : GIVEN_HEADING_SIGMA;
     return {
@@ -208,26 +208,45 @@ function findHeading(s: Situation, roll: number, pitch: number): FoundHeading {
       headingSentence: 'heading as given',
     };
   }
-  const course = headingFromCourse(
-    imu, fixes, s.sample, roll, pitch, gyroOffset, leverArm, courseSpeedMPerS,
-  ); // prettier-ignore
-  if (course === null) throw noHeading(parameters);
-  return courseResult(s, course);
+  const found = searchHeading(question(s, roll, pitch));
+  if (found === null) throw noHeading(s.parameters);
+  return headingPart(s, found);
 }
 
-function courseResult(s: Situation, course: CourseHeading): FoundHeading {
+function question(s: Situation, roll: number, pitch: number): HeadingQuestion {
+  const { imu, fixes, parameters, leverArm, rest } = s;
+  const bias = biasParameters(parameters);
+  const prior = initialBiasVariance(bias.gyro);
+  return {
+    imu,
+    fixes,
+    parameters,
+    leverArm,
+    start: s.sample,
+    roll,
+    pitch,
+    rest,
+    rateOffset: s.gyroOffset,
+    accelOffset: parameters.initial.accelBiasMPerS2 ?? [0, 0, 0],
+    gyroBiasSigma: Math.sqrt(rest === null ? prior : restBiasVariance(rest, parameters)),
+    accelBiasSigma: Math.sqrt(initialBiasVariance(bias.accel)),
+  };
+}
+
+function headingPart(s: Situation, found: FoundHeading): HeadingPart {
   // Angle random walk of the carrying counts once more when the filter runs over the same stretch.
-  const carried = s.parameters.gyro.whiteNoiseRadPerSqrtS ** 2 * course.carriedS;
+  const carried = s.parameters.gyro.whiteNoiseRadPerSqrtS ** 2 * found.carriedS;
   // An offset not read at rest holds no Earth rate: its vertical part turns the heading carried.
   const restOffset = s.rest !== null && s.parameters.initial.gyroBiasRadPerS === undefined;
-  const earth = !restOffset ? -EARTH_RATE * Math.sin(latitude(s)) * course.carriedS : 0;
-  const back = course.carriedS > 1 ? ', carried back to the start by the gyros' : '';
+  const earth = restOffset ? 0 : -EARTH_RATE * Math.sin(latitude(s)) * found.carriedS;
+  const back = found.carriedS > 1 ? ', carried back to the start by the gyros' : '';
+  const how = found.way === 'course' ? 'course' : 'velocity matched with that dead-reckoned from rest,';
   return {
-    yaw: course.yaw + earth,
-    yawVariance: course.sigma ** 2 + carried,
-    headingArm: course.biasArm,
+    yaw: found.yaw + earth,
+    yawVariance: found.sigma ** 2 + carried,
+    headingArm: found.biasArm,
     heading: 'course',
-    headingSentence: `heading from GNSS course at ${course.timeS.toFixed(1)} s (${course.speed.toFixed(1)} m/s)${back}`,
+    headingSentence: `heading from GNSS ${how} at ${found.timeS.toFixed(1)} s (${found.speed.toFixed(1)} m/s)${back}`,
   };
 }
 

@@ -12,16 +12,22 @@ export function restGyroBias(
   dcm: Float64Array,
   latRad: number,
 ): { bias: [number, number, number]; variance: [number, number, number] } {
+  const prior = initialBiasVariance(biasParameters(parameters).gyro);
+  const variance = restBiasVariance(rest, parameters);
+  const weight = 1 - variance / prior;
+  const earthN = EARTH_RATE * Math.cos(latRad);
+  const earthD = -EARTH_RATE * Math.sin(latRad);
+  const bias = [0, 1, 2].map((i) => weight * (rest.gyro[i]! - dcm[i]! * earthN - dcm[6 + i]! * earthD));
+  return { bias: bias as [number, number, number], variance: [variance, variance, variance] };
+}
+
+/** Variance of the bias at the stretch's start once its mean is known, rad²/s². */
+export function restBiasVariance(rest: StaticStretch, parameters: Parameters): number {
   const model = biasParameters(parameters).gyro;
   const prior = initialBiasVariance(model);
   const duration = rest.meanDurationS;
   // White noise of the mean, and how far the bias wandered between the start and the mean (a third of its walk).
   const noise =
     parameters.gyro.whiteNoiseRadPerSqrtS ** 2 / duration + (biasNoiseDensity(model) * duration) / 3;
-  const weight = prior / (prior + noise);
-  const earthN = EARTH_RATE * Math.cos(latRad);
-  const earthD = -EARTH_RATE * Math.sin(latRad);
-  const bias = [0, 1, 2].map((i) => weight * (rest.gyro[i]! - dcm[i]! * earthN - dcm[6 + i]! * earthD));
-  const variance = weight * noise;
-  return { bias: bias as [number, number, number], variance: [variance, variance, variance] };
+  return (prior * noise) / (prior + noise);
 }

@@ -7,7 +7,9 @@ import type { ImuColumns } from '../types';
 /** Judged in windows of this length, s. */
 const WINDOW_S = 0.5;
 /** A stretch shorter than this levels nothing, s. */
-export const MIN_STATIC_S = 1;
+export const MIN_STATIC_S = 2;
+/** A vehicle that moves off gently is noticed late, s. */
+const END_MARGIN_S = 2;
 /** Spread within a window: a running engine is still static, a hand is not. */
 const GYRO_SPREAD = 0.03; // rad/s
 const ACCEL_SPREAD = 0.6; // m/s²
@@ -60,7 +62,7 @@ export function findStaticStretch(imu: ImuColumns, fixes: Fixes, from: number): 
   return finish(imu, axes, scale, from, good);
 }
 
-/** Drops the last window, in which the vehicle may have begun to move, and takes the means. */
+/** Leaves out the end, in which the vehicle may have begun to move, and takes the means. */
 function finish(
   imu: ImuColumns,
   axes: readonly Float64Array[],
@@ -69,8 +71,9 @@ function finish(
   good: number,
 ): StaticStretch | null {
   const time = imu.timeS;
+  const margin = Math.min(END_MARGIN_S, (time[good]! - time[from]!) / 3);
   let to = good;
-  if (good < time.length - 1) while (to > from && time[good]! - time[to]! < WINDOW_S) to -= 1;
+  if (good < time.length - 1) while (to > from && time[good]! - time[to]! < margin) to -= 1;
   if (time[to]! - time[from]! < MIN_STATIC_S) return null;
   let last = to;
   while (time[last]! - time[from]! > MEAN_LIMIT_S) last -= 1;

@@ -69,11 +69,11 @@ function fromPositions(fixes: Fixes, j: number): TrackVelocity | null {
   };
 }
 
-function northBetween(fixes: Fixes, i: number, j: number): number {
+export function northBetween(fixes: Fixes, i: number, j: number): number {
   return (fixes.latRad[j]! - fixes.latRad[i]!) * meridianRadius(fixes.latRad[i]!);
 }
 
-function eastBetween(fixes: Fixes, i: number, j: number): number {
+export function eastBetween(fixes: Fixes, i: number, j: number): number {
   const lat = fixes.latRad[i]!;
   return wrapAngle(fixes.lonRad[j]! - fixes.lonRad[i]!) * transverseRadius(lat) * Math.cos(lat);
 }
