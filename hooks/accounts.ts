@@ -27,8 +27,8 @@ export function useFirstAdmin() {
     mutationFn: (input: FirstAdmin) =>
       api<Me>('/installation/first-admin', { method: 'POST', body: input, anonymous: true }),
     onSuccess: async () => {
-      await client.invalidateQueries({ queryKey: sessionKeys.installation });
       await client.invalidateQueries({ queryKey: sessionKeys.me });
+      await client.invalidateQueries({ queryKey: sessionKeys.installation });
     },
   });
 }

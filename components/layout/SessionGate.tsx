@@ -1,5 +1,5 @@
 import { useQueryClient } from '@tanstack/react-query';
-import { Redirect, usePathname, useGlobalSearchParams } from 'expo-router';
+import { Redirect } from 'expo-router';
 import { useEffect, useMemo, useState, type ReactNode } from 'react';
 import { View } from 'react-native';
 import { space } from '@/constants/theme';
@@ -15,7 +15,6 @@ const STORAGE_KEY = 'driftwright.workspace';
 export function SessionGate({ children }: { children: ReactNode }) {
   const me = useMe();
   const client = useQueryClient();
-  const here = useHere();
   const [chosen, setChosen] = useState<string | null>(storedWorkspace);
   useEffect(() => setSignedOutHandler(() => endSession(client)), [client]);
 
@@ -38,7 +37,7 @@ export function SessionGate({ children }: { children: ReactNode }) {
     };
   }, [person, workspace, client]);
 
-  if (!person) return <Redirect href={hrefOf(signInPath(wasLeftByChoice() ? '/' : here))} />;
+  if (!person) return <ToSignIn />;
   if (!session)
     return (
       <Waiting>
@@ -58,12 +57,10 @@ function Waiting({ children }: { children: ReactNode }) {
   );
 }
 
-/** The path with its query, to come back to after signing in. */
-function useHere(): string {
-  const path = usePathname();
-  useGlobalSearchParams(); // the query may change while the path stays
-  const query = typeof location === 'undefined' || location.pathname !== path ? '' : location.search;
-  return path + query;
+/** Read from the address itself and once: the router's own path changes as soon as the page is not drawn. */
+function ToSignIn() {
+  const [from] = useState(() => (wasLeftByChoice() ? '/' : location.pathname + location.search));
+  return <Redirect href={hrefOf(signInPath(from))} />;
 }
 
 function storedWorkspace(): string | null {
