@@ -19,6 +19,7 @@ export class User extends Model<InferAttributes<User>, InferCreationAttributes<U
   declare name: string;
   declare passwordHash: string;
   declare createdAt: CreationOptional<Date>;
+  declare memberships?: NonAttribute<Membership[]>;
 }
 
 export class Workspace extends Model<InferAttributes<Workspace>, InferCreationAttributes<Workspace>> {
@@ -105,6 +106,7 @@ export function bindAccounts(sequelize: Sequelize) {
       createdAt: DataTypes.DATE,
     }),
   };
+  models.User.hasMany(models.Membership, { as: 'memberships', foreignKey: 'userId' });
   models.Membership.belongsTo(models.User, { as: 'user', foreignKey: 'userId' });
   models.Membership.belongsTo(models.Workspace, { as: 'workspace', foreignKey: 'workspaceId' });
   models.Invitation.belongsTo(models.User, { as: 'invitedBy', foreignKey: 'invitedById' });

@@ -18,8 +18,12 @@ const RETRIES = 4;
 const POLL_S = 1;
 
 export interface Queue {
-  /** Within `transaction` the job exists exactly when the rows written beside it do. */
-  send<N extends JobName>(name: N, payload: JobPayload<N>, transaction?: Transaction): Promise<void>;
+  /** Written within `transaction`: the job exists exactly when the rows written beside it do. */
+  send<N extends JobName>(
+    name: N,
+    payload: JobPayload<N>,
+    options: { transaction: Transaction; priority?: number },
+  ): Promise<void>;
   /** Starts `concurrency` consumers of each job. */
   consume(handlers: JobHandlers, concurrency: number): Promise<void>;
   isUp(): Promise<boolean>;
@@ -39,10 +43,9 @@ export async function openQueue(url: string, sequelize: Sequelize, log: Logger):
   const wake = (name: string) => consumers.get(name)?.forEach((id) => boss.notifyWorker(id));
 
   return {
-    async send(name, payload, transaction) {
-      await boss.send(name, payload, transaction ? { db: within(sequelize, transaction) } : {});
-      if (transaction) transaction.afterCommit(() => wake(name));
-      else wake(name);
+    async send(name, payload, { transaction, priority = 0 }) {
+      await boss.send(name, payload, { db: within(sequelize, transaction), priority });
+      transaction.afterCommit(() => wake(name));
     },
     async consume(handlers, concurrency) {
       for (const name of Object.keys(handlers) as JobName[]) {

@@ -13,6 +13,7 @@ import { frameForWire } from './wire';
 export type NoEvents = Record<string, never>;
 export interface SocketData {
   userId: string;
+  workspaceIds: string[];
 }
 export type LiveSocket = Socket<ClientToServerEvents, ServerToClientEvents, NoEvents, SocketData>;
 
@@ -27,20 +28,13 @@ export async function greet(ctx: Context, sessions: Sessions, socket: LiveSocket
   const person = userId ? await loadPerson(ctx, userId, socket.handshake.address) : null;
   if (!session || !person) throw new Error('Not signed in: sign in and connect again.');
   const sid = session.id;
-  socket.data.userId = person.userId;
-  const own = [rooms.session(sid), rooms.user(person.userId)];
-  await socket.join([...own, ...person.memberships.map((member) => rooms.workspace(member.workspaceId))]);
-
-  const check = setInterval(() => {
-    sessions.ownerOf(sid).then(
-      (owner) => owner === person.userId || socket.disconnect(true),
-      () => undefined, // the database is away: ask again next time
-    );
-  }, CHECK_SESSION_MS);
-  socket.on('disconnect', () => clearInterval(check));
+  const workspaceIds = person.memberships.map((member) => member.workspaceId);
+  socket.data = { userId: person.userId, workspaceIds };
+  await socket.join([rooms.session(sid), rooms.user(person.userId), ...workspaceIds.map(rooms.workspace)]);
+  keepChecking(ctx, sessions, socket, sid);
   socket.on('run:follow', (message, answer) => {
     const reply = typeof answer === 'function' ? answer : () => undefined;
-    follow(ctx, sessions, socket, sid, message, reply).catch((error: unknown) => {
+    follow(ctx, socket, message, reply).catch((error: unknown) => {
       ctx.log.warn({ err: error }, 'run:follow');
       reply({ ok: false, reason: 'The run could not be followed just now. Try again.' });
     });
@@ -51,30 +45,41 @@ export async function greet(ctx: Context, sessions: Sessions, socket: LiveSocket
   });
 }
 
+/**
+ * Puts the client out when its session or a membership has ended. What ends them on this server does so at once
+ * (Live.endSession and its kin); this finds what another server did, and sessions that have run out.
+ */
+function keepChecking(ctx: Context, sessions: Sessions, socket: LiveSocket, sid: string): void {
+  const { userId, workspaceIds } = socket.data;
+  const stands = async () => {
+    if ((await sessions.ownerOf(sid)) !== userId) return false;
+    const memberships = await ctx.db.Membership.findAll({ where: { userId }, attributes: ['workspaceId'] });
+    return workspaceIds.every((id) => memberships.some((member) => member.workspaceId === id));
+  };
+  const check = setInterval(() => {
+    stands().then(
+      (still) => still || socket.disconnect(true),
+      () => undefined, // the database is away: ask again next time
+    );
+  }, CHECK_SESSION_MS);
+  socket.on('disconnect', () => clearInterval(check));
+}
+
 /** Joins the room of a run of one of the person's workspaces, and sends what of it has passed already. */
 async function follow(
   ctx: Context,
-  sessions: Sessions,
   socket: LiveSocket,
-  sid: string,
   message: { runId: string },
   answer: (result: FollowAnswer) => void,
 ): Promise<void> {
   const runId = idSchema.safeParse(message?.runId);
   if (!runId.success) return answer({ ok: false, reason: 'Say which run: {runId}.' });
-  const { userId } = socket.data;
-  const [owner, run] = await Promise.all([
-    sessions.ownerOf(sid),
-    ctx.db.Run.findByPk(runId.data, { attributes: ['id', 'workspaceId'] }),
-  ]);
-  if (owner !== userId) {
-    answer({ ok: false, reason: 'Your session has ended. Sign in again.' });
-    socket.disconnect(true);
-    return;
+  const run =
+    ctx.activeRuns.get(runId.data) ??
+    (await ctx.db.Run.findByPk(runId.data, { attributes: ['workspaceId'] }));
+  if (!run || !socket.data.workspaceIds.includes(run.workspaceId)) {
+    return answer({ ok: false, reason: 'There is no such run in your workspaces.' });
   }
-  const workspaceId = run?.workspaceId;
-  const member = workspaceId && (await ctx.db.Membership.findOne({ where: { workspaceId, userId } }));
-  if (!member) return answer({ ok: false, reason: 'There is no such run in your workspaces.' });
   if (socket.rooms.size > ROOMS_AT_ONCE) {
     return answer({ ok: false, reason: 'Too many runs are followed at once. Unfollow some first.' });
   }

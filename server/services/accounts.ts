@@ -16,14 +16,13 @@ export async function loadPerson(
   userId: string,
   address: string | null,
 ): Promise<Person | null> {
-  const user = await ctx.db.User.findByPk(userId);
-  if (!user) return null;
-  const memberships = await ctx.db.Membership.findAll({
-    where: { userId },
-    include: ['workspace'],
-    order: [['createdAt', 'ASC']],
+  const user = await ctx.db.User.findByPk(userId, {
+    include: [{ association: 'memberships', include: ['workspace'] }],
+    order: [['memberships', 'createdAt', 'ASC']],
   });
-  return { userId, name: user.name, email: user.email, address, memberships: memberships.map(inShort) };
+  if (!user) return null;
+  const memberships = (user.memberships ?? []).map(inShort);
+  return { userId, name: user.name, email: user.email, address, memberships };
 }
 
 const inShort = ({ workspaceId, workspace, role }: Membership) => ({

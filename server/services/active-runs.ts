@@ -1,5 +1,6 @@
 /** Runs that this process computes just now: what a follower needs who comes a moment late. */
 import type { RunState } from '@/shared/contracts/runs';
+import type { Run } from '../models/run';
 
 /** Frames kept for late followers of one run; older ones are in its series afterwards. */
 const KEPT_BYTES = 8_000_000;
@@ -8,6 +9,7 @@ const LINGER_MS = 10_000;
 
 export interface ActiveRun {
   runId: string;
+  workspaceId: string;
   recordingId: string;
   state: RunState;
   progress: number;
@@ -23,9 +25,10 @@ export class ActiveRuns {
   private readonly timers = new Set<NodeJS.Timeout>();
 
   /** Who adds it sets `cancel` and `ended` at once. */
-  add(runId: string, recordingId: string): ActiveRun {
+  add({ id: runId, workspaceId, recordingId }: Run): ActiveRun {
     const active: ActiveRun = {
       runId,
+      workspaceId,
       recordingId,
       state: 'queued',
       progress: 0,

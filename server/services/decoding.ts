@@ -14,9 +14,13 @@ const PROGRESS_EVERY_MS = 500;
 /** Share of the work that simulating a scenario takes before its files are decoded. */
 const SCENARIO_SHARE = 0.5;
 
-/** Queues the decoding of a recording that has just been confirmed or mapped anew. */
-export const sendDecode = (ctx: Context, recording: Recording, transaction: Transaction): Promise<void> =>
-  ctx.queue.send('decode', { recordingId: recording.id, generation: recording.generation }, transaction);
+/** Queues the decoding of a recording that has just been confirmed or mapped anew. Higher priorities go first. */
+export const sendDecode = (
+  ctx: Context,
+  { id: recordingId, generation }: Recording,
+  transaction: Transaction,
+  priority = 0,
+): Promise<void> => ctx.queue.send('decode', { recordingId, generation }, { transaction, priority });
 
 /** Puts a recording back to the start with `givenMap`, and queues it; what is under way for it is void. */
 export async function redecode(

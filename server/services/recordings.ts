@@ -1,6 +1,6 @@
 /** Recordings: arrival, list, change, deletion. Nothing of an upload is visible before all of it is safe. */
 import { randomUUID } from 'node:crypto';
-import { Op, type Transaction, type WhereOptions } from 'sequelize';
+import { type Includeable, Op, type Transaction, type WhereOptions } from 'sequelize';
 import type {
   ChannelMap,
   FileRole,
@@ -30,7 +30,14 @@ export interface ReceivedFile {
   sha256: string;
 }
 
-const WITH_NAMES = ['vehicle', 'createdBy', 'files'];
+/** Files by a query of their own: joined, they would repeat the bulky columns. */
+const WITH_NAMES: Includeable[] = [
+  { association: 'vehicle' },
+  { association: 'createdBy' },
+  { association: 'files', separate: true },
+];
+/** Not needed to compute with a recording. */
+const BULKY = ['strip', 'health', 'previews', 'problems', 'channelMap'];
 const VISIBLE = { confirmedAt: { [Op.ne]: null }, deletedAt: null };
 
 export function listRecordings(
@@ -58,9 +65,14 @@ export async function getRecording(ctx: Context, actor: Actor, id: string): Prom
   return recording;
 }
 
-/** Throws 409, with what to do, unless it is decoded. */
+/** Without its bulky columns. Throws 409, with what to do, unless it is decoded. */
 export async function getReadyRecording(ctx: Context, actor: Actor, id: string): Promise<Recording> {
-  const recording = await getRecording(ctx, actor, id);
+  const recording = await ctx.db.Recording.findOne({
+    where: { id, workspaceId: actor.workspaceId, ...VISIBLE },
+    attributes: { exclude: BULKY },
+    include: ['vehicle', 'files'],
+  });
+  if (!recording) throw noSuch('recording');
   const status: RecordingStatus = recording.status;
   if (status === 'ready') return recording;
   throw conflict(`“${recording.name}” ${NOT_READY[status]}`);

@@ -29,7 +29,7 @@ type Outcome =
 /** Starts computing; answers at once. */
 export function launch(ctx: Context, run: Run, recording: Recording): void {
   const { benchId, workspaceId, recordingId } = run;
-  const active = ctx.activeRuns.add(run.id, recordingId);
+  const active = ctx.activeRuns.add(run);
   const job = ctx.pool.submit(
     { kind: 'run', ...specOf(run), framePoints: FRAME_POINTS },
     {
