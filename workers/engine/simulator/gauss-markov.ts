@@ -1,4 +1,4 @@
-/** First-order Gauss–Markov process, discretised exactly. */
+/** Slowly changing errors: first-order Gauss–Markov and random walk, discretised exactly. */
 import type { RandomSource } from '../random';
 
 /**
@@ -22,5 +22,23 @@ export class GaussMarkov {
     const x = dt / this.tauS;
     const drive = this.sigma * Math.sqrt(-Math.expm1(-2 * x));
     return (this.value = Math.exp(-x) * this.value + drive * this.random.normal());
+  }
+}
+
+/** Random walk from N(0, σ²) with the density that a Gauss–Markov process of σ and τ has at short times, 2σ²/τ. */
+export class MatchedRandomWalk {
+  value: number;
+
+  constructor(
+    private readonly sigma: number,
+    private readonly tauS: number,
+    private readonly random: RandomSource,
+  ) {
+    this.value = sigma * random.normal();
+  }
+
+  /** The value after `dt` seconds. */
+  step(dt: number): number {
+    return (this.value += this.sigma * Math.sqrt((2 * dt) / this.tauS) * this.random.normal());
   }
 }

@@ -4,6 +4,8 @@ import { RAD_PER_DEG, STANDARD_GRAVITY_M_S2 } from '@/shared/units';
 
 /** Errors of one IMU: what a scenario names, and the finer ones. */
 export interface ImuModel extends ImuErrors {
+  /** How the bias wanders in a run: the usual Gauss–Markov process, or the random walk that it resembles at short times. */
+  wander: 'gauss-markov' | 'random-walk';
   /** 1σ of each axis' scale factor error, 1. */
   gyroScaleSigma: number;
   accelScaleSigma: number;
@@ -21,6 +23,7 @@ const MILLI_G = STANDARD_GRAVITY_M_S2 * 1e-3;
 const MICRO_G_PER_ROOT_HZ = STANDARD_GRAVITY_M_S2 * 1e-6;
 
 const exact = {
+  wander: 'gauss-markov' as const,
   gyroScaleSigma: 0,
   accelScaleSigma: 0,
   gyroStepRadPerS: 0,

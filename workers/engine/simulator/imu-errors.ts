@@ -1,7 +1,7 @@
 /** What real inertial sensors make of a perfect recording. */
 import type { RandomSource } from '../random';
 import type { ImuColumns } from '../types';
-import { GaussMarkov } from './gauss-markov';
+import { GaussMarkov, MatchedRandomWalk } from './gauss-markov';
 import type { ImuModel } from './grades';
 
 /** A recording with sensor errors, and the biases that were added (turn-on + in-run), at each sample; rad/s and m/s². */
@@ -16,13 +16,14 @@ interface AxisErrors {
   turnOnSigma: number;
   wanderSigma: number;
   wanderTauS: number;
+  wander: ImuModel['wander'];
   scaleSigma: number;
   step: number;
   range: number;
 }
 
 /**
- * Adds to each axis: turn-on constant, in-run Gauss–Markov wander, scale factor error, white noise (density N: σ = N/√Δt
+ * Adds to each axis: turn-on constant, in-run wander, scale factor error, white noise (density N: σ = N/√Δt
  * of a rate sample, N√Δt of an increment), then the output's range and step. The input is left as it is.
  */
 export function senseImu(perfect: ImuColumns, model: ImuModel, random: RandomSource): SensedImu {
@@ -31,6 +32,7 @@ export function senseImu(perfect: ImuColumns, model: ImuModel, random: RandomSou
     turnOnSigma: model.gyroTurnOnBiasSigmaRadPerS,
     wanderSigma: model.gyroBiasInstabilityRadPerS,
     wanderTauS: model.gyroBiasCorrelationTimeS,
+    wander: model.wander,
     scaleSigma: model.gyroScaleSigma,
     step: model.gyroStepRadPerS,
     range: model.gyroRangeRadPerS,
@@ -40,6 +42,7 @@ export function senseImu(perfect: ImuColumns, model: ImuModel, random: RandomSou
     turnOnSigma: model.accelTurnOnBiasSigmaMPerS2,
     wanderSigma: model.accelBiasInstabilityMPerS2,
     wanderTauS: model.accelBiasCorrelationTimeS,
+    wander: model.wander,
     scaleSigma: model.accelScaleSigma,
     step: model.accelStepMPerS2,
     range: model.accelRangeMPerS2,
@@ -73,7 +76,8 @@ function senseAxis(perfect: ImuColumns, truth: Float64Array, errors: AxisErrors,
   const bias = new Float64Array(n);
   const turnOn = errors.turnOnSigma * random.normal();
   const scale = 1 + errors.scaleSigma * random.normal();
-  const wander = new GaussMarkov(errors.wanderSigma, errors.wanderTauS, random.split('wander'));
+  const Wander = errors.wander === 'random-walk' ? MatchedRandomWalk : GaussMarkov;
+  const wander = new Wander(errors.wanderSigma, errors.wanderTauS, random.split('wander'));
   for (let k = 0; k < n; k += 1) {
     const dt = k === 0 ? timeS[Math.min(1, n - 1)]! - timeS[0]! || 1 : timeS[k]! - timeS[k - 1]!;
     if (k > 0) wander.step(dt);

@@ -1,6 +1,6 @@
 /** The generated sensor errors have the statistics that they claim. */
 import { createRandom } from '@/workers/engine/random';
-import { GaussMarkov } from '@/workers/engine/simulator/gauss-markov';
+import { GaussMarkov, MatchedRandomWalk } from '@/workers/engine/simulator/gauss-markov';
 import { IMU_GRADES, type ImuModel } from '@/workers/engine/simulator/grades';
 import { senseImu } from '@/workers/engine/simulator/imu-errors';
 import { imuModel, regularTimes } from '@/workers/engine/simulator/scenario';
@@ -86,6 +86,25 @@ test('Q-05 in-run wander: stationary from the first sample, correlation e^(−Δ
   }
 });
 
+test('Q-08 the random-walk wander: first spread σ, then 2σ²/τ a second', () => {
+  const random = createRandom(10);
+  const walks = Array.from({ length: 5000 }, () => {
+    const walk = new MatchedRandomWalk(2, 50, random);
+    const first = walk.value;
+    walk.step(10);
+    return [first, walk.step(15) - first] as const;
+  });
+  expect(Math.abs(rms(walks.map((w) => w[0])) / 2 - 1)).toBeLessThan(0.04);
+  expect(Math.abs(rms(walks.map((w) => w[1])) / Math.sqrt((2 * 4 * 25) / 50) - 1)).toBeLessThan(0.04);
+  const walking = model({
+    gyroBiasInstabilityRadPerS: 1,
+    gyroBiasCorrelationTimeS: 1,
+    wander: 'random-walk',
+  });
+  const spread = standardDeviation(senseImu(still(400, 10), walking, createRandom(11)).imu.gyro[0]);
+  expect(spread).toBeGreaterThan(3); // a Gauss–Markov process of this σ would stay near 1
+});
+
 test('scale, range and step act in that order', () => {
   const imu = still(1, 10);
   imu.gyro[0].fill(1.234);
@@ -130,7 +149,7 @@ test('grades get better in each figure (Groves 2013 §4.4 and usual practice: th
   );
   for (const key of Object.keys(IMU_GRADES.perfect) as (keyof ImuModel)[]) {
     if (!/WhiteNoise|TurnOn|Instability/.test(key)) continue;
-    const figures = order.map((grade) => grade[key]);
+    const figures = order.map((grade) => Number(grade[key]));
     expect([...figures].sort((a, b) => b - a)).toEqual(figures);
   }
 });
