@@ -41,9 +41,16 @@ export type DecodeResult =
       strip: Strip;
       /** Over the decoded channel files. */
       sha256: string;
+      previews: FilePreview[];
     }
   | { outcome: 'needs-mapping'; channelMap: ChannelMap; problems: IntakeProblem[]; previews: FilePreview[] }
-  | { outcome: 'rejected'; problems: IntakeProblem[]; previews: FilePreview[] };
+  | {
+      outcome: 'rejected';
+      /** What was settled before the fault, so that the mapping screen can begin with it. */
+      channelMap: ChannelMap | null;
+      problems: IntakeProblem[];
+      previews: FilePreview[];
+    };
 
 /** Simulates a scenario and writes it as raw uploads (IMU, GNSS and reference CSV) that are then decoded like any others. */
 export interface ScenarioJob {

@@ -11,7 +11,6 @@ import type {
   TimeOrigin,
 } from '@/shared/contracts/recordings';
 import { IDENTITY_AXES, type AxisMap } from '@/shared/contracts/vehicles';
-import { formatNumber } from '@/shared/format';
 import { ArrowFileWriter, writeTable, type Columns, type WrittenFile } from '../recordings/arrow-file';
 import { IMU_COLUMNS, REFERENCE_COLUMNS, SAMPLING_KEY } from '../recordings/files';
 import { storeKeys, type Store } from '../store/types';
@@ -120,7 +119,7 @@ async function decodeImu(context: IntakeContext, clock: Clock, gnss: GnssReport)
 async function decodeGnss(context: IntakeContext, originS: number) {
   const map = context.map.gnss!;
   const clock = clockOf(context, 'gnss');
-  clock.useOrigin(proposedOrigin(context, clock, 'gnss') === 0 ? 0 : originS);
+  shareOrigin(context, 'gnss', clock, originS);
   const conversion = new TrajectoryConversion(map, 'gnss');
   const collector = new GnssCollector(
     readerOf(context, 'gnss', clock, conversion.columns),
@@ -143,7 +142,7 @@ async function decodeReference(context: IntakeContext, originS: number, imuSpanS
   const map = context.map.reference;
   if (!map || !context.files.has('reference')) return null;
   const clock = clockOf(context, 'reference');
-  clock.useOrigin(proposedOrigin(context, clock, 'reference') === 0 ? 0 : originS);
+  shareOrigin(context, 'reference', clock, originS);
   const conversion = new TrajectoryConversion(map, 'reference');
   const key = storeKeys.reference(context.recordingId);
   const writer = new ArrowFileWriter(context.store, key, REFERENCE_COLUMNS);
@@ -205,6 +204,23 @@ function proposedOrigin(context: IntakeContext, clock: Clock, role: FileRole = '
   return 0;
 }
 
+/** Files tell the same time only when both clocks are absolute or both are plain, unless the map says how they differ. */
+function shareOrigin(
+  context: IntakeContext,
+  role: 'gnss' | 'reference',
+  clock: Clock,
+  originS: number,
+): void {
+  const isAbsolute = proposedOrigin(context, clock, role) !== 0;
+  if (isAbsolute !== (originS !== 0) && timeMapOf(context, role).offsetS === 0)
+    throw rejection(
+      'clocks-differ', { file: role, column: timeMapOf(context, role).columns[0]! },
+      `The ${FILE_NAMES[role]} tells ${isAbsolute ? 'an absolute time' : 'seconds since some start'}, the IMU file ${isAbsolute ? 'seconds since some start' : 'an absolute time'}.`,
+      `Give the seconds that bring the ${FILE_NAMES[role]} onto the IMU’s axis as its offset on the mapping screen.`,
+    ); // prettier-ignore
+  clock.useOrigin(isAbsolute ? originS : 0);
+}
+
 function nominalInterval(context: IntakeContext, role: FileRole, clock: Clock): number {
   const used = new Set(
     columnsOf(context.map[role]!).map((name) => columnIndex(context.heads.get(role)!.headers, name)),
@@ -233,4 +249,4 @@ function noOverlap(role: 'gnss' | 'reference', imu: [number, number], other: [nu
   ); // prettier-ignore
 }
 
-const seconds = (value: number) => `${formatNumber(value, 6)} s`;
+const seconds = (value: number) => `${Number(value.toPrecision(12))} s`;

@@ -52,6 +52,8 @@ export class GnssCollector {
 
   private pushRow(row: readonly string[], line: number): void {
     const timeS = this.reader.read(row, line, this.read) + this.shiftS;
+    // Neither time nor place: a row of another device in a merged log.
+    if (Number.isNaN(timeS) && Number.isNaN(this.read[0]!) && Number.isNaN(this.read[1]!)) return;
     const values = new Float64Array(ROW_LENGTH);
     const hasFix = !Number.isNaN(timeS) && !this.conversion.isNoFix(this.read);
     if (hasFix) this.conversion.convert(this.read, line, values);

@@ -19,8 +19,8 @@ const SCALE: Record<CountBase, number> = { s: 1, ms: 1e-3, us: 1e-6, ns: 1e-9 };
 /** Intervals that a log of each kind can have, s. */
 const PLAUSIBLE_S: Record<FileRole, readonly [number, number]> = {
   imu: [2e-4, 0.2],
-  gnss: [0.01, 30],
-  reference: [5e-4, 30],
+  gnss: [0.01, 12],
+  reference: [5e-4, 12],
 };
 const BASE_WORDS: Record<CountBase, string> = {
   s: 'seconds',
@@ -30,22 +30,28 @@ const BASE_WORDS: Record<CountBase, string> = {
 };
 
 export function guessTime(head: CsvHead, finder: ColumnFinder, role: FileRole): GuessedTime | null {
-  return single(head, finder, role) ?? pair(finder, role) ?? byNamePart(head, role);
+  return (
+    secondsAndNanoseconds(finder, role) ??
+    weekAndSeconds(finder) ??
+    single(head, finder, role) ??
+    byNamePart(head, role)
+  );
 }
 
 function single(head: CsvHead, finder: ColumnFinder, role: FileRole): GuessedTime | null {
-  const week = finder.find(WEEK_WORDS);
-  const found = finder.find(TIME_WORDS) ?? (week ? null : finder.find(TIME_OF_WEEK_WORDS));
-  if (!found || namesOtherDevice(found.header, role)) return null;
-  if (week && finder.find(TIME_OF_WEEK_WORDS)) return null;
-  return fromValues(head, found.header, found.index, found.unit, role);
+  const own = (header: string) => !namesOtherDevice(header, role);
+  const found = finder.find(TIME_WORDS, own) ?? finder.find(TIME_OF_WEEK_WORDS, own);
+  return found && fromValues(head, found.header, found.index, found.unit, role);
 }
 
-function pair(finder: ColumnFinder, role: FileRole): GuessedTime | null {
+function weekAndSeconds(finder: ColumnFinder): GuessedTime | null {
   const week = finder.find(WEEK_WORDS);
   const ofWeek = finder.find(TIME_OF_WEEK_WORDS) ?? finder.find(TIME_WORDS);
-  if (week && ofWeek && (ofWeek.unit === null || ofWeek.unit === 's'))
-    return named([week.header, ofWeek.header], 'gps-week+s');
+  if (!week || !ofWeek || (ofWeek.unit !== null && ofWeek.unit !== 's')) return null;
+  return named([week.header, ofWeek.header], 'gps-week+s');
+}
+
+function secondsAndNanoseconds(finder: ColumnFinder, role: FileRole): GuessedTime | null {
   const own = (header: string) => !namesOtherDevice(header, role);
   const seconds = finder.find(SECONDS_WORDS, own);
   const nanoseconds = finder.find(NANOSECONDS_WORDS, own);
@@ -82,15 +88,13 @@ function fromValues(
   return { ...named([header], base), assumed };
 }
 
-/** From the size of the values where the clock is absolute, else from their steps. */
+/** The first base that makes the step of the values a usual one; without such a step, from the size of an absolute clock. */
 function baseOf(values: readonly number[], [shortest, longest]: readonly [number, number]): CountBase {
-  const size = Math.abs(values[0] ?? 0);
-  if (size > 1e17) return 'ns';
-  if (size > 1e14) return 'us';
-  if (size > 1e11) return 'ms';
-  if (size > 1e8 && size < 1e10) return 's';
   const step = medianStep(values);
-  return BASES.find((base) => step * SCALE[base] >= shortest && step * SCALE[base] <= longest) ?? 's';
+  const fitting = BASES.find((base) => step * SCALE[base] >= shortest && step * SCALE[base] <= longest);
+  if (fitting) return fitting;
+  const size = Math.abs(values[0] ?? 0);
+  return size > 1e17 ? 'ns' : size > 1e14 ? 'us' : size > 1e11 ? 'ms' : 's';
 }
 
 /** Median of the positive differences; NaN where there are none. */

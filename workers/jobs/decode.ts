@@ -14,9 +14,10 @@ import type { JobHelpers } from './helpers';
 
 export async function decode(job: DecodeJob, helpers: JobHelpers): Promise<DecodeResult> {
   const { store } = helpers;
+  await removeDecoded(store, job.recordingId);
   const { heads, problems } = await readHeads(job, store);
   const previews = () => [...heads].map(([role, head]) => previewOf(role, head, []));
-  if (problems.length > 0) return { outcome: 'rejected', problems, previews: previews() };
+  if (problems.length > 0) return { outcome: 'rejected', channelMap: null, problems, previews: previews() };
   const settled = settleMaps(heads, job.channelMap);
   if (settled.problems.length > 0)
     return {
@@ -26,7 +27,6 @@ export async function decode(job: DecodeJob, helpers: JobHelpers): Promise<Decod
       previews: settled.previews,
     };
 
-  await removeDecoded(store, job.recordingId);
   try {
     const decoded = await decodeFiles({
       store,
@@ -56,11 +56,17 @@ export async function decode(job: DecodeJob, helpers: JobHelpers): Promise<Decod
       health: decoded.health,
       strip: decoded.strip,
       sha256,
+      previews: settled.previews,
     };
   } catch (error) {
     await removeDecoded(store, job.recordingId);
     if (error instanceof IntakeRejected)
-      return { outcome: 'rejected', problems: [...error.problems], previews: previews() };
+      return {
+        outcome: 'rejected',
+        channelMap: settled.map,
+        problems: [...error.problems],
+        previews: settled.previews,
+      };
     throw error;
   }
 }
