@@ -44,7 +44,7 @@ const STOP_LIMIT_MS = 20_000;
 /** Starts the server on `preferredPort`, or a free one where that is 0 or taken. Throws with the end of the log. */
 export async function startServer(cluster: Cluster, preferredPort: number): Promise<ServerProcess> {
   for (let attempt = 0; attempt < ATTEMPTS; attempt++) {
-    const again = preferredPort > 0 && attempt === 0 && (await isPortFree(preferredPort));
+    const again = preferredPort > 0 && (await isPortFree(preferredPort));
     const port = again ? preferredPort : await freePort();
     const child = launch(cluster, port);
     if (await becomesReady(cluster, child, port)) {

@@ -26,9 +26,8 @@ export class Stack {
 
   /** Starts both; returns early where we are asked to stop meanwhile. */
   async up(): Promise<void> {
-    const folder = path.join(this.settings.dataFolder, 'postgres');
-    this.postgres = await startLocalPostgres({ folder, log: console.log });
-    await this.startServer(this.postgres.url);
+    await this.startPostgres();
+    await this.startServer();
   }
 
   /** Server before database, so that no request finds it gone. */
@@ -41,7 +40,7 @@ export class Stack {
   async restartServer(): Promise<void> {
     this.restarting = (async () => {
       if (this.server) await endProcess(this.server, SERVER_STOP_LIMIT_MS);
-      if (this.postgres) await this.startServer(this.postgres.url);
+      await this.startServer();
     })();
     try {
       await this.restarting;
@@ -50,7 +49,7 @@ export class Stack {
     }
   }
 
-  /** Until we are asked to stop: starts both again when one of them died under us. */
+  /** Until we are asked to stop: starts again what died under us. */
   async keepUp(): Promise<void> {
     const stopped = new Promise<'stop'>((resolve) => {
       if (this.stopping.aborted) resolve('stop');
@@ -63,19 +62,30 @@ export class Stack {
       if (Date.now() - upSince < STEADY_AFTER_MS) {
         throw new Error(`${lost} stopped by itself just after its start; see ${this.logFile}.`);
       }
-      console.log(`${lost} stopped unexpectedly. Starting again …`);
-      await this.down();
-      await this.up();
+      console.log(`${lost} stopped unexpectedly. Starting it again …`);
+      await (lost === 'PostgreSQL' ? this.replacePostgres() : this.restartServer());
       console.log(`Up again at ${this.address}.`);
     }
   }
 
-  private async startServer(databaseUrl: string): Promise<void> {
-    if (this.stopping.aborted) return;
+  /** On the port of before the server finds it again by itself. */
+  private async replacePostgres(): Promise<void> {
+    const before = this.postgres?.url;
+    await this.startPostgres();
+    if (this.postgres?.url !== before) await this.restartServer();
+  }
+
+  private async startPostgres(): Promise<void> {
+    const folder = path.join(this.settings.dataFolder, 'postgres');
+    this.postgres = await startLocalPostgres({ folder, log: console.log });
+  }
+
+  private async startServer(): Promise<void> {
+    if (this.stopping.aborted || !this.postgres) return;
     const options: ServerOptions = {
       logFile: this.logFile,
       env: {
-        DATABASE_URL: databaseUrl,
+        DATABASE_URL: this.postgres.url,
         HOST: this.settings.host,
         PORT: String(this.settings.port),
         DATA_DIR: this.settings.dataFolder,
@@ -88,16 +98,16 @@ export class Stack {
   }
 
   /** Resolves with the name of what is gone, a restart of our own apart. */
-  private async loss(): Promise<string> {
+  private async loss(): Promise<'The server' | 'PostgreSQL'> {
     for (;;) {
       await this.restarting;
       const { server, postgres } = this;
       if (!server || !postgres) throw new Error('Nothing was started.');
       const lost = await Promise.race([
-        ended(server).then(() => 'The server'),
-        postgres.ended.then(() => 'PostgreSQL'),
+        ended(server).then(() => 'The server' as const),
+        postgres.ended.then(() => 'PostgreSQL' as const),
       ]);
-      if (!this.restarting) return lost;
+      if (lost === 'PostgreSQL' || !this.restarting) return lost;
     }
   }
 }
