@@ -7,13 +7,15 @@ import { idSchema } from '@/shared/contracts/common';
 import type { Context } from '../context';
 import type { Sessions } from '../middleware/session';
 import { loadPerson } from '../services/accounts';
+import { frameForWire, watchDrain } from './frames';
 import { rooms } from './rooms';
-import { frameForWire } from './wire';
 
 export type NoEvents = Record<string, never>;
 export interface SocketData {
   userId: string;
   workspaceIds: string[];
+  /** Sent, and not yet taken by the transport. */
+  framesWaiting: number;
 }
 export type LiveSocket = Socket<ClientToServerEvents, ServerToClientEvents, NoEvents, SocketData>;
 
@@ -29,7 +31,8 @@ export async function greet(ctx: Context, sessions: Sessions, socket: LiveSocket
   if (!session || !person) throw new Error('Not signed in: sign in and connect again.');
   const sid = session.id;
   const workspaceIds = person.memberships.map((member) => member.workspaceId);
-  socket.data = { userId: person.userId, workspaceIds };
+  socket.data = { userId: person.userId, workspaceIds, framesWaiting: 0 };
+  watchDrain(socket);
   await socket.join([rooms.session(sid), rooms.user(person.userId), ...workspaceIds.map(rooms.workspace)]);
   keepChecking(ctx, sessions, socket, sid);
   socket.on('run:follow', (message, answer) => {

@@ -14,8 +14,8 @@ import type { Context } from '../context';
 import { isOwnOrigin } from '../middleware/cross-site';
 import type { Sessions } from '../middleware/session';
 import { greet, type LiveSocket, type NoEvents, type SocketData } from './connection';
+import { sendFrame } from './frames';
 import { rooms } from './rooms';
-import { frameForWire } from './wire';
 
 /** Clients only send ids. */
 const LARGEST_MESSAGE_BYTES = 16_384;
@@ -45,8 +45,7 @@ export function createLive(): Live {
   const toRun = (runId: string) => live.to(rooms.run(runId));
 
   return {
-    // Volatile: a client that cannot keep up misses frames, and the server holds no queue for it.
-    frame: (runId, frame) => void toRun(runId).volatile.emit('run:frame', frameForWire(frame)),
+    frame: (runId, frame) => sendFrame(live, runId, frame),
     progress: (message) => void toRun(message.runId).emit('run:progress', message),
     summary: (message) => void toRun(message.runId).emit('run:summary', message),
     failed: (message) => void toRun(message.runId).emit('run:failed', message),
