@@ -1,8 +1,10 @@
 /** The GNSS-only track: what the team has without an IMU. Computed once when a recording is decoded, thinned when asked for. */
+import { radToDeg } from '@/shared/units';
+import { gnssOnlyTrack } from '../engine/gnss-only';
 import type { BaselineTrack, BaselineTrackJob } from '../protocol';
 import { readTable, writeTable, type Columns } from '../recordings/arrow-file';
 import { TRACK_COLUMNS } from '../recordings/files';
-import { notDecoded } from '../recordings/load';
+import { gnssColumns, notDecoded } from '../recordings/load';
 import { storeKeys, type Store } from '../store/types';
 import type { JobHelpers } from './helpers';
 import { strideFor, strideRows } from './thinning';
@@ -16,17 +18,22 @@ export async function baselineTrack(job: BaselineTrackJob, helpers: JobHelpers):
   return { timeS: pick('time_s'), latDeg: pick('lat_deg'), lonDeg: pick('lon_deg') };
 }
 
-/** `gnss`: columns as GNSS_COLUMNS. */
-export async function writeBaselineTrack(store: Store, recordingId: string, gnss: Columns): Promise<void> {
-  await writeTable(store, storeKeys.gnssOnly(recordingId), trackOf(gnss));
-}
+/** The filter works on general matrices, a few thousand fixes a second: of longer logs every n-th fix is taken. */
+const MAX_FIXES = 8000;
 
-/** Fixes with a position. */
-function trackOf(gnss: Columns): Columns {
-  const rows = Array.from(gnss.time_s!.keys()).filter(
-    (i) => !Number.isNaN(gnss.lat_deg![i]! + gnss.lon_deg![i]!),
-  );
-  return Object.fromEntries(
-    TRACK_COLUMNS.map((name) => [name, Float64Array.from(rows, (i) => gnss[name]![i]!)]),
-  );
+/** Filters the fixes of a recording that is just being decoded and keeps the track at the fixes' times. */
+export async function writeBaselineTrack(store: Store, recordingId: string, gnss: Columns): Promise<void> {
+  const stride = strideFor(gnss.time_s!.length, MAX_FIXES);
+  const thinned = Object.entries(gnss).map(([name, values]) => [
+    name,
+    values.filter((_, i) => i % stride === 0),
+  ]);
+  const track = gnssOnlyTrack(gnssColumns(Object.fromEntries(thinned) as Columns));
+  const columns: Record<(typeof TRACK_COLUMNS)[number], Float64Array> = {
+    time_s: track.timeS,
+    lat_deg: track.latRad.map(radToDeg),
+    lon_deg: track.lonRad.map(radToDeg),
+    height_m: track.heightM,
+  };
+  await writeTable(store, storeKeys.gnssOnly(recordingId), columns);
 }

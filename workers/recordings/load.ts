@@ -49,7 +49,8 @@ const imuColumns = (c: Columns, sampling: ImuSampling): ImuColumns => ({
   sampling,
 });
 
-const gnssColumns = (c: Columns): GnssColumns => ({
+/** Columns of gnss.arrow as the engine wants them. */
+export const gnssColumns = (c: Columns): GnssColumns => ({
   timeS: c.time_s!,
   latRad: radians(c.lat_deg!),
   lonRad: radians(c.lon_deg!),
