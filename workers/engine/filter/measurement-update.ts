@@ -11,7 +11,7 @@ import { STATES } from './states';
 export const MAX_ROWS = 3;
 
 export class MeasurementUpdate {
-  /** Rows in use, 1…3. */
+  /** Rows in use, 1…3; the others measure nothing. */
   rows = 0;
   /** H, row by row, MAX_ROWS × 15. Columns not in `columns` must be 0. */
   readonly h = new Float64Array(MAX_ROWS * STATES);
@@ -32,112 +32,124 @@ export class MeasurementUpdate {
   private readonly ph = new Float64Array(STATES * MAX_ROWS);
   private readonly inverse = new Float64Array(MAX_ROWS * MAX_ROWS);
   private readonly reduced = new Float64Array(STATES * STATES);
-  private readonly rest = new Float64Array(STATES * MAX_ROWS);
 
-  /** Clears H and says which of its columns will be filled. */
+  /** Clears H and says which of its columns will be filled. Rows that are not in use measure nothing: H 0, R 1. */
   begin(rows: number, columns: readonly number[]): void {
     this.rows = rows;
     this.h.fill(0);
     this.columnCount = columns.length;
     for (let i = 0; i < columns.length; i += 1) this.columns[i] = columns[i]!;
+    for (let m = rows; m < MAX_ROWS; m += 1) {
+      this.r[m] = 1;
+      this.innovation[m] = 0;
+    }
   }
 
   /** PHᵀ, S, its inverse and the NIS; P (15×15) is only read. */
   prepare(p: Float64Array): void {
-    const { rows, h, columns, columnCount, ph, s, r } = this;
-    for (let i = 0; i < STATES; i += 1)
-      for (let m = 0; m < rows; m += 1) {
-        let sum = 0;
-        for (let c = 0; c < columnCount; c += 1) {
-          const j = columns[c]!;
-          sum += p[i * STATES + j]! * h[m * STATES + j]!;
-        }
-        ph[i * MAX_ROWS + m] = sum;
+    const { h, columns, columnCount, ph, s, r, innovation } = this;
+    for (let i = 0; i < STATES; i += 1) {
+      let a = 0;
+      let b = 0;
+      let c = 0;
+      for (let n = 0; n < columnCount; n += 1) {
+        const j = columns[n]!;
+        const value = p[i * STATES + j]!;
+        a += value * h[j]!;
+        b += value * h[STATES + j]!;
+        c += value * h[2 * STATES + j]!;
       }
-    for (let a = 0; a < rows; a += 1)
-      for (let b = a; b < rows; b += 1) {
+      ph[i * MAX_ROWS] = a;
+      ph[i * MAX_ROWS + 1] = b;
+      ph[i * MAX_ROWS + 2] = c;
+    }
+    for (let a = 0; a < MAX_ROWS; a += 1)
+      for (let b = a; b < MAX_ROWS; b += 1) {
         let sum = a === b ? r[a]! : 0;
-        for (let c = 0; c < columnCount; c += 1) {
-          const j = columns[c]!;
+        for (let n = 0; n < columnCount; n += 1) {
+          const j = columns[n]!;
           sum += h[a * STATES + j]! * ph[j * MAX_ROWS + b]!;
         }
         s[a * MAX_ROWS + b] = sum;
         s[b * MAX_ROWS + a] = sum;
       }
-    invertSymmetric(s, rows, this.inverse);
-    this.nis = this.quadratic();
-  }
-
-  private quadratic(): number {
-    const { rows, inverse, innovation } = this;
-    let sum = 0;
-    for (let a = 0; a < rows; a += 1)
-      for (let b = 0; b < rows; b += 1) sum += innovation[a]! * inverse[a * MAX_ROWS + b]! * innovation[b]!;
-    return sum;
+    invertSymmetric(s, this.inverse);
+    this.nis = quadratic(this.inverse, innovation);
   }
 
   /** After `prepare`: K, the correction, and P in place. */
   apply(p: Float64Array): void {
-    const { rows, gain, ph, inverse, innovation, correction } = this;
+    const { gain, ph, inverse, innovation, correction } = this;
+    const i00 = inverse[0]!;
+    const i01 = inverse[1]!;
+    const i02 = inverse[2]!;
+    const i11 = inverse[4]!;
+    const i12 = inverse[5]!;
+    const i22 = inverse[8]!;
     for (let i = 0; i < STATES; i += 1) {
-      let change = 0;
-      for (let m = 0; m < rows; m += 1) {
-        let sum = 0;
-        for (let k = 0; k < rows; k += 1) sum += ph[i * MAX_ROWS + k]! * inverse[k * MAX_ROWS + m]!;
-        gain[i * MAX_ROWS + m] = sum;
-        change += sum * innovation[m]!;
-      }
-      correction[i] = change;
+      const at = i * MAX_ROWS;
+      const a = ph[at]!;
+      const b = ph[at + 1]!;
+      const c = ph[at + 2]!;
+      const ka = a * i00 + b * i01 + c * i02;
+      const kb = a * i01 + b * i11 + c * i12;
+      const kc = a * i02 + b * i12 + c * i22;
+      gain[at] = ka;
+      gain[at + 1] = kb;
+      gain[at + 2] = kc;
+      correction[i] = ka * innovation[0]! + kb * innovation[1]! + kc * innovation[2]!;
     }
     this.joseph(p);
   }
 
-  /** P ← A + (KR − AHᵀ)Kᵀ with A = P − K(HP): Joseph's form multiplied out, upper triangle, then mirrored. */
+  /** P ← A + (KR − AHᵀ)Kᵀ with A = P − K(HP): Joseph's form multiplied out; upper triangle, then mirrored. */
   private joseph(p: Float64Array): void {
-    const { rows, h, columns, columnCount, gain, ph, reduced, rest, r } = this;
-    for (let i = 0; i < STATES; i += 1)
+    const { h, columns, columnCount, gain, ph, reduced, r } = this;
+    for (let i = 0; i < STATES; i += 1) {
+      const row = i * STATES;
+      const ka = gain[i * MAX_ROWS]!;
+      const kb = gain[i * MAX_ROWS + 1]!;
+      const kc = gain[i * MAX_ROWS + 2]!;
       for (let j = 0; j < STATES; j += 1) {
-        let value = p[i * STATES + j]!;
-        for (let m = 0; m < rows; m += 1) value -= gain[i * MAX_ROWS + m]! * ph[j * MAX_ROWS + m]!;
-        reduced[i * STATES + j] = value;
+        const at = j * MAX_ROWS;
+        reduced[row + j] = p[row + j]! - ka * ph[at]! - kb * ph[at + 1]! - kc * ph[at + 2]!;
       }
-    for (let i = 0; i < STATES; i += 1)
-      for (let m = 0; m < rows; m += 1) {
-        let sum = gain[i * MAX_ROWS + m]! * r[m]!;
-        for (let c = 0; c < columnCount; c += 1) {
-          const j = columns[c]!;
-          sum -= reduced[i * STATES + j]! * h[m * STATES + j]!;
-        }
-        rest[i * MAX_ROWS + m] = sum;
+      let a = ka * r[0]!;
+      let b = kb * r[1]!;
+      let c = kc * r[2]!;
+      for (let n = 0; n < columnCount; n += 1) {
+        const j = columns[n]!;
+        const value = reduced[row + j]!;
+        a -= value * h[j]!;
+        b -= value * h[STATES + j]!;
+        c -= value * h[2 * STATES + j]!;
       }
-    for (let i = 0; i < STATES; i += 1)
       for (let j = i; j < STATES; j += 1) {
-        let value = reduced[i * STATES + j]!;
-        for (let m = 0; m < rows; m += 1) value += rest[i * MAX_ROWS + m]! * gain[j * MAX_ROWS + m]!;
-        p[i * STATES + j] = value;
+        const at = j * MAX_ROWS;
+        const value = reduced[row + j]! + a * gain[at]! + b * gain[at + 1]! + c * gain[at + 2]!;
+        p[row + j] = value;
         p[j * STATES + i] = value;
       }
+    }
   }
 }
 
-/** Inverse of a symmetric positive definite matrix of 1…3 rows (stride MAX_ROWS) by cofactors. */
-function invertSymmetric(s: Float64Array, rows: number, out: Float64Array): void {
-  if (rows === 1) {
-    out[0] = 1 / s[0]!;
-    return;
-  }
+function quadratic(inverse: Float64Array, nu: Float64Array): number {
+  const [a, b, c] = [nu[0]!, nu[1]!, nu[2]!];
+  return (
+    a * a * inverse[0]! +
+    b * b * inverse[4]! +
+    c * c * inverse[8]! +
+    2 * (a * b * inverse[1]! + a * c * inverse[2]! + b * c * inverse[5]!)
+  );
+}
+
+/** Inverse of a symmetric positive definite 3×3 matrix, row by row, by cofactors. */
+function invertSymmetric(s: Float64Array, out: Float64Array): void {
   const a = s[0]!;
   const b = s[1]!;
-  const d = s[4]!;
-  if (rows === 2) {
-    const det = 1 / (a * d - b * b);
-    out[0] = d * det;
-    out[1] = -b * det;
-    out[3] = out[1]!;
-    out[4] = a * det;
-    return;
-  }
   const c = s[2]!;
+  const d = s[4]!;
   const e = s[5]!;
   const f = s[8]!;
   const c00 = d * f - e * e;

@@ -135,66 +135,153 @@ export class Propagation {
   }
 
   /**
-   * y = Φx for the 15-vector that starts at `source[from]` with stride `step`, into `target[to…]`, contiguous.
+   * y = Φx for `count` 15-vectors: vector v has its elements at v·vectorStep + i·elementStep of `source`; results go
+   * one after the other into `target`.
    */
-  private apply(source: Float64Array, from: number, step: number, target: Float64Array, to: number): void {
+  private apply(
+    source: Float64Array,
+    vectorStep: number,
+    elementStep: number,
+    target: Float64Array,
+    count: number,
+  ): void {
+    this.attitudeRows(source, vectorStep, elementStep, target, count);
+    this.velocityRows(source, vectorStep, elementStep, target, count);
+    this.positionAndBiasRows(source, vectorStep, elementStep, target, count);
+  }
+
+  /** φ' = φ − ω_in×φ + δω_in(δr, δv) + C δb_g */
+  private attitudeRows(x: Float64Array, vectorStep: number, s: number, y: Float64Array, count: number): void {
     const t = this.transition;
-    const rn = source[from]!;
-    const re = source[from + step]!;
-    const rd = source[from + 2 * step]!;
-    const vn = source[from + 3 * step]!;
-    const ve = source[from + 4 * step]!;
-    const vd = source[from + 5 * step]!;
-    const pn = source[from + 6 * step]!;
-    const pe = source[from + 7 * step]!;
-    const pd = source[from + 8 * step]!;
-    const gx = source[from + 9 * step]!;
-    const gy = source[from + 10 * step]!;
-    const gz = source[from + 11 * step]!;
-    const ax = source[from + 12 * step]!;
-    const ay = source[from + 13 * step]!;
-    const az = source[from + 14 * step]!;
+    const wn = t[23]!;
+    const we = t[24]!;
+    const wd = t[25]!;
+    const nByN = t[26]!;
+    const nByD = t[27]!;
+    const eByD = t[28]!;
+    const dByN = t[29]!;
+    const dByD = t[30]!;
+    const nByVe = t[31]!;
+    const eByVn = t[32]!;
+    const dByVe = t[33]!;
+    const c00 = t[34]!;
+    const c01 = t[35]!;
+    const c02 = t[36]!;
+    const c10 = t[37]!;
+    const c11 = t[38]!;
+    const c12 = t[39]!;
+    const c20 = t[40]!;
+    const c21 = t[41]!;
+    const c22 = t[42]!;
+    for (let v = 0; v < count; v += 1) {
+      const at = v * vectorStep;
+      const to = v * STATES;
+      const rn = x[at]!;
+      const rd = x[at + 2 * s]!;
+      const ve = x[at + 4 * s]!;
+      const pn = x[at + 6 * s]!;
+      const pe = x[at + 7 * s]!;
+      const pd = x[at + 8 * s]!;
+      const gx = x[at + 9 * s]!;
+      const gy = x[at + 10 * s]!;
+      const gz = x[at + 11 * s]!;
+      y[to + 6] =
+        pn - we * pd + wd * pe + nByN * rn + nByD * rd + nByVe * ve + c00 * gx + c01 * gy + c02 * gz;
+      y[to + 7] =
+        pe - wd * pn + wn * pd + eByD * rd + eByVn * x[at + 3 * s]! + c10 * gx + c11 * gy + c12 * gz;
+      y[to + 8] =
+        pd - wn * pe + we * pn + dByN * rn + dByD * rd + dByVe * ve + c20 * gx + c21 * gy + c22 * gz;
+    }
+  }
 
-    // φ' = φ − ω_in×φ + δω_in + C b_g
-    const pnNew =
-      pn - t[24]! * pd + t[25]! * pe + t[26]! * rn + t[27]! * rd + t[31]! * ve +
-      t[34]! * gx + t[35]! * gy + t[36]! * gz; // prettier-ignore
-    const peNew =
-      pe - t[25]! * pn + t[23]! * pd + t[28]! * rd + t[32]! * vn + t[37]! * gx + t[38]! * gy + t[39]! * gz;
-    const pdNew =
-      pd - t[23]! * pe + t[24]! * pn + t[29]! * rn + t[30]! * rd + t[33]! * ve +
-      t[40]! * gx + t[41]! * gy + t[42]! * gz; // prettier-ignore
+  /** v' = v + f×½(φ + φ') − C δb_a + Coriolis, transport and gravity terms in δv and δr; φ' is in `y` already. */
+  private velocityRows(x: Float64Array, vectorStep: number, s: number, y: Float64Array, count: number): void {
+    const t = this.transition;
+    const nn = 1 + t[5]!;
+    const ne = t[6]!;
+    const nd = t[7]!;
+    const en = t[8]!;
+    const ee = 1 + t[9]!;
+    const ed = t[10]!;
+    const dn = t[11]!;
+    const de = t[12]!;
+    const nByN = t[14]!;
+    const nByD = t[15]!;
+    const eByN = t[16]!;
+    const eByD = t[17]!;
+    const dByN = t[18]!;
+    const dByD = t[19]!;
+    const fn = 0.5 * t[20]!;
+    const fe = 0.5 * t[21]!;
+    const fd = 0.5 * t[22]!;
+    for (let v = 0; v < count; v += 1) {
+      const at = v * vectorStep;
+      const to = v * STATES;
+      const rn = x[at]!;
+      const rd = x[at + 2 * s]!;
+      const vn = x[at + 3 * s]!;
+      const ve = x[at + 4 * s]!;
+      const vd = x[at + 5 * s]!;
+      const pn = x[at + 6 * s]! + y[to + 6]!;
+      const pe = x[at + 7 * s]! + y[to + 7]!;
+      const pd = x[at + 8 * s]! + y[to + 8]!;
+      y[to + 3] = nn * vn + ne * ve + nd * vd + nByN * rn + nByD * rd + fe * pd - fd * pe;
+      y[to + 4] = en * vn + ee * ve + ed * vd + eByN * rn + eByD * rd + fd * pn - fn * pd;
+      y[to + 5] = dn * vn + de * ve + vd + dByN * rn + dByD * rd + fn * pe - fe * pn;
+    }
+    const c00 = t[43]!;
+    const c01 = t[44]!;
+    const c02 = t[45]!;
+    const c10 = t[46]!;
+    const c11 = t[47]!;
+    const c12 = t[48]!;
+    const c20 = t[49]!;
+    const c21 = t[50]!;
+    const c22 = t[51]!;
+    for (let v = 0; v < count; v += 1) {
+      const at = v * vectorStep;
+      const to = v * STATES;
+      const ax = x[at + 12 * s]!;
+      const ay = x[at + 13 * s]!;
+      const az = x[at + 14 * s]!;
+      y[to + 3] = y[to + 3]! - c00 * ax - c01 * ay - c02 * az;
+      y[to + 4] = y[to + 4]! - c10 * ax - c11 * ay - c12 * az;
+      y[to + 5] = y[to + 5]! - c20 * ax - c21 * ay - c22 * az;
+    }
+  }
 
-    // v' = v + f×φ − C b_a + Coriolis, transport and gravity terms
-    const n = 0.5 * (pn + pnNew);
-    const e = 0.5 * (pe + peNew);
-    const d = 0.5 * (pd + pdNew);
-    const vnNew =
-      vn + t[5]! * vn + t[6]! * ve + t[7]! * vd + t[14]! * rn + t[15]! * rd + t[21]! * d - t[22]! * e -
-      t[43]! * ax - t[44]! * ay - t[45]! * az; // prettier-ignore
-    const veNew =
-      ve + t[8]! * vn + t[9]! * ve + t[10]! * vd + t[16]! * rn + t[17]! * rd + t[22]! * n - t[20]! * d -
-      t[46]! * ax - t[47]! * ay - t[48]! * az; // prettier-ignore
-    const vdNew =
-      vd + t[11]! * vn + t[12]! * ve + t[18]! * rn + t[19]! * rd + t[20]! * e - t[21]! * n -
-      t[49]! * ax - t[50]! * ay - t[51]! * az; // prettier-ignore
-
+  /** r' = r + ½Δt(v + v') and curvature; biases decay. v' is in `y` already. */
+  private positionAndBiasRows(
+    x: Float64Array,
+    vectorStep: number,
+    s: number,
+    y: Float64Array,
+    count: number,
+  ): void {
+    const t = this.transition;
+    const nn = 1 + t[0]!;
+    const nd = t[1]!;
+    const en = t[2]!;
+    const ee = 1 + t[3]!;
+    const ed = t[4]!;
     const half = t[52]!;
-    target[to] = rn + t[0]! * rn + t[1]! * rd + half * (vn + vnNew);
-    target[to + 1] = re + t[2]! * rn + t[3]! * re + t[4]! * rd + half * (ve + veNew);
-    target[to + 2] = rd + half * (vd + vdNew);
-    target[to + 3] = vnNew;
-    target[to + 4] = veNew;
-    target[to + 5] = vdNew;
-    target[to + 6] = pnNew;
-    target[to + 7] = peNew;
-    target[to + 8] = pdNew;
-    target[to + 9] = t[53]! * gx;
-    target[to + 10] = t[53]! * gy;
-    target[to + 11] = t[53]! * gz;
-    target[to + 12] = t[54]! * ax;
-    target[to + 13] = t[54]! * ay;
-    target[to + 14] = t[54]! * az;
+    const gyro = t[53]!;
+    const accel = t[54]!;
+    for (let v = 0; v < count; v += 1) {
+      const at = v * vectorStep;
+      const to = v * STATES;
+      const rn = x[at]!;
+      const rd = x[at + 2 * s]!;
+      y[to] = nn * rn + nd * rd + half * (x[at + 3 * s]! + y[to + 3]!);
+      y[to + 1] = en * rn + ee * x[at + s]! + ed * rd + half * (x[at + 4 * s]! + y[to + 4]!);
+      y[to + 2] = rd + half * (x[at + 5 * s]! + y[to + 5]!);
+      y[to + 9] = gyro * x[at + 9 * s]!;
+      y[to + 10] = gyro * x[at + 10 * s]!;
+      y[to + 11] = gyro * x[at + 11 * s]!;
+      y[to + 12] = accel * x[at + 12 * s]!;
+      y[to + 13] = accel * x[at + 13 * s]!;
+      y[to + 14] = accel * x[at + 14 * s]!;
+    }
   }
 
   /**
@@ -205,12 +292,14 @@ export class Propagation {
     const m = this.product;
     for (let i = 0; i < STATES; i += 1) p[i * 16] = p[i * 16]! + halfNoise[i]!;
     // Row c of m becomes column c of ΦP.
-    for (let c = 0; c < STATES; c += 1) this.apply(p, c * STATES, 1, m, c * STATES);
+    this.apply(p, STATES, 1, m, STATES);
     // Row i of P becomes Φ times row i of ΦP; the biases' rows follow from symmetry.
-    for (let i = 0; i < GYRO_BIAS; i += 1) this.apply(m, i, STATES, p, i * STATES);
+    this.apply(m, 1, STATES, p, GYRO_BIAS);
     this.biasRows(p);
-    for (let i = 1; i < STATES; i += 1)
-      for (let j = 0; j < Math.min(i, GYRO_BIAS); j += 1) p[i * STATES + j] = p[j * STATES + i]!;
+    for (let i = 1; i < STATES; i += 1) {
+      const end = i < GYRO_BIAS ? i : GYRO_BIAS;
+      for (let j = 0; j < end; j += 1) p[i * STATES + j] = p[j * STATES + i]!;
+    }
     for (let i = 0; i < STATES; i += 1) p[i * 16] = p[i * 16]! + halfNoise[i]!;
   }
 
@@ -227,14 +316,12 @@ export class Propagation {
 
   /** Φ as a dense matrix (15×15, row by row) in `out`: for the smoother, the tests and study. */
   dense(out: Float64Array): Float64Array {
-    const unit = new Float64Array(STATES);
-    const column = new Float64Array(STATES);
-    for (let c = 0; c < STATES; c += 1) {
-      unit.fill(0);
-      unit[c] = 1;
-      this.apply(unit, 0, 1, column, 0);
-      for (let r = 0; r < STATES; r += 1) out[r * STATES + c] = column[r]!;
-    }
+    const unit = new Float64Array(STATES * STATES);
+    const columns = new Float64Array(STATES * STATES);
+    for (let i = 0; i < STATES; i += 1) unit[i * (STATES + 1)] = 1;
+    this.apply(unit, STATES, 1, columns, STATES);
+    for (let r = 0; r < STATES; r += 1)
+      for (let c = 0; c < STATES; c += 1) out[r * STATES + c] = columns[c * STATES + r]!;
     return out;
   }
 }

@@ -21,6 +21,6 @@ export function keptSamples(timeS: Float64Array, from: number, rateHz: number): 
 
 export function countKept(kept: Uint8Array): number {
   let count = 0;
-  for (const mark of kept) count += mark;
+  for (let k = 0; k < kept.length; k += 1) count += kept[k]!;
   return count;
 }

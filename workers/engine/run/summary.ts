@@ -74,20 +74,25 @@ function channelStatistics(group: string, unit: string, writer: InnovationWriter
   return ['north', 'east', 'down'].map((axis, a) => {
     const innovation = table.innovation[a as 0 | 1 | 2];
     const sigma = table.sigma[a as 0 | 1 | 2];
-    const normalised: number[] = [];
+    const buffer = new Float64Array(count);
+    let used = 0;
     let sum = 0;
+    let squares = 0;
     let rejected = 0;
     for (let i = 0; i < count; i += 1) {
-      if (Number.isNaN(innovation[i]!)) continue;
+      const value = innovation[i]!;
+      if (value !== value) continue; // NaN: not measured
       if (table.accepted[i] === 0) {
         rejected += 1;
         continue;
       }
-      sum += innovation[i]!;
-      normalised.push(innovation[i]! / sigma[i]!);
+      const z = value / sigma[i]!;
+      buffer[used] = z;
+      sum += value;
+      squares += z * z;
+      used += 1;
     }
-    const used = normalised.length;
-    const squares = normalised.reduce((total, x) => total + x * x, 0);
+    const normalised = buffer.subarray(0, used);
     const enough = used >= MIN_FOR_LAG;
     return {
       channel: `${group} ${axis}`,

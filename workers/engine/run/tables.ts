@@ -28,30 +28,26 @@ export class SolutionWriter {
 
   /** One row; `nav` as in navigation-state.ts, P 15×15. Order of columns: SOLUTION_COLUMNS. */
   write(timeS: number, nav: Float64Array, p: Float64Array): void {
-    const { columns, quaternion, euler, sigma } = this;
-    const row = this.count;
-    const put = (column: number, value: number) => {
-      columns[column]![row] = value;
-    };
+    const { columns, quaternion, euler, sigma, count: row } = this;
     for (let i = 0; i < 4; i += 1) quaternion[i] = nav[QUAT + i]!;
     eulerFromQuat(quaternion, euler);
     eulerSigmas(p, euler[1]!, euler[2]!, sigma);
-    put(0, timeS);
-    put(1, radToDeg(nav[LAT]!));
-    put(2, radToDeg(nav[LON]!));
-    put(3, nav[HEIGHT]!);
+    columns[0]![row] = timeS;
+    columns[1]![row] = radToDeg(nav[LAT]!);
+    columns[2]![row] = radToDeg(nav[LON]!);
+    columns[3]![row] = nav[HEIGHT]!;
     for (let i = 0; i < 3; i += 1) {
-      put(4 + i, nav[VN + i]!);
-      put(7 + i, radToDeg(euler[i]!));
-      put(10 + i, nav[NAV_GYRO_BIAS + i]!);
-      put(13 + i, nav[NAV_ACCEL_BIAS + i]!);
-      put(16 + i, deviation(p, POSITION + i));
-      put(19 + i, deviation(p, VELOCITY + i));
-      put(22 + i, radToDeg(sigma[i]!));
-      put(25 + i, deviation(p, GYRO_BIAS + i));
-      put(28 + i, deviation(p, ACCEL_BIAS + i));
+      columns[4 + i]![row] = nav[VN + i]!;
+      columns[7 + i]![row] = radToDeg(euler[i]!);
+      columns[10 + i]![row] = nav[NAV_GYRO_BIAS + i]!;
+      columns[13 + i]![row] = nav[NAV_ACCEL_BIAS + i]!;
+      columns[16 + i]![row] = deviation(p, POSITION + i);
+      columns[19 + i]![row] = deviation(p, VELOCITY + i);
+      columns[22 + i]![row] = radToDeg(sigma[i]!);
+      columns[25 + i]![row] = deviation(p, GYRO_BIAS + i);
+      columns[28 + i]![row] = deviation(p, ACCEL_BIAS + i);
     }
-    put(31, p[1]!);
+    columns[31]![row] = p[1]!;
     this.count += 1;
   }
 

@@ -29,8 +29,10 @@ export class ImuIntervals {
   isGap = false;
   readonly nominalS: number;
   readonly gapLimitS: number;
-  private readonly current = new Float64Array(6);
-  private readonly previous = new Float64Array(6);
+  private current = new Float64Array(6);
+  private previous = new Float64Array(6);
+  /** Sample whose increments `current` holds; −1: none. */
+  private loaded = -1;
 
   constructor(readonly imu: ImuColumns) {
     this.nominalS = medianSpacing(imu.timeS);
@@ -39,27 +41,33 @@ export class ImuIntervals {
 
   /** Fills `interval` with sample k, k ≥ 1. A gap holds the previous sample's rates up to the last nominal interval. */
   load(k: number): void {
-    const { interval, current, previous } = this;
+    const { interval } = this;
     const time = this.imu.timeS;
     const duration = time[k]! - time[k - 1]!;
     interval[DURATION] = duration;
     this.isGap = duration > this.gapLimitS;
     if (this.isGap) {
+      this.loaded = -1;
       this.loadGap(k, duration);
       return;
     }
-    this.increments(k, duration, current);
-    for (let i = 0; i < 6; i += 1) interval[ANGLE + i] = current[i]!;
     const before = k > 1 ? time[k - 1]! - time[k - 2]! : Infinity;
+    if (this.loaded !== k - 1 && k > 1) this.increments(k - 1, before, this.current);
+    const previous = this.current;
+    const current = this.previous;
+    this.previous = previous;
+    this.current = current;
+    this.increments(k, duration, current);
+    this.loaded = k;
+    for (let i = 0; i < 6; i += 1) interval[ANGLE + i] = current[i]!;
     if (before > this.gapLimitS) {
-      interval.fill(0, ANGLE_BEND);
+      for (let i = ANGLE_BEND; i < INTERVAL_SIZE; i += 1) interval[i] = 0;
       return;
     }
     if (this.imu.sampling === 'instantaneous') {
       this.bendOfInstants(k, duration);
       return;
     }
-    this.increments(k - 1, before, previous);
     const scale = (duration * duration) / (before + duration);
     for (let i = 0; i < 6; i += 1)
       interval[ANGLE_BEND + i] = scale * (current[i]! / duration - previous[i]! / before);

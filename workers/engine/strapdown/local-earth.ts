@@ -3,6 +3,7 @@ import { EARTH_RATE, WGS84_A, WGS84_B, WGS84_E2, WGS84_F, WGS84_GM } from '../ge
 import { GAMMA_EQUATOR, GAMMA_POLE } from '../gravity';
 
 const SOMIGLIANA_K = (WGS84_B * GAMMA_POLE) / (WGS84_A * GAMMA_EQUATOR) - 1;
+const PER_A = 1 / WGS84_A;
 const RATE_M = (EARTH_RATE * EARTH_RATE * WGS84_A * WGS84_A * WGS84_B) / WGS84_GM;
 
 /** Offsets into the result of `localEarth`. */
@@ -19,7 +20,7 @@ export function localEarth(sinLatSquared: number, heightM: number, out: Float64A
   const w2 = 1 - WGS84_E2 * sinLatSquared;
   const inverseRoot = 1 / Math.sqrt(w2);
   const transverse = WGS84_A * inverseRoot;
-  const x = heightM / WGS84_A;
+  const x = heightM * PER_A;
   const heightFactor = 1 - 2 * (1 + WGS84_F + RATE_M - 2 * WGS84_F * sinLatSquared) * x + 3 * x * x;
   out[MERIDIAN_PLUS_H] = (transverse * (1 - WGS84_E2)) / w2 + heightM;
   out[TRANSVERSE_PLUS_H] = transverse + heightM;

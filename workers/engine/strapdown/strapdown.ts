@@ -28,12 +28,17 @@ export type Scheme = 'coning-sculling' | 'trapezoidal' | 'rectangular';
 /** Beyond this the local level frame turns too fast to be useful. */
 export const MAX_LATITUDE_RAD = (89.5 * Math.PI) / 180;
 
+/** Sine and cosine of latitude are evaluated anew after this much, rad. */
+const NEAR_LATITUDE_RAD = 1e-4;
+
 export class Strapdown {
   readonly nav = new Float64Array(NAV_SIZE);
   /** n←b, row by row, of `nav`'s quaternion. */
   readonly dcm = new Float64Array(9);
   /** R_M + h, R_N + h (m), gravity (m/s²) at the middle of the last step. */
   readonly earth = new Float64Array(3);
+  /** A latitude (rad) near the present one with its sine and cosine, from which others follow by series. */
+  private readonly nearLat = new Float64Array(3);
   /** Since `resetSums`: ∫C dt (s). */
   readonly sumDcm = new Float64Array(9);
   /** Since `resetSums`: ∫f_n dt (m/s), and the time itself (s) as the fourth. */
@@ -51,7 +56,8 @@ export class Strapdown {
   start(nav: Float64Array): void {
     this.nav.set(nav);
     this.attitudeChanged();
-    const s = Math.sin(nav[LAT]!);
+    this.evaluateLatitude();
+    const s = this.nearLat[1]!;
     localEarth(s * s, nav[HEIGHT]!, this.earth);
     this.field.fill(0);
     this.field[2] = this.earth[GRAVITY]!;
@@ -76,19 +82,31 @@ export class Strapdown {
     dcm[8] = w * w - x * x - y * y + z * z;
   }
 
+  private evaluateLatitude(): void {
+    const lat = this.nav[LAT]!;
+    this.nearLat[0] = lat;
+    this.nearLat[1] = Math.sin(lat);
+    this.nearLat[2] = Math.cos(lat);
+  }
+
   resetSums(): void {
-    this.sumDcm.fill(0);
-    this.sumForce.fill(0);
+    const { sumDcm, sumForce } = this;
+    // Plain loops: a call of fill() costs more than it clears.
+    for (let i = 0; i < 9; i += 1) sumDcm[i] = 0;
+    for (let i = 0; i < 4; i += 1) sumForce[i] = 0;
   }
 
   /** Copies of all that carries over from step to step; `restore` goes on from there to the same bits. */
   save(): readonly Float64Array[] {
-    return [this.nav, this.earth, this.field, this.sumDcm, this.sumForce].map((part) => part.slice());
+    return this.parts().map((part) => part.slice());
+  }
+
+  private parts(): Float64Array[] {
+    return [this.nav, this.earth, this.nearLat, this.field, this.sumDcm, this.sumForce];
   }
 
   restore(saved: readonly Float64Array[]): void {
-    const parts = [this.nav, this.earth, this.field, this.sumDcm, this.sumForce];
-    parts.forEach((part, i) => part.set(saved[i]!));
+    this.parts().forEach((part, i) => part.set(saved[i]!));
     this.attitudeChanged();
   }
 
@@ -168,7 +186,7 @@ export class Strapdown {
 
   /** One step of `dt` s with the increments formed. */
   private step(dt: number): void {
-    const { nav, dcm, earth, field, increment, frameTurn, sumDcm, sumForce } = this;
+    const { nav, dcm, earth, nearLat, field, increment, frameTurn, sumForce } = this;
     const lat = nav[LAT]!;
     const height = nav[HEIGHT]!;
     const vn = nav[VN]!;
@@ -188,9 +206,15 @@ export class Strapdown {
     const vnMid = vn + 0.5 * an + half * field[0]!;
     const veMid = ve + 0.5 * ae + half * field[1]!;
     const vdMid = vd + 0.5 * ad + half * field[2]!;
-    const latMid = lat + (half * vn) / earth[MERIDIAN_PLUS_H]!;
-    const sinLat = Math.sin(latMid);
-    const cosLat = Math.cos(latMid);
+    const perM = 1 / earth[MERIDIAN_PLUS_H]!;
+    if (Math.abs(lat - nearLat[0]!) > NEAR_LATITUDE_RAD) this.evaluateLatitude();
+    const d = lat + half * vn * perM - nearLat[0]!;
+    // sin and cos of a small difference by series: the next terms are below 1e-18.
+    const sinD = d - (d * d * d) / 6;
+    const cosD = 1 - 0.5 * d * d;
+    const sinLat = nearLat[1]! * cosD + nearLat[2]! * sinD;
+    const cosLat = nearLat[2]! * cosD - nearLat[1]! * sinD;
+    const perCos = 1 / cosLat;
     localEarth(sinLat * sinLat, height - half * vd, earth);
     const inverseM = 1 / earth[MERIDIAN_PLUS_H]!;
     const inverseN = 1 / earth[TRANSVERSE_PLUS_H]!;
@@ -198,7 +222,7 @@ export class Strapdown {
     const earthD = -EARTH_RATE * sinLat;
     const transportN = veMid * inverseN;
     const transportE = -vnMid * inverseM;
-    const transportD = (-veMid * inverseN * sinLat) / cosLat;
+    const transportD = -veMid * inverseN * sinLat * perCos;
 
     // Gravity and Coriolis: g − (2ω_ie + ω_en) × v.
     const wn = 2 * earthN + transportN;
@@ -224,7 +248,7 @@ export class Strapdown {
     nav[VE] = veNew;
     nav[VD] = vdNew;
     nav[LAT] = lat + half * (vn + vnNew) * inverseM;
-    nav[LON] = nav[LON]! + (half * (ve + veNew) * inverseN) / cosLat;
+    nav[LON] = nav[LON]! + half * (ve + veNew) * inverseN * perCos;
     nav[HEIGHT] = height - half * (vd + vdNew);
 
     frameTurn[0] = zn;
@@ -235,10 +259,15 @@ export class Strapdown {
     sumForce[2] = sumForce[2]! + forceD;
     sumForce[3] = sumForce[3]! + dt;
     // ∫C dt by the mean of the step's ends.
-    for (let i = 0; i < 9; i += 1) sumDcm[i] = sumDcm[i]! + half * dcm[i]!;
+    this.addDcm(half);
     this.rotate();
     this.attitudeChanged();
-    for (let i = 0; i < 9; i += 1) sumDcm[i] = sumDcm[i]! + half * dcm[i]!;
+    this.addDcm(half);
+  }
+
+  private addDcm(weight: number): void {
+    const { dcm, sumDcm } = this;
+    for (let i = 0; i < 9; i += 1) sumDcm[i] = sumDcm[i]! + weight * dcm[i]!;
   }
 
   /** q ← q(−ζ) ⊗ q ⊗ q(σ): the body turns by σ (rad, body axes), the frame by ζ (rad, n axes, tiny). */
