@@ -57,10 +57,7 @@ export function guessImuMap(head: CsvHead): Guess<ImuMap> {
 function triple(finder: ColumnFinder, stem: 'gyro' | 'dtheta' | 'accel' | 'dv', refused: readonly string[]) {
   const axes = ['x', 'y', 'z'] as const;
   const columns = axes.map((axis) => {
-    const column = finder.find(
-      IMU_WORDS[`${stem}_${axis}` as ImuChannel],
-      (h) => !namesOtherDevice(h, 'imu'),
-    );
+    const column = finder.find(IMU_WORDS[`${stem}_${axis}`], (h) => !namesOtherDevice(h, 'imu'));
     return column && refused.includes(column.unit ?? '') ? null : column;
   });
   const missing = axes.filter((_, i) => columns[i] === null);

@@ -3,7 +3,7 @@ import { radToDeg } from '@/shared/units';
 import { gnssOnlyTrack } from '../engine/gnss-only';
 import type { BaselineTrack, BaselineTrackJob } from '../protocol';
 import { readTable, writeTable, type Columns } from '../recordings/arrow-file';
-import { TRACK_COLUMNS } from '../recordings/files';
+import { type TRACK_COLUMNS } from '../recordings/files';
 import { gnssColumns, notDecoded } from '../recordings/load';
 import { storeKeys, type Store } from '../store/types';
 import type { JobHelpers } from './helpers';

@@ -1,6 +1,6 @@
 /** What a job gets from outside. Jobs know neither processes nor sockets, so they run in tests as they are. */
 import { JobCancelled, type JobEvent } from '../protocol';
-import { RecordingCache } from '../recordings/cache';
+import { type RecordingCache } from '../recordings/cache';
 import type { Store } from '../store/types';
 
 export interface JobHelpers {

@@ -47,10 +47,10 @@ export async function readRunTables(store: Store, runId: string): Promise<RunTab
   const [startS, endS] = JSON.parse(solution.metadata.get('extent_s') ?? '[0,0]') as number[];
   const positionRows = Number(innovations.metadata.get(POSITION_ROWS) ?? innovations.rows);
   return {
-    solution: solution.columns as SolutionTable,
+    solution: solution.columns,
     position: innovationTable(innovations.columns, 0, positionRows),
     velocity: innovationTable(innovations.columns, positionRows, innovations.rows),
-    coasting: coasting.columns as CoastingTable,
+    coasting: coasting.columns,
     origin: { latDeg: latDeg!, lonDeg: lonDeg!, heightM: heightM! },
     extentS: [startS!, endS!],
   };

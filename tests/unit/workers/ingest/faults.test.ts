@@ -6,6 +6,8 @@ import {
   cleanLogs, csvText, decodeLogs, GNSS_HEADER, gnssRows, IMU_HEADER, imuRows, ready, testStore, type TestStore,
 } from '../support'; // prettier-ignore
 
+jest.setTimeout(60_000);
+
 let at: TestStore;
 beforeEach(() => {
   at = testStore();

@@ -17,6 +17,8 @@ import {
   type TestStore,
 } from '../support';
 
+jest.setTimeout(60_000);
+
 let at: TestStore;
 let plain: RecordingColumns;
 const IMU = imuRows();

@@ -11,6 +11,8 @@ import {
   type TestStore,
 } from '../support';
 
+jest.setTimeout(60_000);
+
 let at: TestStore;
 beforeEach(() => {
   at = testStore();

@@ -3,6 +3,8 @@ import { loadRecording } from '@/workers/recordings/load';
 import { storeKeys } from '@/workers/store/types';
 import { cleanLogs, decodeLogs, ready, testHelpers, testStore, type TestStore } from '../support';
 
+jest.setTimeout(60_000);
+
 let at: TestStore;
 beforeEach(() => {
   at = testStore();
