@@ -21,7 +21,7 @@ export interface BenchLink {
 }
 
 /** Address of a bench. A part that is left out is not written. */
-export function benchHref(link: BenchLink): string {
+export function benchHref(link: BenchLink): `/bench/${string}` {
   const query = benchQuery(link);
   const text = Object.entries(query)
     .filter((entry): entry is [string, string] => entry[1] !== undefined)

@@ -1,0 +1,79 @@
+import { useEffect, useState } from 'react';
+import { Button } from '@/components/ui/Button';
+import { useToast } from '@/components/ui/ToastProvider';
+import { useLive } from '@/hooks/use-live-run';
+import { useCan } from '@/hooks/session';
+import { SaveDialog } from './SaveDialog';
+import type { Bench } from './use-bench';
+
+/** Undo, redo, pin, save. Ctrl or ⌘ with Z and Shift Z undo and redo. `compact`: icons and Save, for the phone. */
+export function BenchActions({ bench, compact }: { bench: Bench; compact?: boolean }) {
+  const [saving, setSaving] = useState(false);
+  const toast = useToast();
+  const maySave = useCan('set:draft');
+  const done = useLive(bench.live, (state) => state.phase === 'done');
+  useUndoKeys(bench);
+  const pin = () => {
+    bench.pinCurrent();
+    toast({ message: 'This run is the baseline now: later changes are seen against it.' });
+  };
+  return (
+    <>
+      {bench.locked === null ? (
+        <>
+          <Button
+            label="Undo"
+            icon="undo"
+            iconOnly={compact}
+            disabled={!bench.canUndo}
+            reason="Nothing was changed yet."
+            onPress={bench.undo}
+          />
+          <Button
+            label="Redo"
+            icon="redo"
+            iconOnly={compact}
+            disabled={!bench.canRedo}
+            reason="Nothing was undone."
+            onPress={bench.redo}
+          />
+          <Button
+            label="Pin as baseline"
+            icon="pin"
+            iconOnly={compact}
+            disabled={!done}
+            reason="Wait until the run is done."
+            onPress={pin}
+          />
+        </>
+      ) : null}
+      <Button
+        label={compact ? 'Save' : 'Save version'}
+        kind="primary"
+        disabled={!maySave}
+        reason="Your role reads: an engineer saves versions."
+        onPress={() => setSaving(true)}
+      />
+      {saving ? <SaveDialog bench={bench} onClose={() => setSaving(false)} /> : null}
+    </>
+  );
+}
+
+function useUndoKeys({ undo, redo, locked }: Bench): void {
+  useEffect(() => {
+    if (typeof window === 'undefined' || !window.addEventListener || locked !== null) return;
+    const onKey = (event: KeyboardEvent) => {
+      if (!(event.ctrlKey || event.metaKey) || event.altKey) return;
+      const key = event.key.toLowerCase();
+      if (key !== 'z' && key !== 'y') return;
+      // A field that is being typed in undoes its own text.
+      const target = event.target as HTMLElement | null;
+      if (target && /^(INPUT|TEXTAREA|SELECT)$/.test(target.tagName)) return;
+      event.preventDefault();
+      if (key === 'y' || event.shiftKey) redo();
+      else undo();
+    };
+    window.addEventListener('keydown', onKey);
+    return () => window.removeEventListener('keydown', onKey);
+  }, [undo, redo, locked]);
+}

@@ -1,0 +1,75 @@
+import { useEffect, useState } from 'react';
+import { StyleSheet, View } from 'react-native';
+import { Screen } from '@/components/layout/Screen';
+import { useBreakpoint } from '@/components/layout/use-breakpoint';
+import { Figures } from '@/components/ui/Figures';
+import { useToast } from '@/components/ui/ToastProvider';
+import type { Run } from '@/shared/contracts/runs';
+import { formatDuration, formatNumber } from '@/shared/format';
+import { BenchActions } from './BenchActions';
+import type { BenchStart } from './bench-start';
+import { WIDE_VIEWS, type ViewId } from './chart-views';
+import { PhoneBench } from './PhoneBench';
+import { RunStatus } from './RunStatus';
+import { useBench } from './use-bench';
+import { useBenchAddress, type OwnQueries } from './use-bench-address';
+import { WideBench } from './WideBench';
+
+export interface BenchViewProps {
+  start: BenchStart;
+  /** Why nothing can be changed here; null: all can. */
+  locked: string | null;
+  /** The finished run that is shown to those who may start none. */
+  shown: Run | null;
+  own: OwnQueries;
+}
+
+/** The open bench. */
+export function BenchView({ start, locked, shown, own }: BenchViewProps) {
+  const { wide } = useBreakpoint();
+  const toast = useToast();
+  const bench = useBench(start, locked, shown);
+  const [view, setView] = useState<ViewId>(
+    () => WIDE_VIEWS.find((one) => one.id === start.view)?.id ?? 'overview',
+  );
+  useBenchAddress(bench, view, own);
+  const notes = start.notes.join(' ');
+  useEffect(() => {
+    if (notes) toast({ message: notes, tone: 'ochre' });
+  }, [notes, toast]);
+  const Body = wide ? WideBench : PhoneBench;
+  return (
+    <Screen
+      title={start.recording.name}
+      subtitle={
+        <View style={styles.lines}>
+          {wide ? (
+            <Figures variant="label" tone="soft">
+              {recordingWords(start)}
+            </Figures>
+          ) : null}
+          <RunStatus bench={bench} />
+        </View>
+      }
+      back={wide ? undefined : '/recordings'}
+      actions={<BenchActions bench={bench} compact={!wide} />}
+      width="full"
+      scroll={false}
+    >
+      <Body bench={bench} view={view} onView={setView} />
+    </Screen>
+  );
+}
+
+function recordingWords({ recording }: BenchStart): string {
+  const { health } = recording;
+  return [
+    recording.vehicleName,
+    recording.durationS === null ? null : formatDuration(recording.durationS),
+    health ? `${formatNumber(health.imu.rateHz)} Hz IMU, ${formatNumber(health.gnss.rateHz)} Hz GNSS` : null,
+  ]
+    .filter(Boolean)
+    .join(' · ');
+}
+
+const styles = StyleSheet.create({ lines: { gap: 0 } });

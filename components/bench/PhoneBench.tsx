@@ -1,0 +1,117 @@
+import { useState } from 'react';
+import { ScrollView, StyleSheet, View } from 'react-native';
+import { TimeChart } from '@/components/charts/TimeChart';
+import { useBreakpoint } from '@/components/layout/use-breakpoint';
+import { StripEditor } from '@/components/strip/StripEditor';
+import { useTheme } from '@/components/ui/ThemeProvider';
+import { hairline, radius, space } from '@/constants/theme';
+import { NoWindows, Track } from './ChartDeck';
+import { PHONE_CHARTS, type PhoneChart, type ViewId } from './chart-views';
+import { Findings } from './Findings';
+import { Headline } from './Headline';
+import { ParameterSheet } from './ParameterSheet';
+import { DriftGrowth, InnovationHistogram } from './QuietCharts';
+import { RunProblem, RunProgressLine } from './RunStatus';
+import { useSwipe } from './use-swipe';
+import { useTimeCharts } from './use-charts';
+import type { Bench } from './use-bench';
+import { ViewTabs } from './ViewTabs';
+
+/** Narrow: strip, one chart with a switcher, headline figures, and the parameters in a sheet of half the height. */
+export function PhoneBench({
+  bench,
+  view,
+  onView,
+}: {
+  bench: Bench;
+  view: ViewId;
+  onView: (view: ViewId) => void;
+}) {
+  const { height } = useBreakpoint();
+  const { palette } = useTheme();
+  const [open, setOpen] = useState(false);
+  const [chart, setChart] = useState<PhoneChart>(
+    () => PHONE_CHARTS.find((one) => one.view === view)?.id ?? 'coasting.horizontal',
+  );
+  const choose = (next: PhoneChart) => {
+    setChart(next);
+    onView(PHONE_CHARTS.find((one) => one.id === next)!.view);
+  };
+  const swipe = useSwipe((by) => {
+    const at = PHONE_CHARTS.findIndex((one) => one.id === chart);
+    const next = PHONE_CHARTS[at + by];
+    if (next) choose(next.id);
+  });
+  const sheetPx = Math.round(height * 0.46);
+  // With the sheet open the chart takes what is left above it.
+  const chartPx = open
+    ? Math.max(170, height - sheetPx - PHONE_CHROME_PX)
+    : Math.max(240, Math.round(height * 0.36));
+  const list = (
+    <>
+      {open ? null : (
+        <StripEditor
+          strip={bench.start.recording.strip}
+          height={84}
+          windows={bench.config.outages}
+          onChange={bench.locked === null ? bench.setOutages : undefined}
+          group={bench.group}
+        />
+      )}
+      <RunProgressLine bench={bench} />
+      <View style={[styles.card, { backgroundColor: palette.sheet, borderColor: palette.rule }]}>
+        <View ref={swipe}>
+          <ViewTabs views={PHONE_CHARTS} value={chart} onChange={choose} />
+        </View>
+        <View style={styles.chart}>
+          <OneChart bench={bench} chart={chart} height={chartPx} />
+        </View>
+      </View>
+      {open ? null : (
+        <>
+          <RunProblem bench={bench} />
+          <Headline bench={bench} columns={2} />
+          <Findings bench={bench} />
+        </>
+      )}
+    </>
+  );
+  return (
+    <View style={styles.fill}>
+      <ScrollView style={styles.fill} contentContainerStyle={styles.page}>
+        {list}
+      </ScrollView>
+      <View style={styles.sheet}>
+        <ParameterSheet bench={bench} open={open} onOpen={setOpen} height={sheetPx} />
+      </View>
+    </View>
+  );
+}
+
+function OneChart({ bench, chart, height }: { bench: Bench; chart: PhoneChart; height: number }) {
+  const charts = useTimeCharts(bench);
+  const hasWindows = bench.config.outages.length > 0;
+  if (chart === 'track') return <Track bench={bench} height={height} />;
+  if (chart === 'histogram.position' || chart === 'histogram.velocity')
+    return (
+      <InnovationHistogram
+        bench={bench}
+        group={chart === 'histogram.position' ? 'position' : 'velocity'}
+        height={height}
+      />
+    );
+  if (!hasWindows && (chart === 'growth' || chart === 'coasting.horizontal')) return <NoWindows />;
+  if (chart === 'growth') return <DriftGrowth bench={bench} height={height} />;
+  return <TimeChart key={chart} content={charts[chart]} group={bench.group} height={height} />;
+}
+
+/** Head, tabs and bottom bar around the chart while the sheet is open, px. */
+const PHONE_CHROME_PX = 250;
+
+const styles = StyleSheet.create({
+  fill: { flex: 1, minHeight: 0 },
+  page: { gap: space.m, paddingBottom: space.l },
+  card: { borderWidth: hairline, borderRadius: radius, overflow: 'hidden' },
+  chart: { padding: space.s, paddingRight: space.xs },
+  sheet: { marginHorizontal: -space.m },
+});

@@ -1,0 +1,85 @@
+/** Which charts there are, and how they are gathered into views: several stacked when wide, one at a time on the phone. */
+import type { ChartContent, TimeWindow } from '@/components/charts/model/layers';
+import type { CurvesSource } from './curves';
+import { innovationChart, nisChart } from './innovation-charts';
+import { biasChart, coastingChart, horizontalSigmaChart, sigmaChart } from './state-charts';
+
+export type ViewId = 'overview' | 'coasting' | 'innovations' | 'nis' | 'covariance' | 'biases' | 'track';
+
+export interface ViewSpec {
+  id: ViewId;
+  label: string;
+}
+export const WIDE_VIEWS: readonly ViewSpec[] = [
+  { id: 'overview', label: 'Overview' },
+  { id: 'coasting', label: 'Coasting' },
+  { id: 'innovations', label: 'Innovations' },
+  { id: 'nis', label: 'NIS' },
+  { id: 'covariance', label: 'Covariance' },
+  { id: 'biases', label: 'Biases' },
+  { id: 'track', label: 'Track' },
+];
+
+/** What a phone shows one at a time; `view` is the wide view that it belongs to. */
+export const PHONE_CHARTS = [
+  { id: 'coasting.horizontal', label: 'Coasting', view: 'coasting' },
+  { id: 'innovation.position', label: 'Innovation, position', view: 'innovations' },
+  { id: 'innovation.velocity', label: 'Innovation, velocity', view: 'innovations' },
+  { id: 'nis.position', label: 'NIS, position', view: 'nis' },
+  { id: 'nis.velocity', label: 'NIS, velocity', view: 'nis' },
+  { id: 'sigma.position', label: 'Position σ', view: 'covariance' },
+  { id: 'sigma.velocity', label: 'Velocity σ', view: 'covariance' },
+  { id: 'sigma.attitude', label: 'Attitude σ', view: 'covariance' },
+  { id: 'bias.gyro', label: 'Gyro bias', view: 'biases' },
+  { id: 'bias.accel', label: 'Accelerometer bias', view: 'biases' },
+  { id: 'track', label: 'Track', view: 'track' },
+  { id: 'growth', label: 'Drift growth', view: 'coasting' },
+  { id: 'histogram.position', label: 'Distribution, position', view: 'innovations' },
+  { id: 'histogram.velocity', label: 'Distribution, velocity', view: 'innovations' },
+] as const satisfies readonly { id: string; label: string; view: ViewId }[];
+export type PhoneChart = (typeof PHONE_CHARTS)[number]['id'];
+
+export type TimeCharts = ReturnType<typeof makeTimeCharts>;
+
+/** All charts over time of a bench; made once, they read the curves at each drawing. */
+export function makeTimeCharts(source: CurvesSource, windows: () => readonly TimeWindow[]) {
+  return {
+    'innovation.position': innovationChart(source, 'position', windows),
+    'innovation.velocity': innovationChart(source, 'velocity', windows),
+    'nis.position': nisChart(source, 'position', windows),
+    'nis.velocity': nisChart(source, 'velocity', windows),
+    'sigma.horizontal': horizontalSigmaChart(source, windows),
+    'sigma.position': sigmaChart(source, 'position', windows),
+    'sigma.velocity': sigmaChart(source, 'velocity', windows),
+    'sigma.attitude': sigmaChart(source, 'attitude', windows),
+    'bias.gyro': biasChart(source, 'gyro', windows),
+    'bias.accel': biasChart(source, 'accel', windows),
+    'coasting.horizontal': coastingChart(source, 'horizontal', windows),
+    'coasting.vertical': coastingChart(source, 'vertical', windows),
+  } satisfies Record<string, ChartContent>;
+}
+
+/** Charts over time of a wide view, top to bottom. Without a window there is nothing to coast through. */
+export function chartsOf(view: ViewId, hasWindows: boolean): (keyof TimeCharts)[] {
+  switch (view) {
+    case 'overview':
+      return [
+        'innovation.position',
+        'nis.position',
+        'sigma.horizontal',
+        hasWindows ? 'coasting.horizontal' : 'innovation.velocity',
+      ];
+    case 'coasting':
+      return hasWindows ? ['coasting.horizontal', 'coasting.vertical'] : [];
+    case 'innovations':
+      return ['innovation.position', 'innovation.velocity'];
+    case 'nis':
+      return ['nis.position', 'nis.velocity'];
+    case 'covariance':
+      return ['sigma.position', 'sigma.velocity', 'sigma.attitude'];
+    case 'biases':
+      return ['bias.gyro', 'bias.accel'];
+    case 'track':
+      return [];
+  }
+}

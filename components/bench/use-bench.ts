@@ -1,0 +1,183 @@
+/** The state of an open bench: what is set, its history, its live run, the baseline and its ghost, the shared time axis. */
+import { useCallback, useEffect, useMemo, useState, useSyncExternalStore } from 'react';
+import type { Outage, Run, RunSummary } from '@/shared/contracts/runs';
+import { ChartGroup } from '@/components/charts/chart-group';
+import type { LiveController } from '@/hooks/live/live-controller';
+import { useLive, useLiveRun } from '@/hooks/use-live-run';
+import { pinnedName, type Baseline, type BenchConfig, type BenchStart } from './bench-start';
+import type { CurvesSource } from './curves';
+import { GhostStore, ghostKey, type Ghost } from './ghost-store';
+import { commit, redo, startHistory, undo, type History } from './history';
+import { writePath, type ParameterValue } from './parameter-path';
+
+export interface Bench {
+  start: BenchStart;
+  config: BenchConfig;
+  /** `settled` false: still dragging. */
+  setParameter: (path: string, value: ParameterValue, settled: boolean) => void;
+  /** Several at once, as one step. */
+  setParameters: (changes: readonly { path: string; value: ParameterValue }[]) => void;
+  setOutages: (outages: readonly Outage[], settled: boolean) => void;
+  canUndo: boolean;
+  canRedo: boolean;
+  undo: () => void;
+  redo: () => void;
+  live: LiveController;
+  group: ChartGroup;
+  source: CurvesSource;
+  baseline: Baseline;
+  /** The baseline's figures for the same windows; null while they are not known. */
+  baselineSummary: RunSummary | null;
+  pinCurrent: () => void;
+  /** Why nothing can be changed; null: all can. */
+  locked: string | null;
+}
+
+/** After the last change of windows or parameters the ghost is computed anew, ms. */
+const GHOST_DELAY_MS = 350;
+
+/** `shown`: the finished run to show to a person who may start none. */
+export function useBench(start: BenchStart, locked: string | null, shown: Run | null): Bench {
+  const [history, setHistory] = useState<History<BenchConfig>>(() =>
+    startHistory(shown ? { parameters: shown.parameters, outages: shown.outages } : start.config),
+  );
+  const [baseline, setBaseline] = useState<Baseline>(start.baseline);
+  const live = useLiveRun();
+  const { strip } = start.recording;
+  const [group] = useState(() => new ChartGroup([strip.startS, strip.endS]));
+  const config = history.present;
+  const settled = history.open === null;
+
+  useOwnRuns(live, start.recording.id, config, settled, locked, shown);
+  const ghosts = useGhost(live, start.recording.id, config, settled, baseline, locked);
+  const ghost = useSyncExternalStore(ghosts.subscribe, ghosts.getSnapshot);
+  useEffect(() => live.subscribeData(() => group.invalidate()), [live, group]);
+  useEffect(() => group.invalidate(), [config.outages, ghost, group]);
+
+  const source = useMemo<CurvesSource>(() => curvesSource(live, ghosts), [live, ghosts]);
+  const change = useCallback((key: string, wasSettled: boolean, make: (old: BenchConfig) => BenchConfig) => {
+    setHistory((old) => commit(old, make(old.present), key, wasSettled));
+  }, []);
+  const setParameter = useCallback(
+    (path: string, value: ParameterValue, wasSettled: boolean) =>
+      change(path, wasSettled, (old) => ({ ...old, parameters: writePath(old.parameters, path, value) })),
+    [change],
+  );
+  const setParameters = useCallback<Bench['setParameters']>(
+    (changes) =>
+      change(changes.map(({ path }) => path).join(), true, (old) => ({
+        ...old,
+        parameters: changes.reduce((made, { path, value }) => writePath(made, path, value), old.parameters),
+      })),
+    [change],
+  );
+  const setOutages = useCallback(
+    (outages: readonly Outage[], wasSettled: boolean) =>
+      change('windows', wasSettled, (old) => ({ ...old, outages })),
+    [change],
+  );
+  const pinCurrent = useCallback(() => {
+    const { summaryRequest, summaryRunId, phase } = live.state;
+    if (phase !== 'done' || !summaryRequest || !summaryRunId) return;
+    setBaseline({ name: pinnedName(null), parameters: config.parameters, runId: summaryRunId });
+  }, [live, config.parameters]);
+
+  return {
+    start,
+    config,
+    setParameter,
+    setParameters,
+    setOutages,
+    canUndo: history.past.length > 0,
+    canRedo: history.future.length > 0,
+    undo: useCallback(() => setHistory(undo), []),
+    redo: useCallback(() => setHistory(redo), []),
+    live,
+    group,
+    source,
+    baseline,
+    baselineSummary: comparable(ghost, baseline, config),
+    pinCurrent,
+    locked,
+  };
+}
+
+/** The newest finished summary; kept while a newer run is on its way. */
+export const useSummary = (bench: Bench): RunSummary | null => useLive(bench.live, (state) => state.summary);
+
+function comparable(ghost: Ghost | null, baseline: Baseline, config: BenchConfig): RunSummary | null {
+  return ghost && ghost.key === ghostKey(baseline.parameters, config.outages) ? ghost.summary : null;
+}
+
+function useOwnRuns(
+  live: LiveController,
+  recordingId: string,
+  config: BenchConfig,
+  settled: boolean,
+  locked: string | null,
+  shown: Run | null,
+): void {
+  const [benchId] = useState(makeId);
+  useEffect(() => {
+    if (shown) void live.show(shown);
+  }, [live, shown]);
+  useEffect(() => {
+    if (locked !== null) return;
+    const { parameters, outages } = config;
+    live.change({ recordingId, parameters, outages: [...outages], benchId }, settled);
+  }, [live, recordingId, config, settled, benchId, locked]);
+}
+
+function useGhost(
+  live: LiveController,
+  recordingId: string,
+  config: BenchConfig,
+  settled: boolean,
+  baseline: Baseline,
+  locked: string | null,
+): GhostStore {
+  const [ghosts] = useState(() => new GhostStore());
+  const [benchId] = useState(makeId);
+  const second = useLiveRun();
+  useEffect(() => {
+    const key = ghostKey(baseline.parameters, config.outages);
+    const adopt = () => ghosts.adopt(live, key) || ghosts.adopt(second, key);
+    if (adopt()) return;
+    const stop = [live.subscribe(adopt), second.subscribe(adopt)];
+    // The bench's own run brings it where its parameters are the baseline's.
+    const own = ghostKey(config.parameters, config.outages) === key;
+    const timer =
+      own || !settled || locked !== null
+        ? null
+        : setTimeout(() => {
+            const { parameters } = baseline;
+            second.change({ recordingId, parameters, outages: [...config.outages], benchId });
+          }, GHOST_DELAY_MS);
+    return () => {
+      if (timer) clearTimeout(timer);
+      stop.forEach((unsubscribe) => unsubscribe());
+    };
+  }, [ghosts, live, second, baseline, config, settled, recordingId, benchId, locked]);
+  return ghosts;
+}
+
+function curvesSource(live: LiveController, ghosts: GhostStore): CurvesSource {
+  return {
+    curves: () => {
+      const { current, previous } = live.data;
+      const ghost = ghosts.current?.data ?? null;
+      return { current, previous, ghost: ghost === current ? null : ghost };
+    },
+    summary: () => live.state.summary,
+  };
+}
+
+/** A random id; browsers give randomUUID on https and localhost only. */
+function makeId(): string {
+  if (typeof crypto.randomUUID === 'function') return crypto.randomUUID();
+  const bytes = crypto.getRandomValues(new Uint8Array(16));
+  bytes[6] = (bytes[6]! & 0x0f) | 0x40;
+  bytes[8] = (bytes[8]! & 0x3f) | 0x80;
+  const hex = [...bytes].map((byte) => byte.toString(16).padStart(2, '0')).join('');
+  return hex.replace(/^(.{8})(.{4})(.{4})(.{4})(.{12})$/, '$1-$2-$3-$4-$5');
+}
