@@ -114,9 +114,12 @@ export class MeasurementUpdate {
         const at = j * MAX_ROWS;
         reduced[row + j] = p[row + j]! - ka * ph[at]! - kb * ph[at + 1]! - kc * ph[at + 2]!;
       }
-      let a = ka * r[0]!;
-      let b = kb * r[1]!;
-      let c = kc * r[2]!;
+    }
+    for (let i = 0; i < STATES; i += 1) {
+      const row = i * STATES;
+      let a = gain[i * MAX_ROWS]! * r[0]!;
+      let b = gain[i * MAX_ROWS + 1]! * r[1]!;
+      let c = gain[i * MAX_ROWS + 2]! * r[2]!;
       for (let n = 0; n < columnCount; n += 1) {
         const j = columns[n]!;
         const value = reduced[row + j]!;

@@ -311,7 +311,7 @@ export class Propagation {
     for (let i = GYRO_BIAS; i < STATES; i += 1)
       for (let j = GYRO_BIAS; j < STATES; j += 1)
         p[i * STATES + j] =
-          p[i * STATES + j]! * (i < ACCEL_BIAS ? gyro : accel) * (j < ACCEL_BIAS ? gyro : accel);
+          p[i * STATES + j]! * ((i < ACCEL_BIAS ? gyro : accel) * (j < ACCEL_BIAS ? gyro : accel));
   }
 
   /** Φ as a dense matrix (15×15, row by row) in `out`: for the smoother, the tests and study. */
