@@ -26,6 +26,8 @@ import { answerStarting } from './starting';
 
 /** How long jobs in hand and open connections may take to end, ms. */
 const GRACE_MS = 4_000;
+/** A person thinks for longer than Node's five seconds between two clicks. */
+const KEEP_ALIVE_MS = 65_000;
 
 export interface RunningServer {
   /** Where it listens. */

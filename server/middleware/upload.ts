@@ -87,19 +87,18 @@ function readBody(ctx: Context, req: Request, folder: string): Promise<void> {
     const { res } = req;
     if (!res) throw new Error('A request without its response.');
     receive(req, res, (error: unknown) => {
-      if (!error) return resolve();
-      reject(
-        req.destroyed || isCut(error)
-          ? badRequest('The upload was cut short. Nothing of it was kept; send it again.')
-          : error,
-      );
+      if (error) reject(isCut(error, req) ? badRequest(CUT_SHORT) : error);
+      else resolve();
     });
   });
 }
 
-const isCut = (error: unknown) =>
-  error instanceof Error &&
-  /Unexpected end of form|Request aborted|Malformed part header/i.test(error.message);
+const CUT_SHORT = 'The upload was cut short. Nothing of it was kept; send it again.';
+
+const isCut = (error: unknown, req: Request) =>
+  !(error instanceof multer.MulterError) &&
+  ((req.destroyed && !req.complete) ||
+    (error instanceof Error && /Unexpected end of form|Request aborted/i.test(error.message)));
 
 interface Stored {
   path: string;

@@ -25,17 +25,17 @@ export const sendDecode = (
 /** Puts a recording back to the start with `givenMap`, and queues it; what is under way for it is void. */
 export async function redecode(
   ctx: Context,
-  recording: Recording,
+  id: string,
   givenMap: ChannelMap | null,
   transaction: Transaction,
 ): Promise<void> {
-  await recording.update(
-    { ...UNDECODED, givenMap, generation: recording.generation + 1, instanceId: null },
-    { transaction },
-  );
+  const lock = transaction.LOCK.UPDATE;
+  const recording = await ctx.db.Recording.findByPk(id, { lock, transaction, rejectOnEmpty: true });
+  const generation = recording.generation + 1;
+  await recording.update({ ...UNDECODED, givenMap, generation, instanceId: null }, { transaction });
   await sendDecode(ctx, recording, transaction);
   transaction.afterCommit(() => {
-    void ctx.activeJobs.cancel(recording.id);
+    void ctx.activeJobs.cancel(id);
     announce(ctx, recording);
   });
 }
@@ -44,7 +44,7 @@ export async function redecode(
 export async function redecodeOf(ctx: Context, vehicleId: string, transaction: Transaction): Promise<void> {
   const where = { vehicleId, confirmedAt: { [Op.ne]: null }, deletedAt: null };
   for (const recording of await ctx.db.Recording.findAll({ where, transaction })) {
-    if (!recording.givenMap?.imu?.axes) await redecode(ctx, recording, recording.givenMap, transaction);
+    if (!recording.givenMap?.imu?.axes) await redecode(ctx, recording.id, recording.givenMap, transaction);
   }
 }
 
@@ -156,25 +156,17 @@ async function conclude(ctx: Context, recording: Recording, columns: Partial<Rec
 }
 
 function outcomeColumns(result: DecodeResult): Partial<Recording> {
-  switch (result.outcome) {
-    case 'ready': {
-      const { channelMap, startS, endS, hasReference, timeOrigin, health, strip, sha256 } = result;
-      const decoded = { channelMap, startS, endS, hasReference, timeOrigin, health, strip, sha256 };
-      return { status: 'ready', progress: 1, problems: [], previews: [], ...decoded };
-    }
-    case 'needs-mapping': {
-      const { channelMap, problems, previews } = result;
-      return { status: 'needs-mapping', progress: 1, channelMap, problems, previews };
-    }
-    case 'rejected':
-      return { status: 'rejected', progress: 1, problems: result.problems, previews: result.previews };
-  }
+  const { channelMap, previews } = result;
+  const ended = { status: result.outcome, progress: 1, channelMap, previews };
+  if (result.outcome !== 'ready') return { ...ended, problems: result.problems };
+  const { startS, endS, hasReference, timeOrigin, health, strip, sha256 } = result;
+  return { ...ended, problems: [], startS, endS, hasReference, timeOrigin, health, strip, sha256 };
 }
 
 /** What to tell people when trying again does not help; null: try again. */
 function problemOf(error: unknown, lastAttempt: boolean): IntakeProblem | null {
   const nowhere = { file: null, line: null, column: null };
-  if (error instanceof JobFailed) {
+  if (error instanceof JobFailed && (error.code !== 'worker-start' || lastAttempt)) {
     const remedy = 'Mend the file and upload it again, or correct the channel map.';
     return { ...nowhere, code: error.code, message: error.message, remedy };
   }

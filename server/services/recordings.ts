@@ -154,7 +154,7 @@ export async function changeRecording(
   const { name, notes, vehicleId } = recording;
   await ctx.db.transaction(async (transaction) => {
     await recording.update(patch, { transaction });
-    if (turned) await redecode(ctx, recording, recording.givenMap, transaction);
+    if (turned) await redecode(ctx, id, recording.givenMap, transaction);
     const detail = { before: { name, notes, vehicleId }, after: patch };
     await recordBy(ctx, actor, { action: 'recording.changed', subject: recording.name, detail }, transaction);
   });
@@ -171,8 +171,7 @@ export async function mapRecording(
 ): Promise<Recording> {
   const recording = await getRecording(ctx, actor, id);
   await ctx.db.transaction(async (transaction) => {
-    await recording.reload({ lock: { level: transaction.LOCK.UPDATE, of: ctx.db.Recording }, transaction });
-    await redecode(ctx, recording, map, transaction);
+    await redecode(ctx, id, map, transaction);
     await recordBy(
       ctx,
       actor,
