@@ -16,7 +16,7 @@ const FLAGS = [
   ...['--headless', '--no-sandbox', '--disable-gpu', '--disable-quic', '--no-first-run'],
   ...['--disable-background-networking', '--disable-component-update', '--disable-sync'],
 ];
-const WAIT_MS = 15_000;
+const WAIT_MS = 30_000;
 
 export const launchBrowser = (): Promise<Browser> =>
   chromium.launch({ executablePath: findChromium(console.log), args: FLAGS });
@@ -25,6 +25,8 @@ export interface PageOptions {
   viewport: ViewportName;
   theme?: ThemeName;
 }
+
+const openPages = new Map<Page, string>();
 
 /** A person's own window: cookies and storage are shared with nobody. Its errors are collected in `faults`. */
 export async function openWindow(
@@ -46,8 +48,16 @@ export async function openWindow(
   await context.addInitScript('globalThis.__name = (x) => x');
   const page = await context.newPage();
   const faults: string[] = [];
+  openPages.set(page, viewport);
+  page.on('close', () => openPages.delete(page));
   page.on('pageerror', (error) => faults.push(error.stack ?? error.message));
   return { page, faults };
+}
+
+/** Saves every open window under the name of a test that has just ended, well or not. */
+export async function pictureAll(folder: string, name: string): Promise<void> {
+  let count = 0;
+  for (const [page, viewport] of openPages) await picture(page, folder, `${name}-${++count}-${viewport}`);
 }
 
 /** Saves what a person sees as artifacts/<folder>/<name>.png, which git ignores. */

@@ -48,6 +48,11 @@ export class Person {
     return answer.json();
   }
 
+  /** The first page of a list. */
+  async list<T>(route: string): Promise<T[]> {
+    return ((await this.json('GET', route)) as { items: T[] }).items;
+  }
+
   /** Uploads paired logs and waits until they are decoded. */
   async upload(name: string, files: LogFiles): Promise<Recording> {
     const form = new FormData();
