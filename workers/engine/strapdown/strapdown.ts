@@ -8,20 +8,10 @@
  */
 import { EARTH_RATE } from '../geodesy';
 import { EngineError } from '../types';
-import { ANGLE, ANGLE_BEND, DURATION, VELOCITY_BEND, VELOCITY_INCREMENT } from './imu-intervals';
+import { DURATION } from './imu-intervals';
+import { formIncrements, sumIncrements } from './increments';
 import { GRAVITY, localEarth, MERIDIAN_PLUS_H, TRANSVERSE_PLUS_H } from './local-earth';
-import {
-  HEIGHT,
-  LAT,
-  LON,
-  NAV_ACCEL_BIAS,
-  NAV_GYRO_BIAS,
-  NAV_SIZE,
-  QUAT,
-  VD,
-  VE,
-  VN,
-} from './navigation-state';
+import { HEIGHT, LAT, LON, NAV_SIZE, QUAT, VD, VE, VN } from './navigation-state';
 
 export type Scheme = 'coning-sculling' | 'trapezoidal' | 'rectangular';
 
@@ -115,12 +105,13 @@ export class Strapdown {
    * Throws EngineError near a pole, where local level axes fail.
    */
   advance(interval: Float64Array, from: number, to: number): void {
+    const dt = interval[DURATION]! * (to - from);
     if (this.scheme === 'rectangular') {
-      this.sumIncrements(interval, from, to);
-      this.stepRectangular(interval[DURATION]! * (to - from));
+      sumIncrements(interval, from, to, this.nav, this.increment);
+      this.stepRectangular(dt);
     } else {
-      this.formIncrements(interval, from, to);
-      this.step(interval[DURATION]! * (to - from));
+      formIncrements(interval, from, to, this.nav, this.scheme === 'coning-sculling', this.increment);
+      this.step(dt);
     }
     const lat = this.nav[LAT]!;
     if (lat > MAX_LATITUDE_RAD || lat < -MAX_LATITUDE_RAD)
@@ -128,60 +119,6 @@ export class Strapdown {
         'near-pole',
         'The solution reached a latitude beyond 89.5°, where north and east cannot be told apart. Recordings next to a pole are not supported; check the position columns.',
       );
-  }
-
-  /**
-   * Rotation vector and velocity increment of a part of an interval, biases taken off. With rates linear in time over
-   * the interval, the part's own increments are share·Δ − shift·bend, and its coning and sculling integrals those of
-   * the whole times share³.
-   */
-  private formIncrements(interval: Float64Array, from: number, to: number): void {
-    const { nav, increment } = this;
-    const duration = interval[DURATION]!;
-    const share = to - from;
-    // Whole interval, biases taken off: angle a, velocity v; bends e and d.
-    const ax = interval[ANGLE]! - nav[NAV_GYRO_BIAS]! * duration;
-    const ay = interval[ANGLE + 1]! - nav[NAV_GYRO_BIAS + 1]! * duration;
-    const az = interval[ANGLE + 2]! - nav[NAV_GYRO_BIAS + 2]! * duration;
-    const vx = interval[VELOCITY_INCREMENT]! - nav[NAV_ACCEL_BIAS]! * duration;
-    const vy = interval[VELOCITY_INCREMENT + 1]! - nav[NAV_ACCEL_BIAS + 1]! * duration;
-    const vz = interval[VELOCITY_INCREMENT + 2]! - nav[NAV_ACCEL_BIAS + 2]! * duration;
-    const bent = this.scheme === 'coning-sculling' ? 1 : 0;
-    const ex = bent * interval[ANGLE_BEND]!;
-    const ey = bent * interval[ANGLE_BEND + 1]!;
-    const ez = bent * interval[ANGLE_BEND + 2]!;
-    const dx = bent * interval[VELOCITY_BEND]!;
-    const dy = bent * interval[VELOCITY_BEND + 1]!;
-    const dz = bent * interval[VELOCITY_BEND + 2]!;
-
-    const shift = to * (1 - to) - from * (1 - from);
-    const px = share * ax - shift * ex;
-    const py = share * ay - shift * ey;
-    const pz = share * az - shift * ez;
-    const ux = share * vx - shift * dx;
-    const uy = share * vy - shift * dy;
-    const uz = share * vz - shift * dz;
-
-    // Coning Δθ×e/6: the rotation vector of the part.
-    const sixth = (share * share * share) / 6;
-    increment[0] = px + sixth * (ay * ez - az * ey);
-    increment[1] = py + sixth * (az * ex - ax * ez);
-    increment[2] = pz + sixth * (ax * ey - ay * ex);
-
-    // Rotation compensation ((1−cos θ)/θ²) θ×Δv + ((θ−sin θ)/θ³) θ×(θ×Δv), coefficients by series.
-    const p2 = px * px + py * py + pz * pz;
-    const first = 0.5 - p2 / 24 + (p2 * p2) / 720;
-    const second = 1 / 6 - p2 / 120 + (p2 * p2) / 5040;
-    const cx = py * uz - pz * uy;
-    const cy = pz * ux - px * uz;
-    const cz = px * uy - py * ux;
-    // Sculling (Δθ×d + Δv×e)/6.
-    increment[3] =
-      ux + first * cx + second * (py * cz - pz * cy) + sixth * (ay * dz - az * dy + vy * ez - vz * ey);
-    increment[4] =
-      uy + first * cy + second * (pz * cx - px * cz) + sixth * (az * dx - ax * dz + vz * ex - vx * ez);
-    increment[5] =
-      uz + first * cz + second * (px * cy - py * cx) + sixth * (ax * dy - ay * dx + vx * ey - vy * ex);
   }
 
   /** One step of `dt` s with the increments formed. */
@@ -311,17 +248,6 @@ export class Strapdown {
     nav[QUAT + 1] = n1 * scale;
     nav[QUAT + 2] = n2 * scale;
     nav[QUAT + 3] = n3 * scale;
-  }
-
-  /** For study: increments as they stand, no compensation of any kind. */
-  private sumIncrements(interval: Float64Array, from: number, to: number): void {
-    const { nav, increment } = this;
-    const share = to - from;
-    for (let i = 0; i < 3; i += 1) {
-      increment[i] = share * (interval[ANGLE + i]! - nav[NAV_GYRO_BIAS + i]! * interval[DURATION]!);
-      increment[i + 3] =
-        share * (interval[VELOCITY_INCREMENT + i]! - nav[NAV_ACCEL_BIAS + i]! * interval[DURATION]!);
-    }
   }
 
   /** For study: attitude, gravity and Coriolis of the step's start, position with the velocity of its end. */
