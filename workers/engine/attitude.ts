@@ -5,14 +5,17 @@
  */
 import { wrapAngle } from './geodesy';
 
+/** Local names: a global looked up in each call costs more than the call. */
+const { atan2, hypot, sin, sqrt } = Math;
+
 /** Quaternion n←b from roll, pitch, yaw (rad). */
 export function quatFromEuler(roll: number, pitch: number, yaw: number, out: Float64Array): Float64Array {
   const cr = Math.cos(roll / 2);
-  const sr = Math.sin(roll / 2);
+  const sr = sin(roll / 2);
   const cp = Math.cos(pitch / 2);
-  const sp = Math.sin(pitch / 2);
+  const sp = sin(pitch / 2);
   const cy = Math.cos(yaw / 2);
-  const sy = Math.sin(yaw / 2);
+  const sy = sin(yaw / 2);
   out[0] = cr * cp * cy + sr * sp * sy;
   out[1] = sr * cp * cy - cr * sp * sy;
   out[2] = cr * sp * cy + sr * cp * sy;
@@ -31,11 +34,11 @@ export function eulerFromQuat(q: Float64Array, out: Float64Array): Float64Array 
   const differenceSin = q[3]! - q[1]!;
   const sumCos = q[0]! - q[2]!;
   const sumSin = q[3]! + q[1]!;
-  const high = Math.sqrt(differenceCos * differenceCos + differenceSin * differenceSin);
-  const low = Math.sqrt(sumCos * sumCos + sumSin * sumSin);
-  out[1] = 2 * Math.atan2(high, low) - Math.PI / 2;
-  const halfDifference = Math.atan2(differenceSin, differenceCos);
-  const halfSum = Math.atan2(sumSin, sumCos);
+  const high = sqrt(differenceCos * differenceCos + differenceSin * differenceSin);
+  const low = sqrt(sumCos * sumCos + sumSin * sumSin);
+  out[1] = 2 * atan2(high, low) - Math.PI / 2;
+  const halfDifference = atan2(differenceSin, differenceCos);
+  const halfSum = atan2(sumSin, sumCos);
   if (low < GIMBAL || high < GIMBAL) {
     out[0] = 0;
     out[2] = wrapAngle(2 * (low < GIMBAL ? halfDifference : halfSum));
@@ -111,8 +114,8 @@ export function quatFromRotationVector(x: number, y: number, z: number, out: Flo
     const s = 0.5 - a2 / 48 + (a2 * a2) / 3840;
     return set(out, 1 - a2 / 8 + (a2 * a2) / 384, s * x, s * y, s * z);
   }
-  const a = Math.sqrt(a2);
-  const s = Math.sin(a / 2) / a;
+  const a = sqrt(a2);
+  const s = sin(a / 2) / a;
   return set(out, Math.cos(a / 2), s * x, s * y, s * z);
 }
 const SMALL_ANGLE_2 = 1e-4;
@@ -121,8 +124,8 @@ const SMALL_ANGLE_2 = 1e-4;
 export function rotationVectorFromQuat(q: Float64Array, out: Float64Array): Float64Array {
   const sign = q[0]! < 0 ? -1 : 1;
   const w = q[0]! * sign;
-  const n = Math.hypot(q[1]!, q[2]!, q[3]!);
-  const k = n < 1e-9 ? 2 * sign : (2 * sign * Math.atan2(n, w)) / n;
+  const n = hypot(q[1]!, q[2]!, q[3]!);
+  const k = n < 1e-9 ? 2 * sign : (2 * sign * atan2(n, w)) / n;
   out[0] = k * q[1]!;
   out[1] = k * q[2]!;
   out[2] = k * q[3]!;
@@ -131,7 +134,7 @@ export function rotationVectorFromQuat(q: Float64Array, out: Float64Array): Floa
 
 /** Scales q to length one, in place. */
 export function quatNormalise(q: Float64Array): Float64Array {
-  const n = 1 / Math.sqrt(q[0]! * q[0]! + q[1]! * q[1]! + q[2]! * q[2]! + q[3]! * q[3]!);
+  const n = 1 / sqrt(q[0]! * q[0]! + q[1]! * q[1]! + q[2]! * q[2]! + q[3]! * q[3]!);
   return set(q, q[0]! * n, q[1]! * n, q[2]! * n, q[3]! * n);
 }
 

@@ -1,6 +1,9 @@
 /** Normal gravity of the WGS-84 ellipsoid. */
 import { EARTH_RATE, WGS84_A, WGS84_B, WGS84_E2, WGS84_F, WGS84_GM } from './geodesy';
 
+/** Local names: a global looked up in each call costs more than the call. */
+const { sin, sqrt } = Math;
+
 /** Normal gravity at the equator and at the poles, m/s² (NGA.STND.0036; the poles' to full digits by Moritz 2000's closed form). */
 export const GAMMA_EQUATOR = 9.78032533590389;
 export const GAMMA_POLE = 9.832184937863401;
@@ -13,9 +16,9 @@ const M = (EARTH_RATE * EARTH_RATE * WGS84_A * WGS84_A * WGS84_B) / WGS84_GM;
  * form up to 20 km.
  */
 export function normalGravity(latRad: number, heightM: number): number {
-  const s = Math.sin(latRad);
+  const s = sin(latRad);
   const s2 = s * s;
-  const surface = (GAMMA_EQUATOR * (1 + K * s2)) / Math.sqrt(1 - WGS84_E2 * s2);
+  const surface = (GAMMA_EQUATOR * (1 + K * s2)) / sqrt(1 - WGS84_E2 * s2);
   const x = heightM / WGS84_A;
   return surface * (1 - 2 * (1 + WGS84_F + M - 2 * WGS84_F * s2) * x + 3 * x * x);
 }
@@ -26,6 +29,6 @@ export function normalGravity(latRad: number, heightM: number): number {
  */
 export function normalGravityNorth(latRad: number, heightM: number): number {
   // γ_N = −(h/R)·∂γ/∂φ: the surface γ(φ) ≈ γ_e (1 + f* sin²φ), f* = (γ_p − γ_e)/γ_e.
-  return -NORTH_RATE * Math.sin(2 * latRad) * heightM;
+  return -NORTH_RATE * sin(2 * latRad) * heightM;
 }
 const NORTH_RATE = 8.1436e-9;

@@ -2,14 +2,10 @@
 import { equivalentDegrees, kindOfSlope } from './confidence';
 import type { AllanPoint } from './deviation';
 import { nonNegativeLeastSquares } from './nnls';
-import {
-  modelDeviation,
-  modelSlope,
-  TERM_NAMES,
-  unitVariance,
-  type TermName,
-  type TermValues,
-} from './terms';
+import { modelSlope, NO_TERMS, TERM_NAMES, unitVariance, type TermName, type TermValues } from './terms';
+
+/** Local names: a global looked up in each call costs more than the call. */
+const { abs, log, max, min, sqrt } = Math;
 
 export interface TermFit {
   values: TermValues;
@@ -19,7 +15,9 @@ export interface TermFit {
   deviance: number;
 }
 
-const NO_TERMS: TermValues = { quantisation: 0, white: 0, biasInstability: 0, rateRandomWalk: 0, ramp: 0 };
+/** A point counts as known to 3 % of its deviation at best: no five-term law fits a real sensor better. */
+const MOST_DEGREES = 555;
+const MOST_ROUNDS = 15;
 
 /**
  * Non-negative coefficients of the given terms by least squares on the variance, each point weighted by its degrees of
@@ -33,48 +31,47 @@ export function fitTerms(
   samples: number,
   terms: readonly TermName[] = TERM_NAMES,
 ): TermFit {
-  const variance = points.map((p) => p.deviation ** 2);
-  const model = [...variance];
-  let values = NO_TERMS;
-  const edf = new Float64Array(points.length);
-  points.forEach((p, i) => {
-    edf[i] = equivalentDegrees(kindOfSlope(measuredSlope(points, i)), samples + 1, p.m);
-  });
-  for (let round = 0; round < 12; round += 1) {
-    const weights = points.map((_, i) => Math.sqrt(edf[i]! / 2) / model[i]!);
-    const rows = points.map((p, i) => terms.map((term) => weights[i]! * unitVariance(term, p.tauS)));
-    const squares = nonNegativeLeastSquares(
-      rows,
-      variance.map((v, i) => weights[i]! * v),
-    );
-    const next: TermValues = { ...NO_TERMS };
+  const count = points.length;
+  const variance = Float64Array.from(points, (p) => p.deviation ** 2);
+  const basis = Float64Array.from(points.flatMap((p) => terms.map((term) => unitVariance(term, p.tauS))));
+  const edf = Float64Array.from(points, (p, i) =>
+    equivalentDegrees(kindOfSlope(measuredSlope(points, i)), samples + 1, p.m),
+  );
+  const model = variance.slice();
+  const weights = new Float64Array(count);
+  const values = { ...NO_TERMS };
+  for (let round = 0; round < MOST_ROUNDS; round += 1) {
+    for (let i = 0; i < count; i += 1) weights[i] = sqrt(trusted(edf[i]!) / 2) / model[i]!;
+    const squares = nonNegativeLeastSquares(basis, variance, weights, terms.length);
     terms.forEach((term, j) => {
-      next[term] = Math.sqrt(squares[j]!);
+      values[term] = sqrt(squares[j]!);
     });
-    const change = Math.max(
-      ...points.map((p, i) => {
-        const fitted = Math.max(modelDeviation(next, p.tauS) ** 2, 1e-12 * variance[i]!);
-        const moved = Math.abs(fitted / model[i]! - 1);
-        model[i] = fitted;
-        edf[i] = equivalentDegrees(kindOfSlope(modelSlope(next, p.tauS)), samples + 1, p.m);
-        return moved;
-      }),
-    );
-    values = next;
-    if (change < 1e-9) break;
+    let change = 0;
+    for (let i = 0; i < count; i += 1) {
+      let fitted = 0;
+      for (let j = 0; j < terms.length; j += 1) fitted += squares[j]! * basis[i * terms.length + j]!;
+      fitted = max(fitted, 1e-12 * variance[i]!);
+      change = max(change, abs(fitted / model[i]! - 1));
+      model[i] = fitted;
+      const { m, tauS } = points[i]!;
+      edf[i] = equivalentDegrees(kindOfSlope(modelSlope(values, tauS)), samples + 1, m);
+    }
+    if (change < 1e-4) break;
   }
   let deviance = 0;
-  for (let i = 0; i < points.length; i += 1) {
+  for (let i = 0; i < count; i += 1) {
     const ratio = variance[i]! / model[i]!;
-    deviance += edf[i]! * (ratio - 1 - Math.log(ratio));
+    deviance += trusted(edf[i]!) * (ratio - 1 - log(ratio));
   }
   return { values, edf, deviance };
 }
 
+const trusted = (edf: number) => min(edf, MOST_DEGREES);
+
 /** Slope of the measured variance in log–log between a point's neighbours. */
 function measuredSlope(points: readonly AllanPoint[], i: number): number {
-  const a = points[Math.max(i - 1, 0)]!;
-  const b = points[Math.min(i + 1, points.length - 1)]!;
+  const a = points[max(i - 1, 0)]!;
+  const b = points[min(i + 1, points.length - 1)]!;
   if (a === b) return -1;
-  return (2 * Math.log(b.deviation / a.deviation)) / Math.log(b.tauS / a.tauS);
+  return (2 * log(b.deviation / a.deviation)) / log(b.tauS / a.tauS);
 }

@@ -1,5 +1,8 @@
 /** The five noise terms of an inertial sensor and their parts of the Allan variance. */
 
+/** Local names: a global looked up in each call costs more than the call. */
+const { sqrt } = Math;
+
 export const TERM_NAMES = ['quantisation', 'white', 'biasInstability', 'rateRandomWalk', 'ramp'] as const;
 export type TermName = (typeof TERM_NAMES)[number];
 
@@ -8,6 +11,14 @@ export type TermName = (typeof TERM_NAMES)[number];
  * velocity random walk), bias instability B (u), rate random walk K (u/√s), ramp R (u/s).
  */
 export type TermValues = Record<TermName, number>;
+
+export const NO_TERMS: Readonly<TermValues> = {
+  quantisation: 0,
+  white: 0,
+  biasInstability: 0,
+  rateRandomWalk: 0,
+  ramp: 0,
+};
 
 const FLICKER = (2 * Math.LN2) / Math.PI;
 
@@ -29,7 +40,7 @@ export function unitVariance(term: TermName, tauS: number): number {
 
 /** Allan deviation of the terms together. */
 export function modelDeviation(values: TermValues, tauS: number): number {
-  return Math.sqrt(TERM_NAMES.reduce((sum, term) => sum + values[term] ** 2 * unitVariance(term, tauS), 0));
+  return sqrt(TERM_NAMES.reduce((sum, term) => sum + values[term] ** 2 * unitVariance(term, tauS), 0));
 }
 
 /** Slope of the terms' Allan variance in log–log at τ. */

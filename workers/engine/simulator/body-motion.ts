@@ -3,6 +3,9 @@ import { EARTH_RATE, WGS84_A, WGS84_E2 } from '../geodesy';
 import { normalGravity } from '../gravity';
 import type { Kinematics } from './motion';
 
+/** Local names: a global looked up in each call costs more than the call. */
+const { cos, sin, sqrt } = Math;
+
 /** Rates and forces at one instant. */
 export interface BodyMotion {
   /** Rate against inertial space in body axes, rad/s. */
@@ -37,10 +40,10 @@ export const newBodyMotion = (): BodyMotion => ({
  * mechanisation. Latitude in rad, height in m.
  */
 export function bodyMotion(k: Kinematics, lat: number, height: number, out: BodyMotion): BodyMotion {
-  const sl = Math.sin(lat);
-  const cl = Math.cos(lat);
+  const sl = sin(lat);
+  const cl = cos(lat);
   const w2 = 1 - WGS84_E2 * sl * sl;
-  const rn = WGS84_A / Math.sqrt(w2);
+  const rn = WGS84_A / sqrt(w2);
   const rm = (rn * (1 - WGS84_E2)) / w2;
   const { vn, ve, vd } = k;
   out.latRate = vn / (rm + height);
@@ -59,12 +62,12 @@ export function bodyMotion(k: Kinematics, lat: number, height: number, out: Body
   const inN = ieN + enN;
   const inD = ieD + enD;
 
-  const sr = Math.sin(k.roll);
-  const cr = Math.cos(k.roll);
-  const sp = Math.sin(k.pitch);
-  const cp = Math.cos(k.pitch);
-  const sy = Math.sin(k.yaw);
-  const cy = Math.cos(k.yaw);
+  const sr = sin(k.roll);
+  const cr = cos(k.roll);
+  const sp = sin(k.pitch);
+  const cp = cos(k.pitch);
+  const sy = sin(k.yaw);
+  const cy = cos(k.yaw);
   // Rows of b←n.
   const xN = cp * cy;
   const xE = cp * sy;

@@ -8,6 +8,9 @@ import { GaussMarkov } from './gauss-markov';
 import { TrackWalker, emptyReference, type Place } from './inverse';
 import type { Motion } from './motion';
 
+/** Local names: a global looked up in each call costs more than the call. */
+const { cos, floor, hypot, max, sin } = Math;
+
 export interface GnssOptions extends GnssErrors {
   rateHz: number;
   leverArmM: readonly [number, number, number];
@@ -92,8 +95,8 @@ export function antennaTrack(
     const vx = b.wy * lz - b.wz * ly;
     const vy = b.wz * lx - b.wx * lz;
     const vz = b.wx * ly - b.wy * lx;
-    const ieN = EARTH_RATE * Math.cos(walker.lat);
-    const ieD = -EARTH_RATE * Math.sin(walker.lat);
+    const ieN = EARTH_RATE * cos(walker.lat);
+    const ieD = -EARTH_RATE * sin(walker.lat);
     truth.velocityNed[0][k]! += turn(0, vx, vy, vz) + ieD * e;
     truth.velocityNed[1][k]! += turn(1, vx, vy, vz) - (ieD * n - ieN * d);
     truth.velocityNed[2][k]! += turn(2, vx, vy, vz) - ieN * e;
@@ -103,8 +106,8 @@ export function antennaTrack(
 
 function epochTimes(startS: number, endS: number, options: GnssOptions): Float64Array {
   const first = startS + (options.phaseS ?? 0);
-  const count = Math.floor((endS - first) * options.rateHz + 1e-6) + 1;
-  return Float64Array.from({ length: Math.max(count, 0) }, (_, k) => first + k / options.rateHz).filter(
+  const count = floor((endS - first) * options.rateHz + 1e-6) + 1;
+  return Float64Array.from({ length: max(count, 0) }, (_, k) => first + k / options.rateHz).filter(
     (t) => !options.outagesS.some(([from, to]) => t >= from && t < to),
   );
 }
@@ -179,7 +182,7 @@ function spoil(
 ): boolean {
   if (!(chance.uniform() < options.outlierShare)) return false;
   const [x, y, z] = [chance.normal(), chance.normal(), chance.normal()];
-  const scale = options.outlierSigmas / Math.hypot(x, y, z);
+  const scale = options.outlierSigmas / hypot(x, y, z);
   error[0]! += scale * x * sigma[0];
   error[1]! += scale * y * sigma[1];
   error[2]! += scale * z * sigma[2];

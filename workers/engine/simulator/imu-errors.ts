@@ -4,6 +4,9 @@ import type { ImuColumns } from '../types';
 import { GaussMarkov, MatchedRandomWalk } from './gauss-markov';
 import type { ImuModel } from './grades';
 
+/** Local names: a global looked up in each call costs more than the call. */
+const { max, min, round, sqrt } = Math;
+
 /** A recording with sensor errors, and the biases that were added (turn-on + in-run), at each sample; rad/s and m/s². */
 export interface SensedImu {
   imu: ImuColumns;
@@ -79,13 +82,13 @@ function senseAxis(perfect: ImuColumns, truth: Float64Array, errors: AxisErrors,
   const Wander = errors.wander === 'random-walk' ? MatchedRandomWalk : GaussMarkov;
   const wander = new Wander(errors.wanderSigma, errors.wanderTauS, random.split('wander'));
   for (let k = 0; k < n; k += 1) {
-    const dt = k === 0 ? timeS[Math.min(1, n - 1)]! - timeS[0]! || 1 : timeS[k]! - timeS[k - 1]!;
+    const dt = k === 0 ? timeS[min(1, n - 1)]! - timeS[0]! || 1 : timeS[k]! - timeS[k - 1]!;
     if (k > 0) wander.step(dt);
     bias[k] = turnOn + wander.value;
     const rate = (increments ? truth[k]! / dt : truth[k]!) * scale;
-    let sensed = rate + bias[k]! + (errors.whiteNoise / Math.sqrt(dt)) * random.normal();
-    sensed = Math.min(Math.max(sensed, -errors.range), errors.range);
-    if (errors.step > 0) sensed = Math.round(sensed / errors.step) * errors.step;
+    let sensed = rate + bias[k]! + (errors.whiteNoise / sqrt(dt)) * random.normal();
+    sensed = min(max(sensed, -errors.range), errors.range);
+    if (errors.step > 0) sensed = round(sensed / errors.step) * errors.step;
     values[k] = increments ? sensed * dt : sensed;
   }
   return { values, bias };

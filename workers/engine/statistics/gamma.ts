@@ -1,13 +1,16 @@
 /** The incomplete gamma function, on which the χ² and normal distributions stand. */
 
+/** Local names: a global looked up in each call costs more than the call. */
+const { abs, exp, log, sin, sqrt } = Math;
+
 /** Γ(x)'s logarithm for x > 0: Lanczos approximation (g = 7, n = 9; Godfrey 2001), rel 1e-14. */
 export function logGamma(x: number): number {
-  if (x < 0.5) return Math.log(Math.PI / Math.sin(Math.PI * x)) - logGamma(1 - x);
+  if (x < 0.5) return log(Math.PI / sin(Math.PI * x)) - logGamma(1 - x);
   const y = x - 1;
   let sum = LANCZOS[0]!;
   for (let i = 1; i < LANCZOS.length; i += 1) sum += LANCZOS[i]! / (y + i);
   const t = y + 7.5;
-  return HALF_LN_2PI + (y + 0.5) * Math.log(t) - t + Math.log(sum);
+  return HALF_LN_2PI + (y + 0.5) * log(t) - t + log(sum);
 }
 
 /**
@@ -31,7 +34,7 @@ export function incompleteGamma(a: number, x: number): { lower: number; upper: n
  * binomial probabilities (2000): the exponent is a deviance, not a difference of large terms.
  */
 export function poissonTerm(a: number, x: number): number {
-  return Math.exp(-stirlingError(a) - deviance(a, x)) / Math.sqrt(2 * Math.PI * a);
+  return exp(-stirlingError(a) - deviance(a, x)) / sqrt(2 * Math.PI * a);
 }
 
 const HALF_LN_2PI = 0.9189385332046728;
@@ -63,27 +66,27 @@ function continuedFraction(a: number, x: number): number {
     const an = -i * (i - a);
     b += 2;
     d = an * d + b;
-    if (Math.abs(d) < tiny) d = tiny;
+    if (abs(d) < tiny) d = tiny;
     c = b + an / c;
-    if (Math.abs(c) < tiny) c = tiny;
+    if (abs(c) < tiny) c = tiny;
     d = 1 / d;
     const step = d * c;
     h *= step;
-    if (Math.abs(step - 1) < 1e-16) break;
+    if (abs(step - 1) < 1e-16) break;
   }
   return h;
 }
 
 /** ln Γ(a+1) − [½ ln(2πa) + a ln a − a]. */
 function stirlingError(a: number): number {
-  if (a < 16) return logGamma(a + 1) - (a + 0.5) * Math.log(a) + a - HALF_LN_2PI;
+  if (a < 16) return logGamma(a + 1) - (a + 0.5) * log(a) + a - HALF_LN_2PI;
   const i2 = 1 / (a * a);
   return (1 / 12 - (1 / 360 - (1 / 1260 - (1 / 1680 - i2 / 1188) * i2) * i2) * i2) / a;
 }
 
 /** a·ln(a/x) + x − a, by a series where the two are close. */
 function deviance(a: number, x: number): number {
-  if (Math.abs(a - x) >= 0.1 * (a + x)) return a * Math.log(a / x) + x - a;
+  if (abs(a - x) >= 0.1 * (a + x)) return a * log(a / x) + x - a;
   const v = (a - x) / (a + x);
   let sum = (a - x) * v;
   let term = 2 * a * v;

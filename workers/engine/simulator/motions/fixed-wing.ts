@@ -4,6 +4,9 @@ import type { Kinematics, Motion, MotionOptions } from '../motion';
 import { newProfilePoint, RAMP_SLOPE, SmoothProfile } from '../profile';
 import { Route } from './route';
 
+/** Local names: a global looked up in each call costs more than the call. */
+const { abs, atan, atan2, cos, max, sin, tan } = Math;
+
 const CRUISE = 32; // m/s
 const PEAK_BANK = 0.65; // rad
 /** Nose above the path at cruise speed, rad. */
@@ -53,8 +56,8 @@ function schedule(
     if (route.chance(0.55)) {
       const angle = route.pickTurn(0.5, 4);
       const ramp = 2.5;
-      const most = (STANDARD_GRAVITY_M_S2 * Math.tan(route.between(0.3, PEAK_BANK))) / current;
-      const hold = Math.max(Math.abs(angle) / most - ramp, 1);
+      const most = (STANDARD_GRAVITY_M_S2 * tan(route.between(0.3, PEAK_BANK))) / current;
+      const hold = max(abs(angle) / most - ramp, 1);
       turnRate.rampTo(route.t, ramp, angle / (hold + ramp)).rampTo(route.t + ramp + hold, ramp, 0);
       route.advance(hold + 2 * ramp, current, angle);
     } else if (route.chance(0.5)) {
@@ -66,7 +69,7 @@ function schedule(
       route.advance(hold + 6, current);
     } else {
       const target = route.between(26, 40);
-      const length = Math.max((Math.abs(target - current) * RAMP_SLOPE) / 2, 4);
+      const length = max((abs(target - current) * RAMP_SLOPE) / 2, 4);
       speed.rampTo(route.t, length, target);
       route.advance(length, (current + target) / 2);
       current = target;
@@ -87,8 +90,8 @@ function flight(f: Flight): Motion {
     f.turnRate.at(t, r);
     f.incidence.at(t, i);
     const yaw = f.initialCourse + r.integral;
-    const c = Math.cos(yaw);
-    const s = Math.sin(yaw);
+    const c = cos(yaw);
+    const s = sin(yaw);
     out.vn = v.value * c;
     out.ve = v.value * s;
     out.vd = -w.value;
@@ -98,11 +101,11 @@ function flight(f: Flight): Motion {
     out.yaw = yaw;
     out.yawRate = r.value;
     const bank = (v.value * r.value) / STANDARD_GRAVITY_M_S2;
-    out.roll = Math.atan(bank);
+    out.roll = atan(bank);
     out.rollRate = (v.rate * r.value + v.value * r.rate) / STANDARD_GRAVITY_M_S2 / (1 + bank * bank);
     // Path angle atan2(climb, speed); both are 0 on the ground before the run.
     const path2 = v.value * v.value + w.value * w.value;
-    out.pitch = Math.atan2(w.value, v.value) + i.value;
+    out.pitch = atan2(w.value, v.value) + i.value;
     out.pitchRate = i.rate + (path2 === 0 ? 0 : (w.rate * v.value - w.value * v.rate) / path2);
   };
   return { kind: 'fixed-wing', evaluate, bandwidthHz: 2 };

@@ -3,6 +3,9 @@ import type { RandomSource } from '../../random';
 import type { Kinematics, Motion } from '../motion';
 import { newProfilePoint, type SmoothProfile } from '../profile';
 
+/** Local names: a global looked up in each call costs more than the call. */
+const { atan, cos, max, sin } = Math;
+
 export interface GroundVehicle {
   kind: Motion['kind'];
   /** Speed over the ground (m/s) and turn rate (rad/s). */
@@ -51,8 +54,8 @@ export function groundMotion(vehicle: GroundVehicle): Motion {
     sumWaves(vehicle.slope, v.integral, slope);
     sumWaves(vehicle.crossfall, v.integral, fall);
     const yaw = vehicle.initialCourse + r.integral;
-    const c = Math.cos(yaw);
-    const s = Math.sin(yaw);
+    const c = cos(yaw);
+    const s = sin(yaw);
     out.vn = speed * c;
     out.ve = speed * s;
     out.vd = -speed * slope.value;
@@ -61,9 +64,9 @@ export function groundMotion(vehicle: GroundVehicle): Motion {
     out.ad = -(v.rate * slope.value + speed * speed * slope.perMetre);
     out.yaw = yaw;
     out.yawRate = r.value;
-    const swing = vehicle.rockPerSpeed * Math.sin(rock * t);
-    const swingRate = vehicle.rockPerSpeed * rock * Math.cos(rock * t);
-    out.pitch = Math.atan(slope.value) + vehicle.squat * v.rate + 0.5 * swing * speed;
+    const swing = vehicle.rockPerSpeed * sin(rock * t);
+    const swingRate = vehicle.rockPerSpeed * rock * cos(rock * t);
+    out.pitch = atan(slope.value) + vehicle.squat * v.rate + 0.5 * swing * speed;
     out.pitchRate =
       (slope.perMetre * speed) / (1 + slope.value * slope.value) +
       vehicle.squat * v.curve +
@@ -76,7 +79,7 @@ export function groundMotion(vehicle: GroundVehicle): Motion {
       swingRate * speed +
       swing * v.rate;
   };
-  return { kind: vehicle.kind, evaluate, bandwidthHz: Math.max(vehicle.rockHz, 2) };
+  return { kind: vehicle.kind, evaluate, bandwidthHz: max(vehicle.rockHz, 2) };
 }
 
 function sumWaves(list: readonly Wave[], distance: number, out: { value: number; perMetre: number }): void {
@@ -84,7 +87,7 @@ function sumWaves(list: readonly Wave[], distance: number, out: { value: number;
   out.perMetre = 0;
   for (const wave of list) {
     const k = (2 * Math.PI) / wave.lengthM;
-    out.value += wave.amplitude * Math.sin(k * distance + wave.phase);
-    out.perMetre += wave.amplitude * k * Math.cos(k * distance + wave.phase);
+    out.value += wave.amplitude * sin(k * distance + wave.phase);
+    out.perMetre += wave.amplitude * k * cos(k * distance + wave.phase);
   }
 }

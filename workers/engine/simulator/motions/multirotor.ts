@@ -4,6 +4,9 @@ import type { Kinematics, Motion, MotionOptions } from '../motion';
 import { newProfilePoint, SmoothProfile } from '../profile';
 import { Route } from './route';
 
+/** Local names: a global looked up in each call costs more than the call. */
+const { atan, cos, max, sin } = Math;
+
 export interface MultirotorOptions extends MotionOptions {
   /** Coning of the airframe while it flies: half-angle (rad) and frequency (Hz). */
   coning?: { angleRad: number; hz: number };
@@ -52,8 +55,8 @@ function schedule(route: Route, durationS: number, course: Course): void {
       const top = route.between(3, 9);
       const ramp = 1.2 + 0.35 * top;
       const hold = route.between(2, 9);
-      course.north.rampTo(route.t, ramp, top * Math.cos(direction)).rampTo(route.t + ramp + hold, ramp, 0);
-      course.east.rampTo(route.t, ramp, top * Math.sin(direction)).rampTo(route.t + ramp + hold, ramp, 0);
+      course.north.rampTo(route.t, ramp, top * cos(direction)).rampTo(route.t + ramp + hold, ramp, 0);
+      course.east.rampTo(route.t, ramp, top * sin(direction)).rampTo(route.t + ramp + hold, ramp, 0);
       if (route.chance(0.5)) spin(route, course, ramp + hold);
       route.advance(2 * ramp + hold, (top * (ramp + hold)) / (2 * ramp + hold));
     } else if (route.chance(0.5)) {
@@ -98,15 +101,15 @@ function flight(
     course.turnRate.at(t, r);
     course.airborne.at(t, air);
     tilt(n, e, r, initialYaw, air, out);
-    const cs = Math.sin(cone * t);
-    const cc = Math.cos(cone * t);
+    const cs = sin(cone * t);
+    const cc = cos(cone * t);
     out.roll += coning.angleRad * air.value * cs;
     out.rollRate += coning.angleRad * (air.rate * cs + air.value * cone * cc);
     out.pitch += coning.angleRad * air.value * cc;
     out.pitchRate += coning.angleRad * (air.rate * cc - air.value * cone * cs);
     // Shaking along all three axes, out of step with one another.
-    const s1 = Math.sin(shake * t);
-    const c1 = Math.cos(shake * t);
+    const s1 = sin(shake * t);
+    const c1 = cos(shake * t);
     const v = shakeSpeed * air.value;
     const dv = shakeSpeed * air.rate;
     out.vn = n.value + 0.4 * v * s1;
@@ -116,7 +119,7 @@ function flight(
     out.vd = -w.value + v * s1;
     out.ad = -w.rate + dv * s1 + v * shake * c1;
   };
-  const bandwidthHz = Math.max(
+  const bandwidthHz = max(
     2,
     coning.angleRad > 0 ? coning.hz : 0,
     vibration.accelerationMPerS2 > 0 ? vibration.hz : 0,
@@ -129,8 +132,8 @@ type Point = ReturnType<typeof newProfilePoint>;
 /** Tilt that carries the horizontal acceleration and drag: pitch = −atan(forward ÷ g), roll = atan(right ÷ g). */
 function tilt(n: Point, e: Point, r: Point, initialYaw: number, air: Point, out: Kinematics): void {
   const yaw = initialYaw + r.integral;
-  const c = Math.cos(yaw);
-  const s = Math.sin(yaw);
+  const c = cos(yaw);
+  const s = sin(yaw);
   const pushN = n.rate + DRAG * n.value;
   const pushE = e.rate + DRAG * e.value;
   const pushNRate = n.curve + DRAG * n.rate;
@@ -143,8 +146,8 @@ function tilt(n: Point, e: Point, r: Point, initialYaw: number, air: Point, out:
   const ground = 1 - air.value;
   out.yaw = yaw;
   out.yawRate = r.value;
-  out.pitch = GROUND_PITCH * ground - Math.atan(forward);
+  out.pitch = GROUND_PITCH * ground - atan(forward);
   out.pitchRate = -GROUND_PITCH * air.rate - forwardRate / (1 + forward * forward);
-  out.roll = GROUND_ROLL * ground + Math.atan(right);
+  out.roll = GROUND_ROLL * ground + atan(right);
   out.rollRate = -GROUND_ROLL * air.rate + rightRate / (1 + right * right);
 }
