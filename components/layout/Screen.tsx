@@ -80,7 +80,7 @@ export function Screen({
   );
 }
 
-const widths = { text: 720, page: 1200 } as const;
+const widths = { text: 720, page: 1280 } as const;
 
 const styles = StyleSheet.create({
   fill: { flex: 1, minHeight: 0 },
@@ -93,7 +93,7 @@ const styles = StyleSheet.create({
     gap: space.m,
     minHeight: 48,
   },
-  title: { flexDirection: 'row', alignItems: 'center', gap: space.xs, flexShrink: 1 },
+  title: { flexDirection: 'row', alignItems: 'center', gap: space.xs, flex: 1, flexBasis: 180, minWidth: 0 },
   words: { flexShrink: 1 },
   phoneTitle: { fontSize: 24, lineHeight: 30 },
   actions: { flexDirection: 'row', flexWrap: 'wrap', gap: space.s },

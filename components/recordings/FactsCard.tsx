@@ -1,7 +1,7 @@
 import { Card } from '@/components/ui/Card';
 import { Facts, type Fact } from '@/components/ui/Facts';
 import { formatMoment } from '@/components/ui/format-day';
-import { formatDuration, formatNumber } from '@/shared/format';
+import { formatClock, formatDuration, formatNumber } from '@/shared/format';
 import type { Recording } from '@/shared/contracts/recordings';
 
 /** When, how long, on which clock. */
@@ -22,7 +22,7 @@ function factsOf(recording: Recording): Fact[] {
   if (recording.durationS !== null && recording.startS !== null && recording.endS !== null)
     facts.push({
       label: 'Length',
-      value: `${formatDuration(recording.durationS)}, from ${formatNumber(recording.startS, 5)} to ${formatNumber(recording.endS, 5)} s`,
+      value: `${formatDuration(recording.durationS)}, from ${formatClock(recording.startS)} to ${formatClock(recording.endS)}`,
     });
   if (health) {
     const given = [

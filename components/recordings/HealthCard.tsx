@@ -20,7 +20,7 @@ export function HealthCard({ health }: { health: HealthReport }) {
         <Text variant="heading" tone={verdict.tone}>
           {capital(verdict.word)}
         </Text>
-        <Text>{health.sentence}</Text>
+        {saysMore(health.sentence, verdict.word) ? <Text>{health.sentence}</Text> : null}
       </View>
       <View style={[styles.figures, { borderTopColor: palette.rule }]}>
         <Headline
@@ -111,6 +111,8 @@ export function times(intervals: readonly (readonly [number, number])[], shown =
 }
 
 const count = (n: number) => n.toLocaleString('en').replaceAll(',', '\u2009');
+/** "Usable." adds nothing under the heading "Usable". */
+const saysMore = (sentence: string, word: string) => sentence.replace(/\.$/, '').toLowerCase() !== word;
 const capital = (word: string) => word.charAt(0).toUpperCase() + word.slice(1);
 
 const SEVERITIES: Record<

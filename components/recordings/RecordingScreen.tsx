@@ -79,19 +79,20 @@ function Loaded({ recording }: { recording: Recording }) {
 
 function Actions({ recording }: { recording: Recording }) {
   const [open, setOpen] = useState<'edit' | 'delete' | null>(null);
+  const { extraWide } = useBreakpoint();
   const [mayWrite, mayDelete] = [useCan('recording:write'), useCan('recording:delete')];
   const close = () => setOpen(null);
   const mapped = recording.status === 'ready' || recording.status === 'rejected';
   return (
     <>
       {mayWrite ? (
-        <Button label="Name and vehicle" icon="edit" iconOnly onPress={() => setOpen('edit')} />
+        <Button label="Name and vehicle" icon="edit" iconOnly={!extraWide} onPress={() => setOpen('edit')} />
       ) : null}
       {mayWrite && mapped && recording.previews.length > 0 ? (
         <Button
           label="Correct the mapping"
           icon="map"
-          iconOnly
+          iconOnly={!extraWide}
           onPress={() => router.push(mappingPath(recording.id))}
         />
       ) : null}
@@ -146,7 +147,17 @@ function State({ recording }: { recording: Recording }): ReactNode {
     );
   if (recording.status === 'rejected')
     return (
-      <ProblemsCard title="The files could not be used" tone="vermilion" problems={recording.problems} />
+      <ProblemsCard title="The files could not be used" tone="vermilion" problems={recording.problems}>
+        {mayWrite ? (
+          <View style={styles.buttons}>
+            <Button
+              label="Upload the mended files"
+              icon="upload"
+              onPress={() => router.push('/recordings/upload')}
+            />
+          </View>
+        ) : null}
+      </ProblemsCard>
     );
   return null;
 }
@@ -154,6 +165,7 @@ function State({ recording }: { recording: Recording }): ReactNode {
 const styles = StyleSheet.create({
   strip: { paddingHorizontal: space.m, paddingVertical: space.m },
   stack: { gap: space.l },
+  buttons: { flexDirection: 'row', flexWrap: 'wrap', gap: space.s },
   columns: { flexDirection: 'row', gap: space.l, alignItems: 'flex-start' },
   main: { flex: 3, gap: space.l, minWidth: 0 },
   side: { flex: 2, gap: space.l, minWidth: 0 },

@@ -1,11 +1,12 @@
 import { zodResolver } from '@hookform/resolvers/zod';
 import { router } from 'expo-router';
-import { useCallback } from 'react';
+import { useCallback, useEffect } from 'react';
 import { useForm, type UseFormReturn } from 'react-hook-form';
 import { View } from 'react-native';
 import { z } from 'zod';
 import { FormChoice } from '@/components/forms/FormChoice';
 import { FormField } from '@/components/forms/FormField';
+import { showProblem } from '@/components/forms/problem';
 import { recordingPath } from '@/components/layout/paths';
 import { Screen } from '@/components/layout/Screen';
 import { Button } from '@/components/ui/Button';
@@ -29,7 +30,7 @@ const uploadSchema = z.object({
   vehicleId: z.string(),
   imu: file('IMU log'),
   gnss: file('GNSS log'),
-  reference: z.custom<File | undefined>(() => true),
+  reference: file('reference trajectory').optional(),
 });
 type UploadForm = z.infer<typeof uploadSchema>;
 
@@ -43,6 +44,11 @@ export function UploadScreen() {
   const done = useCallback((recording: Recording) => router.replace(recordingPath(recording.id)), []);
   const upload = useUpload(done);
   const sending = upload.state.phase === 'sending';
+  const { setError } = form;
+  useEffect(() => {
+    if (upload.state.phase === 'failed')
+      showProblem(upload.state.error, ['name', 'vehicleId', 'imu', 'gnss', 'reference'], setError);
+  }, [upload.state, setError]);
   const submit = form.handleSubmit(async ({ name, vehicleId, ...files }) => {
     await upload.start({ meta: { name, vehicleId: vehicleId || undefined }, ...files });
   });
@@ -108,6 +114,7 @@ function Files({ form, disabled }: { form: UseFormReturn<UploadForm>; disabled: 
         hint="A better trajectory of the same drive, against which drift is then measured."
         file={reference}
         onPick={take('reference')}
+        error={errors.reference?.message}
         optional
         disabled={disabled}
       />

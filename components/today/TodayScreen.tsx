@@ -25,9 +25,10 @@ export function TodayScreen() {
   const recordings = useRecordings();
   const sets = useParameterSets();
   const mayUpload = useCan('recording:write');
-  const latest = itemsOf(recordings.data);
+  const all = itemsOf(recordings.data);
+  const latest = all.filter((recording) => recording.status === 'ready');
   const drafts = itemsOf(sets.data).filter((set) => set.latest.state === 'draft');
-  const empty = recordings.isSuccess && latest.length === 0;
+  const empty = recordings.isSuccess && all.length === 0;
   return (
     <Screen
       title="Today"
@@ -52,17 +53,15 @@ export function TodayScreen() {
         />
       ) : null}
       {empty ? <FirstSteps mayUpload={mayUpload} /> : null}
+      {all.length > 0 ? <WaitingList waiting={waitingFor(all, mayUpload)} /> : null}
       {latest.length > 0 ? (
-        <>
-          <WaitingList waiting={waitingFor(latest, mayUpload)} />
-          <Section title="Latest recordings" link={<TextLink href="/recordings" label="All recordings" />}>
-            {latest.slice(0, SHOWN).map((recording) => (
-              <Cell key={recording.id}>
-                <RecordingCard recording={recording} />
-              </Cell>
-            ))}
-          </Section>
-        </>
+        <Section title="Latest recordings" link={<TextLink href="/recordings" label="All recordings" />}>
+          {latest.slice(0, SHOWN).map((recording) => (
+            <Cell key={recording.id}>
+              <RecordingCard recording={recording} />
+            </Cell>
+          ))}
+        </Section>
       ) : null}
       {sets.isError ? (
         <ErrorState

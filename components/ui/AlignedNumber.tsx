@@ -29,7 +29,7 @@ export function AlignedNumber({ value, digits = 3, tone = 'ink', signed }: Align
 export function alignDecimal(text: string): string {
   const point = text.includes('e') ? -1 : text.indexOf('.');
   const whole = point < 0 ? text.length : point;
-  return ' '.repeat(Math.max(0, WHOLE - whole)) + text;
+  return '\u00a0'.repeat(Math.max(0, WHOLE - whole)) + text;
 }
 
 const WHOLE = 5;

@@ -11,70 +11,95 @@ export interface ButtonProps extends Omit<PressableProps, 'children' | 'style' |
   label: string;
   kind?: ButtonKind;
   icon?: IconName;
-  /** Shows the icon alone; the label is then read to the screen reader only. */
+  /** Shows the icon alone; the label is then read out, and shown under the pointer or the focus. */
   iconOnly?: boolean;
   busy?: boolean;
   disabled?: boolean;
-  /** Why it is disabled: shown on hover and read by the screen reader. */
+  /** Why it is disabled: read out, and shown under the pointer or the focus, which it keeps taking for that. */
   reason?: string;
   /** Takes the whole width of its parent. */
   wide?: boolean;
 }
 
 /** 44 high at the least. While busy it keeps its width and takes no press. */
-export function Button({
-  label,
-  kind = 'quiet',
-  icon,
-  iconOnly,
-  busy,
-  disabled,
-  reason,
-  wide,
-  ...rest
-}: ButtonProps) {
+export function Button(props: ButtonProps) {
+  const { label, kind = 'quiet', icon, iconOnly, busy, disabled, reason, wide, onPress, ...rest } = props;
   const { palette } = useTheme();
   const [hovered, setHovered] = useState(false);
+  const [focused, setFocused] = useState(false);
+  const explained = Boolean(disabled && reason);
   const off = disabled || busy;
   const tone = textTone[kind];
   const filled = kind === 'primary';
-  const spoken = reason && disabled ? `${label}. ${reason}` : label;
+  const ground = filled ? palette.petrol : kind === 'plain' ? 'transparent' : palette.sheet;
+  const hint = explained ? reason : iconOnly ? label : undefined;
   return (
     <Pressable
       role="button"
-      aria-label={iconOnly || (reason && disabled) ? spoken : undefined}
+      aria-label={spokenLabel(props)}
       aria-busy={busy}
-      disabled={off}
+      aria-disabled={off || undefined}
+      {...rest}
+      disabled={off && !explained}
+      onPress={explained ? undefined : onPress}
       onHoverIn={() => setHovered(true)}
       onHoverOut={() => setHovered(false)}
-      {...(reason && disabled ? { title: reason } : null)}
-      {...rest}
+      onFocus={(event) => {
+        setFocused(true);
+        rest.onFocus?.(event);
+      }}
+      onBlur={(event) => {
+        setFocused(false);
+        rest.onBlur?.(event);
+      }}
       style={({ pressed }) => [
         styles.base,
         iconOnly ? styles.iconOnly : null,
         wide ? styles.wide : null,
         {
-          backgroundColor: filled ? palette.petrol : kind === 'plain' ? 'transparent' : palette.sheet,
+          backgroundColor: ground,
           borderColor: kind === 'plain' ? 'transparent' : filled ? palette.petrol : palette.rule,
         },
         hovered && !off && !filled ? { backgroundColor: palette.well } : null,
-        pressed || (hovered && filled && !off) ? styles.pressed : null,
-        disabled ? styles.disabled : null,
+        !off && (pressed || (hovered && filled)) ? styles.pressed : null,
       ]}
     >
-      {icon ? <Icon name={icon} size={20} tone={tone} /> : null}
-      {iconOnly ? null : (
-        <Text variant="label" strong tone={tone} style={styles.text}>
-          {label}
-        </Text>
-      )}
+      <View style={[styles.content, disabled ? styles.disabled : null]}>
+        {icon ? <Icon name={icon} size={20} tone={tone} /> : null}
+        {iconOnly ? null : (
+          <Text variant="label" strong tone={tone} style={styles.text}>
+            {label}
+          </Text>
+        )}
+      </View>
       {busy ? (
-        <View style={[styles.busy, { backgroundColor: filled ? palette.petrol : palette.sheet }]}>
+        <View style={[styles.busy, { backgroundColor: ground }]}>
           <ActivityIndicator size="small" color={toneColour(palette, tone)} />
         </View>
       ) : null}
+      {hint && (hovered || focused) ? <Hint text={hint} /> : null}
     </Pressable>
   );
+}
+
+/** Words under a button that shows none, or that cannot be pressed. The screen reader has them from the label. */
+function Hint({ text }: { text: string }) {
+  const { palette } = useTheme();
+  return (
+    <View pointerEvents="none" aria-hidden style={styles.hintPlace}>
+      <View style={[styles.hint, OWN_WIDTH, { backgroundColor: palette.ink }]}>
+        <Text variant="small" style={{ color: palette.sheet }}>
+          {text}
+        </Text>
+      </View>
+    </View>
+  );
+}
+
+function spokenLabel({ label, iconOnly, disabled, reason, ...rest }: ButtonProps): string | undefined {
+  const given = rest['aria-label'];
+  if (disabled && reason) return `${given ?? label}. ${reason}`;
+  return given ?? (iconOnly ? label : undefined);
 }
 
 const textTone: Record<ButtonKind, Tone> = {
@@ -84,6 +109,9 @@ const textTone: Record<ButtonKind, Tone> = {
   plain: 'petrol',
 };
 
+/** As wide as its words, not as its button; React Native's types do not know it. */
+const OWN_WIDTH: object = { width: 'max-content' };
+
 const styles = StyleSheet.create({
   base: {
     minHeight: touchTarget,
@@ -92,20 +120,21 @@ const styles = StyleSheet.create({
     paddingVertical: space.s,
     borderRadius: radius,
     borderWidth: hairline,
-    flexDirection: 'row',
     alignItems: 'center',
     justifyContent: 'center',
-    gap: space.s,
   },
+  content: { flexDirection: 'row', alignItems: 'center', justifyContent: 'center', gap: space.s },
   iconOnly: { paddingHorizontal: space.s },
   wide: { alignSelf: 'stretch' },
   text: { fontSize: 15, textAlign: 'center', flexShrink: 1 },
   pressed: { opacity: 0.88 },
   disabled: { opacity: 0.55 },
-  busy: {
-    ...StyleSheet.absoluteFill,
-    alignItems: 'center',
-    justifyContent: 'center',
+  busy: { ...StyleSheet.absoluteFill, alignItems: 'center', justifyContent: 'center', borderRadius: radius },
+  hintPlace: { position: 'absolute', top: '100%', right: 0, zIndex: 10, paddingTop: space.xs },
+  hint: {
     borderRadius: radius,
+    paddingHorizontal: space.s,
+    paddingVertical: space.xs,
+    maxWidth: 220,
   },
 });

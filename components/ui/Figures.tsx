@@ -6,7 +6,7 @@ export interface FiguresProps extends Omit<TextProps, 'children'> {
   children: string;
 }
 
-/** A line in which the digits stand in the mono face and the words beside them do not: "20 min 40 s". */
+/** A line in which measured numbers stand in the mono face and words, counts and clocks do not: "20 min 40 s". */
 export function Figures({ children, variant = 'label', ...rest }: FiguresProps) {
   return (
     <Text variant={variant} {...rest}>
@@ -28,13 +28,16 @@ export function Figures({ children, variant = 'label', ...rest }: FiguresProps) 
   );
 }
 
-/** Cuts a line into runs of digits and of everything else. */
+/** Cuts a line at its measured numbers: those that a unit follows. */
 export function splitFigures(line: string): { text: string; figure: boolean }[] {
   return line
-    .split(/([−+-]?\d[\d.,:\u2009]*)/)
-    .filter((text) => text !== '')
-    .map((text) => ({ text, figure: /\d/.test(text) }));
+    .split(MEASURED)
+    .map((text, at) => ({ text, figure: at % 2 === 1 }))
+    .filter(({ text }) => text !== '');
 }
+
+const UNITS = 's|ms|µs|min|h|Hz|kHz|B|kB|MB|GB|TB|%|°|rad|mm|m|km|g|mg|µg|kn|σ|×';
+const MEASURED = new RegExp(`([−+-]?\\d[\\d.\\u2009]*)(?=[ \\u00a0\\u202f](?:${UNITS})(?![a-z]))`);
 
 /** The mono face runs wider, so that it is set a little smaller beside words. */
 const mono = { title: 26, heading: 18, body: 15, label: 13, small: 11 } as const;

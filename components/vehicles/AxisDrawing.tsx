@@ -27,8 +27,8 @@ export function AxisDrawing({ axes, size = 176 }: { axes: AxisMap; size?: number
         strokeLinejoin="round"
       />
       <SvgText
-        x={156}
-        y={34}
+        x={168}
+        y={42}
         fill={palette.inkSoft}
         fontFamily={fonts.label}
         fontSize={typeScale.small}

@@ -4,7 +4,6 @@ import { CardLink } from '@/components/ui/CardLink';
 import { Figures } from '@/components/ui/Figures';
 import { Text } from '@/components/ui/Text';
 import { space } from '@/constants/theme';
-import { formatNumber } from '@/shared/format';
 import type { Vehicle } from '@/shared/contracts/vehicles';
 import { axesSentence } from './axes';
 import { KINDS } from './vehicle-words';
@@ -32,7 +31,9 @@ export function VehicleCard({ vehicle, current }: { vehicle: Vehicle; current?: 
 
 /** "0.4 m forward, 0 m right, −1.2 m down" */
 export const leverArmLine = (arm: Vehicle['leverArmM']): string =>
-  `${formatNumber(arm[0])} m forward, ${formatNumber(arm[1])} m right, ${formatNumber(arm[2])} m down`;
+  `${asTyped(arm[0])} m forward, ${asTyped(arm[1])} m right, ${asTyped(arm[2])} m down`;
+
+const asTyped = (value: number) => String(value).replace('-', '−');
 
 const styles = StyleSheet.create({
   head: {

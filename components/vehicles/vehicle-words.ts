@@ -5,5 +5,5 @@ export const KINDS: Record<Vehicle['kind'], string> = {
   marine: 'vessel or crawler',
   fixedWing: 'fixed-wing aircraft',
   multirotor: 'multirotor',
-  other: 'other',
+  other: 'other platform',
 };

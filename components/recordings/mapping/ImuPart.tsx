@@ -67,12 +67,14 @@ export function ImuPart({ control, headers }: PartProps) {
           <Pick control={control} name="imu.accelUnit" label="Accelerometer unit" options={ACCEL_UNITS} />
         </View>
         <View style={fields.row}>
-          <Pick control={control} name="imu.accelSign" label="Sign" options={SIGNS} />
-          <Pick control={control} name="imu.sampling" label="The values are" options={SAMPLING} />
+          <Pick control={control} name="imu.accelSign" label="Sign" options={SIGNS} roomy />
+          <Pick control={control} name="imu.sampling" label="The values are" options={SAMPLING} roomy />
         </View>
       </Group>
       <Group title="Sensor axes">
-        <Pick control={control} name="imu.axesFrom" label="The sensor is mounted" options={AXES_FROM} />
+        <View style={fields.row}>
+          <Pick control={control} name="imu.axesFrom" label="The sensor is mounted" options={AXES_FROM} />
+        </View>
         {axesFrom === 'own' ? (
           <Controller
             control={control}

@@ -1,6 +1,6 @@
 import { zodResolver } from '@hookform/resolvers/zod';
 import { useForm, useWatch, type Control } from 'react-hook-form';
-import { View } from 'react-native';
+import { StyleSheet, View } from 'react-native';
 import { FormProblem } from '@/components/forms/FormProblem';
 import { showProblem } from '@/components/forms/problem';
 import { Button } from '@/components/ui/Button';
@@ -37,9 +37,11 @@ export function MappingForm({ recording, onSubmit }: MappingFormProps) {
   const faults = Object.keys(formState.errors).filter((key) => key !== 'root') as FileRole[];
   return (
     <View style={{ gap: space.l }}>
-      {recording.previews.map((preview) => (
-        <FileCard key={preview.role} preview={preview} control={control} />
-      ))}
+      <View style={styles.files}>
+        {recording.previews.map((preview) => (
+          <FileCard key={preview.role} preview={preview} control={control} />
+        ))}
+      </View>
       <FormProblem title="The map was not taken" message={formState.errors.root?.message} />
       {faults.length > 0 ? (
         <Notice tone="vermilion" urgent title="Something is still to be said">
@@ -63,7 +65,7 @@ function FileCard({ preview, control }: { preview: FilePreview; control: Control
   const draft = useWatch({ control }) as MapDraft;
   const Part = PARTS[preview.role];
   return (
-    <Card title={TITLES[preview.role]} style={{ gap: space.xl }}>
+    <Card title={TITLES[preview.role]} style={styles.file}>
       {preview.missing.length > 0 ? (
         <Notice tone="ochre" title="Not found in the headers">
           {`${preview.missing.join(', ')}.`}
@@ -74,6 +76,11 @@ function FileCard({ preview, control }: { preview: FilePreview; control: Control
     </Card>
   );
 }
+
+const styles = StyleSheet.create({
+  files: { flexDirection: 'row', flexWrap: 'wrap', gap: space.l, alignItems: 'flex-start' },
+  file: { flexGrow: 1, flexShrink: 1, flexBasis: 520, minWidth: 0, maxWidth: '100%', gap: space.xl },
+});
 
 const PARTS = { imu: ImuPart, gnss: GnssPart, reference: ReferencePart };
 const TITLES: Record<FileRole, string> = { imu: 'IMU file', gnss: 'GNSS file', reference: 'Reference file' };

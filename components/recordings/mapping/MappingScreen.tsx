@@ -57,7 +57,7 @@ function Body({ recording, onSubmit }: BodyProps) {
     );
   return (
     <>
-      {loaded.problems.length > 0 ? (
+      {loaded.status === 'rejected' ? (
         <ProblemsCard title="What stopped the intake" tone="ochre" problems={loaded.problems} />
       ) : null}
       <MappingForm recording={loaded} onSubmit={onSubmit} />

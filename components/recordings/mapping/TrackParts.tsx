@@ -106,7 +106,7 @@ export function SigmaPart({ control, headers, of }: PartProps & { of: 'positionS
   return (
     <Group title={title}>
       <View style={fields.row}>
-        <Pick control={control} name={`gnss.${of}.shape`} label="Given as" options={SIGMA_SHAPES} />
+        <Pick control={control} name={`gnss.${of}.shape`} label="Given as" options={SIGMA_SHAPES} roomy />
         {shape === 'none' ? null : (
           <Pick control={control} name={`gnss.${of}.unit`} label="Accuracy unit" options={units} />
         )}

@@ -13,6 +13,7 @@ export interface PartProps {
 export const fields = StyleSheet.create({
   row: { flexDirection: 'row', flexWrap: 'wrap', gap: space.m, alignItems: 'flex-start' },
   cell: { flexGrow: 1, flexShrink: 1, flexBasis: 150, minWidth: 0 },
+  roomy: { flexBasis: 250 },
   group: { gap: space.m },
 });
 
@@ -55,12 +56,14 @@ export interface PickProps<V extends string> {
   label: string;
   options: readonly { value: V; label: string }[];
   hint?: string;
+  /** For long options: takes the phone's whole width. */
+  roomy?: boolean;
 }
 
 /** Picks one of a few meanings. */
-export function Pick<V extends string>({ control, name, label, options, hint }: PickProps<V>) {
+export function Pick<V extends string>({ control, name, label, options, hint, roomy }: PickProps<V>) {
   return (
-    <View style={fields.cell}>
+    <View style={[fields.cell, roomy ? fields.roomy : null]}>
       <FormChoice control={control} name={name} label={label} options={options} hint={hint} />
     </View>
   );
