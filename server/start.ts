@@ -60,7 +60,7 @@ async function open(
   }
   const log = pino({ level: config.logLevel, base: null, timestamp: pino.stdTimeFunctions.isoTime });
   const clock = () => new Date();
-  const server = http.createServer(answerStarting);
+  const server = http.createServer({ keepAliveTimeout: KEEP_ALIVE_MS }, answerStarting);
   await listen(server, config); // first, so that a busy port is told before anything else is touched
   closers.push(async () => void server.close());
 
@@ -109,8 +109,8 @@ async function open(
   if (config.demo) await seedDemo(ctx);
   void keepRecovering(ctx);
   server.off('request', answerStarting);
-  live.attach(server, ctx, sessions);
   server.on('request', createApp(ctx, sessions));
+  live.attach(server, ctx, sessions); // after the application: it takes its own requests out of those before it
   const { port } = server.address() as AddressInfo;
   const url = `http://${config.host.includes(':') ? `[${config.host}]` : config.host}:${port}`;
   log.info({ url, instance: instance.id }, 'listening');

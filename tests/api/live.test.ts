@@ -21,6 +21,12 @@ describe('the live socket', () => {
     live.close();
   });
 
+  it('works where a proxy lets no websocket through', async () => {
+    const live = await connectLive(await buildMember(api, 'viewer'), {}, 'polling');
+    expect(await live.follow(randomUUID())).toMatchObject({ ok: false });
+    live.close();
+  });
+
   it('ends with the session, however it ends', async () => {
     const admin = await buildMember(api, 'admin');
     const member = await buildMember(api, 'engineer', admin.workspaceId);

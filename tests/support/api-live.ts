@@ -26,9 +26,13 @@ export interface LiveClient {
 }
 
 /** Connects with the caller's cookie. Rejects with the server's words when it is not let in. */
-export async function connectLive(caller: Caller, headers: Record<string, string> = {}): Promise<LiveClient> {
+export async function connectLive(
+  caller: Caller,
+  headers: Record<string, string> = {},
+  transport: 'websocket' | 'polling' = 'websocket',
+): Promise<LiveClient> {
   const socket: LiveClient['socket'] = io(caller.url + LIVE_NAMESPACE, {
-    transports: ['websocket'],
+    transports: [transport],
     reconnection: false,
     forceNew: true,
     extraHeaders: { ...(caller.cookie ? { Cookie: caller.cookie } : {}), ...headers },

@@ -48,7 +48,7 @@ export const apiEnvironment = (databaseUrl: string, dataDir: string, env: Record
   PORT: '0',
   DEMO: 'off',
   WORKERS: '1',
-  LOG_LEVEL: 'silent',
+  LOG_LEVEL: process.env.TEST_LOG_LEVEL ?? 'silent',
   CLIENT_DIR: path.join(dataDir, 'client'),
   WORKER_ENTRY: process.env.WORKER_ENTRY,
   SIGN_IN_ATTEMPTS: '1000',
