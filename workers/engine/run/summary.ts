@@ -44,7 +44,7 @@ export function summarise(run: Run): RunSummary {
     truth: run.truth?.result() ?? null,
     warnings: run.warnings,
   };
-  return { ...summary, findings: findings(summary, run.request.parameters) };
+  return { ...summary, findings: findings(summary, run) };
 }
 
 function meanOf(column: Float64Array, count: number): number {

@@ -63,11 +63,14 @@ export class InnovationWriter {
   count = 0;
   /** Measured rows of each epoch (1…3): the dimension of its NIS. */
   readonly dimension: Uint8Array;
+  /** Mean of R ÷ S over an epoch's rows: how much of what is predicted is measurement noise. */
+  readonly noiseShare: Float64Array;
 
   constructor(capacity: number) {
     const three = () =>
       [new Float64Array(capacity), new Float64Array(capacity), new Float64Array(capacity)] as const;
     this.dimension = new Uint8Array(capacity);
+    this.noiseShare = new Float64Array(capacity);
     this.table = {
       timeS: new Float64Array(capacity),
       innovation: three(),
@@ -82,12 +85,16 @@ export class InnovationWriter {
     const { table } = this;
     const row = this.count;
     let m = 0;
+    let share = 0;
     for (let axis = 0; axis < 3; axis += 1) {
       const measured = ((axes >> axis) & 1) === 1;
       table.innovation[axis as 0 | 1 | 2][row] = measured ? update.innovation[m]! : NaN;
       table.sigma[axis as 0 | 1 | 2][row] = measured ? Math.sqrt(update.s[m * (MAX_ROWS + 1)]!) : NaN;
-      if (measured) m += 1;
+      if (!measured) continue;
+      share += update.r[m]! / update.s[m * (MAX_ROWS + 1)]!;
+      m += 1;
     }
+    this.noiseShare[row] = share / m;
     table.timeS[row] = timeS;
     table.nis[row] = update.nis;
     table.accepted[row] = accepted ? 1 : 0;
