@@ -10,10 +10,16 @@ export function numberIn(cell: string | undefined, decimalComma: boolean): numbe
   if (cell === undefined) return NaN;
   const value = Number(decimalComma ? cell.replace(',', '.') : cell);
   // An empty cell would count as 0; hexadecimal and the like are no measurements.
-  if (value - value === 0 && value !== 0) return /[xXbBoO]/.test(cell) ? undefined : value;
+  if (value - value === 0 && value !== 0) return isOtherBase(cell) ? undefined : value;
   const text = cell.trim();
   if (MISSING.test(text)) return NaN;
   return value === 0 ? 0 : undefined;
+}
+
+/** 0x1F, 0b11, 0o17: a letter in the second place that is not the e of an exponent. */
+function isOtherBase(cell: string): boolean {
+  const second = cell.charCodeAt(1);
+  return second > 64 && second !== 69 && second !== 101;
 }
 
 /** Number of the column that `name` stands for, or -1. Blanks around it do not matter. */

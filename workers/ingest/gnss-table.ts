@@ -10,6 +10,7 @@ export interface GnssFacts {
   epochs: number;
   /** Rows without time or without any measurement, or that the receiver calls no fix. */
   noFixRows: number;
+  /** Rows that gave a second position for one stamp. */
   duplicates: number;
   outOfOrder: number;
 }
@@ -75,7 +76,8 @@ export class GnssCollector {
         kept.push(fix);
         continue;
       }
-      this.duplicates += 1;
+      // Receivers often give position and velocity of one epoch on two rows; two positions are one too many.
+      if (!Number.isNaN(last.values[ROW.lat]! + fix.values[ROW.lat]!)) this.duplicates += 1;
       fix.values.forEach((value, i) => {
         if (Number.isNaN(last.values[i]!)) last.values[i] = value;
       });

@@ -5,7 +5,7 @@ import type { CsvHead } from './csv';
 import { ColumnFinder, type FoundColumn } from './find-columns';
 import { namesOtherDevice } from './header-words';
 import { guessTime } from './guess-time';
-import { IMU_WORDS, type ImuChannel } from './vocabulary';
+import { IMU_WORDS } from './vocabulary';
 
 export interface Guess<M> {
   /** Null where `missing` is not empty. */

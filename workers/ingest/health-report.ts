@@ -188,6 +188,13 @@ function gnssFindings(imu: ImuFacts, gnss: GnssReport, overlapS: Interval): Heal
         figure: { value: gnss.outOfOrder, unit: 'rows' },
       }),
     ); // prettier-ignore
+  if (gnss.duplicates > 0)
+    found.push(
+      finding('gnss-duplicates', gnss.duplicates > gnss.epochs / 10 ? 'warn' : 'info', `${rows(gnss.duplicates)} of the GNSS file had the stamp of the row before and dropped out.`, {
+        figure: { value: gnss.duplicates, unit: 'rows' },
+        remedy: 'Log the receiver’s time with its fraction of a second.',
+      }),
+    ); // prettier-ignore
   if (gnss.noFixRows > 0)
     found.push(
       finding('gnss-no-fix', 'info', `${rows(gnss.noFixRows)} of the GNSS file held no fix.`, {

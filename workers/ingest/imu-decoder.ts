@@ -40,10 +40,13 @@ export class ImuDecoder {
   private pushRow(row: readonly string[], line: number): void {
     const { raw, body } = this;
     const timeS = this.reader.read(row, line, raw) + this.shiftS;
-    const missing = countMissing(raw) + (Number.isNaN(timeS) ? 1 : 0);
-    // A row without any of our values belongs to another device of a merged log.
-    if (missing === 7) return;
-    if (missing > 0) return this.health.addIncomplete(line);
+    // NaN spreads through a sum: one test tells whether anything is missing.
+    const sum = timeS + raw[0]! + raw[1]! + raw[2]! + raw[3]! + raw[4]! + raw[5]!;
+    if (Number.isNaN(sum)) {
+      // A row without any of our values belongs to another device of a merged log.
+      if (!Number.isNaN(timeS) || raw.some((value) => !Number.isNaN(value))) this.health.addIncomplete(line);
+      return;
+    }
     this.convert();
     if (timeS <= this.lastS) return this.repeat(timeS, line);
     const { piece, rows } = this;
@@ -86,10 +89,4 @@ export class ImuDecoder {
 
 function newPiece(): Float64Array[] {
   return IMU_COLUMNS.map(() => new Float64Array(PIECE_ROWS));
-}
-
-function countMissing(values: Float64Array): number {
-  let count = 0;
-  for (const value of values) if (Number.isNaN(value)) count += 1;
-  return count;
 }

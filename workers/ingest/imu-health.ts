@@ -73,7 +73,8 @@ export class ImuHealth {
       this.rates[i] = values[i]! * perSecond;
       this.flatTops[i]!.add(timeS, values[i]!);
     }
-    this.forceSum += Math.hypot(this.rates[3]!, this.rates[4]!, this.rates[5]!);
+    const [x, y, z] = [this.rates[3]!, this.rates[4]!, this.rates[5]!];
+    this.forceSum += Math.sqrt(x * x + y * y + z * z);
     this.quiet.add(timeS, this.rates);
     this.samples += 1;
     this.lastS = timeS;

@@ -1,5 +1,7 @@
 /** A raw upload as text, chunk by chunk: unpacked where it is gzip, decoded as UTF-8 or UTF-16, refused where it is binary. */
+import { isAscii } from 'node:buffer';
 import { Readable } from 'node:stream';
+import { StringDecoder } from 'node:string_decoder';
 import { createGunzip } from 'node:zlib';
 import type { FileRole } from '@/shared/contracts/recordings';
 import type { Store } from '../store/types';
@@ -102,11 +104,38 @@ async function* decoded(bytes: AsyncGenerator<Uint8Array>, file: RawFile): Async
   const mark = Buffer.from(first.subarray(0, 2)).toString('hex');
   const isUtf16 = UTF16_MARKS.includes(mark);
   if (!isUtf16) refuseBinary(first, file);
-  const decoder = new TextDecoder(mark === 'feff' ? 'utf-16be' : isUtf16 ? 'utf-16le' : 'utf-8');
-  yield decoder.decode(first, { stream: true });
-  for await (const chunk of rest) yield decoder.decode(chunk, { stream: true });
-  yield decoder.decode();
+  const decoder = decoderFor(mark);
+  const start = decoder.write(first);
+  yield start.startsWith('\uFEFF') ? start.slice(1) : start;
+  for await (const chunk of rest) yield decoder.write(chunk);
+  yield decoder.end();
 }
+
+interface Decoder {
+  write(chunk: Uint8Array): string;
+  end(): string;
+}
+
+/** Node's own decoder is several times faster than TextDecoder, but knows no big-endian UTF-16. */
+function decoderFor(mark: string): Decoder {
+  if (mark === 'feff') {
+    const decoder = new TextDecoder('utf-16be');
+    return { write: (chunk) => decoder.decode(chunk, { stream: true }), end: () => decoder.decode() };
+  }
+  const decoder = new StringDecoder(mark === 'fffe' ? 'utf16le' : 'utf8');
+  const write = (chunk: Uint8Array) => decoder.write(bufferOn(chunk));
+  return mark === 'fffe' ? { write, end: () => decoder.end() } : plainFirst(write, () => decoder.end());
+}
+
+/** Logs are nearly always plain ASCII, which needs no decoding; only pieces with other signs go through UTF-8. */
+function plainFirst(write: Decoder['write'], end: Decoder['end']): Decoder {
+  return {
+    write: (chunk) => (isAscii(chunk) ? end() + bufferOn(chunk).toString('latin1') : write(chunk)),
+    end,
+  };
+}
+
+const bufferOn = (chunk: Uint8Array) => Buffer.from(chunk.buffer, chunk.byteOffset, chunk.length);
 
 /** Every kind of line end becomes '\n', also where a '\r\n' lies across two chunks. */
 async function* normalised(text: AsyncGenerator<string>): AsyncGenerator<string> {

@@ -1,4 +1,5 @@
 import { spawn } from 'node:child_process';
+import { readdirSync } from 'node:fs';
 import path from 'node:path';
 import { decodeFrame } from '@/shared/contracts/frames';
 import { IDENTITY_AXES } from '@/shared/contracts/vehicles';
@@ -6,12 +7,14 @@ import { createPool, type WorkerPool } from '@/workers/pool';
 import { JobCancelled, JobFailed, WorkerCrashed, type JobEvent } from '@/workers/protocol';
 import { storeKeys } from '@/workers/store/types';
 import { runOf, writeStaticRecording } from './static-recording';
-import { cleanLogs, testStore, type TestStore } from './support';
+import {
+  cleanLogs, csvText, GNSS_HEADER, gnssRows, IMU_HEADER, imuRows, testStore, type TestStore,
+} from './support'; // prettier-ignore
 import { buildWorkerBundle } from './worker-bundle';
 
 const silent = { info: () => undefined, warn: () => undefined, error: () => undefined };
 /** Long enough that a run is still going when its first frame has arrived. */
-const LONG_S = 4000;
+const LONG_S = 1200;
 
 let bundle: ReturnType<typeof buildWorkerBundle>;
 let at: TestStore;
@@ -188,15 +191,17 @@ test('people at a screen go before bulk work', async () => {
 
 test('bulk work never takes the last process', async () => {
   const two = open(2);
+  const order: string[] = [];
   const jobs = ['bulk-1', 'bulk-2'].map((id) => two.submit(runOf('long', id)));
+  const bulk = jobs.map((job) => job.result.then(() => order.push('bulk')));
   await until(() => two.stats.busy === 1);
 
   const bench = two.submit(runOf('short', 'bench-2'), { latestKey: 'bench' });
 
-  await expect(bench.result).resolves.toBeDefined();
-  expect(two.stats.waiting).toBe(1);
+  await bench.result.then(() => order.push('bench'));
+  expect(order).toEqual(['bench']);
   for (const job of jobs) job.cancel();
-  await Promise.allSettled(jobs.map((job) => job.result));
+  await Promise.allSettled(bulk);
 }, 60_000);
 
 test('a decode job goes through the pool like any other', async () => {
@@ -216,6 +221,36 @@ test('a decode job goes through the pool like any other', async () => {
   };
 
   expect(await open(1).submit(job).result).toMatchObject({ outcome: 'ready', startS: 0 });
+}, 60_000);
+
+test('kill -9 in the middle of decoding: done again from the start it gives one whole recording and no remains', async () => {
+  const logs = { imu: csvText(IMU_HEADER, imuRows(60_000)), gnss: csvText(GNSS_HEADER, gnssRows(3000)) };
+  const files = [];
+  for (const role of ['imu', 'gnss'] as const) {
+    const key = storeKeys.raw('twice', role);
+    await at.store.put(key, Buffer.from(logs[role]));
+    files.push({ role, name: `${role}.csv`, key });
+  }
+  const one = open(1);
+  let killed = false;
+  const onEvent = () => {
+    if (!killed) process.kill(one.pids[0]!, 'SIGKILL');
+    killed = true;
+  };
+  const job = {
+    kind: 'decode' as const,
+    recordingId: 'twice',
+    files,
+    channelMap: null,
+    vehicleAxes: IDENTITY_AXES,
+  };
+
+  const result = await one.submit(job, { onEvent, retryOnCrash: true }).result;
+
+  expect(killed).toBe(true);
+  expect(result).toMatchObject({ outcome: 'ready', health: { imu: { samples: 60_000 } } });
+  await until(() => readdirSync(path.join(at.root, '.incoming')).length === 0);
+  expect(await at.store.list('recordings/twice/')).toHaveLength(6);
 }, 60_000);
 
 test('what cannot be done is told in plain words', async () => {

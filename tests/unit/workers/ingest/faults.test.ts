@@ -224,6 +224,14 @@ test('gaps and missing parts of GNSS are told', async () => {
   expect(health.findings.find((one) => one.code === 'gnss-gaps')?.intervalsS).toEqual([[3.8, 8.2]]);
 });
 
+test('a second fix of one stamp drops out and is reported', async () => {
+  const rows = gnssRows().flatMap((row, k) => (k % 3 === 0 ? [row, row] : [row]));
+  expect(await findingOf({ gnss: csvText(GNSS_HEADER, rows) }, 'gnss-duplicates')).toMatchObject({
+    severity: 'warn',
+    figure: { value: 5, unit: 'rows' },
+  });
+});
+
 test('what was taken for granted is told', async () => {
   const finding = await findingOf({ imu: csvText('t,wx,wy,wz,ax,ay,az', imuRows()) }, 'assumed');
   expect(finding?.sentence).toContain('taken as');
