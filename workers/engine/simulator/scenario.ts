@@ -2,7 +2,7 @@
 import { degToRad } from '@/shared/units';
 import type { ImuGrade, Scenario } from '@/shared/contracts/scenarios';
 import { createRandom, type RandomSource } from '../random';
-import type { ImuSampling, RecordingColumns } from '../types';
+import { EngineError, type ImuSampling, type RecordingColumns } from '../types';
 import { IMU_GRADES, type ImuModel } from './grades';
 import { simulateGnss, type GnssOptions, type SimulatedGnss } from './gnss';
 import { senseImu, type SensedImu } from './imu-errors';
@@ -13,6 +13,9 @@ import { fixedWingMotion } from './motions/fixed-wing';
 import { multirotorMotion } from './motions/multirotor';
 import { roadMotion } from './motions/road';
 import { staticMotion } from './motions/static';
+
+/** 6 h at 200 Hz and a little more: about 1 GB of columns. */
+export const MAX_SAMPLES = 5e6;
 
 /** What a scenario does not name; left out, each takes its plain value. */
 export interface ScenarioExtras {
@@ -36,9 +39,15 @@ export interface SimulatedRecording extends RecordingColumns {
 /**
  * The recording of a scenario: IMU samples as mean rates, GNSS at the antenna, exact truth at the IMU's origin at every
  * IMU epoch. Time begins at 0. The same scenario gives the same numbers.
- * @throws EngineError 'latitude' when the track comes too near a pole.
+ * @throws EngineError 'latitude' when the track comes too near a pole, 'too-long' above MAX_SAMPLES.
  */
 export function simulateScenario(scenario: Scenario, extras: ScenarioExtras = {}): SimulatedRecording {
+  const samples = scenario.durationS * scenario.imuRateHz;
+  if (samples > MAX_SAMPLES)
+    throw new EngineError(
+      'too-long',
+      `${scenario.durationS} s at ${scenario.imuRateHz} Hz are ${(samples / 1e6).toFixed(1)} million samples; at most ${MAX_SAMPLES / 1e6} million are simulated. Shorten durationS or lower imuRateHz.`,
+    );
   const random = createRandom(scenario.seed);
   const motion = extras.motion ?? scenarioMotion(scenario, random.split('motion'));
   const start: Place = {

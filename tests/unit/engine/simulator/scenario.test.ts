@@ -64,3 +64,9 @@ test('across the antimeridian the longitude wraps', () => {
   expect(last).toBeLessThan(-3);
   expect(Math.max(...gnss.lonRad.map(Math.abs))).toBeLessThanOrEqual(Math.PI);
 });
+
+test('more samples than memory should hold are refused, with what to change', () => {
+  expect(() => make({ durationS: 36_000, imuRateHz: 1000 })).toThrow(
+    /36000 s at 1000 Hz are 36.0 million samples; at most 5 million .* Shorten durationS or lower imuRateHz/,
+  );
+});
