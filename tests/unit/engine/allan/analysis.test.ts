@@ -1,4 +1,7 @@
 import { analyseNoise } from '@/workers/engine/allan/analysis';
+import { IMU_GRADES } from '@/workers/engine/simulator/grades';
+import { simulateScenario } from '@/workers/engine/simulator/scenario';
+import { scenarioSchema } from '@/shared/contracts/scenarios';
 import { noiseStartValues } from '@/workers/engine/allan/start-values';
 import { mean } from '@/workers/engine/statistics/descriptive';
 import { noiseSeries } from '@/tests/support/noise-series';
@@ -7,7 +10,9 @@ const HOUR = 3600;
 
 describe('eight hours at rest with known terms', () => {
   const truth = { white: 8.7e-5, biasInstability: 2e-5, rateRandomWalk: 1e-6 };
-  const logs = Array.from({ length: 8 }, (_, seed) => analyseNoise(noiseSeries(truth, 8 * HOUR * 4, 0.25, seed), 0.25));
+  const logs = Array.from({ length: 8 }, (_, seed) =>
+    analyseNoise(noiseSeries(truth, 8 * HOUR * 4, 0.25, seed), 0.25),
+  );
 
   test('white noise within 3 %, bias instability within 15 %, each log', () => {
     for (const { terms } of logs) {
@@ -96,4 +101,21 @@ test('misuse: too few samples, values that are not numbers', () => {
   const holed = noiseSeries({ white: 1 }, 500, 1, 1);
   holed[77] = Number.NaN;
   expect(() => analyseNoise(holed, 1)).toThrow(/not a finite number/);
+});
+
+test('a simulated log at rest shows the white noise of its grade on every axis', () => {
+  const scenario = scenarioSchema.parse({
+    motion: 'static',
+    durationS: 900,
+    imuRateHz: 50,
+    imuGrade: 'consumer',
+  });
+  const { imu } = simulateScenario(scenario);
+  const grade = IMU_GRADES.consumer;
+  for (const axis of [0, 1, 2] as const) {
+    const gyro = analyseNoise(imu.gyro[axis], 0.02).terms.white.value!;
+    const accel = analyseNoise(imu.accel[axis], 0.02).terms.white.value!;
+    expect(Math.abs(gyro / grade.gyroWhiteNoiseRadPerSqrtS - 1)).toBeLessThan(0.05);
+    expect(Math.abs(accel / grade.accelWhiteNoiseMPerSPerSqrtS - 1)).toBeLessThan(0.05);
+  }
 });
