@@ -27,16 +27,27 @@ export interface Api extends RunningServer {
 /** Starts one; `env` overrides the configuration. Stop it in afterAll. */
 export async function startApi(env: Record<string, string> = {}): Promise<Api> {
   const database = await createDatabase();
+  const api = await startApiOn(database.url, env);
+  return {
+    ...api,
+    async stop() {
+      await api.stop();
+      await database.drop();
+    },
+  };
+}
+
+/** The same on a database that somebody else looks after. */
+export async function startApiOn(databaseUrl: string, env: Record<string, string> = {}): Promise<Api> {
   const dataDir = fs.mkdtempSync(path.join(os.tmpdir(), 'driftwright-api-'));
-  const server = await startServer(loadConfig(apiEnvironment(database.url, dataDir, env)));
+  const server = await startServer(loadConfig(apiEnvironment(databaseUrl, dataDir, env)));
   return {
     ...server,
     dataDir,
-    databaseUrl: database.url,
+    databaseUrl,
     stranger: () => new Caller(server.url),
     async stop() {
       await server.stop();
-      await database.drop();
       fs.rmSync(dataDir, { recursive: true, force: true });
     },
   };
@@ -48,7 +59,7 @@ export const apiEnvironment = (databaseUrl: string, dataDir: string, env: Record
   PORT: '0',
   DEMO: 'off',
   WORKERS: '1',
-  LOG_LEVEL: process.env.TEST_LOG_LEVEL ?? 'silent',
+  LOG_LEVEL: 'silent',
   CLIENT_DIR: path.join(dataDir, 'client'),
   WORKER_ENTRY: process.env.WORKER_ENTRY,
   SIGN_IN_ATTEMPTS: '1000',
