@@ -60,8 +60,10 @@ export class WorkerPool implements Pool {
   private nextId = 1;
   private failedStarts = 0;
   private closing: Promise<void> | null = null;
+  private readonly readyWaiters: (() => void)[] = [];
 
   constructor(private readonly options: PoolOptions) {
+    this.sweep();
     this.fill();
   }
 
@@ -73,6 +75,11 @@ export class WorkerPool implements Pool {
   /** Process ids of the living children. */
   get pids(): number[] {
     return this.slots.flatMap((slot) => slot.worker.pid ?? []);
+  }
+
+  /** Resolves when every process is warm. */
+  async ready(): Promise<void> {
+    if (!this.isReady()) await new Promise<void>((resolve) => this.readyWaiters.push(resolve));
   }
 
   submit<J extends WorkerJob>(job: J, options: SubmitOptions = {}) {
@@ -139,6 +146,12 @@ export class WorkerPool implements Pool {
     else entry.resolve(outcome.result);
   }
 
+  private isReady(): boolean {
+    return (
+      this.slots.length === this.options.size && this.slots.every((slot) => slot.worker.state === 'ready')
+    );
+  }
+
   private fill(): void {
     while (this.slots.length < this.options.size) {
       const { entry, store, log, cacheBytes = DEFAULT_CACHE_BYTES } = this.options;
@@ -199,6 +212,7 @@ export class WorkerPool implements Pool {
     if (message.type === 'ready') {
       slot.wasReady = true;
       this.failedStarts = 0;
+      if (this.isReady()) for (const resolve of this.readyWaiters.splice(0)) resolve();
       return this.dispatch();
     }
     const { entry } = slot;
@@ -241,6 +255,13 @@ export class WorkerPool implements Pool {
     if (this.closing) return;
     this.options.log.warn({ workerPid: pid, ...exit }, 'A worker process ended and is replaced.');
     this.replace(slot);
+  }
+
+  /** Clears away what processes that died in the middle of a write left in the store; `pid`: that one alone. */
+  private sweep(pid?: number): void {
+    sweepStore(this.options.store, pid).catch((error: unknown) =>
+      this.options.log.warn({ err: error }, 'Temporary files of dead processes could not be removed.'),
+    );
   }
 
   private replace(dead: Slot): void {

@@ -191,17 +191,38 @@ test('people at a screen go before bulk work', async () => {
 
 test('bulk work never takes the last process', async () => {
   const two = open(2);
-  const order: string[] = [];
+  await two.ready();
+
   const jobs = ['bulk-1', 'bulk-2'].map((id) => two.submit(runOf('long', id)));
-  const bulk = jobs.map((job) => job.result.then(() => order.push('bulk')));
-  await until(() => two.stats.busy === 1);
-
+  expect(two.stats).toEqual({ size: 2, busy: 1, waiting: 1 });
   const bench = two.submit(runOf('short', 'bench-2'), { latestKey: 'bench' });
+  expect(two.stats).toEqual({ size: 2, busy: 2, waiting: 1 });
 
-  await bench.result.then(() => order.push('bench'));
-  expect(order).toEqual(['bench']);
+  await expect(bench.result).resolves.toBeDefined();
   for (const job of jobs) job.cancel();
-  await Promise.allSettled(bulk);
+  await Promise.allSettled(jobs.map((job) => job.result));
+}, 60_000);
+
+test('jobs of one recording go to the process that holds it', async () => {
+  const two = open(2);
+  await two.ready();
+  const [, second] = two.pids;
+  const other = two.submit(runOf('short', 'home-1'), { latestKey: '1', affinity: 'short' });
+  const home = two.submit(runOf('long', 'home-2'), { latestKey: '2', affinity: 'long' });
+  await Promise.all([other.result, home.result]);
+  expect(two.stats.busy).toBe(0);
+
+  // Both are free: without affinity the first process would take it and outlive the second.
+  const first = firstFrame();
+  const again = two.submit(runOf('long', 'home-3'), {
+    latestKey: '2',
+    affinity: 'long',
+    onEvent: first.onEvent,
+  });
+  await first.arrived;
+  process.kill(second!, 'SIGKILL');
+
+  await expect(again.result).rejects.toBeInstanceOf(WorkerCrashed);
 }, 60_000);
 
 test('a decode job goes through the pool like any other', async () => {
