@@ -75,7 +75,7 @@ function gyroBiasAtStart(found: FoundAttitude, parameters: Parameters, dcm: Floa
   const given = parameters.initial.gyroBiasRadPerS;
   if (given !== undefined || found.rest === null)
     return { bias: given ?? [0, 0, 0], variance: [prior, prior, prior] as const, fromRest: false };
-  return { ...restGyroBias(found.rest, parameters, dcm, latRad), fromRest: true };
+  return { ...restGyroBias(found.rest, parameters, dcm, latRad, found.eulerVariance[2]), fromRest: true };
 }
 
 function report(found: FoundAttitude, timeS: number, q: Float64Array, p: Float64Array): Alignment['report'] {

@@ -11,10 +11,15 @@ export function restGyroBias(
   parameters: Parameters,
   dcm: Float64Array,
   latRad: number,
+  yawVariance: number,
 ): { bias: [number, number, number]; variance: [number, number, number] } {
   const prior = initialBiasVariance(biasParameters(parameters).gyro);
-  const variance = restBiasVariance(rest, parameters);
-  const weight = 1 - variance / prior;
+  const known = restBiasVariance(rest, parameters);
+  const weight = 1 - known / prior;
+  // Earth rate taken off in a wrong direction: the first order is correlated with the heading error and is seen to
+  // where the covariance is put together; here what is beyond it, 1 − cos Δψ ≈ Δψ²/2.
+  const beyond = (EARTH_RATE * Math.cos(latRad) * Math.min(2, yawVariance)) / 2;
+  const variance = known + beyond * beyond;
   const earthN = EARTH_RATE * Math.cos(latRad);
   const earthD = -EARTH_RATE * Math.sin(latRad);
   const bias = [0, 1, 2].map((i) => weight * (rest.gyro[i]! - dcm[i]! * earthN - dcm[6 + i]! * earthD));

@@ -6,12 +6,14 @@
  * `applyFix`, `feedBack`, `recover`.
  */
 import type { Parameters } from '@/shared/contracts/parameters';
+import { degToRad, radToDeg } from '@/shared/units';
 import type { ImuColumns } from '../types';
 import { ANGLE, ANGLE_BEND, DURATION, ImuIntervals } from '../strapdown/imu-intervals';
 import { MERIDIAN_PLUS_H, TRANSVERSE_PLUS_H } from '../strapdown/local-earth';
 import { HEIGHT, LAT, LON, NAV_ACCEL_BIAS, NAV_GYRO_BIAS, QUAT, VN } from '../strapdown/navigation-state';
 import { Strapdown } from '../strapdown/strapdown';
 import { biasDecayRate, biasNoiseDensity, halfBiasNoise } from './bias-models';
+import { resetAttitudeCovariance, turnAttitude } from './attitude-feedback';
 import { biasParameters } from './bias-parameters';
 import type { Fixes } from './fixes';
 import { gapDisturbance } from './gap-noise';
@@ -26,6 +28,10 @@ import { ACCEL_BIAS, ATTITUDE, GYRO_BIAS, POSITION, STATES, VELOCITY } from './s
 const SAME_TIME_S = 1e-7;
 /** Gaps are bridged in steps of at most this, s. */
 const GAP_STEP_S = 0.02;
+
+/** A heading corrected by 2σ of its start is reported, but not below the first nor only above the second, rad. */
+const HEADING_REPORT_MIN = degToRad(20);
+const HEADING_REPORT_MAX = degToRad(45);
 
 export type GroupName = 'position' | 'velocity';
 
@@ -47,6 +53,7 @@ export interface FilterSnapshot {
   p: Float64Array;
   sample: number;
   fix: number;
+  heading: { turned: number; reported: boolean };
   gates: readonly (readonly number[])[];
 }
 
@@ -69,6 +76,11 @@ export class ErrorStateFilter {
   private readonly gyroBias: { density: number; decay: number };
   private readonly accelBias: { density: number; decay: number };
   private readonly stepS: number;
+  /** What corrections have turned the heading by since the start, rad, and from where on that is reported. */
+  private headingTurned = 0;
+  private headingReported = false;
+  private headingLimit = Infinity;
+  private startHeadingSigma = 0;
 
   /** `withheld`: bits of `withheldBy` for each fix. */
   constructor(
@@ -99,6 +111,13 @@ export class ErrorStateFilter {
     this.fix = fix;
     this.strapdown.start(nav);
     this.p.set(p);
+    this.startHeadingSigma = Math.sqrt(p[(ATTITUDE + 2) * (STATES + 1)]!);
+    this.headingLimit = Math.max(
+      HEADING_REPORT_MIN,
+      Math.min(2 * this.startHeadingSigma, HEADING_REPORT_MAX),
+    );
+    this.headingTurned = 0;
+    this.headingReported = false;
   }
 
   get timeS(): number {
@@ -257,9 +276,23 @@ export class ErrorStateFilter {
       nav[NAV_GYRO_BIAS + i] = nav[NAV_GYRO_BIAS + i]! + correction[GYRO_BIAS + i]!;
       nav[NAV_ACCEL_BIAS + i] = nav[NAV_ACCEL_BIAS + i]! + correction[ACCEL_BIAS + i]!;
     }
+    this.watchHeading(correction[ATTITUDE + 2]!);
     turnAttitude(nav, correction);
     strapdown.attitudeChanged();
     resetAttitudeCovariance(p, correction);
+  }
+
+  /** A start that was far off is found by the filter, but never in silence. */
+  private watchHeading(correction: number): void {
+    this.headingTurned -= correction;
+    const turned = Math.abs(this.headingTurned);
+    if (this.headingReported || turned < this.headingLimit) return;
+    this.headingReported = true;
+    this.warn(
+      'heading-corrected',
+      `GNSS turned the heading by ${radToDeg(turned).toFixed(0)}° against the start, which was given or found with ${radToDeg(this.startHeadingSigma).toFixed(0)}° (1σ): the initial heading was wrong.`,
+      this.timeS,
+    );
   }
 
   warn(code: string, sentence: string, timeS: number): void {
@@ -277,6 +310,7 @@ export class ErrorStateFilter {
       p: this.p.slice(),
       sample: this.sample,
       fix: this.fix,
+      heading: { turned: this.headingTurned, reported: this.headingReported },
       gates: [this.gates.position.save(), this.gates.velocity.save()],
     };
   }
@@ -286,61 +320,9 @@ export class ErrorStateFilter {
     this.p.set(saved.p);
     this.sample = saved.sample;
     this.fix = saved.fix;
+    this.headingTurned = saved.heading.turned;
+    this.headingReported = saved.heading.reported;
     this.gates.position.restore(saved.gates[0]!);
     this.gates.velocity.restore(saved.gates[1]!);
   }
-}
-
-/** q ← q(−c) ⊗ q for the attitude part c of a correction (rad, in n). */
-function turnAttitude(nav: Float64Array, correction: Float64Array): void {
-  const cn = correction[ATTITUDE]!;
-  const ce = correction[ATTITUDE + 1]!;
-  const cd = correction[ATTITUDE + 2]!;
-  const angle = Math.sqrt(cn * cn + ce * ce + cd * cd);
-  if (angle === 0) return;
-  const w = Math.cos(angle / 2);
-  const k = -Math.sin(angle / 2) / angle;
-  const n = k * cn;
-  const e = k * ce;
-  const d = k * cd;
-  const q0 = nav[QUAT]!;
-  const q1 = nav[QUAT + 1]!;
-  const q2 = nav[QUAT + 2]!;
-  const q3 = nav[QUAT + 3]!;
-  nav[QUAT] = w * q0 - n * q1 - e * q2 - d * q3;
-  nav[QUAT + 1] = w * q1 + n * q0 + e * q3 - d * q2;
-  nav[QUAT + 2] = w * q2 - n * q3 + e * q0 + d * q1;
-  nav[QUAT + 3] = w * q3 + n * q2 - e * q1 + d * q0;
-}
-
-/**
- * P ← GPGᵀ with G = I − ½[c×] on the attitude: what is left of φ after the feedback is measured from the corrected
- * attitude (Markley, JGCD 26, 2003, 311–317).
- */
-function resetAttitudeCovariance(p: Float64Array, correction: Float64Array): void {
-  const n = 0.5 * correction[ATTITUDE]!;
-  const e = 0.5 * correction[ATTITUDE + 1]!;
-  const d = 0.5 * correction[ATTITUDE + 2]!;
-  if (n * n + e * e + d * d < 1e-14) return;
-  const at = ATTITUDE * STATES;
-  for (let j = 0; j < STATES; j += 1) {
-    const x = p[at + j]!;
-    const y = p[at + STATES + j]!;
-    const z = p[at + 2 * STATES + j]!;
-    p[at + j] = x - (e * z - d * y);
-    p[at + STATES + j] = y - (d * x - n * z);
-    p[at + 2 * STATES + j] = z - (n * y - e * x);
-  }
-  for (let i = 0; i < STATES; i += 1) {
-    const row = i * STATES + ATTITUDE;
-    const x = p[row]!;
-    const y = p[row + 1]!;
-    const z = p[row + 2]!;
-    p[row] = x - (e * z - d * y);
-    p[row + 1] = y - (d * x - n * z);
-    p[row + 2] = z - (n * y - e * x);
-  }
-  // Equal to the last bit again.
-  for (let i = ATTITUDE; i < GYRO_BIAS; i += 1)
-    for (let j = ATTITUDE; j < i; j += 1) p[i * STATES + j] = p[j * STATES + i]!;
 }
