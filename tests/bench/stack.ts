@@ -19,7 +19,6 @@ import { LiveBench, type Timing } from './live-bench';
 const SCENARIO: ScenarioInput = { motion: 'road', durationS: 1200, imuRateHz: 100, gnssRateHz: 5, seed: 20 };
 const MOVES_PER_BENCH = 40;
 const WARM_UP_MOVES = 3;
-const ADMIN = { email: 'bench@driftwright.test', password: 'a long bench password' };
 
 /** Measures and prints the table. */
 export async function benchStack(): Promise<void> {
@@ -28,8 +27,7 @@ export async function benchStack(): Promise<void> {
   const postgres = await startLocalPostgres();
   const stack = await Stack.boot(postgres.url);
   try {
-    await firstAdmin(stack.url);
-    const person = await Person.signIn(stack.url, ADMIN.email, ADMIN.password);
+    const person = await Person.firstAdmin(stack.url);
     const recording = await person.upload('20 min, 100 Hz', writeLogs(folder, SCENARIO));
     console.log(
       '\nThe whole stack: 20 min, 100 Hz; two worker processes; a slider release every 1–3 s a bench\n',
@@ -44,15 +42,6 @@ export async function benchStack(): Promise<void> {
     await postgres.stop();
     rmSync(folder, { recursive: true, force: true });
   }
-}
-
-async function firstAdmin(server: string): Promise<void> {
-  const answer = await fetch(`${server}/api/v1/installation/first-admin`, {
-    method: 'POST',
-    headers: { 'Content-Type': 'application/json', 'X-Driftwright': '1' },
-    body: JSON.stringify({ ...ADMIN, name: 'Bench', workspaceName: 'Bench' }),
-  });
-  if (!answer.ok) throw new Error(`The first admin was answered ${answer.status}: ${await answer.text()}`);
 }
 
 async function measure(

@@ -1,10 +1,10 @@
 /** From an empty installation to a team: the first admin, an invitation by mail, a forgotten password. */
 import type { Browser, Page } from 'playwright-core';
 import { launchBrowser, openWindow } from '@/tests/support/browser';
+import { FIRST_ADMIN } from '@/tests/support/person';
 import { Stack } from '@/tests/support/stack';
 import { button, field, heading, signIn } from './steps';
 
-const ADMIN = { name: 'Ona Veld', email: 'ona@kelmar.test', password: 'harbour at first light' };
 const GUEST = { name: 'Ilo Marsh', email: 'ilo@kelmar.test', password: 'slack water at noon' };
 
 let stack: Stack;
@@ -40,14 +40,14 @@ async function linkIn(subject: string): Promise<string> {
 test('the first visitor of an empty installation becomes its admin', async () => {
   await admin.goto('/');
   await heading(admin, 'Set up Driftwright').waitFor();
-  await field(admin, 'Your name').fill(ADMIN.name);
-  await field(admin, 'E-mail').fill(ADMIN.email);
+  await field(admin, 'Your name').fill(FIRST_ADMIN.name);
+  await field(admin, 'E-mail').fill(FIRST_ADMIN.email);
   await field(admin, 'Password').fill('short');
   await field(admin, 'Workspace').fill('Kelmar survey');
   await button(admin, 'Set up and sign in').click();
   await admin.getByText('At least 10 characters.').first().waitFor();
 
-  await field(admin, 'Password').fill(ADMIN.password);
+  await field(admin, 'Password').fill(FIRST_ADMIN.password);
   await button(admin, 'Set up and sign in').click();
   await heading(admin, 'Today').waitFor();
 });
@@ -58,7 +58,7 @@ test('an invitation goes out by mail, and the guest joins with it', async () => 
   await button(admin, 'Invite').click();
   await admin.getByText(`${GUEST.email} is invited.`, { exact: false }).waitFor();
 
-  await guest.goto(await linkIn(`${ADMIN.name} invites you to Kelmar survey`));
+  await guest.goto(await linkIn(`${FIRST_ADMIN.name} invites you to Kelmar survey`));
   await heading(guest, 'Join Kelmar survey').waitFor();
   await field(guest, 'Your name').fill(GUEST.name);
   await field(guest, `Password for ${GUEST.email}`).fill(GUEST.password);

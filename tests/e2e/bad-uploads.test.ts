@@ -7,7 +7,7 @@ import { DEMO_PASSWORD, DEMO_PEOPLE } from '@/fixtures/demo-scenario';
 import { launchBrowser, openWindow } from '@/tests/support/browser';
 import { writeLogs, type LogFiles } from '@/tests/support/log-files';
 import { Stack } from '@/tests/support/stack';
-import { button, heading, signIn, uploadLogs } from './steps';
+import { button, field, heading, sendLogs, signIn, uploadLogs } from './steps';
 
 let stack: Stack;
 let browser: Browser;
@@ -54,17 +54,12 @@ test('text among the numbers: the page names file, line and column, and what to 
     .waitFor();
 });
 
-test('an empty file is refused by name', async () => {
+test('an empty file is refused beside its name, and what was chosen stays', async () => {
   const imu = changedImu('empty.csv', () => '');
-  await page.goto('/recordings/upload');
-  await uploadLogs(page, 'Empty', { imu, gnss: logs.gnss });
-  await heading(page, 'The files could not be used').waitFor();
-  await page
-    .getByText(/IMU file/)
-    .filter({ visible: true })
-    .first()
-    .waitFor();
-  await page.getByText(/empty/i).filter({ visible: true }).first().waitFor();
+  await sendLogs(page, 'Empty', { imu, gnss: logs.gnss });
+  await page.getByText('The file “empty.csv” is empty. Choose the log itself.').first().waitFor();
+  expect(await field(page, 'Name').inputValue()).toBe('Empty');
+  await page.getByText(/^gnss\.csv/).waitFor();
 });
 
 test('headers that say nothing are mapped by the person, and the recording becomes ready', async () => {

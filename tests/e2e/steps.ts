@@ -16,12 +16,17 @@ export async function signIn(page: Page, email: string, password: string): Promi
 
 /** Picks the files and sends them; resolves on the recording's own page. */
 export async function uploadLogs(page: Page, name: string, files: LogFiles): Promise<void> {
+  await sendLogs(page, name, files);
+  await heading(page, name).waitFor();
+}
+
+/** Picks the files and presses Upload. */
+export async function sendLogs(page: Page, name: string, files: LogFiles): Promise<void> {
   await page.goto('/recordings/upload');
   await choose(page, 'IMU log', files.imu);
   await choose(page, 'GNSS log', files.gnss);
   await field(page, 'Name').fill(name);
   await button(page, 'Upload').click();
-  await heading(page, name).waitFor();
 }
 
 async function choose(page: Page, what: string, file: string): Promise<void> {

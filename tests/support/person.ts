@@ -8,22 +8,29 @@ import type { LogFiles } from './log-files';
 
 const DECODE_LIMIT_MS = 120_000;
 
+export const FIRST_ADMIN = { name: 'Ona Veld', email: 'ona@kelmar.test', password: 'harbour at first light' };
+
 export class Person {
   private constructor(
     private readonly server: string,
     readonly cookie: string,
   ) {}
 
-  static async signIn(server: string, email: string, password: string): Promise<Person> {
-    const answer = await fetch(`${server}${API_PREFIX}/sessions`, {
-      method: 'POST',
-      headers: { 'Content-Type': 'application/json', [CSRF_HEADER]: '1' },
-      body: JSON.stringify({ email, password }),
+  /** On an empty installation: the first admin, with a workspace. */
+  static async firstAdmin(server: string): Promise<Person> {
+    const answer = await post(server, '/installation/first-admin', {
+      ...FIRST_ADMIN,
+      workspaceName: 'Kelmar survey',
     });
+    if (!answer.ok) throw new Error(`The first admin was answered ${answer.status}: ${await answer.text()}`);
+    return new Person(server, cookieOf(answer));
+  }
+
+  static async signIn(server: string, email: string, password: string): Promise<Person> {
+    const answer = await post(server, '/sessions', { email, password });
     if (!answer.ok)
       throw new Error(`Sign-in of ${email} was answered ${answer.status}: ${await answer.text()}`);
-    const cookies = answer.headers.getSetCookie().map((cookie) => cookie.split(';')[0]);
-    return new Person(server, cookies.join('; '));
+    return new Person(server, cookieOf(answer));
   }
 
   /** The raw answer, whatever its status. */
@@ -76,3 +83,16 @@ export class Person {
     }
   }
 }
+
+const post = (server: string, route: string, body: unknown) =>
+  fetch(`${server}${API_PREFIX}${route}`, {
+    method: 'POST',
+    headers: { 'Content-Type': 'application/json', [CSRF_HEADER]: '1' },
+    body: JSON.stringify(body),
+  });
+
+const cookieOf = (answer: Response) =>
+  answer.headers
+    .getSetCookie()
+    .map((cookie) => cookie.split(';')[0])
+    .join('; ');

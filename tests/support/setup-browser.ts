@@ -2,8 +2,8 @@
 import path from 'node:path';
 import { pictureAll } from './browser';
 
-/** A step waits for real work: decoding, a whole run. */
-jest.setTimeout(120_000);
+/** A step waits for real work: a database, decoding, a whole run. */
+jest.setTimeout(300_000);
 
 let step = 0;
 afterEach(async () => {
