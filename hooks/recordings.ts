@@ -1,5 +1,6 @@
 /** Recordings: list, one, upload, rename, map, delete, plots. */
 import {
+  keepPreviousData,
   useInfiniteQuery,
   useMutation,
   useQuery,
@@ -132,6 +133,8 @@ export function useRecordingSeries(id: string, request: SeriesRequest, enabled =
       }),
     enabled: enabled && id !== '',
     staleTime: STALE.slow,
+    // A finer stretch replaces the coarse one when it is there.
+    placeholderData: keepPreviousData,
   });
 }
 

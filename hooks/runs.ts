@@ -13,7 +13,7 @@ export const runKeys = {
   lists: ['runs', 'list'] as const,
   list: (query: RunListQuery) => ['runs', 'list', query] as const,
   one: (id: string) => ['runs', 'one', id] as const,
-  curves: (id: string) => ['runs', 'curves', id] as const,
+  curves: (id: string, points: number) => ['runs', 'curves', id, points] as const,
 };
 
 export interface RunListQuery {
@@ -41,13 +41,14 @@ export function useRuns(query: RunListQuery, enabled = true) {
   });
 }
 
-/** A finished run's curves, whole: for a baseline's ghost. */
-export function useRunCurves(id: string | null) {
+/** A finished run's curves in up to `points` rows a table; asked for while `id` is not null. */
+export function useRunCurves(id: string | null, points: number) {
   return useQuery({
-    queryKey: runKeys.curves(id ?? ''),
-    queryFn: async () => fetchCurves(id ?? ''),
+    queryKey: runKeys.curves(id ?? '', points),
+    queryFn: ({ signal }) => fetchCurves(id ?? '', points, signal),
     enabled: id !== null,
     staleTime: Infinity,
+    gcTime: 60_000,
   });
 }
 
@@ -67,8 +68,8 @@ export const runFileUrl = (
   file: 'solution.csv' | 'innovations.csv' | 'track.geojson' | 'track.kml' | 'track.gpx',
 ) => apiUrl(`/runs/${id}/${file}`);
 
-async function fetchCurves(id: string): Promise<RunData> {
+async function fetchCurves(id: string, points: number, signal: AbortSignal): Promise<RunData> {
   const data = new RunData(id);
-  data.replace(decodeFrame(await apiBytes(`/runs/${id}/series`, { query: { points: 3000 } })), true);
+  data.replace(decodeFrame(await apiBytes(`/runs/${id}/series`, { query: { points }, signal })), true);
   return data;
 }

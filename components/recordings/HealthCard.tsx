@@ -1,4 +1,5 @@
 import { StyleSheet, View } from 'react-native';
+import { Button } from '@/components/ui/Button';
 import { Card } from '@/components/ui/Card';
 import { Figures } from '@/components/ui/Figures';
 import { Icon } from '@/components/ui/Icon';
@@ -10,8 +11,14 @@ import { formatClock } from '@/shared/format';
 import type { HealthFinding, HealthReport, Severity } from '@/shared/contracts/recordings';
 import { VERDICTS } from './status';
 
+export interface HealthCardProps {
+  health: HealthReport;
+  /** Shows a finding's first stretch on the plots. */
+  onShow?: (interval: readonly [number, number]) => void;
+}
+
 /** What the intake found: the verdict first, then each finding with its figure, its times and what to do. */
-export function HealthCard({ health }: { health: HealthReport }) {
+export function HealthCard({ health, onShow }: HealthCardProps) {
   const { palette } = useTheme();
   const verdict = VERDICTS[health.verdict];
   return (
@@ -43,7 +50,11 @@ export function HealthCard({ health }: { health: HealthReport }) {
         />
       </View>
       {health.findings.map((finding) => (
-        <Finding key={`${finding.code}-${finding.intervalsS[0]?.[0] ?? ''}`} finding={finding} />
+        <Finding
+          key={`${finding.code}-${finding.intervalsS[0]?.[0] ?? ''}`}
+          finding={finding}
+          onShow={onShow}
+        />
       ))}
     </Card>
   );
@@ -73,9 +84,10 @@ function Headline({
   );
 }
 
-function Finding({ finding }: { finding: HealthFinding }) {
+function Finding({ finding, onShow }: { finding: HealthFinding; onShow: HealthCardProps['onShow'] }) {
   const { palette } = useTheme();
   const { tone, icon, word } = SEVERITIES[finding.severity];
+  const first = finding.intervalsS[0];
   return (
     <View style={[styles.finding, { borderTopColor: palette.rule, borderLeftColor: palette[tone] }]}>
       <Icon name={icon} tone={tone} size={20} />
@@ -91,6 +103,16 @@ function Finding({ finding }: { finding: HealthFinding }) {
           <Text variant="label" tone="soft">
             {finding.remedy}
           </Text>
+        ) : null}
+        {first && onShow ? (
+          <View style={styles.show}>
+            <Button
+              label="Show on the plots"
+              aria-label={`Show on the plots: ${finding.sentence}`}
+              kind="plain"
+              onPress={() => onShow(first)}
+            />
+          </View>
         ) : null}
       </View>
       {finding.figure ? (
@@ -142,4 +164,5 @@ const styles = StyleSheet.create({
     borderLeftWidth: 3,
   },
   words: { flex: 1, gap: 2 },
+  show: { flexDirection: 'row', marginLeft: -space.l },
 });

@@ -1,5 +1,5 @@
 import { router } from 'expo-router';
-import { useState, type ReactNode } from 'react';
+import { useRef, useState, type ReactNode } from 'react';
 import { StyleSheet, View } from 'react-native';
 import { benchPath, mappingPath } from '@/components/layout/paths';
 import { Screen } from '@/components/layout/Screen';
@@ -15,6 +15,7 @@ import { space } from '@/constants/theme';
 import { isUnderWay, useRecording } from '@/hooks/recordings';
 import { useCan } from '@/hooks/session';
 import type { Recording } from '@/shared/contracts/recordings';
+import { ChannelsCard } from './ChannelsCard';
 import { DeleteDialog } from './DeleteDialog';
 import { EditDialog } from './EditDialog';
 import { FactsCard } from './FactsCard';
@@ -45,11 +46,19 @@ export function RecordingScreen({ id }: { id: string }) {
         />
       </Screen>
     );
-  return <Loaded recording={recording.data} />;
+  return <Loaded key={id} recording={recording.data} />;
 }
 
 function Loaded({ recording }: { recording: Recording }) {
   const { wide, extraWide } = useBreakpoint();
+  const [focus, setFocus] = useState<readonly [number, number] | null>(null);
+  const plots = useRef<View>(null);
+  const show = (interval: readonly [number, number]) => {
+    setFocus([...interval]); // a new pair, so that the same finding can be shown again
+    const element = plots.current as unknown;
+    if (typeof HTMLElement !== 'undefined' && element instanceof HTMLElement)
+      element.scrollIntoView({ block: 'nearest' });
+  };
   return (
     <Screen
       title={recording.name}
@@ -65,7 +74,17 @@ function Loaded({ recording }: { recording: Recording }) {
       <View style={extraWide ? styles.columns : styles.stack}>
         <View style={extraWide ? styles.main : styles.stack}>
           <State recording={recording} />
-          {recording.health ? <HealthCard health={recording.health} /> : null}
+          {recording.health ? <HealthCard health={recording.health} onShow={show} /> : null}
+          {recording.status === 'ready' && recording.startS !== null && recording.endS !== null ? (
+            <View ref={plots}>
+              <ChannelsCard
+                recordingId={recording.id}
+                extentS={[recording.startS, recording.endS]}
+                hasVelocity={recording.health?.gnss.hasVelocity ?? false}
+                focus={focus}
+              />
+            </View>
+          ) : null}
         </View>
         <View style={extraWide ? styles.side : styles.stack}>
           <NotesCard recording={recording} />

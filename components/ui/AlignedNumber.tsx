@@ -32,4 +32,4 @@ export function alignDecimal(text: string): string {
   return '\u00a0'.repeat(Math.max(0, WHOLE - whole)) + text;
 }
 
-const WHOLE = 5;
+const WHOLE = 4;

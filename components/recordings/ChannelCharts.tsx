@@ -1,0 +1,78 @@
+import { useEffect, useMemo, useState } from 'react';
+import { View } from 'react-native';
+import { ChartGroup } from '@/components/charts/chart-group';
+import { TimeChart } from '@/components/charts/TimeChart';
+import { ErrorState } from '@/components/ui/ErrorState';
+import { Text } from '@/components/ui/Text';
+import { space } from '@/constants/theme';
+import { useRecordingSeries } from '@/hooks/recordings';
+import { useDebounced } from '@/hooks/use-debounced';
+import { ALL_CHANNELS, CHANNEL_CHARTS, channelContent } from './channel-content';
+
+export interface ChannelChartsProps {
+  recordingId: string;
+  extentS: readonly [number, number];
+  hasVelocity: boolean;
+  /** A stretch to look at: set by a finding's times. */
+  focus: readonly [number, number] | null;
+}
+
+const POINTS = 1500;
+
+/** All channels over time; what is zoomed into is fetched again in finer steps. */
+export default function ChannelCharts({ recordingId, extentS, hasVelocity, focus }: ChannelChartsProps) {
+  const [from, to] = extentS;
+  const group = useMemo(() => new ChartGroup([from, to]), [from, to]);
+  const view = useView(group);
+  const series = useRecordingSeries(recordingId, {
+    channels: ALL_CHANNELS,
+    points: POINTS,
+    ...(view ? { from: view[0], to: view[1] } : null),
+  });
+  const charts = useMemo(
+    () =>
+      CHANNEL_CHARTS.filter((chart) => hasVelocity || chart.id !== 'velocity').map((chart) =>
+        channelContent(chart, series.data),
+      ),
+    [series.data, hasVelocity],
+  );
+  useEffect(() => {
+    if (!focus) return;
+    const room = Math.max(2, (focus[1] - focus[0]) / 2);
+    group.viewport.show([focus[0] - room, focus[1] + room]);
+  }, [focus, group]);
+  if (series.isError && !series.data)
+    return (
+      <ErrorState
+        title="The channels could not be loaded"
+        error={series.error}
+        onRetry={() => void series.refetch()}
+      />
+    );
+  return (
+    <View style={{ gap: space.s }}>
+      {charts.map((content, at) => (
+        <TimeChart
+          key={content.id}
+          content={content}
+          group={group}
+          height={at === charts.length - 1 ? 176 : 156}
+          timeAxis={at === charts.length - 1}
+        />
+      ))}
+      <Text variant="small" tone="soft">
+        Drag, pinch or turn the wheel to look closer; double tap shows the whole recording.
+      </Text>
+    </View>
+  );
+}
+
+/** The zoomed stretch once it stands still; null: the whole. */
+function useView(group: ChartGroup): readonly [number, number] | null {
+  const [view, setView] = useState<readonly [number, number] | null>(null);
+  useEffect(
+    () => group.viewport.subscribe(() => setView(group.viewport.zoomed ? group.viewport.current : null)),
+    [group],
+  );
+  return useDebounced(view, 200);
+}

@@ -1,0 +1,113 @@
+/** What the plots of a recording's channels draw: three axes of one sensor a chart. */
+import { lowerBound, type TimeSeries } from '@/components/charts/model/series';
+import type { ChartContent, ChartTone } from '@/components/charts/model/layers';
+import { niceExtent, type Extent } from '@/components/charts/model/scale';
+import { axisDash } from '@/constants/theme';
+import { formatNumber } from '@/shared/format';
+import type { Series, SeriesChannel } from '@/shared/contracts/recordings';
+
+interface Axis {
+  channel: SeriesChannel;
+  label: string;
+  tone: ChartTone;
+  dash: string | undefined;
+}
+export interface ChannelChart {
+  id: string;
+  title: string;
+  unit: string;
+  axes: readonly Axis[];
+}
+
+const axes = (
+  channels: readonly [SeriesChannel, SeriesChannel, SeriesChannel],
+  labels: readonly string[],
+): Axis[] =>
+  channels.map((channel, i) => ({
+    channel,
+    label: labels[i]!,
+    tone: (['north', 'east', 'down'] as const)[i]!,
+    dash: [axisDash.north, axisDash.east, axisDash.down][i],
+  }));
+
+export const CHANNEL_CHARTS: readonly ChannelChart[] = [
+  { id: 'gyro', title: 'Gyro', unit: '°/s', axes: axes(['gyro_x', 'gyro_y', 'gyro_z'], ['x', 'y', 'z']) },
+  {
+    id: 'accel',
+    title: 'Accelerometer',
+    unit: 'm/s²',
+    axes: axes(['accel_x', 'accel_y', 'accel_z'], ['x', 'y', 'z']),
+  },
+  {
+    id: 'velocity',
+    title: 'GNSS velocity',
+    unit: 'm/s',
+    axes: axes(['gnss_vn', 'gnss_ve', 'gnss_vd'], ['N', 'E', 'D']),
+  },
+  {
+    id: 'position',
+    title: 'GNSS position from the first fix',
+    unit: 'm',
+    axes: [
+      { channel: 'gnss_north', label: 'N', tone: 'north', dash: axisDash.north },
+      { channel: 'gnss_east', label: 'E', tone: 'east', dash: axisDash.east },
+    ],
+  },
+];
+export const ALL_CHANNELS: readonly SeriesChannel[] = CHANNEL_CHARTS.flatMap((chart) =>
+  chart.axes.map((axis) => axis.channel),
+);
+
+/** One chart over `series`; channels that it lacks are left out. */
+export function channelContent(chart: ChannelChart, series: Series | undefined): ChartContent {
+  const of = (channel: SeriesChannel): TimeSeries | null => {
+    const found = series?.channels.find((item) => item.name === channel);
+    return found
+      ? { length: found.timeS.length, time: found.timeS, at: (i) => found.values[i] ?? Number.NaN }
+      : null;
+  };
+  return {
+    id: `channel-${chart.id}`,
+    title: chart.title,
+    unit: chart.unit,
+    layers: chart.axes.map((axis) => ({
+      kind: 'line',
+      id: axis.channel,
+      tone: axis.tone,
+      dash: axis.dash,
+      width: 1,
+      label: axis.label,
+      series: () => of(axis.channel),
+    })),
+    windows: () => [],
+    domain: (fromS, toS) =>
+      valueExtent(
+        chart.axes.map((axis) => of(axis.channel)),
+        fromS,
+        toS,
+      ),
+    sentence: () => {
+      const whole = valueExtent(
+        chart.axes.map((axis) => of(axis.channel)),
+        -Infinity,
+        Infinity,
+      );
+      return `Between ${formatNumber(whole[0])} and ${formatNumber(whole[1])} ${chart.unit}.`;
+    },
+  };
+}
+
+function valueExtent(all: readonly (TimeSeries | null)[], fromS: number, toS: number): Extent {
+  let [low, high] = [Infinity, -Infinity];
+  for (const series of all) {
+    if (!series) continue;
+    for (let i = lowerBound(series.time, series.length, fromS); i < series.length; i++) {
+      if (series.time[i]! > toS) break;
+      const value = series.at(i);
+      if (value < low) low = value;
+      if (value > high) high = value;
+    }
+  }
+  if (low > high) return [-1, 1];
+  return low === high ? [low - 1, high + 1] : niceExtent([low, high]);
+}
