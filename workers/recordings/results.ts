@@ -1,6 +1,6 @@
 /** The kept result of a run as Arrow files, and its way back. Innovations of both groups share one file, position first. */
 import { createHash } from 'node:crypto';
-import type { CoastingTable, InnovationTable, RunResult, SolutionTable } from '../engine/types';
+import type { InnovationTable, RunResult } from '../engine/types';
 import { storeKeys, type Store } from '../store/types';
 import { readTable, writeTable, type Columns } from './arrow-file';
 
