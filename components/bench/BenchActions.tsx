@@ -6,49 +6,55 @@ import { useCan } from '@/hooks/session';
 import { SaveDialog } from './SaveDialog';
 import type { Bench } from './use-bench';
 
-/** Undo, redo, pin, save. Ctrl or ⌘ with Z and Shift Z undo and redo. `compact`: icons and Save, for the phone. */
-export function BenchActions({ bench, compact }: { bench: Bench; compact?: boolean }) {
-  const [saving, setSaving] = useState(false);
+/** Undo, redo, pin. `compact`: icons alone, for the phone's sheet. */
+export function HistoryActions({ bench, compact }: { bench: Bench; compact?: boolean }) {
   const toast = useToast();
-  const maySave = useCan('set:draft');
   const done = useLive(bench.live, (state) => state.phase === 'done');
-  useUndoKeys(bench);
+  if (bench.locked !== null) return null;
+  const look = compact ? ({ iconOnly: true, kind: 'plain' } as const) : {};
   const pin = () => {
     bench.pinCurrent();
     toast({ message: 'This run is the baseline now: later changes are seen against it.' });
   };
   return (
     <>
-      {bench.locked === null ? (
-        <>
-          <Button
-            label="Undo"
-            icon="undo"
-            iconOnly={compact}
-            disabled={!bench.canUndo}
-            reason="Nothing was changed yet."
-            onPress={bench.undo}
-          />
-          <Button
-            label="Redo"
-            icon="redo"
-            iconOnly={compact}
-            disabled={!bench.canRedo}
-            reason="Nothing was undone."
-            onPress={bench.redo}
-          />
-          <Button
-            label="Pin as baseline"
-            icon="pin"
-            iconOnly={compact}
-            disabled={!done}
-            reason="Wait until the run is done."
-            onPress={pin}
-          />
-        </>
-      ) : null}
       <Button
-        label={compact ? 'Save' : 'Save version'}
+        {...look}
+        label="Undo"
+        icon="undo"
+        disabled={!bench.canUndo}
+        reason="Nothing was changed yet."
+        onPress={bench.undo}
+      />
+      <Button
+        {...look}
+        label="Redo"
+        icon="redo"
+        disabled={!bench.canRedo}
+        reason="Nothing was undone."
+        onPress={bench.redo}
+      />
+      <Button
+        {...look}
+        label="Pin as baseline"
+        icon="pin"
+        disabled={!done}
+        reason="Wait until the run is done."
+        onPress={pin}
+      />
+    </>
+  );
+}
+
+/** Save, and the keys: Ctrl or ⌘ with Z and Shift Z undo and redo. */
+export function SaveAction({ bench, label }: { bench: Bench; label: string }) {
+  const [saving, setSaving] = useState(false);
+  const maySave = useCan('set:draft');
+  useUndoKeys(bench);
+  return (
+    <>
+      <Button
+        label={label}
         kind="primary"
         disabled={!maySave}
         reason="Your role reads: an engineer saves versions."

@@ -3,10 +3,11 @@ import { StyleSheet, View } from 'react-native';
 import { Screen } from '@/components/layout/Screen';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
 import { Figures } from '@/components/ui/Figures';
+import { space } from '@/constants/theme';
 import { useToast } from '@/components/ui/ToastProvider';
 import type { Run } from '@/shared/contracts/runs';
-import { formatDuration, formatNumber } from '@/shared/format';
-import { BenchActions } from './BenchActions';
+import { formatDuration } from '@/shared/format';
+import { HistoryActions, SaveAction } from './BenchActions';
 import type { BenchStart } from './bench-start';
 import { WIDE_VIEWS, type ViewId } from './chart-views';
 import { PhoneBench } from './PhoneBench';
@@ -48,11 +49,16 @@ export function BenchView({ start, locked, shown, own }: BenchViewProps) {
               {recordingWords(start)}
             </Figures>
           ) : null}
-          <RunStatus bench={bench} />
+          <RunStatus bench={bench} short={!wide} />
         </View>
       }
       back={wide ? undefined : '/recordings'}
-      actions={<BenchActions bench={bench} compact={!wide} />}
+      actions={
+        <>
+          {wide ? <HistoryActions bench={bench} /> : null}
+          <SaveAction bench={bench} label={wide ? 'Save version' : 'Save'} />
+        </>
+      }
       width="full"
       scroll={false}
     >
@@ -66,10 +72,13 @@ function recordingWords({ recording }: BenchStart): string {
   return [
     recording.vehicleName,
     recording.durationS === null ? null : formatDuration(recording.durationS),
-    health ? `${formatNumber(health.imu.rateHz)} Hz IMU, ${formatNumber(health.gnss.rateHz)} Hz GNSS` : null,
+    health ? `${rate(health.imu.rateHz)} IMU, ${rate(health.gnss.rateHz)} GNSS` : null,
   ]
     .filter(Boolean)
     .join(' · ');
 }
 
-const styles = StyleSheet.create({ lines: { gap: 0 } });
+/** 5 Hz, 99.8 Hz: three digits, none that say nothing. */
+const rate = (hz: number) => `${Number(hz.toPrecision(3))} Hz`;
+
+const styles = StyleSheet.create({ lines: { flexDirection: 'row', flexWrap: 'wrap', columnGap: space.m } });

@@ -3,7 +3,6 @@ import { StyleSheet, View } from 'react-native';
 import { TimeChart } from '@/components/charts/TimeChart';
 import { TrackChart } from '@/components/charts/TrackChart';
 import { Button } from '@/components/ui/Button';
-import { Choice } from '@/components/ui/Choice';
 import { Text } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { hairline, radius, space } from '@/constants/theme';
@@ -46,7 +45,6 @@ function Charts({ bench, view, height }: { bench: Bench; view: ViewId; height: n
   const charts = useTimeCharts(bench);
   const hasWindows = bench.config.outages.length > 0;
   const ids = chartsOf(view, hasWindows);
-  const [group, setGroup] = useState<'position' | 'velocity'>('position');
   const extra = view === 'innovations' || (view === 'coasting' && hasWindows) ? 1 : 0;
   const each = Math.max(LEAST_CHART_PX, Math.floor(height / (ids.length + extra || 1)));
   return (
@@ -64,21 +62,13 @@ function Charts({ bench, view, height }: { bench: Bench; view: ViewId; height: n
       {view === 'coasting' && hasWindows ? <DriftGrowth bench={bench} height={each} /> : null}
       {view === 'coasting' && !hasWindows ? <NoWindows /> : null}
       {view === 'innovations' ? (
-        <View>
-          <View style={styles.over}>
-            <Choice
-              label="Distribution of"
-              labelHidden
-              shape="segments"
-              value={group}
-              onChange={setGroup}
-              options={[
-                { value: 'position', label: 'Position' },
-                { value: 'velocity', label: 'Velocity' },
-              ]}
-            />
+        <View style={styles.pair}>
+          <View style={styles.half}>
+            <InnovationHistogram bench={bench} group="position" height={each} />
           </View>
-          <InnovationHistogram bench={bench} group={group} height={each} />
+          <View style={styles.half}>
+            <InnovationHistogram bench={bench} group="velocity" height={each} />
+          </View>
         </View>
       ) : null}
     </View>
@@ -118,6 +108,7 @@ const styles = StyleSheet.create({
   fill: { flex: 1, minHeight: 0, margin: space.s, marginRight: space.xs },
   stack: { flex: 1 },
   scroll: { overflow: 'scroll' },
-  over: { position: 'absolute', right: space.s, top: 28, zIndex: 2 },
+  pair: { flexDirection: 'row' },
+  half: { flex: 1, minWidth: 0 },
   empty: { padding: space.xxl, gap: space.s, alignItems: 'center', maxWidth: 480, alignSelf: 'center' },
 });

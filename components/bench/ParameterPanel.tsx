@@ -40,7 +40,11 @@ function Group({ bench, group, titled }: { bench: Bench; group: ParameterGroup; 
   );
   const ruled = { borderTopColor: palette.rule };
   return (
-    <View role="region" aria-label={`${GROUP_TITLES[group]} parameters`} style={[styles.group, ruled]}>
+    <View
+      role="region"
+      aria-label={`${GROUP_TITLES[group]} parameters`}
+      style={[styles.group, titled ? [styles.ruled, ruled] : null]}
+    >
       {titled ? (
         <Text variant="small" strong tone="soft" level={2} style={styles.title}>
           {GROUP_TITLES[group].toUpperCase()}
@@ -54,14 +58,16 @@ function Group({ bench, group, titled }: { bench: Bench; group: ParameterGroup; 
             <ParameterSlider bench={bench} spec={spec} />
           </View>
         ))}
-      <Button
-        label={open ? 'Fewer settings' : 'More settings'}
-        icon={open ? 'up' : 'down'}
-        kind="plain"
-        aria-expanded={open}
-        aria-label={`${open ? 'Fewer' : 'More'} ${GROUP_TITLES[group]} settings`}
-        onPress={() => setOpen(!open)}
-      />
+      <View style={styles.more}>
+        <Button
+          label={open ? 'Fewer settings' : 'More settings'}
+          icon={open ? 'up' : 'down'}
+          kind="plain"
+          aria-expanded={open}
+          aria-label={`${open ? 'Fewer' : 'More'} ${GROUP_TITLES[group]} settings`}
+          onPress={() => setOpen(!open)}
+        />
+      </View>
       {open ? (
         <View style={styles.advanced}>
           <AdvancedSettings bench={bench} group={group} />
@@ -92,8 +98,10 @@ function ParameterSlider({ bench, spec }: { bench: Bench; spec: SliderSpec }) {
 }
 
 const styles = StyleSheet.create({
-  group: { borderTopWidth: hairline, paddingBottom: space.xs, alignItems: 'stretch' },
+  ruled: { borderTopWidth: hairline },
+  group: { paddingBottom: space.xs, alignItems: 'stretch' },
   title: { paddingTop: space.m, letterSpacing: 1 },
   row: { borderTopWidth: 0 },
+  more: { alignItems: 'flex-start', marginLeft: -space.l },
   advanced: { gap: space.m, paddingBottom: space.m },
 });

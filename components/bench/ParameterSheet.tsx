@@ -4,6 +4,7 @@ import { Icon } from '@/components/ui/Icon';
 import { Text } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { hairline, space, touchTarget } from '@/constants/theme';
+import { HistoryActions } from './BenchActions';
 import { ParameterPanel } from './ParameterPanel';
 import type { ParameterGroup } from './parameter-specs';
 import type { Bench } from './use-bench';
@@ -37,21 +38,22 @@ export function ParameterSheet({ bench, open, onOpen, height }: ParameterSheetPr
         { backgroundColor: palette.sheet, borderColor: palette.rule, height: open ? height : BAR_PX },
       ]}
     >
-      <Pressable
-        role="button"
-        aria-expanded={open}
-        aria-label={open ? 'Close the parameters' : 'Open the parameters'}
-        onPress={() => onOpen(!open)}
-        style={styles.bar}
-      >
-        <View style={[styles.grip, { backgroundColor: palette.ghost }]} />
-        <View style={styles.barRow}>
-          <Text variant="label" strong>
+      <View style={[styles.grip, { backgroundColor: palette.ghost }]} />
+      <View style={styles.bar}>
+        <Pressable
+          role="button"
+          aria-expanded={open}
+          aria-label={open ? 'Close the parameters' : 'Open the parameters'}
+          onPress={() => onOpen(!open)}
+          style={styles.toggle}
+        >
+          <Icon name={open ? 'down' : 'up'} size={20} tone="petrol" />
+          <Text variant="body" strong tone="petrol">
             Parameters
           </Text>
-          <Icon name={open ? 'down' : 'up'} size={20} tone="soft" />
-        </View>
-      </Pressable>
+        </Pressable>
+        <HistoryActions bench={bench} compact />
+      </View>
       {open ? (
         <>
           <View style={[styles.tabs, { borderBottomColor: palette.rule }]}>
@@ -66,7 +68,7 @@ export function ParameterSheet({ bench, open, onOpen, height }: ParameterSheetPr
   );
 }
 
-const BAR_PX = touchTarget + 8;
+const BAR_PX = touchTarget + 16;
 const CORNER = 14;
 
 const styles = StyleSheet.create({
@@ -78,9 +80,16 @@ const styles = StyleSheet.create({
     boxShadow: '0 -6px 24px rgba(0, 0, 0, 0.12)',
     zIndex: 6,
   },
-  bar: { minHeight: BAR_PX - 1, paddingHorizontal: space.l, justifyContent: 'center' },
-  barRow: { flexDirection: 'row', justifyContent: 'space-between', alignItems: 'center' },
-  grip: { width: 36, height: 4, borderRadius: 2, alignSelf: 'center', marginBottom: space.xs },
+  grip: { width: 36, height: 4, borderRadius: 2, alignSelf: 'center', marginTop: 6 },
+  bar: { height: touchTarget, flexDirection: 'row', alignItems: 'center', paddingRight: space.s },
+  toggle: {
+    flex: 1,
+    height: touchTarget,
+    flexDirection: 'row',
+    alignItems: 'center',
+    gap: space.s,
+    paddingHorizontal: space.l,
+  },
   tabs: { borderBottomWidth: hairline, flexDirection: 'row' },
   fill: { flex: 1 },
   body: { paddingHorizontal: space.l, paddingBottom: space.l },

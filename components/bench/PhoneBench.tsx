@@ -1,8 +1,9 @@
-import { useState } from 'react';
+import { useEffect, useState } from 'react';
 import { ScrollView, StyleSheet, View } from 'react-native';
 import { TimeChart } from '@/components/charts/TimeChart';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
-import { StripEditor } from '@/components/strip/StripEditor';
+import { around, StripEditor } from '@/components/strip/StripEditor';
+import { Button } from '@/components/ui/Button';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { hairline, radius, space } from '@/constants/theme';
 import { NoWindows, Track } from './ChartDeck';
@@ -28,6 +29,7 @@ export function PhoneBench({
   onView: (view: ViewId) => void;
 }) {
   const { height } = useBreakpoint();
+  const [room, setRoom] = useState(0);
   const { palette } = useTheme();
   const [open, setOpen] = useState(false);
   const [chart, setChart] = useState<PhoneChart>(
@@ -37,16 +39,15 @@ export function PhoneBench({
     setChart(next);
     onView(PHONE_CHARTS.find((one) => one.id === next)!.view);
   };
+  useFirstWindow(bench);
   const swipe = useSwipe((by) => {
     const at = PHONE_CHARTS.findIndex((one) => one.id === chart);
     const next = PHONE_CHARTS[at + by];
     if (next) choose(next.id);
   });
   const sheetPx = Math.round(height * 0.46);
-  // With the sheet open the chart takes what is left above it.
-  const chartPx = open
-    ? Math.max(170, height - sheetPx - PHONE_CHROME_PX)
-    : Math.max(240, Math.round(height * 0.36));
+  // With the sheet open the chart takes exactly what is left above it.
+  const chartPx = open ? Math.max(150, room - TABS_PX) : Math.max(240, Math.round(height * 0.36));
   const list = (
     <>
       {open ? null : (
@@ -60,8 +61,15 @@ export function PhoneBench({
       )}
       <RunProgressLine bench={bench} />
       <View style={[styles.card, { backgroundColor: palette.sheet, borderColor: palette.rule }]}>
-        <View ref={swipe}>
+        <View ref={swipe} style={styles.tabs}>
           <ViewTabs views={PHONE_CHARTS} value={chart} onChange={choose} />
+          <Button
+            label="Show all the time"
+            icon="fit"
+            iconOnly
+            kind="plain"
+            onPress={() => bench.group.viewport.reset()}
+          />
         </View>
         <View style={styles.chart}>
           <OneChart bench={bench} chart={chart} height={chartPx} />
@@ -77,8 +85,12 @@ export function PhoneBench({
     </>
   );
   return (
-    <View style={styles.fill}>
-      <ScrollView style={styles.fill} contentContainerStyle={styles.page}>
+    <View style={styles.root}>
+      <ScrollView
+        style={styles.fill}
+        contentContainerStyle={open ? styles.tight : styles.page}
+        onLayout={(event) => setRoom(Math.floor(event.nativeEvent.layout.height))}
+      >
         {list}
       </ScrollView>
       <View style={styles.sheet}>
@@ -86,6 +98,14 @@ export function PhoneBench({
       </View>
     </View>
   );
+}
+
+/** On a narrow screen an outage of a minute is a few pixels wide: the longest one is shown large at first. */
+function useFirstWindow({ group, start }: Bench): void {
+  useEffect(() => {
+    const [longest] = [...start.config.outages].sort((a, b) => b.endS - b.startS - (a.endS - a.startS));
+    if (longest && !group.viewport.zoomed) group.viewport.show(around(longest));
+  }, [group, start]);
 }
 
 function OneChart({ bench, chart, height }: { bench: Bench; chart: PhoneChart; height: number }) {
@@ -105,12 +125,15 @@ function OneChart({ bench, chart, height }: { bench: Bench; chart: PhoneChart; h
   return <TimeChart key={chart} content={charts[chart]} group={bench.group} height={height} />;
 }
 
-/** Head, tabs and bottom bar around the chart while the sheet is open, px. */
-const PHONE_CHROME_PX = 250;
+/** The switcher over the chart and the margins around it, px. */
+const TABS_PX = 76;
 
 const styles = StyleSheet.create({
   fill: { flex: 1, minHeight: 0 },
+  root: { flex: 1, minHeight: 0, marginBottom: -space.xxl },
+  tight: { gap: space.s, paddingBottom: space.s },
   page: { gap: space.m, paddingBottom: space.l },
+  tabs: { flexDirection: 'row', alignItems: 'center' },
   card: { borderWidth: hairline, borderRadius: radius, overflow: 'hidden' },
   chart: { padding: space.s, paddingRight: space.xs },
   sheet: { marginHorizontal: -space.m },

@@ -4,14 +4,17 @@ import { Skeleton } from '@/components/ui/Skeleton';
 import { Text } from '@/components/ui/Text';
 import { VisuallyHidden } from '@/components/charts/VisuallyHidden';
 import { space } from '@/constants/theme';
+import { useLive } from '@/hooks/use-live-run';
+import { useRunCurves } from '@/hooks/runs';
 import { formatNumber } from '@/shared/format';
 import type { InnovationGroup } from './innovation-charts';
-import { driftGrowth, innovationDistribution, unitNormal } from './quiet-data';
+import { driftGrowth, innovationDistribution, unitNormal, type Distribution } from './quiet-data';
 import { useSummary, type Bench } from './use-bench';
 
 // By dynamic import: the library behind them stays out of the first chunk.
-const DriftGrowthChart = lazy(() => import('@/components/charts/quiet/DriftGrowthChart'));
-const HistogramChart = lazy(() => import('@/components/charts/quiet/HistogramChart'));
+const quiet = () => import('@/components/charts/quiet/quiet-charts');
+const DriftGrowthChart = lazy(async () => ({ default: (await quiet()).DriftGrowthChart }));
+const HistogramChart = lazy(async () => ({ default: (await quiet()).HistogramChart }));
 
 const EXPECTED = Array.from({ length: 81 }, (_, i) => ({ x: -4 + i / 10, density: unitNormal(-4 + i / 10) }));
 
@@ -42,7 +45,7 @@ export function DriftGrowth({ bench, height }: { bench: Bench; height: number })
   );
 }
 
-/** Normalised innovations against the unit normal. */
+/** Normalised innovations against the unit normal. Every fix counts here: where the curves are thinned, all are fetched. */
 export function InnovationHistogram({
   bench,
   group,
@@ -53,20 +56,25 @@ export function InnovationHistogram({
   height: number;
 }) {
   const summary = useSummary(bench);
-  const found = useMemo(
+  const runId = useLive(bench.live, (state) => (state.phase === 'done' ? state.summaryRunId : null));
+  const held = useMemo(
     () => (summary ? innovationDistribution(bench.live.data.current, group, summary) : null),
     [summary, bench.live, group],
   );
-  const words = found
-    ? `${found.count} values of accepted fixes, ${found.beyond} beyond ±4 σ; the curve is the unit normal.`
-    : summary
-      ? 'Not shown: of so long a recording only the extremes of the innovations are here.'
-      : 'No figures yet.';
+  const statistics = summary?.groups.find((one) => one.group === group);
+  const count = statistics ? statistics.used + statistics.rejected : 0;
+  const fetchable = !held && count > 0 && count <= MOST_POINTS;
+  const whole = useRunCurves(fetchable ? runId : null, MOST_POINTS);
+  const fetched = useMemo(
+    () => (whole.data ? innovationDistribution(whole.data, group, summary) : null),
+    [whole.data, group, summary],
+  );
+  const found = held ?? fetched;
   return (
     <QuietFrame
       title={`${group === 'position' ? 'Position' : 'Velocity'} innovation ÷ σ`}
-      aside="distribution, unit normal in green"
-      words={words}
+      aside="unit normal in green"
+      words={found ? foundWords(found) : missingWords(summary !== null, count, fetchable && !whole.isError)}
       height={height}
     >
       {(width) =>
@@ -82,6 +90,20 @@ export function InnovationHistogram({
       }
     </QuietFrame>
   );
+}
+
+/** As many as the server gives in one piece. */
+const MOST_POINTS = 10_000;
+
+const foundWords = ({ count, beyond }: Distribution) =>
+  `${count} values of accepted fixes, ${beyond} beyond ±4 σ; the curve is the unit normal.`;
+
+function missingWords(done: boolean, count: number, coming: boolean): string {
+  if (!done) return 'No figures yet.';
+  if (count === 0) return 'This group was not used.';
+  return coming
+    ? 'Fetching every fix …'
+    : `Not shown: ${count} fixes are more than fit in one picture, and their extremes alone say nothing of all.`;
 }
 
 function QuietFrame(props: {

@@ -1,12 +1,13 @@
 import { useEffect, useRef, useState } from 'react';
 import { StyleSheet, View } from 'react-native';
+import { useBreakpoint } from '@/components/layout/use-breakpoint';
 import { Text } from '@/components/ui/Text';
 import { web } from '@/components/ui/web-props';
-import { fonts, space } from '@/constants/theme';
+import { fonts, space, touchTarget } from '@/constants/theme';
 import { formatChange, formatNumber } from '@/shared/format';
 import { toDisplay, type DisplayUnit } from '@/shared/units';
 import type { SliderSpec } from './parameter-specs';
-import { RulerDrawing, RULER_PX, RULER_INSET_PX } from './RulerDrawing';
+import { RulerDrawing, RULER_INSET_PX } from './RulerDrawing';
 import { bindSliderGestures } from './slider-gestures';
 import { defaultUnit, fractionOf, sliderKey, valueAt } from './slider-model';
 import { TypedQuantity } from './TypedQuantity';
@@ -30,6 +31,7 @@ export interface RuledSliderProps {
 export function RuledSlider({ spec, value, baseline, reference, unit, onChange, locked }: RuledSliderProps) {
   const shownUnit = unit ?? defaultUnit(spec.quantity);
   const [width, setWidth] = useState(0);
+  const rulerPx = useBreakpoint().wide ? 36 : touchTarget;
   const rule = useSliderSurface({ spec, value, baseline, unit: shownUnit, onChange, locked, width });
   const shown = toDisplay(value, shownUnit);
   const change = shown - toDisplay(baseline, shownUnit);
@@ -70,7 +72,7 @@ export function RuledSlider({ spec, value, baseline, reference, unit, onChange, 
             if (next !== value) onChange(next, true);
           },
         })}
-        style={styles.rule}
+        style={[styles.rule, { height: rulerPx }]}
       >
         {width > 0 ? (
           <RulerDrawing
@@ -81,6 +83,7 @@ export function RuledSlider({ spec, value, baseline, reference, unit, onChange, 
             baseline={baseline}
             reference={reference}
             locked={locked !== undefined}
+            height={rulerPx}
           />
         ) : null}
       </View>
@@ -134,10 +137,10 @@ function useSliderSurface(input: SurfaceInput) {
 }
 
 const styles = StyleSheet.create({
-  slider: { paddingVertical: space.s },
+  slider: { paddingTop: 2, paddingBottom: space.s },
   head: { flexDirection: 'row', alignItems: 'center', justifyContent: 'space-between', gap: space.s },
   label: { flexShrink: 1 },
   more: { flexShrink: 1 },
   change: { fontFamily: fonts.number, textAlign: 'right' },
-  rule: { height: RULER_PX, userSelect: 'none' },
+  rule: { userSelect: 'none' },
 });

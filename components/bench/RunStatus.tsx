@@ -9,13 +9,13 @@ import { useLive } from '@/hooks/use-live-run';
 import type { Bench } from './use-bench';
 
 /** In a line how the run goes: "Run done in 0.28 s (4 430 × real time) · against baseline Harbour v6". */
-export function RunStatus({ bench }: { bench: Bench }) {
+export function RunStatus({ bench, short }: { bench: Bench; short?: boolean }) {
   const phase = useLive(bench.live, (state) => state.phase);
   const tookS = useLive(bench.live, (state) => state.tookS);
   const summary = useLive(bench.live, (state) => state.summary);
   const percent = useLive(bench.live, (state) => Math.floor(state.progress * 20) * 5);
   const took = bench.locked === null ? tookS : (summary?.computeS ?? null);
-  const speed = took && summary ? ` (${formatNumber(summary.durationS / took)} × real time)` : '';
+  const speed = took && summary && !short ? ` (${formatNumber(summary.durationS / took)} × real time)` : '';
   const words = {
     idle: 'Waiting for the first run',
     starting: 'Starting a run …',

@@ -87,7 +87,7 @@ function MarksKey() {
 }
 
 const styles = StyleSheet.create({
-  page: { flex: 1, minHeight: 0, gap: space.m },
+  page: { flex: 1, minHeight: 0, gap: space.m, marginBottom: -space.l },
   columns: { flex: 1, flexDirection: 'row', gap: space.m, minHeight: 0 },
   side: { flexGrow: 0, flexShrink: 0 },
   card: { borderWidth: hairline, borderRadius: radius },
@@ -95,5 +95,5 @@ const styles = StyleSheet.create({
   figures: { gap: space.m },
   fill: { flex: 1 },
   locked: { paddingTop: space.m },
-  key: { paddingTop: space.s },
+  key: { paddingVertical: space.s },
 });

@@ -41,26 +41,24 @@ export interface CurveSpec {
   series: SeriesOfRun;
   /** False: the baseline draws no ghost of it. */
   ghost?: boolean;
+  /** The ghost's name in the legend, where one curve alone is shown. */
+  ghostLabel?: string;
 }
 
 /** One curve in its three states: the baseline's ghost, the remainder of the run before, the run itself. */
 export function curveLayers(source: CurvesSource, spec: CurveSpec): { under: Layer[]; over: LineLayer } {
   const { id, tone, dash, width, breaks, series } = spec;
   const pick = (which: keyof Curves) => () => series(source.curves()[which]);
-  const ghost: Layer[] =
-    spec.ghost === false
-      ? []
-      : [
-          {
-            kind: 'line',
-            id: `${id}.ghost`,
-            tone: 'ghost',
-            dash,
-            breaks,
-            width: 1.25,
-            series: pick('ghost'),
-          },
-        ];
+  const ghost: LineLayer = {
+    kind: 'line',
+    id: `${id}.ghost`,
+    tone: 'ghost',
+    dash,
+    breaks,
+    width: 1.25,
+    label: spec.ghostLabel,
+    series: pick('ghost'),
+  };
   const remainder: Layer = {
     kind: 'line',
     id: `${id}.before`,
@@ -73,7 +71,7 @@ export function curveLayers(source: CurvesSource, spec: CurveSpec): { under: Lay
     series: pick('previous'),
   };
   return {
-    under: [...ghost, remainder],
+    under: spec.ghost === false ? [remainder] : [ghost, remainder],
     over: { kind: 'line', id, tone, dash, width, breaks, label: spec.label, series: pick('current') },
   };
 }
@@ -120,6 +118,10 @@ export function sigmaBand(
     centre: centre ? () => centre(source.curves().current) : undefined,
   };
 }
+
+/** Said beside the unit while a baseline is drawn behind several curves. */
+export const ghostRemark = (source: CurvesSource, more = ''): string =>
+  [more, source.curves().ghost ? 'grey: baseline' : ''].filter(Boolean).join(' · ');
 
 /** [0, largest] over the series that are there, a little headroom above. */
 export function fromZero(series: (TimeSeries | null)[], fromS: number, toS: number): [number, number] {

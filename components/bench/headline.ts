@@ -1,6 +1,7 @@
 /** The headline figures of a run and what changed against the baseline. Pure. */
 import type { GroupStatistics, OutageResult, RunSummary } from '@/shared/contracts/runs';
 import { formatChange, formatNumber } from '@/shared/format';
+import { lengthLabel } from '@/components/strip/labels';
 
 export type Verdict = 'good' | 'attention' | 'bad' | 'plain';
 
@@ -27,7 +28,7 @@ export function headlineFigures(summary: RunSummary | null, baseline: RunSummary
   return [
     {
       key: 'drift',
-      label: drift ? `Drift after ${formatNumber(drift.afterS)} s` : 'Drift',
+      label: drift ? `Drift after ${lengthLabel(drift.afterS)}` : 'Drift',
       value: drift?.actual ?? null,
       unit: 'm',
       digits: 3,
@@ -39,16 +40,7 @@ export function headlineFigures(summary: RunSummary | null, baseline: RunSummary
           : `RMS of ${drift.windows} windows`
         : 'draw an outage on the strip',
     },
-    {
-      key: 'ratio',
-      label: 'Actual ÷ predicted',
-      value: drift?.ratio ?? null,
-      unit: '',
-      digits: 3,
-      verdict: drift?.ratio == null ? 'plain' : ratioVerdict(drift.ratio),
-      change: changeOf(drift?.ratio, before?.ratio, ''),
-      remark: drift ? '1 when σ tells the truth' : '',
-    },
+    ratioFigure(drift, before),
     nisFigure('position', summary, baseline),
     nisFigure('velocity', summary, baseline),
     rejectedFigure(summary, baseline),
@@ -73,6 +65,33 @@ export function driftOf(
   const actual = rms(points.map((point) => point.horizontalM));
   const predicted = rms(points.map((point) => point.predictedHorizontalM));
   return { afterS, actual, ratio: actual / predicted, windows: points.length };
+}
+
+type Drift = NonNullable<ReturnType<typeof driftOf>>;
+
+function ratioFigure(drift: Drift | null, before: Drift | null): HeadlineFigure {
+  const bounds = drift ? ratioBounds95(drift.windows) : null;
+  const outside = drift !== null && bounds !== null && (drift.ratio < bounds[0] || drift.ratio > bounds[1]);
+  return {
+    key: 'ratio',
+    label: 'Actual ÷ predicted',
+    value: drift?.ratio ?? null,
+    unit: '',
+    digits: 3,
+    verdict: !drift ? 'plain' : outside ? 'bad' : 'good',
+    change: changeOf(drift?.ratio, before?.ratio, ''),
+    remark: bounds ? `95 % band ${formatNumber(bounds[0], 2)} to ${formatNumber(bounds[1], 3)}` : '',
+  };
+}
+
+/**
+ * Where the ratio of a filter that tells the truth lies in 95 of 100 cases: its square is χ² with two degrees of freedom a
+ * window, divided by them. Few windows prove little, and the band says so. Quantiles after Wilson and Hilferty (1931).
+ */
+export function ratioBounds95(windows: number): [number, number] {
+  const degrees = 2 * windows;
+  const quantile = (z: number) => Math.max(0, 1 - 2 / (9 * degrees) + z * Math.sqrt(2 / (9 * degrees))) ** 3;
+  return [Math.sqrt(quantile(-1.96)), Math.sqrt(quantile(1.96))];
 }
 
 function nisFigure(
@@ -140,9 +159,6 @@ function lagFigure(summary: RunSummary | null, baseline: RunSummary | null): Hea
     remark: now ? `${now.channel}${now.band === null ? '' : `, band ±${formatNumber(now.band, 2)}`}` : '',
   };
 }
-
-const ratioVerdict = (ratio: number): Verdict =>
-  ratio > 2 || ratio < 0.33 ? 'bad' : ratio > 1.25 || ratio < 0.7 ? 'attention' : 'good';
 
 function changeOf(
   now: number | null | undefined,

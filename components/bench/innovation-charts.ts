@@ -45,7 +45,8 @@ export function innovationChart(
       label: axis.key === 'n' ? '±3σ' : undefined,
     }),
   );
-  const lines = curves.map((spec) => curveLayers(source, spec));
+  // North on top: down scatters most and would cover the others.
+  const lines = curves.map((spec) => curveLayers(source, spec)).reverse();
   const rejected: Layer = {
     kind: 'diamonds',
     id: 'rejected',

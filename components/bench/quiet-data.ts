@@ -105,11 +105,16 @@ function meanPrediction(
     const afterS = (longestS * step) / STEPS;
     const squares = windows
       .filter((window) => window[window.length - 1]!.afterS >= afterS - 1e-9)
-      .map(
-        (window) =>
-          (window.find((point) => point.afterS >= afterS) ?? window[window.length - 1]!).sigmaM ** 2,
-      );
+      .map((window) => sigmaAt(window, afterS) ** 2);
     const sigmaM = Math.sqrt(squares.reduce((sum, square) => sum + square, 0) / Math.max(1, squares.length));
     return { afterS, sigmaM, p95M: sigmaM * P95_OVER_SIGMA };
   });
+}
+
+/** Between its rows, which a thinned frame leaves a second apart. */
+function sigmaAt(window: { afterS: number; sigmaM: number }[], afterS: number): number {
+  const next = window.findIndex((point) => point.afterS >= afterS);
+  if (next <= 0) return window[next === 0 ? 0 : window.length - 1]!.sigmaM;
+  const [a, b] = [window[next - 1]!, window[next]!];
+  return a.sigmaM + ((b.sigmaM - a.sigmaM) * (afterS - a.afterS)) / (b.afterS - a.afterS);
 }

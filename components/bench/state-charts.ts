@@ -1,5 +1,6 @@
 /** σ of the states, bias estimates, and the error while coasting. */
 import type { FrameColumn } from '@/shared/contracts/frames';
+import type { OutageResult } from '@/shared/contracts/runs';
 import { formatNumber } from '@/shared/format';
 import { QUANTITIES } from '@/shared/units';
 import { radius95OverDrms } from '@/components/charts/model/chi-square';
@@ -14,6 +15,7 @@ import {
   around,
   axisCurves,
   fromZero,
+  ghostRemark,
   sigmaBand,
   stacked,
   type CurveSpec,
@@ -38,7 +40,7 @@ export function sigmaChart(
     id: `sigma.${state}`,
     title: { position: 'Position σ', velocity: 'Velocity σ', attitude: 'Attitude σ' }[state],
     unit,
-    remark: () => '1σ',
+    remark: () => ghostRemark(source, '1σ'),
     layers: stacked(source, specs),
     windows,
     domain: (fromS, toS) => fromZero(allRuns(source, specs), fromS, toS),
@@ -59,6 +61,7 @@ export function horizontalSigmaChart(source: CurvesSource, windows: Windows): Ch
   const spec: CurveSpec = {
     id: 'horizontal',
     label: 'horizontal σ',
+    ghostLabel: 'baseline',
     tone: 'north',
     series: (data) =>
       derivedSeries(data, 'state', (run) => {
@@ -102,6 +105,7 @@ export function biasChart(source: CurvesSource, sensor: 'gyro' | 'accel', window
     id: `bias.${sensor}`,
     title: sensor === 'gyro' ? 'Gyro bias' : 'Accelerometer bias',
     unit: unit.symbol,
+    remark: () => ghostRemark(source),
     layers: [...bands, ...stacked(source, specs)],
     windows,
     domain: (fromS, toS) => around(allRuns(source, specs), fromS, toS),
@@ -124,6 +128,7 @@ export function coastingChart(
   const error: CurveSpec = {
     id: 'error',
     label: 'error',
+    ghostLabel: 'baseline',
     tone: 'ink',
     width: 2,
     breaks: true,
@@ -156,7 +161,7 @@ export function coastingChart(
       const all = [predicted(current), ...allRuns(source, [error]), predicted(previous)];
       return fromZero(all, fromS, toS);
     },
-    annotations: () => coastingNotes(source, error.series, predicted),
+    annotations: () => coastingNotes(source, error.series, predicted, direction),
     sentence: () => coastingSentence(source),
   };
 }
@@ -193,6 +198,7 @@ function coastingNotes(
   source: CurvesSource,
   error: (data: RunData | null) => TimeSeries | null,
   predicted: (data: RunData | null) => TimeSeries | null,
+  direction: 'horizontal' | 'vertical',
 ): Annotation[] {
   const { current } = source.curves();
   const series = error(current);
@@ -200,20 +206,31 @@ function coastingNotes(
   if (!current || !series || !bound) return [];
   const outage = current.column('coasting', 'outage');
   const notes: Annotation[] = [];
+  // The curve's last point may lie a moment before the window's end; the figure is the summary's.
+  const endErrors = current.complete
+    ? source.summary()?.outages.map((one) => endError(one, direction))
+    : undefined;
   for (let row = 0; row < series.length; row++) {
     const last = row + 1 === series.length || outage[row + 1] !== outage[row];
     if (!last) continue;
     const timeS = series.time[row]!;
+    const text = `${formatNumber(endErrors?.[outage[row]!] ?? series.at(row))} m`;
     notes.push({
       timeS,
       value: series.at(row),
-      text: `${formatNumber(series.at(row))} m`,
+      text,
       number: true,
       tone: 'ink',
     });
     notes.push({ timeS, value: bound.at(row), text: '95 % predicted', tone: 'vermilion' });
   }
   return notes;
+}
+
+/** Error at the window's end; undefined where the run did not get there. */
+function endError({ points }: OutageResult, direction: 'horizontal' | 'vertical'): number | undefined {
+  const last = points[points.length - 1];
+  return direction === 'horizontal' ? last?.horizontalM : last && Math.abs(last.verticalM);
 }
 
 function referenceWords(source: CurvesSource): string {

@@ -11,41 +11,54 @@ import type { ChartContent, Layer } from './model/layers';
 import { nearestIndex } from './model/series';
 import { formatAxisTime } from './model/ticks';
 
-/** Title, what each line is, and at the cursor its value; the unit to the right. */
-export function ChartLegend({
-  content,
-  group,
-  aside,
-}: {
+export interface ChartLegendProps {
   content: ChartContent;
   group: ChartGroup;
+  /** Beside the unit: what is compared, what lies beyond the scale. */
   aside: string;
-}) {
+  /** Title and unit in one line, the legend in the next. */
+  narrow: boolean;
+}
+
+/** Title, what each line is, and at the cursor its value; the unit to the right. */
+export function ChartLegend({ content, group, aside, narrow }: ChartLegendProps) {
   const cursor = useSyncExternalStore(group.cursor.subscribe, () => group.cursor.current);
-  const named = content.layers.filter((layer) => layer.label !== undefined);
+  const legend = (
+    <View style={[styles.legend, narrow ? styles.wholeLine : null]}>
+      {legendOrder(content.layers).map((layer) => (
+        <View key={layer.id} style={styles.entry}>
+          <Sample layer={layer} />
+          <Text variant="small" tone="soft">
+            {layer.label}
+          </Text>
+          {cursor === null ? null : <Reading layer={layer} timeS={cursor} />}
+        </View>
+      ))}
+    </View>
+  );
   return (
     <View style={styles.row}>
       <Text variant="label" strong level={3}>
         {content.title}
       </Text>
-      <View style={styles.legend}>
-        {named.map((layer) => (
-          <View key={layer.id} style={styles.entry}>
-            <Sample layer={layer} />
-            <Text variant="small" tone="soft">
-              {layer.label}
-            </Text>
-            {cursor === null ? null : <Reading layer={layer} timeS={cursor} />}
-          </View>
-        ))}
-      </View>
+      {narrow ? null : legend}
       <Text variant="small" tone="soft" style={styles.unit}>
         {[cursor === null ? aside : `at ${formatAxisTime(cursor, 0.1)}`, content.unit]
           .filter(Boolean)
           .join(' · ')}
       </Text>
+      {narrow ? legend : null}
     </View>
   );
+}
+
+/** Lines first and in the order of their axes, whatever lies on top of what; then grounds, marks and rules. */
+function legendOrder(layers: readonly Layer[]): Layer[] {
+  const axes = ['N', 'E', 'D'];
+  const kinds: Layer['kind'][] = ['line', 'dots', 'band', 'area', 'diamonds', 'rules'];
+  const rank = ({ kind, tone, label = '' }: Layer) =>
+    kinds.indexOf(kind) * 10 + (tone === 'ghost' ? 5 : Math.max(0, axes.indexOf(label)));
+  return layers.filter((layer) => layer.label !== undefined).sort((a, b) => rank(a) - rank(b));
 }
 
 function Reading({ layer, timeS }: { layer: Layer; timeS: number }) {
@@ -97,6 +110,7 @@ function Sample({ layer }: { layer: Layer }) {
 const styles = StyleSheet.create({
   row: { flexDirection: 'row', flexWrap: 'wrap', alignItems: 'center', columnGap: space.m, minHeight: 24 },
   legend: { flexDirection: 'row', flexWrap: 'wrap', flexGrow: 1, columnGap: space.m, alignItems: 'center' },
+  wholeLine: { width: '100%' },
   entry: { flexDirection: 'row', alignItems: 'center', gap: space.xs },
   unit: { marginLeft: 'auto' },
   number: { fontFamily: fonts.number },

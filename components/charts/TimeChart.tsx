@@ -11,8 +11,8 @@ import { ChartTable } from './ChartTable';
 import { ChartAnnotations, ChartAxes, type AxesDrawing } from './drawing/ChartAxes';
 import { inkOf } from './drawing/layer-style';
 import { ShapeSet } from './drawing/shape-set';
-import type { ChartContent } from './model/layers';
-import { chartBuffers, drawChart, type PlotBox } from './model/time-chart';
+import type { ChartContent, Layer } from './model/layers';
+import { chartBuffers, drawChart, type LayerPaths, type PlotBox } from './model/time-chart';
 
 export interface TimeChartProps {
   content: ChartContent;
@@ -25,6 +25,7 @@ export interface TimeChartProps {
 
 const GUTTER_PX = 46;
 const HEAD_PX = 26;
+const NARROW_PX = 520;
 
 /** One chart of a stack that shares time and cursor. React draws frame and axes; curves are set straight on the page. */
 export function TimeChart({ content, group, height, timeAxis = true }: TimeChartProps) {
@@ -36,7 +37,7 @@ export function TimeChart({ content, group, height, timeAxis = true }: TimeChart
   const box = useMemo<PlotBox>(
     () => ({
       left: GUTTER_PX,
-      top: 4,
+      top: 8,
       right: Math.max(GUTTER_PX + 10, width - 10),
       bottom: plotHeight - (timeAxis ? 24 : 8),
     }),
@@ -53,7 +54,7 @@ export function TimeChart({ content, group, height, timeAxis = true }: TimeChart
         style={[styles.head, { paddingLeft: GUTTER_PX }]}
         onLayout={(event) => setHeadPx(event.nativeEvent.layout.height)}
       >
-        <ChartLegend content={content} group={group} aside={axes.aside} />
+        <ChartLegend content={content} group={group} aside={axes.aside} narrow={width < NARROW_PX} />
       </View>
       <View
         ref={surface}
@@ -147,10 +148,7 @@ function useDrawing({ content, group, box, width, shapes, setAxes }: DrawingInpu
     };
     const draw = () => {
       const drawing = drawChart(content, group.viewport.current, box, keep.current);
-      for (const [id, paths] of Object.entries(drawing.layers)) {
-        shapes.set(`${id}.fill`, paths.fill);
-        shapes.set(`${id}.stroke`, paths.stroke);
-      }
+      for (const layer of content.layers) drawLayer(shapes, layer, drawing.layers[layer.id]);
       shapes.set('tint', drawing.ground.tint);
       shapes.set('hatch', drawing.ground.hatch);
       shapes.set('edges', drawing.ground.edges);
@@ -194,6 +192,16 @@ function useChartSurface(group: ChartGroup, box: PlotBox) {
     [group],
   );
   return { surface, onKeyDown };
+}
+
+function drawLayer(shapes: ShapeSet, layer: Layer, paths: LayerPaths | undefined): void {
+  const stroke = `${layer.id}.stroke`;
+  shapes.set(`${layer.id}.fill`, paths?.fill ?? '');
+  shapes.set(stroke, paths?.stroke ?? '');
+  if (layer.kind !== 'line') return;
+  const dense = paths?.dense ?? false;
+  shapes.attribute(stroke, 'stroke-dasharray', dense || !layer.dash ? 'none' : layer.dash);
+  shapes.attribute(stroke, 'stroke-opacity', String((layer.opacity ?? 1) * (dense ? 0.75 : 1)));
 }
 
 const beyondText = ({ count, largest }: { count: number; largest: number }, unit: string) =>

@@ -114,6 +114,7 @@ export function StripEditor({ strip, height, windows, onChange, group }: StripEd
                 x={(geometry.x(windows[current]!.startS) + geometry.x(windows[current]!.endS)) / 2}
                 width={width}
                 top={height}
+                onZoom={() => group.viewport.show(around(windows[current]!))}
                 onEdit={() => setSheet({ index: current, initial: windows[current]! })}
                 onRemove={() => remove(current)}
                 onClose={() => setSelected(null)}
@@ -144,6 +145,12 @@ export function StripEditor({ strip, height, windows, onChange, group }: StripEd
       ) : null}
     </View>
   );
+}
+
+/** A window with more than half of its length beside it on either side. */
+export function around({ startS, endS }: { startS: number; endS: number }): [number, number] {
+  const margin = 0.7 * (endS - startS);
+  return [startS - margin, endS + margin];
 }
 
 /** The cursor that all charts share, and under the profile what stretch they show. Set on the page without a render. */

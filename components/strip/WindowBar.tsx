@@ -14,15 +14,17 @@ export interface WindowBarProps {
   x: number;
   width: number;
   top: number;
+  /** Shows the window large in all charts. */
+  onZoom: () => void;
   onEdit: () => void;
   onRemove: () => void;
   onClose: () => void;
 }
 
-const BAR_PX = 300;
+const BAR_PX = 330;
 
 /** Floats under the selected window: its times in figures, and what can be done with it. */
-export function WindowBar({ window, x, width, top, onEdit, onRemove, onClose }: WindowBarProps) {
+export function WindowBar({ window, x, width, top, onZoom, onEdit, onRemove, onClose }: WindowBarProps) {
   const { palette } = useTheme();
   const left = Math.max(0, Math.min(width - BAR_PX, x - BAR_PX / 2));
   return (
@@ -39,6 +41,7 @@ export function WindowBar({ window, x, width, top, onEdit, onRemove, onClose }: 
           {`${lengthLabel(window.endS - window.startS)} without ${WITHHELD[window.withhold]}`}
         </Text>
       </View>
+      <Button label="Zoom all charts to it" icon="search" iconOnly kind="plain" onPress={onZoom} />
       <Button label="Type times" icon="edit" iconOnly kind="plain" onPress={onEdit} />
       <Button label="Remove the window" icon="delete" iconOnly kind="plain" onPress={onRemove} />
       <Button label="Deselect" icon="close" iconOnly kind="plain" onPress={onClose} />

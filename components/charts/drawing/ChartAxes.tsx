@@ -6,6 +6,10 @@ import type { ChartDrawing, PlotBox } from '../model/time-chart';
 
 export type AxesDrawing = Pick<ChartDrawing, 'valueTicks' | 'timeTicks' | 'annotations'>;
 
+/** A time label at the right end is turned inwards, so that it is not cut. */
+const EDGE_PX = 8;
+const LABEL_HALF_PX = 26;
+
 /** Grid, tick labels and words in the plot. Rendered by React: it changes far less often than the curves. */
 export const ChartAxes = memo(function ChartAxes({
   axes,
@@ -38,9 +42,9 @@ export const ChartAxes = memo(function ChartAxes({
         ? axes.timeTicks.map((tick) => (
             <SvgText
               key={tick.label}
-              x={tick.at}
+              x={tick.at > box.right - LABEL_HALF_PX + EDGE_PX ? box.right + EDGE_PX : tick.at}
               y={box.bottom + 17}
-              textAnchor="middle"
+              textAnchor={tick.at > box.right - LABEL_HALF_PX + EDGE_PX ? 'end' : 'middle'}
               fontSize={typeScale.small}
               fontFamily={fonts.number}
               fill={palette.inkSoft}

@@ -18,6 +18,8 @@ export interface PlotBox {
 export interface LayerPaths {
   stroke: string;
   fill: string;
+  /** More points than pixels: dashes and full ink would only make mud of it. */
+  dense?: boolean;
 }
 export interface PlacedTick {
   at: number;
@@ -136,8 +138,8 @@ function drawLayer(layer: Layer, context: LayerContext): LayerPaths {
   }
   const line = points(keep.upper, series);
   if (layer.kind === 'area') return { stroke: linePath(line), fill: areaPath(line, y(0)) };
-  if (layer.label !== undefined) countBeyond(series, context);
-  return { stroke: linePath(line), fill: '' };
+  if (layer.label !== undefined && layer.tone !== 'ghost') countBeyond(series, context);
+  return { stroke: linePath(line), fill: '', dense: line.length > 1.2 * (box.right - box.left) };
 }
 
 /** centre ± half, point by point; both share one time axis. */
@@ -148,8 +150,9 @@ function shifted(half: TimeSeries, centre: TimeSeries | null, sign: 1 | -1): Tim
 
 function drawMarks(kind: 'dots' | 'diamonds', series: TimeSeries, context: LayerContext): LayerPaths {
   const { box, view, x, y, keep } = context;
+  const edge = kind === 'dots' ? 3 : 7;
   // A mark beyond the scale stands at the plot's edge: it is not lost.
-  const held = (value: number) => Math.min(box.bottom - 3, Math.max(box.top + 3, y(value)));
+  const held = (value: number) => Math.min(box.bottom - edge, Math.max(box.top + edge, y(value)));
   const line = decimate({ series, fromS: view[0], toS: view[1], x, y: held }, keep.upper);
   let count = 0;
   for (let i = 0; i < line.length; i++) {
@@ -192,7 +195,7 @@ function placeAnnotations(content: ChartContent, view: Extent, x: Scale, y: Scal
   for (const { timeS, value, text, number = false, tone } of content.annotations?.() ?? []) {
     if (timeS < view[0] || timeS > view[1] || !Number.isFinite(value)) continue;
     const at = x(timeS);
-    const width = text.length * (number ? 7.6 : 6.4) + 8;
+    const width = text.length * (number ? 7.6 : 5.5) + 8;
     const anchor = at + width > box.right ? 'end' : 'start';
     let height = Math.min(box.bottom - 4, Math.max(box.top + 12, y(value) + 4));
     const clash = () =>

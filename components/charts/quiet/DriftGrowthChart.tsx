@@ -66,5 +66,3 @@ export const DriftGrowthChart = memo(function DriftGrowthChart(props: DriftGrowt
     </VictoryChart>
   );
 });
-
-export default DriftGrowthChart;

@@ -59,5 +59,3 @@ export const HistogramChart = memo(function HistogramChart({
     </VictoryChart>
   );
 });
-
-export default HistogramChart;
