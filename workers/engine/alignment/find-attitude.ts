@@ -12,6 +12,7 @@ import { EngineError, type ImuColumns } from '../types';
 import { searchHeading, type FoundHeading, type HeadingQuestion } from './heading-search';
 import { levelMoving } from './moving-level';
 import { restBiasVariance } from './rest-bias';
+import { horizontalDistance, horizontalSpeed } from './track';
 import { findStaticStretch, type StaticStretch } from './static-stretch';
 
 type Three = [number, number, number];
@@ -90,14 +91,38 @@ function firstUsable(imu: ImuColumns, fixes: Fixes, parameters: Parameters): { s
   return { sample, fix };
 }
 
+/** The first fix with a position that the next ones bear out; one without height only where none has it. */
 function firstPosition(fixes: Fixes, fromS: number): number {
   let poor = -1;
   for (let j = 0; j < fixes.count; j += 1) {
     if (fixes.timeS[j]! < fromS - 1e-7 || fixes.positionAxes[j] === 0) continue;
-    if ((fixes.positionAxes[j]! & 4) !== 0) return j;
+    if ((fixes.positionAxes[j]! & 4) !== 0 && isBorneOut(fixes, j)) return j;
     if (poor < 0) poor = j;
   }
   return poor;
+}
+
+/** Fixes looked at, and how far apart two may be: σ, and a vehicle's own way at this speed, m/s. */
+const WITNESSES = 3;
+const WITNESS_SIGMAS = 6;
+const WITNESS_SPEED = 5;
+
+/** Is one of the next fixes where this one and its velocity say? The last fix of a log has no witness and is taken. */
+function isBorneOut(fixes: Fixes, j: number): boolean {
+  let seen = 0;
+  for (let i = j + 1; i < fixes.count && seen < WITNESSES; i += 1) {
+    if (fixes.positionAxes[i] === 0) continue;
+    seen += 1;
+    const dt = fixes.timeS[i]! - fixes.timeS[j]!;
+    const moving = fixes.velocityAxes[i] !== 0 ? horizontalSpeed(fixes, i) : 10 * WITNESS_SPEED;
+    const sigma = Math.sqrt(fixes.positionVariance[3 * i]! + fixes.positionVariance[3 * j]!);
+    const allowed = WITNESS_SIGMAS * sigma + (moving + WITNESS_SPEED) * dt;
+    const rise = Math.abs(fixes.heightM[i]! - fixes.heightM[j]!);
+    const vertical = Math.sqrt(fixes.positionVariance[3 * i + 2]! + fixes.positionVariance[3 * j + 2]!);
+    const level = !(rise > WITNESS_SIGMAS * vertical + (moving + WITNESS_SPEED) * dt);
+    if (level && horizontalDistance(fixes, i, j) <= allowed) return true;
+  }
+  return seen === 0;
 }
 
 function noOverlap(imu: ImuColumns, fixes: Fixes): EngineError {

@@ -1,10 +1,27 @@
-/** Collects heading estimates: a good one starts an average, poor ones before it are kept for want of better. */
+/**
+ * Collects heading estimates of single fixes until enough good ones are there, and takes a robust average: fixes that
+ * are outliers must not turn the start.
+ */
 import { wrapAngle } from '../geodesy';
 
-/** Averaged over this long after the first good estimate, s. */
+/** Averaged over this long, s, and at least so many estimates. */
 const AVERAGE_S = 2;
-/** An estimate poorer than this is passed over while a better one may come, rad. */
+const MIN_COUNT = 3;
+/** Estimates older than this no longer count if too few have followed, s. */
+const STALE_S = 30;
+/** An estimate poorer than this is passed over while better ones may come, rad. */
 const GOOD_SIGMA = 0.1;
+/** Further than this many σ from the median, and than the slack (rad), an estimate is an outlier. */
+const OUTLIER_SIGMAS = 4;
+const OUTLIER_SLACK = 0.02;
+
+interface Sample {
+  yaw: number;
+  sigma: number;
+  timeS: number;
+  speed: number;
+  arm: [number, number, number];
+}
 
 export interface HeadingEstimate {
   /** Yaw at the start, rad, and its 1σ as far as it does not come from the carrying. */
@@ -19,52 +36,58 @@ export interface HeadingEstimate {
 }
 
 export class HeadingAverage {
-  private reference = 0;
-  private weight = 0;
-  private weighted = 0;
-  private best = Infinity;
-  private firstS = 0;
-  private timeS = 0;
-  private speed = 0;
-  private goodSinceS = Infinity;
-  private readonly arm = new Float64Array(3);
+  private good: Sample[] = [];
+  private poor: Sample[] = [];
 
   /** `floorSigma`: the part of σ that all estimates share and that does not average out, rad. */
   constructor(private readonly floorSigma: number) {}
 
   add(yaw: number, sigma: number, timeS: number, speed: number, arm: Float64Array): void {
-    const good = sigma <= GOOD_SIGMA;
-    const startsGood = good && this.goodSinceS === Infinity;
-    if (!good && (this.goodSinceS < Infinity || sigma >= this.best)) return;
-    if (startsGood) this.goodSinceS = timeS;
-    if (!good) this.best = sigma;
-    if (startsGood || !good) {
-      this.weight = 0;
-      this.weighted = 0;
-      this.reference = yaw;
-      this.firstS = timeS;
+    const sample: Sample = { yaw, sigma, timeS, speed, arm: [arm[0]!, arm[1]!, arm[2]!] };
+    if (sigma <= GOOD_SIGMA) {
+      this.good = this.good.filter((s) => timeS - s.timeS <= STALE_S);
+      this.good.push(sample);
+    } else if (this.good.length === 0) {
+      // The few best so far.
+      this.poor.push(sample);
+      this.poor.sort((a, b) => a.sigma - b.sigma);
+      this.poor.length = Math.min(this.poor.length, MIN_COUNT);
     }
-    const w = 1 / (sigma * sigma);
-    this.weighted += w * wrapAngle(yaw - this.reference);
-    this.weight += w;
-    this.timeS = timeS;
-    this.speed = speed;
-    this.arm.set(arm);
   }
 
   isFull(nowS: number): boolean {
-    return nowS - this.goodSinceS > AVERAGE_S;
+    return this.good.length >= MIN_COUNT && nowS - this.good[0]!.timeS > AVERAGE_S;
   }
 
   result(): HeadingEstimate | null {
-    if (this.weight === 0) return null;
+    const samples = this.good.length > 0 ? this.good : this.poor;
+    if (samples.length === 0) return null;
+    const middle = circularMedian(samples);
+    const inliers = samples.filter(
+      (s) => Math.abs(wrapAngle(s.yaw - middle)) <= OUTLIER_SIGMAS * s.sigma + OUTLIER_SLACK,
+    );
+    let weight = 0;
+    let weighted = 0;
+    for (const { yaw, sigma } of inliers) {
+      weight += 1 / (sigma * sigma);
+      weighted += wrapAngle(yaw - middle) / (sigma * sigma);
+    }
+    const last = inliers.reduce((a, b) => (b.timeS > a.timeS ? b : a));
+    const first = inliers.reduce((a, b) => (b.timeS < a.timeS ? b : a));
     return {
-      yaw: wrapAngle(this.reference + this.weighted / this.weight),
-      sigma: Math.hypot(Math.sqrt(1 / this.weight), this.floorSigma),
-      firstS: this.firstS,
-      timeS: this.timeS,
-      speed: this.speed,
-      biasArm: [this.arm[0]!, this.arm[1]!, this.arm[2]!],
+      yaw: wrapAngle(middle + weighted / weight),
+      sigma: Math.hypot(Math.sqrt(1 / weight), this.floorSigma),
+      firstS: first.timeS,
+      timeS: last.timeS,
+      speed: last.speed,
+      biasArm: last.arm,
     };
   }
+}
+
+/** The estimate whose distances to the others, in their σ, sum to the least. */
+function circularMedian(samples: readonly Sample[]): number {
+  const cost = (yaw: number) =>
+    samples.reduce((sum, s) => sum + Math.abs(wrapAngle(s.yaw - yaw)) / s.sigma, 0);
+  return samples.reduce((best, s) => (cost(s.yaw) < cost(best.yaw) ? s : best)).yaw;
 }

@@ -50,7 +50,11 @@ export function findStaticStretch(imu: ImuColumns, fixes: Fixes, from: number): 
     while (end < time.length && time[end]! - time[windowStart]! < WINDOW_S) end += 1;
     if (end >= time.length || end - windowStart < 3) break;
     if (!windowIsStill(axes, windowStart, end, scale, sums, counted)) break;
-    if (!gnss.isStillUntil(time[end]!)) break;
+    if (!gnss.isStillUntil(time[end]!)) {
+      // Since the first of the fixes that say so.
+      while (good > from && time[good]! > gnss.movingSinceS) good -= 1;
+      break;
+    }
     if (counted === 0 || time[end]! - time[from]! <= MEAN_LIMIT_S) {
       for (let i = 0; i < 6; i += 1)
         for (let k = windowStart; k < end; k += 1) sums[i] = sums[i]! + axes[i]![k]! * scale;
@@ -118,8 +122,10 @@ function windowIsStill(
   return true;
 }
 
-/** Looks at fixes in the order of time: is each within noise of standing still? */
+/** Looks at fixes in the order of time: do they stand still? One that does not may be an outlier, two in a row are not. */
 class GnssRest {
+  /** Time of the first of the latest fixes that move, s. */
+  movingSinceS = Infinity;
   private next = 0;
   private first = -1;
 
@@ -131,9 +137,12 @@ class GnssRest {
   isStillUntil(timeS: number): boolean {
     const { fixes } = this;
     for (; this.next < fixes.count && fixes.timeS[this.next]! <= timeS; this.next += 1) {
-      if (fixes.timeS[this.next]! < this.startS) continue;
-      if (!this.isStill(this.next)) return false;
-      if (this.first < 0 && fixes.positionAxes[this.next] !== 0) this.first = this.next;
+      const j = this.next;
+      if (fixes.timeS[j]! < this.startS || (fixes.positionAxes[j]! | fixes.velocityAxes[j]!) === 0) continue;
+      if (this.isStill(j)) this.movingSinceS = Infinity;
+      else if (this.movingSinceS < Infinity) return false;
+      else this.movingSinceS = fixes.timeS[j]!;
+      if (this.first < 0 && fixes.positionAxes[j] !== 0) this.first = j;
     }
     return true;
   }

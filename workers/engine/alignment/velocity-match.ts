@@ -15,6 +15,7 @@ const PAIR_MAX_S = 10;
 /** A change of velocity smaller than this tells no direction, m/s; likewise a way, m. */
 const MIN_CHANGE = 0.7;
 const MIN_WAY = 3;
+const OUTLIER_SIGMAS = 4;
 const GRAVITY = 9.8;
 
 /** GNSS and dead-reckoned velocity of the antenna, north and east, at one fix. */
@@ -65,8 +66,10 @@ export class VelocityMatch {
       const change = Math.hypot(now.gnssN - then.gnssN, now.gnssE - then.gnssE);
       const own = Math.hypot(now.ownN - then.ownN, now.ownE - then.ownE);
       if (Math.min(change, own) < MIN_CHANGE) continue;
-      const noise = Math.sqrt(now.variance + then.variance);
-      const sigma = Math.hypot(noise, this.drift(then.timeS, now.timeS)) / change;
+      const spread = Math.hypot(Math.sqrt(now.variance + then.variance), this.drift(then.timeS, now.timeS));
+      // A turn of the frame changes no length: a pair that differs in it holds an outlier.
+      if (Math.abs(change - own) > OUTLIER_SIGMAS * spread) continue;
+      const sigma = spread / change;
       if (sigma >= bestSigma) continue;
       best = then;
       bestSigma = sigma;
@@ -128,10 +131,13 @@ export class VelocityMatch {
     const [lx, ly] = leverArm;
     const ownN = way[0]! - velocity[0]! * lag + (dcm[0]! - 1) * lx + dcm[1]! * ly;
     const ownE = way[1]! - velocity[1]! * lag + dcm[3]! * lx + (dcm[4]! - 1) * ly;
-    if (Math.min(distance, Math.hypot(ownN, ownE)) < MIN_WAY) return;
+    const own = Math.hypot(ownN, ownE);
+    if (Math.min(distance, own) < MIN_WAY) return;
     const moved = fixes.timeS[j]! - this.sinceS;
     const noise = Math.sqrt(fixes.positionVariance[3 * j]! + fixes.positionVariance[3 * this.anchor]!);
-    const sigma = Math.hypot(noise, (this.drift(this.sinceS, fixes.timeS[j]!) * moved) / 2) / distance;
+    const spread = Math.hypot(noise, (this.drift(this.sinceS, fixes.timeS[j]!) * moved) / 2);
+    if (Math.abs(distance - own) > OUTLIER_SIGMAS * spread) return;
+    const sigma = spread / distance;
     const yaw = Math.atan2(east, north) - Math.atan2(ownE, ownN);
     this.average.add(wrapAngle(yaw), sigma, fixes.timeS[j]!, distance / moved, this.reckoning.biasArm);
   }

@@ -16,7 +16,7 @@ import { biasDecayRate, biasNoiseDensity, halfBiasNoise } from './bias-models';
 import { resetAttitudeCovariance, turnAttitude } from './attitude-feedback';
 import { biasParameters } from './bias-parameters';
 import type { Fixes } from './fixes';
-import { gapDisturbance } from './gap-noise';
+import { GapBridge } from './gap-bridge';
 import { Gate } from './gate';
 import { GnssModels } from './gnss-models';
 import { MeasurementUpdate } from './measurement-update';
@@ -53,7 +53,7 @@ export interface FilterSnapshot {
   p: Float64Array;
   sample: number;
   fix: number;
-  heading: { turned: number; reported: boolean };
+  heading: readonly [number, number, number, number];
   gates: readonly (readonly number[])[];
 }
 
@@ -76,11 +76,11 @@ export class ErrorStateFilter {
   private readonly gyroBias: { density: number; decay: number };
   private readonly accelBias: { density: number; decay: number };
   private readonly stepS: number;
-  /** What corrections have turned the heading by since the start, rad, and from where on that is reported. */
+  /** What corrections have turned the heading by since its σ was this (rad) at that time (s). */
   private headingTurned = 0;
   private headingReported = false;
-  private headingLimit = Infinity;
-  private startHeadingSigma = 0;
+  private headingSigma = 0;
+  private headingSinceS = 0;
 
   /** `withheld`: bits of `withheldBy` for each fix. */
   constructor(
@@ -111,13 +111,15 @@ export class ErrorStateFilter {
     this.fix = fix;
     this.strapdown.start(nav);
     this.p.set(p);
-    this.startHeadingSigma = Math.sqrt(p[(ATTITUDE + 2) * (STATES + 1)]!);
-    this.headingLimit = Math.max(
-      HEADING_REPORT_MIN,
-      Math.min(2 * this.startHeadingSigma, HEADING_REPORT_MAX),
-    );
-    this.headingTurned = 0;
     this.headingReported = false;
+    this.restartHeadingWatch();
+  }
+
+  /** From here on corrections of the heading are counted against what is known of it now. */
+  private restartHeadingWatch(): void {
+    this.headingSigma = Math.sqrt(this.p[(ATTITUDE + 2) * (STATES + 1)]!);
+    this.headingSinceS = this.timeS;
+    this.headingTurned = 0;
   }
 
   get timeS(): number {
@@ -157,20 +159,24 @@ export class ErrorStateFilter {
       return;
     }
     const duration = interval[DURATION]!;
-    const disturbance = gapDisturbance(this.imu, this.sample + 1, this.intervals.nominalS);
+    const bridge = new GapBridge(this.imu, this.sample + 1, duration, this.intervals.nominalS);
     const { gyroWhite, accelWhite } = this.white;
-    // White noise that by the gap's end has spread as far as a constant unknown would have.
-    this.white.gyroWhite += disturbance.rate ** 2 * duration;
-    this.white.accelWhite += disturbance.accel ** 2 * duration;
+    this.white.gyroWhite += bridge.gyroNoise;
+    this.white.accelWhite += bridge.accelNoise;
     const steps = Math.ceil(((to - from) * duration) / GAP_STEP_S);
     for (let i = 0; i < steps; i += 1) {
       const a = from + ((to - from) * i) / steps;
       const b = from + ((to - from) * (i + 1)) / steps;
+      bridge.fill(interval, (a + b) / 2, this.strapdown);
       this.strapdown.advance(interval, a, b);
       this.covarianceStep();
     }
     this.white.gyroWhite = gyroWhite;
     this.white.accelWhite = accelWhite;
+    if (to < 1) return;
+    const heading = (ATTITUDE + 2) * (STATES + 1);
+    this.p[heading] = this.p[heading]! + bridge.headingVariance;
+    this.restartHeadingWatch();
   }
 
   private reportGap(start: number, end: number): void {
@@ -286,11 +292,12 @@ export class ErrorStateFilter {
   private watchHeading(correction: number): void {
     this.headingTurned -= correction;
     const turned = Math.abs(this.headingTurned);
-    if (this.headingReported || turned < this.headingLimit) return;
+    const limit = Math.max(HEADING_REPORT_MIN, Math.min(2 * this.headingSigma, HEADING_REPORT_MAX));
+    if (this.headingReported || turned < limit) return;
     this.headingReported = true;
     this.warn(
       'heading-corrected',
-      `GNSS turned the heading by ${radToDeg(turned).toFixed(0)}° against the start, which was given or found with ${radToDeg(this.startHeadingSigma).toFixed(0)}° (1σ): the initial heading was wrong.`,
+      `GNSS turned the heading by ${radToDeg(turned).toFixed(0)}° from what was given or found at ${this.headingSinceS.toFixed(1)} s with ${radToDeg(this.headingSigma).toFixed(0)}° (1σ): that heading was wrong.`,
       this.timeS,
     );
   }
@@ -310,7 +317,7 @@ export class ErrorStateFilter {
       p: this.p.slice(),
       sample: this.sample,
       fix: this.fix,
-      heading: { turned: this.headingTurned, reported: this.headingReported },
+      heading: [this.headingTurned, this.headingSigma, this.headingSinceS, this.headingReported ? 1 : 0],
       gates: [this.gates.position.save(), this.gates.velocity.save()],
     };
   }
@@ -320,8 +327,8 @@ export class ErrorStateFilter {
     this.p.set(saved.p);
     this.sample = saved.sample;
     this.fix = saved.fix;
-    this.headingTurned = saved.heading.turned;
-    this.headingReported = saved.heading.reported;
+    [this.headingTurned, this.headingSigma, this.headingSinceS] = saved.heading;
+    this.headingReported = saved.heading[3] === 1;
     this.gates.position.restore(saved.gates[0]!);
     this.gates.velocity.restore(saved.gates[1]!);
   }

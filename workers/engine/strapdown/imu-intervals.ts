@@ -25,7 +25,7 @@ const EVEN = 0.05;
 export class ImuIntervals {
   /** The interval that `load` filled. */
   readonly interval = new Float64Array(INTERVAL_SIZE);
-  /** The loaded interval is a gap that was bridged. */
+  /** The loaded interval is a gap: only its duration is filled in. */
   isGap = false;
   readonly nominalS: number;
   readonly gapLimitS: number;
@@ -39,7 +39,7 @@ export class ImuIntervals {
     this.gapLimitS = Math.max(GAP_NOMINAL_INTERVALS * this.nominalS, GAP_MIN_S);
   }
 
-  /** Fills `interval` with sample k, k ≥ 1. A gap holds the previous sample's rates up to the last nominal interval. */
+  /** Fills `interval` with sample k, k ≥ 1; of a gap only the duration. */
   load(k: number): void {
     const { interval } = this;
     const time = this.imu.timeS;
@@ -48,7 +48,6 @@ export class ImuIntervals {
     this.isGap = duration > this.gapLimitS;
     if (this.isGap) {
       this.loaded = -1;
-      this.loadGap(k, duration);
       return;
     }
     const before = k > 1 ? time[k - 1]! - time[k - 2]! : Infinity;
@@ -121,23 +120,6 @@ export class ImuIntervals {
       this.interval[ANGLE_BEND + i] = (gyro[axis][k]! - gyro[axis][k - 1]!) * (duration / 2);
       this.interval[VELOCITY_BEND + i] = (accel[axis][k]! - accel[axis][k - 1]!) * (duration / 2);
     }
-  }
-
-  /** Holds the rates of the last sample before the gap; the sample that ends it speaks for one nominal interval. */
-  private loadGap(k: number, duration: number): void {
-    const { interval, current, previous, nominalS } = this;
-    const { gyro, accel, sampling } = this.imu;
-    const toRate = sampling === 'increment' ? 1 / nominalS : 1;
-    for (let i = 0; i < 3; i += 1) {
-      const axis = i as 0 | 1 | 2;
-      previous[i] = gyro[axis][k - 1]! * toRate;
-      previous[i + 3] = accel[axis][k - 1]! * toRate;
-      current[i] = gyro[axis][k]! * toRate;
-      current[i + 3] = accel[axis][k]! * toRate;
-    }
-    for (let i = 0; i < 6; i += 1)
-      interval[ANGLE + i] = previous[i]! * (duration - nominalS) + current[i]! * nominalS;
-    interval.fill(0, ANGLE_BEND);
   }
 }
 
