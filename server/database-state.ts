@@ -1,6 +1,7 @@
 /** Telling “the database is away” from every other failure, and waiting until it is back. */
-import { BaseError, ConnectionError, DatabaseError, TimeoutError } from 'sequelize';
+import { ConnectionError, DatabaseError } from 'sequelize';
 import type { Logger } from 'pino';
+import { codeOf, messageOf } from './error-details';
 
 /** SQLSTATE classes 08 (connection) and 57P (operator intervention), 53300 (too many connections). */
 const AWAY_STATES = /^(08|57P0[123]|53300)/;
@@ -10,17 +11,11 @@ const AWAY_TEXT =
 
 /** Whether `error` means that the database could not be reached, rather than that it refused. */
 export function isDatabaseAway(error: unknown): boolean {
-  if (error instanceof ConnectionError || (error instanceof TimeoutError && !sqlState(error))) return true;
-  if (!(error instanceof Error)) return false;
-  const state = sqlState(error);
-  if (state) return AWAY_STATES.test(state) || AWAY_SYSTEM.test(state);
-  return AWAY_TEXT.test(error.message) || (error instanceof BaseError && error.name.includes('Connection'));
-}
-
-function sqlState(error: Error): string | null {
-  const source: unknown = error instanceof DatabaseError ? error.original : error;
-  if (source instanceof Error && 'code' in source && typeof source.code === 'string') return source.code;
-  return null;
+  if (error instanceof ConnectionError) return true;
+  const source = error instanceof DatabaseError ? error.original : error;
+  const code = codeOf(source);
+  if (code && (AWAY_STATES.test(code) || AWAY_SYSTEM.test(code))) return true;
+  return AWAY_TEXT.test(messageOf(source));
 }
 
 /** Repeats `work` until the database lets it through; any other failure is thrown at once. */

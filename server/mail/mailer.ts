@@ -6,6 +6,7 @@ import nodemailer, { type Transporter } from 'nodemailer';
 import type { Logger } from 'pino';
 import { Op, type Transaction } from 'sequelize';
 import { isDatabaseAway, pause } from '../database-state';
+import { messageOf } from '../error-details';
 import type { Database } from '../models';
 import type { MailMessage } from '../models/messages';
 import type { Letter } from './letters';
@@ -87,7 +88,7 @@ async function attempt(letter: MailMessage, transport: Transporter, log: Logger,
     letter.state = 'sent';
     letter.lastError = null;
   } catch (error) {
-    letter.lastError = error instanceof Error ? error.message : String(error);
+    letter.lastError = messageOf(error);
     const waitMs = Math.min(FIRST_RETRY_MS * 2 ** (letter.attempts - 1), LONGEST_RETRY_MS);
     letter.dueAt = new Date(now.getTime() + waitMs);
     if (now.getTime() - letter.createdAt.getTime() > GIVE_UP_AFTER_MS) letter.state = 'failed';

@@ -8,6 +8,7 @@ import multer, { type StorageEngine } from 'multer';
 import { type RecordingMeta, fileRoleSchema, recordingMetaSchema } from '@/shared/contracts/recordings';
 import { formatBytes } from '@/shared/format';
 import type { Context } from '../context';
+import { codeOf, messageOf } from '../error-details';
 import { badRequest, invalid, noSpace, tooLarge, unsupportedMedia } from '../errors';
 import type { ReceivedFile } from '../services/recordings';
 import { uploadFolder } from '../services/upload-folder';
@@ -97,8 +98,7 @@ const CUT_SHORT = 'The upload was cut short. Nothing of it was kept; send it aga
 
 const isCut = (error: unknown, req: Request) =>
   !(error instanceof multer.MulterError) &&
-  ((req.destroyed && !req.complete) ||
-    (error instanceof Error && /Unexpected end of form|Request aborted/i.test(error.message)));
+  ((req.destroyed && !req.complete) || /Unexpected end of form|Request aborted/i.test(messageOf(error)));
 
 interface Stored {
   path: string;
@@ -132,7 +132,7 @@ function hashingStorage(folder: string): StorageEngine {
 }
 
 const storageFault = (error: unknown) =>
-  error instanceof Error && 'code' in error && (error.code === 'ENOSPC' || error.code === 'EDQUOT')
+  ['ENOSPC', 'EDQUOT'].includes(codeOf(error) ?? '')
     ? noSpace('The server’s disk is full. Nothing of the upload was kept. Tell the operator.')
     : error;
 

@@ -12,19 +12,31 @@ import { launch, RESTARTED } from './run-launch';
 const LOOK_EVERY_MS = 30_000;
 const GOING: RunState[] = ['queued', 'running'];
 
-/** At start, and every half minute for the sake of other servers, until the server stops. */
+/**
+ * Every half minute, for the sake of other servers, until this one stops. A server counts as dead when it was found so
+ * twice in a row: after a restart of the database all of them need a moment to take their locks again.
+ */
 export async function keepRecovering(ctx: Context): Promise<void> {
+  let suspects: string[] = [];
   while (!ctx.stopping.aborted) {
     await pause(LOOK_EVERY_MS, ctx.stopping);
     if (ctx.stopping.aborted) return;
-    await recover(ctx).catch((error: unknown) => {
+    try {
+      const dead = await findDead(ctx);
+      await clearUpAfter(ctx, dead.filter((id) => suspects.includes(id))); // prettier-ignore
+      suspects = dead;
+    } catch (error) {
       if (!isDatabaseAway(error)) ctx.log.error({ err: error }, 'recovery');
-    });
+    }
   }
 }
 
-export async function recover(ctx: Context): Promise<void> {
-  const dead = await ctx.instance.deadAmong(await holders(ctx));
+/** At start: whoever is found dead now was so before. */
+export const recover = async (ctx: Context): Promise<void> => clearUpAfter(ctx, await findDead(ctx));
+
+const findDead = async (ctx: Context): Promise<string[]> => ctx.instance.deadAmong(await holders(ctx));
+
+async function clearUpAfter(ctx: Context, dead: string[]): Promise<void> {
   await dropUnconfirmed(ctx, dead);
   await finishDeletions(ctx);
   await decodeAgain(ctx, dead);

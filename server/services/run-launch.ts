@@ -60,7 +60,8 @@ async function see(
   active: ActiveRun,
   result: Promise<RunJobResult>,
 ): Promise<void> {
-  const outcome = await result.then(succeeded, fallen(ctx));
+  const outcome = await result.then(succeeded, fallen(ctx, run));
+  if (!outcome) return ctx.activeRuns.finish(active);
   active.state = outcome.state;
   try {
     if (await persist(() => write(ctx, run, recording, outcome), ctx)) tell(ctx, run.id, outcome);
@@ -75,11 +76,12 @@ async function see(
 
 const succeeded = (result: RunJobResult): Outcome => ({ state: 'done', result });
 
+/** Null: the server stops, and the row stays as it is; the next one computes the run anew. */
 const fallen =
-  (ctx: Context) =>
-  (error: unknown): Outcome => {
+  (ctx: Context, run: Run) =>
+  (error: unknown): Outcome | null => {
     if (error instanceof JobCancelled && !error.superseded && ctx.stopping.aborted) {
-      return { state: 'failed', reason: RESTARTED };
+      return run.benchId ? { state: 'failed', reason: RESTARTED } : null;
     }
     if (error instanceof JobCancelled) {
       return { state: error.superseded ? 'superseded' : 'cancelled', reason: error.message };

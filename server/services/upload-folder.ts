@@ -2,6 +2,7 @@
 import fs from 'node:fs';
 import os from 'node:os';
 import path from 'node:path';
+import { codeOf } from '../error-details';
 
 const machine = os.hostname().replace(/[^A-Za-z0-9-]/g, '-');
 
@@ -27,6 +28,6 @@ function isDead(pid: number): boolean {
     process.kill(pid, 0);
     return false;
   } catch (error) {
-    return !(error instanceof Error && 'code' in error && error.code === 'EPERM');
+    return codeOf(error) !== 'EPERM';
   }
 }

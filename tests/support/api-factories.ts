@@ -4,7 +4,7 @@ import type { Role } from '@/shared/contracts/roles';
 import type { Recording } from '@/shared/contracts/recordings';
 import { recordingSchema } from '@/shared/contracts/recordings';
 import { hashPassword } from '@/server/services/secrets';
-import { type Api, Caller, until } from './api';
+import { type Api, type Caller, until } from './api';
 import { type Logs, smallLogs } from './api-logs';
 
 export const PASSWORD = 'lighthouse-22';

@@ -44,7 +44,7 @@ export async function connectLive(
     summaries: [],
     failures: [],
     recordings: [],
-    follow: (runId) => socket.emitWithAck('run:follow', { runId }) as Promise<FollowAnswer>,
+    follow: (runId) => new Promise<FollowAnswer>((resolve) => socket.emit('run:follow', { runId }, resolve)),
     close: () => void socket.disconnect(),
   };
   socket.on('run:frame', (frame) => client.frames.push(decodeFrame(frame)));
