@@ -24,6 +24,8 @@ export class DeadReckoning {
   readonly way = new Float64Array(3);
   /** ∫C_D· dt, s: what a gyro bias does to the heading. */
   readonly biasArm = new Float64Array(3);
+  /** ∫cos and ∫sin of the heading since the start, s: the way at unit speed where the vehicle points. */
+  readonly pointed = new Float64Array(2);
   /** Largest turn of the heading since the start, rad. */
   largestTurn = 0;
   sample: number;
@@ -74,7 +76,10 @@ export class DeadReckoning {
     quatMultiply(q, turn, q);
     quatNormalise(q);
     dcmFromQuat(q, dcm);
-    this.largestTurn = Math.max(this.largestTurn, Math.abs(this.yaw));
+    const { yaw, pointed } = this;
+    pointed[0] = pointed[0]! + Math.cos(yaw) * dt;
+    pointed[1] = pointed[1]! + Math.sin(yaw) * dt;
+    this.largestTurn = Math.max(this.largestTurn, Math.abs(yaw));
   }
 
   private move(k: number, dt: number): void {

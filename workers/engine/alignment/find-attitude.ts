@@ -7,6 +7,7 @@ import { biasParameters } from '../filter/bias-parameters';
 import type { Fixes } from '../filter/fixes';
 import { EARTH_RATE } from '../geodesy';
 import { normalGravity } from '../gravity';
+import { lowerBound } from '../run/windows';
 import { medianSpacing } from '../strapdown/imu-intervals';
 import { EngineError, type ImuColumns } from '../types';
 import { searchHeading, type FoundHeading, type HeadingQuestion } from './heading-search';
@@ -60,8 +61,12 @@ export function findAttitude(
   parameters: Parameters,
   leverArm: readonly [number, number, number],
 ): FoundAttitude {
-  const { sample, fix } = firstUsable(imu, fixes, parameters);
-  const rest = findStaticStretch(imu, fixes, sample);
+  const { wanted, sample: atFix, fix } = firstUsable(imu, fixes, parameters);
+  // A vehicle that still stands when the first fix comes has stood where that says from the log's first sample on.
+  const early = wanted < atFix ? findStaticStretch(imu, fixes, wanted) : null;
+  const stoodUntilFix = early !== null && early.to >= atFix;
+  const sample = stoodUntilFix ? wanted : atFix;
+  const rest = stoodUntilFix ? early : findStaticStretch(imu, fixes, atFix);
   const rateScale = imu.sampling === 'increment' ? 1 / medianSpacing(imu.timeS) : 1;
   const gyroOffset: Three = parameters.initial.gyroBiasRadPerS ?? rest?.gyro ?? [0, 0, 0];
   const situation = { imu, fixes, parameters, leverArm, sample, fix, rest, rateScale, gyroOffset };
@@ -69,26 +74,30 @@ export function findAttitude(
   return rest !== null ? levelledAtRest(situation, rest) : levelledMoving(situation);
 }
 
-/** The first sample at or after the wanted start with a position: given, or a fix at or before it. */
-function firstUsable(imu: ImuColumns, fixes: Fixes, parameters: Parameters): { sample: number; fix: number } {
+/** The first sample at or after the wanted start, and the first with a position: given, or a fix at or before it. */
+function firstUsable(
+  imu: ImuColumns,
+  fixes: Fixes,
+  parameters: Parameters,
+): { wanted: number; sample: number; fix: number } {
   const time = imu.timeS;
   const last = time.length - 1;
-  const wanted = Math.max(time[0]!, parameters.initial.timeS ?? -Infinity);
+  const wantedS = Math.max(time[0]!, parameters.initial.timeS ?? -Infinity);
+  const wanted = lowerBound(time, wantedS - 1e-7);
   let fix = -1;
-  let from = wanted;
+  let from = wantedS;
   if (parameters.initial.position === undefined) {
-    fix = firstPosition(fixes, wanted);
+    fix = firstPosition(fixes, wantedS);
     if (fix < 0 || fixes.timeS[fix]! > time[last]!) throw noOverlap(imu, fixes);
     from = fixes.timeS[fix]!;
   }
-  let sample = 0;
-  while (sample <= last && time[sample]! < from - 1e-7) sample += 1;
+  const sample = lowerBound(time, from - 1e-7);
   if (sample >= last)
     throw new EngineError(
       'nothing-to-filter',
       `The IMU log ends at ${time[last]!.toFixed(2)} s, before the start at ${from.toFixed(2)} s. Start earlier (initial.timeS) or check the clocks of both files.`,
     );
-  return { sample, fix };
+  return { wanted, sample, fix };
 }
 
 /** The first fix with a position that the next ones bear out; one without height only where none has it. */

@@ -9,8 +9,6 @@ const AVERAGE_S = 2;
 const MIN_COUNT = 3;
 /** Estimates older than this no longer count if too few have followed, s. */
 const STALE_S = 30;
-/** An estimate poorer than this is passed over while better ones may come, rad. */
-const GOOD_SIGMA = 0.1;
 /** Further than this many σ from the median, and than the slack (rad), an estimate is an outlier. */
 const OUTLIER_SIGMAS = 4;
 const OUTLIER_SLACK = 0.02;
@@ -39,12 +37,18 @@ export class HeadingAverage {
   private good: Sample[] = [];
   private poor: Sample[] = [];
 
-  /** `floorSigma`: the part of σ that all estimates share and that does not average out, rad. */
-  constructor(private readonly floorSigma: number) {}
+  /**
+   * Estimates poorer than `goodSigma` are passed over while better ones may come; `floorSigma` is the part of σ that
+   * all estimates share and that does not average out, rad.
+   */
+  constructor(
+    private readonly goodSigma: number,
+    private readonly floorSigma: number,
+  ) {}
 
   add(yaw: number, sigma: number, timeS: number, speed: number, arm: Float64Array): void {
     const sample: Sample = { yaw, sigma, timeS, speed, arm: [arm[0]!, arm[1]!, arm[2]!] };
-    if (sigma <= GOOD_SIGMA) {
+    if (sigma <= this.goodSigma) {
       this.good = this.good.filter((s) => timeS - s.timeS <= STALE_S);
       this.good.push(sample);
     } else if (this.good.length === 0) {

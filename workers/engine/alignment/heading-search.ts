@@ -17,9 +17,14 @@ import type { StaticStretch } from './static-stretch';
 import { trackVelocity } from './track';
 import { VelocityMatch } from './velocity-match';
 
+/** An estimate poorer than this is passed over while better ones may come, rad. */
+const GOOD_SIGMA = 0.1;
+const GOOD_SIGMA_OF_POSITIONS = 0.25;
 /** A vehicle does not point exactly where it goes: 1σ, rad, and the arm between IMU and unsteered axle, m. */
 const SLIP_SIGMA = (0.5 * Math.PI) / 180;
 const AXLE_ARM_M = 1.5;
+/** A chord bent all the way round tells nothing, rad. */
+const CURVE_SIGMA = 2;
 /** A course is not believed before a match had this long to contradict it, s. */
 const MATCH_GRACE_S = 30;
 /**
@@ -60,8 +65,10 @@ export function searchHeading(question: HeadingQuestion): FoundHeading | null {
   const reckoning = new DeadReckoning(
     imu, start, moveFrom, question.roll, question.pitch, question.rateOffset, question.accelOffset, gravity,
   ); // prettier-ignore
-  const course = new HeadingAverage(SLIP_SIGMA);
-  const match = new HeadingAverage(0);
+  const goodSigma = fixes.velocityAxes.some((axes) => axes !== 0) ? GOOD_SIGMA : GOOD_SIGMA_OF_POSITIONS;
+  const course = new HeadingAverage(goodSigma, SLIP_SIGMA);
+  const match = new HeadingAverage(goodSigma, 0);
+  const pointing = new CourseMatch(question, reckoning, course);
   const matcher = rest === null ? null : new VelocityMatch(question, reckoning, rest, match);
   const time = imu.timeS;
   let j = 0;
@@ -69,7 +76,7 @@ export function searchHeading(question: HeadingQuestion): FoundHeading | null {
   for (let k = start + 1; k < time.length; k += 1) {
     reckoning.step();
     for (; j < fixes.count && fixes.timeS[j]! <= time[k]!; j += 1) {
-      addCourse(question, reckoning, j, course);
+      pointing.add(j);
       matcher?.add(j);
     }
     const grace = matcher === null || !Number.isFinite(matcher.sinceS) ? 0 : MATCH_GRACE_S;
@@ -94,23 +101,44 @@ function agree(course: HeadingEstimate, match: HeadingEstimate): boolean {
   return Math.abs(wrapAngle(course.yaw - match.yaw)) <= DISAGREE_SIGMAS * Math.hypot(course.sigma, own);
 }
 
-/** Course of fix j less what the gyros say the vehicle has turned. */
-function addCourse(
-  { imu, fixes, parameters, leverArm }: HeadingQuestion,
-  reckoning: DeadReckoning,
-  j: number,
-  average: HeadingAverage,
-): void {
-  const track = trackVelocity(fixes, j);
-  if (track === null) return;
-  const speed = Math.hypot(track.north, track.east);
-  if (speed < parameters.initial.courseSpeedMPerS) return;
-  const { rate, yawRate } = reckoning;
-  const yawThen = reckoning.yaw - yawRate * (imu.timeS[reckoning.sample]! - track.timeS);
-  // The antenna moves sideways as the vehicle turns.
-  const sideways = rate[2]! * leverArm[0] - rate[0]! * leverArm[2];
-  const slip = Math.asin(Math.max(-1, Math.min(1, sideways / speed)));
-  const sigma = Math.hypot(track.sigma / speed, SLIP_SIGMA, (yawRate * AXLE_ARM_M) / speed);
-  const yaw = Math.atan2(track.east, track.north) - slip - yawThen;
-  average.add(wrapAngle(yaw), sigma, track.timeS, speed, reckoning.biasArm);
+/** Takes the vehicle to point where it goes: course of a fix less what the gyros say the vehicle has turned. */
+class CourseMatch {
+  /** The way at unit speed where the vehicle points, up to each fix, s. */
+  private readonly pointed = new Map<number, [number, number]>();
+
+  constructor(
+    private readonly question: HeadingQuestion,
+    private readonly reckoning: DeadReckoning,
+    private readonly average: HeadingAverage,
+  ) {}
+
+  /** Takes in fix j; the dead reckoning stands at the sample at or just after it. */
+  add(j: number): void {
+    const { imu, fixes, parameters, leverArm } = this.question;
+    const { rate, yaw, yawRate, pointed, sample } = this.reckoning;
+    const lag = imu.timeS[sample]! - fixes.timeS[j]!;
+    const here: [number, number] = [pointed[0]! - Math.cos(yaw) * lag, pointed[1]! - Math.sin(yaw) * lag];
+    this.pointed.set(j, here);
+    const track = trackVelocity(fixes, j);
+    if (track === null) return;
+    const speed = Math.hypot(track.north, track.east);
+    if (speed < parameters.initial.courseSpeedMPerS) return;
+    // The antenna moves sideways as the vehicle turns.
+    const sideways = rate[2]! * leverArm[0] - rate[0]! * leverArm[2];
+    const slip = track.from < 0 ? Math.asin(Math.max(-1, Math.min(1, sideways / speed))) : 0;
+    let pointing = yaw - yawRate * lag;
+    let curve = 0;
+    if (track.from >= 0) {
+      // Between two positions the vehicle pointed in many directions: on the whole along this chord.
+      const there = this.pointed.get(track.from);
+      if (there === undefined) return;
+      const north = here[0] - there[0];
+      const east = here[1] - there[1];
+      pointing = Math.atan2(east, north);
+      curve = CURVE_SIGMA * (1 - Math.hypot(north, east) / (fixes.timeS[j]! - fixes.timeS[track.from]!));
+    }
+    const sigma = Math.hypot(track.sigma / speed, SLIP_SIGMA, (yawRate * AXLE_ARM_M) / speed, curve);
+    const course = Math.atan2(track.east, track.north) - slip;
+    this.average.add(wrapAngle(course - pointing), sigma, track.timeS, speed, this.reckoning.biasArm);
+  }
 }

@@ -12,6 +12,8 @@ export interface TrackVelocity {
   sigmaDown: number;
   /** Time that it belongs to, s. */
   timeS: number;
+  /** Fix that it is measured from; −1: it is the receiver's own velocity at one moment. */
+  from: number;
 }
 
 /** σ of an unmeasured vertical velocity: what a vehicle may do, m/s. */
@@ -40,6 +42,7 @@ export function trackVelocity(fixes: Fixes, j: number): TrackVelocity | null {
     sigma: Math.sqrt((fixes.velocityVariance[3 * j]! + fixes.velocityVariance[3 * j + 1]!) / 2),
     sigmaDown: hasDown ? Math.sqrt(fixes.velocityVariance[3 * j + 2]!) : UNMEASURED_DOWN_SIGMA,
     timeS: fixes.timeS[j]!,
+    from: -1,
   };
 }
 
@@ -66,6 +69,7 @@ function fromPositions(fixes: Fixes, j: number): TrackVelocity | null {
     sigma: sigmaOf(best) / dt,
     sigmaDown: hasHeight ? Math.sqrt(variance(best, 2) + variance(j, 2)) / dt : UNMEASURED_DOWN_SIGMA,
     timeS: (fixes.timeS[best]! + fixes.timeS[j]!) / 2,
+    from: best,
   };
 }
 

@@ -55,7 +55,8 @@ export function prepareFixes(gnss: GnssColumns, parameters: Parameters['gnss']):
     }
     if (!Number.isFinite(fixes.timeS[j]!)) continue;
     fixes.positionAxes[j] = positionAxesOf(gnss, j);
-    fixes.velocityAxes[j] = velocityAxesOf(gnss, j);
+    // A velocity that is not to be used is not to align by either; a position is still needed to start from.
+    fixes.velocityAxes[j] = parameters.useVelocity ? velocityAxesOf(gnss, j) : 0;
   }
   return fixes;
 }
