@@ -41,6 +41,7 @@ export function StripEditor({ strip, height, windows, onChange, group }: StripEd
     [strip, width, height],
   );
   const surface = useStripSurface({ geometry, limits, windows, onChange, group, setSelected });
+  const card = useDeselectOutside(setSelected);
   const current = selected !== null && selected < windows.length ? selected : null;
 
   const change = (next: readonly Outage[]) => onChange?.(sortWindows(next), true);
@@ -69,7 +70,7 @@ export function StripEditor({ strip, height, windows, onChange, group }: StripEd
   };
 
   return (
-    <View style={[styles.card, { backgroundColor: palette.sheet, borderColor: palette.rule }]}>
+    <View ref={card} style={[styles.card, { backgroundColor: palette.sheet, borderColor: palette.rule }]}>
       <View style={styles.fill} onLayout={(event) => setWidth(Math.floor(event.nativeEvent.layout.width))}>
         {width > 0 ? (
           <>
@@ -179,6 +180,22 @@ function SharedMarks({ geometry, group }: { geometry: StripGeometry; group: Char
       <Path ref={shapes.ref('cursor')} d="" stroke={palette.petrol} strokeWidth={1.5} />
     </>
   );
+}
+
+/** A press anywhere else lets the selected window go, so that its bar covers nothing. */
+function useDeselectOutside(setSelected: (index: number | null) => void) {
+  const card = useRef<View>(null);
+  useEffect(() => {
+    const element = card.current as unknown as HTMLElement | null;
+    if (!element?.ownerDocument) return;
+    const page = element.ownerDocument;
+    const onDown = (event: PointerEvent) => {
+      if (!element.contains(event.target as Node)) setSelected(null);
+    };
+    page.addEventListener('pointerdown', onDown);
+    return () => page.removeEventListener('pointerdown', onDown);
+  }, [setSelected]);
+  return card;
 }
 
 interface SurfaceInput {

@@ -58,8 +58,10 @@ const IDLE: LiveState = {
   tookS: null,
 };
 
-/** While a slider moves, runs start at most this often, ms: each has time to draw its first frames. */
-export const DRAG_INTERVAL_MS = 150;
+/** While a slider moves, a run goes on at least this long before the next takes its place, ms … */
+export const DRAG_LEAST_MS = 120;
+/** … and at most this long where it has drawn nothing yet. */
+export const DRAG_MOST_MS = 400;
 
 export class LiveController {
   private current: LiveState = IDLE;
@@ -68,6 +70,7 @@ export class LiveController {
   private activeRequest: RunCreateInput | null = null;
   private posting = false;
   private startedAt = -Infinity;
+  private answeredAt = -Infinity;
   private timer: ReturnType<typeof setTimeout> | null = null;
   private readonly stateListeners = new Set<() => void>();
   private readonly dataListeners = new Set<() => void>();
@@ -154,7 +157,8 @@ export class LiveController {
     const { transport } = this;
     if (!this.wanted || this.posting || !transport) return;
     const going = this.current.phase === 'running' || this.current.phase === 'starting';
-    const wait = this.startedAt + DRAG_INTERVAL_MS - this.now();
+    const patience = this.incoming?.empty ? DRAG_MOST_MS : DRAG_LEAST_MS;
+    const wait = this.answeredAt + patience - this.now();
     if (going && !this.wanted.settled && wait > 0) {
       this.timer = setTimeout(() => this.pump(), wait);
       return;
@@ -186,6 +190,7 @@ export class LiveController {
     const before = this.current.runId;
     if (before && before !== runId) this.transport?.unfollow(before);
     this.incoming = new RunData(runId);
+    this.answeredAt = this.now();
     this.activeRequest = request;
     this.patch({ phase: 'running', runId, progress: 0, reason: null });
     this.transport?.follow(runId);
@@ -198,6 +203,7 @@ export class LiveController {
     if (result === 'ignored') return;
     this.showIncoming();
     this.patch({ progress: incoming.progress });
+    if (this.wanted) this.pump();
     // Where the server has no series before the end, the summary brings it.
     if (result === 'gap') void this.fetchInto(incoming, false);
   }

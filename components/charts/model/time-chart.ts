@@ -139,7 +139,12 @@ function drawLayer(layer: Layer, context: LayerContext): LayerPaths {
   const line = points(keep.upper, series);
   if (layer.kind === 'area') return { stroke: linePath(line), fill: areaPath(line, y(0)) };
   if (layer.label !== undefined && layer.tone !== 'ghost') countBeyond(series, context);
-  return { stroke: linePath(line), fill: '', dense: line.length > 1.2 * (box.right - box.left) };
+  return { stroke: linePath(line), fill: '', dense: isDense(line) };
+}
+
+/** More than about a point a pixel over the stretch that the line covers. */
+function isDense({ x, length }: Polyline): boolean {
+  return length > 50 && length > 1.2 * (x[length - 1]! - x[0]!);
 }
 
 /** centre ± half, point by point; both share one time axis. */
