@@ -33,7 +33,7 @@ export const palettes: Record<'paper' | 'night', Palette> = {
     inkSoft: '#55605F',
     petrol: '#0F5E6B',
     onPetrol: '#FFFDF8',
-    vermilion: '#C8402A',
+    vermilion: '#C53E29',
     pine: '#2C6E49',
     ochre: '#8A5F00',
     north: '#3A4EA1',

@@ -60,12 +60,8 @@ export const ALL_CHANNELS: readonly SeriesChannel[] = CHANNEL_CHARTS.flatMap((ch
 
 /** One chart over `series`; channels that it lacks are left out. */
 export function channelContent(chart: ChannelChart, series: Series | undefined): ChartContent {
-  const of = (channel: SeriesChannel): TimeSeries | null => {
-    const found = series?.channels.find((item) => item.name === channel);
-    return found
-      ? { length: found.timeS.length, time: found.timeS, at: (i) => found.values[i] ?? Number.NaN }
-      : null;
-  };
+  const found = new Map(series?.channels.map((item) => [item.name, brokenAtGaps(item)]));
+  const of = (channel: SeriesChannel): TimeSeries | null => found.get(channel) ?? null;
   return {
     id: `channel-${chart.id}`,
     title: chart.title,
@@ -95,6 +91,30 @@ export function channelContent(chart: ChannelChart, series: Series | undefined):
       return `Between ${formatNumber(whole[0])} and ${formatNumber(whole[1])} ${chart.unit}.`;
     },
   };
+}
+
+/** How many usual steps without a value make a gap. */
+const GAP_STEPS = 5;
+
+/** A line that stops where values are missing for long: a straight stroke across would claim what was not measured. */
+export function brokenAtGaps({
+  timeS,
+  values,
+}: Pick<Series['channels'][number], 'timeS' | 'values'>): TimeSeries {
+  const steps = timeS.slice(1).map((time, i) => time - timeS[i]!);
+  const usual = [...steps].sort((a, b) => a - b)[Math.floor(steps.length * 0.75)] ?? 0;
+  const time: number[] = [];
+  const value: number[] = [];
+  timeS.forEach((at, i) => {
+    const step = steps[i - 1] ?? 0;
+    if (usual > 0 && step > GAP_STEPS * usual) {
+      time.push(at - step / 2);
+      value.push(Number.NaN);
+    }
+    time.push(at);
+    value.push(values[i] ?? Number.NaN);
+  });
+  return { length: time.length, time, at: (i) => value[i] ?? Number.NaN };
 }
 
 function valueExtent(all: readonly (TimeSeries | null)[], fromS: number, toS: number): Extent {

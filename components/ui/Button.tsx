@@ -1,9 +1,10 @@
-import { useState } from 'react';
+import { useState, type ReactNode } from 'react';
 import { ActivityIndicator, Pressable, StyleSheet, View, type PressableProps } from 'react-native';
 import { hairline, radius, space, touchTarget } from '@/constants/theme';
 import { Icon, type IconName } from './Icon';
 import { Text, toneColour, type Tone } from './Text';
 import { useTheme } from './ThemeProvider';
+import { web } from './web-props';
 
 export type ButtonKind = 'primary' | 'quiet' | 'danger' | 'plain';
 
@@ -15,7 +16,7 @@ export interface ButtonProps extends Omit<PressableProps, 'children' | 'style' |
   iconOnly?: boolean;
   busy?: boolean;
   disabled?: boolean;
-  /** Why it is disabled: read out, and shown under the pointer or the focus, which it keeps taking for that. */
+  /** Why it is disabled: read out, and shown under the pointer or at a touch. */
   reason?: string;
   /** Takes the whole width of its parent. */
   wide?: boolean;
@@ -23,25 +24,31 @@ export interface ButtonProps extends Omit<PressableProps, 'children' | 'style' |
 
 /** 44 high at the least. While busy it keeps its width and takes no press. */
 export function Button(props: ButtonProps) {
-  const { label, kind = 'quiet', icon, iconOnly, busy, disabled, reason, wide, onPress, ...rest } = props;
+  return props.disabled && props.reason ? (
+    <Explained reason={props.reason} wide={props.wide}>
+      <Plain {...props} />
+    </Explained>
+  ) : (
+    <Plain {...props} />
+  );
+}
+
+function Plain(props: ButtonProps) {
+  const { label, kind = 'quiet', icon, iconOnly, busy, disabled, wide, ...rest } = props;
   const { palette } = useTheme();
   const [hovered, setHovered] = useState(false);
   const [focused, setFocused] = useState(false);
-  const explained = Boolean(disabled && reason);
   const off = disabled || busy;
   const tone = textTone[kind];
   const filled = kind === 'primary';
   const ground = filled ? palette.petrol : kind === 'plain' ? 'transparent' : palette.sheet;
-  const hint = explained ? reason : iconOnly ? label : undefined;
   return (
     <Pressable
       role="button"
       aria-label={spokenLabel(props)}
       aria-busy={busy}
-      aria-disabled={off || undefined}
       {...rest}
-      disabled={off && !explained}
-      onPress={explained ? undefined : onPress}
+      disabled={off}
       onHoverIn={() => setHovered(true)}
       onHoverOut={() => setHovered(false)}
       onFocus={(event) => {
@@ -77,10 +84,29 @@ export function Button(props: ButtonProps) {
           <ActivityIndicator size="small" color={toneColour(palette, tone)} />
         </View>
       ) : null}
-      {hint && (hovered || focused) ? <Hint text={hint} /> : null}
+      {iconOnly && !off && (hovered || focused) ? <Hint text={label} /> : null}
     </Pressable>
   );
 }
+
+/** A button that cannot be pressed hears no pointer: what is around it tells why, under the pointer or at a touch. */
+function Explained({ reason, wide, children }: { reason: string; wide?: boolean; children: ReactNode }) {
+  const [shown, setShown] = useState(false);
+  const hear = {
+    onMouseEnter: () => setShown(true),
+    onMouseLeave: () => setShown(false),
+    onTouchStart: () => setShown(true),
+    onTouchEnd: () => setTimeout(() => setShown(false), HINT_MS),
+  };
+  return (
+    <View {...web(hear)} style={wide ? styles.wide : null}>
+      <View pointerEvents="none">{children}</View>
+      {shown ? <Hint text={reason} /> : null}
+    </View>
+  );
+}
+
+const HINT_MS = 2500;
 
 /** Words under a button that shows none, or that cannot be pressed. The screen reader has them from the label. */
 function Hint({ text }: { text: string }) {

@@ -17,6 +17,8 @@ export interface WebProps {
   onKeyDown?: (event: { key: string; shiftKey: boolean; preventDefault: () => void }) => void;
   onMouseEnter?: () => void;
   onMouseLeave?: () => void;
+  onTouchStart?: () => void;
+  onTouchEnd?: () => void;
   tabIndex?: 0 | -1;
 }
 
