@@ -49,7 +49,8 @@ export const STAGES: Stage[] = [
     run: (context) =>
       single(context, [bin('prettier/bin/prettier.cjs'), '--check', '--log-level', 'warn', '.']),
   },
-  { name: 'jest', run: (context) => jest(context, 'jest', ['ui', 'node', 'api'], []) },
+  { name: 'unit', run: (context) => jest(context, 'unit', ['ui', 'node'], []) },
+  { name: 'api', run: (context) => jest(context, 'api', ['api'], []) },
   {
     name: 'browser',
     run: async (context) => {
