@@ -102,7 +102,7 @@ export function brokenAtGaps({
   values,
 }: Pick<Series['channels'][number], 'timeS' | 'values'>): TimeSeries {
   const steps = timeS.slice(1).map((time, i) => time - timeS[i]!);
-  const usual = [...steps].sort((a, b) => a - b)[Math.floor(steps.length * 0.75)] ?? 0;
+  const usual = [...steps].sort((a, b) => a - b)[Math.floor((steps.length - 1) * 0.75)] ?? 0;
   const time: number[] = [];
   const value: number[] = [];
   timeS.forEach((at, i) => {
