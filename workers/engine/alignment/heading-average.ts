@@ -3,6 +3,7 @@
  * are outliers must not turn the start.
  */
 import { wrapAngle } from '../geodesy';
+import { percentile } from '../statistics/descriptive';
 
 /** Averaged over this long, s, and at least so many estimates. */
 const AVERAGE_S = 2;
@@ -70,11 +71,17 @@ export class HeadingAverage {
     const inliers = samples.filter(
       (s) => Math.abs(wrapAngle(s.yaw - middle)) <= OUTLIER_SIGMAS * s.sigma + OUTLIER_SLACK,
     );
+    // None weighs more than the middling one: a speed that is an outlier makes its own σ small.
+    const middling = percentile(
+      inliers.map((s) => s.sigma),
+      0.5,
+    );
     let weight = 0;
     let weighted = 0;
     for (const { yaw, sigma } of inliers) {
-      weight += 1 / (sigma * sigma);
-      weighted += wrapAngle(yaw - middle) / (sigma * sigma);
+      const w = 1 / Math.max(sigma, middling) ** 2;
+      weight += w;
+      weighted += w * wrapAngle(yaw - middle);
     }
     const last = inliers.reduce((a, b) => (b.timeS > a.timeS ? b : a));
     const first = inliers.reduce((a, b) => (b.timeS < a.timeS ? b : a));
