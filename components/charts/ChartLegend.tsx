@@ -8,7 +8,7 @@ import { formatNumber } from '@/shared/format';
 import type { ChartGroup } from './chart-group';
 import { inkOf } from './drawing/layer-style';
 import type { ChartContent, Layer } from './model/layers';
-import { nearestIndex } from './model/series';
+import { readLayer } from './table-rows';
 import { formatAxisTime } from './model/ticks';
 
 export interface ChartLegendProps {
@@ -69,20 +69,6 @@ function Reading({ layer, timeS }: { layer: Layer; timeS: number }) {
       {(layer.kind === 'band' ? '±' : '') + formatNumber(value, 3)}
     </Text>
   );
-}
-
-/** The layer's value at `timeS`; null where it has none within a few of its own intervals. */
-export function readLayer(layer: Layer, timeS: number): number | null {
-  if (layer.kind === 'rules') return layer.values()[0] ?? null;
-  const series = layer.series();
-  if (!series) return null;
-  const index = nearestIndex(series, timeS);
-  if (index < 0) return null;
-  const value = series.at(index);
-  const spacing =
-    series.length > 1 ? (series.time[series.length - 1]! - series.time[0]!) / (series.length - 1) : 1;
-  const near = Math.abs(series.time[index]! - timeS) <= Math.max(1, 3 * spacing);
-  return near && Number.isFinite(value) ? value : null;
 }
 
 function Sample({ layer }: { layer: Layer }) {

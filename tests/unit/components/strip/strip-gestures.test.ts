@@ -1,0 +1,130 @@
+import { bindStripGestures, hitWindow } from '@/components/strip/strip-gestures';
+import { windowKey } from '@/components/strip/window-keys';
+import { linearScale } from '@/components/charts/model/scale';
+import type { Outage } from '@/shared/contracts/runs';
+import { Stage } from '../pointer-stage';
+
+const at = (startS: number, endS: number): Outage => ({ startS, endS, withhold: 'gnss' });
+/** 600 px for 1200 s: half a pixel a second. */
+const x = linearScale([0, 1200], [0, 600]);
+const limits = { startS: 0, endS: 1200 };
+
+function open(initial: Outage[], editable = true) {
+  const state = {
+    windows: initial,
+    settled: true,
+    selected: null as number | null,
+    cursor: null as number | null,
+  };
+  const stage = new Stage();
+  bindStripGestures(stage.element, {
+    x: () => x,
+    limits: () => limits,
+    windows: () => state.windows,
+    editable: () => editable,
+    change: (windows, settled) => Object.assign(state, { windows, settled }),
+    select: (selected) => Object.assign(state, { selected }),
+    cursor: (cursor) => Object.assign(state, { cursor }),
+  });
+  return { state, stage };
+}
+
+describe('what lies under the pointer', () => {
+  const windows = [at(400, 600), at(800, 810)];
+
+  it.each([
+    [150, 22, null],
+    [190, 22, { index: 0, part: 'start' }],
+    [205, 22, { index: 0, part: 'start' }],
+    [250, 22, { index: 0, part: 'body' }],
+    [295, 9, { index: 0, part: 'end' }],
+    [312, 9, null],
+    [312, 22, { index: 0, part: 'end' }],
+    // 5 px wide: its middle still moves it, its edges reach outwards.
+    [402.5, 22, { index: 1, part: 'body' }],
+    [390, 22, { index: 1, part: 'start' }],
+    [415, 22, { index: 1, part: 'end' }],
+  ])('at %d px with a reach of %d px: %p', (pixel, reach, expected) => {
+    expect(hitWindow(windows, x, pixel, reach)).toEqual(expected);
+  });
+});
+
+describe('dragging', () => {
+  it('on empty ground draws a window, live, and selects it', () => {
+    const { state, stage } = open([at(800, 860)]);
+    stage.pointer('pointerdown', 100);
+    stage.pointer('pointermove', 115);
+    expect(state).toMatchObject({ windows: [at(200, 230), at(800, 860)], settled: false });
+    stage.pointer('pointermove', 130);
+    stage.pointer('pointerup', 130);
+    expect(state).toMatchObject({ windows: [at(200, 260), at(800, 860)], settled: true, selected: 0 });
+  });
+
+  it('a body moves the window, an edge resizes it', () => {
+    const { state, stage } = open([at(200, 300)]);
+    stage.pointer('pointerdown', 125);
+    stage.pointer('pointermove', 150);
+    stage.pointer('pointerup', 150);
+    expect(state.windows).toEqual([at(250, 350)]);
+    stage.pointer('pointerdown', 175);
+    stage.pointer('pointermove', 200);
+    stage.pointer('pointerup', 200);
+    expect(state.windows).toEqual([at(250, 400)]);
+  });
+
+  it('with shift is fine', () => {
+    const { state, stage } = open([at(200, 300)]);
+    stage.pointer('pointerdown', 125);
+    stage.pointer('pointermove', 131.07, 20, { shiftKey: true });
+    stage.pointer('pointerup', 131.07, 20, { shiftKey: true });
+    expect(state.windows).toEqual([at(212.1, 312.1)]);
+  });
+
+  it('that turns into scrolling on a touch screen changes nothing', () => {
+    const { state, stage } = open([at(200, 300)]);
+    const touch = { pointerType: 'touch' };
+    stage.pointer('pointerdown', 125, 20, touch);
+    stage.pointer('pointermove', 135, 40, touch);
+    stage.pointer('pointercancel', 135, 90, touch);
+    expect(state).toMatchObject({ windows: [at(200, 300)], settled: true });
+  });
+
+  it('a press without a move selects a window, or puts the cursor on empty ground', () => {
+    const { state, stage } = open([at(200, 300)]);
+    stage.pointer('pointerdown', 125);
+    stage.pointer('pointerup', 125);
+    expect(state).toMatchObject({ windows: [at(200, 300)], selected: 0 });
+    stage.pointer('pointerdown', 400);
+    stage.pointer('pointerup', 400);
+    expect(state).toMatchObject({ windows: [at(200, 300)], selected: null, cursor: 800 });
+  });
+
+  it('only moves the cursor for those who may not draw', () => {
+    const { state, stage } = open([at(200, 300)], false);
+    stage.pointer('pointerdown', 125);
+    stage.pointer('pointermove', 300);
+    stage.pointer('pointerup', 300);
+    expect(state).toMatchObject({ windows: [at(200, 300)], selected: null, cursor: 600 });
+  });
+});
+
+describe('keys on a window', () => {
+  const windows = [at(100, 160), at(300, 330)];
+  const press = (part: 'start' | 'end' | 'body', key: string, shift = false) =>
+    windowKey(windows, limits, 1, part, key, shift)?.[1];
+
+  it.each([
+    ['body', 'ArrowRight', false, at(301, 331)],
+    ['body', 'ArrowLeft', true, at(299.9, 329.9)],
+    ['body', 'PageUp', false, at(310, 340)],
+    ['start', 'ArrowLeft', false, at(299, 330)],
+    ['end', 'ArrowUp', true, at(300, 330.1)],
+  ] as const)('%s, %s, shift %p', (part, key, shift, expected) => {
+    expect(press(part, key, shift)).toEqual(expected);
+  });
+
+  it('Delete removes the window, other keys are left alone', () => {
+    expect(windowKey(windows, limits, 1, 'body', 'Delete', false)).toEqual([windows[0]]);
+    expect(windowKey(windows, limits, 1, 'body', 'x', false)).toBeNull();
+  });
+});
