@@ -54,7 +54,12 @@ export class Stack {
         ...options.env,
       },
     );
-    await stack.start();
+    try {
+      await stack.start();
+    } catch (error) {
+      await stack.stop();
+      throw error;
+    }
     return stack;
   }
 
