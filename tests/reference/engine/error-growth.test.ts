@@ -3,7 +3,7 @@
  * Schuler oscillation (Titterton & Weston 2004, ch. 12; Woodman, UCAM-CL-TR-696, 2007).
  */
 import { degToRad } from '@/shared/units';
-import { fillHalfNoise, Propagation } from '@/workers/engine/filter/propagation';
+import { Propagation } from '@/workers/engine/filter/propagation';
 import { ACCEL_BIAS, ATTITUDE, GYRO_BIAS, POSITION, STATES, VELOCITY } from '@/workers/engine/filter/states';
 import { halfBiasNoise } from '@/workers/engine/filter/bias-models';
 import { EARTH_RATE } from '@/workers/engine/geodesy';
@@ -45,18 +45,17 @@ function unaided(seconds: number, sources: Sources): Float64Array {
   const propagation = new Propagation();
   const half = new Float64Array(STATES);
   const decay = sources.accelDecay ?? 0;
-  fillHalfNoise(
-    half,
-    { gyroWhite: sources.gyroWhite ?? 0, accelWhite: sources.accelWhite ?? 0 },
-    STEP_S,
-    halfBiasNoise(sources.gyroWalk ?? 0, 0, STEP_S),
-    halfBiasNoise(sources.accelWalk ?? 0, decay, STEP_S),
-  );
+  for (let i = 0; i < 3; i += 1) {
+    half[VELOCITY + i] = 0.5 * (sources.accelWhite ?? 0) * STEP_S;
+    half[ATTITUDE + i] = 0.5 * (sources.gyroWhite ?? 0) * STEP_S;
+    half[GYRO_BIAS + i] = halfBiasNoise(sources.gyroWalk ?? 0, 0, STEP_S);
+    half[ACCEL_BIAS + i] = halfBiasNoise(sources.accelWalk ?? 0, decay, STEP_S);
+  }
   const p = new Float64Array(STATES * STATES);
   for (const [i, variance] of Object.entries(sources.initial ?? {})) p[Number(i) * (STATES + 1)] = variance!;
   for (let n = 0; n < Math.round(seconds / STEP_S); n += 1) {
     strapdown.advance(interval, 0, 1);
-    propagation.formTransition(strapdown, 0, decay);
+    propagation.transition.form(strapdown, 0, decay);
     propagation.propagate(p, half);
     strapdown.resetSums();
   }

@@ -159,12 +159,12 @@ test('K-16 a two-state run: innovations, S, NIS, states', () => {
     filter.add(0, 1, 0.05);
     filter.add(1, 0, 0.05);
     filter.add(1, 1, 0.1);
-    const innovation = measured - x[0]!;
+    const innovation = measured - x[0];
     const result = filter.measure(0.5, innovation);
     expect(innovation).toBeCloseTo(innovations[n]!, 11);
     expect(result.s).toBeCloseTo(s[n]!, 11);
     expect(result.nis).toBeCloseTo(nis[n]!, 11);
-    x[0] = x[0]! + result.correction[0]!;
+    x[0] = x[0] + result.correction[0]!;
     x[1] = x[1]! + result.correction[1]!;
   });
   expect(x[0]).toBeCloseTo(5.051951742028874, 11);

@@ -6,21 +6,20 @@
  * `applyFix`, `feedBack`, `recover`.
  */
 import type { Parameters } from '@/shared/contracts/parameters';
-import { degToRad, radToDeg } from '@/shared/units';
 import type { ImuColumns } from '../types';
 import { ANGLE, ANGLE_BEND, DURATION, ImuIntervals } from '../strapdown/imu-intervals';
 import { MERIDIAN_PLUS_H, TRANSVERSE_PLUS_H } from '../strapdown/local-earth';
-import { HEIGHT, LAT, LON, NAV_ACCEL_BIAS, NAV_GYRO_BIAS, QUAT, VN } from '../strapdown/navigation-state';
+import { HEIGHT, LAT, LON, NAV_ACCEL_BIAS, NAV_GYRO_BIAS, VN } from '../strapdown/navigation-state';
 import { Strapdown } from '../strapdown/strapdown';
-import { biasDecayRate, biasNoiseDensity, halfBiasNoise } from './bias-models';
 import { resetAttitudeCovariance, turnAttitude } from './attitude-feedback';
-import { biasParameters } from './bias-parameters';
 import type { Fixes } from './fixes';
 import { GapBridge } from './gap-bridge';
 import { Gate } from './gate';
 import { GnssModels } from './gnss-models';
+import { HeadingWatch } from './heading-watch';
 import { MeasurementUpdate } from './measurement-update';
-import { fillHalfNoise, Propagation } from './propagation';
+import { ProcessNoise } from './process-noise';
+import { Propagation } from './propagation';
 import { recoverGroups } from './recovery';
 import { ACCEL_BIAS, ATTITUDE, GYRO_BIAS, POSITION, STATES, VELOCITY } from './states';
 
@@ -28,10 +27,6 @@ import { ACCEL_BIAS, ATTITUDE, GYRO_BIAS, POSITION, STATES, VELOCITY } from './s
 const SAME_TIME_S = 1e-7;
 /** Gaps are bridged in steps of at most this, s. */
 const GAP_STEP_S = 0.02;
-
-/** A heading corrected by 2σ of its start is reported, but not below the first nor only above the second, rad. */
-const HEADING_REPORT_MIN = degToRad(20);
-const HEADING_REPORT_MAX = degToRad(45);
 
 export type GroupName = 'position' | 'velocity';
 
@@ -53,7 +48,7 @@ export interface FilterSnapshot {
   p: Float64Array;
   sample: number;
   fix: number;
-  heading: readonly [number, number, number, number];
+  heading: readonly number[];
   gates: readonly (readonly number[])[];
 }
 
@@ -70,17 +65,10 @@ export class ErrorStateFilter {
   private readonly propagation = new Propagation();
   private readonly update = new MeasurementUpdate();
   private readonly models: GnssModels;
-  private readonly halfNoise = new Float64Array(STATES);
   private readonly rate = new Float64Array(3);
-  private readonly white: { gyroWhite: number; accelWhite: number };
-  private readonly gyroBias: { density: number; decay: number };
-  private readonly accelBias: { density: number; decay: number };
+  private readonly noise: ProcessNoise;
   private readonly stepS: number;
-  /** What corrections have turned the heading by since its σ was this (rad) at that time (s). */
-  private headingTurned = 0;
-  private headingReported = false;
-  private headingSigma = 0;
-  private headingSinceS = 0;
+  private readonly headingWatch = new HeadingWatch();
 
   /** `withheld`: bits of `withheldBy` for each fix. */
   constructor(
@@ -94,14 +82,11 @@ export class ErrorStateFilter {
     this.strapdown = new Strapdown(parameters.mechanisation.scheme);
     this.intervals = new ImuIntervals(imu);
     this.gates = { position: new Gate(parameters.gate), velocity: new Gate(parameters.gate) };
-    const gyroDensity = parameters.gyro.whiteNoiseRadPerSqrtS ** 2;
-    this.white = { gyroWhite: gyroDensity, accelWhite: parameters.accel.whiteNoiseMPerSPerSqrtS ** 2 };
+    this.noise = new ProcessNoise(parameters);
     // A rate drawn on from the last two intervals has 2.5 times the variance of one.
-    const rateNoise = this.intervals.nominalS > 0 ? (2.5 * gyroDensity) / this.intervals.nominalS : 0;
+    const { nominalS } = this.intervals;
+    const rateNoise = nominalS > 0 ? (2.5 * this.noise.gyroWhite) / nominalS : 0;
     this.models = new GnssModels(leverArmM, rateNoise);
-    const bias = biasParameters(parameters);
-    this.gyroBias = { density: biasNoiseDensity(bias.gyro), decay: biasDecayRate(bias.gyro) };
-    this.accelBias = { density: biasNoiseDensity(bias.accel), decay: biasDecayRate(bias.accel) };
     this.stepS = parameters.mechanisation.covarianceIntervalS - 0.5 * this.intervals.nominalS;
   }
 
@@ -111,15 +96,11 @@ export class ErrorStateFilter {
     this.fix = fix;
     this.strapdown.start(nav);
     this.p.set(p);
-    this.headingReported = false;
-    this.restartHeadingWatch();
+    this.watchHeading();
   }
 
-  /** From here on corrections of the heading are counted against what is known of it now. */
-  private restartHeadingWatch(): void {
-    this.headingSigma = Math.sqrt(this.p[(ATTITUDE + 2) * (STATES + 1)]!);
-    this.headingSinceS = this.timeS;
-    this.headingTurned = 0;
+  private watchHeading(): void {
+    this.headingWatch.restart(this.timeS, Math.sqrt(this.p[(ATTITUDE + 2) * (STATES + 1)]!));
   }
 
   get timeS(): number {
@@ -160,9 +141,8 @@ export class ErrorStateFilter {
     }
     const duration = interval[DURATION]!;
     const bridge = new GapBridge(this.imu, this.sample + 1, duration, this.intervals.nominalS);
-    const { gyroWhite, accelWhite } = this.white;
-    this.white.gyroWhite += bridge.gyroNoise;
-    this.white.accelWhite += bridge.accelNoise;
+    this.noise.gyroExtra = bridge.gyroNoise;
+    this.noise.accelExtra = bridge.accelNoise;
     const steps = Math.ceil(((to - from) * duration) / GAP_STEP_S);
     for (let i = 0; i < steps; i += 1) {
       const a = from + ((to - from) * i) / steps;
@@ -171,12 +151,12 @@ export class ErrorStateFilter {
       this.strapdown.advance(interval, a, b);
       this.covarianceStep();
     }
-    this.white.gyroWhite = gyroWhite;
-    this.white.accelWhite = accelWhite;
+    this.noise.gyroExtra = 0;
+    this.noise.accelExtra = 0;
     if (to < 1) return;
     const heading = (ATTITUDE + 2) * (STATES + 1);
     this.p[heading] = this.p[heading]! + bridge.headingVariance;
-    this.restartHeadingWatch();
+    this.watchHeading();
   }
 
   private reportGap(start: number, end: number): void {
@@ -190,26 +170,20 @@ export class ErrorStateFilter {
 
   /** Carries the covariance (and decaying biases) up to the strapdown's time. */
   covarianceStep(): void {
-    const { strapdown, propagation, gyroBias, accelBias } = this;
+    const { strapdown, noise } = this;
     const dt = strapdown.sumForce[3]!;
     if (dt === 0) return;
-    propagation.formTransition(strapdown, gyroBias.decay, accelBias.decay);
-    this.fillNoise(dt);
-    propagation.propagate(this.p, this.halfNoise);
+    this.propagate(this.p, dt);
     strapdown.resetSums();
-    if (gyroBias.decay > 0) this.decay(NAV_GYRO_BIAS, Math.exp(-gyroBias.decay * dt));
-    if (accelBias.decay > 0) this.decay(NAV_ACCEL_BIAS, Math.exp(-accelBias.decay * dt));
+    if (noise.gyroDecay > 0) this.decay(NAV_GYRO_BIAS, Math.exp(-noise.gyroDecay * dt));
+    if (noise.accelDecay > 0) this.decay(NAV_ACCEL_BIAS, Math.exp(-noise.accelDecay * dt));
   }
 
-  private fillNoise(dt: number): void {
-    const { gyroBias, accelBias } = this;
-    fillHalfNoise(
-      this.halfNoise,
-      this.white,
-      dt,
-      halfBiasNoise(gyroBias.density, gyroBias.decay, dt),
-      halfBiasNoise(accelBias.density, accelBias.decay, dt),
-    );
+  private propagate(p: Float64Array, dt: number): void {
+    const { strapdown, propagation, noise } = this;
+    propagation.transition.form(strapdown, noise.gyroDecay, noise.accelDecay);
+    noise.fill(dt);
+    propagation.propagate(p, noise.half);
   }
 
   private decay(at: number, factor: number): void {
@@ -221,10 +195,7 @@ export class ErrorStateFilter {
   covarianceNow(out: Float64Array): Float64Array {
     out.set(this.p);
     const dt = this.strapdown.sumForce[3]!;
-    if (dt === 0) return out;
-    this.propagation.formTransition(this.strapdown, this.gyroBias.decay, this.accelBias.decay);
-    this.fillNoise(dt);
-    this.propagation.propagate(out, this.halfNoise);
+    if (dt > 0) this.propagate(out, dt);
     return out;
   }
 
@@ -282,24 +253,11 @@ export class ErrorStateFilter {
       nav[NAV_GYRO_BIAS + i] = nav[NAV_GYRO_BIAS + i]! + correction[GYRO_BIAS + i]!;
       nav[NAV_ACCEL_BIAS + i] = nav[NAV_ACCEL_BIAS + i]! + correction[ACCEL_BIAS + i]!;
     }
-    this.watchHeading(correction[ATTITUDE + 2]!);
+    const wrong = this.headingWatch.add(-correction[ATTITUDE + 2]!);
+    if (wrong !== null) this.warn('heading-corrected', wrong, this.timeS);
     turnAttitude(nav, correction);
     strapdown.attitudeChanged();
     resetAttitudeCovariance(p, correction);
-  }
-
-  /** A start that was far off is found by the filter, but never in silence. */
-  private watchHeading(correction: number): void {
-    this.headingTurned -= correction;
-    const turned = Math.abs(this.headingTurned);
-    const limit = Math.max(HEADING_REPORT_MIN, Math.min(2 * this.headingSigma, HEADING_REPORT_MAX));
-    if (this.headingReported || turned < limit) return;
-    this.headingReported = true;
-    this.warn(
-      'heading-corrected',
-      `GNSS turned the heading by ${radToDeg(turned).toFixed(0)}° from what was given or found at ${this.headingSinceS.toFixed(1)} s with ${radToDeg(this.headingSigma).toFixed(0)}° (1σ): that heading was wrong.`,
-      this.timeS,
-    );
   }
 
   warn(code: string, sentence: string, timeS: number): void {
@@ -317,7 +275,7 @@ export class ErrorStateFilter {
       p: this.p.slice(),
       sample: this.sample,
       fix: this.fix,
-      heading: [this.headingTurned, this.headingSigma, this.headingSinceS, this.headingReported ? 1 : 0],
+      heading: this.headingWatch.save(),
       gates: [this.gates.position.save(), this.gates.velocity.save()],
     };
   }
@@ -327,8 +285,7 @@ export class ErrorStateFilter {
     this.p.set(saved.p);
     this.sample = saved.sample;
     this.fix = saved.fix;
-    [this.headingTurned, this.headingSigma, this.headingSinceS] = saved.heading;
-    this.headingReported = saved.heading[3] === 1;
+    this.headingWatch.restore(saved.heading);
     this.gates.position.restore(saved.gates[0]!);
     this.gates.velocity.restore(saved.gates[1]!);
   }

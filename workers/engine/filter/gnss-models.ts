@@ -4,8 +4,7 @@
  * With computed minus true and Ĉ = (I − [φ×])C their error is
  *   δr + [(C l)×]φ   and   δv + [u×]φ + C[l×]δb_g, u = C(ω_ib × l).
  */
-import { EARTH_RATE } from '../geodesy';
-import { wrapAngle } from '../geodesy';
+import { EARTH_RATE, wrapAngle } from '../geodesy';
 import { MERIDIAN_PLUS_H, TRANSVERSE_PLUS_H } from '../strapdown/local-earth';
 import { HEIGHT, LAT, LON, VD, VE, VN } from '../strapdown/navigation-state';
 import type { Strapdown } from '../strapdown/strapdown';

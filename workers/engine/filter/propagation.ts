@@ -1,300 +1,23 @@
-/**
- * Propagation of the error covariance, P ← Φ(P + ½Q)Φᵀ + ½Q (trapezoidal process noise), over a covariance step.
- *
- * Φ is the second-order transition of the phi-angle error model (Titterton & Weston 2004, ch. 12; Groves 2013,
- * ch. 14, signs for computed minus true, position in metres), applied in the order attitude → velocity → position,
- * each step using the mean of the two ends of what it integrates: that is where the second-order terms
- * (velocity–gyro bias, position–attitude, position–accelerometer bias) come from. f_n and C enter as their integrals over the step.
- * Nothing but Φ's non-zero entries is touched.
- */
-import { EARTH_RATE } from '../geodesy';
-import { GRAVITY, MERIDIAN_PLUS_H, TRANSVERSE_PLUS_H } from '../strapdown/local-earth';
-import { LAT, VD, VE, VN } from '../strapdown/navigation-state';
-import type { Strapdown } from '../strapdown/strapdown';
-import { ACCEL_BIAS, ATTITUDE, GYRO_BIAS, POSITION, STATES, VELOCITY } from './states';
-
-/** Process noise of a filter: densities of white noise and of the biases, and the biases' decay. */
-export interface ProcessNoise {
-  /** N_g², rad²/s. */
-  gyroWhite: number;
-  /** N_a², m²/s³. */
-  accelWhite: number;
-}
-
-/** Coefficients of Φ, already times the step: see `formTransition`. */
-const C = {
-  positionFromPosition: 0, // NN, ND, EN, EE, ED
-  velocityFromVelocity: 5, // row by row
-  velocityFromPosition: 14, // N: N D, E: N D, D: N D
-  force: 20, // ∫f_n dt
-  attitudeFromAttitude: 23, // ω_in dt
-  attitudeFromPosition: 26, // N: N D, E: D, D: N D
-  attitudeFromVelocity: 31, // N: E, E: N, D: E
-  gyroAxes: 34, // ∫C dt of the gyro biases
-  accelAxes: 43, // ∫C dt of the accelerometer biases
-  halfStep: 52,
-  gyroDecay: 53,
-  accelDecay: 54,
-  size: 55,
-} as const;
+/** Propagation of the error covariance over a covariance step, P ← Φ(P + ½Q)Φᵀ + ½Q (trapezoidal process noise). */
+import { ACCEL_BIAS, GYRO_BIAS, STATES } from './states';
+import { Transition } from './transition';
 
 export class Propagation {
-  readonly transition = new Float64Array(C.size);
+  /** Φ: to be formed before `propagate`. */
+  readonly transition = new Transition();
   private readonly product = new Float64Array(STATES * STATES);
 
   /**
-   * Fills the transition from the sums that the strapdown gathered over the step and the state at its end.
-   * `gyroDecayRate`, `accelDecayRate`: 1/τ of decaying biases, 1/s.
-   */
-  formTransition(strapdown: Strapdown, gyroDecayRate: number, accelDecayRate: number): void {
-    const { nav, earth, sumDcm, sumForce } = strapdown;
-    const t = this.transition;
-    const dt = sumForce[3]!;
-    const vn = nav[VN]!;
-    const ve = nav[VE]!;
-    const vd = nav[VD]!;
-    const sinLat = Math.sin(nav[LAT]!);
-    const cosLat = Math.cos(nav[LAT]!);
-    const tanLat = sinLat / cosLat;
-    const perM = 1 / earth[MERIDIAN_PLUS_H]!;
-    const perN = 1 / earth[TRANSVERSE_PLUS_H]!;
-    const earthN = EARTH_RATE * cosLat;
-    const earthD = -EARTH_RATE * sinLat;
-    const transportN = ve * perN;
-    const transportE = -vn * perM;
-    const transportD = -ve * perN * tanLat;
-
-    let at: number = C.positionFromPosition;
-    t[at] = -vd * perM * dt;
-    t[at + 1] = vn * perM * dt;
-    t[at + 2] = ve * tanLat * perM * dt;
-    t[at + 3] = -(vd * perN + tanLat * vn * perM) * dt;
-    t[at + 4] = ve * perN * dt;
-
-    // −(2ω_ie + ω_en)×δv and v×δω_en(δv).
-    const wn = 2 * earthN + transportN;
-    const we = transportE;
-    const wd = 2 * earthD + transportD;
-    at = C.velocityFromVelocity;
-    t[at] = vd * perM * dt;
-    t[at + 1] = (wd - ve * tanLat * perN) * dt;
-    t[at + 2] = -we * dt;
-    t[at + 3] = -wd * dt;
-    t[at + 4] = (vd + vn * tanLat) * perN * dt;
-    t[at + 5] = wn * dt;
-    t[at + 6] = (we - vn * perM) * dt;
-    t[at + 7] = -(wn + ve * perN) * dt;
-    t[at + 8] = 0;
-
-    // Change of ω_ie with δr_N, of ω_en with δr_N and δr_D.
-    const earthNPerN = -EARTH_RATE * sinLat * perM;
-    const earthDPerN = -EARTH_RATE * cosLat * perM;
-    const transportDPerN = (-ve * perN * perM) / (cosLat * cosLat);
-    const transportNPerD = ve * perN * perN;
-    const transportEPerD = -vn * perM * perM;
-    const transportDPerD = -ve * tanLat * perN * perN;
-    // v × (2δω_ie + δω_en), and gravity's gradient 2g/R.
-    const turnN = 2 * earthNPerN;
-    const turnD = 2 * earthDPerN + transportDPerN;
-    at = C.velocityFromPosition;
-    t[at] = ve * turnD * dt;
-    t[at + 1] = (ve * transportDPerD - vd * transportEPerD) * dt;
-    t[at + 2] = (vd * turnN - vn * turnD) * dt;
-    t[at + 3] = (vd * transportNPerD - vn * transportDPerD) * dt;
-    t[at + 4] = -ve * turnN * dt;
-    t[at + 5] =
-      (vn * transportEPerD - ve * transportNPerD + 2 * earth[GRAVITY]! * Math.sqrt(perM * perN)) * dt;
-
-    for (let i = 0; i < 3; i += 1) t[C.force + i] = sumForce[i]!;
-
-    at = C.attitudeFromAttitude;
-    t[at] = (earthN + transportN) * dt;
-    t[at + 1] = transportE * dt;
-    t[at + 2] = (earthD + transportD) * dt;
-    at = C.attitudeFromPosition;
-    t[at] = earthNPerN * dt;
-    t[at + 1] = transportNPerD * dt;
-    t[at + 2] = transportEPerD * dt;
-    t[at + 3] = (earthDPerN + transportDPerN) * dt;
-    t[at + 4] = transportDPerD * dt;
-    at = C.attitudeFromVelocity;
-    t[at] = perN * dt;
-    t[at + 1] = -perM * dt;
-    t[at + 2] = -tanLat * perN * dt;
-
-    // A decaying bias acts on the step with its mean, 1 − dt/2τ.
-    const gyroMean = 1 - 0.5 * gyroDecayRate * dt;
-    const accelMean = 1 - 0.5 * accelDecayRate * dt;
-    for (let i = 0; i < 9; i += 1) {
-      t[C.gyroAxes + i] = sumDcm[i]! * gyroMean;
-      t[C.accelAxes + i] = sumDcm[i]! * accelMean;
-    }
-    t[C.halfStep] = 0.5 * dt;
-    t[C.gyroDecay] = Math.exp(-gyroDecayRate * dt);
-    t[C.accelDecay] = Math.exp(-accelDecayRate * dt);
-  }
-
-  /**
-   * y = Φx for `count` 15-vectors: vector v has its elements at v·vectorStep + i·elementStep of `source`; results go
-   * one after the other into `target`.
-   */
-  private apply(
-    source: Float64Array,
-    vectorStep: number,
-    elementStep: number,
-    target: Float64Array,
-    count: number,
-  ): void {
-    this.attitudeRows(source, vectorStep, elementStep, target, count);
-    this.velocityRows(source, vectorStep, elementStep, target, count);
-    this.positionAndBiasRows(source, vectorStep, elementStep, target, count);
-  }
-
-  /** φ' = φ − ω_in×φ + δω_in(δr, δv) + C δb_g */
-  private attitudeRows(x: Float64Array, vectorStep: number, s: number, y: Float64Array, count: number): void {
-    const t = this.transition;
-    const wn = t[23]!;
-    const we = t[24]!;
-    const wd = t[25]!;
-    const nByN = t[26]!;
-    const nByD = t[27]!;
-    const eByD = t[28]!;
-    const dByN = t[29]!;
-    const dByD = t[30]!;
-    const nByVe = t[31]!;
-    const eByVn = t[32]!;
-    const dByVe = t[33]!;
-    const c00 = t[34]!;
-    const c01 = t[35]!;
-    const c02 = t[36]!;
-    const c10 = t[37]!;
-    const c11 = t[38]!;
-    const c12 = t[39]!;
-    const c20 = t[40]!;
-    const c21 = t[41]!;
-    const c22 = t[42]!;
-    for (let v = 0; v < count; v += 1) {
-      const at = v * vectorStep;
-      const to = v * STATES;
-      const rn = x[at]!;
-      const rd = x[at + 2 * s]!;
-      const ve = x[at + 4 * s]!;
-      const pn = x[at + 6 * s]!;
-      const pe = x[at + 7 * s]!;
-      const pd = x[at + 8 * s]!;
-      const gx = x[at + 9 * s]!;
-      const gy = x[at + 10 * s]!;
-      const gz = x[at + 11 * s]!;
-      y[to + 6] =
-        pn - we * pd + wd * pe + nByN * rn + nByD * rd + nByVe * ve + c00 * gx + c01 * gy + c02 * gz;
-      y[to + 7] =
-        pe - wd * pn + wn * pd + eByD * rd + eByVn * x[at + 3 * s]! + c10 * gx + c11 * gy + c12 * gz;
-      y[to + 8] =
-        pd - wn * pe + we * pn + dByN * rn + dByD * rd + dByVe * ve + c20 * gx + c21 * gy + c22 * gz;
-    }
-  }
-
-  /** v' = v + f×½(φ + φ') − C δb_a + Coriolis, transport and gravity terms in δv and δr; φ' is in `y` already. */
-  private velocityRows(x: Float64Array, vectorStep: number, s: number, y: Float64Array, count: number): void {
-    const t = this.transition;
-    const nn = 1 + t[5]!;
-    const ne = t[6]!;
-    const nd = t[7]!;
-    const en = t[8]!;
-    const ee = 1 + t[9]!;
-    const ed = t[10]!;
-    const dn = t[11]!;
-    const de = t[12]!;
-    const nByN = t[14]!;
-    const nByD = t[15]!;
-    const eByN = t[16]!;
-    const eByD = t[17]!;
-    const dByN = t[18]!;
-    const dByD = t[19]!;
-    const fn = 0.5 * t[20]!;
-    const fe = 0.5 * t[21]!;
-    const fd = 0.5 * t[22]!;
-    for (let v = 0; v < count; v += 1) {
-      const at = v * vectorStep;
-      const to = v * STATES;
-      const rn = x[at]!;
-      const rd = x[at + 2 * s]!;
-      const vn = x[at + 3 * s]!;
-      const ve = x[at + 4 * s]!;
-      const vd = x[at + 5 * s]!;
-      const pn = x[at + 6 * s]! + y[to + 6]!;
-      const pe = x[at + 7 * s]! + y[to + 7]!;
-      const pd = x[at + 8 * s]! + y[to + 8]!;
-      y[to + 3] = nn * vn + ne * ve + nd * vd + nByN * rn + nByD * rd + fe * pd - fd * pe;
-      y[to + 4] = en * vn + ee * ve + ed * vd + eByN * rn + eByD * rd + fd * pn - fn * pd;
-      y[to + 5] = dn * vn + de * ve + vd + dByN * rn + dByD * rd + fn * pe - fe * pn;
-    }
-    const c00 = t[43]!;
-    const c01 = t[44]!;
-    const c02 = t[45]!;
-    const c10 = t[46]!;
-    const c11 = t[47]!;
-    const c12 = t[48]!;
-    const c20 = t[49]!;
-    const c21 = t[50]!;
-    const c22 = t[51]!;
-    for (let v = 0; v < count; v += 1) {
-      const at = v * vectorStep;
-      const to = v * STATES;
-      const ax = x[at + 12 * s]!;
-      const ay = x[at + 13 * s]!;
-      const az = x[at + 14 * s]!;
-      y[to + 3] = y[to + 3]! - c00 * ax - c01 * ay - c02 * az;
-      y[to + 4] = y[to + 4]! - c10 * ax - c11 * ay - c12 * az;
-      y[to + 5] = y[to + 5]! - c20 * ax - c21 * ay - c22 * az;
-    }
-  }
-
-  /** r' = r + ½Δt(v + v') and curvature; biases decay. v' is in `y` already. */
-  private positionAndBiasRows(
-    x: Float64Array,
-    vectorStep: number,
-    s: number,
-    y: Float64Array,
-    count: number,
-  ): void {
-    const t = this.transition;
-    const nn = 1 + t[0]!;
-    const nd = t[1]!;
-    const en = t[2]!;
-    const ee = 1 + t[3]!;
-    const ed = t[4]!;
-    const half = t[52]!;
-    const gyro = t[53]!;
-    const accel = t[54]!;
-    for (let v = 0; v < count; v += 1) {
-      const at = v * vectorStep;
-      const to = v * STATES;
-      const rn = x[at]!;
-      const rd = x[at + 2 * s]!;
-      y[to] = nn * rn + nd * rd + half * (x[at + 3 * s]! + y[to + 3]!);
-      y[to + 1] = en * rn + ee * x[at + s]! + ed * rd + half * (x[at + 4 * s]! + y[to + 4]!);
-      y[to + 2] = rd + half * (x[at + 5 * s]! + y[to + 5]!);
-      y[to + 9] = gyro * x[at + 9 * s]!;
-      y[to + 10] = gyro * x[at + 10 * s]!;
-      y[to + 11] = gyro * x[at + 11 * s]!;
-      y[to + 12] = accel * x[at + 12 * s]!;
-      y[to + 13] = accel * x[at + 13 * s]!;
-      y[to + 14] = accel * x[at + 14 * s]!;
-    }
-  }
-
-  /**
-   * P (15×15, row by row, symmetric) over the step that `formTransition` described. `halfNoise` (15): what to add to
+   * P (15×15, row by row, symmetric) over the step that `transition` describes. `halfNoise` (15): what to add to
    * the diagonal before and again after Φ.
    */
   propagate(p: Float64Array, halfNoise: Float64Array): void {
-    const m = this.product;
+    const { product: m, transition } = this;
     for (let i = 0; i < STATES; i += 1) p[i * 16] = p[i * 16]! + halfNoise[i]!;
     // Row c of m becomes column c of ΦP.
-    this.apply(p, STATES, 1, m, STATES);
+    transition.apply(p, STATES, 1, m, STATES);
     // Row i of P becomes Φ times row i of ΦP; the biases' rows follow from symmetry.
-    this.apply(m, 1, STATES, p, GYRO_BIAS);
+    transition.apply(m, 1, STATES, p, GYRO_BIAS);
     this.biasRows(p);
     for (let i = 1; i < STATES; i += 1) {
       const end = i < GYRO_BIAS ? i : GYRO_BIAS;
@@ -305,40 +28,12 @@ export class Propagation {
 
   /** Biases among themselves: only the decay acts. */
   private biasRows(p: Float64Array): void {
-    const gyro = this.transition[C.gyroDecay]!;
-    const accel = this.transition[C.accelDecay]!;
+    const gyro = this.transition.gyroDecay;
+    const accel = this.transition.accelDecay;
     if (gyro === 1 && accel === 1) return;
     for (let i = GYRO_BIAS; i < STATES; i += 1)
       for (let j = GYRO_BIAS; j < STATES; j += 1)
         p[i * STATES + j] =
           p[i * STATES + j]! * ((i < ACCEL_BIAS ? gyro : accel) * (j < ACCEL_BIAS ? gyro : accel));
-  }
-
-  /** Φ as a dense matrix (15×15, row by row) in `out`: for the smoother, the tests and study. */
-  dense(out: Float64Array): Float64Array {
-    const unit = new Float64Array(STATES * STATES);
-    const columns = new Float64Array(STATES * STATES);
-    for (let i = 0; i < STATES; i += 1) unit[i * (STATES + 1)] = 1;
-    this.apply(unit, STATES, 1, columns, STATES);
-    for (let r = 0; r < STATES; r += 1)
-      for (let c = 0; c < STATES; c += 1) out[r * STATES + c] = columns[c * STATES + r]!;
-    return out;
-  }
-}
-
-/** Half of a step's noise on the diagonal: white noise on velocity and attitude, and the biases' own. */
-export function fillHalfNoise(
-  out: Float64Array,
-  noise: ProcessNoise,
-  dt: number,
-  gyroBiasHalf: number,
-  accelBiasHalf: number,
-): void {
-  for (let i = 0; i < 3; i += 1) {
-    out[POSITION + i] = 0;
-    out[VELOCITY + i] = 0.5 * noise.accelWhite * dt;
-    out[ATTITUDE + i] = 0.5 * noise.gyroWhite * dt;
-    out[GYRO_BIAS + i] = gyroBiasHalf;
-    out[ACCEL_BIAS + i] = accelBiasHalf;
   }
 }

@@ -7,7 +7,7 @@ import {
   rotationVectorFromQuat,
 } from '@/workers/engine/attitude';
 import { meridianRadius, transverseRadius } from '@/workers/engine/geodesy';
-import { Propagation, fillHalfNoise } from '@/workers/engine/filter/propagation';
+import { Propagation } from '@/workers/engine/filter/propagation';
 import { STATES } from '@/workers/engine/filter/states';
 import { DURATION, INTERVAL_SIZE } from '@/workers/engine/strapdown/imu-intervals';
 import { HEIGHT, LAT, LON, NAV_SIZE, QUAT, VN } from '@/workers/engine/strapdown/navigation-state';
@@ -84,8 +84,8 @@ describe('transition matrix', () => {
     const nav = startState(lat);
     const truth = run(nav);
     const propagation = new Propagation();
-    propagation.formTransition(truth, 0, 0);
-    const phi = propagation.dense(new Float64Array(STATES * STATES));
+    propagation.transition.form(truth, 0, 0);
+    const phi = propagation.transition.dense(new Float64Array(STATES * STATES));
     const wrong: string[] = [];
     for (let j = 0; j < STATES; j += 1) {
       const error = new Float64Array(STATES);
@@ -108,8 +108,8 @@ describe('transition matrix', () => {
   test('keeps the second-order terms', () => {
     const propagation = new Propagation();
     const strapdown = run(startState());
-    propagation.formTransition(strapdown, 0, 0);
-    const phi = propagation.dense(new Float64Array(STATES * STATES));
+    propagation.transition.form(strapdown, 0, 0);
+    const phi = propagation.transition.dense(new Float64Array(STATES * STATES));
     const at = (row: number, column: number) => phi[row * STATES + column]!;
     const [fn, fe, fd] = strapdown.sumForce;
     // Position–attitude ½[f×]Δt², position–accelerometer bias −½CΔt², velocity–gyro bias ½[f×]CΔt².
@@ -124,10 +124,16 @@ describe('transition matrix', () => {
 
 describe('covariance', () => {
   const propagation = new Propagation();
-  propagation.formTransition(run(startState()), 1 / 20, 1 / 50);
-  const phi = Matrix.from1DArray(STATES, STATES, propagation.dense(new Float64Array(STATES * STATES)));
-  const halfNoise = new Float64Array(STATES);
-  fillHalfNoise(halfNoise, { gyroWhite: 1e-8, accelWhite: 1e-6 }, STEP_S, 1e-13, 1e-9);
+  propagation.transition.form(run(startState()), 1 / 20, 1 / 50);
+  const phi = Matrix.from1DArray(
+    STATES,
+    STATES,
+    propagation.transition.dense(new Float64Array(STATES * STATES)),
+  );
+  const halfNoise = Float64Array.from(
+    { length: STATES },
+    (_, i) => [0, 2e-8, 3e-10, 1e-13, 1e-9][Math.floor(i / 3)]!,
+  );
 
   const covariances = fc
     .array(fc.double({ min: -1, max: 1, noNaN: true }), { minLength: STATES ** 2, maxLength: STATES ** 2 })
