@@ -96,5 +96,5 @@ const styles = StyleSheet.create({
   title: { flexDirection: 'row', alignItems: 'center', gap: space.xs, flex: 1, flexBasis: 180, minWidth: 0 },
   words: { flexShrink: 1 },
   phoneTitle: { fontSize: 24, lineHeight: 30 },
-  actions: { flexDirection: 'row', flexWrap: 'wrap', gap: space.s },
+  actions: { flexDirection: 'row', flexWrap: 'wrap', gap: space.s, maxWidth: '100%' },
 });

@@ -53,7 +53,7 @@ export function TodayScreen() {
         />
       ) : null}
       {empty ? <FirstSteps mayUpload={mayUpload} /> : null}
-      {all.length > 0 ? <WaitingList waiting={waitingFor(all, mayUpload)} /> : null}
+      {all.length > 0 ? <WaitingList waiting={waitingFor(all, mayUpload)} mayWrite={mayUpload} /> : null}
       {latest.length > 0 ? (
         <Section title="Latest recordings" link={<TextLink href="/recordings" label="All recordings" />}>
           {latest.slice(0, SHOWN).map((recording) => (

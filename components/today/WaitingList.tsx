@@ -10,13 +10,15 @@ import { hairline, radius, space } from '@/constants/theme';
 import type { Waiting } from './waiting';
 
 /** Rows that lead to what has to be done. */
-export function WaitingList({ waiting }: { waiting: readonly Waiting[] }) {
+export function WaitingList({ waiting, mayWrite }: { waiting: readonly Waiting[]; mayWrite: boolean }) {
   const { palette } = useTheme();
   return (
     <View style={{ gap: space.s }}>
       <Text variant="heading">Waiting</Text>
       {waiting.length === 0 ? (
-        <Text tone="soft">Nothing waits: every recording is decoded.</Text>
+        <Text tone="soft">
+          {mayWrite ? 'Nothing waits: every recording is decoded.' : 'Nothing is being decoded just now.'}
+        </Text>
       ) : (
         <View style={[styles.list, { backgroundColor: palette.sheet, borderColor: palette.rule }]}>
           {waiting.map((item, at) => (

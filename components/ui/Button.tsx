@@ -52,7 +52,7 @@ function Plain(props: ButtonProps) {
       onHoverIn={() => setHovered(true)}
       onHoverOut={() => setHovered(false)}
       onFocus={(event) => {
-        setFocused(true);
+        setFocused(isFocusVisible(event.target));
         rest.onFocus?.(event);
       }}
       onBlur={(event) => {
@@ -87,6 +87,11 @@ function Plain(props: ButtonProps) {
       {iconOnly && !off && (hovered || focused) ? <Hint text={label} /> : null}
     </Pressable>
   );
+}
+
+/** True for focus that came by the keyboard: a press or an opening dialog does not call the hint up. */
+function isFocusVisible(target: unknown): boolean {
+  return typeof Element !== 'undefined' && target instanceof Element && target.matches(':focus-visible');
 }
 
 /** A button that cannot be pressed hears no pointer: what is around it tells why, under the pointer or at a touch. */

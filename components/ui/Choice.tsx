@@ -125,13 +125,15 @@ function Select<T extends string>({
         boxSizing: 'border-box',
         borderRadius: radius,
         border: `${hairline}px solid ${error ? palette.vermilion : palette.rule}`,
-        background: `${palette.well} url("data:image/svg+xml,${arrow}") no-repeat right 14px center`,
+        background: disabled
+          ? palette.sheet
+          : `${palette.well} url("data:image/svg+xml,${arrow}") no-repeat right 14px center`,
         color: palette.ink,
         fontFamily: fonts.label,
         fontSize: typeScale.body,
         padding: `${space.s}px 36px ${space.s}px ${space.m}px`,
         textOverflow: 'ellipsis',
-        opacity: disabled ? 0.6 : 1,
+        opacity: 1, // browsers fade what is disabled
       }}
     >
       {placeholder !== undefined ? <option value="">{placeholder}</option> : null}

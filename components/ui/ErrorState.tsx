@@ -13,12 +13,13 @@ export interface ErrorStateProps {
 /** Says what failed and what to do; a refusal for want of a role gets its own words. */
 export function ErrorState({ error, title, onRetry }: ErrorStateProps) {
   if (error instanceof ApiProblem && error.status === 403) return <NoPermission message={error.message} />;
+  const gone = error instanceof ApiProblem && error.status === 404; // asking again finds nothing either
   return (
     <Notice
       tone="vermilion"
       urgent
       title={title}
-      actions={onRetry ? <Button label="Try again" onPress={onRetry} /> : undefined}
+      actions={onRetry && !gone ? <Button label="Try again" onPress={onRetry} /> : undefined}
     >
       {messageOf(error)}
     </Notice>

@@ -74,7 +74,7 @@ export function Field({
             backgroundColor: palette.well,
             borderColor: error ? palette.vermilion : palette.rule,
           },
-          editable ? null : styles.off,
+          editable ? null : { backgroundColor: palette.sheet },
         ]}
       />
     </View>
@@ -103,5 +103,4 @@ const styles = StyleSheet.create({
   multiline: { minHeight: 96, textAlignVertical: 'top', paddingTop: space.m },
   icon: { position: 'absolute', left: space.m, top: 0, bottom: 0, justifyContent: 'center', zIndex: 1 },
   withIcon: { paddingLeft: 40 },
-  off: { opacity: 0.6 },
 });

@@ -1,4 +1,4 @@
-import { useEffect, useId, useRef, type CSSProperties, type ReactNode } from 'react';
+import { useId, useLayoutEffect, useRef, type CSSProperties, type ReactNode } from 'react';
 import { ScrollView, StyleSheet, View } from 'react-native';
 import { hairline, space } from '@/constants/theme';
 import { Button } from './Button';
@@ -20,14 +20,16 @@ export function ModalFrame({ title, onClose, children, footer, placement }: Moda
   const { palette } = useTheme();
   const dialog = useRef<HTMLDialogElement>(null);
   const titleId = useId();
-  useEffect(() => {
+  // Before the element leaves the page: only then does closing give the focus back.
+  useLayoutEffect(() => {
     const element = dialog.current;
-    if (element && !element.open) element.showModal?.();
+    if (element && !element.open) openOn(element);
     return () => element?.close?.();
   }, []);
   return (
     <dialog
       ref={dialog}
+      tabIndex={-1}
       aria-labelledby={titleId}
       onCancel={(event) => {
         event.preventDefault();
@@ -43,6 +45,7 @@ export function ModalFrame({ title, onClose, children, footer, placement }: Moda
         border: `${hairline}px solid ${palette.rule}`,
         boxShadow: '0 8px 32px rgba(0, 0, 0, 0.18)',
         overflow: 'hidden',
+        outline: 'none',
         boxSizing: 'border-box',
         ...placement,
       }}
@@ -61,6 +64,14 @@ export function ModalFrame({ title, onClose, children, footer, placement }: Moda
       </View>
     </dialog>
   );
+}
+
+/** Opens with the first field in focus; on a touch screen without it, lest the keyboard cover the dialog. */
+function openOn(element: HTMLDialogElement) {
+  element.showModal?.();
+  const touch = typeof matchMedia === 'undefined' || matchMedia('(pointer: coarse)').matches;
+  const field = touch ? null : element.querySelector<HTMLElement>('input, textarea, select');
+  (field ?? element).focus?.();
 }
 
 const styles = StyleSheet.create({

@@ -16,7 +16,7 @@ export interface ToastMessage {
 
 type Show = (toast: ToastMessage) => void;
 const ToastContext = createContext<Show | null>(null);
-const SHOWN_MS = 7000;
+const SHOWN_MS = 10_000;
 
 /** Short news at the lower edge, read out politely; stays while the pointer or the focus is on it. */
 export function ToastProvider({ children }: { children: ReactNode }) {

@@ -58,7 +58,9 @@ function Loaded({ vehicle, back }: { vehicle: Vehicle; back: '/vehicles' | undef
       }
     >
       {mayWrite ? null : (
-        <NoPermission message="You see this vehicle; an engineer, approver or admin changes it." />
+        <Notice tone="petrol" title="Yours to read">
+          An engineer, approver or admin changes it.
+        </Notice>
       )}
       <VehicleForm
         vehicle={vehicle}
