@@ -9,6 +9,8 @@ const AWAY_SYSTEM = /^(ECONNREFUSED|ECONNRESET|EPIPE|ETIMEDOUT|ENOTFOUND|EAI_AGA
 const AWAY_TEXT =
   /Connection terminated|connection timeout|ConnectionManager .* closed|Client has encountered a connection error|timeout exceeded when trying to connect|Client was closed/i;
 
+const FIRST_WAIT_MS = 100;
+
 /** Whether `error` means that the database could not be reached, rather than that it refused. */
 export function isDatabaseAway(error: unknown): boolean {
   if (error instanceof ConnectionError) return true;
@@ -23,12 +25,13 @@ export async function persist<T>(
   work: () => Promise<T>,
   options: { log: Logger; stopping: AbortSignal },
 ): Promise<T> {
-  for (let waitMs = 100; ; waitMs = Math.min(waitMs * 2, 2_000)) {
+  for (let waitMs = FIRST_WAIT_MS; ; waitMs = Math.min(waitMs * 2, 2_000)) {
     try {
       return await work();
     } catch (error) {
       if (!isDatabaseAway(error) || options.stopping.aborted) throw error;
-      options.log.warn({ err: error, waitMs }, 'the database is away; what is to be written waits');
+      if (waitMs === FIRST_WAIT_MS)
+        options.log.warn({ err: error }, 'the database is away; what is to be written waits');
       await pause(waitMs, options.stopping);
     }
   }

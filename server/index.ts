@@ -6,30 +6,26 @@ export { loadConfig } from './config';
 export { startServer, type RunningServer } from './start';
 
 async function main(): Promise<void> {
-  const server = await startServer(loadConfig(process.env));
+  const starting = startServer(loadConfig(process.env));
   let asked = false;
   const stop = () => {
     if (asked) process.exit(130);
     asked = true;
-    server.stop().then(
+    starting.then((server) => server.stop()).then(
       () => process.exit(0),
-      (error: unknown) => {
-        server.ctx.log.error({ err: error }, 'the stop was not clean');
-        process.exit(1);
-      },
-    );
+      (error: unknown) => fail(error),
+    ); // prettier-ignore
   };
   for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP'] as const) process.on(signal, stop);
   // Whoever started us over a channel waits for this word; when it is gone, so are we.
-  process.send?.('ready');
   process.on('disconnect', stop);
+  await starting;
+  process.send?.('ready');
 }
 
-if (require.main === module) {
-  main().catch((error: unknown) => {
-    process.stderr.write(
-      error instanceof ConfigError ? `${error.message}\n` : `${String((error as Error).stack)}\n`,
-    );
-    process.exit(1);
-  });
+function fail(error: unknown): never {
+  console.error(error instanceof ConfigError ? error.message : error);
+  process.exit(1);
 }
+
+if (require.main === module) main().catch(fail);

@@ -64,15 +64,16 @@ async function open(
   await listen(server, config); // first, so that a busy port is told before anything else is touched
   closers.push(async () => void server.close());
 
-  await migrate(config.databaseUrl);
-  const db = openDatabase(config.databaseUrl, log);
-  closers.push(() => db.close());
-  const instance = await joinInstances(config.databaseUrl, log);
-  closers.push(() => instance.stop());
   const storeConfig: StoreConfig = { kind: 'folder', root: path.join(config.dataDir, 'store') };
   const store = openStore(storeConfig);
   const pool = createPool({ size: config.workers, entry: config.workerEntry, store: storeConfig, log });
   closers.push(() => pool.close());
+
+  await migrate(config.databaseUrl); // while the worker processes warm up
+  const db = openDatabase(config.databaseUrl, log);
+  closers.push(() => db.close());
+  const instance = await joinInstances(config.databaseUrl, log);
+  closers.push(() => instance.stop());
   const queue = await openQueue(config.databaseUrl, db.sequelize, log);
   closers.push(() => queue.stop(GRACE_MS));
   const sink = config.smtpUrl ? null : await startMailSink(db, log);

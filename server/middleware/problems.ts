@@ -2,9 +2,10 @@
 import type { ErrorRequestHandler, RequestHandler, Response } from 'express';
 import { MulterError } from 'multer';
 import type { Problem } from '@/shared/contracts/common';
-import { JobCancelled, JobFailed, WorkerCrashed } from '@/workers';
+import { JobCancelled, JobFailed, StoreFailed, StoreKeyMissing, WorkerCrashed } from '@/workers';
 import { isDatabaseAway } from '../database-state';
-import { badRequest, conflict, notFound, ProblemError, tooLarge, unavailable } from '../errors';
+import { codeOf } from '../error-details';
+import { badRequest, conflict, noSpace, notFound, ProblemError, tooLarge, unavailable } from '../errors';
 
 /** For a path that no route has. */
 export const noRoute: RequestHandler = (req) => {
@@ -51,12 +52,17 @@ export function identify(error: unknown): ProblemError | null {
     const detail = 'The database does not answer just now. Nothing was changed; try again in a moment.';
     return unavailable(detail, { retryAfterS: 2 });
   }
+  if (error instanceof StoreFailed)
+    return isFull(error) ? noSpace(error.message) : unavailable(error.message);
+  if (error instanceof StoreKeyMissing) return notFound('This file is no longer kept.');
   if (error instanceof MulterError) return fromUpload(error);
   if (error instanceof JobFailed) return conflict(error.message);
   if (error instanceof WorkerCrashed) return unavailable(`${error.message} Try again.`, { retryAfterS: 1 });
   if (error instanceof JobCancelled) return unavailable('The server is stopping. Try again in a moment.');
   return fromBodyParser(error);
 }
+
+export const isFull = (error: unknown): boolean => ['ENOSPC', 'EDQUOT'].includes(codeOf(error) ?? '');
 
 function fromUpload(error: MulterError): ProblemError {
   switch (error.code) {

@@ -8,10 +8,11 @@ import multer, { type StorageEngine } from 'multer';
 import { type RecordingMeta, fileRoleSchema, recordingMetaSchema } from '@/shared/contracts/recordings';
 import { formatBytes } from '@/shared/format';
 import type { Context } from '../context';
-import { codeOf, messageOf } from '../error-details';
+import { messageOf } from '../error-details';
 import { badRequest, invalid, noSpace, tooLarge, unsupportedMedia } from '../errors';
 import type { ReceivedFile } from '../services/recordings';
 import { uploadFolder } from '../services/upload-folder';
+import { isFull } from './problems';
 import { validate } from './validate';
 
 const META_LIMIT_BYTES = 1_000_000;
@@ -132,7 +133,7 @@ function hashingStorage(folder: string): StorageEngine {
 }
 
 const storageFault = (error: unknown) =>
-  ['ENOSPC', 'EDQUOT'].includes(codeOf(error) ?? '')
+  isFull(error)
     ? noSpace('The server’s disk is full. Nothing of the upload was kept. Tell the operator.')
     : error;
 

@@ -1,3 +1,4 @@
+/** Recordings as the API shows them. In a list the previews are left out: they are bulky and of no use there. */
 import { fileRoleSchema, type Recording, type RecordingFile } from '@/shared/contracts/recordings';
 import type { Recording as RecordingRow } from '../models/recording';
 
@@ -21,7 +22,7 @@ export const presentRecording = (row: RecordingRow): Recording => ({
   strip: row.strip,
   files: presentFiles(row),
   channelMap: row.channelMap ?? row.givenMap,
-  previews: row.previews,
+  previews: row.previews ?? [],
 });
 
 const ORDER = fileRoleSchema.options;

@@ -16,6 +16,7 @@ export type JobHandlers = { [N in JobName]: (payload: JobPayload<N>, lastAttempt
 const EXPIRE_S = 30 * 60;
 const RETRIES = 4;
 const POLL_S = 1;
+const WARN_EVERY_MS = 30_000;
 
 export interface Queue {
   /** Written within `transaction`: the job exists exactly when the rows written beside it do. */
@@ -34,7 +35,7 @@ export interface Queue {
 /** Connects and brings the queue's own tables up to date. */
 export async function openQueue(url: string, sequelize: Sequelize, log: Logger): Promise<Queue> {
   const boss = new PgBoss({ connectionString: url, max: 4, schedule: false, maintenanceIntervalSeconds: 30 });
-  boss.on('error', (error) => log.warn({ err: error }, 'queue'));
+  boss.on('error', warnSparingly(log));
   await boss.start();
   for (const name of Object.keys(JOB_PAYLOADS)) {
     await boss.createQueue(name, { name, retryLimit: RETRIES, retryDelay: 1, expireInSeconds: EXPIRE_S });
@@ -71,6 +72,16 @@ export async function openQueue(url: string, sequelize: Sequelize, log: Logger):
     async stop(graceMs) {
       await boss.stop({ graceful: true, timeout: graceMs, wait: true });
     },
+  };
+}
+
+/** While the database is away every poll fails: one line a while says as much. */
+function warnSparingly(log: Logger): (error: Error) => void {
+  let last = 0;
+  return (error) => {
+    if (Date.now() - last < WARN_EVERY_MS) return;
+    last = Date.now();
+    log.warn({ err: error }, 'queue');
   };
 }
 

@@ -54,7 +54,11 @@ export function listRecordings(
     ...(vehicleId ? { vehicleId } : {}),
   };
   const by = { by: sort.replace('-', ''), descending: sort.startsWith('-') };
-  return newestFirst(ctx.db.Recording, query, where, { include: WITH_NAMES, sort: by });
+  return newestFirst(ctx.db.Recording, query, where, {
+    include: WITH_NAMES,
+    attributes: { exclude: ['previews'] },
+    sort: by,
+  });
 }
 
 /** Throws 404 for one that is not in the workspace. */

@@ -64,8 +64,9 @@ async function see(
   if (!outcome) return ctx.activeRuns.finish(active);
   active.state = outcome.state;
   try {
-    if (await persist(() => write(ctx, run, recording, outcome), ctx)) tell(ctx, run.id, outcome);
-    if (outcome.state !== 'done') await discardFiles(ctx, storeKeys.run(run.id));
+    const written = await persist(() => write(ctx, run, recording, outcome), ctx);
+    if (written) tell(ctx, run.id, outcome);
+    if (!written || outcome.state !== 'done') await discardFiles(ctx, storeKeys.run(run.id));
     else if (run.benchId) await pruneBench(ctx, run.workspaceId, run.benchId);
   } catch (error) {
     ctx.log.error({ err: error, runId: run.id }, 'the end of a run could not be written');
@@ -97,7 +98,10 @@ const fallen =
 
 export const RESTARTED = 'The server was restarted while this run was computing; run it again.';
 
-/** True when this was the first to end the run. */
+/**
+ * True when the row now says that the run ended so; false when it is gone, or had ended otherwise. May be repeated:
+ * a write whose answer was lost with the connection is found done.
+ */
 async function write(ctx: Context, run: Run, recording: Recording, outcome: Outcome): Promise<boolean> {
   const going: RunState[] = ['queued', 'running'];
   const finishedAt = ctx.clock();
@@ -109,7 +113,9 @@ async function write(ctx: Context, run: Run, recording: Recording, outcome: Outc
     { ...columns, state: outcome.state, finishedAt, instanceId: null },
     { where: { id: run.id, state: going } },
   );
-  return count > 0;
+  if (count > 0) return true;
+  const row = await ctx.db.Run.findByPk(run.id, { attributes: ['state'] });
+  return row?.state === outcome.state;
 }
 
 const provenance = (recording: Recording, { provenance: made, resultSha256 }: RunJobResult) => ({

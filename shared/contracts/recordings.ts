@@ -219,7 +219,7 @@ export const recordingSchema = z.object({
   strip: stripSchema.nullable(),
   files: z.array(recordingFileSchema),
   channelMap: channelMapSchema.nullable().describe('The map in force: given, or guessed from the headers.'),
-  previews: z.array(filePreviewSchema),
+  previews: z.array(filePreviewSchema).describe('Empty in lists.'),
 });
 export type Recording = z.infer<typeof recordingSchema>;
 

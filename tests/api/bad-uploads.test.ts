@@ -2,6 +2,7 @@
 import http from 'node:http';
 import { randomBytes } from 'node:crypto';
 import type { Recording } from '@/shared/contracts/recordings';
+import { StoreFailed } from '@/workers';
 import { type Api, type Caller, problemOf, startApi, until } from '../support/api';
 import { buildMember, decoded, upload, uploadForm } from '../support/api-factories';
 import { GNSS_HEADER, IMU_HEADER, type Logs, smallLogs } from '../support/api-logs';
@@ -80,6 +81,19 @@ describe('uploads that are refused', () => {
   it('when the caller hangs up in the middle', async () => {
     await hangUp(engineer);
     await until('the temporary files are gone', () => filesBelow(`${api.dataDir}/uploads`).length === 0);
+  });
+
+  it('when the store’s disk is full', async () => {
+    const { store } = api.ctx;
+    const { adopt } = store;
+    store.adopt = async (key, localPath) => {
+      if (!key.endsWith('gnss')) return adopt.call(store, key, localPath);
+      throw new StoreFailed('ENOSPC', 'The disk of the store is full.');
+    };
+    const answer = await engineer.post('/recordings', uploadForm());
+    store.adopt = adopt;
+    expect(answer.status).toBe(507);
+    expect(problemOf(answer).detail).toContain('full');
   });
 
   it('by whoever may not upload, before anything is read', async () => {

@@ -196,6 +196,16 @@ describe('runs', () => {
     expect(again.state).toBe('cancelled');
   });
 
+  it('leave no files when their recording is deleted meanwhile', async () => {
+    const long = await decoded(engineer, (await upload(engineer, {}, longLogs())).id);
+    const { id } = await start({ recordingId: long.id });
+    expect((await engineer.delete(`/recordings/${long.id}`)).status).toBe(204);
+    expect((await engineer.get(`/runs/${id}`)).status).toBe(404);
+    await until('nothing of either is left', () =>
+      filesBelow(api.dataDir).every((file) => !file.includes(id) && !file.includes(long.id)),
+    );
+  });
+
   it('that the data do not allow fail with what is missing', async () => {
     const parameters = { gnss: { usePosition: false, useVelocity: false } };
     const run = await ended((await start({ parameters })).id);
