@@ -1,9 +1,11 @@
 import { useEffect, useState } from 'react';
 import { ScrollView, StyleSheet, View } from 'react-native';
 import { TimeChart } from '@/components/charts/TimeChart';
+import { VisuallyHidden } from '@/components/charts/VisuallyHidden';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
 import { around, StripEditor } from '@/components/strip/StripEditor';
 import { Button } from '@/components/ui/Button';
+import { Text } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { hairline, radius, space } from '@/constants/theme';
 import { NoWindows, Track } from './ChartDeck';
@@ -61,6 +63,9 @@ export function PhoneBench({
       )}
       <RunProgressLine bench={bench} />
       <View style={[styles.card, { backgroundColor: palette.sheet, borderColor: palette.rule }]}>
+        <VisuallyHidden>
+          <Text level={2}>Charts</Text>
+        </VisuallyHidden>
         <View ref={swipe} style={styles.tabs}>
           <ViewTabs views={PHONE_CHARTS} value={chart} onChange={choose} />
           <Button

@@ -43,6 +43,7 @@ export const HistogramChart = memo(function HistogramChart({
       <VictoryAxis
         dependentAxis
         crossAxis={false}
+        offsetX={QUIET_PADDING.left}
         label="density"
         style={quietAxis(palette, true)}
         tickCount={4}
