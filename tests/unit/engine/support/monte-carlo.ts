@@ -20,7 +20,8 @@ import type { RunRequest } from '@/workers/engine/types';
 export function matchedParameters(scenario: Scenario, more: ParametersInput = {}): Parameters {
   const m = imuModel(scenario.imuGrade, scenario.imuErrors);
   // Quantisation adds its own white noise: step²/12 a sample.
-  const white = (density: number, step: number) => Math.hypot(density, step / Math.sqrt(12 * scenario.imuRateHz));
+  const white = (density: number, step: number) =>
+    Math.hypot(density, step / Math.sqrt(12 * scenario.imuRateHz));
   return parametersSchema.parse({
     ...more,
     gyro: {
@@ -59,7 +60,10 @@ export function simulateCase(
   };
 }
 
-export function requestOf({ scenario, parameters }: SimulatedCase, more: Partial<RunRequest> = {}): RunRequest {
+export function requestOf(
+  { scenario, parameters }: SimulatedCase,
+  more: Partial<RunRequest> = {},
+): RunRequest {
   return { parameters, leverArmM: scenario.leverArmM, outages: [], outputRateHz: 10, ...more };
 }
 
@@ -118,7 +122,11 @@ export function runFilter(
   return result;
 }
 
-function snapshot(filter: ErrorStateFilter, reader: ReferenceReader, recording: SimulatedRecording): Snapshot {
+function snapshot(
+  filter: ErrorStateFilter,
+  reader: ReferenceReader,
+  recording: SimulatedRecording,
+): Snapshot {
   const p = filter.covarianceNow(new Float64Array(STATES * STATES));
   const { nav } = filter.strapdown;
   const e = emptyError();
@@ -152,7 +160,6 @@ export function nees(error: Float64Array, p: Float64Array, first: number, size: 
   const e = sigma.map((s, i) => error[first + i]! / s);
   const c: number[] = [];
   for (let i = 0; i < size; i += 1)
-    for (let j = 0; j < size; j += 1)
-      c.push(p[(first + i) * STATES + first + j]! / (sigma[i]! * sigma[j]!));
+    for (let j = 0; j < size; j += 1) c.push(p[(first + i) * STATES + first + j]! / (sigma[i]! * sigma[j]!));
   return mahalanobis(e, c).squared;
 }
