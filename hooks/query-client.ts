@@ -10,9 +10,12 @@ export function makeQueryClient(): QueryClient {
     defaultOptions: {
       queries: {
         staleTime: STALE.list,
-        retry: (count, error) => !(error instanceof ApiProblem) && count < 2,
+        retry: (count, error) => (passes(error) ? count < 4 : !(error instanceof ApiProblem) && count < 2),
       },
       mutations: { retry: false },
     },
   });
 }
+
+/** 503: the server is there, its database or a start-up is not yet. It passes by itself. */
+const passes = (error: Error) => error instanceof ApiProblem && error.status === 503;

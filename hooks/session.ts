@@ -23,9 +23,17 @@ export interface Session {
 
 export const SessionContext = createContext<Session | null>(null);
 
-/** GET /me; null when nobody is signed in. */
+/** How soon a page that could not even learn who is signed in asks again, ms. */
+const ASK_AGAIN_MS = 3000;
+
+/** GET /me; null when nobody is signed in. Nothing can be drawn without it, so it keeps asking until it is answered. */
 export function useMe() {
-  return useQuery({ queryKey: sessionKeys.me, queryFn: fetchMe, staleTime: STALE.slow });
+  return useQuery({
+    queryKey: sessionKeys.me,
+    queryFn: fetchMe,
+    staleTime: STALE.slow,
+    refetchInterval: (query) => (query.state.status === 'error' ? ASK_AGAIN_MS : false),
+  });
 }
 
 /** The session of a signed-in screen. */

@@ -75,7 +75,7 @@ function openOn(element: HTMLDialogElement) {
 }
 
 const styles = StyleSheet.create({
-  frame: { maxHeight: '100%', flexShrink: 1 },
+  frame: { width: '100%', maxHeight: '100%', flexShrink: 1 },
   head: {
     flexDirection: 'row',
     alignItems: 'flex-start',
