@@ -96,6 +96,60 @@ export const mechanisationParametersSchema = z.object({
   covarianceIntervalS: z.number().min(0).max(1).default(0.05).describe('0: at every sample, s.'),
 });
 
+/** Samples at the end of a sensor's range hide what went beyond it. */
+export const clippingParametersSchema = z.object({
+  enabled: z.boolean().default(true).describe('Widen the uncertainty over clipped samples.'),
+  gyroRangeRadPerS: positive(0.01, 1000)
+    .optional()
+    .describe('Range of the gyros, rad/s; left out: flat tops at the extremes are looked for.'),
+  accelRangeMPerS2: positive(0.1, 1e5)
+    .optional()
+    .describe('Range of the accelerometers, m/s²; left out: flat tops at the extremes are looked for.'),
+  overflowShare: positive(0.01, 10)
+    .default(1)
+    .describe('1σ of what a clipped sample may have missed, as a share of the range.'),
+});
+
+/** What a vehicle's nature measures. Each is off by default: which of them hold is for the engineer to say. */
+export const aidParametersSchema = z.object({
+  stopDetection: z
+    .object({
+      windowS: positive(0.1, 10).default(0.5).describe('A stop is judged window by window, s.'),
+      gyroSpreadRadPerS: positive(1e-6, 1)
+        .default(0.01)
+        .describe('Standing still: the gyros spread less than this within a window, rad/s.'),
+      accelSpreadMPerS2: positive(1e-4, 10)
+        .default(0.25)
+        .describe('Standing still: the accelerometers spread less than this within a window, m/s².'),
+    })
+    .prefault({}),
+  zeroVelocity: z
+    .object({
+      enabled: z.boolean().default(false),
+      sigmaMPerS: positive(1e-4, 10).default(0.03).describe('1σ of velocity at a detected stop, m/s.'),
+    })
+    .prefault({}),
+  zeroRotation: z
+    .object({
+      enabled: z.boolean().default(false),
+      sigmaRadPerS: positive(1e-9, 1)
+        .default(1e-4)
+        .describe('1σ of rotation at a detected stop, on top of the gyro noise, rad/s.'),
+    })
+    .prefault({}),
+  nonHolonomic: z
+    .object({
+      enabled: z.boolean().default(false),
+      lateralSigmaMPerS: positive(1e-3, 100).default(0.2).describe('1σ of sideways velocity, m/s.'),
+      verticalSigmaMPerS: positive(1e-3, 100).default(0.2).describe('1σ of velocity along body down, m/s.'),
+      intervalS: positive(0.02, 60).default(1).describe('One constraint each, s: its errors last.'),
+      axleArmM: positive(0, 100)
+        .default(1.5)
+        .describe('IMU ahead of the unsteered axle, m: swings sideways in turns.'),
+    })
+    .prefault({}),
+});
+
 export const parametersSchema = z.object({
   gyro: gyroParametersSchema.prefault({}),
   accel: accelParametersSchema.prefault({}),
@@ -103,6 +157,8 @@ export const parametersSchema = z.object({
   gate: gateParametersSchema.prefault({}),
   initial: initialParametersSchema.prefault({}),
   mechanisation: mechanisationParametersSchema.prefault({}),
+  clipping: clippingParametersSchema.prefault({}),
+  aids: aidParametersSchema.prefault({}),
   leverArmM: vector3Schema
     .optional()
     .describe("GNSS antenna seen from the IMU, forward, right, down, m; left out: the vehicle's."),

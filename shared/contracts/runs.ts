@@ -75,6 +75,16 @@ export const groupStatisticsSchema = z.object({
 });
 export type GroupStatistics = z.infer<typeof groupStatisticsSchema>;
 
+/** What one aid did: used, refused by the gate, mean NIS. */
+export const aidStatisticsSchema = z.object({
+  aid: z.enum(['zero-velocity', 'zero-rotation', 'non-holonomic']),
+  dimension: z.number().int(),
+  used: z.number().int(),
+  rejected: z.number().int(),
+  nisMean: z.number().nullable(),
+});
+export type AidStatistics = z.infer<typeof aidStatisticsSchema>;
+
 export const driftPointSchema = z.object({
   afterS: z.number(),
   horizontalM: z.number(),
@@ -149,6 +159,7 @@ export const runSummarySchema = z.object({
   }),
   channels: z.array(channelStatisticsSchema),
   groups: z.array(groupStatisticsSchema),
+  aids: z.array(aidStatisticsSchema).optional().describe('Left out by engines before the aids.'),
   outages: z.array(outageResultSchema),
   finalSigma: stateVectorSchema,
   meanSigma: stateVectorSchema,

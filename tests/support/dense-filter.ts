@@ -231,12 +231,20 @@ export class DenseFilter {
     nav[HEIGHT] = nav[HEIGHT]! - c[2]!;
     for (let i = 0; i < 3; i += 1) nav[VN + i] = nav[VN + i]! + c[3 + i]!;
     for (let i = 0; i < 6; i += 1) nav[10 + i] = nav[10 + i]! + c[9 + i]!;
-    const turn = quatFromRotationVector(-c[6]!, -c[7]!, -c[8]!, new Float64Array(4));
-    const q = quatMultiply(turn, nav.slice(QUAT, QUAT + 4), new Float64Array(4));
-    nav.set(q, QUAT);
+    // Heading after tilt, and the covariance turned along.
+    const heading = quatFromRotationVector(0, 0, -c[8]!, new Float64Array(4));
+    const tilt = quatFromRotationVector(-c[6]!, -c[7]!, 0, new Float64Array(4));
+    const q = quatMultiply(tilt, nav.slice(QUAT, QUAT + 4), new Float64Array(4));
+    nav.set(quatMultiply(heading, q, q), QUAT);
     this.strapdown.attitudeChanged();
+    const [cos, sin] = [Math.cos(c[8]!), Math.sin(c[8]!)];
+    const about = new Matrix([
+      [cos, sin, 0],
+      [-sin, cos, 0],
+      [0, 0, 1],
+    ]);
     const g = Matrix.eye(N);
-    block(g, 6, 6, Matrix.eye(3).sub(skew([c[6]!, c[7]!, c[8]!]).mul(0.5)));
+    block(g, 6, 6, about.mmul(Matrix.eye(3).sub(skew([c[6]!, c[7]!, 0]).mul(0.5))));
     this.p = g.mmul(this.p).mmul(g.transpose());
   }
 }

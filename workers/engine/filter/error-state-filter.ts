@@ -11,6 +11,7 @@ import { ANGLE, ANGLE_BEND, DURATION, ImuIntervals } from '../strapdown/imu-inte
 import { MERIDIAN_PLUS_H, TRANSVERSE_PLUS_H } from '../strapdown/local-earth';
 import { HEIGHT, LAT, LON, NAV_ACCEL_BIAS, NAV_GYRO_BIAS, VN } from '../strapdown/navigation-state';
 import { Strapdown } from '../strapdown/strapdown';
+import { findClipping, type ClippedRun } from './clipping';
 import { resetAttitudeCovariance, turnAttitude } from './attitude-feedback';
 import type { Fixes } from './fixes';
 import { GapBridge } from './gap-bridge';
@@ -21,6 +22,7 @@ import { MeasurementUpdate } from './measurement-update';
 import { ProcessNoise } from './process-noise';
 import { Propagation } from './propagation';
 import { recoverGroups } from './recovery';
+import { VehicleAids } from './vehicle-aids';
 import { ACCEL_BIAS, ATTITUDE, GYRO_BIAS, POSITION, STATES, VELOCITY } from './states';
 
 /** A fix this close to an IMU sample, s, counts as simultaneous. */
@@ -28,12 +30,13 @@ const SAME_TIME_S = 1e-7;
 /** Gaps are bridged in steps of at most this, s. */
 const GAP_STEP_S = 0.02;
 
+export type AidName = 'zero-velocity' | 'zero-rotation' | 'non-holonomic';
 export type GroupName = 'position' | 'velocity';
 
 /** Hears of every measurement group that was judged, before it changes the state. */
 export interface FilterListener {
   onInnovation(
-    group: GroupName,
+    group: GroupName | AidName,
     timeS: number,
     axes: number,
     update: MeasurementUpdate,
@@ -48,7 +51,10 @@ export interface FilterSnapshot {
   p: Float64Array;
   sample: number;
   fix: number;
+  clipped: readonly [number, number];
+  extraNoise: readonly [number, number];
   heading: readonly number[];
+  aids: readonly number[];
   gates: readonly (readonly number[])[];
 }
 
@@ -60,7 +66,8 @@ export class ErrorStateFilter {
   sample = 0;
   /** Next fix to be looked at. */
   private fix = 0;
-  readonly gates: { position: Gate; velocity: Gate };
+  readonly gates: Readonly<Record<GroupName | AidName, Gate>>;
+  private readonly aids: VehicleAids | null;
   private readonly intervals: ImuIntervals;
   private readonly propagation = new Propagation();
   private readonly update = new MeasurementUpdate();
@@ -69,6 +76,10 @@ export class ErrorStateFilter {
   private readonly noise: ProcessNoise;
   private readonly stepS: number;
   private readonly headingWatch = new HeadingWatch();
+  private readonly clipped: readonly ClippedRun[];
+  /** Next clipped run to come, and the sample it begins at. */
+  private nextClipped = 0;
+  private clippedFrom = Infinity;
 
   /** `withheld`: bits of `withheldBy` for each fix. */
   constructor(
@@ -81,12 +92,21 @@ export class ErrorStateFilter {
   ) {
     this.strapdown = new Strapdown(parameters.mechanisation.scheme);
     this.intervals = new ImuIntervals(imu);
-    this.gates = { position: new Gate(parameters.gate), velocity: new Gate(parameters.gate) };
+    const gate = () => new Gate(parameters.gate);
+    this.gates = {
+      position: gate(),
+      velocity: gate(),
+      'zero-velocity': gate(),
+      'zero-rotation': gate(),
+      'non-holonomic': gate(),
+    };
+    this.aids = VehicleAids.of(imu, parameters);
     this.noise = new ProcessNoise(parameters);
     // A rate drawn on from the last two intervals has 2.5 times the variance of one.
     const { nominalS } = this.intervals;
     const rateNoise = nominalS > 0 ? (2.5 * this.noise.gyroWhite) / nominalS : 0;
     this.models = new GnssModels(leverArmM, rateNoise);
+    this.clipped = findClipping(imu, parameters.clipping);
     this.stepS = parameters.mechanisation.covarianceIntervalS - 0.5 * this.intervals.nominalS;
   }
 
@@ -97,6 +117,12 @@ export class ErrorStateFilter {
     this.strapdown.start(nav);
     this.p.set(p);
     this.watchHeading();
+    this.awaitClipping();
+  }
+
+  private awaitClipping(): void {
+    this.nextClipped = this.clipped.findIndex((run) => run.from > this.sample);
+    this.clippedFrom = this.clipped[this.nextClipped]?.from ?? Infinity;
   }
 
   private watchHeading(): void {
@@ -116,6 +142,7 @@ export class ErrorStateFilter {
     const end = imu.timeS[k]!;
     const duration = end - start;
     if (intervals.isGap) this.reportGap(start, end);
+    if (k >= this.clippedFrom) this.enterClipping(k);
     let from = 0;
     while (this.fix < fixes.count && fixes.timeS[this.fix]! <= end + SAME_TIME_S) {
       const j = this.fix;
@@ -130,6 +157,31 @@ export class ErrorStateFilter {
     if (from < 1) this.move(from, 1);
     this.sample = k;
     if (this.strapdown.sumForce[3]! >= this.stepS) this.covarianceStep();
+    if (k >= this.clippedFrom) this.leaveClipping(k);
+    this.aids?.apply(k, this);
+  }
+
+  /** Clipped samples: noise for what they may have missed, from the run's first sample to its last. */
+  private enterClipping(k: number): void {
+    const run = this.clipped[this.nextClipped]!;
+    if (k > run.from) return;
+    this.covarianceStep();
+    this.noise.gyroExtra = run.gyroNoise;
+    this.noise.accelExtra = run.accelNoise;
+    this.warn(
+      'clipped',
+      `${run.to - run.from + 1} IMU samples were at the end of the sensor's range; the uncertainty was widened over them.`,
+      this.timeS,
+    );
+  }
+
+  private leaveClipping(k: number): void {
+    if (k < this.clipped[this.nextClipped]!.to) return;
+    this.covarianceStep();
+    this.noise.gyroExtra = 0;
+    this.noise.accelExtra = 0;
+    this.nextClipped += 1;
+    this.clippedFrom = this.clipped[this.nextClipped]?.from ?? Infinity;
   }
 
   /** Strapdown over a part of the loaded interval; a gap goes in small steps with noise of its own. */
@@ -241,6 +293,20 @@ export class ErrorStateFilter {
     }
   }
 
+  /** An aid at the current sample: `setUp` forms its innovation, H and R for the axes given as bits. */
+  aid(name: AidName, axes: number, setUp: (update: MeasurementUpdate) => void): void {
+    const { update } = this;
+    this.covarianceStep();
+    setUp(update);
+    update.prepare(this.p);
+    // An aid that is refused says that it does not hold here; it never moves the state by force.
+    const accepted = this.gates[name].judge(this.timeS, update.rows, update.nis) === 'accept';
+    this.listener.onInnovation(name, this.timeS, axes, update, accepted);
+    if (!accepted) return;
+    update.apply(this.p);
+    this.feedBack(update.correction);
+  }
+
   /** Adds a correction (measured − predicted, through the gain) to the state and turns P into the new attitude. */
   feedBack(correction: Float64Array): void {
     const { strapdown, p } = this;
@@ -275,8 +341,11 @@ export class ErrorStateFilter {
       p: this.p.slice(),
       sample: this.sample,
       fix: this.fix,
+      clipped: [this.nextClipped, this.clippedFrom],
+      extraNoise: [this.noise.gyroExtra, this.noise.accelExtra],
       heading: this.headingWatch.save(),
-      gates: [this.gates.position.save(), this.gates.velocity.save()],
+      aids: this.aids?.save() ?? [],
+      gates: Object.values(this.gates).map((gate) => gate.save()),
     };
   }
 
@@ -285,8 +354,10 @@ export class ErrorStateFilter {
     this.p.set(saved.p);
     this.sample = saved.sample;
     this.fix = saved.fix;
+    [this.nextClipped, this.clippedFrom] = saved.clipped;
+    [this.noise.gyroExtra, this.noise.accelExtra] = saved.extraNoise;
     this.headingWatch.restore(saved.heading);
-    this.gates.position.restore(saved.gates[0]!);
-    this.gates.velocity.restore(saved.gates[1]!);
+    this.aids?.restore(saved.aids);
+    Object.values(this.gates).forEach((gate, i) => gate.restore(saved.gates[i]!));
   }
 }

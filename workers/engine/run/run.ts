@@ -18,22 +18,15 @@ import {
   type RunRequest,
   type RunResult,
 } from '../types';
+import { AidTally } from './aid-tally';
 import { CoastingComparison } from './coasting';
 import { countKept, keptSamples } from './output-grid';
 import { truthCovers } from './reference';
 import { summarise } from './summary';
 import { InnovationWriter, SolutionWriter } from './tables';
 import { TruthComparison } from './truth-comparison';
+import { Warnings } from './warnings';
 import { layWindows, lowerBound, type CoastWindow } from './windows';
-
-export interface RunWarning {
-  code: string;
-  sentence: string;
-  timeS: number | null;
-}
-
-/** More warnings of one kind than this are only counted. */
-const MAX_WARNINGS_OF_A_KIND = 20;
 
 /** Checks, aligns and makes ready. Throws EngineError for data or parameters that do not allow a run. */
 export function createRun(recording: RecordingColumns, request: RunRequest): EngineRun {
@@ -43,11 +36,12 @@ export function createRun(recording: RecordingColumns, request: RunRequest): Eng
 export class Run implements EngineRun {
   readonly extentS: readonly [number, number];
   readonly origin: { latDeg: number; lonDeg: number; heightM: number };
-  readonly warnings: RunWarning[] = [];
+  readonly warnings = new Warnings();
   readonly alignment: Alignment;
   readonly solution: SolutionWriter;
   readonly position: InnovationWriter;
   readonly velocity: InnovationWriter;
+  readonly aids = new AidTally();
   readonly coasting: CoastingComparison;
   readonly truth: TruthComparison | null;
   private readonly filter: ErrorStateFilter;
@@ -104,12 +98,12 @@ export class Run implements EngineRun {
     return {
       onInnovation: (group, timeS, axes, update, accepted) => {
         if (this.phase !== 'reported') return;
-        (group === 'position' ? this.position : this.velocity).write(timeS, axes, update, accepted);
+        if (group === 'position' || group === 'velocity') this[group].write(timeS, axes, update, accepted);
+        else this.aids.add(group, update, accepted);
       },
       onWarning: (code, sentence, timeS) => {
         if (this.phase !== 'reported') return;
-        if (this.warnings.filter((w) => w.code === code).length < MAX_WARNINGS_OF_A_KIND)
-          this.warnings.push({ code, sentence, timeS });
+        this.warnings.add(code, sentence, timeS);
       },
     };
   }

@@ -42,7 +42,8 @@ export function summarise(run: Run): RunSummary {
     gyroBiasRadPerS: biases('gyro_bias', 'rad_s'),
     accelBiasMPerS2: biases('accel_bias', 'm_s2'),
     truth: run.truth?.result() ?? null,
-    warnings: run.warnings,
+    warnings: run.warnings.all(),
+    aids: run.aids.results(),
   };
   return { ...summary, findings: findings(summary, run) };
 }

@@ -100,6 +100,7 @@ export function runFilter(
   };
   const listener: FilterListener = {
     onInnovation: (group, _timeS, _axes, update, accepted) => {
+      if (group !== 'position' && group !== 'velocity') return;
       if (accepted) result.nis[group].push(update.nis);
       else result.rejected[group] += 1;
     },
