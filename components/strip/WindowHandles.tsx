@@ -17,6 +17,11 @@ export interface WindowHandlesProps {
   onKey: (index: number, part: WindowPart, key: string, shift: boolean) => boolean;
 }
 
+/** The least size of what can be focused, px (WCAG 2.2, 2.5.8); the pointer's own hit areas are larger. */
+const LEAST_PX = 24;
+/** How far an edge's box reaches into its window, px. */
+const INSIDE_PX = 4;
+
 export const WITHHELD: Record<Outage['withhold'], string> = {
   gnss: 'all GNSS',
   position: 'position',
@@ -62,27 +67,40 @@ function Handles({
       onFocus={() => onFocus(index)}
       {...listen(part)}
       style={[
-        styles.grip,
-        grip,
-        {
-          left: at - 4,
-          borderColor: palette.vermilion,
-          backgroundColor: selected === index ? palette.vermilion : palette.sheet,
-        },
+        styles.edge,
+        { top: grip.top - 1, left: part === 'start' ? at + INSIDE_PX - LEAST_PX : at - INSIDE_PX },
       ]}
+    >
+      <View
+        style={[
+          styles.grip,
+          grip,
+          {
+            top: 1,
+            left: part === 'start' ? LEAST_PX - 2 * INSIDE_PX : 0,
+            borderColor: palette.vermilion,
+            backgroundColor: selected === index ? palette.vermilion : palette.sheet,
+          },
+        ]}
+      />
+    </View>
+  );
+  // A window too narrow to be held between its edges is moved by them, or by its times (Enter).
+  const holdable = right - left >= LEAST_PX + 2 * INSIDE_PX;
+  const body = (
+    <View
+      role="button"
+      aria-label={`${name}: ${formatClock(window.startS)} to ${formatClock(window.endS)}, ${lengthLabel(
+        window.endS - window.startS,
+      )}, ${WITHHELD[window.withhold]} withheld. Arrow keys move it, Enter opens its times, Delete removes it.`}
+      onFocus={() => onFocus(index)}
+      {...listen('body')}
+      style={[styles.body, { left, width: right - left, height: tickBottom }]}
     />
   );
   return (
     <>
-      <View
-        role="button"
-        aria-label={`${name}: ${formatClock(window.startS)} to ${formatClock(window.endS)}, ${lengthLabel(
-          window.endS - window.startS,
-        )}, ${WITHHELD[window.withhold]} withheld. Arrow keys move it, Enter opens its times, Delete removes it.`}
-        onFocus={() => onFocus(index)}
-        {...listen('body')}
-        style={[styles.body, { left, width: Math.max(2, right - left), height: tickBottom }]}
-      />
+      {holdable ? body : null}
       {edge('start', left, window.startS)}
       {edge('end', right, window.endS)}
     </>
@@ -91,5 +109,6 @@ function Handles({
 
 const styles = StyleSheet.create({
   body: { position: 'absolute', top: 0, pointerEvents: 'none' },
-  grip: { position: 'absolute', width: 8, borderRadius: 3, borderWidth: 1.5, pointerEvents: 'none' },
+  edge: { position: 'absolute', width: LEAST_PX, height: LEAST_PX, pointerEvents: 'none' },
+  grip: { position: 'absolute', width: 8, borderRadius: 3, borderWidth: 1.5 },
 });

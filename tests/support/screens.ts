@@ -15,6 +15,8 @@ export interface Screen {
 
 const heading = (name: string | RegExp) => (page: Page) =>
   page.getByRole('heading', { name }).filter({ visible: true }).first().waitFor();
+const words = (text: string) => (page: Page) =>
+  page.getByText(text).filter({ visible: true }).first().waitFor();
 const runDone = (page: Page) => page.getByRole('status').filter({ hasText: 'Run done' }).waitFor();
 
 /** The screens of a stack with the demonstration, its first recording decoded and tried on the bench. */
@@ -35,13 +37,13 @@ export async function screensOf(server: string): Promise<Screen[]> {
     { name: 'sign-in', path: '/sign-in', role: null, ready: heading('Sign in') },
     { name: 'forgot-password', path: '/forgot-password', role: null, ready: heading('Reset the password') },
     signedIn('today', '/', heading('Today')),
-    signedIn('recordings', '/recordings', heading(recording.name)),
+    signedIn('recordings', '/recordings', words(recording.name)),
     signedIn('recording', `/recordings/${recording.id}`, heading(recording.name)),
     signedIn('upload', '/recordings/upload', heading('Upload a recording')),
     signedIn('bench', `/bench/${recording.id}?w=${windows}`, runDone),
-    signedIn('sets', '/sets', heading(set.name)),
+    signedIn('sets', '/sets', words(set.name)),
     signedIn('set', `/sets/${set.id}`, heading('Version 1')),
-    signedIn('vehicles', '/vehicles', heading(vehicle.name)),
+    signedIn('vehicles', '/vehicles', words(vehicle.name)),
     signedIn('vehicle', `/vehicles/${vehicle.id}`, heading(vehicle.name)),
     signedIn('team', '/team', heading('Members'), 'admin'),
     signedIn('mail', '/mail', heading('Mail'), 'admin'),
