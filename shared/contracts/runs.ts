@@ -33,10 +33,7 @@ export const runCreateSchema = z.object({
   parameters: parametersSchema.prefault({}),
   outages: outagesSchema.default([]),
   outputRateHz: z.number().min(0.1).max(1000).default(10).describe('Rate of the kept solution, Hz.'),
-  smooth: z
-    .boolean()
-    .optional()
-    .describe('Accepted for the fixed-interval smoother; refused while the engine has none.'),
+  smooth: z.boolean().optional().describe('Run the fixed-interval smoother too.'),
   benchId: z
     .uuid()
     .optional()
@@ -100,7 +97,11 @@ export const outageResultSchema = z.object({
   startS: z.number(),
   endS: z.number(),
   withhold: z.enum(['gnss', 'position', 'velocity']),
-  reference: z.enum(['truth', 'aided']).describe('What the coasting solution is compared with.'),
+  reference: z
+    .enum(['truth', 'aided', 'smoothed'])
+    .describe(
+      'What the coasting solution is compared with: truth, or the fully aided solution, filtered or smoothed.',
+    ),
   points: z
     .array(driftPointSchema)
     .describe('At 10, 30, 60, 120 s and at the end, as far as the window goes.'),
@@ -166,6 +167,10 @@ export const runSummarySchema = z.object({
   gyroBiasRadPerS: z.tuple([z.number(), z.number(), z.number()]),
   accelBiasMPerS2: z.tuple([z.number(), z.number(), z.number()]),
   truth: truthStatisticsSchema.nullable(),
+  smoothedTruth: truthStatisticsSchema
+    .nullable()
+    .optional()
+    .describe('The smoothed solution against truth; left out where it was not asked for.'),
   findings: z.array(runFindingSchema),
   warnings: z.array(z.object({ code: z.string(), sentence: z.string(), timeS: z.number().nullable() })),
 });

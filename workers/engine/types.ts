@@ -55,6 +55,8 @@ export interface RunRequest {
   leverArmM: readonly [number, number, number];
   outages: readonly Outage[];
   outputRateHz: number;
+  /** Also the fixed-interval smoother: memory grows by about 25 kB a second of recording. */
+  smooth?: boolean;
 }
 
 /** Kept solution at the output rate: one Float64Array of length K a column, names and units as SOLUTION_COLUMNS, and `cov_ne_m2`. */
@@ -78,6 +80,8 @@ export interface RunResult {
   position: InnovationTable;
   velocity: InnovationTable;
   coasting: CoastingTable;
+  /** The smoothed solution at the rows of `solution`; null where it was not asked for. */
+  smoothed: SolutionTable | null;
   summary: RunSummary;
 }
 

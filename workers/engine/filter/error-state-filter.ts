@@ -12,7 +12,8 @@ import { MERIDIAN_PLUS_H, TRANSVERSE_PLUS_H } from '../strapdown/local-earth';
 import { HEIGHT, LAT, LON, NAV_ACCEL_BIAS, NAV_GYRO_BIAS, VN } from '../strapdown/navigation-state';
 import { Strapdown } from '../strapdown/strapdown';
 import { findClipping, type ClippedRun } from './clipping';
-import { resetAttitudeCovariance, turnAttitude } from './attitude-feedback';
+import { resetAttitudeCovariance } from './attitude-feedback';
+import { correctState } from './correct-state';
 import type { Fixes } from './fixes';
 import { GapBridge } from './gap-bridge';
 import { Gate } from './gate';
@@ -22,6 +23,7 @@ import { MeasurementUpdate } from './measurement-update';
 import { ProcessNoise } from './process-noise';
 import { Propagation } from './propagation';
 import { recoverGroups } from './recovery';
+import type { Tape } from './tape';
 import { VehicleAids } from './vehicle-aids';
 import { ACCEL_BIAS, ATTITUDE, GYRO_BIAS, POSITION, STATES, VELOCITY } from './states';
 
@@ -64,6 +66,8 @@ export class ErrorStateFilter {
   readonly p = new Float64Array(STATES * STATES);
   /** IMU sample that the state belongs to. */
   sample = 0;
+  /** Takes down what the smoother needs, where one is wanted. */
+  tape: Tape | null = null;
   /** Next fix to be looked at. */
   private fix = 0;
   readonly gates: Readonly<Record<GroupName | AidName, Gate>>;
@@ -73,7 +77,7 @@ export class ErrorStateFilter {
   private readonly update = new MeasurementUpdate();
   private readonly models: GnssModels;
   private readonly rate = new Float64Array(3);
-  private readonly noise: ProcessNoise;
+  readonly noise: ProcessNoise;
   private readonly stepS: number;
   private readonly headingWatch = new HeadingWatch();
   private readonly clipped: readonly ClippedRun[];
@@ -226,6 +230,7 @@ export class ErrorStateFilter {
     const dt = strapdown.sumForce[3]!;
     if (dt === 0) return;
     this.propagate(this.p, dt);
+    this.tape?.writeStep(strapdown);
     strapdown.resetSums();
     if (noise.gyroDecay > 0) this.decay(NAV_GYRO_BIAS, Math.exp(-noise.gyroDecay * dt));
     if (noise.accelDecay > 0) this.decay(NAV_ACCEL_BIAS, Math.exp(-noise.accelDecay * dt));
@@ -286,8 +291,7 @@ export class ErrorStateFilter {
     const verdict = this.gates[group].judge(time, update.rows, update.nis);
     this.listener.onInnovation(group, time, axes, update, verdict === 'accept');
     if (verdict === 'accept') {
-      update.apply(this.p);
-      this.feedBack(update.correction);
+      this.take(update);
     } else if (verdict === 'recover') {
       recoverGroups(this, group, time, axes, update);
     }
@@ -302,26 +306,21 @@ export class ErrorStateFilter {
     // An aid that is refused says that it does not hold here; it never moves the state by force.
     const accepted = this.gates[name].judge(this.timeS, update.rows, update.nis) === 'accept';
     this.listener.onInnovation(name, this.timeS, axes, update, accepted);
-    if (!accepted) return;
+    if (accepted) this.take(update);
+  }
+
+  private take(update: MeasurementUpdate): void {
     update.apply(this.p);
+    this.tape?.writeUpdate(update);
     this.feedBack(update.correction);
   }
 
   /** Adds a correction (measured − predicted, through the gain) to the state and turns P into the new attitude. */
   feedBack(correction: Float64Array): void {
     const { strapdown, p } = this;
-    const { nav, earth } = strapdown;
-    nav[LON] = nav[LON]! + correction[POSITION + 1]! / (earth[TRANSVERSE_PLUS_H]! * Math.cos(nav[LAT]!));
-    nav[LAT] = nav[LAT]! + correction[POSITION]! / earth[MERIDIAN_PLUS_H]!;
-    nav[HEIGHT] = nav[HEIGHT]! - correction[POSITION + 2]!;
-    for (let i = 0; i < 3; i += 1) {
-      nav[VN + i] = nav[VN + i]! + correction[VELOCITY + i]!;
-      nav[NAV_GYRO_BIAS + i] = nav[NAV_GYRO_BIAS + i]! + correction[GYRO_BIAS + i]!;
-      nav[NAV_ACCEL_BIAS + i] = nav[NAV_ACCEL_BIAS + i]! + correction[ACCEL_BIAS + i]!;
-    }
     const wrong = this.headingWatch.add(-correction[ATTITUDE + 2]!);
     if (wrong !== null) this.warn('heading-corrected', wrong, this.timeS);
-    turnAttitude(nav, correction);
+    correctState(strapdown.nav, strapdown.earth, correction);
     strapdown.attitudeChanged();
     resetAttitudeCovariance(p, correction);
   }

@@ -30,7 +30,8 @@ export class MeasurementUpdate {
   /** K, row by row, 15 × MAX_ROWS, after `apply`. */
   readonly gain = new Float64Array(STATES * MAX_ROWS);
   private readonly ph = new Float64Array(STATES * MAX_ROWS);
-  private readonly inverse = new Float64Array(MAX_ROWS * MAX_ROWS);
+  /** S⁻¹, row by row, after `prepare`. */
+  readonly inverse = new Float64Array(MAX_ROWS * MAX_ROWS);
   private readonly reduced = new Float64Array(STATES * STATES);
 
   /** Clears H and says which of its columns will be filled. Rows that are not in use measure nothing: H 0, R 1. */

@@ -30,6 +30,7 @@ export function recoverGroups(
   const velocityUsed = parameters.gnss.useVelocity && gates.velocity.hasJudged;
   const velocityInDoubt = group === 'velocity' || gates.velocity.isRejecting || !velocityUsed;
   const correction = new Float64Array(STATES);
+  const cut = new Float64Array(STATES);
   if (velocityInDoubt) widen(p, excess, parameters);
   const first = group === 'position' ? POSITION : VELOCITY;
   let row = 0;
@@ -37,13 +38,16 @@ export function recoverGroups(
     if (((axes >> axis) & 1) === 0) continue;
     correction[first + axis] = update.innovation[row]!;
     isolate(p, first + axis, CAUTION * update.r[row]!);
+    cut[first + axis] = 1;
     if (group === 'position' && velocityInDoubt) {
       const speed = update.innovation[row]! / parameters.gate.recoveryAfterS;
       const variance = Math.max(p[(VELOCITY + axis) * 16]!, speed * speed, MIN_VELOCITY_SIGMA ** 2);
       isolate(p, VELOCITY + axis, variance);
+      cut[VELOCITY + axis] = 1;
     }
     row += 1;
   }
+  filter.tape?.writeBreak(cut);
   filter.feedBack(correction);
   gates[group].reset();
   const what =

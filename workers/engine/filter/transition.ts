@@ -10,7 +10,6 @@
 import { EARTH_RATE } from '../geodesy';
 import { GRAVITY, MERIDIAN_PLUS_H, TRANSVERSE_PLUS_H } from '../strapdown/local-earth';
 import { LAT, VD, VE, VN } from '../strapdown/navigation-state';
-import type { Strapdown } from '../strapdown/strapdown';
 import { STATES } from './states';
 
 /** Coefficients of Φ, already times the step: see `Transition.form`. */
@@ -30,6 +29,14 @@ const C = {
   size: 55,
 } as const;
 
+/** What a transition is formed from: the strapdown itself, or what was kept of it. */
+export interface TransitionSource {
+  readonly nav: Float64Array;
+  readonly earth: Float64Array;
+  readonly sumDcm: Float64Array;
+  readonly sumForce: Float64Array;
+}
+
 export class Transition {
   /** Coefficients, see `C`. */
   readonly coefficients = new Float64Array(C.size);
@@ -38,8 +45,8 @@ export class Transition {
    * Fills the transition from the sums that the strapdown gathered over the step and the state at its end.
    * `gyroDecayRate`, `accelDecayRate`: 1/τ of decaying biases, 1/s.
    */
-  form(strapdown: Strapdown, gyroDecayRate: number, accelDecayRate: number): void {
-    const { nav, earth, sumDcm, sumForce } = strapdown;
+  form(source: TransitionSource, gyroDecayRate: number, accelDecayRate: number): void {
+    const { nav, earth, sumDcm, sumForce } = source;
     const t = this.coefficients;
     const dt = sumForce[3]!;
     const vn = nav[VN]!;

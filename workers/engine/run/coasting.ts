@@ -6,7 +6,7 @@ import { NAV_SIZE } from '../strapdown/navigation-state';
 import type { ReferenceColumns } from '../types';
 import { emptyError, emptyReference, referenceFromNav, ReferenceReader, stateError } from './reference';
 import { CoastingWriter } from './tables';
-import { comparedSamples, type CoastWindow } from './windows';
+import { comparedSamples, lowerBound, type CoastWindow } from './windows';
 
 const DOWN = (POSITION + 2) * (STATES + 1);
 
@@ -42,6 +42,19 @@ export class CoastingComparison {
     this.aided.set(nav, this.recorded * NAV_SIZE);
     this.recorded += 1;
   }
+
+  /** Is sample k compared in some window? */
+  isCompared(k: number): boolean {
+    return this.reader === null && this.samples[lowerBound(this.samples, k)] === k;
+  }
+
+  /** A smoothed state takes the place of the aided one at a compared sample. */
+  recordSmoothed(k: number, nav: Float64Array): void {
+    if (!this.isCompared(k)) return;
+    this.aided.set(nav, lowerBound(this.samples, k) * NAV_SIZE);
+    this.isSmoothed = true;
+  }
+  private isSmoothed = false;
 
   /** Does the coasting pass have to be compared at sample k? */
   wants(k: number): boolean {
@@ -90,6 +103,11 @@ export class CoastingComparison {
     }
   }
 
+  private get reference(): OutageResult['reference'] {
+    if (this.truth !== null) return 'truth';
+    return this.isSmoothed ? 'smoothed' : 'aided';
+  }
+
   /** One result a window, in the request's order. */
   results(): OutageResult[] {
     return this.windows
@@ -99,7 +117,7 @@ export class CoastingComparison {
           startS: outage.startS,
           endS: outage.endS,
           withhold: outage.withhold,
-          reference: this.truth === null ? ('aided' as const) : ('truth' as const),
+          reference: this.reference,
           points: this.points[w]!,
         },
       }))

@@ -3,7 +3,7 @@ import { quatFromEuler, quatMultiply, quatNormalise, rotationVectorFromQuat } fr
 import { meridianRadius, transverseRadius, wrapAngle } from '../geodesy';
 import { HEIGHT, LAT, LON, QUAT, VN } from '../strapdown/navigation-state';
 import type { ReferenceColumns } from '../types';
-import type { CoastWindow } from './windows';
+import { lowerBound, type CoastWindow } from './windows';
 
 /** Reference rows further apart than this are not interpolated, s. */
 const MAX_SPACING_S = 1.5;
@@ -38,7 +38,7 @@ export class ReferenceReader {
   /** Fills `state` for a time, s; false where the reference does not reach or has gaps. */
   read(timeS: number): boolean {
     const { timeS: time } = this.columns;
-    if (this.row > 0 && time[this.row]! > timeS) this.row = 0;
+    if (this.row > 0 && time[this.row]! > timeS) this.row = Math.max(0, lowerBound(time, timeS) - 1);
     while (this.row + 2 < time.length && time[this.row + 1]! <= timeS) this.row += 1;
     const i = this.row;
     if (time.length < 2 || timeS < time[i]! - 1e-6 || timeS > time[i + 1]! + 1e-6) return false;

@@ -10,6 +10,7 @@ import { align, type Alignment } from '../alignment/align';
 import { ErrorStateFilter, type FilterListener, type FilterSnapshot } from '../filter/error-state-filter';
 import { prepareFixes, withheldBy } from '../filter/fixes';
 import { STATES } from '../filter/states';
+import { Tape, type TapeMark } from '../filter/tape';
 import { HEIGHT, LAT, LON, VN } from '../strapdown/navigation-state';
 import {
   EngineError,
@@ -22,11 +23,16 @@ import { AidTally } from './aid-tally';
 import { CoastingComparison } from './coasting';
 import { countKept, keptSamples } from './output-grid';
 import { truthCovers } from './reference';
+import { SmoothingPass } from './smoothing';
 import { summarise } from './summary';
 import { InnovationWriter, SolutionWriter } from './tables';
 import { TruthComparison } from './truth-comparison';
 import { Warnings } from './warnings';
 import { layWindows, lowerBound, type CoastWindow } from './windows';
+
+/** What a sample of smoothing costs against one of filtering, and how many samples' work an output stands for. */
+const SMOOTHING_SHARE = 0.5;
+const SAMPLES_AN_OUTPUT = 20;
 
 /** Checks, aligns and makes ready. Throws EngineError for data or parameters that do not allow a run. */
 export function createRun(recording: RecordingColumns, request: RunRequest): EngineRun {
@@ -54,7 +60,12 @@ export class Run implements EngineRun {
   /** Last sample before the first window: where the passes part; −1 where one pass does it. */
   private readonly forkSample: number;
   private snapshot: FilterSnapshot | null = null;
-  private phase: 'reported' | 'reference' | 'done' = 'reported';
+  private phase: 'reported' | 'reference' | 'smooth-reference' | 'smooth-reported' | 'done' = 'reported';
+  private readonly tape: Tape | null;
+  private forkMark: TapeMark | null = null;
+  private smoothing: SmoothingPass | null = null;
+  readonly smoothed: SolutionWriter | null = null;
+  readonly smoothedTruth: TruthComparison | null = null;
   private done = 0;
 
   constructor(
@@ -84,10 +95,17 @@ export class Run implements EngineRun {
     this.filter = new ErrorStateFilter(imu, fixes, withheldAtFirst, parameters, leverArmM, this.listener());
     this.filter.start(start, this.alignment.fix, this.alignment.nav, this.alignment.p);
 
+    this.tape = request.smooth === true ? new Tape() : null;
+    this.filter.tape = this.tape;
+
     this.solution = new SolutionWriter(countKept(this.kept));
     this.position = new InnovationWriter(fixes.count);
     this.velocity = new InnovationWriter(fixes.count);
     this.truth = reference === null ? null : new TruthComparison(reference);
+    if (this.tape !== null) {
+      this.smoothed = new SolutionWriter(countKept(this.kept));
+      this.smoothedTruth = reference === null ? null : new TruthComparison(reference);
+    }
     const { nav } = this.alignment;
     this.origin = { latDeg: radToDeg(nav[LAT]!), lonDeg: radToDeg(nav[LON]!), heightM: nav[HEIGHT]! };
     this.report();
@@ -128,9 +146,18 @@ export class Run implements EngineRun {
 
   get progress(): number {
     if (this.phase === 'done') return 1;
-    const start = this.alignment.sample;
-    const total = this.last - start + (this.forkSample >= 0 ? this.last - this.forkSample : 0);
-    return total === 0 ? 1 : this.done / total;
+    const { last, forkSample } = this;
+    const whole = last - this.alignment.sample;
+    const beyond = forkSample >= 0 ? last - forkSample : 0;
+    const smoothing = this.tape === null ? 0 : SMOOTHING_SHARE * (whole + beyond);
+    const smoothed = this.smoothing === null ? 0 : SMOOTHING_SHARE * (last - this.smoothing.reached);
+    const before = this.phase === 'smooth-reported' || this.snapshotTaken ? SMOOTHING_SHARE * beyond : 0;
+    return (this.done + smoothed + (this.tape === null ? 0 : before)) / (whole + beyond + smoothing);
+  }
+
+  /** The coasting pass goes on from the fork. */
+  private get snapshotTaken(): boolean {
+    return this.phase === 'reported' && this.snapshot !== null;
   }
 
   get reachedS(): number {
@@ -145,18 +172,29 @@ export class Run implements EngineRun {
   advance(samples: number): boolean {
     const { filter } = this;
     for (let i = 0; i < samples && this.phase !== 'done'; i += 1) {
-      if (filter.sample === this.last) {
-        this.endPass();
+      if (this.smoothing !== null) {
+        i += SAMPLES_AN_OUTPUT;
+        if (this.smoothing.advance(1)) this.endSmoothing();
         continue;
       }
-      filter.advanceSample();
-      this.done += 1;
-      if (this.phase === 'reported') this.report();
-      else this.coasting.record(filter.sample, filter.strapdown.nav);
-      if (filter.sample === this.forkSample && this.snapshot === null) this.fork();
+      if (filter.sample < this.last) {
+        filter.advanceSample();
+        this.done += 1;
+        if (this.phase === 'reported') this.report();
+        else this.recordReference();
+        if (filter.sample === this.forkSample && this.snapshot === null) this.fork();
+      }
+      if (filter.sample === this.last) this.endPass();
     }
-    if (filter.sample === this.last && this.phase !== 'done') this.endPass();
     return this.phase === 'done';
+  }
+
+  private recordReference(): void {
+    const { filter, coasting, tape } = this;
+    const k = filter.sample;
+    coasting.record(k, filter.strapdown.nav);
+    if (tape !== null && coasting.isCompared(k))
+      tape.writeOutput(k, filter.strapdown, filter.covarianceNow(this.p));
   }
 
   /** The reported solution at the filter's sample, where it is kept or compared. */
@@ -174,6 +212,7 @@ export class Run implements EngineRun {
     filter.covarianceNow(this.p);
     if (kept[k] === 1) {
       this.solution.write(this.timeS[k]!, nav, this.p);
+      this.tape?.writeOutput(k, filter.strapdown, this.p);
       this.truth?.add(this.timeS[k]!, nav, this.p);
     }
     if (compared) this.coasting.compare(k, nav, this.p);
@@ -181,14 +220,46 @@ export class Run implements EngineRun {
 
   private fork(): void {
     this.snapshot = this.filter.save();
+    this.forkMark = this.tape?.mark() ?? null;
     this.phase = 'reference';
   }
 
+  /** The recording's end is reached: on to the smoother, back to the fork, or done. */
   private endPass(): void {
-    if (this.phase !== 'reference') {
-      this.phase = 'done';
+    const { tape, filter, last } = this;
+    if (tape !== null) {
+      filter.covarianceStep();
+      const isReference = this.phase === 'reference';
+      this.phase = isReference ? 'smooth-reference' : 'smooth-reported';
+      const until = isReference ? this.forkMark : null;
+      this.smoothing = new SmoothingPass(tape, until, filter.noise, last, this.smoothedOutput);
+    } else if (this.phase === 'reference') this.backToFork();
+    else this.phase = 'done';
+  }
+
+  /** Rows of the smoothed solution come last first. */
+  private readonly smoothedOutput = (k: number, nav: Float64Array, p: Float64Array): void => {
+    if (this.phase === 'smooth-reference') {
+      this.coasting.recordSmoothed(k, nav);
       return;
     }
+    const row = lowerBound(this.solution.table.time_s!.subarray(0, this.solution.count), this.timeS[k]!);
+    this.smoothed!.writeAt(row, this.timeS[k]!, nav, p);
+    this.smoothedTruth?.add(this.timeS[k]!, nav, p);
+  };
+
+  private endSmoothing(): void {
+    this.smoothing = null;
+    if (this.phase === 'smooth-reference') {
+      this.tape!.forgetBeyond();
+      this.backToFork();
+      return;
+    }
+    this.smoothed!.count = this.solution.count;
+    this.phase = 'done';
+  }
+
+  private backToFork(): void {
     this.filter.restore(this.snapshot!);
     this.filter.withhold(this.withheld);
     this.phase = 'reported';
@@ -201,6 +272,7 @@ export class Run implements EngineRun {
       position: this.position.finish(),
       velocity: this.velocity.finish(),
       coasting: this.coasting.writer.finish(),
+      smoothed: this.smoothed?.finish() ?? null,
       summary: summarise(this),
     };
   }

@@ -42,6 +42,7 @@ export function summarise(run: Run): RunSummary {
     gyroBiasRadPerS: biases('gyro_bias', 'rad_s'),
     accelBiasMPerS2: biases('accel_bias', 'm_s2'),
     truth: run.truth?.result() ?? null,
+    ...(run.smoothedTruth === null ? {} : { smoothedTruth: run.smoothedTruth.result() }),
     warnings: run.warnings.all(),
     aids: run.aids.results(),
   };

@@ -26,9 +26,15 @@ export class SolutionWriter {
     this.table = Object.fromEntries(names.map((name, i) => [name, this.columns[i]!]));
   }
 
-  /** One row; `nav` as in navigation-state.ts, P 15×15. Order of columns: SOLUTION_COLUMNS. */
+  /** The next row; `nav` as in navigation-state.ts, P 15×15. */
   write(timeS: number, nav: Float64Array, p: Float64Array): void {
-    const { columns, quaternion, euler, sigma, count: row } = this;
+    this.writeAt(this.count, timeS, nav, p);
+    this.count += 1;
+  }
+
+  /** A row anywhere. Order of columns: SOLUTION_COLUMNS. */
+  writeAt(row: number, timeS: number, nav: Float64Array, p: Float64Array): void {
+    const { columns, quaternion, euler, sigma } = this;
     for (let i = 0; i < 4; i += 1) quaternion[i] = nav[QUAT + i]!;
     eulerFromQuat(quaternion, euler);
     eulerSigmas(p, euler[1]!, euler[2]!, sigma);
@@ -48,7 +54,6 @@ export class SolutionWriter {
       columns[28 + i]![row] = deviation(p, ACCEL_BIAS + i);
     }
     columns[31]![row] = p[1]!;
-    this.count += 1;
   }
 
   finish(): SolutionTable {

@@ -48,13 +48,13 @@ function driftSamples(timeS: Float64Array, outage: Outage, first: number, last: 
   return samples;
 }
 
-/** First index whose time is not below `value`. */
-export function lowerBound(timeS: Float64Array, value: number): number {
+/** First index of increasing values that is not below `value`. */
+export function lowerBound(values: Float64Array | Int32Array, value: number): number {
   let low = 0;
-  let high = timeS.length;
+  let high = values.length;
   while (low < high) {
     const middle = (low + high) >> 1;
-    if (timeS[middle]! < value) low = middle + 1;
+    if (values[middle]! < value) low = middle + 1;
     else high = middle;
   }
   return low;

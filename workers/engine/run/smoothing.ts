@@ -1,0 +1,38 @@
+/** A backward pass over a tape: smoothed states and covariances at the tape's outputs, last first, slice by slice. */
+import { correctState } from '../filter/correct-state';
+import type { ProcessNoise } from '../filter/process-noise';
+import { Smoother } from '../filter/smoother';
+import type { Tape, TapeMark } from '../filter/tape';
+import { NAV_SIZE } from '../strapdown/navigation-state';
+
+export class SmoothingPass {
+  private readonly smoother: Smoother;
+  private readonly nav = new Float64Array(NAV_SIZE);
+  /** Sample that the pass has come back to. */
+  reached: number;
+
+  /** From the tape's end back to `until` (null: its beginning), each output handed to `emit`. */
+  constructor(
+    private readonly tape: Tape,
+    private readonly until: TapeMark | null,
+    noise: Pick<ProcessNoise, 'gyroDecay' | 'accelDecay'>,
+    lastSample: number,
+    private readonly emit: (sample: number, nav: Float64Array, covariance: Float64Array) => void,
+  ) {
+    this.smoother = new Smoother(tape, noise.gyroDecay, noise.accelDecay);
+    this.reached = lastSample;
+  }
+
+  /** True when the pass has come to its end. */
+  advance(outputs: number): boolean {
+    const { smoother, tape, nav } = this;
+    for (let i = 0; i < outputs; i += 1) {
+      if (!smoother.next(this.until)) return true;
+      nav.set(tape.motion.nav);
+      correctState(nav, tape.motion.earth, smoother.correction);
+      this.reached = tape.sample;
+      this.emit(tape.sample, nav, smoother.covariance);
+    }
+    return false;
+  }
+}
