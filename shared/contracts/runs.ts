@@ -58,6 +58,14 @@ export const channelStatisticsSchema = z.object({
     .describe('RMS of innovation ÷ its predicted σ; 1 when R and Q are right.'),
   lag1: z.number().nullable().describe('Autocorrelation of the normalised innovation at lag 1.'),
   lag1Band: z.number().nullable().describe('95 % band, ±.'),
+  autocorrelation: z
+    .array(z.number())
+    .optional()
+    .describe('Of the normalised innovation at lags 1 to 20; left out where the sample is too small.'),
+  whitenessP: z
+    .number()
+    .optional()
+    .describe('Ljung–Box over those lags: probability of so much correlation in white innovations.'),
 });
 export type ChannelStatistics = z.infer<typeof channelStatisticsSchema>;
 
@@ -93,6 +101,13 @@ export const driftPointSchema = z.object({
 });
 export type DriftPoint = z.infer<typeof driftPointSchema>;
 
+/** Where the predicted error at a drift point comes from: 1σ that each source alone would leave; squares add up. */
+export const budgetPointSchema = z.object({
+  afterS: z.number(),
+  shares: z.array(z.object({ source: z.string(), horizontalM: z.number(), verticalM: z.number() })),
+});
+export type BudgetPoint = z.infer<typeof budgetPointSchema>;
+
 export const outageResultSchema = z.object({
   startS: z.number(),
   endS: z.number(),
@@ -105,6 +120,7 @@ export const outageResultSchema = z.object({
   points: z
     .array(driftPointSchema)
     .describe('At 10, 30, 60, 120 s and at the end, as far as the window goes.'),
+  budget: z.array(budgetPointSchema).optional().describe('At the same points, where it was asked for.'),
 });
 export type OutageResult = z.infer<typeof outageResultSchema>;
 

@@ -57,6 +57,8 @@ export interface RunRequest {
   outputRateHz: number;
   /** Also the fixed-interval smoother: memory grows by about 25 kB a second of recording. */
   smooth?: boolean;
+  /** Also the error budget at the drift points of the outages: about eight times the covariance's work. */
+  errorBudget?: boolean;
 }
 
 /** Kept solution at the output rate: one Float64Array of length K a column, names and units as SOLUTION_COLUMNS, and `cov_ne_m2`. */

@@ -14,7 +14,7 @@ import { NAV_ACCEL_BIAS, NAV_GYRO_BIAS, NAV_SIZE, QUAT } from '../strapdown/navi
 import type { ImuColumns } from '../types';
 import { eulerSigmas, tiltFromEulerVariance } from './euler-errors';
 import { findAttitude, type FoundAttitude } from './find-attitude';
-import { initialCovariance } from './initial-covariance';
+import { initialCovariance, type InitialCauses } from './initial-covariance';
 import { findPlace } from './place';
 import { restGyroBias } from './rest-bias';
 
@@ -24,6 +24,8 @@ export interface Alignment {
   fix: number;
   nav: Float64Array;
   p: Float64Array;
+  /** What `p` is made of. */
+  causes: InitialCauses;
   report: RunSummary['alignment'];
 }
 
@@ -53,7 +55,7 @@ export function align(
   nav.set(parameters.initial.accelBiasMPerS2 ?? [0, 0, 0], NAV_ACCEL_BIAS);
 
   const accelVariance = initialBiasVariance(biasParameters(parameters).accel);
-  const p = initialCovariance({
+  const causes: InitialCauses = {
     dcm,
     latRad: place.position[0],
     gravity: normalGravity(place.position[0], place.position[2]),
@@ -66,8 +68,9 @@ export function align(
     levelled: found.levelling !== 'given',
     attitudeVariance: tiltFromEulerVariance(found.eulerVariance, found.pitch, found.yaw),
     headingArm: found.headingArm,
-  });
-  return { sample, fix: place.nextFix, nav, p, report: report(found, timeS, q, p) };
+  };
+  const p = initialCovariance(causes);
+  return { sample, fix: place.nextFix, nav, p, causes, report: report(found, timeS, q, p) };
 }
 
 function gyroBiasAtStart(found: FoundAttitude, parameters: Parameters, dcm: Float64Array, latRad: number) {

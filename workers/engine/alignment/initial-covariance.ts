@@ -4,6 +4,7 @@
  * carried back by the gyros is wrong by their bias.
  */
 import { Matrix } from 'ml-matrix';
+import type { BudgetSource } from '../filter/error-budget';
 import { EARTH_RATE } from '../geodesy';
 import { ACCEL_BIAS, ATTITUDE, GYRO_BIAS, POSITION, STATES, VELOCITY } from '../filter/states';
 
@@ -51,6 +52,27 @@ export function initialCovariance(causes: InitialCauses): Float64Array {
   for (let r = 0; r < STATES; r += 1)
     for (let c = 0; c < STATES; c += 1) out[r * STATES + c] = 0.5 * (p.get(r, c) + p.get(c, r));
   return out;
+}
+
+/** P split by cause: the parts sum to `initialCovariance(causes)`. */
+export function initialBudget(causes: InitialCauses): Partial<Record<BudgetSource, Float64Array>> {
+  const none = [0, 0, 0] as const;
+  const nothing: InitialCauses = {
+    ...causes,
+    positionVariance: none,
+    velocityVariance: none,
+    gyroBiasVariance: none,
+    accelBiasVariance: none,
+    attitudeVariance: new Float64Array(9),
+  };
+  const alone = (part: Partial<InitialCauses>) => initialCovariance({ ...nothing, ...part });
+  return {
+    'gyro bias': alone({ gyroBiasVariance: causes.gyroBiasVariance }),
+    'accelerometer bias': alone({ accelBiasVariance: causes.accelBiasVariance }),
+    'initial attitude': alone({ attitudeVariance: causes.attitudeVariance }),
+    'initial velocity': alone({ velocityVariance: causes.velocityVariance }),
+    'initial position': alone({ positionVariance: causes.positionVariance }),
+  };
 }
 
 /** 0 = f_n×φ − C δb_a in north and east at rest, f_n = (0, 0, −g): φ_N = −(C δb_a)_E/g, φ_E = (C δb_a)_N/g. */

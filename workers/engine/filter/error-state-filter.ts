@@ -8,12 +8,12 @@
 import type { Parameters } from '@/shared/contracts/parameters';
 import type { ImuColumns } from '../types';
 import { ANGLE, ANGLE_BEND, DURATION, ImuIntervals } from '../strapdown/imu-intervals';
-import { MERIDIAN_PLUS_H, TRANSVERSE_PLUS_H } from '../strapdown/local-earth';
-import { HEIGHT, LAT, LON, NAV_ACCEL_BIAS, NAV_GYRO_BIAS, VN } from '../strapdown/navigation-state';
+import { NAV_ACCEL_BIAS, NAV_GYRO_BIAS } from '../strapdown/navigation-state';
 import { Strapdown } from '../strapdown/strapdown';
 import { findClipping, type ClippedRun } from './clipping';
 import { resetAttitudeCovariance } from './attitude-feedback';
 import { correctState } from './correct-state';
+import type { BudgetShare, ErrorBudget } from './error-budget';
 import type { Fixes } from './fixes';
 import { GapBridge } from './gap-bridge';
 import { Gate } from './gate';
@@ -25,7 +25,7 @@ import { Propagation } from './propagation';
 import { recoverGroups } from './recovery';
 import type { Tape } from './tape';
 import { VehicleAids } from './vehicle-aids';
-import { ACCEL_BIAS, ATTITUDE, GYRO_BIAS, POSITION, STATES, VELOCITY } from './states';
+import { ATTITUDE, STATES } from './states';
 
 /** A fix this close to an IMU sample, s, counts as simultaneous. */
 const SAME_TIME_S = 1e-7;
@@ -57,6 +57,7 @@ export interface FilterSnapshot {
   extraNoise: readonly [number, number];
   heading: readonly number[];
   aids: readonly number[];
+  budget: Float64Array[] | null;
   gates: readonly (readonly number[])[];
 }
 
@@ -68,6 +69,8 @@ export class ErrorStateFilter {
   sample = 0;
   /** Takes down what the smoother needs, where one is wanted. */
   tape: Tape | null = null;
+  /** Splits the covariance by cause, where that is wanted. */
+  budget: ErrorBudget | null = null;
   /** Next fix to be looked at. */
   private fix = 0;
   readonly gates: Readonly<Record<GroupName | AidName, Gate>>;
@@ -212,6 +215,7 @@ export class ErrorStateFilter {
     if (to < 1) return;
     const heading = (ATTITUDE + 2) * (STATES + 1);
     this.p[heading] = this.p[heading]! + bridge.headingVariance;
+    this.budget?.add(ATTITUDE + 2, bridge.headingVariance);
     this.watchHeading();
   }
 
@@ -231,6 +235,7 @@ export class ErrorStateFilter {
     if (dt === 0) return;
     this.propagate(this.p, dt);
     this.tape?.writeStep(strapdown);
+    this.budget?.step(this.propagation, noise);
     strapdown.resetSums();
     if (noise.gyroDecay > 0) this.decay(NAV_GYRO_BIAS, Math.exp(-noise.gyroDecay * dt));
     if (noise.accelDecay > 0) this.decay(NAV_ACCEL_BIAS, Math.exp(-noise.accelDecay * dt));
@@ -254,6 +259,15 @@ export class ErrorStateFilter {
     const dt = this.strapdown.sumForce[3]!;
     if (dt > 0) this.propagate(out, dt);
     return out;
+  }
+
+  /** The error budget at the current sample; null where none is kept. */
+  budgetNow(): BudgetShare[] | null {
+    if (this.budget === null) return null;
+    const dt = this.strapdown.sumForce[3]!;
+    if (dt > 0) this.propagation.transition.form(this.strapdown, this.noise.gyroDecay, this.noise.accelDecay);
+    if (dt > 0) this.noise.fill(dt);
+    return this.budget.shares(dt > 0 ? this.propagation : null, this.noise);
   }
 
   /** Position, then velocity of fix j, at the share `at` of the loaded interval. */
@@ -291,7 +305,7 @@ export class ErrorStateFilter {
     const verdict = this.gates[group].judge(time, update.rows, update.nis);
     this.listener.onInnovation(group, time, axes, update, verdict === 'accept');
     if (verdict === 'accept') {
-      this.take(update);
+      this.take(update, 'GNSS noise');
     } else if (verdict === 'recover') {
       recoverGroups(this, group, time, axes, update);
     }
@@ -306,11 +320,12 @@ export class ErrorStateFilter {
     // An aid that is refused says that it does not hold here; it never moves the state by force.
     const accepted = this.gates[name].judge(this.timeS, update.rows, update.nis) === 'accept';
     this.listener.onInnovation(name, this.timeS, axes, update, accepted);
-    if (accepted) this.take(update);
+    if (accepted) this.take(update, 'aids');
   }
 
-  private take(update: MeasurementUpdate): void {
+  private take(update: MeasurementUpdate, source: 'GNSS noise' | 'aids'): void {
     update.apply(this.p);
+    this.budget?.update(update, source);
     this.tape?.writeUpdate(update);
     this.feedBack(update.correction);
   }
@@ -323,6 +338,7 @@ export class ErrorStateFilter {
     correctState(strapdown.nav, strapdown.earth, correction);
     strapdown.attitudeChanged();
     resetAttitudeCovariance(p, correction);
+    this.budget?.reset(correction);
   }
 
   warn(code: string, sentence: string, timeS: number): void {
@@ -344,6 +360,7 @@ export class ErrorStateFilter {
       extraNoise: [this.noise.gyroExtra, this.noise.accelExtra],
       heading: this.headingWatch.save(),
       aids: this.aids?.save() ?? [],
+      budget: this.budget?.save() ?? null,
       gates: Object.values(this.gates).map((gate) => gate.save()),
     };
   }
@@ -357,6 +374,7 @@ export class ErrorStateFilter {
     [this.noise.gyroExtra, this.noise.accelExtra] = saved.extraNoise;
     this.headingWatch.restore(saved.heading);
     this.aids?.restore(saved.aids);
+    if (saved.budget !== null) this.budget?.restore(saved.budget);
     Object.values(this.gates).forEach((gate, i) => gate.restore(saved.gates[i]!));
   }
 }

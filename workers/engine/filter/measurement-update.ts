@@ -10,6 +10,8 @@ import { STATES } from './states';
 
 export const MAX_ROWS = 3;
 
+const NO_NOISE = new Float64Array(MAX_ROWS);
+
 export class MeasurementUpdate {
   /** Rows in use, 1…3; the others measure nothing. */
   rows = 0;
@@ -32,6 +34,7 @@ export class MeasurementUpdate {
   private readonly ph = new Float64Array(STATES * MAX_ROWS);
   /** S⁻¹, row by row, after `prepare`. */
   readonly inverse = new Float64Array(MAX_ROWS * MAX_ROWS);
+  private readonly otherPh = new Float64Array(STATES * MAX_ROWS);
   private readonly reduced = new Float64Array(STATES * STATES);
 
   /** Clears H and says which of its columns will be filled. Rows that are not in use measure nothing: H 0, R 1. */
@@ -100,12 +103,27 @@ export class MeasurementUpdate {
       gain[at + 2] = kc;
       correction[i] = ka * innovation[0]! + kb * innovation[1]! + kc * innovation[2]!;
     }
-    this.joseph(p);
+    this.joseph(p, ph, this.r);
+  }
+
+  /** After `apply`: the same gain on another covariance, with the measurements' noise or without. */
+  applyGain(p: Float64Array, withNoise: boolean): void {
+    const { h, columns, columnCount, otherPh } = this;
+    for (let i = 0; i < STATES; i += 1)
+      for (let m = 0; m < MAX_ROWS; m += 1) {
+        let sum = 0;
+        for (let n = 0; n < columnCount; n += 1) {
+          const j = columns[n]!;
+          sum += p[i * STATES + j]! * h[m * STATES + j]!;
+        }
+        otherPh[i * MAX_ROWS + m] = sum;
+      }
+    this.joseph(p, otherPh, withNoise ? this.r : NO_NOISE);
   }
 
   /** P ← A + (KR − AHᵀ)Kᵀ with A = P − K(HP): Joseph's form multiplied out; upper triangle, then mirrored. */
-  private joseph(p: Float64Array): void {
-    const { h, columns, columnCount, gain, ph, reduced, r } = this;
+  private joseph(p: Float64Array, ph: Float64Array, r: Float64Array): void {
+    const { h, columns, columnCount, gain, reduced } = this;
     for (let i = 0; i < STATES; i += 1) {
       const row = i * STATES;
       const ka = gain[i * MAX_ROWS]!;

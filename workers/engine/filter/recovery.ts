@@ -31,23 +31,27 @@ export function recoverGroups(
   const velocityInDoubt = group === 'velocity' || gates.velocity.isRejecting || !velocityUsed;
   const correction = new Float64Array(STATES);
   const cut = new Float64Array(STATES);
-  if (velocityInDoubt) widen(p, excess, parameters);
+  const given = new Float64Array(STATES);
+  const scale = new Float64Array(STATES).fill(1);
+  if (velocityInDoubt) widen(p, excess, parameters, scale);
   const first = group === 'position' ? POSITION : VELOCITY;
   let row = 0;
   for (let axis = 0; axis < 3; axis += 1) {
     if (((axes >> axis) & 1) === 0) continue;
     correction[first + axis] = update.innovation[row]!;
-    isolate(p, first + axis, CAUTION * update.r[row]!);
     cut[first + axis] = 1;
+    given[first + axis] = CAUTION * update.r[row]!;
     if (group === 'position' && velocityInDoubt) {
       const speed = update.innovation[row]! / parameters.gate.recoveryAfterS;
       const variance = Math.max(p[(VELOCITY + axis) * 16]!, speed * speed, MIN_VELOCITY_SIGMA ** 2);
-      isolate(p, VELOCITY + axis, variance);
       cut[VELOCITY + axis] = 1;
+      given[VELOCITY + axis] = variance;
     }
     row += 1;
   }
+  for (let i = 0; i < STATES; i += 1) if (cut[i] === 1) isolate(p, i, given[i]!);
   filter.tape?.writeBreak(cut);
+  filter.budget?.recover(scale, cut, given);
   filter.feedBack(correction);
   gates[group].reset();
   const what =
@@ -69,7 +73,12 @@ function isolate(p: Float64Array, i: number, variance: number): void {
 }
 
 /** P ← DPD on attitude and biases: variances `excess` times larger, within what such a state can be. */
-function widen(p: Float64Array, excess: number, parameters: ErrorStateFilter['parameters']): void {
+function widen(
+  p: Float64Array,
+  excess: number,
+  parameters: ErrorStateFilter['parameters'],
+  scale: Float64Array,
+): void {
   const bias = biasParameters(parameters);
   const gyro = initialBiasVariance(bias.gyro);
   const accel = initialBiasVariance(bias.accel);
@@ -79,6 +88,7 @@ function widen(p: Float64Array, excess: number, parameters: ErrorStateFilter['pa
     else if (i < GYRO_BIAS) limit = MAX_HEADING_SIGMA ** 2;
     else if (i < ACCEL_BIAS) limit = gyro;
     const factor = Math.sqrt(Math.max(1, Math.min(excess, limit / p[i * STATES + i]!)));
+    scale[i] = factor;
     for (let j = 0; j < STATES; j += 1) {
       p[i * STATES + j] = p[i * STATES + j]! * factor;
       p[j * STATES + i] = p[j * STATES + i]! * factor;

@@ -1,6 +1,7 @@
 /** Compares the coasting solution with its reference: the coasting table, and drift points per window. */
-import type { DriftPoint, OutageResult } from '@/shared/contracts/runs';
+import type { BudgetPoint, DriftPoint, OutageResult } from '@/shared/contracts/runs';
 import { radToDeg } from '@/shared/units';
+import type { BudgetShare } from '../filter/error-budget';
 import { POSITION, STATES } from '../filter/states';
 import { NAV_SIZE } from '../strapdown/navigation-state';
 import type { ReferenceColumns } from '../types';
@@ -20,6 +21,7 @@ export class CoastingComparison {
   private readonly error = emptyError();
   private readonly aidedState = emptyReference();
   private readonly points: DriftPoint[][];
+  private readonly budgets: BudgetPoint[][];
 
   constructor(
     private readonly windows: readonly CoastWindow[],
@@ -31,6 +33,7 @@ export class CoastingComparison {
     this.aided = truth === null ? new Float64Array(this.samples.length * NAV_SIZE) : new Float64Array(0);
     this.writer = new CoastingWriter(this.samples.length);
     this.points = windows.map(() => []);
+    this.budgets = windows.map(() => []);
     this.reader = truth === null ? null : new ReferenceReader(truth);
   }
 
@@ -62,7 +65,7 @@ export class CoastingComparison {
   }
 
   /** The coasting pass at a wanted sample, with its covariance there. */
-  compare(k: number, nav: Float64Array, p: Float64Array): void {
+  compare(k: number, nav: Float64Array, p: Float64Array, budget: () => BudgetShare[] | null): void {
     const at = this.next;
     this.next += 1;
     const timeS = this.timeS[k]!;
@@ -100,6 +103,8 @@ export class CoastingComparison {
         predictedHorizontalM: predicted,
         predictedVerticalM: predictedVertical,
       });
+      const shares = budget();
+      if (shares !== null) this.budgets[w]!.push({ afterS, shares });
     }
   }
 
@@ -119,6 +124,7 @@ export class CoastingComparison {
           withhold: outage.withhold,
           reference: this.reference,
           points: this.points[w]!,
+          ...(this.budgets[w]!.length > 0 ? { budget: this.budgets[w]! } : {}),
         },
       }))
       .sort((a, b) => a.index - b.index)

@@ -7,7 +7,9 @@
  */
 import { radToDeg } from '@/shared/units';
 import { align, type Alignment } from '../alignment/align';
+import { initialBudget } from '../alignment/initial-covariance';
 import { ErrorStateFilter, type FilterListener, type FilterSnapshot } from '../filter/error-state-filter';
+import { ErrorBudget } from '../filter/error-budget';
 import { prepareFixes, withheldBy } from '../filter/fixes';
 import { STATES } from '../filter/states';
 import { Tape, type TapeMark } from '../filter/tape';
@@ -62,6 +64,7 @@ export class Run implements EngineRun {
   private snapshot: FilterSnapshot | null = null;
   private phase: 'reported' | 'reference' | 'smooth-reference' | 'smooth-reported' | 'done' = 'reported';
   private readonly tape: Tape | null;
+  private readonly budget: ErrorBudget | null;
   private forkMark: TapeMark | null = null;
   private smoothing: SmoothingPass | null = null;
   readonly smoothed: SolutionWriter | null = null;
@@ -97,6 +100,8 @@ export class Run implements EngineRun {
 
     this.tape = request.smooth === true ? new Tape() : null;
     this.filter.tape = this.tape;
+    this.budget = request.errorBudget === true ? new ErrorBudget(initialBudget(this.alignment.causes)) : null;
+    this.filter.budget = this.budget;
 
     this.solution = new SolutionWriter(countKept(this.kept));
     this.position = new InnovationWriter(fixes.count);
@@ -215,13 +220,14 @@ export class Run implements EngineRun {
       this.tape?.writeOutput(k, filter.strapdown, this.p);
       this.truth?.add(this.timeS[k]!, nav, this.p);
     }
-    if (compared) this.coasting.compare(k, nav, this.p);
+    if (compared) this.coasting.compare(k, nav, this.p, () => filter.budgetNow());
   }
 
   private fork(): void {
     this.snapshot = this.filter.save();
     this.forkMark = this.tape?.mark() ?? null;
     this.phase = 'reference';
+    this.filter.budget = null;
   }
 
   /** The recording's end is reached: on to the smoother, back to the fork, or done. */
@@ -260,6 +266,7 @@ export class Run implements EngineRun {
   }
 
   private backToFork(): void {
+    this.filter.budget = this.budget;
     this.filter.restore(this.snapshot!);
     this.filter.withhold(this.withheld);
     this.phase = 'reported';

@@ -3,14 +3,15 @@ import { ENGINE_VERSION } from '../types';
 import type { ChannelStatistics, GroupStatistics, RunSummary, StateVector } from '@/shared/contracts/runs';
 import { averageBounds } from '../statistics/consistency';
 import { autocorrelation, autocorrelationBand } from '../statistics/correlation';
-import { chiSquaredQuantile } from '../statistics/distributions';
+import { chiSquaredQuantile, chiSquaredUpper } from '../statistics/distributions';
 import type { SolutionTable } from '../types';
 import { findings } from './findings';
 import type { Run } from './run';
 import type { InnovationWriter } from './tables';
 
 /** Fewer accepted innovations than this give no autocorrelation. */
-const MIN_FOR_LAG = 20;
+const MIN_FOR_LAG = 60;
+const LAGS = 20;
 
 export function summarise(run: Run): RunSummary {
   const { solution, position, velocity } = run;
@@ -103,10 +104,24 @@ function channelStatistics(group: string, unit: string, writer: InnovationWriter
       rejected,
       mean: used > 0 ? sum / used : null,
       sigmaRatio: used > 0 ? Math.sqrt(squares / used) : null,
-      lag1: enough ? autocorrelation(normalised, 1)[0]! : null,
-      lag1Band: enough ? autocorrelationBand(used) : null,
+      ...(enough ? whiteness(normalised) : { lag1: null, lag1Band: null }),
     };
   });
+}
+
+/** Correlation of an innovation with itself at lags 1…20, and the portmanteau test over them (Ljung & Box 1978). */
+function whiteness(
+  z: Float64Array,
+): Pick<ChannelStatistics, 'lag1' | 'lag1Band' | 'autocorrelation' | 'whitenessP'> {
+  const r = autocorrelation(z, LAGS);
+  const n = z.length;
+  const q = r.reduce((sum, value, i) => sum + (value * value) / (n - i - 1), 0) * n * (n + 2);
+  return {
+    lag1: r[0]!,
+    lag1Band: autocorrelationBand(n),
+    autocorrelation: Array.from(r),
+    whitenessP: chiSquaredUpper(q, LAGS),
+  };
 }
 
 function groupStatistics(group: 'position' | 'velocity', writer: InnovationWriter): GroupStatistics {

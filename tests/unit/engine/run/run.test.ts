@@ -234,3 +234,23 @@ describe('data that cannot be filtered', () => {
     ).toMatch(/^too-short: The IMU log holds 3 samples/);
   });
 });
+
+test('whiteness: lags 1 to 20 and Ljung–Box, and correlated fixes fail it', () => {
+  const white = complete(runOf(road)).summary.channels;
+  for (const channel of white) {
+    expect(channel.autocorrelation).toHaveLength(20);
+    expect(channel.lag1).toBe(channel.autocorrelation![0]);
+    expect(channel.whitenessP!).toBeGreaterThan(1e-4);
+  }
+  const drifting = simulateCase({
+    motion: 'road',
+    durationS: 150,
+    imuRateHz: 50,
+    staticStartS: 15,
+    seed: 7,
+    gnss: { correlationTimeS: 20 },
+  });
+  const result = complete(runOf(drifting)).summary;
+  expect(result.channels[0]!.whitenessP!).toBeLessThan(1e-6);
+  expect(result.findings.map((f) => f.code)).toContain('position-correlated');
+});
