@@ -82,16 +82,17 @@ function extremes(axis: Float64Array) {
   let previous = NaN;
   for (let k = 0; k < axis.length; k += 1) {
     const x = axis[k]!;
-    run = x === previous ? run + 1 : 1;
-    previous = x;
-    if (x < low) {
-      low = x;
-      lowRun = 1;
-    } else if (x === low && run > lowRun) lowRun = run;
-    if (x > high) {
+    if (x >= high) {
+      run = x === previous ? run + 1 : 1;
+      if (x > high || run > highRun) highRun = run;
       high = x;
-      highRun = 1;
-    } else if (x === high && run > highRun) highRun = run;
+    }
+    if (x <= low) {
+      run = x === previous ? run + 1 : 1;
+      if (x < low || run > lowRun) lowRun = run;
+      low = x;
+    }
+    previous = x;
   }
   return { low, high, lowRun, highRun };
 }

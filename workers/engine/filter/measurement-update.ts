@@ -10,8 +10,6 @@ import { STATES } from './states';
 
 export const MAX_ROWS = 3;
 
-const NO_NOISE = new Float64Array(MAX_ROWS);
-
 export class MeasurementUpdate {
   /** Rows in use, 1…3; the others measure nothing. */
   rows = 0;
@@ -35,7 +33,7 @@ export class MeasurementUpdate {
   /** S⁻¹, row by row, after `prepare`. */
   readonly inverse = new Float64Array(MAX_ROWS * MAX_ROWS);
   private readonly otherPh = new Float64Array(STATES * MAX_ROWS);
-  private readonly reduced = new Float64Array(STATES * STATES);
+  private readonly otherS = new Float64Array(MAX_ROWS * MAX_ROWS);
 
   /** Clears H and says which of its columns will be filled. Rows that are not in use measure nothing: H 0, R 1. */
   begin(rows: number, columns: readonly number[]): void {
@@ -51,32 +49,9 @@ export class MeasurementUpdate {
 
   /** PHᵀ, S, its inverse and the NIS; P (15×15) is only read. */
   prepare(p: Float64Array): void {
-    const { h, columns, columnCount, ph, s, r, innovation } = this;
-    for (let i = 0; i < STATES; i += 1) {
-      let a = 0;
-      let b = 0;
-      let c = 0;
-      for (let n = 0; n < columnCount; n += 1) {
-        const j = columns[n]!;
-        const value = p[i * STATES + j]!;
-        a += value * h[j]!;
-        b += value * h[STATES + j]!;
-        c += value * h[2 * STATES + j]!;
-      }
-      ph[i * MAX_ROWS] = a;
-      ph[i * MAX_ROWS + 1] = b;
-      ph[i * MAX_ROWS + 2] = c;
-    }
-    for (let a = 0; a < MAX_ROWS; a += 1)
-      for (let b = a; b < MAX_ROWS; b += 1) {
-        let sum = a === b ? r[a]! : 0;
-        for (let n = 0; n < columnCount; n += 1) {
-          const j = columns[n]!;
-          sum += h[a * STATES + j]! * ph[j * MAX_ROWS + b]!;
-        }
-        s[a * MAX_ROWS + b] = sum;
-        s[b * MAX_ROWS + a] = sum;
-      }
+    const { ph, s, innovation } = this;
+    this.project(p, ph);
+    this.innovationCovariance(ph, s);
     invertSymmetric(s, this.inverse);
     this.nis = quadratic(this.inverse, innovation);
   }
@@ -103,56 +78,79 @@ export class MeasurementUpdate {
       gain[at + 2] = kc;
       correction[i] = ka * innovation[0]! + kb * innovation[1]! + kc * innovation[2]!;
     }
-    this.joseph(p, ph, this.r);
+    this.joseph(p, ph, this.s);
   }
 
   /** After `apply`: the same gain on another covariance, with the measurements' noise or without. */
   applyGain(p: Float64Array, withNoise: boolean): void {
-    const { h, columns, columnCount, otherPh } = this;
-    for (let i = 0; i < STATES; i += 1)
-      for (let m = 0; m < MAX_ROWS; m += 1) {
-        let sum = 0;
-        for (let n = 0; n < columnCount; n += 1) {
-          const j = columns[n]!;
-          sum += p[i * STATES + j]! * h[m * STATES + j]!;
-        }
-        otherPh[i * MAX_ROWS + m] = sum;
-      }
-    this.joseph(p, otherPh, withNoise ? this.r : NO_NOISE);
+    const { otherPh, otherS, r } = this;
+    this.project(p, otherPh);
+    this.innovationCovariance(otherPh, otherS);
+    if (!withNoise) for (let m = 0; m < MAX_ROWS; m += 1) otherS[m * 4] = otherS[m * 4]! - r[m]!;
+    this.joseph(p, otherPh, otherS);
   }
 
-  /** P ← A + (KR − AHᵀ)Kᵀ with A = P − K(HP): Joseph's form multiplied out; upper triangle, then mirrored. */
-  private joseph(p: Float64Array, ph: Float64Array, r: Float64Array): void {
-    const { h, columns, columnCount, gain, reduced } = this;
+  /**
+   * Joseph's form multiplied out, P − K(HP) + (KS − PHᵀ)Kᵀ with S = HPHᵀ + R: what it adds to the short form is of second
+   * order in an error of K. Upper triangle, then mirrored.
+   */
+  private joseph(p: Float64Array, ph: Float64Array, s: Float64Array): void {
+    const { gain } = this;
     for (let i = 0; i < STATES; i += 1) {
       const row = i * STATES;
-      const ka = gain[i * MAX_ROWS]!;
-      const kb = gain[i * MAX_ROWS + 1]!;
-      const kc = gain[i * MAX_ROWS + 2]!;
-      for (let j = 0; j < STATES; j += 1) {
-        const at = j * MAX_ROWS;
-        reduced[row + j] = p[row + j]! - ka * ph[at]! - kb * ph[at + 1]! - kc * ph[at + 2]!;
-      }
-    }
-    for (let i = 0; i < STATES; i += 1) {
-      const row = i * STATES;
-      let a = gain[i * MAX_ROWS]! * r[0]!;
-      let b = gain[i * MAX_ROWS + 1]! * r[1]!;
-      let c = gain[i * MAX_ROWS + 2]! * r[2]!;
-      for (let n = 0; n < columnCount; n += 1) {
-        const j = columns[n]!;
-        const value = reduced[row + j]!;
-        a -= value * h[j]!;
-        b -= value * h[STATES + j]!;
-        c -= value * h[2 * STATES + j]!;
-      }
+      const own = i * MAX_ROWS;
+      const ka = gain[own]!;
+      const kb = gain[own + 1]!;
+      const kc = gain[own + 2]!;
+      const ra = ka * s[0]! + kb * s[3]! + kc * s[6]! - ph[own]!;
+      const rb = ka * s[1]! + kb * s[4]! + kc * s[7]! - ph[own + 1]!;
+      const rc = ka * s[2]! + kb * s[5]! + kc * s[8]! - ph[own + 2]!;
       for (let j = i; j < STATES; j += 1) {
         const at = j * MAX_ROWS;
-        const value = reduced[row + j]! + a * gain[at]! + b * gain[at + 1]! + c * gain[at + 2]!;
+        const value =
+          p[row + j]! -
+          (ka * ph[at]! + kb * ph[at + 1]! + kc * ph[at + 2]!) +
+          (ra * gain[at]! + rb * gain[at + 1]! + rc * gain[at + 2]!);
         p[row + j] = value;
         p[j * STATES + i] = value;
       }
     }
+  }
+
+  /** out = PHᵀ, 15 × MAX_ROWS. */
+  private project(p: Float64Array, out: Float64Array): void {
+    const { h, columns, columnCount } = this;
+    for (let i = 0; i < STATES; i += 1) {
+      const row = i * STATES;
+      let a = 0;
+      let b = 0;
+      let c = 0;
+      for (let n = 0; n < columnCount; n += 1) {
+        const j = columns[n]!;
+        const value = p[row + j]!;
+        a += value * h[j]!;
+        b += value * h[STATES + j]!;
+        c += value * h[2 * STATES + j]!;
+      }
+      out[i * MAX_ROWS] = a;
+      out[i * MAX_ROWS + 1] = b;
+      out[i * MAX_ROWS + 2] = c;
+    }
+  }
+
+  /** out = H(PHᵀ) + R. */
+  private innovationCovariance(ph: Float64Array, out: Float64Array): void {
+    const { h, columns, columnCount, r } = this;
+    for (let a = 0; a < MAX_ROWS; a += 1)
+      for (let b = a; b < MAX_ROWS; b += 1) {
+        let sum = a === b ? r[a]! : 0;
+        for (let n = 0; n < columnCount; n += 1) {
+          const j = columns[n]!;
+          sum += h[a * STATES + j]! * ph[j * MAX_ROWS + b]!;
+        }
+        out[a * MAX_ROWS + b] = sum;
+        out[b * MAX_ROWS + a] = sum;
+      }
   }
 }
 

@@ -67,9 +67,10 @@ export class ImuIntervals {
       this.bendOfInstants(k, duration);
       return;
     }
-    const scale = (duration * duration) / (before + duration);
-    for (let i = 0; i < 6; i += 1)
-      interval[ANGLE_BEND + i] = scale * (current[i]! / duration - previous[i]! / before);
+    // b·T²/2 with b the change of the mean rate from interval to interval, over half the sum of the two.
+    const own = duration / (before + duration);
+    const other = (own * duration) / before;
+    for (let i = 0; i < 6; i += 1) interval[ANGLE_BEND + i] = own * current[i]! - other * previous[i]!;
   }
 
   /** Increments of sample k over `duration` s by the way the log samples: Δθ (rad), Δv (m/s) into `out`. */

@@ -56,20 +56,49 @@ export class Strapdown {
 
   /** Makes `dcm` from `nav`'s quaternion; to be called after the latter was changed from outside. */
   attitudeChanged(): void {
-    const { nav, dcm } = this;
+    this.renewDcm(0);
+  }
+
+  /** Makes `dcm` from `nav`'s quaternion and adds `weight` × (old + new) to ∫C dt. */
+  private renewDcm(weight: number): void {
+    const { nav, dcm, sumDcm } = this;
     const w = nav[QUAT]!;
     const x = nav[QUAT + 1]!;
     const y = nav[QUAT + 2]!;
     const z = nav[QUAT + 3]!;
-    dcm[0] = w * w + x * x - y * y - z * z;
-    dcm[1] = 2 * (x * y - w * z);
-    dcm[2] = 2 * (x * z + w * y);
-    dcm[3] = 2 * (x * y + w * z);
-    dcm[4] = w * w - x * x + y * y - z * z;
-    dcm[5] = 2 * (y * z - w * x);
-    dcm[6] = 2 * (x * z - w * y);
-    dcm[7] = 2 * (y * z + w * x);
-    dcm[8] = w * w - x * x - y * y + z * z;
+    const ww = w * w;
+    const xx = x * x;
+    const yy = y * y;
+    const zz = z * z;
+    const c0 = ww + xx - yy - zz;
+    const c1 = 2 * (x * y - w * z);
+    const c2 = 2 * (x * z + w * y);
+    const c3 = 2 * (x * y + w * z);
+    const c4 = ww - xx + yy - zz;
+    const c5 = 2 * (y * z - w * x);
+    const c6 = 2 * (x * z - w * y);
+    const c7 = 2 * (y * z + w * x);
+    const c8 = ww - xx - yy + zz;
+    if (weight !== 0) {
+      sumDcm[0] = sumDcm[0]! + weight * (dcm[0]! + c0);
+      sumDcm[1] = sumDcm[1]! + weight * (dcm[1]! + c1);
+      sumDcm[2] = sumDcm[2]! + weight * (dcm[2]! + c2);
+      sumDcm[3] = sumDcm[3]! + weight * (dcm[3]! + c3);
+      sumDcm[4] = sumDcm[4]! + weight * (dcm[4]! + c4);
+      sumDcm[5] = sumDcm[5]! + weight * (dcm[5]! + c5);
+      sumDcm[6] = sumDcm[6]! + weight * (dcm[6]! + c6);
+      sumDcm[7] = sumDcm[7]! + weight * (dcm[7]! + c7);
+      sumDcm[8] = sumDcm[8]! + weight * (dcm[8]! + c8);
+    }
+    dcm[0] = c0;
+    dcm[1] = c1;
+    dcm[2] = c2;
+    dcm[3] = c3;
+    dcm[4] = c4;
+    dcm[5] = c5;
+    dcm[6] = c6;
+    dcm[7] = c7;
+    dcm[8] = c8;
   }
 
   private evaluateLatitude(): void {
@@ -195,16 +224,9 @@ export class Strapdown {
     sumForce[1] = sumForce[1]! + forceE;
     sumForce[2] = sumForce[2]! + forceD;
     sumForce[3] = sumForce[3]! + dt;
-    // ∫C dt by the mean of the step's ends.
-    this.addDcm(half);
     this.rotate();
-    this.attitudeChanged();
-    this.addDcm(half);
-  }
-
-  private addDcm(weight: number): void {
-    const { dcm, sumDcm } = this;
-    for (let i = 0; i < 9; i += 1) sumDcm[i] = sumDcm[i]! + weight * dcm[i]!;
+    // ∫C dt by the mean of the step's ends.
+    this.renewDcm(half);
   }
 
   /** q ← q(−ζ) ⊗ q ⊗ q(σ): the body turns by σ (rad, body axes), the frame by ζ (rad, n axes, tiny). */
