@@ -10,10 +10,12 @@ import type { ImuColumns } from '../types';
 import { ANGLE, ANGLE_BEND, DURATION, ImuIntervals } from '../strapdown/imu-intervals';
 import { NAV_ACCEL_BIAS, NAV_GYRO_BIAS } from '../strapdown/navigation-state';
 import { Strapdown } from '../strapdown/strapdown';
-import { findClipping, type ClippedRun } from './clipping';
+import { findClipping } from './clipping';
+import { ClippingWatch } from './clipping-watch';
 import { resetAttitudeCovariance } from './attitude-feedback';
 import { correctState } from './correct-state';
 import type { BudgetShare, ErrorBudget } from './error-budget';
+import type { AidName, FilterListener, FilterSnapshot, GroupName } from './filter-types';
 import type { Fixes } from './fixes';
 import { GapBridge } from './gap-bridge';
 import { Gate } from './gate';
@@ -31,35 +33,6 @@ import { ATTITUDE, STATES } from './states';
 const SAME_TIME_S = 1e-7;
 /** Gaps are bridged in steps of at most this, s. */
 const GAP_STEP_S = 0.02;
-
-export type AidName = 'zero-velocity' | 'zero-rotation' | 'non-holonomic';
-export type GroupName = 'position' | 'velocity';
-
-/** Hears of every measurement group that was judged, before it changes the state. */
-export interface FilterListener {
-  onInnovation(
-    group: GroupName | AidName,
-    timeS: number,
-    axes: number,
-    update: MeasurementUpdate,
-    accepted: boolean,
-  ): void;
-  onWarning(code: string, sentence: string, timeS: number): void;
-}
-
-/** All that a filter carries from one sample to the next. */
-export interface FilterSnapshot {
-  strapdown: readonly Float64Array[];
-  p: Float64Array;
-  sample: number;
-  fix: number;
-  clipped: readonly [number, number];
-  extraNoise: readonly [number, number];
-  heading: readonly number[];
-  aids: readonly number[];
-  budget: Float64Array[] | null;
-  gates: readonly (readonly number[])[];
-}
 
 export class ErrorStateFilter {
   readonly strapdown: Strapdown;
@@ -83,10 +56,7 @@ export class ErrorStateFilter {
   readonly noise: ProcessNoise;
   private readonly stepS: number;
   private readonly headingWatch = new HeadingWatch();
-  private readonly clipped: readonly ClippedRun[];
-  /** Next clipped run to come, and the sample it begins at. */
-  private nextClipped = 0;
-  private clippedFrom = Infinity;
+  private readonly clipping: ClippingWatch;
 
   /** `withheld`: bits of `withheldBy` for each fix. */
   constructor(
@@ -113,7 +83,7 @@ export class ErrorStateFilter {
     const { nominalS } = this.intervals;
     const rateNoise = nominalS > 0 ? (2.5 * this.noise.gyroWhite) / nominalS : 0;
     this.models = new GnssModels(leverArmM, rateNoise);
-    this.clipped = findClipping(imu, parameters.clipping);
+    this.clipping = new ClippingWatch(findClipping(imu, parameters.clipping));
     this.stepS = parameters.mechanisation.covarianceIntervalS - 0.5 * this.intervals.nominalS;
   }
 
@@ -124,12 +94,7 @@ export class ErrorStateFilter {
     this.strapdown.start(nav);
     this.p.set(p);
     this.watchHeading();
-    this.awaitClipping();
-  }
-
-  private awaitClipping(): void {
-    this.nextClipped = this.clipped.findIndex((run) => run.from > this.sample);
-    this.clippedFrom = this.clipped[this.nextClipped]?.from ?? Infinity;
+    this.clipping.start(sample);
   }
 
   private watchHeading(): void {
@@ -149,7 +114,7 @@ export class ErrorStateFilter {
     const end = imu.timeS[k]!;
     const duration = end - start;
     if (intervals.isGap) this.reportGap(start, end);
-    if (k >= this.clippedFrom) this.enterClipping(k);
+    if (k >= this.clipping.from) this.enterClipping(k);
     let from = 0;
     while (this.fix < fixes.count && fixes.timeS[this.fix]! <= end + SAME_TIME_S) {
       const j = this.fix;
@@ -164,14 +129,14 @@ export class ErrorStateFilter {
     if (from < 1) this.move(from, 1);
     this.sample = k;
     if (this.strapdown.sumForce[3]! >= this.stepS) this.covarianceStep();
-    if (k >= this.clippedFrom) this.leaveClipping(k);
+    if (k >= this.clipping.from) this.leaveClipping(k);
     this.aids?.apply(k, this);
   }
 
   /** Clipped samples: noise for what they may have missed, from the run's first sample to its last. */
   private enterClipping(k: number): void {
-    const run = this.clipped[this.nextClipped]!;
-    if (k > run.from) return;
+    const { run } = this.clipping;
+    if (run === null || k > run.from) return;
     this.covarianceStep();
     this.noise.gyroExtra = run.gyroNoise;
     this.noise.accelExtra = run.accelNoise;
@@ -183,12 +148,11 @@ export class ErrorStateFilter {
   }
 
   private leaveClipping(k: number): void {
-    if (k < this.clipped[this.nextClipped]!.to) return;
+    if (k < this.clipping.run!.to) return;
     this.covarianceStep();
     this.noise.gyroExtra = 0;
     this.noise.accelExtra = 0;
-    this.nextClipped += 1;
-    this.clippedFrom = this.clipped[this.nextClipped]?.from ?? Infinity;
+    this.clipping.next();
   }
 
   /** Strapdown over a part of the loaded interval; a gap goes in small steps with noise of its own. */
@@ -356,7 +320,7 @@ export class ErrorStateFilter {
       p: this.p.slice(),
       sample: this.sample,
       fix: this.fix,
-      clipped: [this.nextClipped, this.clippedFrom],
+      clipped: this.clipping.save(),
       extraNoise: [this.noise.gyroExtra, this.noise.accelExtra],
       heading: this.headingWatch.save(),
       aids: this.aids?.save() ?? [],
@@ -370,7 +334,7 @@ export class ErrorStateFilter {
     this.p.set(saved.p);
     this.sample = saved.sample;
     this.fix = saved.fix;
-    [this.nextClipped, this.clippedFrom] = saved.clipped;
+    this.clipping.restore(saved.clipped);
     [this.noise.gyroExtra, this.noise.accelExtra] = saved.extraNoise;
     this.headingWatch.restore(saved.heading);
     this.aids?.restore(saved.aids);

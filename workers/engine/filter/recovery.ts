@@ -3,7 +3,8 @@
  * group measures is set from the fix; where velocity is in doubt too, attitude and biases are widened by the factor
  * that the rejected innovation shows, so that what made the state run away can be found again.
  */
-import type { ErrorStateFilter, GroupName } from './error-state-filter';
+import type { ErrorStateFilter } from './error-state-filter';
+import type { GroupName } from './filter-types';
 import { biasParameters } from './bias-parameters';
 import { initialBiasVariance } from './bias-models';
 import type { MeasurementUpdate } from './measurement-update';

@@ -1,6 +1,6 @@
 /** Counts what the aids did. */
 import type { AidStatistics } from '@/shared/contracts/runs';
-import type { AidName } from '../filter/error-state-filter';
+import type { AidName } from '../filter/filter-types';
 import type { MeasurementUpdate } from '../filter/measurement-update';
 
 export class AidTally {

@@ -8,7 +8,8 @@
 import { radToDeg } from '@/shared/units';
 import { align, type Alignment } from '../alignment/align';
 import { initialBudget } from '../alignment/initial-covariance';
-import { ErrorStateFilter, type FilterListener, type FilterSnapshot } from '../filter/error-state-filter';
+import { ErrorStateFilter } from '../filter/error-state-filter';
+import type { FilterListener, FilterSnapshot } from '../filter/filter-types';
 import { ErrorBudget } from '../filter/error-budget';
 import { prepareFixes, withheldBy } from '../filter/fixes';
 import { STATES } from '../filter/states';

@@ -2,7 +2,8 @@
 import { parametersSchema, type Parameters, type ParametersInput } from '@/shared/contracts/parameters';
 import { scenarioSchema, type Scenario, type ScenarioInput } from '@/shared/contracts/scenarios';
 import { align } from '@/workers/engine/alignment/align';
-import { ErrorStateFilter, type FilterListener } from '@/workers/engine/filter/error-state-filter';
+import { ErrorStateFilter } from '@/workers/engine/filter/error-state-filter';
+import type { FilterListener } from '@/workers/engine/filter/filter-types';
 import { prepareFixes, withheldBy } from '@/workers/engine/filter/fixes';
 import { STATES } from '@/workers/engine/filter/states';
 import { emptyError, ReferenceReader, stateError } from '@/workers/engine/run/reference';
