@@ -20,6 +20,7 @@ async function work(id: number, job: WorkerJob): Promise<void> {
   if (!store || !recordings) throw new Error('A job came before the store was named.');
   const abort = new AbortController();
   current = { id, abort };
+  tell({ type: 'begun', id });
   const helpers = createHelpers(store, recordings, abort.signal, (event) =>
     tell({ type: 'event', id, event }),
   );

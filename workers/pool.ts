@@ -34,6 +34,8 @@ interface Entry {
   reject: (error: Error) => void;
   /** The caller has its answer; the process may still be winding the job up. */
   settled: boolean;
+  /** Processes that were given it, and those that have begun on it. */
+  sends: number;
   tries: number;
   /** Until then it waits for the process that holds its recording and is just winding up, ms. */
   holdUntil: number;
@@ -51,6 +53,8 @@ const DEFAULT_CACHE_BYTES = 512 * 1024 * 1024;
 const HOLD_MS = 40;
 /** Processes in a row that end before they are ready, after which the pool stops trying by itself. */
 const MAX_FAILED_STARTS = 3;
+/** Processes that a job is given to before it is given up: one that ends them at once never says that it has begun. */
+const MAX_SENDS = 4;
 const BULK_KINDS: ReadonlySet<JobKind> = new Set(['decode', 'scenario']);
 
 export class WorkerPool implements Pool {
@@ -88,7 +92,7 @@ export class WorkerPool implements Pool {
       const bulk = BULK_KINDS.has(job.kind) || (job.kind === 'run' && options.latestKey === undefined);
       entry = {
         id: this.nextId++, job, options, bulk, resolve, reject,
-        settled: false, tries: 0, holdUntil: 0,
+        settled: false, sends: 0, tries: 0, holdUntil: 0,
       }; // prettier-ignore
       this.accept(entry);
     });
@@ -203,7 +207,7 @@ export class WorkerPool implements Pool {
   private start(entry: Entry, slot: Slot): void {
     this.waiting.splice(this.waiting.indexOf(entry), 1);
     slot.entry = entry;
-    entry.tries += 1;
+    entry.sends += 1;
     if (entry.options.affinity !== undefined) slot.worker.markServed(entry.options.affinity);
     slot.worker.send({ type: 'job', id: entry.id, job: entry.job });
   }
@@ -218,6 +222,10 @@ export class WorkerPool implements Pool {
     const { entry } = slot;
     if (!entry || entry.id !== message.id) return;
     if (message.type === 'event') return this.report(entry, message.event);
+    if (message.type === 'begun') {
+      entry.tries += 1;
+      return;
+    }
     slot.entry = null;
     if (message.type === 'result') this.settle(entry, { result: message.result });
     else if (message.type === 'cancelled') this.settle(entry, new JobCancelled(false));
@@ -249,12 +257,18 @@ export class WorkerPool implements Pool {
     const { entry } = slot;
     slot.entry = null;
     if (entry && !entry.settled) {
-      if (entry.options.retryOnCrash && entry.tries < 2 && !this.closing) this.waiting.unshift(entry);
+      if (this.mayGoAgain(entry)) this.waiting.unshift(entry);
       else this.settle(entry, new WorkerCrashed(exit.signal));
     }
     if (this.closing) return;
     this.options.log.warn({ workerPid: pid, ...exit }, 'A worker process ended and is replaced.');
     this.replace(slot);
+  }
+
+  /** A job that was sent to a process already dead, its end not yet heard of, did not kill that one. */
+  private mayGoAgain({ options, tries, sends }: Entry): boolean {
+    if (this.closing || sends >= MAX_SENDS) return false;
+    return tries === 0 || (options.retryOnCrash === true && tries < 2);
   }
 
   /** Clears away what processes that died in the middle of a write left in the store; `pid`: that one alone. */

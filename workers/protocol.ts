@@ -145,6 +145,8 @@ export type ToWorker =
 /** Child → parent. */
 export type FromWorker =
   | { type: 'ready' }
+  /** The job has reached the process: from here on its end is the job's crash. */
+  | { type: 'begun'; id: number }
   | { type: 'event'; id: number; event: JobEvent }
   | { type: 'result'; id: number; result: JobResults[JobKind] }
   | { type: 'cancelled'; id: number }

@@ -162,6 +162,30 @@ test('kill -9 with retryOnCrash: the run is done again and gives what an undistu
   expect((await job.result).resultSha256).toBe(undisturbed.resultSha256);
 }, 90_000);
 
+test('a job given to processes that are already dead is not counted against it', async () => {
+  const two = open(2);
+  await two.ready();
+  const dead = two.pids;
+
+  for (const pid of dead) process.kill(pid, 'SIGKILL');
+  const job = two.submit(runOf('short', 'after-deaths'));
+
+  await expect(job.result).resolves.toBeDefined();
+  expect(two.pids.filter((pid) => dead.includes(pid))).toEqual([]);
+}, 60_000);
+
+test('kill -9 of every process at once: the run that one of them computed is done again', async () => {
+  const two = open(2);
+  await two.ready();
+  const first = firstFrame();
+  const job = two.submit(runOf('long', 'all-killed'), { onEvent: first.onEvent, retryOnCrash: true });
+  await first.arrived;
+
+  for (const pid of two.pids) process.kill(pid, 'SIGKILL');
+
+  await expect(job.result).resolves.toBeDefined();
+}, 90_000);
+
 test('people at a screen go before bulk work', async () => {
   const one = open(1);
   const order: string[] = [];
