@@ -1,23 +1,40 @@
 /** What differs between two parameter sets, in lines for people. Pure. */
 import type { Parameters } from '@/shared/contracts/parameters';
 import { formatNumber } from '@/shared/format';
-import { defaultUnit, toDisplay } from '@/shared/units';
+import { FIELD_GROUPS, FIELDS, type ParameterField } from './parameter-fields';
 import { differences, readPath, type ParameterValue } from './parameter-path';
 import { GROUP_TITLES, SLIDERS } from './parameter-specs';
+import { shownValue, unitSymbol } from './parameter-words';
 
-/** "Gyro white noise (ARW): 0.299 → 0.32 °/√h". */
+/** "Gyro white noise (ARW): 0.299 → 0.32 °/√h", "Stops, zero-velocity update: off → on". */
 export function describeChanges(from: Parameters, to: Parameters): string[] {
-  return differences(from, to).map(({ path, value }) => {
-    const spec = SLIDERS.find((one) => one.path === path);
-    const before = readPath(from, path);
-    if (!spec) return `${path}: ${plain(before)} → ${plain(value)}`;
-    const unit = defaultUnit(spec.quantity);
-    const shown = (one: ParameterValue) =>
-      typeof one === 'number' ? formatNumber(toDisplay(one, unit)) : plain(one);
-    const label = `${spec.label[0]!.toLowerCase()}${spec.label.slice(1)}`;
-    return `${GROUP_TITLES[spec.group]} ${label}: ${shown(before)} → ${shown(value)} ${unit.symbol}`;
-  });
+  return differences(from, to).map(({ path, value }) => describe(path, readPath(from, path), value));
 }
+
+function describe(path: string, before: ParameterValue, after: ParameterValue): string {
+  const slider = SLIDERS.find((one) => one.path === path);
+  if (slider) {
+    const field: ParameterField = { ...slider, group: slider.group };
+    return `${GROUP_TITLES[slider.group]} ${lower(slider.label)}: ${change(field, before, after)}`;
+  }
+  const field = FIELDS.find((one) => one.path === path);
+  return field
+    ? `${FIELD_GROUPS[field.group]}, ${lower(field.label)}: ${change(field, before, after)}`
+    : `${path}: ${plain(before)} → ${plain(after)}`;
+}
+
+function change(field: ParameterField, before: ParameterValue, after: ParameterValue): string {
+  const shown = (value: ParameterValue) => {
+    const one = shownValue(field, value);
+    return one === null ? (field.unset ?? 'not set') : typeof one === 'number' ? formatNumber(one) : one;
+  };
+  const unit = unitSymbol(field);
+  return `${shown(before)} → ${shown(after)}${unit && after !== null ? ` ${unit}` : ''}`;
+}
+
+/** The first letter small where it begins a word and not an abbreviation. */
+const lower = (label: string) =>
+  /^[A-Z][a-z]/.test(label) ? label[0]!.toLowerCase() + label.slice(1) : label;
 
 const plain = (value: ParameterValue): string =>
   value === null ? 'not set' : Array.isArray(value) ? value.join(', ') : String(value);
