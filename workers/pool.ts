@@ -51,6 +51,8 @@ interface Slot {
 const DEFAULT_CACHE_BYTES = 512 * 1024 * 1024;
 /** Cancel is heard within about 10 ms; after this the job goes to another process. */
 const HOLD_MS = 40;
+/** The children of a server that was killed end a moment after it, and so after our first sweep, ms. */
+const SECOND_SWEEP_MS = 5000;
 /** Processes in a row that end before they are ready, after which the pool stops trying by itself. */
 const MAX_FAILED_STARTS = 3;
 /** Processes that a job is given to before it is given up: one that ends them at once never says that it has begun. */
@@ -68,6 +70,7 @@ export class WorkerPool implements Pool {
 
   constructor(private readonly options: PoolOptions) {
     this.sweep();
+    setTimeout(() => this.sweep(), SECOND_SWEEP_MS).unref();
     this.fill();
   }
 
@@ -246,14 +249,7 @@ export class WorkerPool implements Pool {
   private bury(slot: Slot, exit: { code: number | null; signal: NodeJS.Signals | null }): void {
     this.slots.splice(this.slots.indexOf(slot), 1);
     const { pid } = slot.worker;
-    if (pid !== undefined) {
-      sweepStore(this.options.store, pid).catch((error: unknown) =>
-        this.options.log.warn(
-          { err: error },
-          'Temporary files of a dead worker process could not be removed.',
-        ),
-      );
-    }
+    if (pid !== undefined) this.sweep(pid);
     const { entry } = slot;
     slot.entry = null;
     if (entry && !entry.settled) {

@@ -69,6 +69,10 @@ export interface RunSpec {
   leverArmM: [number, number, number];
   outages: Outage[];
   outputRateHz: number;
+  /** Also the fixed-interval smoother. */
+  smooth: boolean;
+  /** Also the predicted error of each outage, split by its sources. */
+  errorBudget: boolean;
 }
 export interface RunJob extends RunSpec {
   kind: 'run';
@@ -108,13 +112,15 @@ export interface RunSeriesJob {
   toS: number | null;
   points: number;
 }
-/** Writes a file under storeKeys.export and answers its key. A rate above the kept one runs the filter again. */
+/** Writes a file under storeKeys.export and answers its key. Another rate than the kept one, or smoothing that was not kept, runs the filter again. */
 export interface RunExportJob {
   kind: 'run-export';
   run: RunSpec;
   format: 'solution-csv' | 'innovations-csv' | 'geojson' | 'kml' | 'gpx';
   /** Hz; null: the kept rate. */
   rateHz: number | null;
+  /** The smoothed solution in place of the filter's. */
+  smoothed: boolean;
   name: string;
   /** UTC of the axis' zero where known, ISO 8601. */
   utcOrigin: string | null;

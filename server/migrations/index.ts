@@ -3,6 +3,7 @@ import { createAccounts } from './2026-01-10-create-accounts';
 import { createMessages } from './2026-01-10-create-messages';
 import { createRecordings } from './2026-01-11-create-recordings';
 import { createRunsAndSets } from './2026-01-12-create-runs-and-sets';
+import { addSmoothingAndBudget } from './2026-12-01-add-smoothing-and-budget';
 import { runMigrations, type Migration } from './runner';
 
 export const MIGRATIONS: readonly Migration[] = [
@@ -10,6 +11,7 @@ export const MIGRATIONS: readonly Migration[] = [
   createMessages,
   createRecordings,
   createRunsAndSets,
+  addSmoothingAndBudget,
 ];
 
 /** Brings the database at `url` up to date; answers the names that were applied. */

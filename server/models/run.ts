@@ -31,6 +31,8 @@ export class Run extends Model<InferAttributes<Run>, InferCreationAttributes<Run
   declare leverArmM: Vector3;
   declare outages: Outage[];
   declare outputRateHz: number;
+  declare smooth: CreationOptional<boolean>;
+  declare errorBudget: CreationOptional<boolean>;
   declare hasSeries: CreationOptional<boolean>;
   declare summary: CreationOptional<RunSummary | null>;
   declare provenance: CreationOptional<Provenance | null>;
@@ -56,6 +58,8 @@ export const bindRun = (sequelize: Sequelize) =>
     leverArmM: DataTypes.JSONB,
     outages: DataTypes.JSONB,
     outputRateHz: DataTypes.DOUBLE,
+    smooth: { type: DataTypes.BOOLEAN, defaultValue: false },
+    errorBudget: { type: DataTypes.BOOLEAN, defaultValue: false },
     hasSeries: { type: DataTypes.BOOLEAN, defaultValue: false },
     summary: DataTypes.JSONB,
     provenance: DataTypes.JSONB,

@@ -9,6 +9,8 @@ export const presentRunListItem = (row: RunRow): RunListItem => ({
   progress: row.progress,
   failure: row.failure ?? null,
   outputRateHz: row.outputRateHz,
+  smooth: row.smooth,
+  errorBudget: row.errorBudget,
   createdAt: row.createdAt.toISOString(),
   createdBy: row.createdBy?.name ?? '',
   finishedAt: row.finishedAt?.toISOString() ?? null,

@@ -11,7 +11,6 @@ import {
   solutionQuerySchema,
 } from '@/shared/contracts/runs';
 import type { RunExportJob } from '@/workers';
-import { invalid } from '../errors';
 import { presentPage } from '../presenters/page';
 import { presentRun, presentRunListItem } from '../presenters/run';
 import {
@@ -123,11 +122,8 @@ export const runRoutes: Route[] = [
     success: { status: 200, description: 'The file', binary: ['text/csv'] },
     failures: { 409: 'The series are not kept' },
     handle: async ({ ctx, actor, params, query, res }) => {
-      if (query.smoothed === 'true') {
-        const message = 'This version has no smoother yet: leave it out, or send false.';
-        throw invalid(message, { errors: [{ path: 'smoothed', message }] });
-      }
-      return sendFile(res, CSV, await exportRun(ctx, actor, params.id, 'solution-csv', query.rate ?? null));
+      const options = { rateHz: query.rate ?? null, smoothed: query.smoothed === 'true' };
+      return sendFile(res, CSV, await exportRun(ctx, actor, params.id, 'solution-csv', options));
     },
   }),
   ...TRACKS.map(({ path, format, type, summary }) =>
@@ -142,7 +138,7 @@ export const runRoutes: Route[] = [
       success: { status: 200, description: 'The file', binary: [type.split(';')[0]!] },
       failures: { 409: 'The series are not kept' },
       handle: async ({ ctx, actor, params, res }) =>
-        sendFile(res, type, await exportRun(ctx, actor, params.id, format, null)),
+        sendFile(res, type, await exportRun(ctx, actor, params.id, format)),
     }),
   ),
 ];

@@ -44,13 +44,15 @@ export function launch(ctx: Context, run: Run, recording: Recording): void {
 }
 
 /** What a worker must know of a run. */
-export const specOf = ({ id, recordingId, parameters, leverArmM, outages, outputRateHz }: Run): RunSpec => ({
-  runId: id,
-  recordingId,
-  parameters,
-  leverArmM: [...leverArmM],
-  outages,
-  outputRateHz,
+export const specOf = (run: Run): RunSpec => ({
+  runId: run.id,
+  recordingId: run.recordingId,
+  parameters: run.parameters,
+  leverArmM: [...run.leverArmM],
+  outages: run.outages,
+  outputRateHz: run.outputRateHz,
+  smooth: run.smooth,
+  errorBudget: run.errorBudget,
 });
 
 async function see(

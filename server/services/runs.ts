@@ -23,13 +23,9 @@ const BULKY = ['parameters', 'summary', 'provenance', 'outages'];
 
 /** Inserts the row and sets the run going. Throws 409 for a recording that is not ready, 422 for what cannot be run. */
 export async function createRun(ctx: Context, actor: Actor, input: RunCreate): Promise<Run> {
-  if (input.smooth) {
-    const message = 'This version has no smoother yet: leave it out, or send false.';
-    throw invalid(message, { errors: [{ path: 'smooth', message }] });
-  }
   const recording = await getReadyRecording(ctx, actor, input.recordingId);
   checkOutages(input.outages, recording);
-  const { parameters, outages, outputRateHz, benchId = null } = input;
+  const { parameters, outages, outputRateHz, smooth, errorBudget, benchId = null } = input;
   const run = await ctx.db.Run.create({
     workspaceId: actor.workspaceId,
     recordingId: recording.id,
@@ -39,6 +35,8 @@ export async function createRun(ctx: Context, actor: Actor, input: RunCreate): P
     leverArmM: parameters.leverArmM ?? recording.vehicle?.leverArmM ?? [0, 0, 0],
     outages,
     outputRateHz,
+    smooth,
+    errorBudget,
     instanceId: ctx.instance.id,
   });
   launch(ctx, run, recording);
@@ -112,15 +110,15 @@ export async function exportRun(
   actor: Actor,
   id: string,
   format: RunExportJob['format'],
-  rateHz: number | null,
+  { rateHz = null, smoothed = false }: { rateHz?: number | null; smoothed?: boolean } = {},
 ): Promise<Download> {
   const run = await getRunWithSeries(ctx, actor, id);
   const ending = EXTENSIONS[format];
-  const name = rateHz === null ? ending : `${rateHz}-hz-${ending}`;
+  const name = `${rateHz === null ? '' : `${rateHz}-hz-`}${smoothed ? 'smoothed-' : ''}${ending}`;
   const key = storeKeys.export(run.id, name);
   if (!(await ctx.store.has(key))) {
     const utcOrigin = run.recording?.timeOrigin?.utc ?? null;
-    const job = { kind: 'run-export', run: specOf(run), format, rateHz, name, utcOrigin } as const;
+    const job = { kind: 'run-export', run: specOf(run), format, rateHz, smoothed, name, utcOrigin } as const;
     await ctx.pool.submit(job, { affinity: run.recordingId, retryOnCrash: true }).result;
   }
   const title = safeFileName(run.recording?.name ?? 'run');

@@ -33,7 +33,14 @@ export const runCreateSchema = z.object({
   parameters: parametersSchema.prefault({}),
   outages: outagesSchema.default([]),
   outputRateHz: z.number().min(0.1).max(1000).default(10).describe('Rate of the kept solution, Hz.'),
-  smooth: z.boolean().optional().describe('Run the fixed-interval smoother too.'),
+  smooth: z
+    .boolean()
+    .default(false)
+    .describe('Run the fixed-interval smoother too: takes several times as long.'),
+  errorBudget: z
+    .boolean()
+    .default(false)
+    .describe('Split the predicted error in each outage by its sources: takes several times as long.'),
   benchId: z
     .uuid()
     .optional()
@@ -211,6 +218,8 @@ export const runSchema = z.object({
   parameters: parametersSchema,
   outages: z.array(outageSchema),
   outputRateHz: z.number(),
+  smooth: z.boolean(),
+  errorBudget: z.boolean(),
   createdAt: isoTimeSchema,
   createdBy: z.string(),
   finishedAt: isoTimeSchema.nullable(),
@@ -237,7 +246,10 @@ export const runListQuerySchema = z.object({
 
 export const solutionQuerySchema = z.object({
   rate: z.coerce.number().min(0.01).max(2000).optional().describe('Hz; left out: the kept rate.'),
-  smoothed: z.enum(['true', 'false']).optional(),
+  smoothed: z
+    .enum(['true', 'false'])
+    .default('false')
+    .describe('The smoothed solution; where the run kept none, it is computed now.'),
 });
 export const runSeriesQuerySchema = z.object({
   from: z.coerce.number().optional(),

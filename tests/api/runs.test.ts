@@ -106,8 +106,33 @@ describe('runs', () => {
       .split('\n');
     expect(rows.length).toBeGreaterThan(60);
     expect(rows.length).toBeLessThan(90);
-    const smoothed = await engineer.get(`/runs/${id}/solution.csv?smoothed=true`);
-    expect(problemOf(smoothed).errors?.[0]?.path).toBe('smoothed');
+  });
+
+  it('smooth and split the error by its sources where asked', async () => {
+    const { id } = await start({ outages: [{ startS: 40, endS: 60 }], smooth: true, errorBudget: true });
+    const run = await ended(id);
+    expect(run).toMatchObject({ state: 'done', smooth: true, errorBudget: true });
+    const [window] = run.summary!.outages;
+    for (const [at, { shares }] of window!.budget!.entries()) {
+      const sum = Math.hypot(...shares.map(({ horizontalM }) => horizontalM));
+      expect(sum / window!.points[at]!.predictedHorizontalM).toBeCloseTo(1, 3);
+    }
+    const text = async (query: string) =>
+      (await engineer.get(`/runs/${id}/solution.csv${query}`)).bytes.toString('utf8').trim().split('\n');
+    const [filtered, smoothed] = [await text(''), await text('?smoothed=true')];
+    expect(smoothed[0]).toBe(filtered[0]);
+    expect(smoothed).toHaveLength(filtered.length);
+    const sigmaNorth = (line: string) => Number(line.split(',')[SOLUTION_COLUMNS.indexOf('sigma_n_m')]);
+    expect(sigmaNorth(smoothed[300]!)).toBeLessThan(sigmaNorth(filtered[300]!));
+  });
+
+  it('are smoothed afterwards as well: what was not kept is computed', async () => {
+    const [plain, smooth] = [await start(), await start({ smooth: true })];
+    const file = async (id: string) => {
+      await ended(id);
+      return (await engineer.get(`/runs/${id}/solution.csv?smoothed=true`)).bytes.toString('utf8');
+    };
+    expect(await file(plain.id)).toBe(await file(smooth.id));
   });
 
   it('answer their curves as one frame, whole or a part', async () => {
@@ -234,7 +259,7 @@ describe('runs', () => {
       status: 422,
       path: 'outages.0',
     });
-    expect(await refuse({ smooth: true })).toEqual({ status: 422, path: 'smooth' });
+    expect(await refuse({ smooth: 'yes' })).toEqual({ status: 422, path: 'smooth' });
     expect(await refuse({ recordingId: 'x' })).toEqual({ status: 422, path: 'recordingId' });
     expect((await engineer.post('/runs', { recordingId: randomUUID() })).status).toBe(404);
   });

@@ -60,7 +60,7 @@ describe('a server that is killed', () => {
     const { items } = (await admin.get('/recordings')).body as { items: Recording[] };
     expect(items.map((item) => item.name)).toEqual(['Confirmed']);
     expect(await db.Recording.count()).toBe(1);
-    expect(stored().every((key) => key.includes(confirmed.id))).toBe(true);
+    await until('nothing else is left', () => stored().every((key) => key.includes(confirmed.id)));
   });
 
   it('between keeping the files and confirming: they are cleared away', async () => {

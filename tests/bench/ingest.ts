@@ -114,6 +114,8 @@ function runJob(i: number): RunJob {
     leverArmM: [0, 0, 0],
     outages: [{ startS: 600, endS: 660, withhold: 'gnss' }],
     outputRateHz: 10,
+    smooth: false,
+    errorBudget: false,
     framePoints: 1500,
   };
 }

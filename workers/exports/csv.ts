@@ -1,18 +1,21 @@
 /** A run's tables as CSV: numbers in full, so that nothing is lost on the way; empty where a value is missing. */
 import { INNOVATION_COLUMNS, SOLUTION_COLUMNS } from '@/shared/contracts/runs';
-import type { InnovationTable } from '../engine/types';
+import type { InnovationTable, SolutionTable } from '../engine/types';
 import type { RunTables } from '../recordings/results';
 
+/** Not a state of its own: `cov_ne_m2` is for the ellipses on screen. */
+const KNOWN: ReadonlySet<string> = new Set([...SOLUTION_COLUMNS, 'cov_ne_m2']);
 const ROWS_A_PIECE = 2000;
 const CHANNELS = {
   position: ['position_n_m', 'position_e_m', 'position_d_m'],
   velocity: ['velocity_n_m_s', 'velocity_e_m_s', 'velocity_d_m_s'],
 } as const;
 
-/** One row an output epoch, columns as SOLUTION_COLUMNS. */
-export function* solutionCsv({ solution }: RunTables): Generator<string> {
-  const columns = SOLUTION_COLUMNS.map((name) => solution[name]!);
-  yield `${SOLUTION_COLUMNS.join(',')}\n`;
+/** One row an output epoch: SOLUTION_COLUMNS, then the states that the run had beside them. */
+export function* solutionCsv(solution: SolutionTable): Generator<string> {
+  const names = [...SOLUTION_COLUMNS, ...Object.keys(solution).filter((name) => !KNOWN.has(name))];
+  const columns = names.map((name) => solution[name]!);
+  yield `${names.join(',')}\n`;
   yield* pieces(solution.time_s!.length, (row) => columns.map((column) => cell(column[row]!)).join(','));
 }
 

@@ -1,4 +1,4 @@
-/** A run as a file for other programs. A rate other than the kept one runs the filter again. */
+/** A run as a file for other programs. What was not kept (another rate, the smoothed solution) is computed again. */
 import { Readable } from 'node:stream';
 import { createRun } from '../engine';
 import { innovationsCsv, solutionCsv } from '../exports/csv';
@@ -6,7 +6,7 @@ import { trackGeoJson, trackGpx, trackKml, type AboveSeaLevel } from '../exports
 import type { RunExportJob } from '../protocol';
 import { readRunTables, type RunTables } from '../recordings/results';
 import { safeFileName } from '../store/keys';
-import { storeKeys } from '../store/types';
+import { storeKeys, StoreKeyMissing } from '../store/types';
 import type { JobHelpers } from './helpers';
 import { drive, requestOf } from './run';
 
@@ -25,10 +25,12 @@ export async function runExport(
 }
 
 async function tablesFor(job: RunExportJob, helpers: JobHelpers): Promise<RunTables> {
-  const { run, rateHz } = job;
-  if (rateHz === null || rateHz === run.outputRateHz) return readRunTables(helpers.store, run.runId);
+  const { run, rateHz, smoothed } = job;
+  if ((rateHz === null || rateHz === run.outputRateHz) && (run.smooth || !smoothed))
+    return readRunTables(helpers.store, run.runId);
+  const spec = { ...run, outputRateHz: rateHz ?? run.outputRateHz, smooth: smoothed, errorBudget: false };
   const { columns } = await helpers.recordings.load(run.recordingId);
-  const engineRun = createRun(columns, requestOf({ ...run, outputRateHz: rateHz }));
+  const engineRun = createRun(columns, requestOf(spec));
   const result = await drive(engineRun, helpers, null);
   return { ...result, origin: engineRun.origin, extentS: engineRun.extentS };
 }
@@ -37,7 +39,7 @@ async function textOf(job: RunExportJob, tables: RunTables): Promise<Iterable<st
   const info = { name: job.name.replace(/\.[a-z0-9]+$/i, ''), utcOrigin: job.utcOrigin };
   switch (job.format) {
     case 'solution-csv':
-      return solutionCsv(tables);
+      return solutionCsv(solutionOf(job, tables));
     case 'innovations-csv':
       return innovationsCsv(tables);
     case 'geojson':
@@ -47,6 +49,12 @@ async function textOf(job: RunExportJob, tables: RunTables): Promise<Iterable<st
     case 'gpx':
       return trackGpx(tables, info, await aboveSeaLevel());
   }
+}
+
+function solutionOf(job: RunExportJob, { solution, smoothed }: RunTables) {
+  if (!job.smoothed) return solution;
+  if (!smoothed) throw new StoreKeyMissing(storeKeys.smoothed(job.run.runId));
+  return smoothed;
 }
 
 /** EGM96's grid is two megabytes: it is read only for the formats that count from sea level. */

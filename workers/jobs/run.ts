@@ -44,6 +44,8 @@ export const requestOf = (spec: RunSpec) => ({
   leverArmM: spec.leverArmM,
   outages: spec.outages,
   outputRateHz: spec.outputRateHz,
+  smooth: spec.smooth,
+  errorBudget: spec.errorBudget,
 });
 
 /** Runs to the end in slices short enough that cancel is heard at once. `computeS` is the time spent in the filter. */

@@ -4,7 +4,7 @@ import type { InnovationTable, RunResult } from '../engine/types';
 import { storeKeys, type Store } from '../store/types';
 import { readTable, writeTable, type Columns } from './arrow-file';
 
-export type RunTables = Pick<RunResult, 'solution' | 'position' | 'velocity' | 'coasting'> & {
+export type RunTables = Pick<RunResult, 'solution' | 'position' | 'velocity' | 'coasting' | 'smoothed'> & {
   origin: { latDeg: number; lonDeg: number; heightM: number };
   extentS: readonly [number, number];
 };
@@ -14,7 +14,7 @@ const INNOVATION_FILE_COLUMNS = [
   'time_s', 'innovation_n', 'innovation_e', 'innovation_d', 'sigma_n', 'sigma_e', 'sigma_d', 'nis', 'accepted',
 ] as const; // prettier-ignore
 
-/** Writes all files of a run; answers the SHA-256 over them in the order solution, innovations, coasting. */
+/** Writes all files of a run; answers the SHA-256 over them in the order solution, innovations, coasting, smoothed. */
 export async function writeRunTables(store: Store, runId: string, tables: RunTables): Promise<string> {
   const { origin, extentS } = tables;
   const head = new Map([
@@ -30,6 +30,7 @@ export async function writeRunTables(store: Store, runId: string, tables: RunTab
     writeTable(store, storeKeys.solution(runId), tables.solution, head),
     writeTable(store, storeKeys.innovations(runId), innovations, split),
     writeTable(store, storeKeys.coasting(runId), tables.coasting),
+    ...(tables.smoothed ? [writeTable(store, storeKeys.smoothed(runId), tables.smoothed)] : []),
   ]);
   const hash = createHash('sha256');
   for (const file of written) hash.update(file.sha256, 'hex');
@@ -38,10 +39,11 @@ export async function writeRunTables(store: Store, runId: string, tables: RunTab
 
 /** Throws StoreKeyMissing where the run's files are gone. */
 export async function readRunTables(store: Store, runId: string): Promise<RunTables> {
-  const [solution, innovations, coasting] = await Promise.all([
+  const [solution, innovations, coasting, smoothed] = await Promise.all([
     readTable(store, storeKeys.solution(runId)),
     readTable(store, storeKeys.innovations(runId)),
     readTable(store, storeKeys.coasting(runId)),
+    readSmoothed(store, runId),
   ]);
   const [latDeg, lonDeg, heightM] = JSON.parse(solution.metadata.get('origin') ?? '[0,0,0]') as number[];
   const [startS, endS] = JSON.parse(solution.metadata.get('extent_s') ?? '[0,0]') as number[];
@@ -51,9 +53,15 @@ export async function readRunTables(store: Store, runId: string): Promise<RunTab
     position: innovationTable(innovations.columns, 0, positionRows),
     velocity: innovationTable(innovations.columns, positionRows, innovations.rows),
     coasting: coasting.columns,
+    smoothed,
     origin: { latDeg: latDeg!, lonDeg: lonDeg!, heightM: heightM! },
     extentS: [startS!, endS!],
   };
+}
+
+async function readSmoothed(store: Store, runId: string): Promise<Columns | null> {
+  const key = storeKeys.smoothed(runId);
+  return (await store.has(key)) ? (await readTable(store, key)).columns : null;
 }
 
 function innovationColumns(table: InnovationTable): Columns {

@@ -54,6 +54,8 @@ export const storeKeys = {
   gnssOnly: (recordingId: string) => `recordings/${recordingId}/gnss-only.arrow`,
   run: (runId: string) => `runs/${runId}/`,
   solution: (runId: string) => `runs/${runId}/solution.arrow`,
+  /** Only where the run was smoothed. */
+  smoothed: (runId: string) => `runs/${runId}/smoothed.arrow`,
   innovations: (runId: string) => `runs/${runId}/innovations.arrow`,
   coasting: (runId: string) => `runs/${runId}/coasting.arrow`,
   export: (runId: string, name: string) => `runs/${runId}/exports/${name}`,

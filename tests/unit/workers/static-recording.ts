@@ -38,6 +38,8 @@ export function runOf(recordingId: string, runId: string, changes: Partial<RunJo
     leverArmM: [0, 0, 0],
     outages: [],
     outputRateHz: 10,
+    smooth: false,
+    errorBudget: false,
     framePoints: 500,
     ...changes,
   };

@@ -85,6 +85,8 @@ const run = (id: string, state: Run['state'], more: Partial<Run> = {}): Run => (
   parameters: defaultParameters(),
   outages: [],
   outputRateHz: 10,
+  smooth: false,
+  errorBudget: false,
   createdAt: '2031-01-01T00:00:00Z',
   createdBy: 'Ilsa',
   finishedAt: null,

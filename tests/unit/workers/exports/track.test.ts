@@ -20,6 +20,7 @@ const tablesOf = (points: readonly (readonly [number, number])[]): RunTables => 
     position: innovations,
     velocity: innovations,
     coasting: {},
+    smoothed: null,
     origin: { latDeg: 0, lonDeg: 0, heightM: 0 },
     extentS: [0, points.length - 1],
   };

@@ -48,6 +48,7 @@ const exported = async (format: RunExportJob['format'], changes: Partial<RunExpo
       run: job,
       format,
       rateHz: null,
+      smoothed: false,
       name: 'Loop <3> & back.txt',
       utcOrigin: null,
       ...changes,
@@ -149,6 +150,19 @@ test('solution CSV at a higher rate runs the filter again and agrees where both 
   const fine = (await exported('solution-csv', { rateHz: 100 })).trimEnd().split('\n');
   expect(fine).toHaveLength(1 + 9001);
   expect(fine).toEqual(expect.arrayContaining([kept[1], kept[300], kept.at(-1)]));
+});
+
+test('solution CSV, smoothed: the same rows with less uncertainty, kept or computed now', async () => {
+  await run({ ...job, runId: 'smooth', smooth: true, framePoints: 0 }, helpers);
+  const { solution, smoothed } = await readRunTables(at.store, 'smooth');
+  const kept = await exported('solution-csv', {
+    run: { ...job, runId: 'smooth', smooth: true },
+    smoothed: true,
+  });
+  const now = await exported('solution-csv', { smoothed: true, name: 'later.csv' });
+  expect(now).toBe(kept);
+  expect(smoothed!.time_s).toEqual(solution.time_s);
+  expect(smoothed!.sigma_n_m![400]!).toBeLessThan(solution.sigma_n_m![400]!);
 });
 
 test('innovations CSV: long form in time order, NIS and acceptance of the group', async () => {
