@@ -35,7 +35,7 @@ function unknownFields(given: unknown, parsed: unknown, path = ''): FieldError[]
   if (!isPlain(given) || !isPlain(parsed)) return [];
   return Object.entries(given).flatMap(([key, value]) => {
     if (value === undefined) return [];
-    if (!(key in parsed)) {
+    if (!Object.hasOwn(parsed, key)) {
       return [{ path: join(path, key), message: 'There is no such field here; see /api/v1/openapi.json.' }];
     }
     return unknownFields(value, parsed[key], join(path, key));
