@@ -1,8 +1,10 @@
 import { View } from 'react-native';
-import { Choice, type ChoiceOption } from '@/components/ui/Choice';
+import type { ChoiceOption } from '@/components/ui/Choice';
 import { space } from '@/constants/theme';
+import { AidSettings } from './AidSettings';
+import { ChoiceSetting } from './ChoiceSetting';
 import { NumberSetting } from './NumberSetting';
-import { readPath } from './parameter-path';
+import { fieldAt } from './parameter-fields';
 import type { ParameterGroup } from './parameter-specs';
 import type { Bench } from './use-bench';
 
@@ -12,7 +14,7 @@ export function AdvancedSettings({ bench, group }: { bench: Bench; group: Parame
     case 'gyro':
     case 'accel':
       return (
-        <Setting
+        <ChoiceSetting
           bench={bench}
           path={`${group}.biasModel`}
           label="Bias model"
@@ -27,15 +29,17 @@ export function AdvancedSettings({ bench, group }: { bench: Bench; group: Parame
       return <GnssSettings bench={bench} />;
     case 'gate':
       return <FilterSettings bench={bench} />;
+    case 'aids':
+      return <AidSettings bench={bench} />;
   }
 }
 
 function GnssSettings({ bench }: { bench: Bench }) {
   return (
     <View style={{ gap: space.m }}>
-      <Setting bench={bench} path="gnss.usePosition" label="Position" options={USED} />
-      <Setting bench={bench} path="gnss.useVelocity" label="Velocity" options={USED} />
-      <Setting
+      <ChoiceSetting bench={bench} path="gnss.usePosition" label="Position" options={USED} />
+      <ChoiceSetting bench={bench} path="gnss.useVelocity" label="Velocity" options={USED} />
+      <ChoiceSetting
         bench={bench}
         path="gnss.sigmaSource"
         label="Accuracies from"
@@ -44,14 +48,7 @@ function GnssSettings({ bench }: { bench: Bench }) {
           { value: 'fixed', label: 'the fixed values below' },
         ]}
       />
-      <NumberSetting
-        bench={bench}
-        path="gnss.latencyS"
-        label="Latency of fixes"
-        unit="s"
-        range={[-5, 5]}
-        hint="positive: a fix speaks of an earlier moment than its stamp"
-      />
+      <NumberSetting bench={bench} field={fieldAt('gnss.latencyS')} />
     </View>
   );
 }
@@ -59,23 +56,9 @@ function GnssSettings({ bench }: { bench: Bench }) {
 function FilterSettings({ bench }: { bench: Bench }) {
   return (
     <View style={{ gap: space.m }}>
-      <NumberSetting
-        bench={bench}
-        path="initial.headingDeg"
-        label="Initial heading"
-        unit="°"
-        range={[-360, 360]}
-        optional="from the course"
-        hint="left empty: taken from the GNSS course"
-      />
-      <NumberSetting
-        bench={bench}
-        path="initial.courseSpeedMPerS"
-        label="Course counts as heading above"
-        unit="m/s"
-        range={[0.1, 100]}
-      />
-      <Setting
+      <NumberSetting bench={bench} field={fieldAt('initial.headingDeg')} />
+      <NumberSetting bench={bench} field={fieldAt('initial.courseSpeedMPerS')} />
+      <ChoiceSetting
         bench={bench}
         path="mechanisation.covarianceIntervalS"
         label="Covariance is propagated"
@@ -87,7 +70,7 @@ function FilterSettings({ bench }: { bench: Bench }) {
           { value: '0.2', label: '5 times a second' },
         ]}
       />
-      <Setting
+      <ChoiceSetting
         bench={bench}
         path="mechanisation.scheme"
         label="Mechanisation"
@@ -105,35 +88,3 @@ const USED: readonly ChoiceOption<string>[] = [
   { value: 'true', label: 'used' },
   { value: 'false', label: 'not used' },
 ];
-
-function Setting({
-  bench,
-  path,
-  label,
-  options,
-}: {
-  bench: Bench;
-  path: string;
-  label: string;
-  options: readonly ChoiceOption<string>[];
-}) {
-  const value = readPath(bench.config.parameters, path);
-  const text = String(value);
-  const known = options.some((option) => option.value === text);
-  return (
-    <Choice
-      label={label}
-      shape="select"
-      value={text}
-      options={known ? options : [...options, { value: text, label: text }]}
-      onChange={(next) =>
-        bench.setParameter(
-          path,
-          typeof value === 'number' ? Number(next) : typeof value === 'boolean' ? next === 'true' : next,
-          true,
-        )
-      }
-      disabled={bench.locked !== null}
-    />
-  );
-}

@@ -1,42 +1,38 @@
 import { useState } from 'react';
 import { Field } from '@/components/ui/Field';
-import { parseNumber } from '@/components/forms/parse-number';
+import { fieldUnit, type ParameterField } from './parameter-fields';
 import { readPath } from './parameter-path';
+import { leafAt } from './parameter-schema';
+import { fieldText, readField } from './typed-field';
 import type { Bench } from './use-bench';
 
 export interface NumberSettingProps {
   bench: Bench;
-  path: string;
-  label: string;
-  unit: string;
-  range: readonly [number, number];
-  /** May be empty; what then counts. */
-  optional?: string;
-  hint?: string;
+  field: ParameterField;
 }
 
 /** A typed number of the parameters; taken when the field is left or Enter is pressed. A wrong one stays, with its reason. */
-export function NumberSetting({ bench, path, label, unit, range, optional, hint }: NumberSettingProps) {
+export function NumberSetting({ bench, field }: NumberSettingProps) {
+  const { path, label, hint, unset, range } = field;
   const value = readPath(bench.config.parameters, path);
   const [typed, setTyped] = useState<string | null>(null);
   const [problem, setProblem] = useState<string | null>(null);
+  const shown = fieldText(field, value);
   const apply = () => {
     if (typed === null) return;
-    const next = parseNumber(typed);
-    if (next === undefined && optional === undefined) return setProblem(`Type a number in ${unit}.`);
-    if (next !== undefined && !(next >= range[0] && next <= range[1]))
-      return setProblem(`Between ${range[0]} and ${range[1]} ${unit}.`);
+    const result = typed === shown ? { value } : readField(field, { ...leafAt(path), ...range }, typed);
+    if ('message' in result) return setProblem(result.message);
     setProblem(null);
     setTyped(null);
-    if ((next ?? null) !== value) bench.setParameter(path, next ?? null, true);
+    if (result.value !== value) bench.setParameter(path, result.value, true);
   };
   return (
     <Field
       label={label}
-      unit={unit}
+      unit={fieldUnit(field)?.symbol}
       numeric
-      value={typed ?? (value === null ? '' : String(value))}
-      placeholder={optional}
+      value={typed ?? shown}
+      placeholder={unset}
       onChangeText={(text) => {
         setTyped(text);
         setProblem(null);

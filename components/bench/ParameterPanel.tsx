@@ -6,6 +6,7 @@ import { useTheme } from '@/components/ui/ThemeProvider';
 import { hairline, space } from '@/constants/theme';
 import { defaultParameters } from '@/shared/contracts/parameters';
 import { AdvancedSettings } from './AdvancedSettings';
+import { aidWords } from './AidSettings';
 import { GateChoice } from './GateChoice';
 import { readNumber } from './parameter-path';
 import { GROUP_TITLES, SLIDERS, type ParameterGroup, type SliderSpec } from './parameter-specs';
@@ -22,7 +23,7 @@ export interface ParameterPanelProps {
 
 /** Sliders of all groups, the rarely touched ones folded away. */
 export function ParameterPanel({ bench, group }: ParameterPanelProps) {
-  const groups: readonly ParameterGroup[] = group ? [group] : ['gyro', 'accel', 'gnss', 'gate'];
+  const groups: readonly ParameterGroup[] = group ? [group] : ['gyro', 'accel', 'gnss', 'gate', 'aids'];
   return (
     <View>
       {groups.map((one) => (
@@ -34,7 +35,8 @@ export function ParameterPanel({ bench, group }: ParameterPanelProps) {
 
 function Group({ bench, group, titled }: { bench: Bench; group: ParameterGroup; titled: boolean }) {
   const { palette } = useTheme();
-  const [open, setOpen] = useState(false);
+  // On the phone the aids have a tab of their own, in which nothing else stands.
+  const [open, setOpen] = useState(group === 'aids' && !titled);
   const counting = SLIDERS.filter(
     (spec) => spec.group === group && (spec.counts?.(bench.config.parameters) ?? true),
   );
@@ -51,6 +53,11 @@ function Group({ bench, group, titled }: { bench: Bench; group: ParameterGroup; 
         </Text>
       ) : null}
       {group === 'gate' ? <GateChoice bench={bench} /> : null}
+      {group === 'aids' && titled ? (
+        <Text variant="label" tone="soft" style={styles.state}>
+          {aidWords(bench.config.parameters)}
+        </Text>
+      ) : null}
       {counting
         .filter((spec) => !spec.advanced)
         .map((spec, i) => (
@@ -58,16 +65,18 @@ function Group({ bench, group, titled }: { bench: Bench; group: ParameterGroup; 
             <ParameterSlider bench={bench} spec={spec} />
           </View>
         ))}
-      <View style={styles.more}>
-        <Button
-          label={open ? 'Fewer settings' : 'More settings'}
-          icon={open ? 'up' : 'down'}
-          kind="plain"
-          aria-expanded={open}
-          aria-label={`${open ? 'Fewer' : 'More'} ${GROUP_TITLES[group]} settings`}
-          onPress={() => setOpen(!open)}
-        />
-      </View>
+      {group === 'aids' && !titled ? null : (
+        <View style={styles.more}>
+          <Button
+            label={open ? 'Fewer settings' : 'More settings'}
+            icon={open ? 'up' : 'down'}
+            kind="plain"
+            aria-expanded={open}
+            aria-label={`${open ? 'Fewer' : 'More'} ${GROUP_TITLES[group]} settings`}
+            onPress={() => setOpen(!open)}
+          />
+        </View>
+      )}
       {open ? (
         <View style={styles.advanced}>
           <AdvancedSettings bench={bench} group={group} />
@@ -102,6 +111,7 @@ const styles = StyleSheet.create({
   group: { paddingBottom: space.xs, alignItems: 'stretch' },
   title: { paddingTop: space.m, letterSpacing: 1 },
   row: { borderTopWidth: 0 },
+  state: { paddingTop: space.xs },
   more: { alignItems: 'flex-start', marginLeft: -space.l },
   advanced: { gap: space.m, paddingBottom: space.m },
 });

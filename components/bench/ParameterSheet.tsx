@@ -15,6 +15,7 @@ const GROUPS: readonly { id: ParameterGroup; label: string }[] = [
   { id: 'gyro', label: 'Gyro' },
   { id: 'accel', label: 'Accelerometer' },
   { id: 'gate', label: 'Gate' },
+  { id: 'aids', label: 'Aids' },
 ];
 
 export interface ParameterSheetProps {

@@ -16,14 +16,16 @@ export function RunStatus({ bench, short }: { bench: Bench; short?: boolean }) {
   const percent = useLive(bench.live, (state) => Math.floor(state.progress * 20) * 5);
   const took = bench.locked === null ? tookS : (summary?.computeS ?? null);
   const speed = took && summary && !short ? ` (${formatNumber(summary.durationS / took)} × real time)` : '';
-  const words = {
+  const connected = useLive(bench.live, (state) => state.connected);
+  const byPhase = {
     idle: 'Waiting for the first run',
     starting: 'Starting a run …',
     running: `Run under way, ${percent} %`,
     done: took === null ? 'Run done' : `Run done in ${formatNumber(took, 2)} s${speed}`,
     failed: 'The last run failed',
     cancelled: 'The run was stopped',
-  }[phase];
+  };
+  const words = connected ? byPhase[phase] : 'Connection lost, trying again …';
   return (
     <View style={styles.line} role="status" aria-live="off">
       <Figures variant="label" tone="soft">{`${words} · against ${bench.baseline.name}`}</Figures>
@@ -34,7 +36,10 @@ export function RunStatus({ bench, short }: { bench: Bench; short?: boolean }) {
 /** A hairline over the charts that fills while the run goes. */
 export function RunProgressLine({ bench }: { bench: Bench }) {
   const { palette } = useTheme();
-  const running = useLive(bench.live, ({ phase }) => phase === 'running' || phase === 'starting');
+  const running = useLive(
+    bench.live,
+    ({ phase, connected }) => connected && (phase === 'running' || phase === 'starting'),
+  );
   const percent = useLive(bench.live, (state) => Math.round(state.progress * 100));
   return (
     <View
@@ -64,6 +69,9 @@ export function RunProblem({ bench }: { bench: Bench }) {
   const phase = useLive(bench.live, (state) => state.phase);
   const reason = useLive(bench.live, (state) => state.reason);
   const kept = useLive(bench.live, (state) => state.summary !== null);
+  const connected = useLive(bench.live, (state) => state.connected);
+  const unsent = useLive(bench.live, (state) => state.unsent);
+  if (!connected) return <ConnectionLost underWay={phase === 'running'} unsent={unsent} />;
   if (phase !== 'failed' && phase !== 'cancelled') return null;
   return (
     <Notice
@@ -78,6 +86,20 @@ export function RunProblem({ bench }: { bench: Bench }) {
       }
     >
       {`${reason ?? 'No reason was given.'}${kept ? ' The curves and figures shown are those of the run before.' : ''}`}
+    </Notice>
+  );
+}
+
+/** The server is away: what that means for the run, and what happens next. */
+function ConnectionLost({ underWay, unsent }: { underWay: boolean; unsent: boolean }) {
+  const next = unsent
+    ? 'Your last change could not be sent: it runs as soon as the server answers.'
+    : underWay
+      ? 'The run may have ended with it. As soon as the server answers, the bench takes the run up again, or says that it was lost and offers to run it again.'
+      : 'What you change meanwhile runs as soon as the server answers.';
+  return (
+    <Notice tone="vermilion" urgent title="The connection to the server is lost">
+      {`${next} The bench keeps trying by itself; what you have set and the curves drawn so far stay.`}
     </Notice>
   );
 }

@@ -1,6 +1,6 @@
 /**
  * The bench's state in its address, so that a link opens the same view:
- * /bench/<recording>?set=&version=&p=<changed parameters>&w=<windows>&base=<run of the pinned baseline>&view=<charts>.
+ * /bench/<recording>?set=&version=&p=<changed parameters>&w=<windows>&base=<run of the pinned baseline>&x=<worked out besides>&view=<charts>.
  */
 import { parametersSchema, type Parameters } from '@/shared/contracts/parameters';
 import { outagesSchema, type Outage } from '@/shared/contracts/runs';
@@ -16,6 +16,8 @@ export interface BenchLink {
   /** Left out: the version's own windows. */
   windows?: readonly Outage[];
   baselineRunId?: string;
+  /** What each run works out besides; left out: nothing. */
+  options?: { smooth: boolean; errorBudget: boolean };
   /** Which charts are shown. */
   view?: string;
 }
@@ -30,7 +32,7 @@ export function benchHref(link: BenchLink): `/bench/${string}` {
   return `/bench/${link.recordingId}${text ? `?${text}` : ''}`;
 }
 
-export type BenchQuery = Record<'set' | 'version' | 'p' | 'w' | 'base' | 'view', string | undefined>;
+export type BenchQuery = Record<'set' | 'version' | 'p' | 'w' | 'base' | 'x' | 'view', string | undefined>;
 
 export function benchQuery(link: BenchLink): BenchQuery {
   return {
@@ -39,6 +41,7 @@ export function benchQuery(link: BenchLink): BenchQuery {
     p: link.changes && link.changes.length > 0 ? writeChanges(link.changes) : undefined,
     w: link.windows === undefined ? undefined : writeWindows(link.windows),
     base: link.baselineRunId,
+    x: writeOptions(link.options),
     view: link.view,
   };
 }
@@ -54,6 +57,7 @@ export function readBenchQuery(
   const version = Number(query.version);
   if (query.version && Number.isInteger(version) && version > 0) link.version = version;
   if (query.base) link.baselineRunId = query.base;
+  if (query.x) link.options = readOptions(query.x);
   if (query.view) link.view = query.view;
   if (query.p) link.changes = readChanges(query.p);
   if (query.w !== undefined) {
@@ -103,6 +107,16 @@ function readValue(text: string): ParameterValue {
   return parts.length > 1 && parts.every((part) => part !== '' && Number.isFinite(Number(part)))
     ? parts.map(Number)
     : text;
+}
+
+function writeOptions(options: BenchLink['options']): string | undefined {
+  const on = [options?.smooth ? 'smooth' : '', options?.errorBudget ? 'budget' : ''].filter(Boolean);
+  return on.length > 0 ? on.join(',') : undefined;
+}
+
+function readOptions(text: string): NonNullable<BenchLink['options']> {
+  const on = text.split(',');
+  return { smooth: on.includes('smooth'), errorBudget: on.includes('budget') };
 }
 
 const SUFFIX: Record<Outage['withhold'], string> = { gnss: '', position: 'p', velocity: 'v' };

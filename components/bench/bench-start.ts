@@ -10,7 +10,15 @@ import { applyChanges, type BenchLink } from './bench-link';
 export interface BenchConfig {
   parameters: Parameters;
   outages: readonly Outage[];
+  options: RunOptions;
 }
+
+/** What a run works out besides the filter. */
+export interface RunOptions {
+  smooth: boolean;
+  errorBudget: boolean;
+}
+export const NO_OPTIONS: RunOptions = { smooth: false, errorBudget: false };
 
 export interface Baseline {
   name: string;
@@ -51,7 +59,7 @@ export function resolveStart(
     recording,
     set: version && set ? { id: set.id, name: set.name, version } : null,
     from,
-    config: { parameters, outages },
+    config: { parameters, outages, options: { ...NO_OPTIONS, ...link.options } },
     baseline: pinned
       ? { name: pinnedName(pinned.finishedAt), parameters: pinned.parameters, runId: pinned.id }
       : { name: startName, parameters: from, runId: null },

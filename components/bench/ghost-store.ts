@@ -13,9 +13,9 @@ export interface Ghost {
   summary: RunSummary;
 }
 
-/** Same parameters and windows, same key. */
-export const ghostKey = (parameters: Parameters, outages: readonly Outage[]): string =>
-  JSON.stringify([parameters, outages.map(({ startS, endS, withhold }) => [startS, endS, withhold])]);
+/** Same parameters and windows, same key. A smoothed run is compared with a smoothed one: drift is read against the smoother. */
+export const ghostKey = (parameters: Parameters, outages: readonly Outage[], smooth = false): string =>
+  JSON.stringify([parameters, outages.map(({ startS, endS, withhold }) => [startS, endS, withhold]), smooth]);
 
 export class GhostStore {
   private ghost: Ghost | null = null;
@@ -52,4 +52,4 @@ export class GhostStore {
 }
 
 const keyOf = (request: RunCreateInput) =>
-  ghostKey(request.parameters as Parameters, (request.outages ?? []) as Outage[]);
+  ghostKey(request.parameters as Parameters, (request.outages ?? []) as Outage[], request.smooth);

@@ -28,6 +28,8 @@ export interface ParameterField {
   hint?: string;
   /** What counts while nothing is set. */
   unset?: string;
+  /** Bounds on what may be typed where the contract sets none, SI. */
+  range?: { low: number; high: number };
   /** Switches of which at least one must be on for this to count. */
   needs?: readonly string[];
 }
@@ -38,6 +40,10 @@ export function fieldUnit({ quantity, unit }: ParameterField): DisplayUnit | nul
   const units: readonly DisplayUnit[] = QUANTITIES[quantity];
   return units.find((one) => one.symbol === unit) ?? defaultUnit(quantity);
 }
+
+/** Fields of a group whose switch, if they hang on one, is on. */
+export const fieldsThatCount = (group: FieldGroup, isOn: (path: string) => boolean): ParameterField[] =>
+  FIELDS.filter((field) => field.group === group && (field.needs?.some(isOn) ?? true));
 
 const BIAS_MODELS = {
   'random-walk': 'random walk',
@@ -61,7 +67,13 @@ const gnssFields: readonly ParameterField[] = [
   },
   { path: 'gnss.positionFloorM', group: 'gnss', label: 'Least position σ', quantity: 'length' },
   { path: 'gnss.velocityFloorMPerS', group: 'gnss', label: 'Least velocity σ', quantity: 'speed' },
-  { path: 'gnss.latencyS', group: 'gnss', label: 'Latency', quantity: 'time' },
+  {
+    path: 'gnss.latencyS',
+    group: 'gnss',
+    label: 'Latency of fixes',
+    quantity: 'time',
+    hint: 'positive: a fix speaks of an earlier moment than its stamp',
+  },
   { path: 'leverArmM', group: 'gnss', label: 'Lever arm: forward, right, down', unit: 'm' },
   { path: 'gate.enabled', group: 'gate', label: 'χ² gate' },
   { path: 'gate.probability', group: 'gate', label: 'Gate probability', quantity: 'percent' },
@@ -81,7 +93,15 @@ const startFields: readonly ParameterField[] = [
   { path: 'initial.attitude.rollDeg', group: 'initial', label: 'Roll', unit: '°' },
   { path: 'initial.attitude.pitchDeg', group: 'initial', label: 'Pitch', unit: '°' },
   { path: 'initial.attitude.yawDeg', group: 'initial', label: 'Yaw', unit: '°' },
-  { path: 'initial.headingDeg', group: 'initial', label: 'Heading', unit: '°' },
+  {
+    path: 'initial.headingDeg',
+    group: 'initial',
+    label: 'Initial heading',
+    unit: '°',
+    unset: 'from the course',
+    hint: 'left empty: taken from the GNSS course',
+    range: { low: -360, high: 360 },
+  },
   { path: 'initial.positionSigmaNedM', group: 'initial', label: 'Position σ: north, east, down', unit: 'm' },
   {
     path: 'initial.velocitySigmaNedMPerS',
@@ -100,7 +120,7 @@ const startFields: readonly ParameterField[] = [
   {
     path: 'initial.courseSpeedMPerS',
     group: 'initial',
-    label: 'Heading from course above',
+    label: 'Course counts as heading above',
     quantity: 'speed',
   },
   {
@@ -258,3 +278,10 @@ export const FIELDS: readonly ParameterField[] = [
   ...stopFields,
   ...vehicleFields,
 ];
+
+/** The field at `path`. Throws where there is none: the path is then mistyped. */
+export function fieldAt(path: string): ParameterField {
+  const field = FIELDS.find((one) => one.path === path);
+  if (!field) throw new Error(`No field is named for ${path}.`);
+  return field;
+}

@@ -3,11 +3,11 @@ import type { Parameters } from '@/shared/contracts/parameters';
 import { QUANTITIES, type Quantity } from '@/shared/units';
 import type { LogRange } from './slider-model';
 
-export type ParameterGroup = 'gyro' | 'accel' | 'gnss' | 'gate';
+export type ParameterGroup = 'gyro' | 'accel' | 'gnss' | 'gate' | 'aids';
 
 export interface SliderSpec {
   path: string;
-  group: ParameterGroup;
+  group: Exclude<ParameterGroup, 'aids'>;
   label: string;
   quantity: Quantity;
   range: LogRange;
@@ -179,4 +179,5 @@ export const GROUP_TITLES: Record<ParameterGroup, string> = {
   accel: 'Accelerometer',
   gnss: 'GNSS',
   gate: 'Gate',
+  aids: 'Aids',
 };

@@ -43,6 +43,7 @@ export function useBenchAddress(bench: Bench, view: string, own: OwnQueries): vo
         changes: differences(start.from, config.parameters),
         windows: config.outages.length > 0 || start.set ? config.outages : undefined,
         baselineRunId: baseline.runId ?? undefined,
+        options: config.options,
         view: view === 'overview' ? undefined : view,
       };
       const query = benchQuery(link);

@@ -4,7 +4,7 @@ import type { Outage, Run, RunSummary } from '@/shared/contracts/runs';
 import { ChartGroup } from '@/components/charts/chart-group';
 import type { LiveController } from '@/hooks/live/live-controller';
 import { useLive, useLiveRun } from '@/hooks/use-live-run';
-import { pinnedName, type Baseline, type BenchConfig, type BenchStart } from './bench-start';
+import { pinnedName, type Baseline, type BenchConfig, type BenchStart, type RunOptions } from './bench-start';
 import type { CurvesSource } from './curves';
 import { GhostStore, ghostKey, type Ghost } from './ghost-store';
 import { commit, redo, startHistory, undo, type History } from './history';
@@ -18,6 +18,7 @@ export interface Bench {
   /** Several at once, as one step. */
   setParameters: (changes: readonly { path: string; value: ParameterValue }[]) => void;
   setOutages: (outages: readonly Outage[], settled: boolean) => void;
+  setOptions: (options: RunOptions) => void;
   canUndo: boolean;
   canRedo: boolean;
   undo: () => void;
@@ -39,7 +40,15 @@ const GHOST_DELAY_MS = 350;
 /** `shown`: the finished run to show to a person who may start none. */
 export function useBench(start: BenchStart, locked: string | null, shown: Run | null): Bench {
   const [history, setHistory] = useState<History<BenchConfig>>(() =>
-    startHistory(shown ? { parameters: shown.parameters, outages: shown.outages } : start.config),
+    startHistory(
+      shown
+        ? {
+            parameters: shown.parameters,
+            outages: shown.outages,
+            options: { smooth: shown.smooth, errorBudget: shown.errorBudget },
+          }
+        : start.config,
+    ),
   );
   const [baseline, setBaseline] = useState<Baseline>(start.baseline);
   const live = useLiveRun();
@@ -76,6 +85,10 @@ export function useBench(start: BenchStart, locked: string | null, shown: Run | 
       change('windows', wasSettled, (old) => ({ ...old, outages })),
     [change],
   );
+  const setOptions = useCallback(
+    (options: RunOptions) => change('options', true, (old) => ({ ...old, options })),
+    [change],
+  );
   const pinCurrent = useCallback(() => {
     const { summaryRequest, summaryRunId, phase } = live.state;
     if (phase !== 'done' || !summaryRequest || !summaryRunId) return;
@@ -88,6 +101,7 @@ export function useBench(start: BenchStart, locked: string | null, shown: Run | 
     setParameter,
     setParameters,
     setOutages,
+    setOptions,
     canUndo: history.past.length > 0,
     canRedo: history.future.length > 0,
     undo: useCallback(() => setHistory(undo), []),
@@ -106,7 +120,9 @@ export function useBench(start: BenchStart, locked: string | null, shown: Run | 
 export const useSummary = (bench: Bench): RunSummary | null => useLive(bench.live, (state) => state.summary);
 
 function comparable(ghost: Ghost | null, baseline: Baseline, config: BenchConfig): RunSummary | null {
-  return ghost && ghost.key === ghostKey(baseline.parameters, config.outages) ? ghost.summary : null;
+  return ghost && ghost.key === ghostKey(baseline.parameters, config.outages, config.options.smooth)
+    ? ghost.summary
+    : null;
 }
 
 function useOwnRuns(
@@ -123,10 +139,16 @@ function useOwnRuns(
   }, [live, shown]);
   useEffect(() => {
     if (locked !== null) return;
-    const { parameters, outages } = config;
-    live.change({ recordingId, parameters, outages: [...outages], benchId }, settled);
+    const { parameters, outages, options } = config;
+    live.change({ recordingId, parameters, outages: [...outages], ...asked(options), benchId }, settled);
   }, [live, recordingId, config, settled, benchId, locked]);
 }
+
+/** Only what is wanted is asked for. */
+const asked = ({ smooth, errorBudget }: RunOptions) => ({
+  smooth: smooth || undefined,
+  errorBudget: errorBudget || undefined,
+});
 
 function useGhost(
   live: LiveController,
@@ -140,18 +162,19 @@ function useGhost(
   const [benchId] = useState(makeId);
   const second = useLiveRun();
   useEffect(() => {
-    const key = ghostKey(baseline.parameters, config.outages);
+    const key = ghostKey(baseline.parameters, config.outages, config.options.smooth);
     const adopt = () => ghosts.adopt(live, key) || ghosts.adopt(second, key);
     if (adopt()) return;
     const stop = [live.subscribe(adopt), second.subscribe(adopt)];
     // The bench's own run brings it where its parameters are the baseline's.
-    const own = ghostKey(config.parameters, config.outages) === key;
+    const own = ghostKey(config.parameters, config.outages, config.options.smooth) === key;
     const timer =
       own || !settled || locked !== null
         ? null
         : setTimeout(() => {
             const { parameters } = baseline;
-            second.change({ recordingId, parameters, outages: [...config.outages], benchId });
+            const { smooth } = asked(config.options);
+            second.change({ recordingId, parameters, outages: [...config.outages], smooth, benchId });
           }, GHOST_DELAY_MS);
     return () => {
       if (timer) clearTimeout(timer);

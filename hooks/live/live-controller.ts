@@ -5,6 +5,7 @@
 import type { Frame } from '@/shared/contracts/frames';
 import type { RunFailed, RunProgress } from '@/shared/contracts/live';
 import type { Run, RunCreateInput, RunSummary } from '@/shared/contracts/runs';
+import { NetworkProblem } from '../api';
 import { RunData } from './run-data';
 
 export interface LiveHandlers {
@@ -12,6 +13,8 @@ export interface LiveHandlers {
   progress: (message: RunProgress) => void;
   summary: (runId: string, summary: RunSummary) => void;
   failed: (message: RunFailed) => void;
+  /** The connection broke, or could not be made; it is tried again. */
+  lost: () => void;
   /** The connection is back after a break. */
   reconnected: () => void;
 }
@@ -34,6 +37,10 @@ export type LivePhase = 'idle' | 'starting' | 'running' | 'done' | 'failed' | 'c
 
 export interface LiveState {
   phase: LivePhase;
+  /** False while the server cannot be reached: nothing is heard of the run until it can. */
+  connected: boolean;
+  /** The last change could not be sent; it is sent when the server answers again. */
+  unsent: boolean;
   runId: string | null;
   progress: number;
   /** Of the run whose curves are complete; kept while a newer one is on its way. */
@@ -49,6 +56,8 @@ export interface LiveState {
 
 const IDLE: LiveState = {
   phase: 'idle',
+  connected: true,
+  unsent: false,
   runId: null,
   progress: 0,
   summary: null,
@@ -97,6 +106,7 @@ export class LiveController {
       progress: (message) => this.onProgress(message),
       summary: (runId, summary) => void this.onSummary(runId, summary),
       failed: (message) => this.onFailed(message),
+      lost: () => this.patch({ connected: false }),
       reconnected: () => void this.onReconnected(),
     });
     this.pump();
@@ -171,14 +181,15 @@ export class LiveController {
   private async start(transport: LiveTransport, request: RunCreateInput): Promise<void> {
     this.posting = true;
     this.startedAt = this.now();
-    this.patch({ phase: 'starting', reason: null, tookS: null });
+    this.patch({ phase: 'starting', unsent: false, reason: null, tookS: null });
     try {
       const run = await transport.create(request);
       if (this.transport !== transport) return;
       this.begin(run.id, request);
       if (isOver(run)) await this.finishFrom(run);
     } catch (error) {
-      this.patch({ phase: 'failed', reason: wordsOf(error) });
+      const unsent = error instanceof NetworkProblem;
+      this.patch({ phase: 'failed', unsent, reason: wordsOf(error) });
     } finally {
       this.posting = false;
       this.pump();
@@ -261,8 +272,10 @@ export class LiveController {
 
   /** After a break the run may have gone on or ended unheard. */
   private async onReconnected(): Promise<void> {
-    const { runId, phase } = this.current;
+    const { runId, phase, unsent } = this.current;
     const { transport } = this;
+    this.patch({ connected: true });
+    if (unsent) return this.retry();
     if (!transport || !runId || phase !== 'running') return;
     transport.follow(runId);
     try {
@@ -320,6 +333,8 @@ const requestOf = (run: Run): RunCreateInput => ({
   recordingId: run.recordingId,
   parameters: run.parameters,
   outages: run.outages,
+  smooth: run.smooth,
+  errorBudget: run.errorBudget,
 });
 
 const wordsOf = (error: unknown) =>

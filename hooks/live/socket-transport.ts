@@ -40,6 +40,15 @@ export function openSocketTransport(): LiveTransport {
 
 function listen(socket: LiveSocket, handlers: Parameters<LiveTransport['listen']>[0]): () => void {
   let connectedBefore = socket.connected;
+  const onLost = () => {
+    connectedBefore = true;
+    handlers.lost();
+  };
+  const onDisconnect = (reason: string) => {
+    onLost();
+    // After a farewell by the server the client does not try again by itself.
+    if (reason === 'io server disconnect') socket.connect();
+  };
   const onFrame = (data: ArrayBuffer) => handlers.frame(decodeFrame(data));
   const onSummary: ServerToClientEvents['run:summary'] = ({ runId, summary }) =>
     handlers.summary(runId, summary);
@@ -52,11 +61,15 @@ function listen(socket: LiveSocket, handlers: Parameters<LiveTransport['listen']
   socket.on('run:summary', onSummary);
   socket.on('run:failed', handlers.failed);
   socket.on('connect', onConnect);
+  socket.on('disconnect', onDisconnect);
+  socket.on('connect_error', onLost);
   return () => {
     socket.off('run:frame', onFrame);
     socket.off('run:progress', handlers.progress);
     socket.off('run:summary', onSummary);
     socket.off('run:failed', handlers.failed);
     socket.off('connect', onConnect);
+    socket.off('disconnect', onDisconnect);
+    socket.off('connect_error', onLost);
   };
 }

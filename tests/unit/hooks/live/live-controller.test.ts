@@ -1,4 +1,5 @@
 import type { Frame } from '@/shared/contracts/frames';
+import { NetworkProblem } from '@/hooks/api';
 import { defaultParameters } from '@/shared/contracts/parameters';
 import type { Run, RunCreateInput, RunSummary } from '@/shared/contracts/runs';
 import {
@@ -64,6 +65,11 @@ class Bench implements LiveTransport {
   }
   async refuse(message: string) {
     this.waiting.shift()!.reject(new Error(message));
+    await settle();
+  }
+  /** The oldest open POST finds no server. */
+  async lose() {
+    this.waiting.shift()!.reject(new NetworkProblem());
     await settle();
   }
   end() {
@@ -307,6 +313,46 @@ describe('what the line loses', () => {
       phase: 'failed',
       reason: 'The computing process stopped. Run it again.',
     });
+    bench.end();
+  });
+});
+
+describe('a server that is away', () => {
+  it('is known while the run goes, and forgotten when it is back', async () => {
+    const bench = new Bench();
+    bench.live.change(request(1));
+    await bench.answer('a');
+    bench.handlers.lost();
+    expect(bench.live.state).toMatchObject({ phase: 'running', connected: false });
+    bench.runs = async (runId) => run(runId, 'failed', { failure: 'The server was stopped.' });
+    bench.handlers.reconnected();
+    await settle();
+    expect(bench.live.state).toMatchObject({ phase: 'failed', connected: true });
+    bench.end();
+  });
+
+  it('gets the change that it did not hear as soon as it answers, and that once', async () => {
+    const bench = new Bench();
+    bench.live.change(request(1));
+    await bench.lose();
+    bench.handlers.lost();
+    expect(bench.live.state).toMatchObject({ phase: 'failed', connected: false, unsent: true });
+    bench.handlers.reconnected();
+    expect(bench.live.state).toMatchObject({ phase: 'starting', connected: true, unsent: false });
+    await bench.answer('a');
+    bench.handlers.reconnected();
+    await settle();
+    expect(bench.posted).toEqual([request(1), request(1)]);
+    bench.end();
+  });
+
+  it('is not asked again for what it refused', async () => {
+    const bench = new Bench();
+    bench.live.change(request(1));
+    await bench.refuse('The recording is being decoded again.');
+    bench.handlers.lost();
+    bench.handlers.reconnected();
+    expect(bench.posted).toHaveLength(1);
     bench.end();
   });
 });
