@@ -78,5 +78,5 @@ const styles = StyleSheet.create({
   claim: { maxWidth: 440, fontSize: 20, lineHeight: 30 },
   formSide: { paddingHorizontal: space.l, paddingBottom: space.xxl },
   formWide: { flex: 1, paddingHorizontal: 56, paddingVertical: 40, justifyContent: 'center' },
-  form: { width: '100%', maxWidth: 440, gap: space.xl, alignSelf: 'flex-start' },
+  form: { width: '100%', maxWidth: 440, gap: space.xl, alignSelf: 'center' },
 });

@@ -62,7 +62,9 @@ export function TrackChart({ content, group, height }: TrackChartProps) {
   const [shapes] = useState(() => new ShapeSet());
   const [view] = useState(() => new PlanView());
   const surface = useRef<View>(null);
-  const plotHeight = Math.max(60, height - HEAD_PX);
+  // On a narrow screen the legend takes several lines, and the plot what they leave.
+  const [headPx, setHeadPx] = useState(HEAD_PX);
+  const plotHeight = Math.max(60, height - headPx);
 
   useLayoutEffect(() => {
     if (width === 0) return;
@@ -99,10 +101,15 @@ export function TrackChart({ content, group, height }: TrackChartProps) {
 
   return (
     <View style={{ height }} onLayout={(event) => setWidth(Math.floor(event.nativeEvent.layout.width))}>
-      <View style={styles.head}>
-        <Text variant="label" strong level={3}>
-          Track
-        </Text>
+      <View style={styles.head} onLayout={(event) => setHeadPx(Math.ceil(event.nativeEvent.layout.height))}>
+        <View style={styles.title}>
+          <Text variant="label" strong level={3}>
+            Track
+          </Text>
+          <Text variant="small" tone="soft">
+            north up · m
+          </Text>
+        </View>
         <View style={styles.legend}>
           {LEGEND.map(({ label, ...ink }) => (
             <View key={label} style={styles.entry}>
@@ -115,9 +122,6 @@ export function TrackChart({ content, group, height }: TrackChartProps) {
             </View>
           ))}
         </View>
-        <Text variant="small" tone="soft">
-          north up · m
-        </Text>
       </View>
       <View
         ref={surface}
@@ -335,19 +339,18 @@ function inkOf({ kind, tone, width, dash, opacity = 1 }: TrackInk, palette: Pale
   };
 }
 
+/** Before the head is measured. */
 const HEAD_PX = 48;
 
 const styles = StyleSheet.create({
   head: {
-    height: HEAD_PX,
-    flexDirection: 'row',
-    flexWrap: 'wrap',
-    alignItems: 'center',
-    columnGap: space.m,
     paddingHorizontal: space.m,
-    overflow: 'hidden',
+    paddingTop: space.s,
+    paddingBottom: space.xs,
+    gap: 2,
   },
-  legend: { flexDirection: 'row', flexWrap: 'wrap', flex: 1, columnGap: space.m },
+  title: { flexDirection: 'row', alignItems: 'baseline', justifyContent: 'space-between', gap: space.m },
+  legend: { flexDirection: 'row', flexWrap: 'wrap', columnGap: space.m },
   entry: { flexDirection: 'row', alignItems: 'center', gap: space.xs },
   surface: { userSelect: 'none', overflow: 'hidden' },
 });

@@ -21,13 +21,14 @@ export interface HealthCardProps {
 export function HealthCard({ health, onShow }: HealthCardProps) {
   const { palette } = useTheme();
   const verdict = VERDICTS[health.verdict];
+  const beyond = beyondVerdict(health.sentence, verdict.word);
   return (
     <Card bare>
       <View style={[styles.verdict, { borderLeftColor: palette[verdict.tone] }]}>
         <Text variant="heading" tone={verdict.tone}>
           {capital(verdict.word)}
         </Text>
-        {saysMore(health.sentence, verdict.word) ? <Text>{health.sentence}</Text> : null}
+        {beyond ? <Text>{beyond}</Text> : null}
       </View>
       <View style={[styles.figures, { borderTopColor: palette.rule }]}>
         <Headline
@@ -134,7 +135,16 @@ export function times(intervals: readonly (readonly [number, number])[], shown =
 
 const count = (n: number) => n.toLocaleString('en').replaceAll(',', '\u2009');
 /** "Usable." adds nothing under the heading "Usable". */
-const saysMore = (sentence: string, word: string) => sentence.replace(/\.$/, '').toLowerCase() !== word;
+/** What a verdict's sentences say beyond its own word: the heading above them has said that. */
+function beyondVerdict(sentences: string, word: string): string {
+  const [first, rest] = /^([^.]*\.)\s*(.*)$/s.exec(sentences)?.slice(1) ?? [sentences, ''];
+  const repeats =
+    first!
+      .toLowerCase()
+      .replace(/ as it is|usable (?=with)|\./g, '')
+      .trim() === word;
+  return repeats ? rest! : sentences;
+}
 const capital = (word: string) => word.charAt(0).toUpperCase() + word.slice(1);
 
 const SEVERITIES: Record<

@@ -69,6 +69,7 @@ function Tuned({ version, setId }: { version: ParameterSetVersion; setId: string
   const recording = useRecording(version.recordingId ?? '');
   const open = (recordingId: string) =>
     router.push(benchPath(recordingId, { setId, number: version.number }));
+  const looking = version.recordingId !== null && recording.isPending;
   const tunedOn = version.recordingId && recording.data?.status === 'ready' ? recording.data : null;
   return (
     <>
@@ -79,9 +80,19 @@ function Tuned({ version, setId }: { version: ParameterSetVersion; setId: string
         {tunedOn ? (
           <Button label="Open on the bench" kind="primary" icon="bench" onPress={() => open(tunedOn.id)} />
         ) : null}
+        {looking ? (
+          <Button
+            label="Open on the bench"
+            kind="primary"
+            icon="bench"
+            disabled
+            reason="Looking for the recording that it was tuned on."
+            onPress={() => undefined}
+          />
+        ) : null}
         <Button
-          label={tunedOn ? 'On another recording' : 'Open on the bench'}
-          icon={tunedOn ? undefined : 'bench'}
+          label={tunedOn || looking ? 'On another recording' : 'Open on the bench'}
+          icon={tunedOn || looking ? undefined : 'bench'}
           onPress={() => setPicking(true)}
         />
       </View>

@@ -30,6 +30,7 @@ export interface StripGeometry {
   clipped: { x: number; width: number }[];
   /** IMU stretches without samples, px. */
   gaps: { x: number; width: number }[];
+  /** Speed at the profile's full height. */
   topSpeedMPerS: number;
 }
 
@@ -46,7 +47,7 @@ export function stripLayout(width: number, height: number, inset: number, labels
 export function stripGeometry(strip: Strip, layout: StripLayout): StripGeometry {
   const x = linearScale([strip.startS, strip.endS], [layout.inset, layout.width - layout.inset]);
   const speeds = strip.speedMPerS.map((speed) => (Number.isFinite(speed) ? speed : null));
-  const topSpeedMPerS = speeds.reduce<number>((top, speed) => Math.max(top, speed ?? 0), 0);
+  const topSpeedMPerS = speeds.reduce<number>((top, speed) => Math.max(top, speed ?? 0), LEAST_TOP_M_S);
   return {
     layout,
     x,
@@ -148,3 +149,5 @@ function fixTicks(strip: Strip, x: Scale, layout: StripLayout): { fixes: string;
 }
 
 const TICK_SPACING_PX = 6;
+/** A vehicle that stands still shows as flat ground, not as the noise of its fixes blown up. */
+const LEAST_TOP_M_S = 1;

@@ -24,3 +24,12 @@ test('a verdict’s own word is not said twice', () => {
   renderAs(<HealthCard health={{ ...health, verdict: 'usable', sentence: 'Usable.' }} />);
   expect(screen.getAllByText(/usable/i)).toHaveLength(1);
 });
+
+test.each([
+  ['with-care', 'Usable with care. The clock is 40 ms late.', 'The clock is 40 ms late.'],
+  ['not-usable', 'Not usable as it is. The gyros are stuck.', 'The gyros are stuck.'],
+  ['with-care', 'Usable, but look at the clipping.', 'Usable, but look at the clipping.'],
+] as const)('%s: “%s” stands as “%s” under its heading', (verdict, sentence, left) => {
+  renderAs(<HealthCard health={{ ...health, verdict, sentence, findings: [] }} />);
+  expect(screen.getByText(left)).toBeOnTheScreen();
+});

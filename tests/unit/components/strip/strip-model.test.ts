@@ -24,6 +24,17 @@ describe('stripGeometry', () => {
     expect(geometry.profile).toContain(`L105 ${half}`);
   });
 
+  it('draws the noise of a vehicle that stands still near the ground', () => {
+    const still = { ...strip, speedMPerS: strip.speedMPerS.map((_, i) => (i % 2 ? 0.05 : 0.01)) };
+    const drawn = stripGeometry(still, layout);
+    expect(drawn.topSpeedMPerS).toBe(1);
+    const heights = [...drawn.profile.matchAll(/L[\d.]+ ([\d.]+)/g)].map(
+      (match) => layout.baseY - Number(match[1]),
+    );
+    expect(heights).toHaveLength(buckets);
+    expect(Math.max(...heights)).toBeLessThan(0.1 * (layout.baseY - layout.profileTop));
+  });
+
   it('breaks profile and ground where the IMU has no samples', () => {
     expect(geometry.profile.match(/Z/g)).toHaveLength(2);
     expect(geometry.ground).toBe(`M0 ${layout.baseY}H400M500 ${layout.baseY}H1000`);
