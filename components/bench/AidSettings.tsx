@@ -1,7 +1,8 @@
 import { View } from 'react-native';
 import { space } from '@/constants/theme';
 import { FieldSettings } from './FieldSettings';
-import { FIELD_GROUPS, FIELDS, type FieldGroup } from './parameter-fields';
+import { FIELD_GROUPS, type FieldGroup } from './parameter-field';
+import { FIELDS } from './parameter-fields';
 import { readPath } from './parameter-path';
 import { leafAt } from './parameter-schema';
 import { RunOptions } from './RunOptions';
@@ -9,7 +10,7 @@ import type { Bench } from './use-bench';
 import type { Parameters } from '@/shared/contracts/parameters';
 
 /** Groups of what helps the filter besides GNSS, in the order of the bench. */
-export const AID_GROUPS: readonly FieldGroup[] = ['clipping', 'stops', 'vehicle'];
+export const AID_GROUPS: readonly FieldGroup[] = ['clipping', 'stops', 'vehicle', 'states'];
 
 /** Clipping, the vehicle's own aids, and what the run works out besides. */
 export function AidSettings({ bench }: { bench: Bench }) {

@@ -1,6 +1,6 @@
 import { useState } from 'react';
 import { Field } from '@/components/ui/Field';
-import { fieldUnit, type ParameterField } from './parameter-fields';
+import { fieldUnit, type ParameterField } from './parameter-field';
 import { readPath } from './parameter-path';
 import { leafAt } from './parameter-schema';
 import { fieldText, readField } from './typed-field';

@@ -1,7 +1,8 @@
 /** What differs between two parameter sets, in lines for people. Pure. */
 import type { Parameters } from '@/shared/contracts/parameters';
 import { formatNumber } from '@/shared/format';
-import { FIELD_GROUPS, FIELDS, type ParameterField } from './parameter-fields';
+import { FIELD_GROUPS, type ParameterField } from './parameter-field';
+import { FIELDS } from './parameter-fields';
 import { differences, readPath, type ParameterValue } from './parameter-path';
 import { GROUP_TITLES, SLIDERS } from './parameter-specs';
 import { shownValue, unitSymbol } from './parameter-words';

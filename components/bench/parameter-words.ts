@@ -1,7 +1,7 @@
 /** Values of parameters as people read them. Pure. */
 import { formatNumber } from '@/shared/format';
 import { toDisplay } from '@/shared/units';
-import { fieldUnit, type ParameterField } from './parameter-fields';
+import { fieldUnit, type ParameterField } from './parameter-field';
 import type { ParameterValue } from './parameter-path';
 
 /** The value in the field's display unit, or in words: "on", "the receiver", "1.2, 0, −0.6"; null: not set. */

@@ -2,7 +2,7 @@
 import { parseNumber } from '@/components/forms/parse-number';
 import { formatNumber } from '@/shared/format';
 import { fromDisplay, toDisplay } from '@/shared/units';
-import { fieldUnit, type ParameterField } from './parameter-fields';
+import { fieldUnit, type ParameterField } from './parameter-field';
 import type { ParameterValue } from './parameter-path';
 import type { ParameterLeaf } from './parameter-schema';
 import { parseTyped } from './slider-model';

@@ -4,6 +4,7 @@ import { benchHref } from '@/components/bench/bench-link';
 
 export const recordingPath = (id: string): Href => ({ pathname: '/recordings/[id]', params: { id } });
 export const mappingPath = (id: string): Href => ({ pathname: '/recordings/[id]/mapping', params: { id } });
+export const noisePath = (id: string): Href => ({ pathname: '/recordings/[id]/noise', params: { id } });
 export const setPath = (id: string): Href => ({ pathname: '/sets/[id]', params: { id } });
 export const vehiclePath = (id: string): Href => ({ pathname: '/vehicles/[id]', params: { id } });
 

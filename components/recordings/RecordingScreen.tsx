@@ -4,6 +4,7 @@ import { StyleSheet, View } from 'react-native';
 import { benchPath, mappingPath } from '@/components/layout/paths';
 import { Screen } from '@/components/layout/Screen';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
+import { NoiseLink } from '@/components/noise/NoiseLink';
 import { Button } from '@/components/ui/Button';
 import { Card } from '@/components/ui/Card';
 import { ErrorState } from '@/components/ui/ErrorState';
@@ -89,6 +90,7 @@ function Loaded({ recording }: { recording: Recording }) {
         <View style={extraWide ? styles.side : styles.stack}>
           <NotesCard recording={recording} />
           <FactsCard recording={recording} />
+          {recording.status === 'ready' ? <NoiseLink recordingId={recording.id} /> : null}
           <FilesCard files={recording.files} />
         </View>
       </View>

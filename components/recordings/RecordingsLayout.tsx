@@ -10,7 +10,7 @@ export function RecordingsLayout() {
   const path = usePathname();
   const opened = usePathId('recordings');
   const first = itemsOf(useRecordings().data)[0]?.id;
-  const whole = path === '/recordings/upload' || path.endsWith('/mapping');
+  const whole = path === '/recordings/upload' || path.endsWith('/mapping') || path.endsWith('/noise');
   return (
     <MasterDetail
       title="Recordings"

@@ -1,10 +1,6 @@
 /** Every parameter as a row of a table: its name, its display unit, its value there, and what it was in the version before. */
-import {
-  FIELD_GROUPS,
-  FIELDS,
-  type FieldGroup,
-  type ParameterField,
-} from '@/components/bench/parameter-fields';
+import { FIELD_GROUPS, type FieldGroup, type ParameterField } from '@/components/bench/parameter-field';
+import { FIELDS } from '@/components/bench/parameter-fields';
 import { readPath } from '@/components/bench/parameter-path';
 import { SLIDERS } from '@/components/bench/parameter-specs';
 import { shownValue, unitSymbol } from '@/components/bench/parameter-words';

@@ -13,6 +13,7 @@ import { vehiclePath } from '@/components/layout/paths';
 import { useCan } from '@/hooks/session';
 import { useCreateVehicle, useDeleteVehicle, usePatchVehicle, useVehicle } from '@/hooks/vehicles';
 import type { Vehicle } from '@/shared/contracts/vehicles';
+import { SensorCard } from '@/components/noise/SensorCard';
 import { VehicleForm } from './VehicleForm';
 import { KINDS } from './vehicle-words';
 
@@ -71,6 +72,7 @@ function Loaded({ vehicle, back }: { vehicle: Vehicle; back: '/vehicles' | undef
           toast({ message: 'Saved. Later runs use it; new axes decode its recordings again.' });
         }}
       />
+      <SensorCard vehicle={vehicle} readOnly={!mayWrite} />
       {deleting ? <DeleteVehicle vehicle={vehicle} onClose={() => setDeleting(false)} /> : null}
     </Screen>
   );

@@ -4,3 +4,4 @@
  */
 export { DriftGrowthChart } from './DriftGrowthChart';
 export { HistogramChart } from './HistogramChart';
+export { AllanChart } from './AllanChart';

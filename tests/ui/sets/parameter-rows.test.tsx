@@ -1,5 +1,6 @@
 import { screen, within } from '@testing-library/react-native';
-import { FIELDS, type ParameterField } from '@/components/bench/parameter-fields';
+import type { ParameterField } from '@/components/bench/parameter-field';
+import { FIELDS } from '@/components/bench/parameter-fields';
 import { writePath } from '@/components/bench/parameter-path';
 import { leafAt, parameterLeaves } from '@/components/bench/parameter-schema';
 import { SLIDERS } from '@/components/bench/parameter-specs';

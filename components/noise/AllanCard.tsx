@@ -1,0 +1,72 @@
+import { lazy, Suspense, useMemo, useState } from 'react';
+import { StyleSheet, View } from 'react-native';
+import { VisuallyHidden } from '@/components/charts/VisuallyHidden';
+import { Card } from '@/components/ui/Card';
+import { Skeleton } from '@/components/ui/Skeleton';
+import { Text } from '@/components/ui/Text';
+import { space } from '@/constants/theme';
+import type { NoiseAnalysis } from '@/shared/contracts/noise';
+import type { SensorFigures } from '@/shared/contracts/vehicles';
+import { formatNumber } from '@/shared/format';
+import { allanCurves, datasheetCurve } from './allan-content';
+import { SENSORS, type Sensor } from './sensors';
+
+// By dynamic import: the library behind it stays out of the first chunk.
+const AllanChart = lazy(async () => ({
+  default: (await import('@/components/charts/quiet/quiet-charts')).AllanChart,
+}));
+
+const HEIGHT = 320;
+
+export interface AllanCardProps {
+  sensor: Sensor;
+  analysis: NoiseAnalysis;
+  datasheet: SensorFigures | null;
+}
+
+/** Allan deviation of a sensor's three axes over the averaging time, with what was fitted and what the datasheet says. */
+export function AllanCard({ sensor, analysis, datasheet }: AllanCardProps) {
+  const [width, setWidth] = useState(0);
+  const { title, deviation } = SENSORS[sensor];
+  const curves = useMemo(() => allanCurves(analysis, sensor), [analysis, sensor]);
+  const expected = useMemo(() => {
+    const taus = curves.flatMap(({ points }) => points.map(({ tauS }) => tauS));
+    return datasheetCurve(datasheet, sensor, [Math.min(...taus), Math.max(...taus)]);
+  }, [curves, datasheet, sensor]);
+  return (
+    <Card title={`${title}: Allan deviation`} style={styles.card}>
+      <Text variant="label" tone="soft">
+        {`x solid, y dashed, z dotted; bars 68 %; the fit in thin lines${expected ? '; the datasheet in grey' : ''}.`}
+      </Text>
+      <View
+        style={{ height: HEIGHT }}
+        onLayout={(event) => setWidth(Math.floor(event.nativeEvent.layout.width))}
+      >
+        {width > 0 ? (
+          <View aria-hidden>
+            <Suspense fallback={<Skeleton height={HEIGHT} />}>
+              <AllanChart
+                curves={curves}
+                expected={expected}
+                unit={deviation.symbol}
+                width={width}
+                height={HEIGHT}
+              />
+            </Suspense>
+          </View>
+        ) : null}
+        <VisuallyHidden>
+          <Text>{curves.map((curve) => sentence(curve, deviation.symbol)).join(' ')}</Text>
+        </VisuallyHidden>
+      </View>
+    </Card>
+  );
+}
+
+function sentence({ axis, points }: ReturnType<typeof allanCurves>[number], unit: string): string {
+  const lowest = points.reduce((a, b) => (b.deviation < a.deviation ? b : a));
+  const [first] = points;
+  return `Axis ${axis}: ${formatNumber(first!.deviation)} ${unit} at ${formatNumber(first!.tauS)} s, lowest ${formatNumber(lowest.deviation)} ${unit} at ${formatNumber(lowest.tauS)} s.`;
+}
+
+const styles = StyleSheet.create({ card: { flex: 1, minWidth: 0, gap: space.s } });

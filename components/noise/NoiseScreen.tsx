@@ -1,0 +1,109 @@
+import { useState } from 'react';
+import { StyleSheet, View } from 'react-native';
+import { recordingPath } from '@/components/layout/paths';
+import { Screen } from '@/components/layout/Screen';
+import { useBreakpoint } from '@/components/layout/use-breakpoint';
+import { Card } from '@/components/ui/Card';
+import { ErrorState } from '@/components/ui/ErrorState';
+import { Notice } from '@/components/ui/Notice';
+import { Progress } from '@/components/ui/Progress';
+import { SkeletonList } from '@/components/ui/Skeleton';
+import { Text } from '@/components/ui/Text';
+import { space } from '@/constants/theme';
+import { useNoise } from '@/hooks/noise';
+import { useRecording } from '@/hooks/recordings';
+import { useVehicle } from '@/hooks/vehicles';
+import type { Recording } from '@/shared/contracts/recordings';
+import { AllanCard } from './AllanCard';
+import { NoiseActions } from './NoiseActions';
+import { StretchCard } from './StretchCard';
+import { TermsCard } from './TermsCard';
+
+/** Sensor noise from a stretch at rest: Allan curves, the terms they support, and what to do with them. */
+export function NoiseScreen({ id }: { id: string }) {
+  const recording = useRecording(id);
+  const back = recordingPath(id);
+  if (recording.isPending)
+    return (
+      <Screen title="Sensor noise" back={back}>
+        <SkeletonList label="the recording" rows={2} height={160} />
+      </Screen>
+    );
+  if (recording.isError)
+    return (
+      <Screen title="Sensor noise" back="/recordings">
+        <ErrorState
+          title="This recording cannot be shown"
+          error={recording.error}
+          onRetry={() => void recording.refetch()}
+        />
+      </Screen>
+    );
+  if (recording.data.status !== 'ready')
+    return (
+      <Screen title="Sensor noise" subtitle={recording.data.name} back={back}>
+        <Notice tone="ochre" title="Not decoded yet">
+          The noise is found in the decoded samples. Look again when the recording is ready.
+        </Notice>
+      </Screen>
+    );
+  return <Loaded key={id} recording={recording.data} />;
+}
+
+function Loaded({ recording }: { recording: Recording }) {
+  const { extraWide } = useBreakpoint();
+  const [span, setSpan] = useState<readonly [number, number] | null>(null);
+  const noise = useNoise(recording.id, span);
+  const vehicle = useVehicle(recording.vehicleId ?? '');
+  const datasheet = vehicle.data?.sensor?.datasheet ?? null;
+  const analysis = noise.data;
+  return (
+    <Screen
+      title="Sensor noise"
+      subtitle={recording.name}
+      back={recordingPath(recording.id)}
+      actions={
+        analysis ? (
+          <NoiseActions recording={recording} vehicle={vehicle.data ?? null} analysis={analysis} />
+        ) : undefined
+      }
+    >
+      <StretchCard recording={recording} analysis={analysis ?? null} onChoose={setSpan} />
+      {noise.isPending ? (
+        <Card>
+          <Progress label="Working out the Allan deviation of six axes" />
+        </Card>
+      ) : null}
+      {noise.isError ? (
+        <ErrorState title="No noise was found" error={noise.error} onRetry={() => void noise.refetch()} />
+      ) : null}
+      {analysis ? (
+        <>
+          <View style={extraWide ? styles.columns : styles.stack}>
+            <AllanCard sensor="gyro" analysis={analysis} datasheet={datasheet} />
+            <AllanCard sensor="accel" analysis={analysis} datasheet={datasheet} />
+          </View>
+          <View style={extraWide ? styles.columns : styles.stack}>
+            <TermsCard sensor="gyro" analysis={analysis} datasheet={datasheet} />
+            <TermsCard sensor="accel" analysis={analysis} datasheet={datasheet} />
+          </View>
+          <Card title="What to know of these figures">
+            {analysis.notes.map((note) => (
+              <Text key={note}>{note}</Text>
+            ))}
+            <Text variant="label" tone="soft">
+              Overlapping Allan deviation and its terms as IEEE Std 952 defines them. The terms are fitted
+              together, weighted by their confidence; one that the stretch cannot tell has no number. Bars are
+              68 %.
+            </Text>
+          </Card>
+        </>
+      ) : null}
+    </Screen>
+  );
+}
+
+const styles = StyleSheet.create({
+  columns: { flexDirection: 'row', gap: space.l, alignItems: 'stretch' },
+  stack: { gap: space.l },
+});
