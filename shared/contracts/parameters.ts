@@ -150,6 +150,42 @@ export const aidParametersSchema = z.object({
     .prefault({}),
 });
 
+const scaleStateSchema = (sigmaPpm: number) =>
+  z
+    .object({
+      enabled: z.boolean().default(false),
+      initialSigmaPpm: positive(1, 200_000).default(sigmaPpm).describe('Each axis, 1σ at the start, ppm.'),
+      randomWalkPpmPerSqrtS: positive(0, 10_000)
+        .default(0)
+        .describe('Random walk of the factor, ppm/√s; 0: it stays.'),
+    })
+    .prefault({});
+
+/** States beyond the fifteen, estimated along with them. Each is off by default: only motion that shows it makes it worth its cost. */
+export const optionalStatesSchema = z.object({
+  gyroScale: scaleStateSchema(3000).describe(
+    'Scale factors of the gyros: measured = (1 + s) × (true + bias).',
+  ),
+  accelScale: scaleStateSchema(2000).describe('Scale factors of the accelerometers, the same way.'),
+  leverArm: z
+    .object({
+      enabled: z.boolean().default(false),
+      initialSigmaM: positive(0.001, 100).default(0.2).describe('Each axis, 1σ at the start, m.'),
+    })
+    .prefault({})
+    .describe('GNSS lever arm, starting at the given one.'),
+  barometerBias: z
+    .object({
+      enabled: z.boolean().default(false),
+      initialSigmaM: positive(0.01, 10_000).default(30).describe('1σ at the start, m.'),
+      randomWalkMPerSqrtS: positive(0, 100)
+        .default(0.05)
+        .describe('Random walk as the weather changes, m/√s.'),
+    })
+    .prefault({})
+    .describe('Offset of barometric height from height above the ellipsoid.'),
+});
+
 export const parametersSchema = z.object({
   gyro: gyroParametersSchema.prefault({}),
   accel: accelParametersSchema.prefault({}),
@@ -159,6 +195,7 @@ export const parametersSchema = z.object({
   mechanisation: mechanisationParametersSchema.prefault({}),
   clipping: clippingParametersSchema.prefault({}),
   aids: aidParametersSchema.prefault({}),
+  states: optionalStatesSchema.prefault({}),
   leverArmM: vector3Schema
     .optional()
     .describe("GNSS antenna seen from the IMU, forward, right, down, m; left out: the vehicle's."),

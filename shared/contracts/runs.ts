@@ -166,6 +166,18 @@ export const stateVectorSchema = z.object({
 });
 export type StateVector = z.infer<typeof stateVectorSchema>;
 
+/** A state that the run carried behind the fifteen; `name` is its column in the kept solution. */
+export const optionalStateResultSchema = z.object({
+  name: z.string(),
+  unit: z.enum(['ppm', 'm']),
+  value: z.number().describe('Last estimate.'),
+  sigma: z.number().describe('Its 1σ.'),
+  firstSigma: z
+    .number()
+    .describe('1σ at the start: the two alike say that the recording does not show this state.'),
+});
+export type OptionalStateResult = z.infer<typeof optionalStateResultSchema>;
+
 export const runSummarySchema = z.object({
   engineVersion: z.string(),
   startS: z.number(),
@@ -187,6 +199,10 @@ export const runSummarySchema = z.object({
   outages: z.array(outageResultSchema),
   finalSigma: stateVectorSchema,
   meanSigma: stateVectorSchema,
+  optionalStates: z
+    .array(optionalStateResultSchema)
+    .optional()
+    .describe('Scale factors, lever arm, barometer bias; left out where none is switched on.'),
   gyroBiasRadPerS: z.tuple([z.number(), z.number(), z.number()]),
   accelBiasMPerS2: z.tuple([z.number(), z.number(), z.number()]),
   truth: truthStatisticsSchema.nullable(),

@@ -9,6 +9,8 @@ import { dcmFromQuat, eulerFromQuat, quatFromEuler } from '../attitude';
 import { initialBiasVariance } from '../filter/bias-models';
 import { biasParameters } from '../filter/bias-parameters';
 import type { Fixes } from '../filter/fixes';
+import { optionalVariances } from '../filter/optional-states';
+import { layoutOf } from '../filter/states';
 import { normalGravity } from '../gravity';
 import { NAV_ACCEL_BIAS, NAV_GYRO_BIAS, NAV_SIZE, QUAT } from '../strapdown/navigation-state';
 import type { ImuColumns } from '../types';
@@ -55,7 +57,10 @@ export function align(
   nav.set(parameters.initial.accelBiasMPerS2 ?? [0, 0, 0], NAV_ACCEL_BIAS);
 
   const accelVariance = initialBiasVariance(biasParameters(parameters).accel);
+  const layout = layoutOf(parameters);
   const causes: InitialCauses = {
+    layout,
+    optionalVariance: optionalVariances(parameters, layout),
     dcm,
     latRad: place.position[0],
     gravity: normalGravity(place.position[0], place.position[2]),

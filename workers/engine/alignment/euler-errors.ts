@@ -5,12 +5,12 @@
  *   δyaw = −φ_D − tan θ (φ_N cos ψ + φ_E sin ψ)
  * (Titterton & Weston 2004, § 3.6).
  */
-import { ATTITUDE, STATES } from '../filter/states';
+import { ATTITUDE, sizeOf } from '../filter/states';
 
 /** Nearer to the vertical than this the Euler angles lose their meaning; σ stay finite. */
 const MIN_COS_PITCH = 1e-3;
 
-/** 1σ of roll, pitch, yaw (rad) in `out` from a 15×15 covariance. */
+/** 1σ of roll, pitch, yaw (rad) in `out` from a covariance. */
 export function eulerSigmas(p: Float64Array, pitch: number, yaw: number, out: Float64Array): Float64Array {
   const cosYaw = Math.cos(yaw);
   const sinYaw = Math.sin(yaw);
@@ -23,13 +23,14 @@ export function eulerSigmas(p: Float64Array, pitch: number, yaw: number, out: Fl
 }
 
 function sigmaAlong(p: Float64Array, n: number, e: number, d: number): number {
-  const at = ATTITUDE * STATES + ATTITUDE;
+  const size = sizeOf(p);
+  const at = ATTITUDE * size + ATTITUDE;
   const nn = p[at]!;
   const ne = p[at + 1]!;
   const nd = p[at + 2]!;
-  const ee = p[at + STATES + 1]!;
-  const ed = p[at + STATES + 2]!;
-  const dd = p[at + 2 * STATES + 2]!;
+  const ee = p[at + size + 1]!;
+  const ed = p[at + size + 2]!;
+  const dd = p[at + 2 * size + 2]!;
   const variance = n * n * nn + e * e * ee + d * d * dd + 2 * (n * e * ne + n * d * nd + e * d * ed);
   return Math.sqrt(Math.max(0, variance));
 }

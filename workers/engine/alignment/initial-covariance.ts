@@ -6,7 +6,9 @@
 import { Matrix } from 'ml-matrix';
 import type { BudgetSource } from '../filter/error-budget';
 import { EARTH_RATE } from '../geodesy';
-import { ACCEL_BIAS, ATTITUDE, GYRO_BIAS, POSITION, STATES, VELOCITY } from '../filter/states';
+import {
+  ACCEL_BIAS, ATTITUDE, GYRO_BIAS, POSITION, STATES, VELOCITY, type StateLayout,
+} from '../filter/states'; // prettier-ignore
 
 /** Independent causes of the initial error. */
 export interface InitialCauses {
@@ -28,12 +30,16 @@ export interface InitialCauses {
   attitudeVariance: Float64Array;
   /** Heading carried by the gyros: ∫C_D· dt, s; null if not. */
   headingArm: readonly [number, number, number] | null;
+  /** States behind the fifteen: where they lie and their variances, one after the other. */
+  layout: StateLayout;
+  optionalVariance: Float64Array;
 }
 
-/** P (15×15, row by row). */
+/** P (size × size, row by row). */
 export function initialCovariance(causes: InitialCauses): Float64Array {
-  const j = Matrix.zeros(STATES, STATES);
-  const s = Matrix.zeros(STATES, STATES);
+  const { size } = causes.layout;
+  const j = Matrix.zeros(size, size);
+  const s = Matrix.zeros(size, size);
   for (let i = 0; i < 3; i += 1) {
     // Causes, in the places of the states that they are the own part of.
     s.set(POSITION + i, POSITION + i, causes.positionVariance[i]!);
@@ -42,15 +48,16 @@ export function initialCovariance(causes: InitialCauses): Float64Array {
     s.set(ACCEL_BIAS + i, ACCEL_BIAS + i, causes.accelBiasVariance[i]!);
     for (let k = 0; k < 3; k += 1) s.set(ATTITUDE + i, ATTITUDE + k, causes.attitudeVariance[3 * i + k]!);
   }
-  for (let i = 0; i < STATES; i += 1) j.set(i, i, 1);
+  for (let i = STATES; i < size; i += 1) s.set(i, i, causes.optionalVariance[i - STATES]!);
+  for (let i = 0; i < size; i += 1) j.set(i, i, 1);
   addLevelling(j, causes);
   addHeadingArm(j, causes);
   addEarthRate(j, causes);
   addLeverArm(j, causes);
   const p = j.mmul(s).mmul(j.transpose());
-  const out = new Float64Array(STATES * STATES);
-  for (let r = 0; r < STATES; r += 1)
-    for (let c = 0; c < STATES; c += 1) out[r * STATES + c] = 0.5 * (p.get(r, c) + p.get(c, r));
+  const out = new Float64Array(size * size);
+  for (let r = 0; r < size; r += 1)
+    for (let c = 0; c < size; c += 1) out[r * size + c] = 0.5 * (p.get(r, c) + p.get(c, r));
   return out;
 }
 
@@ -64,6 +71,7 @@ export function initialBudget(causes: InitialCauses): Partial<Record<BudgetSourc
     gyroBiasVariance: none,
     accelBiasVariance: none,
     attitudeVariance: new Float64Array(9),
+    optionalVariance: new Float64Array(causes.optionalVariance.length),
   };
   const alone = (part: Partial<InitialCauses>) => initialCovariance({ ...nothing, ...part });
   return {
@@ -72,15 +80,40 @@ export function initialBudget(causes: InitialCauses): Partial<Record<BudgetSourc
     'initial attitude': alone({ attitudeVariance: causes.attitudeVariance }),
     'initial velocity': alone({ velocityVariance: causes.velocityVariance }),
     'initial position': alone({ positionVariance: causes.positionVariance }),
+    ...optionalBudget(causes, alone),
+  };
+}
+
+function optionalBudget(
+  { layout, optionalVariance }: InitialCauses,
+  alone: (part: Partial<InitialCauses>) => Float64Array,
+): Partial<Record<BudgetSource, Float64Array>> {
+  if (layout.size === STATES) return {};
+  const between = (from: number, to: number) =>
+    alone({
+      optionalVariance: optionalVariance.map((v, i) => (i >= from - STATES && i < to - STATES ? v : 0)),
+    });
+  const arm = layout.leverArm;
+  const barometer = layout.barometerBias;
+  const scaleEnd = arm >= 0 ? arm : barometer >= 0 ? barometer : layout.size;
+  return {
+    'scale factors': between(STATES, scaleEnd),
+    'lever arm': arm < 0 ? between(0, 0) : between(arm, arm + 3),
+    'barometer bias': barometer < 0 ? between(0, 0) : between(barometer, barometer + 1),
   };
 }
 
 /** 0 = f_n×φ − C δb_a in north and east at rest, f_n = (0, 0, −g): φ_N = −(C δb_a)_E/g, φ_E = (C δb_a)_N/g. */
-function addLevelling(j: Matrix, { levelled, dcm, gravity }: InitialCauses): void {
+function addLevelling(j: Matrix, { levelled, dcm, gravity, layout }: InitialCauses): void {
   if (!levelled) return;
   for (let i = 0; i < 3; i += 1) {
     j.set(ATTITUDE, ACCEL_BIAS + i, -dcm[3 + i]! / gravity);
     j.set(ATTITUDE + 1, ACCEL_BIAS + i, dcm[i]! / gravity);
+    if (layout.accelScale < 0) continue;
+    // A scale factor error is a bias of its size times the specific force there, −g along down.
+    const force = -dcm[6 + i]! * gravity;
+    j.set(ATTITUDE, layout.accelScale + i, (-dcm[3 + i]! / gravity) * force);
+    j.set(ATTITUDE + 1, layout.accelScale + i, (dcm[i]! / gravity) * force);
   }
 }
 
@@ -98,7 +131,7 @@ function addEarthRate(j: Matrix, { gyroBiasFromRest, dcm, latRad }: InitialCause
   // [ω_ie×] row by row.
   const cross = [0, -down, 0, down, 0, -north, 0, north, 0];
   for (let axis = 0; axis < 3; axis += 1)
-    for (let cause = 0; cause < STATES; cause += 1) {
+    for (let cause = 0; cause < j.columns; cause += 1) {
       let sum = j.get(GYRO_BIAS + axis, cause);
       for (let r = 0; r < 3; r += 1)
         for (let c = 0; c < 3; c += 1)
@@ -107,15 +140,18 @@ function addEarthRate(j: Matrix, { gyroBiasFromRest, dcm, latRad }: InitialCause
     }
 }
 
-/** r̂ = antenna − Ĉl: δr = w − (C l)×φ. */
-function addLeverArm(j: Matrix, { armNed }: InitialCauses): void {
+/** r̂ = antenna − Ĉl̂: δr = w − (C l)×φ − C δl. */
+function addLeverArm(j: Matrix, { armNed, dcm, layout }: InitialCauses): void {
   if (armNed === null) return;
   const [n, e, d] = armNed;
   const cross = [0, -d, e, d, 0, -n, -e, n, 0];
   for (let r = 0; r < 3; r += 1)
-    for (let cause = 0; cause < STATES; cause += 1) {
+    for (let cause = 0; cause < j.columns; cause += 1) {
       let sum = j.get(POSITION + r, cause);
       for (let c = 0; c < 3; c += 1) sum -= cross[3 * r + c]! * j.get(ATTITUDE + c, cause);
       j.set(POSITION + r, cause, sum);
     }
+  if (layout.leverArm < 0) return;
+  for (let r = 0; r < 3; r += 1)
+    for (let c = 0; c < 3; c += 1) j.set(POSITION + r, layout.leverArm + c, -dcm[3 * r + c]!);
 }

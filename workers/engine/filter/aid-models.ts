@@ -6,7 +6,7 @@ import { EARTH_RATE } from '../geodesy';
 import { LAT, NAV_GYRO_BIAS, VN } from '../strapdown/navigation-state';
 import type { Strapdown } from '../strapdown/strapdown';
 import type { MeasurementUpdate } from './measurement-update';
-import { ATTITUDE, GYRO_BIAS, STATES, VELOCITY } from './states';
+import { ATTITUDE, GYRO_BIAS, VELOCITY } from './states';
 
 const VELOCITY_COLUMNS = [3, 4, 5];
 const ROTATION_COLUMNS = [6, 7, 8, 9, 10, 11];
@@ -16,7 +16,7 @@ const BODY_VELOCITY_COLUMNS = [3, 4, 5, 6, 7, 8];
 export function zeroVelocity({ nav }: Strapdown, variance: number, update: MeasurementUpdate): void {
   update.begin(3, VELOCITY_COLUMNS);
   for (let i = 0; i < 3; i += 1) {
-    update.h[i * STATES + VELOCITY + i] = 1;
+    update.h[i * update.size + VELOCITY + i] = 1;
     update.innovation[i] = -nav[VN + i]!;
     update.r[i] = variance;
   }
@@ -40,7 +40,7 @@ export function zeroRotation(
     const n = dcm[i]!;
     const e = dcm[3 + i]!;
     const d = dcm[6 + i]!;
-    const at = i * STATES;
+    const at = i * update.size;
     update.h[at + ATTITUDE] = -(e * down);
     update.h[at + ATTITUDE + 1] = n * down - d * north;
     update.h[at + ATTITUDE + 2] = e * north;
@@ -68,7 +68,7 @@ export function nonHolonomic(
     const n = dcm[axis]!;
     const e = dcm[3 + axis]!;
     const d = dcm[6 + axis]!;
-    const at = row * STATES;
+    const at = row * update.size;
     update.h[at + VELOCITY] = n;
     update.h[at + VELOCITY + 1] = e;
     update.h[at + VELOCITY + 2] = d;

@@ -8,7 +8,7 @@
  * this way of composing).
  */
 import { QUAT } from '../strapdown/navigation-state';
-import { ATTITUDE, GYRO_BIAS, STATES } from './states';
+import { ATTITUDE, GYRO_BIAS } from './states';
 
 /** q ← q_z(−c_D) ⊗ q(−c_N, −c_E) ⊗ q for the attitude part c of a correction (rad, in n; φ̂ = −c). */
 export function turnAttitude(nav: Float64Array, correction: Float64Array): void {
@@ -36,27 +36,28 @@ export function turnAttitude(nav: Float64Array, correction: Float64Array): void 
   nav[QUAT + 3] = c * r3 + s * r0;
 }
 
-/** P ← GPGᵀ, on the attitude G = R_z(−c_D)(I − ½[c_t×]) with the tilt part c_t of the correction. */
+/** P ← GPGᵀ, on the attitude G = R_z(−c_D)(I − ½[c_t×]) with the tilt part c_t of the correction (as long as P is wide). */
 export function resetAttitudeCovariance(p: Float64Array, correction: Float64Array): void {
+  const size = correction.length;
   const n = 0.5 * correction[ATTITUDE]!;
   const e = 0.5 * correction[ATTITUDE + 1]!;
   const d = correction[ATTITUDE + 2]!;
   if (n * n + e * e + d * d < 1e-14) return;
   const c = Math.cos(d);
   const s = Math.sin(d);
-  const at = ATTITUDE * STATES;
-  for (let j = 0; j < STATES; j += 1) {
+  const at = ATTITUDE * size;
+  for (let j = 0; j < size; j += 1) {
     const x = p[at + j]!;
-    const y = p[at + STATES + j]!;
-    const z = p[at + 2 * STATES + j]!;
+    const y = p[at + size + j]!;
+    const z = p[at + 2 * size + j]!;
     const tx = x - e * z;
     const ty = y + n * z;
     p[at + j] = c * tx + s * ty;
-    p[at + STATES + j] = c * ty - s * tx;
-    p[at + 2 * STATES + j] = z - (n * y - e * x);
+    p[at + size + j] = c * ty - s * tx;
+    p[at + 2 * size + j] = z - (n * y - e * x);
   }
-  for (let i = 0; i < STATES; i += 1) {
-    const row = i * STATES + ATTITUDE;
+  for (let i = 0; i < size; i += 1) {
+    const row = i * size + ATTITUDE;
     const x = p[row]!;
     const y = p[row + 1]!;
     const z = p[row + 2]!;
@@ -68,5 +69,5 @@ export function resetAttitudeCovariance(p: Float64Array, correction: Float64Arra
   }
   // Equal to the last bit again.
   for (let i = ATTITUDE; i < GYRO_BIAS; i += 1)
-    for (let j = ATTITUDE; j < i; j += 1) p[i * STATES + j] = p[j * STATES + i]!;
+    for (let j = ATTITUDE; j < i; j += 1) p[i * size + j] = p[j * size + i]!;
 }

@@ -7,7 +7,7 @@ import { resetAttitudeCovariance } from './attitude-feedback';
 import type { MeasurementUpdate } from './measurement-update';
 import type { ProcessNoise } from './process-noise';
 import type { Propagation } from './propagation';
-import { ACCEL_BIAS, ATTITUDE, GYRO_BIAS, STATES, VELOCITY } from './states';
+import { ACCEL_BIAS, ATTITUDE, GYRO_BIAS, PLAIN_LAYOUT, STATES, VELOCITY, type StateLayout } from './states';
 
 export const BUDGET_SOURCES = [
   'gyro white noise',
@@ -20,7 +20,20 @@ export const BUDGET_SOURCES = [
   'GNSS noise',
   'aids',
 ] as const;
-export type BudgetSource = (typeof BUDGET_SOURCES)[number];
+/** The same for states behind the fifteen; told only where they are carried. */
+const OPTIONAL_SOURCES = ['scale factors', 'lever arm', 'barometer bias'] as const;
+export type BudgetSource = (typeof BUDGET_SOURCES)[number] | (typeof OPTIONAL_SOURCES)[number];
+
+/** The causes that a layout can tell apart. */
+export function budgetSources({
+  gyroScale,
+  accelScale,
+  leverArm,
+  barometerBias,
+}: StateLayout): BudgetSource[] {
+  const carried = [Math.max(gyroScale, accelScale), leverArm, barometerBias];
+  return [...BUDGET_SOURCES, ...OPTIONAL_SOURCES.filter((_, i) => carried[i]! >= 0)];
+}
 
 /** Process noise that belongs to a source: the states whose diagonal it enters. Gaps and clipping count as white noise. */
 const NOISE_STATES: Partial<Record<BudgetSource, number>> = {
@@ -39,22 +52,32 @@ export interface BudgetShare {
 
 export class ErrorBudget {
   private readonly parts: Float64Array[];
-  private readonly half = new Float64Array(STATES);
-  private readonly copy = new Float64Array(STATES * STATES);
+  private readonly sources: readonly BudgetSource[];
+  private readonly size: number;
+  private readonly half: Float64Array;
+  private readonly copy: Float64Array;
 
-  /** `start`: covariances at the start by cause, 15×15; causes left out begin at zero. */
-  constructor(start: Partial<Record<BudgetSource, Float64Array>>) {
-    this.parts = BUDGET_SOURCES.map((source) => start[source]?.slice() ?? new Float64Array(STATES * STATES));
+  /** `start`: covariances at the start by cause, size × size; causes left out begin at zero. */
+  constructor(
+    start: Partial<Record<BudgetSource, Float64Array>>,
+    private readonly layout: StateLayout = PLAIN_LAYOUT,
+  ) {
+    const { size } = layout;
+    this.size = size;
+    this.half = new Float64Array(size);
+    this.copy = new Float64Array(size * size);
+    this.sources = budgetSources(layout);
+    this.parts = this.sources.map((source) => start[source]?.slice() ?? new Float64Array(size * size));
   }
 
   /** The step whose Φ `propagation` holds and whose noise `noise` has filled. */
   step(propagation: Propagation, noise: ProcessNoise): void {
-    BUDGET_SOURCES.forEach((source, i) => propagation.propagate(this.parts[i]!, this.halfOf(source, noise)));
+    this.sources.forEach((source, i) => propagation.propagate(this.parts[i]!, this.halfOf(source, noise)));
   }
 
   /** An accepted update, after its gain was formed; its R belongs to `source`. */
   update(update: MeasurementUpdate, source: 'GNSS noise' | 'aids'): void {
-    BUDGET_SOURCES.forEach((name, i) => update.applyGain(this.parts[i]!, name === source));
+    this.sources.forEach((name, i) => update.applyGain(this.parts[i]!, name === source));
   }
 
   reset(correction: Float64Array): void {
@@ -63,45 +86,52 @@ export class ErrorBudget {
 
   /** A recovery: states scaled (DPD), some cut off and given a variance by GNSS. */
   recover(scale: Float64Array, cut: Float64Array, variance: Float64Array): void {
+    const { size } = this;
     for (const part of this.parts)
-      for (let i = 0; i < STATES; i += 1)
-        for (let j = 0; j < STATES; j += 1)
-          part[i * STATES + j] =
-            cut[i] === 1 || cut[j] === 1 ? 0 : part[i * STATES + j]! * scale[i]! * scale[j]!;
+      for (let i = 0; i < size; i += 1)
+        for (let j = 0; j < size; j += 1)
+          part[i * size + j] = cut[i] === 1 || cut[j] === 1 ? 0 : part[i * size + j]! * scale[i]! * scale[j]!;
     const gnss = this.partOf('GNSS noise');
-    for (let i = 0; i < STATES; i += 1) if (cut[i] === 1) gnss[i * (STATES + 1)] = variance[i]!;
+    for (let i = 0; i < size; i += 1) if (cut[i] === 1) gnss[i * (size + 1)] = variance[i]!;
   }
 
   /** Variance that a gap adds to a state. */
   add(state: number, variance: number): void {
-    const at = state * (STATES + 1);
+    const at = state * (this.size + 1);
     const part = this.partOf('gyro white noise');
     part[at] = part[at]! + variance;
   }
 
   /** Shares at a moment, after a further part of a step where `propagation` is given. */
   shares(propagation: Propagation | null, noise: ProcessNoise): BudgetShare[] {
-    return BUDGET_SOURCES.map((source, i) => {
+    const { size } = this;
+    return this.sources.map((source, i) => {
       this.copy.set(this.parts[i]!);
       if (propagation !== null) propagation.propagate(this.copy, this.halfOf(source, noise));
       const p = this.copy;
       return {
         source,
-        horizontalM: Math.sqrt(p[0]! + p[STATES + 1]!),
-        verticalM: Math.sqrt(p[2 * (STATES + 1)]!),
+        horizontalM: Math.sqrt(p[0]! + p[size + 1]!),
+        verticalM: Math.sqrt(p[2 * (size + 1)]!),
       };
     });
   }
 
   private halfOf(source: BudgetSource, noise: ProcessNoise): Float64Array {
+    const { layout } = this;
     this.half.fill(0);
+    const take = (from: number, to: number) => {
+      for (let i = Math.max(from, 0); i < to; i += 1) this.half[i] = noise.half[i]!;
+    };
+    if (source === 'scale factors') take(STATES, STATES + scaleStates(layout));
+    if (source === 'barometer bias') take(layout.barometerBias, layout.barometerBias + 1);
     const first = NOISE_STATES[source];
-    if (first !== undefined) for (let i = first; i < first + 3; i += 1) this.half[i] = noise.half[i]!;
+    if (first !== undefined) take(first, first + 3);
     return this.half;
   }
 
   private partOf(source: BudgetSource): Float64Array {
-    return this.parts[BUDGET_SOURCES.indexOf(source)]!;
+    return this.parts[this.sources.indexOf(source)]!;
   }
 
   save(): Float64Array[] {
@@ -111,3 +141,7 @@ export class ErrorBudget {
     this.parts.forEach((part, i) => part.set(saved[i]!));
   }
 }
+
+/** Scale factors come first behind the fifteen. */
+const scaleStates = ({ gyroScale, accelScale }: StateLayout) =>
+  (gyroScale < 0 ? 0 : 3) + (accelScale < 0 ? 0 : 3);

@@ -1,5 +1,5 @@
 /**
- * The 15-state error-state filter over a recording: strapdown at full rate, covariance at its own rate, GNSS fixes
+ * The error-state filter over a recording, 15 states and those that are switched on behind them: strapdown at full rate, covariance at its own rate, GNSS fixes
  * at their exact measurement times, errors fed back at once (closed loop).
  *
  * Read in this order: `advanceSample` (one IMU interval with the fixes that lie in it), `covarianceStep`,
@@ -23,11 +23,14 @@ import { GnssModels } from './gnss-models';
 import { HeadingWatch } from './heading-watch';
 import { MeasurementUpdate } from './measurement-update';
 import { ProcessNoise } from './process-noise';
+import { OptionalStates } from './optional-states';
 import { Propagation } from './propagation';
 import { recoverGroups } from './recovery';
 import type { Tape } from './tape';
 import { VehicleAids } from './vehicle-aids';
-import { ATTITUDE, STATES } from './states';
+import { ATTITUDE, layoutOf, type StateLayout } from './states';
+import type { TransitionSource } from './transition';
+import { transitionOf } from './wide-transition';
 
 /** A fix this close to an IMU sample, s, counts as simultaneous. */
 const SAME_TIME_S = 1e-7;
@@ -36,8 +39,14 @@ const GAP_STEP_S = 0.02;
 
 export class ErrorStateFilter {
   readonly strapdown: Strapdown;
-  /** Covariance of the error states, 15×15, row by row. */
-  readonly p = new Float64Array(STATES * STATES);
+  /** Where which state lies. */
+  readonly layout: StateLayout;
+  /** States behind the fifteen; null where there are none. */
+  readonly optional: OptionalStates | null;
+  /** What the covariance's steps are formed from. */
+  readonly motion: TransitionSource;
+  /** Covariance of the error states, size × size, row by row. */
+  readonly p: Float64Array;
   /** IMU sample that the state belongs to. */
   sample = 0;
   /** Takes down what the smoother needs, where one is wanted. */
@@ -49,8 +58,8 @@ export class ErrorStateFilter {
   readonly gates: Readonly<Record<GroupName | AidName, Gate>>;
   private readonly aids: VehicleAids | null;
   private readonly intervals: ImuIntervals;
-  private readonly propagation = new Propagation();
-  private readonly update = new MeasurementUpdate();
+  private readonly propagation: Propagation;
+  private readonly update: MeasurementUpdate;
   private readonly models: GnssModels;
   private readonly rate = new Float64Array(3);
   readonly noise: ProcessNoise;
@@ -68,6 +77,13 @@ export class ErrorStateFilter {
     private readonly listener: FilterListener,
   ) {
     this.strapdown = new Strapdown(parameters.mechanisation.scheme);
+    this.layout = layoutOf(parameters);
+    const { size } = this.layout;
+    this.p = new Float64Array(size * size);
+    this.optional = OptionalStates.of(this.layout, leverArmM);
+    this.motion = this.optional === null ? this.strapdown : motionWith(this.strapdown, this.optional);
+    this.propagation = new Propagation(transitionOf(this.layout));
+    this.update = new MeasurementUpdate(size);
     this.intervals = new ImuIntervals(imu);
     const gate = () => new Gate(parameters.gate);
     this.gates = {
@@ -82,7 +98,7 @@ export class ErrorStateFilter {
     // A rate drawn on from the last two intervals has 2.5 times the variance of one.
     const { nominalS } = this.intervals;
     const rateNoise = nominalS > 0 ? (2.5 * this.noise.gyroWhite) / nominalS : 0;
-    this.models = new GnssModels(leverArmM, rateNoise);
+    this.models = new GnssModels(this.optional?.leverArm ?? leverArmM, rateNoise, this.layout);
     this.clipping = new ClippingWatch(findClipping(imu, parameters.clipping));
     this.stepS = parameters.mechanisation.covarianceIntervalS - 0.5 * this.intervals.nominalS;
   }
@@ -98,7 +114,7 @@ export class ErrorStateFilter {
   }
 
   private watchHeading(): void {
-    this.headingWatch.restart(this.timeS, Math.sqrt(this.p[(ATTITUDE + 2) * (STATES + 1)]!));
+    this.headingWatch.restart(this.timeS, Math.sqrt(this.p[(ATTITUDE + 2) * (this.layout.size + 1)]!));
   }
 
   get timeS(): number {
@@ -114,6 +130,7 @@ export class ErrorStateFilter {
     const end = imu.timeS[k]!;
     const duration = end - start;
     if (intervals.isGap) this.reportGap(start, end);
+    else this.optional?.scaleInterval(intervals.interval);
     if (k >= this.clipping.from) this.enterClipping(k);
     let from = 0;
     while (this.fix < fixes.count && fixes.timeS[this.fix]! <= end + SAME_TIME_S) {
@@ -160,6 +177,7 @@ export class ErrorStateFilter {
     const { interval, isGap } = this.intervals;
     if (!isGap) {
       this.strapdown.advance(interval, from, to);
+      this.optional?.gather(interval, from, to);
       return;
     }
     const duration = interval[DURATION]!;
@@ -172,12 +190,13 @@ export class ErrorStateFilter {
       const b = from + ((to - from) * (i + 1)) / steps;
       bridge.fill(interval, (a + b) / 2, this.strapdown);
       this.strapdown.advance(interval, a, b);
+      this.optional?.gather(interval, a, b);
       this.covarianceStep();
     }
     this.noise.gyroExtra = 0;
     this.noise.accelExtra = 0;
     if (to < 1) return;
-    const heading = (ATTITUDE + 2) * (STATES + 1);
+    const heading = (ATTITUDE + 2) * (this.layout.size + 1);
     this.p[heading] = this.p[heading]! + bridge.headingVariance;
     this.budget?.add(ATTITUDE + 2, bridge.headingVariance);
     this.watchHeading();
@@ -198,16 +217,17 @@ export class ErrorStateFilter {
     const dt = strapdown.sumForce[3]!;
     if (dt === 0) return;
     this.propagate(this.p, dt);
-    this.tape?.writeStep(strapdown);
+    this.tape?.writeStep(this.motion);
     this.budget?.step(this.propagation, noise);
     strapdown.resetSums();
+    this.optional?.resetSums();
     if (noise.gyroDecay > 0) this.decay(NAV_GYRO_BIAS, Math.exp(-noise.gyroDecay * dt));
     if (noise.accelDecay > 0) this.decay(NAV_ACCEL_BIAS, Math.exp(-noise.accelDecay * dt));
   }
 
   private propagate(p: Float64Array, dt: number): void {
-    const { strapdown, propagation, noise } = this;
-    propagation.transition.form(strapdown, noise.gyroDecay, noise.accelDecay);
+    const { motion, propagation, noise } = this;
+    propagation.transition.form(motion, noise.gyroDecay, noise.accelDecay);
     noise.fill(dt);
     propagation.propagate(p, noise.half);
   }
@@ -229,7 +249,7 @@ export class ErrorStateFilter {
   budgetNow(): BudgetShare[] | null {
     if (this.budget === null) return null;
     const dt = this.strapdown.sumForce[3]!;
-    if (dt > 0) this.propagation.transition.form(this.strapdown, this.noise.gyroDecay, this.noise.accelDecay);
+    if (dt > 0) this.propagation.transition.form(this.motion, this.noise.gyroDecay, this.noise.accelDecay);
     if (dt > 0) this.noise.fill(dt);
     return this.budget.shares(dt > 0 ? this.propagation : null, this.noise);
   }
@@ -300,6 +320,7 @@ export class ErrorStateFilter {
     const wrong = this.headingWatch.add(-correction[ATTITUDE + 2]!);
     if (wrong !== null) this.warn('heading-corrected', wrong, this.timeS);
     correctState(strapdown.nav, strapdown.earth, correction);
+    this.optional?.correct(correction, this.intervals.interval);
     strapdown.attitudeChanged();
     resetAttitudeCovariance(p, correction);
     this.budget?.reset(correction);
@@ -324,6 +345,7 @@ export class ErrorStateFilter {
       extraNoise: [this.noise.gyroExtra, this.noise.accelExtra],
       heading: this.headingWatch.save(),
       aids: this.aids?.save() ?? [],
+      optional: this.optional?.save() ?? null,
       budget: this.budget?.save() ?? null,
       gates: Object.values(this.gates).map((gate) => gate.save()),
     };
@@ -338,7 +360,17 @@ export class ErrorStateFilter {
     [this.noise.gyroExtra, this.noise.accelExtra] = saved.extraNoise;
     this.headingWatch.restore(saved.heading);
     this.aids?.restore(saved.aids);
+    if (saved.optional !== null) this.optional?.restore(saved.optional);
     if (saved.budget !== null) this.budget?.restore(saved.budget);
     Object.values(this.gates).forEach((gate, i) => gate.restore(saved.gates[i]!));
   }
 }
+
+/** The strapdown's sums, which keep their arrays, and beside them what was measured. */
+const motionWith = (strapdown: Strapdown, { sumMeasured }: OptionalStates): TransitionSource => ({
+  nav: strapdown.nav,
+  earth: strapdown.earth,
+  sumDcm: strapdown.sumDcm,
+  sumForce: strapdown.sumForce,
+  sumMeasured,
+});

@@ -26,6 +26,7 @@ export interface FilterSnapshot {
   extraNoise: readonly [number, number];
   heading: readonly number[];
   aids: readonly number[];
+  optional: readonly Float64Array[] | null;
   budget: Float64Array[] | null;
   gates: readonly (readonly number[])[];
 }

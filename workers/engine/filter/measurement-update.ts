@@ -13,10 +13,10 @@ export const MAX_ROWS = 3;
 export class MeasurementUpdate {
   /** Rows in use, 1…3; the others measure nothing. */
   rows = 0;
-  /** H, row by row, MAX_ROWS × 15. Columns not in `columns` must be 0. */
-  readonly h = new Float64Array(MAX_ROWS * STATES);
+  /** H, row by row, MAX_ROWS × size. Columns not in `columns` must be 0. */
+  readonly h: Float64Array;
   /** Columns of H that may hold something, and how many of them count. */
-  readonly columns = new Int32Array(STATES);
+  readonly columns: Int32Array;
   columnCount = 0;
   /** Diagonal of R. */
   readonly r = new Float64Array(MAX_ROWS);
@@ -26,14 +26,24 @@ export class MeasurementUpdate {
   /** νᵀS⁻¹ν after `prepare`. */
   nis = 0;
   /** Kν after `apply`: what to add to the state. */
-  readonly correction = new Float64Array(STATES);
-  /** K, row by row, 15 × MAX_ROWS, after `apply`. */
-  readonly gain = new Float64Array(STATES * MAX_ROWS);
-  private readonly ph = new Float64Array(STATES * MAX_ROWS);
+  readonly correction: Float64Array;
+  /** K, row by row, size × MAX_ROWS, after `apply`. */
+  readonly gain: Float64Array;
+  private readonly ph: Float64Array;
   /** S⁻¹, row by row, after `prepare`. */
   readonly inverse = new Float64Array(MAX_ROWS * MAX_ROWS);
-  private readonly otherPh = new Float64Array(STATES * MAX_ROWS);
+  private readonly otherPh: Float64Array;
   private readonly otherS = new Float64Array(MAX_ROWS * MAX_ROWS);
+
+  /** `size`: number of states; rows of H and P are that long. */
+  constructor(readonly size: number = STATES) {
+    this.h = new Float64Array(MAX_ROWS * size);
+    this.columns = new Int32Array(size);
+    this.correction = new Float64Array(size);
+    this.gain = new Float64Array(size * MAX_ROWS);
+    this.ph = new Float64Array(size * MAX_ROWS);
+    this.otherPh = new Float64Array(size * MAX_ROWS);
+  }
 
   /** Clears H and says which of its columns will be filled. Rows that are not in use measure nothing: H 0, R 1. */
   begin(rows: number, columns: readonly number[]): void {
@@ -47,7 +57,7 @@ export class MeasurementUpdate {
     }
   }
 
-  /** PHᵀ, S, its inverse and the NIS; P (15×15) is only read. */
+  /** PHᵀ, S, its inverse and the NIS; P (size × size) is only read. */
   prepare(p: Float64Array): void {
     const { ph, s, innovation } = this;
     this.project(p, ph);
@@ -58,14 +68,14 @@ export class MeasurementUpdate {
 
   /** After `prepare`: K, the correction, and P in place. */
   apply(p: Float64Array): void {
-    const { gain, ph, inverse, innovation, correction } = this;
+    const { gain, ph, inverse, innovation, correction, size } = this;
     const i00 = inverse[0]!;
     const i01 = inverse[1]!;
     const i02 = inverse[2]!;
     const i11 = inverse[4]!;
     const i12 = inverse[5]!;
     const i22 = inverse[8]!;
-    for (let i = 0; i < STATES; i += 1) {
+    for (let i = 0; i < size; i += 1) {
       const at = i * MAX_ROWS;
       const a = ph[at]!;
       const b = ph[at + 1]!;
@@ -95,9 +105,9 @@ export class MeasurementUpdate {
    * order in an error of K. Upper triangle, then mirrored.
    */
   private joseph(p: Float64Array, ph: Float64Array, s: Float64Array): void {
-    const { gain } = this;
-    for (let i = 0; i < STATES; i += 1) {
-      const row = i * STATES;
+    const { gain, size } = this;
+    for (let i = 0; i < size; i += 1) {
+      const row = i * size;
       const own = i * MAX_ROWS;
       const ka = gain[own]!;
       const kb = gain[own + 1]!;
@@ -105,23 +115,23 @@ export class MeasurementUpdate {
       const ra = ka * s[0]! + kb * s[3]! + kc * s[6]! - ph[own]!;
       const rb = ka * s[1]! + kb * s[4]! + kc * s[7]! - ph[own + 1]!;
       const rc = ka * s[2]! + kb * s[5]! + kc * s[8]! - ph[own + 2]!;
-      for (let j = i; j < STATES; j += 1) {
+      for (let j = i; j < size; j += 1) {
         const at = j * MAX_ROWS;
         const value =
           p[row + j]! -
           (ka * ph[at]! + kb * ph[at + 1]! + kc * ph[at + 2]!) +
           (ra * gain[at]! + rb * gain[at + 1]! + rc * gain[at + 2]!);
         p[row + j] = value;
-        p[j * STATES + i] = value;
+        p[j * size + i] = value;
       }
     }
   }
 
-  /** out = PHᵀ, 15 × MAX_ROWS. */
+  /** out = PHᵀ, size × MAX_ROWS. */
   private project(p: Float64Array, out: Float64Array): void {
-    const { h, columns, columnCount } = this;
-    for (let i = 0; i < STATES; i += 1) {
-      const row = i * STATES;
+    const { h, columns, columnCount, size } = this;
+    for (let i = 0; i < size; i += 1) {
+      const row = i * size;
       let a = 0;
       let b = 0;
       let c = 0;
@@ -129,8 +139,8 @@ export class MeasurementUpdate {
         const j = columns[n]!;
         const value = p[row + j]!;
         a += value * h[j]!;
-        b += value * h[STATES + j]!;
-        c += value * h[2 * STATES + j]!;
+        b += value * h[size + j]!;
+        c += value * h[2 * size + j]!;
       }
       out[i * MAX_ROWS] = a;
       out[i * MAX_ROWS + 1] = b;
@@ -140,13 +150,13 @@ export class MeasurementUpdate {
 
   /** out = H(PHᵀ) + R. */
   private innovationCovariance(ph: Float64Array, out: Float64Array): void {
-    const { h, columns, columnCount, r } = this;
+    const { h, columns, columnCount, r, size } = this;
     for (let a = 0; a < MAX_ROWS; a += 1)
       for (let b = a; b < MAX_ROWS; b += 1) {
         let sum = a === b ? r[a]! : 0;
         for (let n = 0; n < columnCount; n += 1) {
           const j = columns[n]!;
-          sum += h[a * STATES + j]! * ph[j * MAX_ROWS + b]!;
+          sum += h[a * size + j]! * ph[j * MAX_ROWS + b]!;
         }
         out[a * MAX_ROWS + b] = sum;
         out[b * MAX_ROWS + a] = sum;

@@ -2,7 +2,8 @@
 import type { Parameters } from '@/shared/contracts/parameters';
 import { biasDecayRate, biasNoiseDensity, halfBiasNoise } from './bias-models';
 import { biasParameters } from './bias-parameters';
-import { ACCEL_BIAS, ATTITUDE, GYRO_BIAS, POSITION, STATES, VELOCITY } from './states';
+import { optionalDensities } from './optional-states';
+import { ACCEL_BIAS, ATTITUDE, GYRO_BIAS, layoutOf, POSITION, STATES, VELOCITY } from './states';
 
 export class ProcessNoise {
   /** N_g² (rad²/s) and N_a² (m²/s³). */
@@ -15,11 +16,15 @@ export class ProcessNoise {
   readonly gyroDecay: number;
   readonly accelDecay: number;
   /** What `fill` made: to be added to the diagonal of P before and after Φ. */
-  readonly half = new Float64Array(STATES);
+  readonly half: Float64Array;
+  /** Densities of the random walks of the states behind the fifteen, unit²/s. */
+  private readonly optionalDensity: Float64Array;
   private readonly gyroBiasDensity: number;
   private readonly accelBiasDensity: number;
 
   constructor(parameters: Parameters) {
+    this.optionalDensity = optionalDensities(parameters, layoutOf(parameters));
+    this.half = new Float64Array(STATES + this.optionalDensity.length);
     this.gyroWhite = parameters.gyro.whiteNoiseRadPerSqrtS ** 2;
     this.accelWhite = parameters.accel.whiteNoiseMPerSPerSqrtS ** 2;
     const bias = biasParameters(parameters);
@@ -43,5 +48,7 @@ export class ProcessNoise {
       half[GYRO_BIAS + i] = gyroBias;
       half[ACCEL_BIAS + i] = accelBias;
     }
+    const { optionalDensity } = this;
+    for (let i = 0; i < optionalDensity.length; i += 1) half[STATES + i] = 0.5 * optionalDensity[i]! * dt;
   }
 }

@@ -8,7 +8,7 @@ import type { GroupName } from './filter-types';
 import { biasParameters } from './bias-parameters';
 import { initialBiasVariance } from './bias-models';
 import type { MeasurementUpdate } from './measurement-update';
-import { ACCEL_BIAS, ATTITUDE, GYRO_BIAS, POSITION, STATES, VELOCITY } from './states';
+import { ACCEL_BIAS, ATTITUDE, GYRO_BIAS, POSITION, sizeOf, STATES, VELOCITY } from './states';
 
 /** Attitude is never widened beyond these, rad: the error model is for small angles. */
 const MAX_TILT_SIGMA = (10 * Math.PI) / 180;
@@ -27,13 +27,14 @@ export function recoverGroups(
   update: MeasurementUpdate,
 ): void {
   const { p, gates, parameters } = filter;
+  const { size } = filter.layout;
   const excess = Math.max(1, update.nis / update.rows);
   const velocityUsed = parameters.gnss.useVelocity && gates.velocity.hasJudged;
   const velocityInDoubt = group === 'velocity' || gates.velocity.isRejecting || !velocityUsed;
-  const correction = new Float64Array(STATES);
-  const cut = new Float64Array(STATES);
-  const given = new Float64Array(STATES);
-  const scale = new Float64Array(STATES).fill(1);
+  const correction = new Float64Array(size);
+  const cut = new Float64Array(size);
+  const given = new Float64Array(size);
+  const scale = new Float64Array(size).fill(1);
   if (velocityInDoubt) widen(p, excess, parameters, scale);
   const first = group === 'position' ? POSITION : VELOCITY;
   let row = 0;
@@ -44,13 +45,13 @@ export function recoverGroups(
     given[first + axis] = CAUTION * update.r[row]!;
     if (group === 'position' && velocityInDoubt) {
       const speed = update.innovation[row]! / parameters.gate.recoveryAfterS;
-      const variance = Math.max(p[(VELOCITY + axis) * 16]!, speed * speed, MIN_VELOCITY_SIGMA ** 2);
+      const variance = Math.max(p[(VELOCITY + axis) * (size + 1)]!, speed * speed, MIN_VELOCITY_SIGMA ** 2);
       cut[VELOCITY + axis] = 1;
       given[VELOCITY + axis] = variance;
     }
     row += 1;
   }
-  for (let i = 0; i < STATES; i += 1) if (cut[i] === 1) isolate(p, i, given[i]!);
+  for (let i = 0; i < size; i += 1) if (cut[i] === 1) isolate(p, i, given[i]!);
   filter.tape?.writeBreak(cut);
   filter.budget?.recover(scale, cut, given);
   filter.feedBack(correction);
@@ -66,11 +67,12 @@ export function recoverGroups(
 
 /** Cuts state i from all others and gives it a variance. */
 function isolate(p: Float64Array, i: number, variance: number): void {
-  for (let j = 0; j < STATES; j += 1) {
-    p[i * STATES + j] = 0;
-    p[j * STATES + i] = 0;
+  const size = sizeOf(p);
+  for (let j = 0; j < size; j += 1) {
+    p[i * size + j] = 0;
+    p[j * size + i] = 0;
   }
-  p[i * STATES + i] = variance;
+  p[i * size + i] = variance;
 }
 
 /** P ← DPD on attitude and biases: variances `excess` times larger, within what such a state can be. */
@@ -80,6 +82,7 @@ function widen(
   parameters: ErrorStateFilter['parameters'],
   scale: Float64Array,
 ): void {
+  const size = sizeOf(p);
   const bias = biasParameters(parameters);
   const gyro = initialBiasVariance(bias.gyro);
   const accel = initialBiasVariance(bias.accel);
@@ -88,11 +91,11 @@ function widen(
     if (i < ATTITUDE + 2) limit = MAX_TILT_SIGMA ** 2;
     else if (i < GYRO_BIAS) limit = MAX_HEADING_SIGMA ** 2;
     else if (i < ACCEL_BIAS) limit = gyro;
-    const factor = Math.sqrt(Math.max(1, Math.min(excess, limit / p[i * STATES + i]!)));
+    const factor = Math.sqrt(Math.max(1, Math.min(excess, limit / p[i * size + i]!)));
     scale[i] = factor;
-    for (let j = 0; j < STATES; j += 1) {
-      p[i * STATES + j] = p[i * STATES + j]! * factor;
-      p[j * STATES + i] = p[j * STATES + i]! * factor;
+    for (let j = 0; j < size; j += 1) {
+      p[i * size + j] = p[i * size + j]! * factor;
+      p[j * size + i] = p[j * size + i]! * factor;
     }
   }
 }

@@ -9,34 +9,49 @@
  *   anywhere          e = −Pλ,           P_s = P − PΛP.
  */
 import { MAX_ROWS } from './measurement-update';
-import { ATTITUDE, STATES } from './states';
+import { ATTITUDE, PLAIN_LAYOUT, sizeOf, type StateLayout } from './states';
 import { BREAK, Motion, OUTPUT, STEP, UPDATE, type Tape, type TapeMark } from './tape';
-import { Transition } from './transition';
-
-const N = STATES;
+import type { Transition } from './transition';
+import { transitionOf } from './wide-transition';
 
 export class Smoother {
   /** Of the last output: what to add to its state, and its smoothed covariance. */
-  readonly correction = new Float64Array(N);
-  readonly covariance = new Float64Array(N * N);
-  private readonly lambda = new Float64Array(N);
-  private readonly information = new Float64Array(N * N);
-  private readonly transition = new Transition();
-  private readonly phi = new Float64Array(N * N);
-  private readonly work = new Float64Array(N * N);
-  private readonly outLambda = new Float64Array(N);
-  private readonly outInformation = new Float64Array(N * N);
-  private readonly vector = new Float64Array(N);
-  private readonly projected = new Float64Array(MAX_ROWS * N);
+  readonly correction: Float64Array;
+  readonly covariance: Float64Array;
+  private readonly lambda: Float64Array;
+  private readonly information: Float64Array;
+  private readonly transition: Transition;
+  private readonly n: number;
+  private readonly phi: Float64Array;
+  private readonly work: Float64Array;
+  private readonly outLambda: Float64Array;
+  private readonly outInformation: Float64Array;
+  private readonly vector: Float64Array;
+  private readonly projected: Float64Array;
   private readonly step = new Motion();
   private hasStep = false;
 
-  /** `gyroDecay`, `accelDecay`: 1/τ of decaying biases, 1/s, as the filter has them. */
+  /** `gyroDecay`, `accelDecay`: 1/τ of decaying biases, 1/s, and `layout` as the filter has them. */
   constructor(
     private readonly tape: Tape,
     private readonly gyroDecay: number,
     private readonly accelDecay: number,
-  ) {}
+    layout: StateLayout = PLAIN_LAYOUT,
+  ) {
+    const n = layout.size;
+    this.n = n;
+    this.transition = transitionOf(layout);
+    this.correction = new Float64Array(n);
+    this.covariance = new Float64Array(n * n);
+    this.lambda = new Float64Array(n);
+    this.information = new Float64Array(n * n);
+    this.phi = new Float64Array(n * n);
+    this.work = new Float64Array(n * n);
+    this.outLambda = new Float64Array(n);
+    this.outInformation = new Float64Array(n * n);
+    this.vector = new Float64Array(n);
+    this.projected = new Float64Array(MAX_ROWS * n);
+  }
 
   /** True with the next output (tape.sample, tape.motion.nav, `correction`, `covariance`), false at `until` or the beginning. */
   next(until: TapeMark | null): boolean {
@@ -76,7 +91,7 @@ export class Smoother {
 
   /** The step's remainder from the output on, without moving λ and Λ; then e and P_s there. */
   private formOutput(): void {
-    const { tape, outLambda, outInformation, correction, covariance, work } = this;
+    const { tape, outLambda, outInformation, correction, covariance, work, n } = this;
     if (this.hasStep) {
       const rest = this.rest;
       rest.copy(this.step);
@@ -90,52 +105,52 @@ export class Smoother {
       outInformation.set(this.information);
     }
     const { p } = tape;
-    for (let i = 0; i < N; i += 1) {
+    for (let i = 0; i < n; i += 1) {
       let sum = 0;
-      for (let j = 0; j < N; j += 1) sum -= p[i * N + j]! * outLambda[j]!;
+      for (let j = 0; j < n; j += 1) sum -= p[i * n + j]! * outLambda[j]!;
       correction[i] = sum;
     }
     congruence(p, outInformation, work, covariance);
-    for (let i = 0; i < N * N; i += 1) covariance[i] = p[i]! - covariance[i]!;
+    for (let i = 0; i < n * n; i += 1) covariance[i] = p[i]! - covariance[i]!;
   }
   private readonly rest = new Motion();
 
   private passUpdate(): void {
     this.passReset();
-    const { tape, lambda, information, projected, vector } = this;
+    const { tape, lambda, information, projected, vector, n } = this;
     const { h, gain, inverse, innovation } = tape;
     // w = Kᵀλ + S⁻¹ν; λ ← λ − Hᵀw.
     for (let m = 0; m < MAX_ROWS; m += 1) {
       let sum = 0;
-      for (let i = 0; i < N; i += 1) sum += gain[i * MAX_ROWS + m]! * lambda[i]!;
+      for (let i = 0; i < n; i += 1) sum += gain[i * MAX_ROWS + m]! * lambda[i]!;
       for (let k = 0; k < MAX_ROWS; k += 1) sum += inverse[m * MAX_ROWS + k]! * innovation[k]!;
       vector[m] = sum;
     }
-    for (let i = 0; i < N; i += 1)
-      for (let m = 0; m < MAX_ROWS; m += 1) lambda[i] = lambda[i]! - h[m * N + i]! * vector[m]!;
+    for (let i = 0; i < n; i += 1)
+      for (let m = 0; m < MAX_ROWS; m += 1) lambda[i] = lambda[i]! - h[m * n + i]! * vector[m]!;
     // B = KᵀΛ; Λ ← Λ − HᵀB − BᵀH + Hᵀ(KᵀΛK + S⁻¹)H.
     for (let m = 0; m < MAX_ROWS; m += 1)
-      for (let j = 0; j < N; j += 1) {
+      for (let j = 0; j < n; j += 1) {
         let sum = 0;
-        for (let i = 0; i < N; i += 1) sum += gain[i * MAX_ROWS + m]! * information[i * N + j]!;
-        projected[m * N + j] = sum;
+        for (let i = 0; i < n; i += 1) sum += gain[i * MAX_ROWS + m]! * information[i * n + j]!;
+        projected[m * n + j] = sum;
       }
     for (let a = 0; a < MAX_ROWS; a += 1)
       for (let b = 0; b < MAX_ROWS; b += 1) {
         let sum = inverse[a * MAX_ROWS + b]!;
-        for (let j = 0; j < N; j += 1) sum += projected[a * N + j]! * gain[j * MAX_ROWS + b]!;
+        for (let j = 0; j < n; j += 1) sum += projected[a * n + j]! * gain[j * MAX_ROWS + b]!;
         this.core[a * MAX_ROWS + b] = sum;
       }
-    for (let i = 0; i < N; i += 1)
-      for (let j = i; j < N; j += 1) {
-        let value = information[i * N + j]!;
+    for (let i = 0; i < n; i += 1)
+      for (let j = i; j < n; j += 1) {
+        let value = information[i * n + j]!;
         for (let a = 0; a < MAX_ROWS; a += 1) {
-          value -= h[a * N + i]! * projected[a * N + j]! + projected[a * N + i]! * h[a * N + j]!;
+          value -= h[a * n + i]! * projected[a * n + j]! + projected[a * n + i]! * h[a * n + j]!;
           for (let b = 0; b < MAX_ROWS; b += 1)
-            value += h[a * N + i]! * this.core[a * MAX_ROWS + b]! * h[b * N + j]!;
+            value += h[a * n + i]! * this.core[a * MAX_ROWS + b]! * h[b * n + j]!;
         }
-        information[i * N + j] = value;
-        information[j * N + i] = value;
+        information[i * n + j] = value;
+        information[j * n + i] = value;
       }
   }
   private readonly core = new Float64Array(MAX_ROWS * MAX_ROWS);
@@ -143,6 +158,7 @@ export class Smoother {
   /** λ ← Gᵀλ, Λ ← GᵀΛG for the attitude's reset (attitude-feedback.ts). */
   private passReset(): void {
     const { turn } = this.tape;
+    const size = this.n;
     const n = 0.5 * turn[0]!;
     const e = 0.5 * turn[1]!;
     const d = turn[2]!;
@@ -158,25 +174,32 @@ export class Smoother {
       out[at + 2 * stride] = (s * n - c * e) * x + (s * e + c * n) * y + z;
     };
     transpose(lambda[a]!, lambda[a + 1]!, lambda[a + 2]!, lambda, a, 1);
-    for (let j = 0; j < N; j += 1) {
-      const at = a * N + j;
-      transpose(information[at]!, information[at + N]!, information[at + 2 * N]!, information, at, N);
+    for (let j = 0; j < size; j += 1) {
+      const at = a * size + j;
+      transpose(
+        information[at]!,
+        information[at + size]!,
+        information[at + 2 * size]!,
+        information,
+        at,
+        size,
+      );
     }
-    for (let i = 0; i < N; i += 1) {
-      const at = i * N + a;
+    for (let i = 0; i < size; i += 1) {
+      const at = i * size + a;
       transpose(information[at]!, information[at + 1]!, information[at + 2]!, information, at, 1);
     }
   }
 
   /** States that a recovery cut off hear nothing from later. */
   private passBreak(): void {
-    const { lambda, information, tape } = this;
-    for (let i = 0; i < N; i += 1) {
+    const { lambda, information, tape, n } = this;
+    for (let i = 0; i < n; i += 1) {
       if (tape.cut[i] === 0) continue;
       lambda[i] = 0;
-      for (let j = 0; j < N; j += 1) {
-        information[i * N + j] = 0;
-        information[j * N + i] = 0;
+      for (let j = 0; j < n; j += 1) {
+        information[i * n + j] = 0;
+        information[j * n + i] = 0;
       }
     }
   }
@@ -184,29 +207,31 @@ export class Smoother {
 
 /** out = Mᵀx. */
 function transposeTimes(m: Float64Array, x: Float64Array, out: Float64Array): void {
+  const n = x.length;
   out.fill(0);
-  for (let i = 0; i < N; i += 1) {
+  for (let i = 0; i < n; i += 1) {
     const xi = x[i]!;
-    for (let j = 0; j < N; j += 1) out[j] = out[j]! + m[i * N + j]! * xi;
+    for (let j = 0; j < n; j += 1) out[j] = out[j]! + m[i * n + j]! * xi;
   }
 }
 
 /** out = MᵀSM for a symmetric S; exactly symmetric. `out` may be S. Zeros of M cost nothing. */
 function congruence(m: Float64Array, s: Float64Array, work: Float64Array, out: Float64Array): void {
+  const n = sizeOf(s);
   // work = S M
   work.fill(0);
-  for (let k = 0; k < N; k += 1)
-    for (let j = 0; j < N; j += 1) {
-      const value = m[k * N + j]!;
+  for (let k = 0; k < n; k += 1)
+    for (let j = 0; j < n; j += 1) {
+      const value = m[k * n + j]!;
       if (value === 0) continue;
-      for (let i = 0; i < N; i += 1) work[j * N + i] = work[j * N + i]! + s[k * N + i]! * value;
+      for (let i = 0; i < n; i += 1) work[j * n + i] = work[j * n + i]! + s[k * n + i]! * value;
     }
   // Row j of work is column j of SM: out = Mᵀ(SM).
-  for (let i = 0; i < N; i += 1)
-    for (let j = i; j < N; j += 1) {
+  for (let i = 0; i < n; i += 1)
+    for (let j = i; j < n; j += 1) {
       let sum = 0;
-      for (let k = 0; k < N; k += 1) sum += m[k * N + i]! * work[j * N + k]!;
-      out[i * N + j] = sum;
-      out[j * N + i] = sum;
+      for (let k = 0; k < n; k += 1) sum += m[k * n + i]! * work[j * n + k]!;
+      out[i * n + j] = sum;
+      out[j * n + i] = sum;
     }
 }

@@ -5,7 +5,7 @@
 import { ATTITUDE, STATES } from './states';
 import type { MeasurementUpdate } from './measurement-update';
 import { MAX_ROWS } from './measurement-update';
-import type { Strapdown } from '../strapdown/strapdown';
+import type { TransitionSource } from './transition';
 import { NAV_SIZE } from '../strapdown/navigation-state';
 
 /** Kinds of records. */
@@ -15,9 +15,9 @@ export const BREAK = 3;
 export const OUTPUT = 4;
 
 const BLOCK = 1 << 17;
-const TRIANGLE = (STATES * (STATES + 1)) / 2;
-/** Payload of a step: what `Transition.form` reads. */
+/** Payload of a step: what `Transition.form` reads, and the last for states behind the fifteen. */
 const MOTION_SIZE = 9 + 4 + NAV_SIZE + 3;
+const MEASURED_SIZE = 6;
 
 /** What a transition is formed from, kept apart from a strapdown. */
 export class Motion {
@@ -25,18 +25,22 @@ export class Motion {
   readonly sumForce = new Float64Array(4);
   readonly nav = new Float64Array(NAV_SIZE);
   readonly earth = new Float64Array(3);
+  readonly sumMeasured = new Float64Array(MEASURED_SIZE);
 
   /** These sums less those of a part that came first. */
   subtract(part: Motion): void {
     for (let i = 0; i < 9; i += 1) this.sumDcm[i] = this.sumDcm[i]! - part.sumDcm[i]!;
     for (let i = 0; i < 4; i += 1) this.sumForce[i] = this.sumForce[i]! - part.sumForce[i]!;
+    for (let i = 0; i < MEASURED_SIZE; i += 1)
+      this.sumMeasured[i] = this.sumMeasured[i]! - part.sumMeasured[i]!;
   }
 
-  copy(from: Pick<Motion, 'sumDcm' | 'sumForce' | 'nav' | 'earth'>): void {
+  copy(from: Motion): void {
     this.sumDcm.set(from.sumDcm);
     this.sumForce.set(from.sumForce);
     this.nav.set(from.nav);
     this.earth.set(from.earth);
+    this.sumMeasured.set(from.sumMeasured);
   }
 }
 
@@ -49,33 +53,48 @@ export class Tape {
   /** The record that `back` read. */
   readonly motion = new Motion();
   sample = 0;
-  readonly p = new Float64Array(STATES * STATES);
-  readonly h = new Float64Array(MAX_ROWS * STATES);
-  readonly gain = new Float64Array(STATES * MAX_ROWS);
+  readonly p: Float64Array;
+  /** Estimates of the states behind the fifteen. */
+  readonly optional: Float64Array;
+  readonly h: Float64Array;
+  readonly gain: Float64Array;
   readonly inverse = new Float64Array(MAX_ROWS * MAX_ROWS);
   readonly innovation = new Float64Array(MAX_ROWS);
   /** Attitude part of the correction that was fed back, rad. */
   readonly turn = new Float64Array(3);
   /** 1 for states that a recovery cut from the past. */
-  readonly cut = new Float64Array(STATES);
+  readonly cut: Float64Array;
   private readonly blocks: Float64Array[] = [];
   private block = -1;
   private at = BLOCK;
+  private readonly triangle: number;
+  private readonly motionSize: number;
+
+  /** `size`: number of states. */
+  constructor(readonly size: number = STATES) {
+    this.p = new Float64Array(size * size);
+    this.optional = new Float64Array(size - STATES);
+    this.h = new Float64Array(MAX_ROWS * size);
+    this.gain = new Float64Array(size * MAX_ROWS);
+    this.cut = new Float64Array(size);
+    this.triangle = (size * (size + 1)) / 2;
+    this.motionSize = MOTION_SIZE + (size > STATES ? MEASURED_SIZE : 0);
+  }
 
   /** Bytes held. */
   get bytes(): number {
     return this.blocks.length * BLOCK * 8;
   }
 
-  writeStep(strapdown: Strapdown): void {
-    this.open(MOTION_SIZE);
-    this.putMotion(strapdown);
-    this.close(MOTION_SIZE, STEP);
+  writeStep(motion: TransitionSource): void {
+    this.open(this.motionSize);
+    this.putMotion(motion);
+    this.close(this.motionSize, STEP);
   }
 
   /** An accepted update, after its gain was formed. */
   writeUpdate(update: MeasurementUpdate): void {
-    const size = MAX_ROWS * STATES * 2 + MAX_ROWS * MAX_ROWS + MAX_ROWS + 3;
+    const size = MAX_ROWS * this.size * 2 + MAX_ROWS * MAX_ROWS + MAX_ROWS + 3;
     this.open(size);
     this.put(update.h);
     this.put(update.gain);
@@ -87,25 +106,27 @@ export class Tape {
   }
 
   writeBreak(cut: Float64Array): void {
-    this.open(STATES);
+    this.open(this.size);
     this.put(cut);
-    this.close(STATES, BREAK);
+    this.close(this.size, BREAK);
   }
 
-  /** State and covariance at an IMU sample, and what the strapdown has summed since the last step. */
-  writeOutput(sample: number, strapdown: Strapdown, p: Float64Array): void {
-    const size = 1 + MOTION_SIZE + TRIANGLE;
-    this.open(size);
+  /** State (`optional`: of those behind the fifteen) and covariance at an IMU sample, and what was summed since the last step. */
+  writeOutput(sample: number, motion: TransitionSource, p: Float64Array, optional?: Float64Array): void {
+    const { size } = this;
+    const payload = 1 + this.motionSize + this.triangle + size - STATES;
+    this.open(payload);
     this.blocks[this.block]![this.at] = sample;
     this.at += 1;
-    this.putMotion(strapdown);
+    this.putMotion(motion);
+    if (optional !== undefined) this.put(optional);
     const block = this.blocks[this.block]!;
-    for (let i = 0; i < STATES; i += 1)
-      for (let j = i; j < STATES; j += 1) {
-        block[this.at] = p[i * STATES + j]!;
+    for (let i = 0; i < size; i += 1)
+      for (let j = i; j < size; j += 1) {
+        block[this.at] = p[i * size + j]!;
         this.at += 1;
       }
-    this.close(size, OUTPUT);
+    this.close(payload, OUTPUT);
   }
 
   mark(): TapeMark {
@@ -156,6 +177,7 @@ export class Tape {
       take(this.motion.sumForce);
       take(this.motion.nav);
       take(this.motion.earth);
+      if (this.size > STATES) take(this.motion.sumMeasured);
     }
     if (kind === UPDATE) {
       take(this.h);
@@ -166,12 +188,14 @@ export class Tape {
     }
     if (kind === BREAK) take(this.cut);
     if (kind !== OUTPUT) return;
-    for (let i = 0; i < STATES; i += 1)
-      for (let j = i; j < STATES; j += 1) {
+    take(this.optional);
+    const { size, p } = this;
+    for (let i = 0; i < size; i += 1)
+      for (let j = i; j < size; j += 1) {
         const value = block[at]!;
         at += 1;
-        this.p[i * STATES + j] = value;
-        this.p[j * STATES + i] = value;
+        p[i * size + j] = value;
+        p[j * size + i] = value;
       }
   }
 
@@ -190,11 +214,12 @@ export class Tape {
     this.at += values.length;
   }
 
-  private putMotion(strapdown: Strapdown): void {
-    this.put(strapdown.sumDcm);
-    this.put(strapdown.sumForce);
-    this.put(strapdown.nav);
-    this.put(strapdown.earth);
+  private putMotion(motion: TransitionSource): void {
+    this.put(motion.sumDcm);
+    this.put(motion.sumForce);
+    this.put(motion.nav);
+    this.put(motion.earth);
+    if (this.size > STATES) this.put(motion.sumMeasured!);
   }
 
   private close(size: number, kind: number): void {

@@ -35,9 +35,13 @@ export interface TransitionSource {
   readonly earth: Float64Array;
   readonly sumDcm: Float64Array;
   readonly sumForce: Float64Array;
+  /** With scale factors as states: ∫ω dt (rad) and ∫f dt (m/s) about the body's axes, biases not taken off. */
+  readonly sumMeasured?: Float64Array;
 }
 
 export class Transition {
+  /** Number of states. */
+  readonly size: number = STATES;
   /** Coefficients, see `C`. */
   readonly coefficients = new Float64Array(C.size);
 
@@ -134,7 +138,7 @@ export class Transition {
   }
 
   /**
-   * y = Φx for `count` 15-vectors: vector v has its elements at v·vectorStep + i·elementStep of `source`; results go
+   * y = Φx for `count` vectors of states: vector v has its elements at v·vectorStep + i·elementStep of `source`; results go
    * one after the other into `target`.
    */
   apply(
@@ -291,14 +295,15 @@ export class Transition {
     return this.coefficients[C.accelDecay]!;
   }
 
-  /** Φ as a dense matrix (15×15, row by row) in `out`: for the smoother, the tests and study. */
+  /** Φ as a dense matrix (size × size, row by row) in `out`: for the smoother, the tests and study. */
   dense(out: Float64Array): Float64Array {
-    const unit = new Float64Array(STATES * STATES);
-    const columns = new Float64Array(STATES * STATES);
-    for (let i = 0; i < STATES; i += 1) unit[i * (STATES + 1)] = 1;
-    this.apply(unit, STATES, 1, columns, STATES);
-    for (let r = 0; r < STATES; r += 1)
-      for (let c = 0; c < STATES; c += 1) out[r * STATES + c] = columns[c * STATES + r]!;
+    const { size } = this;
+    const unit = new Float64Array(size * size);
+    const columns = new Float64Array(size * size);
+    for (let i = 0; i < size; i += 1) unit[i * (size + 1)] = 1;
+    this.apply(unit, size, 1, columns, size);
+    for (let r = 0; r < size; r += 1)
+      for (let c = 0; c < size; c += 1) out[r * size + c] = columns[c * size + r]!;
     return out;
   }
 }

@@ -4,7 +4,7 @@ import { medianSpacing } from '../strapdown/imu-intervals';
 import type { ImuColumns } from '../types';
 import { nonHolonomic, zeroRotation, zeroVelocity } from './aid-models';
 import type { ErrorStateFilter } from './error-state-filter';
-import { STATES, VELOCITY } from './states';
+import { VELOCITY } from './states';
 import { StopDetector } from './stop-detector';
 import { VN } from '../strapdown/navigation-state';
 
@@ -81,8 +81,8 @@ export class VehicleAids {
   }
 }
 
-function mayStand({ strapdown: { nav }, p }: ErrorStateFilter): boolean {
+function mayStand({ strapdown: { nav }, p, layout }: ErrorStateFilter): boolean {
   const speed = Math.hypot(nav[VN]!, nav[VN + 1]!, nav[VN + 2]!);
-  const at = (i: number) => p[(VELOCITY + i) * (STATES + 1)]!;
+  const at = (i: number) => p[(VELOCITY + i) * (layout.size + 1)]!;
   return speed < STOP_MAX_SPEED + STOP_SIGMAS * Math.sqrt(at(0) + at(1) + at(2));
 }

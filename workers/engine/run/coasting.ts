@@ -2,14 +2,12 @@
 import type { BudgetPoint, DriftPoint, OutageResult } from '@/shared/contracts/runs';
 import { radToDeg } from '@/shared/units';
 import type { BudgetShare } from '../filter/error-budget';
-import { POSITION, STATES } from '../filter/states';
+import { POSITION, sizeOf } from '../filter/states';
 import { NAV_SIZE } from '../strapdown/navigation-state';
 import type { ReferenceColumns } from '../types';
 import { emptyError, emptyReference, referenceFromNav, ReferenceReader, stateError } from './reference';
 import { CoastingWriter } from './tables';
 import { comparedSamples, lowerBound, type CoastWindow } from './windows';
-
-const DOWN = (POSITION + 2) * (STATES + 1);
 
 export class CoastingComparison {
   readonly writer: CoastingWriter;
@@ -78,8 +76,9 @@ export class CoastingComparison {
     }
     const w = this.windows.findIndex((window) => k >= window.first && k <= window.last);
     const { position, velocity, attitude } = this.error;
-    const predicted = Math.sqrt(p[0]! + p[STATES + 1]!);
-    const predictedVertical = Math.sqrt(p[DOWN]!);
+    const diagonal = sizeOf(p) + 1;
+    const predicted = Math.sqrt(p[0]! + p[diagonal]!);
+    const predictedVertical = Math.sqrt(p[(POSITION + 2) * diagonal]!);
     const horizontal = Math.hypot(position[0]!, position[1]!);
     if (this.kept[k] === 1)
       this.writer.write({

@@ -12,7 +12,7 @@ import { ErrorStateFilter } from '../filter/error-state-filter';
 import type { FilterListener, FilterSnapshot } from '../filter/filter-types';
 import { ErrorBudget } from '../filter/error-budget';
 import { prepareFixes, withheldBy } from '../filter/fixes';
-import { STATES } from '../filter/states';
+import { layoutOf, type StateLayout } from '../filter/states';
 import { Tape, type TapeMark } from '../filter/tape';
 import { HEIGHT, LAT, LON, VN } from '../strapdown/navigation-state';
 import {
@@ -59,7 +59,8 @@ export class Run implements EngineRun {
   private readonly withheld: Uint8Array;
   private readonly timeS: Float64Array;
   private readonly last: number;
-  private readonly p = new Float64Array(STATES * STATES);
+  private readonly layout: StateLayout;
+  private readonly p: Float64Array;
   /** Last sample before the first window: where the passes part; −1 where one pass does it. */
   private readonly forkSample: number;
   private snapshot: FilterSnapshot | null = null;
@@ -79,6 +80,8 @@ export class Run implements EngineRun {
     const { imu, gnss, reference } = recording;
     const { parameters, leverArmM, outages } = request;
     checkRecording(recording);
+    this.layout = layoutOf(parameters);
+    this.p = new Float64Array(this.layout.size ** 2);
     this.timeS = imu.timeS;
     this.last = imu.timeS.length - 1;
     const fixes = prepareFixes(gnss, parameters.gnss);
@@ -99,17 +102,20 @@ export class Run implements EngineRun {
     this.filter = new ErrorStateFilter(imu, fixes, withheldAtFirst, parameters, leverArmM, this.listener());
     this.filter.start(start, this.alignment.fix, this.alignment.nav, this.alignment.p);
 
-    this.tape = request.smooth === true ? new Tape() : null;
+    this.tape = request.smooth === true ? new Tape(this.layout.size) : null;
     this.filter.tape = this.tape;
-    this.budget = request.errorBudget === true ? new ErrorBudget(initialBudget(this.alignment.causes)) : null;
+    this.budget =
+      request.errorBudget === true
+        ? new ErrorBudget(initialBudget(this.alignment.causes), this.layout)
+        : null;
     this.filter.budget = this.budget;
 
-    this.solution = new SolutionWriter(countKept(this.kept));
+    this.solution = new SolutionWriter(countKept(this.kept), this.layout);
     this.position = new InnovationWriter(fixes.count);
     this.velocity = new InnovationWriter(fixes.count);
     this.truth = reference === null ? null : new TruthComparison(reference);
     if (this.tape !== null) {
-      this.smoothed = new SolutionWriter(countKept(this.kept));
+      this.smoothed = new SolutionWriter(countKept(this.kept), this.layout);
       this.smoothedTruth = reference === null ? null : new TruthComparison(reference);
     }
     const { nav } = this.alignment;
@@ -200,7 +206,7 @@ export class Run implements EngineRun {
     const k = filter.sample;
     coasting.record(k, filter.strapdown.nav);
     if (tape !== null && coasting.isCompared(k))
-      tape.writeOutput(k, filter.strapdown, filter.covarianceNow(this.p));
+      tape.writeOutput(k, filter.motion, filter.covarianceNow(this.p), filter.optional?.values);
   }
 
   /** The reported solution at the filter's sample, where it is kept or compared. */
@@ -217,8 +223,8 @@ export class Run implements EngineRun {
       );
     filter.covarianceNow(this.p);
     if (kept[k] === 1) {
-      this.solution.write(this.timeS[k]!, nav, this.p);
-      this.tape?.writeOutput(k, filter.strapdown, this.p);
+      this.solution.write(this.timeS[k]!, nav, this.p, filter.optional?.values);
+      this.tape?.writeOutput(k, filter.motion, this.p, filter.optional?.values);
       this.truth?.add(this.timeS[k]!, nav, this.p);
     }
     if (compared) this.coasting.compare(k, nav, this.p, () => filter.budgetNow());
@@ -239,19 +245,24 @@ export class Run implements EngineRun {
       const isReference = this.phase === 'reference';
       this.phase = isReference ? 'smooth-reference' : 'smooth-reported';
       const until = isReference ? this.forkMark : null;
-      this.smoothing = new SmoothingPass(tape, until, filter.noise, last, this.smoothedOutput);
+      this.smoothing = new SmoothingPass(tape, until, filter.noise, this.layout, last, this.smoothedOutput);
     } else if (this.phase === 'reference') this.backToFork();
     else this.phase = 'done';
   }
 
   /** Rows of the smoothed solution come last first. */
-  private readonly smoothedOutput = (k: number, nav: Float64Array, p: Float64Array): void => {
+  private readonly smoothedOutput = (
+    k: number,
+    nav: Float64Array,
+    p: Float64Array,
+    optional: Float64Array,
+  ): void => {
     if (this.phase === 'smooth-reference') {
       this.coasting.recordSmoothed(k, nav);
       return;
     }
     const row = lowerBound(this.solution.table.time_s!.subarray(0, this.solution.count), this.timeS[k]!);
-    this.smoothed!.writeAt(row, this.timeS[k]!, nav, p);
+    this.smoothed!.writeAt(row, this.timeS[k]!, nav, p, optional);
     this.smoothedTruth?.add(this.timeS[k]!, nav, p);
   };
 

@@ -3,11 +3,14 @@ import { correctState } from '../filter/correct-state';
 import type { ProcessNoise } from '../filter/process-noise';
 import { Smoother } from '../filter/smoother';
 import type { Tape, TapeMark } from '../filter/tape';
+import { addOptional } from '../filter/optional-states';
+import type { StateLayout } from '../filter/states';
 import { NAV_SIZE } from '../strapdown/navigation-state';
 
 export class SmoothingPass {
   private readonly smoother: Smoother;
   private readonly nav = new Float64Array(NAV_SIZE);
+  private readonly optional: Float64Array;
   /** Sample that the pass has come back to. */
   reached: number;
 
@@ -16,10 +19,17 @@ export class SmoothingPass {
     private readonly tape: Tape,
     private readonly until: TapeMark | null,
     noise: Pick<ProcessNoise, 'gyroDecay' | 'accelDecay'>,
+    layout: StateLayout,
     lastSample: number,
-    private readonly emit: (sample: number, nav: Float64Array, covariance: Float64Array) => void,
+    private readonly emit: (
+      sample: number,
+      nav: Float64Array,
+      covariance: Float64Array,
+      optional: Float64Array,
+    ) => void,
   ) {
-    this.smoother = new Smoother(tape, noise.gyroDecay, noise.accelDecay);
+    this.smoother = new Smoother(tape, noise.gyroDecay, noise.accelDecay, layout);
+    this.optional = new Float64Array(tape.optional.length);
     this.reached = lastSample;
   }
 
@@ -30,8 +40,10 @@ export class SmoothingPass {
       if (!smoother.next(this.until)) return true;
       nav.set(tape.motion.nav);
       correctState(nav, tape.motion.earth, smoother.correction);
+      this.optional.set(tape.optional);
+      addOptional(this.optional, smoother.correction);
       this.reached = tape.sample;
-      this.emit(tape.sample, nav, smoother.covariance);
+      this.emit(tape.sample, nav, smoother.covariance, this.optional);
     }
     return false;
   }

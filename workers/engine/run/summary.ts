@@ -5,6 +5,8 @@ import { averageBounds } from '../statistics/consistency';
 import { autocorrelation, autocorrelationBand } from '../statistics/correlation';
 import { chiSquaredQuantile, chiSquaredUpper } from '../statistics/distributions';
 import type { SolutionTable } from '../types';
+import { layoutOf } from '../filter/states';
+import { optionalResults } from './optional-columns';
 import { findings } from './findings';
 import type { Run } from './run';
 import type { InnovationWriter } from './tables';
@@ -46,6 +48,7 @@ export function summarise(run: Run): RunSummary {
     ...(run.smoothedTruth === null ? {} : { smoothedTruth: run.smoothedTruth.result() }),
     warnings: run.warnings.all(),
     aids: run.aids.results(),
+    ...optionalResults(layoutOf(run.request.parameters), solution.table, solution.count),
   };
   return { ...summary, findings: findings(summary, run) };
 }

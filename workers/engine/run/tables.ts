@@ -5,7 +5,10 @@ import { radToDeg } from '@/shared/units';
 import { eulerSigmas } from '../alignment/euler-errors';
 import { eulerFromQuat } from '../attitude';
 import type { MeasurementUpdate } from '../filter/measurement-update';
-import { ACCEL_BIAS, GYRO_BIAS, POSITION, STATES, VELOCITY } from '../filter/states';
+import {
+  ACCEL_BIAS, GYRO_BIAS, PLAIN_LAYOUT, POSITION, sizeOf, VELOCITY, type StateLayout,
+} from '../filter/states'; // prettier-ignore
+import { optionalColumns, type OptionalColumn } from './optional-columns';
 import { HEIGHT, LAT, LON, NAV_ACCEL_BIAS, NAV_GYRO_BIAS, QUAT, VN } from '../strapdown/navigation-state';
 import { MAX_ROWS } from '../filter/measurement-update';
 import type { CoastingTable, InnovationTable, SolutionTable } from '../types';
@@ -20,20 +23,29 @@ export class SolutionWriter {
   private readonly euler = new Float64Array(3);
   private readonly sigma = new Float64Array(3);
 
-  constructor(capacity: number) {
-    const names = [...SOLUTION_COLUMNS, COVARIANCE_COLUMN];
+  private readonly optional: readonly OptionalColumn[];
+
+  /** With states behind the fifteen, their columns come last (optional-columns.ts). */
+  constructor(capacity: number, layout: StateLayout = PLAIN_LAYOUT) {
+    this.optional = optionalColumns(layout);
+    const names = [
+      ...SOLUTION_COLUMNS,
+      COVARIANCE_COLUMN,
+      ...this.optional.map((c) => c.name),
+      ...this.optional.map((c) => `sigma_${c.name}`),
+    ];
     this.columns = names.map(() => new Float64Array(capacity));
     this.table = Object.fromEntries(names.map((name, i) => [name, this.columns[i]!]));
   }
 
-  /** The next row; `nav` as in navigation-state.ts, P 15×15. */
-  write(timeS: number, nav: Float64Array, p: Float64Array): void {
-    this.writeAt(this.count, timeS, nav, p);
+  /** The next row; `nav` as in navigation-state.ts, P size × size, `values` of the states behind the fifteen. */
+  write(timeS: number, nav: Float64Array, p: Float64Array, values?: Float64Array): void {
+    this.writeAt(this.count, timeS, nav, p, values);
     this.count += 1;
   }
 
   /** A row anywhere. Order of columns: SOLUTION_COLUMNS. */
-  writeAt(row: number, timeS: number, nav: Float64Array, p: Float64Array): void {
+  writeAt(row: number, timeS: number, nav: Float64Array, p: Float64Array, values?: Float64Array): void {
     const { columns, quaternion, euler, sigma } = this;
     for (let i = 0; i < 4; i += 1) quaternion[i] = nav[QUAT + i]!;
     eulerFromQuat(quaternion, euler);
@@ -54,6 +66,10 @@ export class SolutionWriter {
       columns[28 + i]![row] = deviation(p, ACCEL_BIAS + i);
     }
     columns[31]![row] = p[1]!;
+    this.optional.forEach(({ state, value, perUnit }, i) => {
+      columns[32 + i]![row] = values![value]! * perUnit;
+      columns[32 + this.optional.length + i]![row] = deviation(p, state) * perUnit;
+    });
   }
 
   finish(): SolutionTable {
@@ -61,7 +77,7 @@ export class SolutionWriter {
   }
 }
 
-const deviation = (p: Float64Array, i: number) => Math.sqrt(p[i * (STATES + 1)]!);
+const deviation = (p: Float64Array, i: number) => Math.sqrt(p[i * (sizeOf(p) + 1)]!);
 
 export class InnovationWriter {
   readonly table: InnovationTable;

@@ -1,7 +1,7 @@
 /** The reported solution against truth: RMS errors and average NEES. */
 import type { TruthStatistics } from '@/shared/contracts/runs';
 import { radToDeg } from '@/shared/units';
-import { ATTITUDE, POSITION, STATES, VELOCITY } from '../filter/states';
+import { ATTITUDE, POSITION, sizeOf, VELOCITY } from '../filter/states';
 import type { ReferenceColumns } from '../types';
 import { emptyError, ReferenceReader, stateError } from './reference';
 
@@ -60,7 +60,7 @@ class SquareSum {
     this.squares[0] = this.squares[0]! + x * x;
     this.squares[1] = this.squares[1]! + y * y;
     this.squares[2] = this.squares[2]! + z * z;
-    this.nees += nees3(x, y, z, p, first * STATES + first);
+    this.nees += nees3(x, y, z, p, first);
   }
 
   meanSquares(): [number, number, number] {
@@ -72,15 +72,17 @@ class SquareSum {
   }
 }
 
-/** eᵀP⁻¹e for the 3×3 block of P that starts at `at`. */
-function nees3(x: number, y: number, z: number, p: Float64Array, at: number): number {
+/** eᵀP⁻¹e for the 3×3 block of P of the states from `first` on. */
+function nees3(x: number, y: number, z: number, p: Float64Array, first: number): number {
+  const size = sizeOf(p);
+  const at = first * (size + 1);
   // Cholesky, then forward substitution.
   const l00 = Math.sqrt(p[at]!);
-  const l10 = p[at + STATES]! / l00;
-  const l20 = p[at + 2 * STATES]! / l00;
-  const l11 = Math.sqrt(p[at + STATES + 1]! - l10 * l10);
-  const l21 = (p[at + 2 * STATES + 1]! - l20 * l10) / l11;
-  const l22 = Math.sqrt(p[at + 2 * STATES + 2]! - l20 * l20 - l21 * l21);
+  const l10 = p[at + size]! / l00;
+  const l20 = p[at + 2 * size]! / l00;
+  const l11 = Math.sqrt(p[at + size + 1]! - l10 * l10);
+  const l21 = (p[at + 2 * size + 1]! - l20 * l10) / l11;
+  const l22 = Math.sqrt(p[at + 2 * size + 2]! - l20 * l20 - l21 * l21);
   const a = x / l00;
   const b = (y - l10 * a) / l11;
   const c = (z - l20 * a - l21 * b) / l22;

@@ -12,6 +12,9 @@ export interface SensedImu {
   imu: ImuColumns;
   gyroBias: readonly [Float64Array, Float64Array, Float64Array];
   accelBias: readonly [Float64Array, Float64Array, Float64Array];
+  /** Scale factor errors of the axes, 1. */
+  gyroScale: readonly [number, number, number];
+  accelScale: readonly [number, number, number];
 }
 
 interface AxisErrors {
@@ -68,6 +71,8 @@ export function senseImu(perfect: ImuColumns, model: ImuModel, random: RandomSou
     },
     gyroBias: [g[0].bias, g[1].bias, g[2].bias],
     accelBias: [a[0].bias, a[1].bias, a[2].bias],
+    gyroScale: [g[0].scale - 1, g[1].scale - 1, g[2].scale - 1],
+    accelScale: [a[0].scale - 1, a[1].scale - 1, a[2].scale - 1],
   };
 }
 
@@ -91,5 +96,5 @@ function senseAxis(perfect: ImuColumns, truth: Float64Array, errors: AxisErrors,
     if (errors.step > 0) sensed = round(sensed / errors.step) * errors.step;
     values[k] = increments ? sensed * dt : sensed;
   }
-  return { values, bias };
+  return { values, bias, scale };
 }

@@ -32,6 +32,8 @@ export interface SimulatedRecording extends RecordingColumns {
   reference: NonNullable<RecordingColumns['reference']>;
   gyroBias: SensedImu['gyroBias'];
   accelBias: SensedImu['accelBias'];
+  gyroScale: SensedImu['gyroScale'];
+  accelScale: SensedImu['accelScale'];
   antenna: SimulatedGnss['truth'];
   outlier: SimulatedGnss['outlier'];
 }
@@ -72,6 +74,8 @@ export function simulateScenario(scenario: Scenario, extras: ScenarioExtras = {}
     reference: truth,
     gyroBias: sensed.gyroBias,
     accelBias: sensed.accelBias,
+    gyroScale: sensed.gyroScale,
+    accelScale: sensed.accelScale,
     antenna: gnss.truth,
     outlier: gnss.outlier,
   };

@@ -3,18 +3,19 @@ import { align } from '@/workers/engine/alignment/align';
 import { ErrorStateFilter } from '@/workers/engine/filter/error-state-filter';
 import { prepareFixes } from '@/workers/engine/filter/fixes';
 import { Smoother } from '@/workers/engine/filter/smoother';
-import { STATES } from '@/workers/engine/filter/states';
+import type { StateLayout } from '@/workers/engine/filter/states';
 import { BREAK, OUTPUT, STEP, Tape, UPDATE } from '@/workers/engine/filter/tape';
-import { Transition } from '@/workers/engine/filter/transition';
+import { transitionOf } from '@/workers/engine/filter/wide-transition';
+import type { ParametersInput } from '@/shared/contracts/parameters';
 import { createRun, type RunResult } from '@/workers/engine';
 import { requestOf, simulateCase } from '../support/monte-carlo';
 
 jest.setTimeout(30_000);
-const N = STATES;
-const square = (values: Float64Array) => Matrix.from1DArray(N, N, values);
+const square = (values: Float64Array) =>
+  Matrix.from1DArray(Math.sqrt(values.length), Math.sqrt(values.length), values);
 
 /** A filter pass with its tape, an output at each whole second. */
-function taped() {
+function taped(states: ParametersInput['states']) {
   const { recording, parameters, scenario } = simulateCase(
     {
       motion: 'road',
@@ -25,7 +26,7 @@ function taped() {
       seed: 9,
       leverArmM: [1, 0, -1],
     },
-    { mechanisation: { covarianceIntervalS: 0 } },
+    { mechanisation: { covarianceIntervalS: 0 }, states },
   );
   const { imu, gnss } = recording;
   const fixes = prepareFixes(gnss, parameters.gnss);
@@ -34,13 +35,19 @@ function taped() {
   const filter = new ErrorStateFilter(
     imu, fixes, new Uint8Array(fixes.count), parameters, scenario.leverArmM, silent,
   ); // prettier-ignore
-  const tape = new Tape();
+  const { size } = filter.layout;
+  const tape = new Tape(size);
   filter.tape = tape;
   filter.start(start.sample, start.fix, start.nav, start.p);
   while (filter.sample < imu.timeS.length - 1) {
     filter.advanceSample();
     if (filter.sample % 20 === 0)
-      tape.writeOutput(filter.sample, filter.strapdown, filter.covarianceNow(new Float64Array(N * N)));
+      tape.writeOutput(
+        filter.sample,
+        filter.motion,
+        filter.covarianceNow(new Float64Array(size * size)),
+        filter.optional?.values,
+      );
   }
   return { filter, tape, startP: start.p };
 }
@@ -61,7 +68,8 @@ interface Moment {
 }
 
 /** Rauch, Tung & Striebel (1965) with dense matrices, over the same records read forward. */
-function rauchTungStriebel({ filter, tape, startP }: ReturnType<typeof taped>) {
+function rauchTungStriebel({ filter, tape, startP }: ReturnType<typeof taped>, layout: StateLayout) {
+  const N = layout.size;
   const moments: Moment[] = [];
   const zero = () => Matrix.zeros(N, 1);
   for (let kind = tape.back(); ; kind = tape.isEmpty ? 0 : tape.back()) {
@@ -78,7 +86,7 @@ function rauchTungStriebel({ filter, tape, startP }: ReturnType<typeof taped>) {
       p: Matrix.eye(N),
     };
     if (kind === STEP) {
-      const transition = new Transition();
+      const transition = transitionOf(layout);
       transition.form(tape.motion, 0, 0);
       moment.phi = square(transition.dense(new Float64Array(N * N)));
     }
@@ -114,11 +122,11 @@ function rauchTungStriebel({ filter, tape, startP }: ReturnType<typeof taped>) {
     }
     moment.p = p;
   }
-  return backward(moments);
+  return backward(moments, N);
 }
 
 /** Smoothed correction and covariance at the outputs. */
-function backward(moments: Moment[]) {
+function backward(moments: Moment[], N: number) {
   const out = new Map<number, { e: Matrix; p: Matrix }>();
   let e = Matrix.zeros(N, 1);
   let ps = moments.at(-1)!.p.clone();
@@ -141,11 +149,22 @@ function backward(moments: Moment[]) {
   return out;
 }
 
-test('equals the smoother of Rauch, Tung and Striebel', () => {
-  const pass = taped();
-  const tape = taped().tape;
-  const expected = rauchTungStriebel(pass);
-  const smoother = new Smoother(tape, 0, 0);
+const ALL_STATES = {
+  gyroScale: { enabled: true, randomWalkPpmPerSqrtS: 5 },
+  accelScale: { enabled: true, randomWalkPpmPerSqrtS: 5 },
+  leverArm: { enabled: true },
+  barometerBias: { enabled: true },
+};
+test.each([
+  ['fifteen states', {}],
+  ['all optional states with them', ALL_STATES],
+])('equals the smoother of Rauch, Tung and Striebel: %s', (_name, states) => {
+  const pass = taped(states);
+  const { layout } = pass.filter;
+  const N = layout.size;
+  const tape = taped(states).tape;
+  const expected = rauchTungStriebel(pass, layout);
+  const smoother = new Smoother(tape, 0, 0, layout);
   let outputs = 0;
   let worst = 0;
   while (smoother.next(null)) {

@@ -1,10 +1,16 @@
 import { createRun } from '@/workers/engine';
 import { requestOf, simulateCase } from '../support/monte-carlo';
 
-test.each([true, false])('shares of the predicted error add up to the whole (truth: %p)', (withTruth) => {
+const OPTIONAL = { accelScale: { enabled: true, randomWalkPpmPerSqrtS: 3 }, leverArm: { enabled: true } };
+
+test.each([
+  [true, {}],
+  [false, {}],
+  [false, OPTIONAL],
+])('shares of the predicted error add up to the whole (truth: %p, states %j)', (withTruth, states) => {
   const simulated = simulateCase(
     { motion: 'road', durationS: 120, imuRateHz: 40, staticStartS: 15, seed: 11, leverArmM: [1, 0, -1] },
-    { aids: { nonHolonomic: { enabled: true } } },
+    { aids: { nonHolonomic: { enabled: true } }, states },
   );
   const recording = withTruth ? simulated.recording : { ...simulated.recording, reference: null };
   const outages = [
@@ -29,6 +35,9 @@ test.each([true, false])('shares of the predicted error add up to the whole (tru
   expect(share('gyro white noise')).toBeGreaterThan(0);
   expect(share('GNSS noise')).toBeGreaterThan(0.05);
   expect(share('aids')).toBeGreaterThan(0);
+  const optional = coasting!.map((s) => s.source).slice(9);
+  expect(optional).toEqual(states === OPTIONAL ? ['scale factors', 'lever arm'] : []);
+  for (const source of optional) expect(share(source)).toBeGreaterThan(0);
 });
 
 test('left out where it was not asked for', () => {

@@ -1,4 +1,5 @@
 import { FRAME_TABLES } from '@/shared/contracts/frames';
+import { parametersSchema } from '@/shared/contracts/parameters';
 import { runSummarySchema, SOLUTION_COLUMNS, type Outage } from '@/shared/contracts/runs';
 import { createRun, EngineError, type EngineRun, type RunResult } from '@/workers/engine';
 import { requestOf, simulateCase, type SimulatedCase } from '../support/monte-carlo';
@@ -150,6 +151,27 @@ describe('an outage window', () => {
     const straight = complete(runOf(road, [GNSS_OUT]));
     for (const name of SOLUTION_COLUMNS) expect(forked.solution[name]).toEqual(straight.solution[name]);
     expect(forked.position.nis).toEqual(straight.position.nis);
+  });
+
+  test('forks with optional states as without', () => {
+    const states = {
+      gyroScale: { enabled: true },
+      accelScale: { enabled: true },
+      leverArm: { enabled: true },
+    };
+    const parameters = parametersSchema.parse({ ...road.parameters, states });
+    const [forked, straight] = [withoutTruth, road].map((simulated) =>
+      complete(runOf({ ...simulated, parameters }, [GNSS_OUT])),
+    );
+    const names = Object.keys(straight!.solution);
+    expect(names.slice(-2)).toEqual(['sigma_lever_arm_y_m', 'sigma_lever_arm_z_m']);
+    for (const name of names) expect(forked!.solution[name]).toEqual(straight!.solution[name]);
+    const { summary } = straight!;
+    expect(runSummarySchema.parse(summary)).toEqual(summary);
+    const arm = summary.optionalStates!.find((s) => s.name === 'lever_arm_x_m')!;
+    expect(arm).toMatchObject({ unit: 'm', firstSigma: 0.2 });
+    expect(Math.abs(arm.value - 0.4)).toBeLessThan(4 * arm.sigma);
+    expect(arm.sigma).toBeLessThan(0.9 * arm.firstSigma);
   });
 
   test('predicted σ grows as the error does, over several windows', () => {

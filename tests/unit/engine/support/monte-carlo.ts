@@ -5,7 +5,7 @@ import { align } from '@/workers/engine/alignment/align';
 import { ErrorStateFilter } from '@/workers/engine/filter/error-state-filter';
 import type { FilterListener } from '@/workers/engine/filter/filter-types';
 import { prepareFixes, withheldBy } from '@/workers/engine/filter/fixes';
-import { STATES } from '@/workers/engine/filter/states';
+import { sizeOf, STATES } from '@/workers/engine/filter/states';
 import { emptyError, ReferenceReader, stateError } from '@/workers/engine/run/reference';
 import {
   imuModel,
@@ -158,10 +158,11 @@ function snapshot(
 
 /** NEES of the `size` states from `first` on, scaled to unit variances first for the sake of digits. */
 export function nees(error: Float64Array, p: Float64Array, first: number, size: number): number {
-  const sigma = Array.from({ length: size }, (_, i) => Math.sqrt(p[(first + i) * (STATES + 1)]!));
+  const n = sizeOf(p);
+  const sigma = Array.from({ length: size }, (_, i) => Math.sqrt(p[(first + i) * (n + 1)]!));
   const e = sigma.map((s, i) => error[first + i]! / s);
   const c: number[] = [];
   for (let i = 0; i < size; i += 1)
-    for (let j = 0; j < size; j += 1) c.push(p[(first + i) * STATES + first + j]! / (sigma[i]! * sigma[j]!));
+    for (let j = 0; j < size; j += 1) c.push(p[(first + i) * n + first + j]! / (sigma[i]! * sigma[j]!));
   return mahalanobis(e, c).squared;
 }
