@@ -3,6 +3,7 @@
  * they take parameters and store keys, read and write the store, report events, hear cancel.
  */
 import type { Outage, Provenance, RunSummary } from '@/shared/contracts/runs';
+import type { NoiseAnalysis } from '@/shared/contracts/noise';
 import type { Parameters } from '@/shared/contracts/parameters';
 import type {
   ChannelMap,
@@ -93,6 +94,13 @@ export interface RecordingSeriesJob {
   toS: number | null;
   points: number;
 }
+/** Allan analysis of a stretch at rest. */
+export interface NoiseJob {
+  kind: 'noise';
+  recordingId: string;
+  /** Null: the longest stretch at rest. */
+  spanS: [number, number] | null;
+}
 /** GNSS-only baseline track, thinned, north/east of the first fix. */
 export interface BaselineTrackJob {
   kind: 'baseline-track';
@@ -130,13 +138,21 @@ export interface JobResults {
   decode: DecodeResult;
   scenario: ScenarioResult;
   run: RunJobResult;
+  noise: NoiseAnalysis;
   'recording-series': Series;
   'baseline-track': BaselineTrack;
   'run-series': Uint8Array;
   'run-export': { key: string; bytes: number };
 }
 export type WorkerJob =
-  DecodeJob | ScenarioJob | RunJob | RecordingSeriesJob | BaselineTrackJob | RunSeriesJob | RunExportJob;
+  | DecodeJob
+  | ScenarioJob
+  | RunJob
+  | NoiseJob
+  | RecordingSeriesJob
+  | BaselineTrackJob
+  | RunSeriesJob
+  | RunExportJob;
 export type JobKind = WorkerJob['kind'];
 export type JobOf<K extends JobKind> = Extract<WorkerJob, { kind: K }>;
 

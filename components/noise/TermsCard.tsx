@@ -71,7 +71,7 @@ function Term({ sensor, spec, analysis, datasheet }: TermsCardProps & { spec: Fi
               –
             </Text>
           ) : (
-            <Quantity value={promised} unit={unit.symbol} size="label" tone="inkSoft" />
+            <Quantity value={promised} unit={unit.symbol} size="label" tone="soft" />
           )}
         </View>
       </View>

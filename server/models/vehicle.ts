@@ -9,7 +9,7 @@ import {
   type Sequelize,
 } from 'sequelize';
 import type { Vector3 } from '@/shared/contracts/common';
-import type { AxisMap, Vehicle as VehicleContract } from '@/shared/contracts/vehicles';
+import type { AxisMap, SensorModel, Vehicle as VehicleContract } from '@/shared/contracts/vehicles';
 import { bind, idColumn } from './base';
 
 export class Vehicle extends Model<InferAttributes<Vehicle>, InferCreationAttributes<Vehicle>> {
@@ -20,6 +20,7 @@ export class Vehicle extends Model<InferAttributes<Vehicle>, InferCreationAttrib
   /** Antenna seen from the IMU: forward, right, down, m. */
   declare leverArmM: Vector3;
   declare axes: AxisMap;
+  declare sensor: CreationOptional<SensorModel | null>;
   declare notes: string;
   declare createdAt: CreationOptional<Date>;
 }
@@ -32,6 +33,7 @@ export const bindVehicle = (sequelize: Sequelize) =>
     kind: DataTypes.TEXT,
     leverArmM: DataTypes.JSONB,
     axes: DataTypes.JSONB,
+    sensor: DataTypes.JSONB,
     notes: DataTypes.TEXT,
     createdAt: DataTypes.DATE,
   });

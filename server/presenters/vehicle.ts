@@ -7,6 +7,7 @@ export const presentVehicle = ({ vehicle, recordingCount }: CountedVehicle): Veh
   kind: vehicle.kind,
   leverArmM: vehicle.leverArmM,
   axes: vehicle.axes,
+  sensor: vehicle.sensor ?? null,
   notes: vehicle.notes,
   createdAt: vehicle.createdAt.toISOString(),
   recordingCount,

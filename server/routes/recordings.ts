@@ -11,6 +11,7 @@ import {
   seriesQuerySchema,
   seriesSchema,
 } from '@/shared/contracts/recordings';
+import { noiseAnalysisSchema, noiseRequestSchema } from '@/shared/contracts/noise';
 import { scenarioRequestSchema } from '@/shared/contracts/scenarios';
 import { receiveUpload } from '../middleware/upload';
 import { presentPage } from '../presenters/page';
@@ -25,6 +26,7 @@ import {
   listRecordings,
   mapRecording,
 } from '../services/recordings';
+import { sensorNoise } from '../services/sensor-noise';
 import { idParams } from './parts';
 import { type Route, workspaceRoute } from './route';
 
@@ -128,6 +130,18 @@ export const recordingRoutes: Route[] = [
     success: { status: 200, description: 'The channels', schema: seriesSchema, name: 'Series' },
     failures: { 409: 'Not decoded' },
     handle: ({ ctx, actor, params, query }) => recordingSeries(ctx, actor, params.id, query),
+  }),
+  workspaceRoute({
+    method: 'post',
+    path: '/recordings/:id/noise',
+    tag,
+    summary: 'Allan analysis of a stretch at rest',
+    permission: 'workspace:read',
+    params: idParams,
+    body: noiseRequestSchema,
+    success: { status: 200, description: 'The noise', schema: noiseAnalysisSchema, name: 'NoiseAnalysis' },
+    failures: { 409: 'Not decoded' },
+    handle: ({ ctx, actor, params, body }) => sensorNoise(ctx, actor, params.id, body),
   }),
   workspaceRoute({
     method: 'get',

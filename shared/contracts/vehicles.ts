@@ -38,6 +38,48 @@ export function axisDeterminant(axes: AxisMap): number {
   );
 }
 
+const figure = z.number().positive().nullable().default(null);
+
+/** Noise figures of an IMU, named as the filter's parameters; null where the source does not say. */
+export const sensorFiguresSchema = z.object({
+  gyro: z
+    .object({
+      whiteNoiseRadPerSqrtS: figure,
+      biasInstabilityRadPerS: figure,
+      biasCorrelationTimeS: figure,
+      turnOnBiasSigmaRadPerS: figure,
+      biasRandomWalkRadPerSPerSqrtS: figure,
+    })
+    .prefault({}),
+  accel: z
+    .object({
+      whiteNoiseMPerSPerSqrtS: figure,
+      biasInstabilityMPerS2: figure,
+      biasCorrelationTimeS: figure,
+      turnOnBiasSigmaMPerS2: figure,
+      biasRandomWalkMPerS2PerSqrtS: figure,
+    })
+    .prefault({}),
+});
+export type SensorFigures = z.infer<typeof sensorFiguresSchema>;
+
+/** An IMU: what its datasheet says, and what was measured. */
+export const sensorModelSchema = z.object({
+  name: z.string().max(120).default(''),
+  datasheet: sensorFiguresSchema.nullable().default(null),
+  measured: sensorFiguresSchema
+    .extend({
+      recordingId: idSchema,
+      recordingName: z.string(),
+      fromS: z.number(),
+      toS: z.number(),
+      measuredAt: isoTimeSchema,
+    })
+    .nullable()
+    .default(null),
+});
+export type SensorModel = z.infer<typeof sensorModelSchema>;
+
 export const vehicleInputSchema = z.object({
   name: nameSchema,
   kind: z.enum(['road', 'marine', 'fixedWing', 'multirotor', 'other']).default('other'),
@@ -47,6 +89,7 @@ export const vehicleInputSchema = z.object({
   axes: axisMapSchema
     .default(IDENTITY_AXES)
     .describe('Sensor axes as mounted: which points forward, right, down.'),
+  sensor: sensorModelSchema.nullable().optional(),
   notes: z.string().max(2000).default(''),
 });
 export type VehicleInput = z.infer<typeof vehicleInputSchema>;
@@ -56,6 +99,7 @@ export const vehiclePatchSchema = z.object({
   kind: z.enum(['road', 'marine', 'fixedWing', 'multirotor', 'other']).optional(),
   leverArmM: vector3Schema.optional(),
   axes: axisMapSchema.optional(),
+  sensor: sensorModelSchema.nullable().optional(),
   notes: z.string().max(2000).optional(),
 });
 export type VehiclePatch = z.infer<typeof vehiclePatchSchema>;
@@ -66,6 +110,7 @@ export const vehicleSchema = z.object({
   kind: z.enum(['road', 'marine', 'fixedWing', 'multirotor', 'other']),
   leverArmM: vector3Schema,
   axes: axisMapSchema,
+  sensor: sensorModelSchema.nullable(),
   notes: z.string(),
   createdAt: isoTimeSchema,
   recordingCount: z.number().int(),

@@ -3,6 +3,7 @@ import type { JobKind, JobOf, JobResults, WorkerJob } from '../protocol';
 import { baselineTrack } from './baseline-track';
 import { decode } from './decode';
 import type { JobHelpers } from './helpers';
+import { noise } from './noise';
 import { recordingSeries } from './recording-series';
 import { run } from './run';
 import { runExport } from './run-export';
@@ -15,6 +16,7 @@ export const handlers: { [K in JobKind]: JobHandler<K> } = {
   decode,
   scenario,
   run,
+  noise,
   'recording-series': recordingSeries,
   'baseline-track': baselineTrack,
   'run-series': runSeries,

@@ -9,6 +9,7 @@ const CRAWLER: Vehicle = {
   kind: 'marine',
   leverArmM: [0.42, 0.05, -0.88],
   axes: IDENTITY_AXES,
+  sensor: null,
   notes: '',
   createdAt: '2026-11-03T08:00:00Z',
   recordingCount: 2,
