@@ -6,9 +6,11 @@ import { Button } from '@/components/ui/Button';
 import { Text } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { hairline, radius, space } from '@/constants/theme';
+import { BudgetOff, BudgetView, useSplit } from './BudgetView';
 import { chartsOf, WIDE_VIEWS, type ViewId } from './chart-views';
 import { DriftGrowth, InnovationHistogram } from './QuietCharts';
 import { ViewTabs } from './ViewTabs';
+import { WhitenessView } from './WhitenessView';
 import { useTimeCharts, useTrackContent } from './use-charts';
 import type { Bench } from './use-bench';
 
@@ -61,6 +63,13 @@ function Charts({ bench, view, height }: { bench: Bench; view: ViewId; height: n
       {view === 'track' ? <Track bench={bench} height={height} /> : null}
       {view === 'coasting' && hasWindows ? <DriftGrowth bench={bench} height={each} /> : null}
       {view === 'coasting' && !hasWindows ? <NoWindows /> : null}
+      {view === 'budget' ? <Budgets bench={bench} height={height} /> : null}
+      {view === 'whiteness' ? (
+        <>
+          <WhitenessView bench={bench} group="position" height={Math.floor(height / 2)} />
+          <WhitenessView bench={bench} group="velocity" height={Math.floor(height / 2)} />
+        </>
+      ) : null}
       {view === 'innovations' ? (
         <View style={styles.pair}>
           <View style={styles.half}>
@@ -72,6 +81,19 @@ function Charts({ bench, view, height }: { bench: Bench; view: ViewId; height: n
         </View>
       ) : null}
     </View>
+  );
+}
+
+function Budgets({ bench, height }: { bench: Bench; height: number }) {
+  const split = useSplit(bench);
+  if (bench.config.outages.length === 0) return <NoWindows />;
+  if (!split) return <BudgetOff bench={bench} />;
+  const each = Math.floor(height / 2);
+  return (
+    <>
+      <BudgetView bench={bench} direction="horizontal" height={each} />
+      <BudgetView bench={bench} direction="vertical" height={each} />
+    </>
   );
 }
 

@@ -8,6 +8,8 @@ import { Button } from '@/components/ui/Button';
 import { Text } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { hairline, radius, space } from '@/constants/theme';
+import { AidFigures } from './AidFigures';
+import { BudgetOff, BudgetView, useSplit } from './BudgetView';
 import { NoWindows, Track } from './ChartDeck';
 import { PHONE_CHARTS, type PhoneChart, type ViewId } from './chart-views';
 import { Findings } from './Findings';
@@ -19,6 +21,7 @@ import { useSwipe } from './use-swipe';
 import { useTimeCharts } from './use-charts';
 import type { Bench } from './use-bench';
 import { ViewTabs } from './ViewTabs';
+import { WhitenessView } from './WhitenessView';
 
 /** Narrow: strip, one chart with a switcher, headline figures, and the parameters in a sheet of half the height. */
 export function PhoneBench({
@@ -84,6 +87,7 @@ export function PhoneBench({
         <>
           <RunProblem bench={bench} />
           <Headline bench={bench} columns={2} />
+          <AidFigures bench={bench} />
           <Findings bench={bench} />
         </>
       )}
@@ -115,6 +119,7 @@ function useFirstWindow({ group, start }: Bench): void {
 
 function OneChart({ bench, chart, height }: { bench: Bench; chart: PhoneChart; height: number }) {
   const charts = useTimeCharts(bench);
+  const split = useSplit(bench);
   const hasWindows = bench.config.outages.length > 0;
   if (chart === 'track') return <Track bench={bench} height={height} />;
   if (chart === 'histogram.position' || chart === 'histogram.velocity')
@@ -126,6 +131,16 @@ function OneChart({ bench, chart, height }: { bench: Bench; chart: PhoneChart; h
       />
     );
   if (!hasWindows && (chart === 'growth' || chart === 'coasting.horizontal')) return <NoWindows />;
+  if (chart === 'budget.horizontal' || chart === 'budget.vertical') {
+    if (!hasWindows) return <NoWindows />;
+    if (!split) return <BudgetOff bench={bench} />;
+    const direction = chart === 'budget.horizontal' ? 'horizontal' : 'vertical';
+    return <BudgetView bench={bench} direction={direction} height={height} />;
+  }
+  if (chart === 'whiteness.position' || chart === 'whiteness.velocity') {
+    const group = chart === 'whiteness.position' ? 'position' : 'velocity';
+    return <WhitenessView bench={bench} group={group} height={height} />;
+  }
   if (chart === 'growth') return <DriftGrowth bench={bench} height={height} />;
   return <TimeChart key={chart} content={charts[chart]} group={bench.group} height={height} />;
 }

@@ -1,14 +1,10 @@
-import { lazy, Suspense, useMemo, useState, type ReactNode } from 'react';
-import { StyleSheet, View } from 'react-native';
-import { Skeleton } from '@/components/ui/Skeleton';
-import { Text } from '@/components/ui/Text';
-import { VisuallyHidden } from '@/components/charts/VisuallyHidden';
-import { space } from '@/constants/theme';
+import { lazy, useMemo } from 'react';
 import { useLive } from '@/hooks/use-live-run';
 import { useRunCurves } from '@/hooks/runs';
 import { formatNumber } from '@/shared/format';
 import type { InnovationGroup } from './innovation-charts';
 import { driftGrowth, innovationDistribution, unitNormal, type Distribution } from './quiet-data';
+import { QuietFrame } from './QuietFrame';
 import { useSummary, type Bench } from './use-bench';
 
 // By dynamic import: the library behind them stays out of the first chunk.
@@ -40,7 +36,7 @@ export function DriftGrowth({ bench, height }: { bench: Bench; height: number })
       words={words}
       height={height}
     >
-      {(width) => (growth ? <DriftGrowthChart {...growth} width={width} height={height - HEAD_PX} /> : null)}
+      {(width, room) => (growth ? <DriftGrowthChart {...growth} width={width} height={room} /> : null)}
     </QuietFrame>
   );
 }
@@ -77,14 +73,14 @@ export function InnovationHistogram({
       words={found ? foundWords(found) : missingWords(summary !== null, count, fetchable && !whole.isError)}
       height={height}
     >
-      {(width) =>
+      {(width, room) =>
         found ? (
           <HistogramChart
             bins={found.bins}
             expected={EXPECTED}
             xLabel="innovation ÷ predicted σ"
             width={width}
-            height={height - HEAD_PX}
+            height={room}
           />
         ) : null
       }
@@ -105,58 +101,3 @@ function missingWords(done: boolean, count: number, coming: boolean): string {
     ? 'Fetching every fix …'
     : `Not shown: ${count} fixes are more than fit in one picture, and their extremes alone say nothing of all.`;
 }
-
-function QuietFrame(props: {
-  title: string;
-  aside: string;
-  /** The chart in a sentence; shown in its place where there is none. */
-  words: string;
-  height: number;
-  children: (width: number) => ReactNode;
-}) {
-  const [width, setWidth] = useState(0);
-  const drawn = width > 0 ? props.children(width) : null;
-  return (
-    <View
-      style={{ height: props.height }}
-      onLayout={(event) => setWidth(Math.floor(event.nativeEvent.layout.width))}
-    >
-      <View style={styles.head}>
-        <Text variant="label" strong level={3}>
-          {props.title}
-        </Text>
-        <Text variant="small" tone="soft">
-          {props.aside}
-        </Text>
-      </View>
-      {drawn ? (
-        <>
-          <View aria-hidden>
-            <Suspense fallback={<Skeleton height={props.height - HEAD_PX} />}>{drawn}</Suspense>
-          </View>
-          <VisuallyHidden>
-            <Text>{props.words}</Text>
-          </VisuallyHidden>
-        </>
-      ) : (
-        <Text variant="label" tone="soft" style={styles.words}>
-          {props.words}
-        </Text>
-      )}
-    </View>
-  );
-}
-
-const HEAD_PX = 26;
-const styles = StyleSheet.create({
-  head: {
-    height: HEAD_PX,
-    flexDirection: 'row',
-    alignItems: 'center',
-    justifyContent: 'space-between',
-    gap: space.m,
-    paddingLeft: 46,
-    paddingRight: space.s,
-  },
-  words: { paddingLeft: 46, paddingVertical: space.l },
-});

@@ -4,6 +4,7 @@ import { StripEditor } from '@/components/strip/StripEditor';
 import { Text } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { hairline, radius, space } from '@/constants/theme';
+import { AidFigures } from './AidFigures';
 import { ChartDeck } from './ChartDeck';
 import type { ViewId } from './chart-views';
 import { Findings } from './Findings';
@@ -29,6 +30,7 @@ export function WideBench({
     <>
       <RunProblem bench={bench} />
       <Headline bench={bench} columns={extraWide ? 2 : 3} />
+      <AidFigures bench={bench} />
       <Findings bench={bench} />
     </>
   );

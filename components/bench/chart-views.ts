@@ -4,7 +4,16 @@ import type { CurvesSource } from './curves';
 import { innovationChart, nisChart } from './innovation-charts';
 import { biasChart, coastingChart, horizontalSigmaChart, sigmaChart } from './state-charts';
 
-export type ViewId = 'overview' | 'coasting' | 'innovations' | 'nis' | 'covariance' | 'biases' | 'track';
+export type ViewId =
+  | 'overview'
+  | 'coasting'
+  | 'budget'
+  | 'innovations'
+  | 'whiteness'
+  | 'nis'
+  | 'covariance'
+  | 'biases'
+  | 'track';
 
 export interface ViewSpec {
   id: ViewId;
@@ -13,7 +22,9 @@ export interface ViewSpec {
 export const WIDE_VIEWS: readonly ViewSpec[] = [
   { id: 'overview', label: 'Overview' },
   { id: 'coasting', label: 'Coasting' },
+  { id: 'budget', label: 'Budget' },
   { id: 'innovations', label: 'Innovations' },
+  { id: 'whiteness', label: 'Whiteness' },
   { id: 'nis', label: 'NIS' },
   { id: 'covariance', label: 'Covariance' },
   { id: 'biases', label: 'Biases' },
@@ -34,8 +45,12 @@ export const PHONE_CHARTS = [
   { id: 'bias.accel', label: 'Accelerometer bias', view: 'biases' },
   { id: 'track', label: 'Track', view: 'track' },
   { id: 'growth', label: 'Drift growth', view: 'coasting' },
+  { id: 'budget.horizontal', label: 'Error budget, horizontal', view: 'budget' },
+  { id: 'budget.vertical', label: 'Error budget, vertical', view: 'budget' },
   { id: 'histogram.position', label: 'Distribution, position', view: 'innovations' },
   { id: 'histogram.velocity', label: 'Distribution, velocity', view: 'innovations' },
+  { id: 'whiteness.position', label: 'Whiteness, position', view: 'whiteness' },
+  { id: 'whiteness.velocity', label: 'Whiteness, velocity', view: 'whiteness' },
 ] as const satisfies readonly { id: string; label: string; view: ViewId }[];
 export type PhoneChart = (typeof PHONE_CHARTS)[number]['id'];
 
@@ -79,6 +94,8 @@ export function chartsOf(view: ViewId, hasWindows: boolean): (keyof TimeCharts)[
       return ['sigma.position', 'sigma.velocity', 'sigma.attitude'];
     case 'biases':
       return ['bias.gyro', 'bias.accel'];
+    case 'budget':
+    case 'whiteness':
     case 'track':
       return [];
   }
