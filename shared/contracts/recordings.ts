@@ -9,10 +9,25 @@ export type RecordingStatus = z.infer<typeof recordingStatusSchema>;
 const column = z.string().min(1).max(200).describe('Header of the column, as the file writes it.');
 const columns3 = z.tuple([column, column, column]);
 
-/** How a file tells time. With two columns the first is whole seconds (or GPS week), the second the fraction. */
+/**
+ * How a file tells time. With two columns the first is whole seconds, the GPS week or the date; the second the fraction, the
+ * seconds of the week or the time of day.
+ */
 export const timeMapSchema = z.object({
   columns: z.array(column).min(1).max(2),
-  base: z.enum(['s', 'ms', 'us', 'ns', 's+ns', 'gps-week+s', 'iso8601']),
+  base: z.enum([
+    's',
+    'ms',
+    'us',
+    'ns',
+    's+ns',
+    'gps-week+s',
+    'iso8601',
+    'gps-s',
+    'date+time',
+    'time-of-day',
+    'counter',
+  ]),
   offsetS: z
     .number()
     .default(0)
@@ -21,6 +36,31 @@ export const timeMapSchema = z.object({
     .enum(['end', 'middle', 'start'])
     .default('end')
     .describe('Where in its interval a sample is stamped.'),
+  scale: z
+    .enum(['utc', 'gps'])
+    .optional()
+    .describe(
+      'What an absolute time counts on; GPS time is ahead of UTC by the leap seconds. Left out: UTC.',
+    ),
+  zoneMin: z
+    .number()
+    .min(-1440)
+    .max(1440)
+    .optional()
+    .describe('Minutes by which a text time without a zone is ahead of UTC. Left out: 0.'),
+  dateOrder: z
+    .enum(['ymd', 'dmy', 'mdy'])
+    .optional()
+    .describe('Order of the parts of a written date. Left out: year, month, day.'),
+  date: z.iso.date().optional().describe('The day that a time of day starts on.'),
+  rateHz: z.number().positive().optional().describe('Counts a second of a counter, Hz.'),
+  wrap: z
+    .number()
+    .positive()
+    .optional()
+    .describe(
+      'Count at which a clock or counter starts again from 0, in its own unit; 4294967296 for 32 bits.',
+    ),
 });
 export type TimeMap = z.infer<typeof timeMapSchema>;
 
@@ -29,44 +69,83 @@ export const accelUnitSchema = z.enum(['m/s^2', 'g', 'mg', 'm/s', 'g*s']);
 export type GyroUnit = z.infer<typeof gyroUnitSchema>;
 export type AccelUnit = z.infer<typeof accelUnitSchema>;
 
+const turn = z.union([z.literal(1), z.literal(-1)]);
+/** What both sensors of an IMU may say of their three columns. */
+const sensorFields = {
+  columns: columns3,
+  file: z
+    .enum(['imu', 'imu2'])
+    .optional()
+    .describe('The file that holds the columns. Left out: the first of the IMU files that has them.'),
+  signs: z
+    .tuple([turn, turn, turn])
+    .optional()
+    .describe('−1 turns a column round before the axes apply. Left out: none.'),
+  scale: z
+    .number()
+    .refine((value) => value !== 0, { message: 'The scale must not be 0.' })
+    .optional()
+    .describe('Units a count, for raw counts of a sensor. Left out: 1.'),
+};
+
 export const imuMapSchema = z.object({
   time: timeMapSchema,
-  gyro: z.object({ columns: columns3, unit: gyroUnitSchema }),
+  gyro: z.object({ ...sensorFields, unit: gyroUnitSchema }),
   accel: z.object({
-    columns: columns3,
+    ...sensorFields,
     unit: accelUnitSchema,
     sign: z
       .enum(['specific-force', 'opposite'])
       .default('specific-force')
       .describe('specific-force: an accelerometer lying still, z down, reads −g.'),
   }),
+  accelTime: timeMapSchema
+    .optional()
+    .describe(
+      'Time of the accelerometer where it has rows or a file of its own: it is then brought onto the gyro’s stamps.',
+    ),
   sampling: z
     .enum(['mean-rate', 'instantaneous', 'increment'])
     .default('mean-rate')
     .describe('Mean rates over the interval that ends at the stamp, instantaneous rates, or increments.'),
   axes: axisMapSchema.optional().describe("Sensor axes as mounted; left out: the vehicle's."),
+  mounting: z
+    .object({ rollDeg: z.number(), pitchDeg: z.number(), yawDeg: z.number() })
+    .optional()
+    .describe(
+      'Measured attitude of the sensor, after the axes apply, in the vehicle: yaw, then pitch, then roll, degrees.',
+    ),
 });
 export type ImuMap = z.infer<typeof imuMapSchema>;
 
 export const angleUnitSchema = z.enum(['deg', 'rad']);
 export const speedUnitSchema = z.enum(['m/s', 'mm/s', 'km/h', 'kn']);
+/** `ecef`: the columns of latitude, longitude and height hold X, Y and Z, m. */
+export const positionUnitSchema = z.enum(['deg', 'rad', 'ddmm.mmmm', '1e-7deg', 'ecef']);
 
 export const positionMapSchema = z.object({
   lat: column,
   lon: column,
   height: column.optional(),
-  unit: angleUnitSchema.default('deg'),
-  heightUnit: z.enum(['m', 'mm']).default('m'),
+  unit: positionUnitSchema.default('deg'),
+  heightUnit: z.enum(['m', 'mm', 'ft']).default('m'),
   heightDatum: z.enum(['ellipsoid', 'sea-level']).default('ellipsoid'),
+  latHemisphere: column.optional().describe('Column that says N or S, where the latitude has no sign.'),
+  lonHemisphere: column.optional().describe('Column that says E or W, where the longitude has no sign.'),
 });
 export const velocityMapSchema = z.discriminatedUnion('frame', [
-  z.object({ frame: z.enum(['ned', 'enu', 'neu']), columns: columns3, unit: speedUnitSchema.default('m/s') }),
+  z.object({
+    frame: z.enum(['ned', 'enu', 'neu', 'ecef']),
+    columns: columns3,
+    unit: speedUnitSchema.default('m/s'),
+  }),
   z.object({
     frame: z.literal('speed-course'),
     speed: column,
     course: column,
     unit: speedUnitSchema.default('m/s'),
     courseUnit: angleUnitSchema.default('deg'),
+    climb: column.optional().describe('Vertical speed, upwards, in the unit of the speed.'),
   }),
 ]);
 /** σ columns: one horizontal and one vertical, or one an axis (north, east, down). */
@@ -82,6 +161,10 @@ export const gnssMapSchema = z.object({
   positionSigma: sigmaMapSchema.optional(),
   velocitySigma: sigmaMapSchema.optional(),
   quality: column.optional(),
+  repeats: z
+    .enum(['keep', 'drop'])
+    .optional()
+    .describe('drop: the file holds each fix until the next; rows that bring nothing new are left out.'),
 });
 export type GnssMap = z.infer<typeof gnssMapSchema>;
 
@@ -116,7 +199,8 @@ export const recordingPatchSchema = z.object({
 });
 export type RecordingPatch = z.infer<typeof recordingPatchSchema>;
 
-export const fileRoleSchema = z.enum(['imu', 'gnss', 'reference']);
+/** `imu2`: what the first IMU file lacks, where gyro and accelerometer have a file each. */
+export const fileRoleSchema = z.enum(['imu', 'gnss', 'reference', 'imu2']);
 export type FileRole = z.infer<typeof fileRoleSchema>;
 
 /** Why a file could not be used: what, where, and what to do. `line` counts from 1 and includes the header. */
@@ -130,12 +214,23 @@ export const intakeProblemSchema = z.object({
 });
 export type IntakeProblem = z.infer<typeof intakeProblemSchema>;
 
+/** What columns were taken for, and why. */
+export const channelGuessSchema = z.object({
+  channel: z.string().describe('time, gyro, accelerometer, position, height, velocity, position σ …'),
+  columns: z.array(z.string()),
+  takenAs: z.string().describe('Unit, frame or time base, as the channel map names it.'),
+  confidence: z.number().min(0).max(1),
+  reason: z.string().describe('A whole sentence.'),
+});
+export type ChannelGuess = z.infer<typeof channelGuessSchema>;
+
 /** What the mapping screen shows of a file: headers, first rows, and what was guessed. */
 export const filePreviewSchema = z.object({
   role: fileRoleSchema,
   headers: z.array(z.string()),
   rows: z.array(z.array(z.string())).describe('The first rows, as text.'),
   missing: z.array(z.string()).describe('Channels that no column was found for, in plain words.'),
+  guesses: z.array(channelGuessSchema).optional().describe('Left out where the map was given.'),
 });
 export type FilePreview = z.infer<typeof filePreviewSchema>;
 

@@ -1,9 +1,19 @@
-/** Settles the channel map of every file: what the uploader said, the rest guessed from the headers. */
-import type { ChannelMap, FilePreview, FileRole, IntakeProblem } from '@/shared/contracts/recordings';
+/** Settles the channel map of every file: what the uploader said, the rest guessed from headers and values. */
+import type {
+  ChannelGuess,
+  ChannelMap,
+  FilePreview,
+  FileRole,
+  IntakeProblem,
+} from '@/shared/contracts/recordings';
 import { columnIndex } from './cells';
 import type { CsvHead } from './csv';
+import { ColumnFinder } from './find-columns';
+import type { Guess } from './guess';
 import { guessGnssMap, guessReferenceMap } from './guess-gnss';
-import { guessImuMap, type Guess } from './guess-imu';
+import { guessImuMap } from './guess-imu';
+import { guessTime } from './guess-time';
+import { columnsOf, columnsOfImu, sensorRoles } from './map-columns';
 import { FILE_NAMES, problem, quoted } from './problems';
 
 export interface SettledMaps {
@@ -16,60 +26,91 @@ export interface SettledMaps {
   assumed: string[];
 }
 
-const PREVIEW_ROWS = 8;
-const GUESSES: { [R in FileRole]: (head: CsvHead) => Guess<NonNullable<ChannelMap[R]>> } = {
-  imu: guessImuMap,
-  gnss: guessGnssMap,
-  reference: guessReferenceMap,
-};
+export type Heads = ReadonlyMap<FileRole, CsvHead>;
+type MappedRole = keyof ChannelMap;
 
-export function settleMaps(heads: ReadonlyMap<FileRole, CsvHead>, given: ChannelMap | null): SettledMaps {
+const PREVIEW_ROWS = 8;
+
+export function settleMaps(heads: Heads, given: ChannelMap | null): SettledMaps {
   const settled: SettledMaps = { map: {}, problems: [], previews: [], assumed: [] };
   for (const [role, head] of heads) {
+    if (role === 'imu2') {
+      settled.previews.push(previewOf(role, head, []));
+      continue;
+    }
     const part = given?.[role];
     if (part) {
-      settled.problems.push(...unknownColumns(role, head, part));
+      settled.problems.push(...unknownColumns(role, heads, part));
       settled.previews.push(previewOf(role, head, []));
       Object.assign(settled.map, { [role]: part });
       continue;
     }
-    const guess = GUESSES[role](head);
-    settled.previews.push(previewOf(role, head, guess.missing));
+    const guess = guessOf(role, heads, head);
+    settled.previews.push(previewOf(role, head, guess.missing, guess.guesses));
     settled.assumed.push(...guess.assumed);
     if (guess.map) Object.assign(settled.map, { [role]: guess.map });
-    else settled.problems.push(unmapped(role, head, guess.missing));
+    else settled.problems.push(unmapped(role, head, guess.missing, isMerged(heads)));
   }
+  if (settled.map.imu) settled.problems.push(...completeAccelTime(heads, settled.map));
   return settled;
 }
 
+function guessOf(role: MappedRole, heads: Heads, head: CsvHead): Guess<NonNullable<ChannelMap[MappedRole]>> {
+  if (role === 'imu') return guessImuMap(head, heads.get('imu2'));
+  return role === 'gnss' ? guessGnssMap(head, isMerged(heads)) : guessReferenceMap(head);
+}
+
+/** One log holds the IMU and the GNSS: the very same table stands for both. */
+export function isMerged(heads: Heads): boolean {
+  const [imu, gnss] = [heads.get('imu'), heads.get('gnss')];
+  if (!imu || !gnss) return false;
+  return (
+    imu === gnss ||
+    (imu.headers.join() === gnss.headers.join() && imu.rows[0]?.join() === gnss.rows[0]?.join())
+  );
+}
+
+/** A given map may leave out how the accelerometer's own file tells time: that is guessed then. */
+function completeAccelTime(heads: Heads, map: ChannelMap): IntakeProblem[] {
+  const imu = map.imu!;
+  const roles = sensorRoles(imu, heads);
+  const head = heads.get(roles.accel);
+  if (roles.gyro === roles.accel || imu.accelTime || !head) return [];
+  const time = guessTime(head, new ColumnFinder(head), 'imu');
+  if (!time) return [unmapped(roles.accel, head, ['time'], false)];
+  map.imu = { ...imu, accelTime: time.map };
+  return [];
+}
+
 /** What the mapping screen shows of a file. */
-export const previewOf = (role: FileRole, head: CsvHead, missing: string[]): FilePreview => ({
+export const previewOf = (
+  role: FileRole,
+  head: CsvHead,
+  missing: string[],
+  guesses?: ChannelGuess[],
+): FilePreview => ({
   role,
   headers: head.headers,
   rows: head.rows.slice(0, PREVIEW_ROWS).map((row) => row.slice(0, head.headers.length)),
   missing,
+  ...(guesses ? { guesses } : null),
 });
 
-/** All names of columns in a part of a channel map. */
-export function columnsOf(part: NonNullable<ChannelMap[FileRole]>): string[] {
-  const { time } = part;
-  if ('gyro' in part) return [...time.columns, ...part.gyro.columns, ...part.accel.columns];
-  const { position, velocity } = part;
-  const names = [...time.columns, position.lat, position.lon, position.height ?? []].flat();
-  if (velocity) names.push(...('columns' in velocity ? velocity.columns : [velocity.speed, velocity.course]));
-  if ('attitude' in part && part.attitude) names.push(...part.attitude.columns);
-  if ('positionSigma' in part && part.positionSigma) names.push(...part.positionSigma.columns);
-  if ('velocitySigma' in part && part.velocitySigma) names.push(...part.velocitySigma.columns);
-  if ('quality' in part && part.quality) names.push(part.quality);
-  return names;
-}
-
+/** The columns of a sensor may lie in either file of the IMU. */
 function unknownColumns(
   role: FileRole,
-  head: CsvHead,
-  part: NonNullable<ChannelMap[FileRole]>,
+  heads: Heads,
+  part: NonNullable<ChannelMap[MappedRole]>,
 ): IntakeProblem[] {
-  const names = [...new Set(columnsOf(part))].filter((name) => columnIndex(head.headers, name) < 0);
+  if (!('gyro' in part)) return unknownAmong(role, heads.get(role)!, columnsOf(part));
+  const roles = sensorRoles(part, heads);
+  return (['gyro', 'accel'] as const).flatMap((sensor) =>
+    unknownAmong(roles[sensor], heads.get(roles[sensor])!, columnsOfImu(part, sensor)),
+  );
+}
+
+function unknownAmong(role: FileRole, head: CsvHead, columns: readonly string[]): IntakeProblem[] {
+  const names = [...new Set(columns)].filter((name) => columnIndex(head.headers, name) < 0);
   return names.map((name) =>
     problem(
       'column-unknown', { file: role, line: head.headerLine, column: name },
@@ -79,12 +120,18 @@ function unknownColumns(
   ); // prettier-ignore
 }
 
-function unmapped(role: FileRole, head: CsvHead, missing: readonly string[]): IntakeProblem {
+function unmapped(role: FileRole, head: CsvHead, missing: readonly string[], merged: boolean): IntakeProblem {
   const onlyTime = missing.length === 1 && missing[0] === 'time';
+  const without =
+    role === 'gnss' && merged
+      ? ' There is no GNSS file of its own, so fixes were looked for in the IMU file.'
+      : '';
   return problem(
     onlyTime ? 'no-time' : 'columns-missing', { file: role, line: head.headerLine },
-    `No column of the ${FILE_NAMES[role]} could be recognised as ${listed(missing)}.`,
-    'Say on the mapping screen which column it is and in which unit.',
+    `No column of the ${FILE_NAMES[role]} could be recognised as ${listed(missing)}.${without}`,
+    without
+      ? 'Upload the GNSS file as well, or say on the mapping screen which columns are the position.'
+      : 'Say on the mapping screen which column it is and in which unit.',
   ); // prettier-ignore
 }
 

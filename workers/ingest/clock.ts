@@ -4,7 +4,8 @@
  */
 import type { TimeMap, TimeOrigin } from '@/shared/contracts/recordings';
 import { numberIn } from './cells';
-import { gpsToUnixS, parseIsoTime, SECONDS_OF_WEEK, unixToGps, unixToIso } from './utc';
+import { gpsSecondsToUnixS, gpsToUnixS, SECONDS_OF_WEEK, unixToGps, unixToIso, withoutLeapS } from './utc';
+import { parseDate, parseDateTime, parseTimeOfDay, type WrittenTime } from './written-time';
 
 /** Seconds since the clock's start from which on it can only be an absolute one. */
 const ABSOLUTE_FROM_S = 1e8;
@@ -12,6 +13,9 @@ const ABSOLUTE_FROM_S = 1e8;
 const DATED_S: readonly [number, number] = [4.7e8, 4.1e9];
 
 const DECIMALS: Record<'s' | 'ms' | 'us' | 'ns', number> = { s: 0, ms: 3, us: 6, ns: 9 };
+const DAY_S = 86_400;
+/** Counters of 16, 24 and 32 bits, and the time of the GPS week in s and ms. */
+const USUAL_RANGES = [2 ** 16, 2 ** 24, 2 ** 32, SECONDS_OF_WEEK, SECONDS_OF_WEEK * 1000];
 
 /** A source time in two parts, so that large ones keep their digits. NaN: missing. */
 interface SplitTime {
@@ -20,6 +24,10 @@ interface SplitTime {
 }
 
 export class Clock {
+  /** Turns of a counter, or midnights of a time of day, so far; and the value before. */
+  private turns = 0;
+  private lastCount = NaN;
+  private noticedRange: number | undefined;
   /** What is subtracted, on the UNIX scale where the clock is absolute; 0 for a plain one. */
   private originS = 0;
   private readonly split: SplitTime = { wholeS: NaN, fractionS: NaN };
@@ -54,18 +62,42 @@ export class Clock {
     const dated = zeroS >= DATED_S[0] && zeroS <= DATED_S[1] && this.originS !== 0;
     if (!dated) return { sourceS: zeroS, utc: null, gpsWeek: null, gpsTowS: null };
     const gps = unixToGps(zeroS);
-    const sourceS = this.map.base === 'gps-week+s' ? gps.week * SECONDS_OF_WEEK + gps.towS : zeroS;
+    const onGps = this.map.base === 'gps-week+s' || this.map.base === 'gps-s';
+    const sourceS = onGps ? gps.week * SECONDS_OF_WEEK + gps.towS : zeroS;
     return { sourceS, utc: unixToIso(zeroS), gpsWeek: gps.week, gpsTowS: gps.towS };
   }
 
   /** False where a cell holds something that is not a time. */
   private parse(row: readonly string[]): boolean {
+    if (!this.parseParts(row)) return false;
+    const { split } = this;
+    if (this.map.scale === 'gps' && split.wholeS > ABSOLUTE_FROM_S) {
+      const floor = Math.floor(split.wholeS);
+      this.set(withoutLeapS(floor), split.wholeS - floor + split.fractionS);
+    }
+    return true;
+  }
+
+  private parseParts(row: readonly string[]): boolean {
     const first = row[this.indices[0]!];
-    const { base } = this.map;
-    if (base === 'iso8601') return this.parseText(first);
-    if (base === 's+ns') return this.parseSecondsAndNanoseconds(first, row[this.indices[1]!]);
-    if (base === 'gps-week+s') return this.parseWeek(first, row[this.indices[1]!]);
-    return this.parseCount(first, DECIMALS[base]);
+    switch (this.map.base) {
+      case 'iso8601':
+        return this.parseText(first);
+      case 'date+time':
+        return this.parseDateAndTime(first, row[this.indices[1]!]);
+      case 'time-of-day':
+        return this.parseTimeOfDay(first);
+      case 's+ns':
+        return this.parseSecondsAndNanoseconds(first, row[this.indices[1]!]);
+      case 'gps-week+s':
+        return this.parseWeek(first, row[this.indices[1]!]);
+      case 'gps-s':
+        return this.parseGpsSeconds(first);
+      case 'counter':
+        return this.parseCounter(first);
+      default:
+        return this.parseCount(first, DECIMALS[this.map.base]);
+    }
   }
 
   private set(wholeS: number, fractionS: number): true {
@@ -77,6 +109,8 @@ export class Clock {
   private parseCount(cell: string | undefined, decimals: number): boolean {
     const value = numberIn(cell, this.decimalComma);
     if (value === undefined) return false;
+    const range = this.rangeAfter(value);
+    if (range !== undefined) return this.set(this.unwrapped(value, range) / 10 ** decimals, 0);
     const seconds = value / 10 ** decimals;
     if (!(Math.abs(seconds) > ABSOLUTE_FROM_S)) return this.set(seconds, 0);
     const text = cell!.trim().replace(',', '.');
@@ -86,6 +120,34 @@ export class Clock {
     const cut = whole.length - decimals;
     const fraction = whole.slice(cut) + (digits[2] ?? '');
     return this.set(Number(whole.slice(0, cut)), fraction ? Number(`0.${fraction}`) : 0);
+  }
+
+  private parseCounter(cell: string | undefined): boolean {
+    const value = numberIn(cell, this.decimalComma);
+    if (value === undefined) return false;
+    const range = this.rangeAfter(value);
+    return this.set((range === undefined ? value : this.unwrapped(value, range)) / (this.map.rateHz ?? 1), 0);
+  }
+
+  /** Where the count starts again: as the map says, or as is plain from a fall from the very end of a usual range. */
+  private rangeAfter(value: number): number | undefined {
+    const stated = this.map.wrap ?? this.noticedRange;
+    if (stated !== undefined) return stated;
+    if (value < this.lastCount)
+      this.noticedRange = USUAL_RANGES.find(
+        (range) => this.lastCount > 0.99 * range && this.lastCount < range && value < 0.01 * range,
+      );
+    if (this.noticedRange === undefined && !Number.isNaN(value)) this.lastCount = value;
+    return this.noticedRange;
+  }
+
+  /** A fall by more than half the range is a turn; a rise by as much goes back behind it, for rows out of order. */
+  private unwrapped(value: number, range: number): number {
+    if (Number.isNaN(value)) return NaN;
+    if (value < this.lastCount - range / 2) this.turns += 1;
+    else if (value > this.lastCount + range / 2) this.turns -= 1;
+    this.lastCount = value;
+    return value + this.turns * range;
   }
 
   private parseSecondsAndNanoseconds(first: string | undefined, second: string | undefined): boolean {
@@ -103,9 +165,40 @@ export class Clock {
     return this.set(gpsToUnixS(weeks, whole), seconds - whole);
   }
 
+  private parseGpsSeconds(cell: string | undefined): boolean {
+    const seconds = numberIn(cell, this.decimalComma);
+    if (seconds === undefined) return false;
+    const whole = Math.floor(seconds);
+    return this.set(gpsSecondsToUnixS(whole), seconds - whole);
+  }
+
   private parseText(cell: string | undefined): boolean {
-    if (cell === undefined || cell.trim() === '') return this.set(NaN, NaN);
-    const time = parseIsoTime(cell);
+    if (isBlank(cell)) return this.set(NaN, NaN);
+    return this.setTime(parseDateTime(cell!, this.map.dateOrder, this.map.zoneMin));
+  }
+
+  private parseDateAndTime(date: string | undefined, time: string | undefined): boolean {
+    if (isBlank(date) || isBlank(time)) return this.set(NaN, NaN);
+    const dayS = parseDate(date!, this.map.dateOrder);
+    const ofDay = parseTimeOfDay(time!);
+    if (dayS === null || !ofDay) return false;
+    return this.set(dayS + ofDay.wholeS - 60 * (this.map.zoneMin ?? 0), ofDay.fractionS);
+  }
+
+  /** Counts on over midnight; on the UNIX scale where the map says the day. */
+  private parseTimeOfDay(cell: string | undefined): boolean {
+    if (isBlank(cell)) return this.set(NaN, NaN);
+    const ofDay = parseTimeOfDay(cell!);
+    if (!ofDay) return false;
+    const sinceS = this.unwrapped(ofDay.wholeS, DAY_S);
+    const { date, zoneMin = 0 } = this.map;
+    const dayS = date === undefined ? 0 : (parseDate(date) ?? 0) - 60 * zoneMin;
+    return this.set(dayS + sinceS, ofDay.fractionS);
+  }
+
+  private setTime(time: WrittenTime | null): boolean {
     return time !== null && this.set(time.wholeS, time.fractionS);
   }
 }
+
+const isBlank = (cell: string | undefined) => cell === undefined || cell.trim() === '';

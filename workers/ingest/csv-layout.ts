@@ -49,7 +49,12 @@ export function layOut(lines: readonly string[]): (CsvLayout & { dataAt: number 
     headerLine: found.headerLine,
     firstLine: dataAt + 1,
     dataAt,
-    decimalComma: usesDecimalComma(lines.slice(dataAt, dataAt + JUDGED_LINES).filter(isFilled).map(split)),
+    decimalComma: usesDecimalComma(
+      lines
+        .slice(dataAt, dataAt + JUDGED_LINES)
+        .filter(isFilled)
+        .map(split),
+    ),
     ...(found.headerLine === null ? {} : { repeatedHeader: found.headers }),
   };
 }

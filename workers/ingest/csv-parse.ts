@@ -24,4 +24,7 @@ export const parseAll = (text: string, delimiter: string) => parsePart(text, del
 
 /** Runs of blanks (and tabs among them) as one, none at the ends of lines. */
 const gathered = (text: string) =>
-  text.replace(/[ \t]+/g, ' ').replace(/^ /gm, '').replace(/ \n/g, '\n');
+  text
+    .replace(/[ \t]+/g, ' ')
+    .replace(/^ /gm, '')
+    .replace(/ \n/g, '\n');

@@ -1,5 +1,6 @@
 /** CSV as rows of text: layout found from the head of the file, then rows in batches with their line numbers. */
 import type { FileRole } from '@/shared/contracts/recordings';
+import type { NmeaSettings } from './nmea';
 import { isComment, layOut, type CsvLayout } from './csv-layout';
 import { parseAll, parsePart } from './csv-parse';
 import { FILE_NAMES, rejection } from './problems';
@@ -12,6 +13,13 @@ export interface CsvHead extends CsvLayout {
   rows: string[][];
   /** The head holds the whole file. */
   complete: boolean;
+  /** As the uploader's machine called it. */
+  fileName?: string;
+  /** Left out: CSV. */
+  format?: 'nmea' | 'gpx';
+  nmea?: NmeaSettings;
+  /** GPX: heights are above the ellipsoid. */
+  geoid?: boolean;
 }
 
 export interface CsvBatch {
@@ -25,12 +33,6 @@ export interface CsvBatch {
 const HEAD_CHARS = 256 * 1024;
 const MAX_LINE_CHARS = 1024 * 1024;
 const MAX_COLUMNS = 4000;
-
-/** Reads the head of a file and closes the source. Throws IntakeRejected. */
-export async function readHead(chunks: AsyncGenerator<string>, role: FileRole): Promise<CsvHead> {
-  const { text, complete } = await headText(chunks);
-  return csvHead(text, complete, role);
-}
 
 /** The first text of a file, whole lines and more; `complete` where that is all. */
 export async function headText(chunks: AsyncGenerator<string>): Promise<{ text: string; complete: boolean }> {

@@ -15,6 +15,13 @@ export interface GnssFacts {
   outOfOrder: number;
 }
 
+export interface GnssRows {
+  /** Rows with a time but without a place belong to another device. */
+  othersRows: boolean;
+  /** Rows that repeat the fix before are left out; a fix that stays the same for longer than this counts again, s. */
+  heldForS: number | null;
+}
+
 interface Fix {
   timeS: number;
   /** Values after the time, as GNSS_COLUMNS has them. */
@@ -23,6 +30,8 @@ interface Fix {
 
 export class GnssCollector {
   private readonly read: Float64Array;
+  private readonly before: Float64Array;
+  private takenS = -Infinity;
   private readonly fixes: Fix[] = [];
   private noFixRows = 0;
   private outOfOrder = 0;
@@ -32,8 +41,10 @@ export class GnssCollector {
     private readonly reader: RowReader,
     private readonly conversion: TrajectoryConversion,
     private readonly shiftS: number,
+    private readonly others: GnssRows,
   ) {
     this.read = new Float64Array(conversion.columns.length);
+    this.before = new Float64Array(conversion.columns.length).fill(NaN);
   }
 
   push(batch: CsvBatch): void {
@@ -54,7 +65,10 @@ export class GnssCollector {
   private pushRow(row: readonly string[], line: number): void {
     const timeS = this.reader.read(row, line, this.read) + this.shiftS;
     // Neither time nor place: a row of another device in a merged log.
-    if (Number.isNaN(timeS) && Number.isNaN(this.read[0]!) && Number.isNaN(this.read[1]!)) return;
+    const placeless = Number.isNaN(this.read[0]!) && Number.isNaN(this.read[1]!);
+    if (placeless && (Number.isNaN(timeS) || (this.others.othersRows && this.read.every(Number.isNaN))))
+      return;
+    if (this.isHeld(timeS)) return;
     const values = new Float64Array(ROW_LENGTH);
     const hasFix = !Number.isNaN(timeS) && !this.conversion.isNoFix(this.read);
     if (hasFix) this.conversion.convert(this.read, line, values);
@@ -64,6 +78,17 @@ export class GnssCollector {
     }
     if (timeS < (this.fixes.at(-1)?.timeS ?? -Infinity)) this.outOfOrder += 1;
     this.fixes.push({ timeS, values });
+  }
+
+  /** Whether the row only holds the fix before. */
+  private isHeld(timeS: number): boolean {
+    const { heldForS } = this.others;
+    if (heldForS === null) return false;
+    const same = this.read.every((value, i) => Object.is(value, this.before[i]));
+    if (same && timeS - this.takenS < heldForS) return true;
+    this.before.set(this.read);
+    this.takenS = timeS;
+    return false;
   }
 
   /** By time; rows of one epoch become one, the first value of each column standing. */
@@ -77,7 +102,10 @@ export class GnssCollector {
         continue;
       }
       // Receivers often give position and velocity of one epoch on two rows; two positions are one too many.
-      if (!Number.isNaN(last.values[ROW.lat]! + fix.values[ROW.lat]!)) this.duplicates += 1;
+      const twice = !Number.isNaN(last.values[ROW.lat]! + fix.values[ROW.lat]!);
+      const repeated =
+        this.others.othersRows && fix.values.every((value, i) => Object.is(value, last.values[i]));
+      if (twice && !repeated) this.duplicates += 1;
       fix.values.forEach((value, i) => {
         if (Number.isNaN(last.values[i]!)) last.values[i] = value;
       });

@@ -1,52 +1,62 @@
-/** The channel maps of GNSS and reference files, from their headers. */
-import type { GnssMap, ReferenceMap } from '@/shared/contracts/recordings';
+/** The channel maps of GNSS and reference files, from their headers and, where those leave it open, their values. */
+import type { ChannelGuess, GnssMap, ReferenceMap } from '@/shared/contracts/recordings';
+import { columnIndex } from './cells';
+import { Clock } from './clock';
 import type { CsvHead } from './csv';
 import { ColumnFinder, type FoundColumn } from './find-columns';
-import type { Guess } from './guess-imu';
-import { guessTime } from './guess-time';
+import { guessed, type Guess } from './guess';
+import { guessPosition, type GuessedPosition } from './guess-position';
+import { guessTime, type GuessedTime } from './guess-time';
+import { guessVelocity, type GuessedVelocity } from './guess-velocity';
 import { namesOtherDevice } from './header-words';
 import { ATTITUDE_WORDS, GNSS_WORDS, type GnssChannel } from './vocabulary';
 
-type Find = (channel: GnssChannel) => FoundColumn | null;
-type PositionMap = GnssMap['position'];
-type VelocityMap = NonNullable<GnssMap['velocity']>;
+export type Find = (channel: GnssChannel) => FoundColumn | null;
 type SigmaMap = NonNullable<GnssMap['positionSigma']>;
 
-export function guessGnssMap(head: CsvHead): Guess<GnssMap> {
+/** `merged`: the file is the IMU's as well. */
+export function guessGnssMap(head: CsvHead, merged = false): Guess<GnssMap> {
   const finder = new ColumnFinder(head);
   const find = finderFor(finder, 'gnss');
   const time = guessTime(head, finder, 'gnss');
-  const position = guessPosition(find);
-  const missing = missingOf(time !== null, find);
-  if (!time || !position.map) return { map: null, missing, assumed: [] };
+  const position = guessPosition(head, find);
+  const missing = missingOf(time !== null, position, find);
+  if (!time || !position.map) return { map: null, missing, assumed: [], guesses: [] };
   const quality = find('quality');
   const map: GnssMap = { time: time.map, position: position.map };
-  const velocity = guessVelocity(find);
+  const velocity = velocityOf(head, find, time, position.map);
   const positionSigma = guessPositionSigma(find);
   const velocitySigma = guessVelocitySigma(find);
-  if (velocity) map.velocity = velocity;
+  if (velocity.map) map.velocity = velocity.map;
   if (positionSigma) map.positionSigma = positionSigma;
-  if (velocity && velocitySigma) map.velocitySigma = velocitySigma;
+  if (velocity.map && velocitySigma) map.velocitySigma = velocitySigma;
   if (quality) map.quality = quality.header;
-  return { map, missing: [], assumed: [time.assumed, position.assumed].flatMap((text) => text ?? []) };
+  if (merged && holdsFixes(head, map.position)) map.repeats = 'drop';
+  const sigmas = ofSigma('position σ', positionSigma).concat(
+    ofSigma('velocity σ', map.velocitySigma ?? null),
+  );
+  const guesses = [time.guess, ...position.guesses, ...velocity.guesses, ...sigmas];
+  return { map, missing: [], assumed: assumedBy(time, position, velocity), guesses };
 }
 
 export function guessReferenceMap(head: CsvHead): Guess<ReferenceMap> {
   const finder = new ColumnFinder(head);
   const find = finderFor(finder, 'reference');
   const time = guessTime(head, finder, 'reference');
-  const position = guessPosition(find);
-  if (!time || !position.map) return { map: null, missing: missingOf(time !== null, find), assumed: [] };
+  const position = guessPosition(head, find);
+  const missing = missingOf(time !== null, position, find);
+  if (!time || !position.map) return { map: null, missing, assumed: [], guesses: [] };
   const map: ReferenceMap = { time: time.map, position: position.map };
-  const velocity = guessVelocity(find);
+  const velocity = velocityOf(head, find, time, position.map);
   const angles = (['roll', 'pitch', 'yaw'] as const).map((name) => finder.find(ATTITUDE_WORDS[name]));
-  if (velocity) map.velocity = velocity;
+  if (velocity.map) map.velocity = velocity.map;
   if (angles[0] && angles[1] && angles[2])
     map.attitude = {
       columns: [angles[0].header, angles[1].header, angles[2].header],
       unit: angles[0].unit === 'rad' ? 'rad' : 'deg',
     };
-  return { map, missing: [], assumed: [time.assumed, position.assumed].flatMap((text) => text ?? []) };
+  const guesses = [time.guess, ...position.guesses, ...velocity.guesses];
+  return { map, missing: [], assumed: assumedBy(time, position, velocity), guesses };
 }
 
 const finderFor =
@@ -54,55 +64,31 @@ const finderFor =
   (channel) =>
     finder.find(GNSS_WORDS[channel], (header) => !namesOtherDevice(header, role));
 
-const missingOf = (hasTime: boolean, find: Find) => [
+const assumedBy = (...parts: (GuessedTime | GuessedPosition | GuessedVelocity)[]) =>
+  parts.flatMap((part) => part.assumed ?? []);
+
+const missingOf = (hasTime: boolean, position: GuessedPosition, find: Find) => [
   ...(hasTime ? [] : ['time']),
-  ...(find('lat') ? [] : ['latitude']),
-  ...(find('lon') ? [] : ['longitude']),
+  ...(position.map || find('lat') ? [] : ['latitude']),
+  ...(position.map || find('lon') ? [] : ['longitude']),
 ];
 
-function guessPosition(find: Find): { map: PositionMap | null; assumed: string | null } {
-  const [lat, lon] = [find('lat'), find('lon')];
-  if (!lat || !lon) return { map: null, assumed: null };
-  const [ellipsoid, sea, plain] = [find('heightEllipsoid'), find('heightSea'), find('heightPlain')];
-  const height = ellipsoid ?? sea ?? plain;
-  const map: PositionMap = {
-    lat: lat.header,
-    lon: lon.header,
-    unit: lat.unit === 'rad' ? 'rad' : 'deg',
-    heightUnit: height?.unit === 'mm' ? 'mm' : 'm',
-    heightDatum: height === sea && sea !== null ? 'sea-level' : 'ellipsoid',
-  };
-  if (height) map.height = height.header;
-  const assumed =
-    height && height === plain
-      ? `The column “${plain.header}” does not say above what it counts: taken as height above the ellipsoid.`
-      : null;
-  return { map, assumed };
-}
+function velocityOf(head: CsvHead, find: Find, time: GuessedTime, position: GnssMap['position']): GuessedVelocity {
+  const clock = new Clock(time.map, time.map.columns.map((name) => columnIndex(head.headers, name)), head.decimalComma);
+  const place = [find('lat'), find('lon')];
+  const inDegrees = position.unit === 'deg' && place[0] && place[1] ? ([place[0], place[1]] as const) : null;
+  return guessVelocity(head, find, (row) => clock.read(row) ?? NaN, inDegrees);
+} // prettier-ignore
 
-function guessVelocity(find: Find): VelocityMap | null {
-  const [north, east, down, up] = [find('vn'), find('ve'), find('vd'), find('vu')];
-  if (north && east && down)
-    return {
-      frame: 'ned',
-      columns: [north.header, east.header, down.header],
-      unit: speedUnit(north),
-    };
-  if (north && east && up)
-    return { frame: 'enu', columns: [east.header, north.header, up.header], unit: speedUnit(north) };
-  const [speed, course] = [find('speed'), find('course')];
-  if (!speed || !course) return null;
-  return {
-    frame: 'speed-course',
-    speed: speed.header,
-    course: course.header,
-    unit: speedUnit(speed),
-    courseUnit: course.unit === 'rad' ? 'rad' : 'deg',
-  };
+/** A merged log that writes the last fix beside every IMU sample: far fewer positions than rows with one. */
+function holdsFixes(head: CsvHead, position: GnssMap['position']): boolean {
+  const at = [position.lat, position.lon].map((name) => columnIndex(head.headers, name));
+  const places = head.rows
+    .map((row) => at.map((i) => row[i]?.trim() ?? '').join())
+    .filter((place) => place !== ',');
+  const changes = places.filter((place, i) => i === 0 || place !== places[i - 1]).length;
+  return places.length > 20 && places.length > 3 * changes;
 }
-
-const speedUnit = (column: FoundColumn): VelocityMap['unit'] =>
-  column.unit === 'km/h' || column.unit === 'kn' || column.unit === 'mm/s' ? column.unit : 'm/s';
 
 function guessPositionSigma(find: Find): SigmaMap | null {
   const axes = [find('sigmaN'), find('sigmaE'), find('sigmaD')];
@@ -128,3 +114,8 @@ function sigmaMap<U extends SigmaMap['unit']>(
     unit: columns[0]!.unit === small ? small : usual,
   };
 }
+
+const ofSigma = (channel: string, map: SigmaMap | null): ChannelGuess[] =>
+  map
+    ? [guessed(channel, map.columns, map.unit, 0.85, 'The headers name accuracies; they are taken as one σ.')]
+    : [];

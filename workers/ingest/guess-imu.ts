@@ -1,56 +1,160 @@
-/** The channel map of an IMU file, from its headers and, where they name no unit, from the values. */
-import type { AccelUnit, GyroUnit, ImuMap } from '@/shared/contracts/recordings';
-import { numberIn } from './cells';
+/** The channel map of an IMU, from the headers of its one or two files and, where they name no unit, from the values. */
+import type { ChannelGuess, ImuMap } from '@/shared/contracts/recordings';
 import type { CsvHead } from './csv';
-import { ColumnFinder, type FoundColumn } from './find-columns';
+import { ColumnFinder } from './find-columns';
+import { guessed, type Guess } from './guess';
+import { accelUnitOf, gyroUnitOf, type GuessedUnit } from './guess-imu-units';
+import { guessTime, type GuessedTime } from './guess-time';
 import { namesOtherDevice } from './header-words';
-import { guessTime } from './guess-time';
+import { sensedTriple, type Sensor, type Triple } from './pattern-columns';
 import { IMU_WORDS } from './vocabulary';
 
-export interface Guess<M> {
-  /** Null where `missing` is not empty. */
-  map: M | null;
-  /** Channels that no column was found for, in plain words. */
-  missing: string[];
-  /** What was taken for granted, in whole sentences. */
-  assumed: string[];
+type ImuRole = 'imu' | 'imu2';
+
+interface FoundSensor {
+  role: ImuRole;
+  head: CsvHead;
+  columns: Triple;
+  because: string;
+  confidence: number;
 }
 
-type Triple = [FoundColumn, FoundColumn, FoundColumn];
-/** Faster than this in rad/s hardly any vehicle turns: the numbers are degrees. */
-const MAX_LIKELY_RATE = 6;
-
-export function guessImuMap(head: CsvHead): Guess<ImuMap> {
-  const finder = new ColumnFinder(head);
-  const time = guessTime(head, finder, 'imu');
-  const rates = triple(finder, 'gyro', ['rad', 'deg']);
-  const angles = rates.found ? null : triple(finder, 'dtheta', ['rad/s', 'deg/s', 'deg/h']).found;
-  const forces = triple(finder, 'accel', ['m/s', 'g*s']);
-  const velocities = forces.found ? null : triple(finder, 'dv', ['m/s^2', 'g', 'mg']).found;
-  const increments = angles !== null && velocities !== null;
-  const gyro = increments ? angles : rates.found;
-  const accel = increments ? velocities : forces.found;
-  const missing = [
-    ...(time ? [] : ['time']),
-    ...(gyro ? [] : rates.missing.map((axis) => `gyro ${axis}`)),
-    ...(accel ? [] : forces.missing.map((axis) => `accelerometer ${axis}`)),
-  ];
-  if (!time || !gyro || !accel) return { map: null, missing, assumed: [] };
-  const accelUnit = unitOfAll(accel) ?? (increments ? 'm/s' : likelyAccelUnit(head, accel));
-  const gyroUnit = unitOfAll(gyro) ?? (increments ? 'rad' : likelyGyroUnit(head, gyro, accelUnit));
-  const assumed = [time.assumed ?? ''];
-  if (!unitOfAll(gyro)) assumed.push(`The gyro columns name no unit: taken as ${gyroUnit}.`);
-  if (!unitOfAll(accel)) assumed.push(`The accelerometer columns name no unit: taken as ${accelUnit}.`);
-  return {
-    map: {
-      time: time.map,
-      gyro: { columns: headersOf(gyro), unit: gyroUnit as GyroUnit },
-      accel: { columns: headersOf(accel), unit: accelUnit as AccelUnit, sign: 'specific-force' },
-      sampling: increments ? 'increment' : 'mean-rate',
-    },
-    missing: [],
-    assumed: assumed.filter((sentence) => sentence !== ''),
+/** `second`: the head of a second file, where gyro and accelerometer have one each. */
+export function guessImuMap(first: CsvHead, second?: CsvHead): Guess<ImuMap> {
+  const heads: [ImuRole, CsvHead][] = second ? [['imu', first], ['imu2', second]] : [['imu', first]]; // prettier-ignore
+  const whole = heads.flatMap(([role, head]) => incrementsOf(role, head) ?? ratesOf(role, head) ?? []);
+  const increments = whole[0] ? whole[0].increments : false;
+  const gyro = whole[0]?.gyro ?? sensorIn(heads, 'gyro', null);
+  const accel = whole[0]?.accel ?? sensorIn(heads, 'accel', gyro);
+  const time = gyro && timeOf(gyro);
+  const accelTime = gyro && accel && standApart(gyro, accel) ? timeOf(accel, 'acc') : null;
+  const missing = missingOf(heads, gyro, accel, time, accelTime);
+  if (!time || !gyro || !accel || missing.length > 0) return { map: null, missing, assumed: [], guesses: [] };
+  const accelUnit = accelUnitOf(accel.head, accel.columns, increments);
+  const gyroUnit = gyroUnitOf(gyro.head, gyro.columns, accelUnit.unit, increments);
+  const map: ImuMap = {
+    time: time.map,
+    gyro: { columns: headersOf(gyro.columns), unit: gyroUnit.unit },
+    accel: { columns: headersOf(accel.columns), unit: accelUnit.unit, sign: 'specific-force' },
+    sampling: increments ? 'increment' : 'mean-rate',
   };
+  if (second) {
+    map.gyro.file = gyro.role;
+    map.accel.file = accel.role;
+  }
+  if (accelTime) map.accelTime = accelTime.map;
+  return {
+    map,
+    missing: [],
+    assumed: [
+      time.assumed ?? '',
+      gyroUnit.fromHeader ? '' : `The gyro columns name no unit: taken as ${gyroUnit.unit}.`,
+      accelUnit.fromHeader ? '' : `The accelerometer columns name no unit: taken as ${accelUnit.unit}.`,
+    ].filter((sentence) => sentence !== ''),
+    guesses: [
+      time.guess,
+      ofSensor('gyro', gyro, gyroUnit),
+      ofSensor('accelerometer', accel, accelUnit),
+      ...(accelTime ? [{ ...accelTime.guess, channel: 'accelerometer time' }] : []),
+    ],
+  };
+}
+
+function ofSensor(
+  channel: string,
+  sensor: FoundSensor,
+  { unit, confidence, reason }: GuessedUnit,
+): ChannelGuess {
+  const why = `Taken for the ${channel} because ${sensor.because}. ${reason}`;
+  return guessed(channel, headersOf(sensor.columns), unit, Math.min(sensor.confidence, confidence), why);
+}
+
+const NAMED = { because: 'the headers name it', confidence: 0.95 };
+
+/** Increments only where both sensors have them. */
+function incrementsOf(role: ImuRole, head: CsvHead) {
+  const finder = new ColumnFinder(head);
+  if (triple(finder, 'gyro', ['rad', 'deg']).found && triple(finder, 'accel', ['m/s', 'g*s']).found)
+    return null;
+  const angles = triple(finder, 'dtheta', ['rad/s', 'deg/s', 'deg/h']).found;
+  const velocities = triple(finder, 'dv', ['m/s^2', 'g', 'mg']).found;
+  if (!angles || !velocities) return null;
+  const of = (columns: Triple): FoundSensor => ({ role, head, columns, ...NAMED });
+  return { gyro: of(angles), accel: of(velocities), increments: true };
+}
+
+/** Both sensors by name in one file. */
+function ratesOf(role: ImuRole, head: CsvHead) {
+  const [gyro, accel] = [named(role, head, 'gyro'), named(role, head, 'accel')];
+  return gyro && accel ? { gyro, accel, increments: false } : null;
+}
+
+function named(role: ImuRole, head: CsvHead, sensor: Sensor): FoundSensor | null {
+  const refused = sensor === 'gyro' ? ['rad', 'deg'] : ['m/s', 'g*s'];
+  const { found } = triple(new ColumnFinder(head), sensor, refused);
+  return found && { role, head, columns: found, ...NAMED };
+}
+
+/** In any of the files, by name before by likeness; not the columns of the other sensor. */
+function sensorIn(
+  heads: readonly [ImuRole, CsvHead][],
+  sensor: Sensor,
+  other: FoundSensor | null,
+): FoundSensor | null {
+  for (const [role, head] of heads) {
+    const found = named(role, head, sensor);
+    if (found) return found;
+  }
+  for (const [role, head] of heads) {
+    const taken = other?.role === role ? headersOf(other.columns) : [];
+    const sensed = sensedTriple(head, sensor, taken);
+    if (sensed) return { role, head, ...sensed };
+  }
+  return null;
+}
+
+/** Files of their own, or rows of their own: where one has values the other has none. */
+function standApart(gyro: FoundSensor, accel: FoundSensor): boolean {
+  if (gyro.role !== accel.role) return true;
+  const has = (row: readonly string[], { columns }: FoundSensor) =>
+    (row[columns[0].index] ?? '').trim() !== '';
+  const { rows } = gyro.head;
+  const both = rows.filter((row) => has(row, gyro) && has(row, accel)).length;
+  const either = rows.filter((row) => has(row, gyro) !== has(row, accel)).length;
+  return (
+    either > 4 && both === 0 && rows.some((row) => has(row, gyro)) && rows.some((row) => has(row, accel))
+  );
+}
+
+function timeOf({ head }: FoundSensor, preferred?: string): GuessedTime | null {
+  const own = preferred && head.headers.find((h) => new RegExp(`${preferred}.*(time|stamp)`, 'i').test(h));
+  const finder = new ColumnFinder(head);
+  return (own ? guessTime(onlyTime(head, own), finder, 'imu') : null) ?? guessTime(head, finder, 'imu');
+}
+
+/** The head with nothing to find but one column. */
+const onlyTime = (head: CsvHead, header: string): CsvHead => ({
+  ...head,
+  headers: head.headers.map((one, i) => (one === header ? one : `column ${i + 1}`)),
+});
+
+function missingOf(
+  heads: readonly [ImuRole, CsvHead][],
+  gyro: FoundSensor | null,
+  accel: FoundSensor | null,
+  time: GuessedTime | null,
+  accelTime: GuessedTime | null,
+): string[] {
+  const finder = new ColumnFinder(heads[0]![1]);
+  const anyTime = time ?? guessTime(heads[0]![1], finder, 'imu');
+  const axes = (sensor: Sensor) => triple(finder, sensor, []).missing;
+  const apart = gyro && accel && standApart(gyro, accel) && !accelTime;
+  return [
+    ...(anyTime ? [] : ['time']),
+    ...(gyro ? [] : axes('gyro').map((axis) => `gyro ${axis}`)),
+    ...(accel ? [] : axes('accel').map((axis) => `accelerometer ${axis}`)),
+    ...(apart ? ['time of the accelerometer'] : []),
+  ];
 }
 
 /** Columns x, y, z whose unit is none of `refused`. */
@@ -69,29 +173,3 @@ const headersOf = (columns: Triple): [string, string, string] => [
   columns[1].header,
   columns[2].header,
 ];
-
-/** The unit that the headers agree on. */
-const unitOfAll = (columns: Triple) =>
-  columns.every((column) => column.unit === columns[0].unit) ? columns[0].unit : null;
-
-/** A vehicle on average feels gravity: its size tells the unit. */
-function likelyAccelUnit(head: CsvHead, columns: Triple): AccelUnit {
-  const sizes = magnitudes(head, columns);
-  const typical = sizes.length === 0 ? NaN : sizes[sizes.length >> 1]!;
-  if (typical > 0.5 && typical < 2) return 'g';
-  if (typical > 500 && typical < 2000) return 'mg';
-  return 'm/s^2';
-}
-
-function likelyGyroUnit(head: CsvHead, columns: Triple, accelUnit: string): GyroUnit {
-  const largest = magnitudes(head, columns).at(-1) ?? 0;
-  return largest > MAX_LIKELY_RATE || accelUnit === 'g' || accelUnit === 'mg' ? 'deg/s' : 'rad/s';
-}
-
-/** Lengths of the vectors in the head of the file, ascending. */
-function magnitudes(head: CsvHead, columns: Triple): number[] {
-  const sizes = head.rows.map((row) =>
-    Math.hypot(...columns.map(({ index }) => numberIn(row[index], head.decimalComma) ?? NaN)),
-  );
-  return sizes.filter((size) => Number.isFinite(size)).sort((a, b) => a - b);
-}

@@ -1,16 +1,25 @@
 /** Which column is the time, and what it counts: from its header where that says so, else from the values. */
-import type { FileRole, TimeMap } from '@/shared/contracts/recordings';
+import type { ChannelGuess, FileRole, TimeMap } from '@/shared/contracts/recordings';
 import { numberIn } from './cells';
 import type { CsvHead } from './csv';
 import type { ColumnFinder } from './find-columns';
+import { guessed } from './guess';
 import { namesOtherDevice } from './header-words';
-import { parseIsoTime } from './utc';
-import { NANOSECONDS_WORDS, SECONDS_WORDS, TIME_OF_WEEK_WORDS, TIME_WORDS, WEEK_WORDS } from './vocabulary';
+import { dateOrderOf, parseDate, parseDateTime, parseTimeOfDay, type DateOrder } from './written-time';
+import {
+  DATE_WORDS,
+  NANOSECONDS_WORDS,
+  SECONDS_WORDS,
+  TIME_OF_WEEK_WORDS,
+  TIME_WORDS,
+  WEEK_WORDS,
+} from './vocabulary';
 
 export interface GuessedTime {
   map: TimeMap;
   /** Set where the header did not say what the column counts. */
   assumed: string | null;
+  guess: ChannelGuess;
 }
 
 type CountBase = 's' | 'ms' | 'us' | 'ns';
@@ -19,6 +28,7 @@ const SCALE: Record<CountBase, number> = { s: 1, ms: 1e-3, us: 1e-6, ns: 1e-9 };
 /** Intervals that a log of each kind can have, s. */
 const PLAUSIBLE_S: Record<FileRole, readonly [number, number]> = {
   imu: [2e-4, 0.2],
+  imu2: [2e-4, 0.2],
   gnss: [0.01, 12],
   reference: [5e-4, 12],
 };
@@ -33,29 +43,61 @@ export function guessTime(head: CsvHead, finder: ColumnFinder, role: FileRole): 
   return (
     secondsAndNanoseconds(finder, role) ??
     weekAndSeconds(finder) ??
+    dateAndTime(head, finder, role) ??
     single(head, finder, role) ??
     byNamePart(head, role)
   );
 }
 
 function single(head: CsvHead, finder: ColumnFinder, role: FileRole): GuessedTime | null {
-  const own = (header: string) => !namesOtherDevice(header, role);
+  const own = (header: string) => !namesOtherDevice(header, role) && !isEmptyColumn(head, header);
   const found = finder.find(TIME_WORDS, own) ?? finder.find(TIME_OF_WEEK_WORDS, own);
   return found && fromValues(head, found.header, found.index, found.unit, role);
+}
+
+/** A column without any value in the head tells no time, whatever it is called. */
+const isEmptyColumn = (head: CsvHead, header: string) =>
+  head.rows.length > 0 && textsOf(head, head.headers.indexOf(header)).length === 0;
+
+/** The day in one column, the time of day in another. */
+function dateAndTime(head: CsvHead, finder: ColumnFinder, role: FileRole): GuessedTime | null {
+  const own = (header: string) => !namesOtherDevice(header, role);
+  const date = finder.find(DATE_WORDS, own);
+  if (!date) return null;
+  const dates = textsOf(head, date.index);
+  const order = dateOrderOf(dates) ?? 'dmy';
+  if (dates.length === 0 || parseDate(dates[0]!, order) === null || parseDateTime(dates[0]!, order))
+    return null;
+  const ofDay = head.headers.findIndex((header, i) => {
+    const first = textsOf(head, i)[0];
+    return (
+      i !== date.index &&
+      /time|utc|hhmmss|clock/i.test(header) &&
+      first !== undefined &&
+      parseTimeOfDay(first)
+    );
+  });
+  if (ofDay < 0) return null;
+  const columns = [date.header, head.headers[ofDay]!];
+  const reason = `“${columns[0]}” holds dates and “${columns[1]}” times of day, taken as UTC.`;
+  return withOrder(named(columns, 'date+time', 0.9, reason), order, dates);
 }
 
 function weekAndSeconds(finder: ColumnFinder): GuessedTime | null {
   const week = finder.find(WEEK_WORDS);
   const ofWeek = finder.find(TIME_OF_WEEK_WORDS) ?? finder.find(TIME_WORDS);
   if (!week || !ofWeek || (ofWeek.unit !== null && ofWeek.unit !== 's')) return null;
-  return named([week.header, ofWeek.header], 'gps-week+s');
+  const columns = [week.header, ofWeek.header];
+  return named(columns, 'gps-week+s', 0.95, 'The headers name the GPS week and the seconds in it.');
 }
 
 function secondsAndNanoseconds(finder: ColumnFinder, role: FileRole): GuessedTime | null {
   const own = (header: string) => !namesOtherDevice(header, role);
   const seconds = finder.find(SECONDS_WORDS, own);
   const nanoseconds = finder.find(NANOSECONDS_WORDS, own);
-  return seconds && nanoseconds ? named([seconds.header, nanoseconds.header], 's+ns') : null;
+  if (!seconds || !nanoseconds) return null;
+  const columns = [seconds.header, nanoseconds.header];
+  return named(columns, 's+ns', 0.95, 'The headers name whole seconds and nanoseconds.');
 }
 
 /** Any other column whose name speaks of time and whose values only grow. */
@@ -77,15 +119,52 @@ function fromValues(
   unit: string | null,
   role: FileRole,
 ): GuessedTime | null {
-  const first = head.rows.map((row) => row[index]?.trim() ?? '').find((cell) => cell !== '');
-  if (first !== undefined && parseIsoTime(first)) return named([header], 'iso8601');
+  const written = fromText(head, header, index);
+  if (written) return written;
   const values = valuesOf(head, index);
   // Text in the first row is told later, with its line; only a column without any number is no time.
   if (values.length === 0 && head.rows.length > 0) return null;
-  if (unit !== null && unit !== 'iso8601') return named([header], unit as CountBase);
+  const step = medianStep(values);
+  if (/gps/i.test(header) && (values[0] ?? 0) > 2e8 && unit !== 'ms')
+    return named([header], 'gps-s', 0.8, `“${header}” counts seconds of GPS time since 1980.`);
+  if (unit !== null && unit !== 'iso8601') {
+    const base = unit as CountBase;
+    const [shortest, longest] = PLAUSIBLE_S[role];
+    const fits =
+      Number.isNaN(step) || (step * SCALE[base] >= shortest / 4 && step * SCALE[base] <= longest * 4);
+    const reason = fits
+      ? `The header “${header}” says ${BASE_WORDS[base]}.`
+      : `The header “${header}” says ${BASE_WORDS[base]}, but the values step by ${step}, which is unusual for that.`;
+    return named([header], base, fits ? 0.98 : 0.4, reason);
+  }
   const base = baseOf(values, PLAUSIBLE_S[role]);
   const assumed = `The time column “${header}” names no unit: taken as ${BASE_WORDS[base]}.`;
-  return { ...named([header], base), assumed };
+  const reason = `“${header}” names no unit; its values step by ${step}, a usual interval in ${BASE_WORDS[base]}.`;
+  return { ...named([header], base, Number.isNaN(step) ? 0.5 : 0.85, reason), assumed };
+}
+
+/** Dates with times, or times of day. */
+function fromText(head: CsvHead, header: string, index: number): GuessedTime | null {
+  const texts = textsOf(head, index);
+  const first = texts[0];
+  if (first === undefined || !/\D/.test(first.replace(/[.,]/g, ''))) return null;
+  const order = dateOrderOf(texts) ?? 'mdy';
+  if (parseDateTime(first, order)) {
+    const reason = `“${header}” holds dates with times${/[zZ]|UTC|[-+]\d{2}:?\d{2}$/.test(first) ? '' : ' without a zone, taken as UTC'}.`;
+    return withOrder(named([header], 'iso8601', 0.95, reason), order, texts);
+  }
+  if (/:/.test(first) && parseTimeOfDay(first))
+    return named([header], 'time-of-day', 0.9, `“${header}” holds times of day without a date.`);
+  return null;
+}
+
+/** Day and month may be told apart by no value: then that is said. */
+function withOrder(time: GuessedTime, order: DateOrder, texts: readonly string[]): GuessedTime {
+  if (order === 'ymd') return time;
+  const map = { ...time.map, dateOrder: order };
+  if (dateOrderOf(texts) !== null) return { ...time, map };
+  const assumed = `The dates in “${map.columns[0]}” may be read in two ways: taken as ${order === 'dmy' ? 'day, month' : 'month, day'}, year.`;
+  return { map, assumed, guess: { ...time.guess, confidence: 0.5 } };
 }
 
 /** The first base that makes the step of the values a usual one; without such a step, from the size of an absolute clock. */
@@ -113,7 +192,16 @@ function valuesOf(head: CsvHead, index: number): number[] {
   });
 }
 
-const named = (columns: string[], base: TimeMap['base']): GuessedTime => ({
+const textsOf = (head: CsvHead, index: number) =>
+  head.rows.map((row) => row[index]?.trim() ?? '').filter((cell) => cell !== '');
+
+const named = (
+  columns: string[],
+  base: TimeMap['base'],
+  confidence: number,
+  reason: string,
+): GuessedTime => ({
   map: { columns, base, offsetS: 0, stamp: 'end' },
   assumed: null,
+  guess: guessed('time', columns, base, confidence, reason),
 });

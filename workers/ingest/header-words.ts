@@ -1,4 +1,5 @@
 /** Headers taken apart: a plain name and a unit, whatever the case, the brackets, the separators. */
+import type { FileRole } from '@/shared/contracts/recordings';
 
 export type UnitQuantity = 'time' | 'rate' | 'accel' | 'angle' | 'length' | 'speed';
 
@@ -23,7 +24,7 @@ export const UNIT_WORDS: Record<UnitQuantity, Record<string, string>> = {
     ms: 'm/s', mps: 'm/s', gsec: 'g*s',
   },
   angle: { deg: 'deg', degs: 'deg', degree: 'deg', degrees: 'deg', rad: 'rad', rads: 'rad', radian: 'rad', radians: 'rad' },
-  length: { m: 'm', meter: 'm', meters: 'm', metre: 'm', metres: 'm', mm: 'mm', millimeters: 'mm', millimetres: 'mm' },
+  length: { m: 'm', meter: 'm', meters: 'm', metre: 'm', metres: 'm', mm: 'mm', millimeters: 'mm', millimetres: 'mm', ft: 'ft', feet: 'ft', foot: 'ft' },
   speed: {
     ms: 'm/s', mps: 'm/s', msec: 'm/s', meterss: 'm/s', metress: 'm/s', metersec: 'm/s', ms1: 'm/s',
     mms: 'mm/s', mmps: 'mm/s',
@@ -66,10 +67,12 @@ export function readHeader(header: string, unitBelow: string | null = null): Hea
 }
 
 /** Whether a header names the device of another kind of file: an IMU stamp in a merged log is no GNSS time. */
-export function namesOtherDevice(header: string, role: 'imu' | 'gnss' | 'reference'): boolean {
+export function namesOtherDevice(header: string, role: FileRole): boolean {
   const tokens = words(simplified(header));
   const has = (list: string[]) => tokens.some((token) => list.includes(token));
-  return role === 'imu' ? has(['gnss', 'gps', 'rtk']) : role === 'gnss' && has(['imu', 'ins']);
+  return role === 'imu' || role === 'imu2'
+    ? has(['gnss', 'gps', 'rtk'])
+    : role === 'gnss' && has(['imu', 'ins']);
 }
 
 /** The unit that `text` means for a quantity; null where it means none. */
@@ -87,7 +90,7 @@ function simplified(text: string): string {
     .replace(/\bper\b/g, '/');
 }
 
-const words = (text: string) => text.split(/[^a-z0-9]+/).filter((word) => word !== '');
+export const words = (text: string) => text.split(/[^a-z0-9]+/).filter((word) => word !== '');
 const compact = (text: string) => words(text).join('');
 
 function withoutDeviceWords(tokens: readonly string[]): string[][] {

@@ -7,11 +7,17 @@ import type { ImuFacts } from './imu-health';
 
 type Interval = [number, number];
 
-/** `assumed`: what was taken for granted of the columns, in whole sentences. */
-export function healthReport(imu: ImuFacts, gnss: GnssReport, assumed: readonly string[]): HealthReport {
+/** `assumed`: what was taken for granted of the columns, in whole sentences; `noted`: what was passed over in the files. */
+export function healthReport(
+  imu: ImuFacts,
+  gnss: GnssReport,
+  assumed: readonly string[],
+  noted: readonly HealthFinding[],
+): HealthReport {
   const overlapS: Interval = [Math.max(imu.startS, gnss.startS), Math.min(imu.endS, gnss.endS)];
   const findings = [
     ...assumed.map((sentence) => finding('assumed', 'info', sentence, { remedy: 'Say it on the mapping screen if that is wrong.' })),
+    ...noted,
     ...rateFindings(imu),
     ...rowFindings(imu),
     ...gravityFindings(imu),

@@ -22,18 +22,62 @@ export interface ImuConversion {
   /** For each of gyro and accelerometer, body axis i = sample[source[i]] × factor[i]; samples hold gyro x y z, accel x y z. */
   source: readonly number[];
   factor: readonly number[];
+  /** Where the sensor is turned by measured angles: body = rotation × what the above gives, row by row. */
+  rotation: readonly number[] | null;
 }
 
 export function imuConversion(map: ImuMap, axes: AxisMap): ImuConversion {
   const rows = [axes.forward, axes.right, axes.down].map(axisRow);
   const index = rows.map((row) => row.findIndex((value) => value !== 0));
   const sign = rows.map((row, i) => row[index[i]!]!);
-  const gyro = GYRO_SI[map.gyro.unit];
-  const accel = ACCEL_SI[map.accel.unit] * (map.accel.sign === 'opposite' ? -1 : 1);
+  const factors = (sensor: ImuMap['gyro'] | ImuMap['accel'], unit: number) =>
+    index.map((column, i) => sign[i]! * unit * (sensor.scale ?? 1) * (sensor.signs?.[column] ?? 1));
+  const opposite = map.accel.sign === 'opposite' ? -1 : 1;
   return {
     source: [...index, ...index.map((i) => i + 3)],
-    factor: [...sign.map((s) => s * gyro), ...sign.map((s) => s * accel)],
+    factor: [
+      ...factors(map.gyro, GYRO_SI[map.gyro.unit]),
+      ...factors(map.accel, ACCEL_SI[map.accel.unit] * opposite),
+    ],
+    rotation: map.mounting ? mountingRotation(map.mounting) : null,
   };
+}
+
+/** Converts one sample; `body` may not be `raw`. */
+export function convertSample(
+  { source, factor, rotation }: ImuConversion,
+  raw: Float64Array,
+  body: Float64Array,
+) {
+  for (let i = 0; i < 6; i += 1) body[i] = raw[source[i]!]! * factor[i]!;
+  if (!rotation) return;
+  for (let from = 0; from < 6; from += 3) {
+    const [x, y, z] = [body[from]!, body[from + 1]!, body[from + 2]!];
+    for (let i = 0; i < 3; i += 1)
+      body[from + i] = rotation[3 * i]! * x + rotation[3 * i + 1]! * y + rotation[3 * i + 2]! * z;
+  }
+}
+
+/** Body ← sensor for a sensor that is turned in the body by yaw, then pitch, then roll (z–y′–x″). */
+function mountingRotation({ rollDeg, pitchDeg, yawDeg }: NonNullable<ImuMap['mounting']>): number[] {
+  const [r, p, y] = [rollDeg, pitchDeg, yawDeg].map((angle) => angle * RAD_PER_DEG) as [
+    number,
+    number,
+    number,
+  ];
+  const [sr, cr, sp, cp, sy, cy] = [
+    Math.sin(r),
+    Math.cos(r),
+    Math.sin(p),
+    Math.cos(p),
+    Math.sin(y),
+    Math.cos(y),
+  ];
+  return [
+    cp * cy, sr * sp * cy - cr * sy, cr * sp * cy + sr * sy,
+    cp * sy, sr * sp * sy + cr * cy, cr * sp * sy - sr * cy,
+    -sp, sr * cp, cr * cp,
+  ]; // prettier-ignore
 }
 
 /** What is added to a stamp so that it stands at the end of its interval, s. */

@@ -2,21 +2,36 @@
 import { IMU_COLUMNS } from '../recordings/files';
 import type { Columns } from '../recordings/arrow-file';
 import type { CsvBatch } from './csv';
-import type { ImuConversion } from './imu-conversion';
+import { convertSample, type ImuConversion } from './imu-conversion';
 import type { ImuHealth } from './imu-health';
 import { FILE_NAMES, rejection } from './problems';
 import type { RowReader } from './row-reader';
+import type { SensorPartner } from './sensor-partner';
 
+export interface ImuRows {
+  /** Gives the accelerometer where the rows hold only the gyro. */
+  partner: SensorPartner | null;
+  /** Rows with a time but without any value of ours belong to another device. */
+  othersRows: boolean;
+}
+
+/** Rows at the start that are nothing but zeros: the logger ran before its sensor. */
+const MAX_ZERO_ROWS = 100;
 /** About 44 min at 100 Hz: such a log is one piece and loads without a copy. */
 const PIECE_ROWS = 1 << 18;
 
 export class ImuDecoder {
+  /** Values that the rows themselves hold. */
+  private readonly own: number;
   private readonly raw = new Float64Array(6);
   private readonly body = new Float64Array(6);
   private readonly previous = new Float64Array(6);
   private piece: Float64Array[] = newPiece();
   private rows = 0;
   private lastS = -Infinity;
+  private zeroRows = 0;
+  /** Gyro samples without the accelerometer's. */
+  unpaired = 0;
 
   constructor(
     private readonly reader: RowReader,
@@ -25,11 +40,32 @@ export class ImuDecoder {
     private readonly shiftS: number,
     private readonly health: ImuHealth,
     private readonly write: (columns: Columns) => void,
-  ) {}
+    private readonly others: ImuRows,
+  ) {
+    this.own = others.partner ? 3 : 6;
+  }
 
   /** Throws IntakeRejected for what is no number and for time that runs backwards. */
-  push(batch: CsvBatch): void {
-    for (let i = 0; i < batch.rows.length; i += 1) this.pushRow(batch.rows[i]!, batch.lines[i]!);
+  push(batch: CsvBatch): void | Promise<void> {
+    const { partner } = this.others;
+    if (partner) return this.pushPaired(batch, partner);
+    for (let i = 0; i < batch.rows.length; i += 1) {
+      const timeS = this.reader.read(batch.rows[i]!, batch.lines[i]!, this.raw) + this.shiftS;
+      if (this.isWhole(timeS, batch.lines[i]!)) this.add(timeS, batch.lines[i]!);
+    }
+  }
+
+  /** Waits only where the accelerometer's file has to be read on. */
+  private async pushPaired(batch: CsvBatch, partner: SensorPartner): Promise<void> {
+    for (let i = 0; i < batch.rows.length; i += 1) {
+      const line = batch.lines[i]!;
+      this.raw.fill(0);
+      const timeS = this.reader.read(batch.rows[i]!, line, this.raw) + this.shiftS;
+      if (!this.isWhole(timeS, line)) continue;
+      if (!partner.reaches(timeS)) await partner.pull(timeS);
+      if (partner.sample(timeS, this.raw, 3)) this.add(timeS, line);
+      else this.unpaired += 1;
+    }
   }
 
   /** Passes on what is left. */
@@ -37,17 +73,22 @@ export class ImuDecoder {
     if (this.rows > 0) this.passOn();
   }
 
-  private pushRow(row: readonly string[], line: number): void {
-    const { raw, body } = this;
-    const timeS = this.reader.read(row, line, raw) + this.shiftS;
+  /** Whether the row that was read is a sample. */
+  private isWhole(timeS: number, line: number): boolean {
+    const { raw, own, others } = this;
     // NaN spreads through a sum: one test tells whether anything is missing.
     const sum = timeS + raw[0]! + raw[1]! + raw[2]! + raw[3]! + raw[4]! + raw[5]!;
-    if (Number.isNaN(sum)) {
-      // A row without any of our values belongs to another device of a merged log.
-      if (!Number.isNaN(timeS) || raw.some((value) => !Number.isNaN(value))) this.health.addIncomplete(line);
-      return;
-    }
-    this.convert();
+    if (!Number.isNaN(sum)) return true;
+    // A row without any of our values belongs to another device of a merged log.
+    const empty = raw.every((value, i) => i >= own || Number.isNaN(value));
+    if (!empty || (!Number.isNaN(timeS) && !others.othersRows)) this.health.addIncomplete(line);
+    return false;
+  }
+
+  private add(timeS: number, line: number): void {
+    const { body } = this;
+    if (this.lastS === -Infinity && this.isStartingUp(line)) return;
+    convertSample(this.conversion, this.raw, body);
     if (timeS <= this.lastS) return this.repeat(timeS, line);
     const { piece, rows } = this;
     piece[0]![rows] = timeS;
@@ -59,9 +100,11 @@ export class ImuDecoder {
     if (this.rows === PIECE_ROWS) this.passOn();
   }
 
-  private convert(): void {
-    const { source, factor } = this.conversion;
-    for (let i = 0; i < 6; i += 1) this.body[i] = this.raw[source[i]!]! * factor[i]!;
+  private isStartingUp(line: number): boolean {
+    if (this.zeroRows >= MAX_ZERO_ROWS || this.raw.some((value) => value !== 0)) return false;
+    this.zeroRows += 1;
+    this.health.addIncomplete(line);
+    return true;
   }
 
   private repeat(timeS: number, line: number): void {

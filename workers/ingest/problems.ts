@@ -36,6 +36,7 @@ export const FILE_NAMES: Record<FileRole, string> = {
   imu: 'IMU file',
   gnss: 'GNSS file',
   reference: 'reference file',
+  imu2: 'second IMU file',
 };
 
 /** Text from a file as a message may quote it: short, on one line. */

@@ -1,21 +1,30 @@
 /** Reads the mapped cells of a row as numbers; says with line and column what is not one. */
 import type { FileRole } from '@/shared/contracts/recordings';
+import type { CellParser } from './angles';
 import { columnIndex, numberIn } from './cells';
 import type { Clock } from './clock';
 import type { CsvLayout } from './csv';
 import { FILE_NAMES, quoted, rejection } from './problems';
 
+/** A column by name; with `parse` it is read otherwise than as a plain number. */
+export interface ReadColumn {
+  name: string;
+  parse?: CellParser;
+}
+
 export class RowReader {
   private readonly indices: number[];
+  private readonly parsers: CellParser[];
 
   constructor(
     private readonly layout: CsvLayout,
     private readonly role: FileRole,
     private readonly clock: Clock,
     private readonly timeColumns: readonly string[],
-    private readonly columns: readonly string[],
+    private readonly columns: readonly ReadColumn[],
   ) {
-    this.indices = columns.map((name) => columnIndex(layout.headers, name));
+    this.indices = columns.map(({ name }) => columnIndex(layout.headers, name));
+    this.parsers = columns.map(({ parse }) => parse ?? numberIn);
   }
 
   /**
@@ -24,11 +33,11 @@ export class RowReader {
    */
   read(row: readonly string[], line: number, values: Float64Array): number {
     if (row.length > this.layout.headers.length) this.refuseExtraCells(row, line);
-    const { indices, layout } = this;
+    const { indices, layout, parsers } = this;
     for (let i = 0; i < indices.length; i += 1) {
       const cell = row[indices[i]!];
-      const value = numberIn(cell, layout.decimalComma);
-      if (value === undefined) throw this.notANumber(line, this.columns[i]!, cell!);
+      const value = parsers[i]!(cell, layout.decimalComma);
+      if (value === undefined) throw this.notANumber(line, this.columns[i]!.name, cell!);
       values[i] = value;
     }
     const time = this.clock.read(row);

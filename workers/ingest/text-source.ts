@@ -147,6 +147,8 @@ async function* normalised(text: AsyncGenerator<string>): AsyncGenerator<string>
       held = '\r';
       chunk = chunk.slice(0, -1);
     }
+    // A card that lost power leaves zeros behind.
+    if (chunk.includes('\0')) chunk = chunk.replaceAll('\0', '');
     if (chunk.includes('\r')) chunk = chunk.replace(/\r\n?/g, '\n');
     if (chunk) yield chunk;
   }

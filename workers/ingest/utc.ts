@@ -1,8 +1,9 @@
-/** Clocks of the world: UTC and GPS time, and times written as text. */
+/** Clocks of the world: UTC and GPS time. */
 
 /** Seconds from 1970-01-01 to the GPS epoch, 1980-01-06, both UTC. */
 const GPS_EPOCH_UNIX_S = 315_964_800;
 export const SECONDS_OF_WEEK = 604_800;
+const WEEKS_OF_TURN = 1024;
 
 /** UNIX second from which GPS − UTC has the value beside it, s (IERS Bulletin C). */
 const LEAP_SECONDS: readonly (readonly [number, number])[] = [
@@ -18,11 +19,21 @@ export function leapSecondsAt(unixS: number): number {
   return leap;
 }
 
-/** UNIX (UTC) seconds of a GPS week and whole second of week. */
+/**
+ * UNIX (UTC) seconds of a GPS week and whole second of week. Receivers that send ten bits of the week number start again
+ * from 0 every 1024 weeks; such numbers are taken as of the turn of April 2019.
+ */
 export function gpsToUnixS(week: number, secondOfWeek: number): number {
-  const asIfUtc = GPS_EPOCH_UNIX_S + week * SECONDS_OF_WEEK + secondOfWeek;
-  return asIfUtc - leapSecondsAt(asIfUtc - leapSecondsAt(asIfUtc));
+  const full = week >= 0 && week < WEEKS_OF_TURN ? week + 2 * WEEKS_OF_TURN : week;
+  return gpsSecondsToUnixS(full * SECONDS_OF_WEEK + secondOfWeek);
 }
+
+/** UNIX (UTC) seconds of whole seconds since the GPS epoch. */
+export const gpsSecondsToUnixS = (sinceEpoch: number) => withoutLeapS(GPS_EPOCH_UNIX_S + sinceEpoch);
+
+/** UTC of a date and time that are written on the GPS scale, both as UNIX seconds. */
+export const withoutLeapS = (gpsUnixS: number) =>
+  gpsUnixS - leapSecondsAt(gpsUnixS - leapSecondsAt(gpsUnixS));
 
 export function unixToGps(unixS: number): { week: number; towS: number } {
   const sinceEpoch = unixS - GPS_EPOCH_UNIX_S + leapSecondsAt(unixS);
@@ -31,33 +42,3 @@ export function unixToGps(unixS: number): { week: number; towS: number } {
 }
 
 export const unixToIso = (unixS: number) => new Date(unixS * 1000).toISOString();
-
-const ISO_TIME =
-  /^(\d{4})[-/.](\d{1,2})[-/.](\d{1,2})[T ]\s*(\d{1,2}):(\d{2})(?::(\d{2})([.,]\d+)?)?\s*(Z|UTC|[-+]\d{2}:?\d{2})?$/i;
-
-/** A time written as 2026-03-01T10:00:00.25Z or alike; without a zone it is UTC. Null for anything else. */
-export function parseIsoTime(text: string): { wholeS: number; fractionS: number } | null {
-  const match = ISO_TIME.exec(text.trim());
-  if (!match) return null;
-  const [, year, month, day, hour, minute, second = '0', fraction = '', zone = 'Z'] = match;
-  const ms = Date.UTC(
-    Number(year),
-    Number(month) - 1,
-    Number(day),
-    Number(hour),
-    Number(minute),
-    Number(second),
-  );
-  const valid = Number(month) <= 12 && Number(day) <= 31 && Number(hour) <= 24 && Number(minute) < 60;
-  if (!valid || !Number.isFinite(ms)) return null;
-  return {
-    wholeS: ms / 1000 - zoneOffsetS(zone),
-    fractionS: fraction ? Number(`0.${fraction.slice(1)}`) : 0,
-  };
-}
-
-function zoneOffsetS(zone: string): number {
-  const match = /^([-+])(\d{2}):?(\d{2})$/.exec(zone);
-  if (!match) return 0;
-  return (match[1] === '-' ? -1 : 1) * (Number(match[2]) * 3600 + Number(match[3]) * 60);
-}

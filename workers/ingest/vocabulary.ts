@@ -28,11 +28,16 @@ const axis3 = <P extends string>(
 export const TIME_WORDS: ChannelWords = {
   quantity: 'time',
   names: [
-    'time', 't', 'timestamp', 'timestamps', 'times', 'ts', 'stamp', 'timetag', 'sampletime', 'systemtime', 'hosttime',
+    'time', 't', 'timestamp', 'timeofday', 'localtime', 'gpstime',  'timestamps', 'times', 'ts', 'stamp', 'timetag', 'sampletime', 'systemtime', 'hosttime',
     'elapsed', 'elapsedtime', 'timeelapsed', 'secondselapsed', 'unixtime', 'unix', 'epoch', 'epochtime', 'posixtime', 'clock',
     'utctime', 'timeutc', 'utc', 'datetime', 'dateandtime', 'isotime', 'date', 'timeboot', 'uptime', 'timesinceboot', 'micros', 'millis',
   ],
 }; // prettier-ignore
+/** A day without a time. */
+export const DATE_WORDS: ChannelWords = {
+  quantity: null,
+  names: ['date', 'utcdate', 'dateutc', 'gpsdate', 'day', 'localdate', 'ddmmyy', 'yyyymmdd'],
+};
 /** Whole seconds and nanoseconds in two columns. */
 export const SECONDS_WORDS: ChannelWords = {
   quantity: null,
@@ -109,6 +114,19 @@ export const GNSS_WORDS = {
     quantity: 'length',
     names: ['hmsl', 'heightmsl', 'mslheight', 'altmsl', 'altitudemsl', 'msl', 'mslaltitude', 'altitudeabovesealevel', 'heightabovesealevel', 'elevation', 'ele', 'orthometricheight'],
   },
+  latHemisphere: { quantity: null, names: ['ns', 'nsindicator', 'nshemisphere', 'lathemisphere', 'latitudehemisphere', 'latdir', 'latns', 'latitudens', 'northsouth', 'nors'] },
+  lonHemisphere: { quantity: null, names: ['ew', 'ewindicator', 'ewhemisphere', 'lonhemisphere', 'longitudehemisphere', 'londir', 'lonew', 'longitudeew', 'eastwest', 'eorw'] },
+  ecefX: { quantity: 'length', names: ['ecefx', 'xecef', 'positionecefx', 'ecefpositionx', 'posecefx', 'ecefposx'] },
+  ecefY: { quantity: 'length', names: ['ecefy', 'yecef', 'positionecefy', 'ecefpositiony', 'posecefy', 'ecefposy'] },
+  ecefZ: { quantity: 'length', names: ['ecefz', 'zecef', 'positionecefz', 'ecefpositionz', 'posecefz', 'ecefposz'] },
+  ecefVx: { quantity: 'speed', names: ['ecefvx', 'vxecef', 'velocityecefx', 'ecefvelocityx', 'ecefvelx', 'velecefx'] },
+  ecefVy: { quantity: 'speed', names: ['ecefvy', 'vyecef', 'velocityecefy', 'ecefvelocityy', 'ecefvely', 'velecefy'] },
+  ecefVz: { quantity: 'speed', names: ['ecefvz', 'vzecef', 'velocityecefz', 'ecefvelocityz', 'ecefvelz', 'velecefz'] },
+  /** Says not whose axes. */
+  vx: along('speed', ['x'], ['v', 'vel', 'velocity', 'speed']),
+  vy: along('speed', ['y'], ['v', 'vel', 'velocity', 'speed']),
+  vz: along('speed', ['z'], ['v', 'vel', 'velocity', 'speed']),
+  climb: { quantity: 'speed', names: ['climb', 'climbrate', 'verticalspeed', 'vspeed', 'speedup', 'verticalvelocity'] },
   /** Says not above what. */
   heightPlain: { quantity: 'length', names: ['altitude', 'alt'] },
   vn: along('speed', NORTH, VELOCITY_STEMS),

@@ -2,10 +2,11 @@
 import { createHash } from 'node:crypto';
 import type { FileRole, IntakeProblem } from '@/shared/contracts/recordings';
 import { previewOf, settleMaps } from '../ingest/channel-maps';
-import { headerOnly, readHead, type CsvHead } from '../ingest/csv';
+import { headerOnly, type CsvHead } from '../ingest/csv';
 import { decodeFiles, type DecodedFiles } from '../ingest/decode-files';
 import { IntakeRejected } from '../ingest/problems';
-import { openText, type RawFile } from '../ingest/text-source';
+import { readTableHead } from '../ingest/tables';
+import type { RawFile } from '../ingest/text-source';
 import type { DecodeJob, DecodeResult } from '../protocol';
 import { writeDecodedNote } from '../recordings/files';
 import { storeKeys, type Store } from '../store/types';
@@ -15,7 +16,8 @@ import type { JobHelpers } from './helpers';
 export async function decode(job: DecodeJob, helpers: JobHelpers): Promise<DecodeResult> {
   const { store } = helpers;
   await removeDecoded(store, job.recordingId);
-  const { heads, problems } = await readHeads(job, store);
+  const files = filesOf(job);
+  const { heads, problems } = await readHeads(files, store);
   const previews = () => [...heads].map(([role, head]) => previewOf(role, head, []));
   if (problems.length > 0) return { outcome: 'rejected', channelMap: null, problems, previews: previews() };
   const settled = settleMaps(heads, job.channelMap);
@@ -31,7 +33,7 @@ export async function decode(job: DecodeJob, helpers: JobHelpers): Promise<Decod
     const decoded = await decodeFiles({
       store,
       recordingId: job.recordingId,
-      files: new Map(job.files.map((file) => [file.role, file])),
+      files,
       heads,
       map: settled.map,
       vehicleAxes: job.vehicleAxes,
@@ -71,20 +73,31 @@ export async function decode(job: DecodeJob, helpers: JobHelpers): Promise<Decod
   }
 }
 
-/** Heads of all files; what is wrong with any of them is told at once. */
-async function readHeads(job: DecodeJob, store: Store) {
+/** One log may hold the IMU and the GNSS: without a GNSS file the IMU's stands for it too. */
+function filesOf(job: DecodeJob): Map<FileRole, RawFile> {
+  const files = new Map<FileRole, RawFile>(job.files.map((file) => [file.role, file]));
+  const imu = files.get('imu');
+  if (imu && !files.has('gnss')) files.set('gnss', { ...imu, role: 'gnss' });
+  return files;
+}
+
+/** Heads of all files; what is wrong with any of them is told at once, of one file only once. */
+async function readHeads(files: ReadonlyMap<FileRole, RawFile>, store: Store) {
   const heads = new Map<FileRole, CsvHead>();
   const problems: IntakeProblem[] = [];
-  for (const file of job.files) {
+  for (const [role, file] of files) {
+    if (role === 'gnss' && file.key === files.get('imu')?.key) continue;
     try {
-      const head = await readHead((await openText(store, file satisfies RawFile)).chunks, file.role);
-      heads.set(file.role, head);
-      if (head.complete && head.rows.length < 2) throw headerOnly(file.role);
+      const head = await readTableHead(store, file);
+      heads.set(role, head);
+      if (head.complete && head.rows.length < 2) throw headerOnly(role);
     } catch (error) {
       if (!(error instanceof IntakeRejected)) throw error;
       problems.push(...error.problems);
     }
   }
+  const imu = heads.get('imu');
+  if (imu && !heads.has('gnss') && files.get('gnss')?.key === files.get('imu')?.key) heads.set('gnss', imu);
   return { heads, problems };
 }
 
