@@ -119,7 +119,19 @@ function readOptions(text: string): NonNullable<BenchLink['options']> {
   return { smooth: on.includes('smooth'), errorBudget: on.includes('budget') };
 }
 
-const SUFFIX: Record<Outage['withhold'], string> = { gnss: '', position: 'p', velocity: 'v' };
+const SUFFIX: Record<Outage['withhold'], string> = {
+  gnss: '',
+  position: 'p',
+  velocity: 'v',
+  'zero-velocity': 'zv',
+  'zero-rotation': 'zr',
+  'non-holonomic': 'nh',
+  barometer: 'b',
+  heading: 'h',
+  odometer: 'o',
+  attitude: 'a',
+};
+const WITHHELD_BY = new Map(Object.entries(SUFFIX).map(([withhold, suffix]) => [suffix, withhold]));
 
 const writeWindows = (windows: readonly Outage[]) =>
   windows.map(({ startS, endS, withhold }) => `${startS}~${endS}${SUFFIX[withhold]}`).join(',');
@@ -127,9 +139,9 @@ const writeWindows = (windows: readonly Outage[]) =>
 function readWindows(text: string): Outage[] | null {
   if (text === '') return [];
   const windows = text.split(',').map((part) => {
-    const match = /^(-?[\d.]+)~(-?[\d.]+)([pv]?)$/.exec(part);
-    if (!match) return null;
-    const withhold = match[3] === 'p' ? 'position' : match[3] === 'v' ? 'velocity' : 'gnss';
+    const match = /^(-?[\d.]+)~(-?[\d.]+)([a-z]*)$/.exec(part);
+    const withhold = match && WITHHELD_BY.get(match[3]!);
+    if (!match || withhold === undefined) return null;
     return { startS: Number(match[1]), endS: Number(match[2]), withhold };
   });
   const parsed = outagesSchema.safeParse(windows);

@@ -26,6 +26,13 @@ export const WITHHELD: Record<Outage['withhold'], string> = {
   gnss: 'all GNSS',
   position: 'position',
   velocity: 'velocity',
+  'zero-velocity': 'zero-velocity updates',
+  'zero-rotation': 'zero-rotation updates',
+  'non-holonomic': 'the non-holonomic constraint',
+  barometer: 'the barometer',
+  heading: 'the heading aid',
+  odometer: 'the odometer',
+  attitude: 'the attitude aid',
 };
 
 /** What the keyboard and the screen reader hold of each window: the window and its two edges. The pointer goes through. */

@@ -110,7 +110,17 @@ export const clippingParametersSchema = z.object({
     .describe('1σ of what a clipped sample may have missed, as a share of the range.'),
 });
 
-/** What a vehicle's nature measures. Each is off by default: which of them hold is for the engineer to say. */
+const aidSensor = {
+  enabled: z.boolean().default(false),
+  sigmaSource: z
+    .enum(['log', 'fixed'])
+    .default('log')
+    .describe("log: the log's own 1σ, the fixed one where it gives none."),
+  sigmaScale: positive(0.01, 100).default(1).describe('Factor on 1σ.'),
+  latencyS: z.number().min(-5).max(5).default(0).describe('Measurement time = time stamp − latency, s.'),
+};
+
+/** What a vehicle's nature measures, and sensors besides IMU and GNSS. Each is off by default: which of them hold is for the engineer to say. */
 export const aidParametersSchema = z.object({
   stopDetection: z
     .object({
@@ -148,6 +158,37 @@ export const aidParametersSchema = z.object({
         .describe('IMU ahead of the unsteered axle, m: swings sideways in turns.'),
     })
     .prefault({}),
+  barometer: z
+    .object({ ...aidSensor, sigmaM: positive(0.001, 1000).default(1).describe('1σ of the height, m.') })
+    .prefault({})
+    .describe('Barometric height; its offset is a state of its own (states.barometerBias).'),
+  heading: z
+    .object({
+      ...aidSensor,
+      sigmaRad: positive(1e-6, 2).default(0.035).describe('1σ of the heading, rad.'),
+      offsetRad: z
+        .number()
+        .min(-Math.PI)
+        .max(Math.PI)
+        .default(0)
+        .describe('Added to each reading: declination of a compass, mounting angle of two antennas, rad.'),
+    })
+    .prefault({})
+    .describe('Compass or two antennas; also used for the first heading.'),
+  odometer: z
+    .object({
+      ...aidSensor,
+      sigmaMPerS: positive(1e-4, 100).default(0.1).describe('1σ of the forward speed, m/s.'),
+    })
+    .prefault({})
+    .describe('Speed along the vehicle at its unsteered axle, backwards negative.'),
+  attitude: z
+    .object({
+      ...aidSensor,
+      sigmaRad: positive(1e-7, 1).default(0.005).describe('1σ about each of forward, right and down, rad.'),
+    })
+    .prefault({})
+    .describe('Roll, pitch and yaw as a whole: a star or horizon tracker.'),
 });
 
 const scaleStateSchema = (sigmaPpm: number) =>

@@ -4,11 +4,26 @@ import { idSchema, isoTimeSchema } from './common';
 import { parametersSchema } from './parameters';
 import { severitySchema } from './recordings';
 
+/** What helps besides GNSS: the vehicle's nature, then sensors of their own. */
+export const aidNameSchema = z.enum([
+  'zero-velocity',
+  'zero-rotation',
+  'non-holonomic',
+  'barometer',
+  'heading',
+  'odometer',
+  'attitude',
+]);
+export type AidName = z.infer<typeof aidNameSchema>;
+
+/** What an outage window withholds: all GNSS, a part of it, or one aid. */
+export const withholdSchema = z.enum(['gnss', 'position', 'velocity', ...aidNameSchema.options]);
+
 export const outageSchema = z
   .object({
     startS: z.number(),
     endS: z.number(),
-    withhold: z.enum(['gnss', 'position', 'velocity']).default('gnss'),
+    withhold: withholdSchema.default('gnss'),
   })
   .refine((window) => window.endS > window.startS, {
     message: 'An outage must end after it starts.',
@@ -89,7 +104,7 @@ export type GroupStatistics = z.infer<typeof groupStatisticsSchema>;
 
 /** What one aid did: used, refused by the gate, mean NIS. */
 export const aidStatisticsSchema = z.object({
-  aid: z.enum(['zero-velocity', 'zero-rotation', 'non-holonomic']),
+  aid: aidNameSchema,
   dimension: z.number().int(),
   used: z.number().int(),
   rejected: z.number().int(),
@@ -118,7 +133,7 @@ export type BudgetPoint = z.infer<typeof budgetPointSchema>;
 export const outageResultSchema = z.object({
   startS: z.number(),
   endS: z.number(),
-  withhold: z.enum(['gnss', 'position', 'velocity']),
+  withhold: withholdSchema,
   reference: z
     .enum(['truth', 'aided', 'smoothed'])
     .describe(
@@ -188,7 +203,7 @@ export const runSummarySchema = z.object({
   alignment: z.object({
     timeS: z.number(),
     levelling: z.enum(['given', 'static', 'moving']),
-    heading: z.enum(['given', 'course', 'unknown']),
+    heading: z.enum(['given', 'course', 'unknown', 'aid', 'gyrocompass']),
     sentence: z.string(),
     attitudeDeg: z.tuple([z.number(), z.number(), z.number()]).describe('roll, pitch, yaw'),
     attitudeSigmaDeg: z.tuple([z.number(), z.number(), z.number()]),

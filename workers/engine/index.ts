@@ -2,6 +2,7 @@
 export { createRun } from './run/run';
 export { ENGINE_VERSION, EngineError } from './types';
 export type {
+  AidColumns,
   CoastingTable,
   EngineRun,
   GnssColumns,

@@ -43,10 +43,31 @@ export interface ReferenceColumns {
   attitude: readonly [Float64Array, Float64Array, Float64Array];
 }
 
+/**
+ * Sensors besides IMU and GNSS, each with its own times (s, not decreasing) and columns of equal length; NaN where a
+ * reading is missing. 1σ: null where the log gives none.
+ */
+export interface AidColumns {
+  /** Barometric height, m. */
+  barometer?: { timeS: Float64Array; heightM: Float64Array; sigmaM: Float64Array | null } | null;
+  /** Clockwise from north, rad. */
+  heading?: { timeS: Float64Array; headingRad: Float64Array; sigmaRad: Float64Array | null } | null;
+  /** Forward speed at the unsteered axle, backwards negative, m/s. */
+  odometer?: { timeS: Float64Array; speedMPerS: Float64Array; sigmaMPerS: Float64Array | null } | null;
+  /** Roll, pitch, yaw, rad; 1σ about forward, right, down, rad. */
+  attitude?: {
+    timeS: Float64Array;
+    attitude: readonly [Float64Array, Float64Array, Float64Array];
+    sigmaRad: readonly [Float64Array, Float64Array, Float64Array] | null;
+  } | null;
+}
+
 export interface RecordingColumns {
   imu: ImuColumns;
   gnss: GnssColumns;
   reference: ReferenceColumns | null;
+  /** Left out or null: none were logged. Only those that the parameters switch on are used. */
+  aids?: AidColumns | null;
 }
 
 export interface RunRequest {

@@ -13,7 +13,7 @@ import { optionalVariances } from '../filter/optional-states';
 import { layoutOf } from '../filter/states';
 import { normalGravity } from '../gravity';
 import { NAV_ACCEL_BIAS, NAV_GYRO_BIAS, NAV_SIZE, QUAT } from '../strapdown/navigation-state';
-import type { ImuColumns } from '../types';
+import type { AidColumns, ImuColumns } from '../types';
 import { eulerSigmas, tiltFromEulerVariance } from './euler-errors';
 import { findAttitude, type FoundAttitude } from './find-attitude';
 import { initialCovariance, type InitialCauses } from './initial-covariance';
@@ -29,6 +29,8 @@ export interface Alignment {
   /** What `p` is made of. */
   causes: InitialCauses;
   report: RunSummary['alignment'];
+  /** A heading aid's readings up to here were used for the start, s; −Infinity: none. */
+  headingUntilS: number;
 }
 
 /**
@@ -40,8 +42,9 @@ export function align(
   fixes: Fixes,
   parameters: Parameters,
   leverArm: readonly [number, number, number],
+  aids: AidColumns | null = null,
 ): Alignment {
-  const found = findAttitude(imu, fixes, parameters, leverArm);
+  const found = findAttitude(imu, fixes, parameters, leverArm, aids);
   const { sample } = found;
   const timeS = imu.timeS[sample]!;
   const q = quatFromEuler(found.roll, found.pitch, found.yaw, new Float64Array(4));
@@ -75,7 +78,8 @@ export function align(
     headingArm: found.headingArm,
   };
   const p = initialCovariance(causes);
-  return { sample, fix: place.nextFix, nav, p, causes, report: report(found, timeS, q, p) };
+  const { headingUntilS = -Infinity } = found;
+  return { sample, fix: place.nextFix, nav, p, causes, report: report(found, timeS, q, p), headingUntilS };
 }
 
 function gyroBiasAtStart(found: FoundAttitude, parameters: Parameters, dcm: Float64Array, latRad: number) {

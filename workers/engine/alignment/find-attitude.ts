@@ -8,8 +8,9 @@ import type { Fixes } from '../filter/fixes';
 import { EARTH_RATE } from '../geodesy';
 import { normalGravity } from '../gravity';
 import { medianSpacing } from '../strapdown/imu-intervals';
-import { EngineError, type ImuColumns } from '../types';
+import { EngineError, type AidColumns, type ImuColumns } from '../types';
 import { searchHeading, type FoundHeading, type HeadingQuestion } from './heading-search';
+import { headingFromAid } from './heading-aid';
 import { levelMoving } from './moving-level';
 import { restBiasVariance } from './rest-bias';
 import { firstUsable } from './start';
@@ -35,6 +36,8 @@ export interface FoundAttitude {
   heading: RunSummary['alignment']['heading'];
   levelSentence: string;
   headingSentence: string;
+  /** Readings of a heading aid up to here were used, s. */
+  headingUntilS?: number;
 }
 
 /** 1σ of a given attitude whose σ was not given, rad. */
@@ -51,6 +54,7 @@ interface Situation {
   rest: StaticStretch | null;
   rateScale: number;
   gyroOffset: Three;
+  aids: AidColumns | null;
 }
 
 /** Throws EngineError when there is no place to start, no level or no heading. */
@@ -59,6 +63,7 @@ export function findAttitude(
   fixes: Fixes,
   parameters: Parameters,
   leverArm: readonly [number, number, number],
+  aids: AidColumns | null,
 ): FoundAttitude {
   const { wanted, sample: atFix, fix } = firstUsable(imu, fixes, parameters);
   // A vehicle that still stands when the first fix comes has stood where that says from the log's first sample on.
@@ -68,7 +73,7 @@ export function findAttitude(
   const rest = stoodUntilFix ? early : findStaticStretch(imu, fixes, atFix);
   const rateScale = imu.sampling === 'increment' ? 1 / medianSpacing(imu.timeS) : 1;
   const gyroOffset: Three = parameters.initial.gyroBiasRadPerS ?? rest?.gyro ?? [0, 0, 0];
-  const situation = { imu, fixes, parameters, leverArm, sample, fix, rest, rateScale, gyroOffset };
+  const situation = { imu, fixes, parameters, leverArm, sample, fix, rest, rateScale, gyroOffset, aids };
   if (parameters.initial.attitude !== undefined) return givenAttitude(situation);
   return rest !== null ? levelledAtRest(situation, rest) : levelledMoving(situation);
 }
@@ -116,7 +121,7 @@ function levelledAtRest(s: Situation, rest: StaticStretch): FoundAttitude {
 
 function levelledMoving(s: Situation): FoundAttitude {
   const { imu, fixes, parameters } = s;
-  const start = parameters.initial.headingDeg === undefined ? sampleOfFirstCourse(s) : s;
+  const start = knownHeading(s) === null ? sampleOfFirstCourse(s) : s;
   const situation = { ...s, ...start };
   const heading = findHeading(situation, 0, 0);
   const bias = parameters.initial.accelBiasMPerS2 ?? [0, 0, 0];
@@ -158,9 +163,19 @@ interface HeadingPart {
   headingArm: Three | null;
   heading: FoundAttitude['heading'];
   headingSentence: string;
+  headingUntilS?: number;
 }
 
 function findHeading(s: Situation, roll: number, pitch: number): HeadingPart {
+  const known = knownHeading(s);
+  if (known !== null) return known;
+  const found = searchHeading(question(s, roll, pitch));
+  if (found === null) throw noHeading(s.parameters);
+  return headingPart(s, found);
+}
+
+/** Given, or read from a heading aid at the start; null where neither is there. */
+function knownHeading(s: Situation): HeadingPart | null {
   const { headingDeg, attitudeSigmaDeg } = s.parameters.initial;
   if (headingDeg !== undefined) {
     const sigma = attitudeSigmaDeg ? degToRad(attitudeSigmaDeg[2]) : GIVEN_HEADING_SIGMA;
@@ -172,9 +187,16 @@ function findHeading(s: Situation, roll: number, pitch: number): HeadingPart {
       headingSentence: 'heading as given',
     };
   }
-  const found = searchHeading(question(s, roll, pitch));
-  if (found === null) throw noHeading(s.parameters);
-  return headingPart(s, found);
+  const aid = headingFromAid(s.imu, s.sample, s.aids, s.parameters, s.rateScale);
+  if (aid === null) return null;
+  return {
+    yaw: aid.yaw,
+    yawVariance: aid.variance,
+    headingArm: null,
+    heading: 'aid',
+    headingSentence: `heading from the heading aid at ${aid.timeS.toFixed(1)} s`,
+    headingUntilS: aid.timeS,
+  };
 }
 
 function question(s: Situation, roll: number, pitch: number): HeadingQuestion {
@@ -217,7 +239,7 @@ function headingPart(s: Situation, found: FoundHeading): HeadingPart {
 function noHeading(parameters: Parameters): EngineError {
   return new EngineError(
     'no-heading',
-    `Heading cannot be found: the log never exceeds ${parameters.initial.courseSpeedMPerS} m/s. Give initial.headingDeg, or lower initial.courseSpeedMPerS.`,
+    `Heading cannot be found: the log never exceeds ${parameters.initial.courseSpeedMPerS} m/s. Give initial.headingDeg, switch on a heading aid, or lower initial.courseSpeedMPerS.`,
   );
 }
 

@@ -6,7 +6,8 @@
  * `applyFix`, `feedBack`, `recover`.
  */
 import type { Parameters } from '@/shared/contracts/parameters';
-import type { ImuColumns } from '../types';
+import type { Outage } from '@/shared/contracts/runs';
+import type { AidColumns, ImuColumns } from '../types';
 import { ANGLE, ANGLE_BEND, DURATION, ImuIntervals } from '../strapdown/imu-intervals';
 import { NAV_ACCEL_BIAS, NAV_GYRO_BIAS } from '../strapdown/navigation-state';
 import { Strapdown } from '../strapdown/strapdown';
@@ -14,9 +15,10 @@ import { findClipping } from './clipping';
 import { ClippingWatch } from './clipping-watch';
 import { resetAttitudeCovariance } from './attitude-feedback';
 import { correctState } from './correct-state';
+import { DataAids } from './data-aids';
 import type { BudgetShare, ErrorBudget } from './error-budget';
 import type { AidName, FilterListener, FilterSnapshot, GroupName } from './filter-types';
-import type { Fixes } from './fixes';
+import { ALL_AXES, type Fixes } from './fixes';
 import { GapBridge } from './gap-bridge';
 import { Gate } from './gate';
 import { GnssModels } from './gnss-models';
@@ -57,6 +59,9 @@ export class ErrorStateFilter {
   private fix = 0;
   readonly gates: Readonly<Record<GroupName | AidName, Gate>>;
   private readonly aids: VehicleAids | null;
+  private readonly data: DataAids | null;
+  /** Windows that may name aids. */
+  private outages: readonly Outage[] = [];
   private readonly intervals: ImuIntervals;
   private readonly propagation: Propagation;
   private readonly update: MeasurementUpdate;
@@ -67,7 +72,7 @@ export class ErrorStateFilter {
   private readonly headingWatch = new HeadingWatch();
   private readonly clipping: ClippingWatch;
 
-  /** `withheld`: bits of `withheldBy` for each fix. */
+  /** `withheld`: bits of `withheldBy` for each fix. `data`: what other sensors logged. */
   constructor(
     private readonly imu: ImuColumns,
     private readonly fixes: Fixes,
@@ -75,6 +80,7 @@ export class ErrorStateFilter {
     readonly parameters: Parameters,
     leverArmM: readonly [number, number, number],
     private readonly listener: FilterListener,
+    data: AidColumns | null = null,
   ) {
     this.strapdown = new Strapdown(parameters.mechanisation.scheme);
     this.layout = layoutOf(parameters);
@@ -92,8 +98,13 @@ export class ErrorStateFilter {
       'zero-velocity': gate(),
       'zero-rotation': gate(),
       'non-holonomic': gate(),
+      barometer: gate(),
+      heading: gate(),
+      odometer: gate(),
+      attitude: gate(),
     };
     this.aids = VehicleAids.of(imu, parameters);
+    this.data = DataAids.of(data, parameters.aids);
     this.noise = new ProcessNoise(parameters);
     // A rate drawn on from the last two intervals has 2.5 times the variance of one.
     const { nominalS } = this.intervals;
@@ -103,14 +114,18 @@ export class ErrorStateFilter {
     this.stepS = parameters.mechanisation.covarianceIntervalS - 0.5 * this.intervals.nominalS;
   }
 
-  /** Starts at IMU sample `sample` with a state and covariance (both copied); fixes before `fix` are past. */
-  start(sample: number, fix: number, nav: Float64Array, p: Float64Array): void {
+  /**
+   * Starts at IMU sample `sample` with a state and covariance (both copied); fixes before `fix` are past, and a heading
+   * aid's readings up to `headingS`.
+   */
+  start(sample: number, fix: number, nav: Float64Array, p: Float64Array, headingS = -Infinity): void {
     this.sample = sample;
     this.fix = fix;
     this.strapdown.start(nav);
     this.p.set(p);
     this.watchHeading();
     this.clipping.start(sample);
+    this.data?.start(this.timeS, headingS);
   }
 
   private watchHeading(): void {
@@ -123,12 +138,11 @@ export class ErrorStateFilter {
 
   /** Moves on to the next IMU sample, taking in the fixes measured on the way, those at its own time included. */
   advanceSample(): void {
-    const { intervals, fixes, imu } = this;
+    const { intervals, fixes, imu, data } = this;
     const k = this.sample + 1;
     intervals.load(k);
     const start = imu.timeS[k - 1]!;
     const end = imu.timeS[k]!;
-    const duration = end - start;
     if (intervals.isGap) this.reportGap(start, end);
     else this.optional?.scaleInterval(intervals.interval);
     if (k >= this.clipping.from) this.enterClipping(k);
@@ -138,16 +152,37 @@ export class ErrorStateFilter {
       this.fix += 1;
       if ((fixes.positionAxes[j]! | fixes.velocityAxes[j]!) === 0) continue;
       const time = fixes.timeS[j]!;
-      const to = end - time <= SAME_TIME_S ? 1 : Math.max(from, (time - start) / duration);
+      if (data !== null && data.nextS <= time) from = this.takeData(data, time, from);
+      const to = this.shareAt(time, from);
       if (to > from) this.move(from, to);
       from = to;
       this.applyFix(j, to);
     }
+    if (data !== null && data.nextS <= end + SAME_TIME_S) from = this.takeData(data, end + SAME_TIME_S, from);
     if (from < 1) this.move(from, 1);
     this.sample = k;
     if (this.strapdown.sumForce[3]! >= this.stepS) this.covarianceStep();
     if (k >= this.clipping.from) this.leaveClipping(k);
     this.aids?.apply(k, this);
+  }
+
+  /** Share of the loaded interval at a time, s; not before `from`. */
+  private shareAt(timeS: number, from: number): number {
+    const start = this.imu.timeS[this.sample]!;
+    const end = this.imu.timeS[this.sample + 1]!;
+    return end - timeS <= SAME_TIME_S ? 1 : Math.max(from, (timeS - start) / (end - start));
+  }
+
+  /** Other sensors' readings up to a time, each where it was measured; the share that has been reached. */
+  private takeData(data: DataAids, untilS: number, from: number): number {
+    let at = from;
+    while (data.nextS <= untilS) {
+      const to = this.shareAt(data.nextS, at);
+      if (to > at) this.move(at, to);
+      at = to;
+      data.apply(this);
+    }
+    return at;
   }
 
   /** Clipped samples: noise for what they may have missed, from the run's first sample to its last. */
@@ -295,15 +330,16 @@ export class ErrorStateFilter {
     }
   }
 
-  /** An aid at the current sample: `setUp` forms its innovation, H and R for the axes given as bits. */
-  aid(name: AidName, axes: number, setUp: (update: MeasurementUpdate) => void): void {
+  /** An aid at a time that the filter has reached: `setUp` forms innovation, H and R, or says false: nothing measured. */
+  aid(name: AidName, setUp: (update: MeasurementUpdate) => unknown, timeS = this.timeS): void {
     const { update } = this;
+    if (this.outages.some((w) => w.withhold === name && timeS >= w.startS && timeS < w.endS)) return;
     this.covarianceStep();
-    setUp(update);
+    if (setUp(update) === false) return;
     update.prepare(this.p);
     // An aid that is refused says that it does not hold here; it never moves the state by force.
-    const accepted = this.gates[name].judge(this.timeS, update.rows, update.nis) === 'accept';
-    this.listener.onInnovation(name, this.timeS, axes, update, accepted);
+    const accepted = this.gates[name].judge(timeS, update.rows, update.nis) === 'accept';
+    this.listener.onInnovation(name, timeS, ALL_AXES, update, accepted);
     if (accepted) this.take(update, 'aids');
   }
 
@@ -330,9 +366,10 @@ export class ErrorStateFilter {
     this.listener.onWarning(code, sentence, timeS);
   }
 
-  /** Replaces the outage mask: what is withheld from here on. */
-  withhold(withheld: Uint8Array): void {
+  /** Replaces the outage mask, and the windows that may name aids: what is withheld from here on. */
+  withhold(withheld: Uint8Array, outages: readonly Outage[] = []): void {
     this.withheld = withheld;
+    this.outages = outages;
   }
 
   save(): FilterSnapshot {
@@ -345,6 +382,7 @@ export class ErrorStateFilter {
       extraNoise: [this.noise.gyroExtra, this.noise.accelExtra],
       heading: this.headingWatch.save(),
       aids: this.aids?.save() ?? [],
+      data: this.data?.save() ?? [],
       optional: this.optional?.save() ?? null,
       budget: this.budget?.save() ?? null,
       gates: Object.values(this.gates).map((gate) => gate.save()),
@@ -360,6 +398,7 @@ export class ErrorStateFilter {
     [this.noise.gyroExtra, this.noise.accelExtra] = saved.extraNoise;
     this.headingWatch.restore(saved.heading);
     this.aids?.restore(saved.aids);
+    this.data?.restore(saved.data);
     if (saved.optional !== null) this.optional?.restore(saved.optional);
     if (saved.budget !== null) this.budget?.restore(saved.budget);
     Object.values(this.gates).forEach((gate, i) => gate.restore(saved.gates[i]!));

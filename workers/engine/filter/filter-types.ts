@@ -1,7 +1,8 @@
 /** What a filter names, tells and carries. */
+import type { AidName } from '@/shared/contracts/runs';
 import type { MeasurementUpdate } from './measurement-update';
 
-export type AidName = 'zero-velocity' | 'zero-rotation' | 'non-holonomic';
+export type { AidName };
 export type GroupName = 'position' | 'velocity';
 
 /** Hears of every measurement group that was judged, before it changes the state. */
@@ -26,6 +27,7 @@ export interface FilterSnapshot {
   extraNoise: readonly [number, number];
   heading: readonly number[];
   aids: readonly number[];
+  data: readonly number[];
   optional: readonly Float64Array[] | null;
   budget: Float64Array[] | null;
   gates: readonly (readonly number[])[];

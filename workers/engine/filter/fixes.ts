@@ -79,7 +79,10 @@ function velocityAxesOf(gnss: GnssColumns, j: number): number {
 export function withheldBy(fixes: Fixes, outages: readonly Outage[]): Uint8Array {
   const out = new Uint8Array(fixes.count);
   for (const window of outages) {
-    const bits = (window.withhold !== 'velocity' ? 1 : 0) | (window.withhold !== 'position' ? 2 : 0);
+    const { withhold } = window;
+    const all = withhold === 'gnss';
+    const bits = (all || withhold === 'position' ? 1 : 0) | (all || withhold === 'velocity' ? 2 : 0);
+    if (bits === 0) continue;
     for (let j = 0; j < fixes.count; j += 1)
       if (fixes.timeS[j]! >= window.startS && fixes.timeS[j]! < window.endS) out[j] = out[j]! | bits;
   }

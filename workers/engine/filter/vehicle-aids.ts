@@ -41,12 +41,12 @@ export class VehicleAids {
     const { aids, gyro } = this.parameters;
     if (this.stops.add(k) && mayStand(filter)) {
       if (aids.zeroVelocity.enabled)
-        filter.aid('zero-velocity', 7, (update) =>
+        filter.aid('zero-velocity', (update) =>
           zeroVelocity(filter.strapdown, aids.zeroVelocity.sigmaMPerS ** 2, update),
         );
       if (aids.zeroRotation.enabled) {
         const white = gyro.whiteNoiseRadPerSqrtS ** 2 / this.stops.windowS;
-        filter.aid('zero-rotation', 7, (update) =>
+        filter.aid('zero-rotation', (update) =>
           zeroRotation(
             filter.strapdown,
             this.stops.meanRate,
@@ -67,7 +67,7 @@ export class VehicleAids {
     // Ahead of the unsteered axle the vehicle swings sideways as it turns.
     const turn = Math.abs(this.imu.gyro[2][k]! * this.rateScale);
     const lateral = constraint.lateralSigmaMPerS ** 2 + (turn * constraint.axleArmM) ** 2;
-    filter.aid('non-holonomic', 6, (update) =>
+    filter.aid('non-holonomic', (update) =>
       nonHolonomic(filter.strapdown, lateral, constraint.verticalSigmaMPerS ** 2, update),
     );
   }

@@ -85,7 +85,8 @@ export class Run implements EngineRun {
     this.timeS = imu.timeS;
     this.last = imu.timeS.length - 1;
     const fixes = prepareFixes(gnss, parameters.gnss);
-    this.alignment = align(imu, fixes, parameters, leverArmM);
+    const aids = recording.aids ?? null;
+    this.alignment = align(imu, fixes, parameters, leverArmM, aids);
     const start = this.alignment.sample;
     this.extentS = [imu.timeS[start]!, imu.timeS[this.last]!];
     this.windows = layWindows(imu.timeS, start, outages);
@@ -99,8 +100,12 @@ export class Run implements EngineRun {
     const forks = this.windows.length > 0 && !truthServes;
     this.forkSample = forks ? Math.max(start, lowerBound(imu.timeS, this.windows[0]!.outage.startS) - 1) : -1;
     const withheldAtFirst = forks ? new Uint8Array(fixes.count) : this.withheld;
-    this.filter = new ErrorStateFilter(imu, fixes, withheldAtFirst, parameters, leverArmM, this.listener());
-    this.filter.start(start, this.alignment.fix, this.alignment.nav, this.alignment.p);
+    this.filter = new ErrorStateFilter(
+      imu, fixes, withheldAtFirst, parameters, leverArmM, this.listener(), aids,
+    ); // prettier-ignore
+    if (!forks) this.filter.withhold(this.withheld, outages);
+    const { fix, nav: startNav, p: startP, headingUntilS } = this.alignment;
+    this.filter.start(start, fix, startNav, startP, headingUntilS);
 
     this.tape = request.smooth === true ? new Tape(this.layout.size) : null;
     this.filter.tape = this.tape;
@@ -280,7 +285,7 @@ export class Run implements EngineRun {
   private backToFork(): void {
     this.filter.budget = this.budget;
     this.filter.restore(this.snapshot!);
-    this.filter.withhold(this.withheld);
+    this.filter.withhold(this.withheld, this.request.outages);
     this.phase = 'reported';
   }
 

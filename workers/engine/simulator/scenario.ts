@@ -3,6 +3,7 @@ import { degToRad } from '@/shared/units';
 import type { ImuGrade, Scenario } from '@/shared/contracts/scenarios';
 import { createRandom, type RandomSource } from '../random';
 import { EngineError, type ImuSampling, type RecordingColumns } from '../types';
+import { simulateAids, type AidErrors, type SimulatedAids } from './aid-sensors';
 import { IMU_GRADES, type ImuModel } from './grades';
 import { simulateGnss, type GnssOptions, type SimulatedGnss } from './gnss';
 import { senseImu, type SensedImu } from './imu-errors';
@@ -25,6 +26,8 @@ export interface ScenarioExtras {
   /** Finer sensor errors: scale factors, range, steps. */
   imu?: Partial<ImuModel>;
   gnss?: Partial<GnssOptions>;
+  /** Sensors besides IMU and GNSS. */
+  aids?: AidErrors;
 }
 
 /** A simulated recording with all that is known of how it came about. */
@@ -36,6 +39,8 @@ export interface SimulatedRecording extends RecordingColumns {
   accelScale: SensedImu['accelScale'];
   antenna: SimulatedGnss['truth'];
   outlier: SimulatedGnss['outlier'];
+  /** True offset of the barometer at its readings, m. */
+  barometerBias: SimulatedAids['barometerBias'];
 }
 
 /**
@@ -68,7 +73,11 @@ export function simulateScenario(scenario: Scenario, extras: ScenarioExtras = {}
     ...extras.gnss,
   };
   const gnss = simulateGnss(motion, start, 0, timeS[timeS.length - 1]!, gnssOptions, random.split('gnss'));
+  const aids = extras.aids
+    ? simulateAids(motion, start, 0, timeS[timeS.length - 1]!, extras.aids, random.split('aids'))
+    : { aids: null, barometerBias: new Float64Array(0) };
   return {
+    ...aids,
     imu: sensed.imu,
     gnss: gnss.gnss,
     reference: truth,
