@@ -1,0 +1,54 @@
+/** All that two logs say of their clocks: the offset, and whether the receiver's velocity is older than its position. */
+import type { GnssColumns } from '../types';
+import type { MotionIntegrals } from './motion-integrals';
+import { clockOffset, type OffsetEstimate } from './offset';
+import type { MotionSource } from './track-stretches';
+
+export interface ClockFindings {
+  /** Added to the GNSS times it brings the positions onto the IMU's clock, s, with its 1σ; null: the motion does not tell. */
+  offset: { offsetS: number; sigmaS: number } | null;
+  /** By so much the velocities are older than the positions, s, with 1σ; null: not told, or not significant. */
+  velocityLag: { lagS: number; sigmaS: number } | null;
+  /** −1 where the vehicle turns one way by GNSS and the other by the IMU, +1 where they agree, 0 where nothing tells. */
+  turnSense: -1 | 0 | 1;
+}
+
+/** A lag, or a disagreement, counts from here, σ. */
+const SIGNIFICANT = 3;
+
+export function findClockOffsets(motion: MotionIntegrals, gnss: GnssColumns): ClockFindings {
+  const by = (source: MotionSource) => {
+    const turn = clockOffset(motion, gnss, 'turn', source);
+    return { turn, all: combined([turn, clockOffset(motion, gnss, 'speed', source)]) };
+  };
+  const [position, velocity] = [by('position'), by('velocity')];
+  const turn = velocity.turn ?? position.turn;
+  return {
+    ...together(position.all, velocity.all),
+    turnSense: turn ? (turn.correlation < 0 ? -1 : 1) : 0,
+  };
+}
+
+type Weighed = Pick<OffsetEstimate, 'offsetS' | 'sigmaS'>;
+
+function together(
+  position: Weighed | null,
+  velocity: Weighed | null,
+): Pick<ClockFindings, 'offset' | 'velocityLag'> {
+  if (!position || !velocity) return { offset: position ?? velocity, velocityLag: null };
+  const lagS = position.offsetS - velocity.offsetS;
+  const sigmaS = Math.hypot(position.sigmaS, velocity.sigmaS);
+  if (Math.abs(lagS) > SIGNIFICANT * sigmaS) return { offset: position, velocityLag: { lagS, sigmaS } };
+  return { offset: combined([position, velocity]), velocityLag: null };
+}
+
+/** Mean weighted by 1/σ²; widened where the parts disagree. */
+function combined(parts: readonly (Weighed | null)[]): Weighed | null {
+  const known = parts.filter((part) => part !== null);
+  if (known.length === 0) return null;
+  const weight = known.reduce((sum, { sigmaS }) => sum + 1 / sigmaS ** 2, 0);
+  const offsetS = known.reduce((sum, part) => sum + part.offsetS / part.sigmaS ** 2, 0) / weight;
+  const misfit = known.reduce((sum, part) => sum + ((part.offsetS - offsetS) / part.sigmaS) ** 2, 0);
+  const birge = Math.sqrt(Math.max(1, misfit / Math.max(1, known.length - 1)));
+  return { offsetS, sigmaS: birge / Math.sqrt(weight) };
+}
