@@ -33,4 +33,6 @@ export const FILE_ROLE: Record<Recording['files'][number]['role'], string> = {
   imu: 'IMU',
   gnss: 'GNSS',
   reference: 'Reference',
+  imu2: 'Second IMU',
+  aids: 'Other sensors',
 };

@@ -54,7 +54,7 @@ async function refuseAtOnce(ctx: Context, req: Request): Promise<void> {
   if (!req.is('multipart/form-data')) {
     dropBody(req);
     throw unsupportedMedia(
-      'Send multipart/form-data with the parts imu, gnss, meta and, if there is one, reference.',
+      'Send multipart/form-data with the parts imu, gnss (unless the IMU log holds the fixes), meta and, if there are such, imu2, reference and aids.',
     );
   }
   const { bavail, bsize } = await fs.promises.statfs(ctx.config.dataDir);
@@ -168,9 +168,10 @@ function parseMeta(body: unknown): unknown {
   }
 }
 
-/** An IMU file and a GNSS file, neither empty. */
+/** An IMU file, which may hold the fixes too, and none empty. */
 function checkFiles(files: ReceivedFile[]): void {
-  const missing = (['imu', 'gnss'] as const).filter((role) => !files.some((file) => file.role === role));
+  const lacks = (role: ReceivedFile['role']) => !files.some((file) => file.role === role);
+  const missing = lacks('imu') ? (['imu', 'gnss'] as const).filter(lacks) : [];
   const errors = [
     ...missing.map((role) => ({ path: role, message: `The ${role.toUpperCase()} file is missing.` })),
     ...files

@@ -5,6 +5,7 @@ import { createRecordings } from './2026-01-11-create-recordings';
 import { createRunsAndSets } from './2026-01-12-create-runs-and-sets';
 import { addSensorModel } from './2026-12-01-add-sensor-model';
 import { addSmoothingAndBudget } from './2026-12-01-add-smoothing-and-budget';
+import { allowSecondImuFile } from './2026-12-01-allow-second-imu-file';
 import { runMigrations, type Migration } from './runner';
 
 export const MIGRATIONS: readonly Migration[] = [
@@ -14,6 +15,7 @@ export const MIGRATIONS: readonly Migration[] = [
   createRunsAndSets,
   addSmoothingAndBudget,
   addSensorModel,
+  allowSecondImuFile,
 ];
 
 /** Brings the database at `url` up to date; answers the names that were applied. */

@@ -52,7 +52,14 @@ export const recordingRoutes: Route[] = [
     tag,
     summary: 'Upload an IMU log and a GNSS log, and a reference trajectory if there is one',
     permission: 'recording:write',
-    multipart: z.object({ imu: z.file(), gnss: z.file(), reference: file, meta: recordingMetaSchema }),
+    multipart: z.object({
+      imu: z.file(),
+      gnss: file.describe('Left out: the fixes are in the IMU log.'),
+      imu2: file.describe('Accelerometer or gyro, where each has a log of its own.'),
+      reference: file,
+      aids: file.describe('Barometer, heading, odometer.'),
+      meta: recordingMetaSchema,
+    }),
     success: { status: 201, description: 'Kept; decoding follows', ...one },
     failures: {
       413: 'Larger than this server takes',

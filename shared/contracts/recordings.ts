@@ -10,6 +10,13 @@ const column = z.string().min(1).max(200).describe('Header of the column, as the
 const columns3 = z.tuple([column, column, column]);
 
 /**
+ * `imu2`: what the first IMU file lacks, where gyro and accelerometer have a file each; `aids`: barometer, heading, odometer.
+ * Fixes may be in the IMU's file, other sensors in any.
+ */
+export const fileRoleSchema = z.enum(['imu', 'gnss', 'reference', 'imu2', 'aids']);
+export type FileRole = z.infer<typeof fileRoleSchema>;
+
+/**
  * How a file tells time. With two columns the first is whole seconds, the GPS week or the date; the second the fraction, the
  * seconds of the week or the time of day.
  */
@@ -176,10 +183,37 @@ export const referenceMapSchema = z.object({
 });
 export type ReferenceMap = z.infer<typeof referenceMapSchema>;
 
+const aidFields = {
+  column,
+  file: fileRoleSchema.optional().describe('Left out: the file of the other sensors, else the IMU’s.'),
+  time: timeMapSchema.optional().describe('Left out: as the file tells it for its main sensor.'),
+  sigma: column.optional().describe('1σ, in the same unit.'),
+};
+export const barometerUnitSchema = z.enum(['m', 'mm', 'ft', 'Pa', 'hPa', 'kPa']);
+/** `m`: distance so far; `count`: pulses so far, of `scale` metres each. */
+export const odometerUnitSchema = z.enum(['m/s', 'mm/s', 'km/h', 'kn', 'm', 'count']);
+
+/** Sensors besides IMU and GNSS, in any of the files. */
+export const aidsMapSchema = z.object({
+  barometer: z.object({ ...aidFields, unit: barometerUnitSchema }).optional(),
+  heading: z
+    .object({
+      ...aidFields,
+      unit: angleUnitSchema,
+      offsetDeg: z.number().optional().describe('Added: the declination where it is magnetic, degrees.'),
+    })
+    .optional(),
+  odometer: z
+    .object({ ...aidFields, unit: odometerUnitSchema, scale: z.number().positive().optional() })
+    .optional(),
+});
+export type AidsMap = z.infer<typeof aidsMapSchema>;
+
 export const channelMapSchema = z.object({
   imu: imuMapSchema.optional(),
   gnss: gnssMapSchema.optional(),
   reference: referenceMapSchema.optional(),
+  aids: aidsMapSchema.optional(),
 });
 /** A file whose part is left out is mapped from its headers. */
 export type ChannelMap = z.infer<typeof channelMapSchema>;
@@ -198,10 +232,6 @@ export const recordingPatchSchema = z.object({
   notes: z.string().max(2000).optional(),
 });
 export type RecordingPatch = z.infer<typeof recordingPatchSchema>;
-
-/** `imu2`: what the first IMU file lacks, where gyro and accelerometer have a file each. */
-export const fileRoleSchema = z.enum(['imu', 'gnss', 'reference', 'imu2']);
-export type FileRole = z.infer<typeof fileRoleSchema>;
 
 /** Why a file could not be used: what, where, and what to do. `line` counts from 1 and includes the header. */
 export const intakeProblemSchema = z.object({

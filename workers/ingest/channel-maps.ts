@@ -27,14 +27,14 @@ export interface SettledMaps {
 }
 
 export type Heads = ReadonlyMap<FileRole, CsvHead>;
-type MappedRole = keyof ChannelMap;
+type MappedRole = 'imu' | 'gnss' | 'reference';
 
 const PREVIEW_ROWS = 8;
 
 export function settleMaps(heads: Heads, given: ChannelMap | null): SettledMaps {
   const settled: SettledMaps = { map: {}, problems: [], previews: [], assumed: [] };
   for (const [role, head] of heads) {
-    if (role === 'imu2') {
+    if (role === 'imu2' || role === 'aids') {
       settled.previews.push(previewOf(role, head, []));
       continue;
     }

@@ -29,6 +29,7 @@ const SCALE: Record<CountBase, number> = { s: 1, ms: 1e-3, us: 1e-6, ns: 1e-9 };
 const PLAUSIBLE_S: Record<FileRole, readonly [number, number]> = {
   imu: [2e-4, 0.2],
   imu2: [2e-4, 0.2],
+  aids: [2e-3, 12],
   gnss: [0.01, 12],
   reference: [5e-4, 12],
 };

@@ -37,6 +37,7 @@ export const FILE_NAMES: Record<FileRole, string> = {
   gnss: 'GNSS file',
   reference: 'reference file',
   imu2: 'second IMU file',
+  aids: 'file of the other sensors',
 };
 
 /** Text from a file as a message may quote it: short, on one line. */

@@ -33,7 +33,7 @@ export async function scenario(job: ScenarioJob, helpers: JobHelpers): Promise<S
 export function scenarioFiles(
   { imu, gnss, reference }: SimulatedRecording,
   imuRateHz: number,
-): Record<FileRole, Iterable<string>> {
+): Record<'imu' | 'gnss' | 'reference', Iterable<string>> {
   const stride = Math.max(1, Math.ceil(imuRateHz / MAX_REFERENCE_HZ));
   return {
     imu: csv(IMU_COLUMNS, [imu.timeS, ...imu.gyro, ...imu.accel], 1),

@@ -13,7 +13,9 @@ import { GnssPart, ReferencePart } from './FileParts';
 import { ImuPart } from './ImuPart';
 import { mapDraftSchema, type MapDraft } from './map-draft';
 import { columnParts, mapFromDraft } from './map-from-draft';
+import type { PartProps } from './parts';
 import { PreviewTable } from './PreviewTable';
+import { withUnshown } from './unshown-fields';
 
 export interface MappingFormProps {
   recording: Pick<Recording, 'channelMap' | 'previews'>;
@@ -29,7 +31,7 @@ export function MappingForm({ recording, onSubmit }: MappingFormProps) {
   });
   const submit = handleSubmit(async (draft) => {
     try {
-      await onSubmit(mapFromDraft(draft));
+      await onSubmit(withUnshown(mapFromDraft(draft), recording.channelMap));
     } catch (error) {
       showProblem(error, [], setError);
     }
@@ -39,7 +41,12 @@ export function MappingForm({ recording, onSubmit }: MappingFormProps) {
     <View style={{ gap: space.l }}>
       <View style={styles.files}>
         {recording.previews.map((preview) => (
-          <FileCard key={preview.role} preview={preview} control={control} />
+          <FileCard
+            key={preview.role}
+            preview={preview}
+            headers={headersFor(preview, recording.previews)}
+            control={control}
+          />
         ))}
       </View>
       <FormProblem title="The map was not taken" message={formState.errors.root?.message} />
@@ -61,7 +68,14 @@ export function MappingForm({ recording, onSubmit }: MappingFormProps) {
   );
 }
 
-function FileCard({ preview, control }: { preview: FilePreview; control: Control<MapDraft> }) {
+interface FileCardProps {
+  preview: FilePreview;
+  /** Columns to choose from. */
+  headers: readonly string[];
+  control: Control<MapDraft>;
+}
+
+function FileCard({ preview, headers, control }: FileCardProps) {
   const draft = useWatch({ control }) as MapDraft;
   const Part = PARTS[preview.role];
   return (
@@ -72,7 +86,7 @@ function FileCard({ preview, control }: { preview: FilePreview; control: Control
         </Notice>
       ) : null}
       <PreviewTable preview={preview} parts={columnParts(draft, preview.role)} />
-      <Part control={control} headers={preview.headers} />
+      {Part ? <Part control={control} headers={headers} /> : null}
     </Card>
   );
 }
@@ -82,5 +96,26 @@ const styles = StyleSheet.create({
   file: { flexGrow: 1, flexShrink: 1, flexBasis: 520, minWidth: 0, maxWidth: '100%', gap: space.xl },
 });
 
-const PARTS = { imu: ImuPart, gnss: GnssPart, reference: ReferencePart };
-const TITLES: Record<FileRole, string> = { imu: 'IMU file', gnss: 'GNSS file', reference: 'Reference file' };
+/** The sensors of an IMU may lie in two files; one form maps both. */
+const headersFor = ({ role, headers }: FilePreview, all: readonly FilePreview[]) =>
+  role === 'imu'
+    ? [
+        ...headers,
+        ...(all.find((one) => one.role === 'imu2')?.headers ?? []).filter(
+          (header) => !headers.includes(header),
+        ),
+      ]
+    : headers;
+
+const PARTS: Partial<Record<FileRole, (props: PartProps) => React.JSX.Element>> = {
+  imu: ImuPart,
+  gnss: GnssPart,
+  reference: ReferencePart,
+};
+const TITLES: Record<FileRole, string> = {
+  imu: 'IMU file',
+  gnss: 'GNSS file',
+  reference: 'Reference file',
+  imu2: 'Second IMU file',
+  aids: 'Other sensors',
+};

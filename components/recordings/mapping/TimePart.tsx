@@ -12,7 +12,11 @@ const BASES = plain(timeMapSchema.shape.base.options, {
   ns: 'nanoseconds',
   's+ns': 'seconds and nanoseconds, two columns',
   'gps-week+s': 'GPS week and seconds, two columns',
-  iso8601: 'date and time (ISO 8601)',
+  iso8601: 'date and time as text',
+  'gps-s': 'seconds of GPS time since 1980',
+  'date+time': 'date and time of day, two columns',
+  'time-of-day': 'time of day, without a date',
+  counter: 'counter at a stated rate',
 });
 const STAMPS = plain(timeMapSchema.shape.stamp.unwrap().options, {
   end: 'end of its interval',

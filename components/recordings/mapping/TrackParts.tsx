@@ -1,10 +1,22 @@
 import { useWatch } from 'react-hook-form';
 import { View } from 'react-native';
-import { angleUnitSchema, positionMapSchema, speedUnitSchema } from '@/shared/contracts/recordings';
+import {
+  angleUnitSchema,
+  positionMapSchema,
+  positionUnitSchema,
+  speedUnitSchema,
+} from '@/shared/contracts/recordings';
 import { SIGMA_AXES, VELOCITY_AXES } from './map-from-draft';
 import { Column, fields, Group, Pick, plain, type PartProps } from './parts';
 
 export const ANGLE_UNITS = plain(angleUnitSchema.options, { deg: 'degrees', rad: 'radians' });
+const POSITION_UNITS = plain(positionUnitSchema.options, {
+  deg: 'degrees',
+  rad: 'radians',
+  'ddmm.mmmm': 'degrees and minutes run together, ddmm.mmmm',
+  '1e-7deg': 'whole numbers of 10⁻⁷ degrees',
+  ecef: 'Earth-fixed X, Y, Z in m (X, Y in place of the angles, Z of the height)',
+});
 const HEIGHT_UNITS = plain(positionMapSchema.shape.heightUnit.unwrap().options);
 const DATUMS = plain(positionMapSchema.shape.heightDatum.unwrap().options, {
   ellipsoid: 'the WGS 84 ellipsoid',
@@ -16,6 +28,7 @@ const FRAMES = [
   { value: 'ned', label: 'north, east, down' },
   { value: 'enu', label: 'east, north, up' },
   { value: 'neu', label: 'north, east, up' },
+  { value: 'ecef', label: 'Earth-fixed X, Y, Z' },
   { value: 'speed-course', label: 'speed and course' },
 ] as const;
 const SIGMA_SHAPES = [
@@ -33,7 +46,7 @@ export function PositionPart({ control, headers, role }: Track) {
       <View style={fields.row}>
         <Column control={control} headers={headers} name={`${role}.position.lat`} label="Latitude" />
         <Column control={control} headers={headers} name={`${role}.position.lon`} label="Longitude" />
-        <Pick control={control} name={`${role}.position.unit`} label="Angles in" options={ANGLE_UNITS} />
+        <Pick control={control} name={`${role}.position.unit`} label="Angles in" options={POSITION_UNITS} />
       </View>
       <View style={fields.row}>
         <Column

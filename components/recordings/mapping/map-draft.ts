@@ -6,6 +6,7 @@ import {
   gyroUnitSchema,
   imuMapSchema,
   positionMapSchema,
+  positionUnitSchema,
   sigmaMapSchema,
   speedUnitSchema,
   timeMapSchema,
@@ -19,7 +20,7 @@ const perhaps3 = z.tuple([perhaps, perhaps, perhaps]);
 const number = z.number({ error: 'Write a number, for instance 0.5.' });
 
 /** Time bases that take a second column. */
-export const TWO_COLUMN_BASES: readonly string[] = ['s+ns', 'gps-week+s'];
+export const TWO_COLUMN_BASES: readonly string[] = ['s+ns', 'gps-week+s', 'date+time'];
 
 const timeDraftSchema = z
   .object({
@@ -51,14 +52,14 @@ const positionDraftSchema = z.object({
   lat: chosen,
   lon: chosen,
   height: perhaps,
-  unit: angleUnitSchema,
+  unit: positionUnitSchema,
   heightUnit: positionMapSchema.shape.heightUnit.unwrap(),
   heightDatum: positionMapSchema.shape.heightDatum.unwrap(),
 });
 
 const velocityDraftSchema = z
   .object({
-    frame: z.enum(['none', 'ned', 'enu', 'neu', 'speed-course']),
+    frame: z.enum(['none', 'ned', 'enu', 'neu', 'ecef', 'speed-course']),
     columns: perhaps3,
     speed: perhaps,
     course: perhaps,

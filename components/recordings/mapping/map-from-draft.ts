@@ -63,6 +63,7 @@ export const VELOCITY_AXES = {
   ned: ['north', 'east', 'down'],
   enu: ['east', 'north', 'up'],
   neu: ['north', 'east', 'up'],
+  ecef: ['X', 'Y', 'Z'],
 } as const;
 
 export const SIGMA_AXES = { two: ['horizontal', 'vertical'], three: ['north', 'east', 'down'] } as const;
