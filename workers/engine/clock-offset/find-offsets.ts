@@ -9,8 +9,13 @@ export interface ClockFindings {
   offset: { offsetS: number; sigmaS: number } | null;
   /** By so much the velocities are older than the positions, s, with 1σ; null: not told, or not significant. */
   velocityLag: { lagS: number; sigmaS: number } | null;
-  /** −1 where the vehicle turns one way by GNSS and the other by the IMU, +1 where they agree, 0 where nothing tells. */
-  turnSense: -1 | 0 | 1;
+  /**
+   * Turn by GNSS ÷ turn by the IMU about the vertical: 1; −1 where the senses differ, 57.3 or 1/57.3 where the gyro's unit
+   * is wrong; null where nothing tells.
+   */
+  turnFactor: number | null;
+  /** Where the vertical axis tells nothing of the turns and another one does: which (0, 1, 2: x, y, z of the body). */
+  turnAxis: number | null;
 }
 
 /** A lag, or a disagreement, counts from here, σ. */
@@ -25,9 +30,25 @@ export function findClockOffsets(motion: MotionIntegrals, gnss: GnssColumns): Cl
   const turn = velocity.turn ?? position.turn;
   return {
     ...together(position.all, velocity.all),
-    turnSense: turn ? (turn.correlation < 0 ? -1 : 1) : 0,
+    turnFactor: turn?.factor ?? null,
+    turnAxis: turn ? null : axisOfTurns(motion, gnss),
   };
 }
+
+/** Turns are about the vertical: a body axis that follows the course far from it has been taken for another. */
+function axisOfTurns(motion: MotionIntegrals, gnss: GnssColumns): number | null {
+  const strength = [0, 1, 2].map((axis) => {
+    const along = [0, 1, 2].map((i) => (i === axis ? 1 : 0));
+    const found =
+      clockOffset(motion, gnss, 'turn', 'velocity', along) ??
+      clockOffset(motion, gnss, 'turn', 'position', along);
+    return Math.abs(found?.correlation ?? 0);
+  });
+  const best = strength.indexOf(Math.max(...strength));
+  return strength[best]! > LEAST_TURN_CORRELATION ? best : null;
+}
+
+const LEAST_TURN_CORRELATION = 0.9;
 
 type Weighed = Pick<OffsetEstimate, 'offsetS' | 'sigmaS'>;
 

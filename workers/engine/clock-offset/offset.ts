@@ -8,6 +8,7 @@
 import type { GnssColumns } from '../types';
 import type { MotionIntegrals } from './motion-integrals';
 import {
+  meanVertical,
   motionOf,
   tiltedHeadings,
   trackStretches,
@@ -23,6 +24,8 @@ export interface OffsetEstimate {
   sigmaS: number;
   /** Of course or speed, lines removed; negative: the IMU turns (or accelerates) the other way. */
   correlation: number;
+  /** GNSS change ÷ IMU change: 1, or −1 where the senses differ, or 57.3 where units do. */
+  factor: number;
   /** Fixes behind it. */
   fixes: number;
 }
@@ -41,20 +44,21 @@ const SIGMA_FACTOR = 2;
 /** The mean specific force gives the vertical to about this in flight, where the angle of attack is not known, rad. */
 const VERTICAL_SIGMA = 0.06;
 
-/** Null where the motion does not tell: too little of it, or several shifts fit alike. */
+/** Null where the motion does not tell: too little of it, or several shifts fit alike. `vertical`: down, in the body. */
 export function clockOffset(
   motion: MotionIntegrals,
   gnss: GnssColumns,
   kind: MotionKind,
   source: MotionSource,
+  vertical: readonly number[] = meanVertical(motion),
 ): OffsetEstimate | null {
   if (motion.timeS.length < 2) return null;
   const stretches = trackStretches(gnss, kind, source);
-  const integral = motionOf(motion, kind);
+  const integral = motionOf(motion, kind, vertical);
   const best = bestShift(stretches, integral);
   const found = best && atVertex(stretches, integral, best);
   if (!found || kind !== 'turn') return found;
-  const shifts = tiltedHeadings(motion, VERTICAL_SIGMA).map((tilted) => {
+  const shifts = tiltedHeadings(motion, vertical, VERTICAL_SIGMA).map((tilted) => {
     const near = least(scan(stretches, tilted, [best.shift - RIVAL_S, best.shift + RIVAL_S], COARSE_S));
     return ((near && atVertex(stretches, tilted, near)?.offsetS) ?? Infinity) - found.offsetS;
   });
@@ -68,6 +72,7 @@ interface Fit {
   /** Of a residual, in units of the stated one. */
   variance: number;
   correlation: number;
+  factor: number;
 }
 
 function bestShift(stretches: readonly TrackStretch[], integral: RunningIntegral): Fit | null {
@@ -97,6 +102,7 @@ function atVertex(
     offsetS: shift - (after.variance - before.variance) / (2 * step) / curvature,
     sigmaS: SIGMA_FACTOR * Math.sqrt((2 * at.variance) / (curvature * at.fixes)),
     correlation: at.correlation,
+    factor: at.factor,
     fixes: at.fixes,
   };
 }
@@ -137,7 +143,7 @@ function fitAt(stretches: readonly TrackStretch[], integral: RunningIntegral, sh
   const free = fixes - lines - 2;
   if (free < 5 || !(xx > 0) || !(yy > 0)) return null;
   const left = Math.max(yy - (xy * xy) / xx, 1e-12 * yy);
-  return { shift, fixes, variance: left / free, correlation: xy / Math.sqrt(xx * yy) };
+  return { shift, fixes, variance: left / free, correlation: xy / Math.sqrt(xx * yy), factor: xy / xx };
 }
 
 /** Weighted sums of squares and products of x and the value, the best line of each taken out. */

@@ -192,24 +192,32 @@ export class RunningIntegral {
   }
 }
 
-/** Heading (∫ of the turn rate about the vertical, the clockwise sense positive) and forward speed, from the IMU. */
-export function motionOf(motion: MotionIntegrals, kind: MotionKind): RunningIntegral {
-  return new RunningIntegral(
-    motion.timeS,
-    kind === 'turn' ? along(motion.gyro, downOf(motion)) : motion.accel[0],
-  );
+/**
+ * From the IMU: heading (∫ of the turn rate about `vertical`, a unit vector in the body that points down; clockwise is
+ * positive), or forward speed.
+ */
+export function motionOf(
+  motion: MotionIntegrals,
+  kind: MotionKind,
+  vertical: readonly number[],
+): RunningIntegral {
+  const first = kind === 'turn' ? along(motion.gyro, vertical) : motion.accel[0];
+  return new RunningIntegral(motion.timeS, first);
 }
 
-/** The same heading if the vertical were tilted by `tilt` rad about forward and about right: what roll and pitch leak. */
-export const tiltedHeadings = (motion: MotionIntegrals, tilt: number): RunningIntegral[] =>
+/** Headings if the vertical were tilted by `tilt` rad about forward and about right: what roll and pitch leak. */
+export const tiltedHeadings = (
+  motion: MotionIntegrals,
+  vertical: readonly number[],
+  tilt: number,
+): RunningIntegral[] =>
   [0, 1].map((axis) => {
-    const down = downOf(motion);
-    down[axis]! += tilt;
-    return new RunningIntegral(motion.timeS, along(motion.gyro, down));
+    const tilted = vertical.map((part, i) => part + (i === axis ? tilt : 0));
+    return new RunningIntegral(motion.timeS, along(motion.gyro, tilted));
   });
 
 /** On average an IMU feels gravity alone: its mean specific force points up, whatever the mounting. */
-function downOf({ timeS, accel }: MotionIntegrals): number[] {
+export function meanVertical({ timeS, accel }: MotionIntegrals): number[] {
   const last = timeS.length - 1;
   const total = accel.map((axis) => axis[last]! - axis[0]!);
   const length = Math.hypot(...total) || 1;

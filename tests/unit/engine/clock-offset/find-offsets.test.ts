@@ -46,11 +46,11 @@ test.each([
   [4, 5],
 ])('turning drive %d at one fix a second: an offset of %d s is found within 20 ms', (seed, offsetS) => {
   const { imu, gnss } = drive({ seed });
-  const { offset, velocityLag, turnSense } = findClockOffsets(integrals(imu), stamped(gnss, offsetS));
+  const { offset, velocityLag, turnFactor } = findClockOffsets(integrals(imu), stamped(gnss, offsetS));
   expect(Math.abs(offset!.offsetS - offsetS)).toBeLessThan(0.02);
   expect(Math.abs(offset!.offsetS - offsetS)).toBeLessThan(3 * offset!.sigmaS);
   expect(velocityLag).toBeNull();
-  expect(turnSense).toBe(1);
+  expect(turnFactor).toBeCloseTo(1, 1);
 });
 
 test('positions alone tell it as well, less sharply, and say so', () => {
@@ -70,10 +70,24 @@ test('velocities that are older than the positions are told apart from the clock
 test('gyros mounted the other way round are seen by the sense of turning', () => {
   const { imu, gnss } = drive({ seed: 7 });
   const mirrored: ImuColumns = { ...imu, gyro: [imu.gyro[0], imu.gyro[1], imu.gyro[2].map((w) => -w)] };
-  expect(findClockOffsets(integrals(mirrored), gnss).turnSense).toBe(-1);
+  expect(findClockOffsets(integrals(mirrored), gnss).turnFactor).toBeCloseTo(-1, 1);
+});
+
+test('a gyro read in the wrong unit, or on the wrong axis, is seen', () => {
+  const { imu, gnss } = drive({ seed: 9 });
+  const [x, y, z] = imu.gyro;
+  const inDegrees: ImuColumns = { ...imu, gyro: [x, y, z.map((w) => w * 57.29578)] };
+  expect(1 / findClockOffsets(integrals(inDegrees), gnss).turnFactor!).toBeCloseTo(57.3, 0);
+  const swapped = findClockOffsets(integrals({ ...imu, gyro: [x, z, y] }), gnss);
+  expect(swapped).toMatchObject({ turnFactor: null, turnAxis: 1 });
 });
 
 test('a vehicle at rest tells nothing, and no number is made up', () => {
   const { imu, gnss } = drive({ motion: 'static', seed: 8 });
-  expect(findClockOffsets(integrals(imu), gnss)).toEqual({ offset: null, velocityLag: null, turnSense: 0 });
+  expect(findClockOffsets(integrals(imu), gnss)).toEqual({
+    offset: null,
+    velocityLag: null,
+    turnFactor: null,
+    turnAxis: null,
+  });
 });
