@@ -42,6 +42,12 @@ export const gnssParametersSchema = z.object({
     .describe("receiver: the log's own accuracies, the fixed ones where it gives none."),
   positionScale: positive(0.01, 100).default(1).describe('Factor on the position σ.'),
   velocityScale: positive(0.01, 100).default(1).describe('Factor on the velocity σ.'),
+  positionInflation: positive(1, 10_000)
+    .default(1)
+    .describe(
+      'Factor on R (σ²) of the position, for errors that stay alike from fix to fix: (1 + ρ)/(1 − ρ) with their correlation ρ.',
+    ),
+  velocityInflation: positive(1, 10_000).default(1).describe('The same for the velocity.'),
   positionSigmaHorizontalM: positive(1e-4, 1e4).default(1.5).describe('Each of north and east, 1σ, m.'),
   positionSigmaVerticalM: positive(1e-4, 1e4).default(2.5),
   velocitySigmaHorizontalMPerS: positive(1e-4, 1e3).default(0.1),

@@ -24,7 +24,7 @@ export interface Fixes {
 
 /**
  * R = (σ × scale)², σ the receiver's own where the parameters say so and it gave one, else the fixed one; never below
- * the floor. Values that are not finite count as missing.
+ * the floor; then times the stated inflation for errors that are correlated in time. Values that are not finite count as missing.
  */
 export function prepareFixes(gnss: GnssColumns, parameters: Parameters['gnss']): Fixes {
   const count = gnss.timeS.length;
@@ -49,9 +49,11 @@ export function prepareFixes(gnss: GnssColumns, parameters: Parameters['gnss']):
       const position = choose(receiver, gnss.positionSigma[a][j]!, axis < 2 ? ph : pv);
       const velocity = choose(receiver, gnss.velocitySigma[a][j]!, axis < 2 ? vh : vv);
       fixes.positionVariance[3 * j + axis] =
-        Math.max(position * parameters.positionScale, parameters.positionFloorM) ** 2;
+        Math.max(position * parameters.positionScale, parameters.positionFloorM) ** 2 *
+        parameters.positionInflation;
       fixes.velocityVariance[3 * j + axis] =
-        Math.max(velocity * parameters.velocityScale, parameters.velocityFloorMPerS) ** 2;
+        Math.max(velocity * parameters.velocityScale, parameters.velocityFloorMPerS) ** 2 *
+        parameters.velocityInflation;
     }
     if (!Number.isFinite(fixes.timeS[j]!)) continue;
     fixes.positionAxes[j] = positionAxesOf(gnss, j);

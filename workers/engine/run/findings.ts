@@ -17,6 +17,8 @@ const MIN_EPOCHS = 60;
 const RATIO_TOLERANCE = 0.12;
 /** Correlation at lag 1 that matters, beyond its 95 % band. */
 const LAG_TOLERANCE = 0.12;
+/** An inflation of this share of what the correlation asks for is left alone. */
+const ENOUGH = 0.6;
 /** Mean innovations below this share of their σ do no harm. */
 const MEAN_TOLERANCE = 0.15;
 
@@ -40,7 +42,9 @@ function groupFindings(summary: Figures, run: Run, group: GroupName): RunFinding
   const band = LAG_TOLERANCE + (channels[0]!.lag1Band ?? 0);
   const found: RunFinding[] = [];
   const isSized = Math.abs(size - 1) <= RATIO_TOLERANCE;
-  if (Math.abs(lag) <= band && !isSized) found.push(noiseScale(run, group, size));
+  // Inflated on purpose, innovations are smaller than predicted.
+  const meant = size < 1 && inflationOf(run, group) > 1;
+  if (Math.abs(lag) <= band && !isSized && !meant) found.push(noiseScale(run, group, size));
   if (lag > band) found.push(correlated(run, group, size, lag, channels));
   if (lag < -band) found.push(overActive(group, lag));
   found.push(...rejections(summary, run, group));
@@ -104,17 +108,33 @@ function correlated(
   const base = { code: `${group}-correlated`, severity: 'warn' as const, intervalS: null };
   if (size > 1 + RATIO_TOLERANCE / 2 && group === 'velocity')
     return { ...base, ...processNoiseTooSmall(run, size, evidence, channels) };
-  const factor = Math.sqrt(meanVarianceFactor(Math.min(0.98, lag)));
-  const value = Math.min(100, run.request.parameters.gnss[`${group}Scale`] * factor);
+  const factor = meanVarianceFactor(Math.min(0.98, lag));
+  const inflation = inflationOf(run, group);
+  if (inflation >= ENOUGH * factor) return accountedFor(group, evidence, inflation, factor);
+  const now = inflation > 1 ? `, ${times(inflation)} as now is not enough` : '';
   return {
     ...base,
     title: `${named(group)} fixes err alike for a while`,
-    sentence: `${evidence}: their errors are not white, so that the filter trusts an average of them too much and NIS cannot show it. R inflated by ${times(factor * factor)} accounts for it; time-correlated multipath, a wrong latency or lever arm also look like this.`,
+    sentence: `${evidence}: their errors are not white, so that the filter trusts an average of them too much and NIS cannot show it. R inflated by ${times(factor)} accounts for it${now}; time-correlated multipath, a wrong latency or lever arm also look like this.`,
     suggestion: {
-      path: `gnss.${group}Scale`,
-      value: rounded(value),
-      label: `${named(group)} σ × ${formatNumber(value, 3)}`,
+      path: `gnss.${group}Inflation`,
+      value: rounded(factor),
+      label: `${named(group)} R × ${formatNumber(factor, 3)}`,
     },
+  };
+}
+
+const inflationOf = (run: Run, group: GroupName) => run.request.parameters.gnss[`${group}Inflation`];
+
+/** Correlation stays in the innovations; R has been inflated for it. */
+function accountedFor(group: GroupName, evidence: string, inflation: number, factor: number): RunFinding {
+  return {
+    code: `${group}-inflated`,
+    severity: 'info',
+    title: `Correlated ${group} errors are accounted for`,
+    sentence: `${evidence}; R is inflated by ${times(inflation)} for it, of which ${times(factor)} would do. NIS lies below its dimension then, and does not test R.`,
+    suggestion: null,
+    intervalS: null,
   };
 }
 

@@ -1,6 +1,7 @@
 /** The whole of what is said about a run, from its tables. */
 import { ENGINE_VERSION } from '../types';
 import type { ChannelStatistics, GroupStatistics, RunSummary, StateVector } from '@/shared/contracts/runs';
+import { formatNumber } from '@/shared/format';
 import { averageBounds } from '../statistics/consistency';
 import { autocorrelation, autocorrelationBand } from '../statistics/correlation';
 import { chiSquaredQuantile, chiSquaredUpper } from '../statistics/distributions';
@@ -46,11 +47,23 @@ export function summarise(run: Run): RunSummary {
     accelBiasMPerS2: biases('accel_bias', 'm_s2'),
     truth: run.truth?.result() ?? null,
     ...(run.smoothedTruth === null ? {} : { smoothedTruth: run.smoothedTruth.result() }),
-    warnings: run.warnings.all(),
+    warnings: [...inflationWarnings(run), ...run.warnings.all()],
     aids: run.aids.results(),
     ...optionalResults(layoutOf(run.request.parameters), solution.table, solution.count),
   };
   return { ...summary, findings: findings(summary, run) };
+}
+
+/** R that is not the receiver's own is said, not hidden. */
+function inflationWarnings(run: Run): RunSummary['warnings'] {
+  const { gnss } = run.request.parameters;
+  return (['position', 'velocity'] as const)
+    .filter((group) => gnss[`${group}Inflation`] > 1)
+    .map((group) => ({
+      code: `${group}-r-inflated`,
+      sentence: `R of the ${group} fixes is inflated by ${formatNumber(gnss[`${group}Inflation`], 3)}× for errors that are correlated in time; their NIS lies below its dimension by that.`,
+      timeS: null,
+    }));
 }
 
 function meanOf(column: Float64Array, count: number): number {
