@@ -1,8 +1,8 @@
 import { StyleSheet, View } from 'react-native';
-import { AlignedNumber } from '@/components/ui/AlignedNumber';
 import { Text } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
-import { hairline, radius, space } from '@/constants/theme';
+import { fonts, hairline, radius, space } from '@/constants/theme';
+import { formatNumber } from '@/shared/format';
 import type { AidStatistics } from '@/shared/contracts/runs';
 import { useSummary, type Bench } from './use-bench';
 
@@ -13,72 +13,60 @@ export function AidFigures({ bench }: { bench: Bench }) {
   if (aids.length === 0) return null;
   return (
     <View
-      role="table"
+      role="region"
       aria-label="Aids"
       style={[styles.card, { backgroundColor: palette.sheet, borderColor: palette.rule }]}
     >
-      <View role="row" style={[styles.row, { borderBottomColor: palette.ink }]}>
-        <Head style={styles.name}>AIDS</Head>
-        <Head style={styles.count}>used</Head>
-        <Head style={styles.count}>rejected</Head>
-        <Head style={styles.nis}>mean NIS</Head>
-      </View>
-      {aids.map((aid, i) => (
-        <View
-          key={aid.aid}
-          role="row"
-          style={[styles.row, i + 1 < aids.length ? { borderBottomColor: palette.rule } : styles.last]}
-        >
-          <View role="rowheader" style={styles.name}>
-            <Text variant="label">{aidName(aid.aid)}</Text>
+      <Text variant="small" strong tone="soft" level={2} style={styles.title}>
+        AIDS
+      </Text>
+      {aids.map((aid) => (
+        <View key={aid.aid} style={[styles.row, { borderTopColor: palette.rule }]}>
+          <View style={styles.words}>
+            <Text variant="label" strong>
+              {aidName(aid.aid)}
+            </Text>
+            <Text variant="small" tone={aid.rejected > aid.used ? 'vermilion' : 'soft'}>
+              {`${count(aid.used)} used, ${count(aid.rejected)} rejected`}
+            </Text>
           </View>
-          <Count>{aid.used}</Count>
-          <Count tone={aid.rejected > aid.used ? 'vermilion' : 'ink'}>{aid.rejected}</Count>
-          <View role="cell" style={styles.nis}>
-            <AlignedNumber value={aid.nisMean} />
-            <Text variant="small" tone="soft">{`of ${aid.dimension}`}</Text>
-          </View>
+          {aid.nisMean === null ? null : (
+            <View style={styles.nis}>
+              <Text variant="small" tone="soft">
+                mean NIS
+              </Text>
+              <Text variant="body" style={styles.value}>
+                {formatNumber(aid.nisMean)}
+                <Text variant="small" tone="soft">{`\u202fof ${aid.dimension}`}</Text>
+              </Text>
+            </View>
+          )}
         </View>
       ))}
     </View>
   );
 }
 
-/** "Zero velocity". */
+/** "Zero velocity", "Non-holonomic". */
 export const aidName = (aid: AidStatistics['aid']): string =>
   aid === 'non-holonomic' ? 'Non-holonomic' : aid[0]!.toUpperCase() + aid.slice(1).replaceAll('-', ' ');
 
-function Count({ children, tone = 'ink' }: { children: number; tone?: 'ink' | 'vermilion' }) {
-  return (
-    <View role="cell" style={styles.count}>
-      <Text variant="label" tone={tone} align="right">
-        {children.toLocaleString('en-GB').replaceAll(',', '\u2009')}
-      </Text>
-    </View>
-  );
-}
-
-function Head({ children, style }: { children: string; style: object }) {
-  return (
-    <View role="columnheader" style={style}>
-      <Text variant="small" strong tone="soft">
-        {children}
-      </Text>
-    </View>
-  );
-}
+/** Whole, with thin spaces between thousands. */
+const count = (value: number) => formatNumber(value, Math.max(1, String(value).length));
 
 const styles = StyleSheet.create({
-  card: { borderWidth: hairline, borderRadius: radius, paddingHorizontal: space.m },
+  card: { borderWidth: hairline, borderRadius: radius },
+  title: { padding: space.m, letterSpacing: 1 },
   row: {
     flexDirection: 'row',
     alignItems: 'center',
-    gap: space.s,
-    paddingVertical: 6,
-    borderBottomWidth: hairline,
+    justifyContent: 'space-between',
+    gap: space.m,
+    paddingVertical: space.s,
+    paddingHorizontal: space.m,
+    borderTopWidth: hairline,
   },
-  last: { borderBottomWidth: 0 },
-  name: { flex: 1, minWidth: 0 },
-  count: { width: 50, alignItems: 'flex-end' },
-  nis: { width: 84, flexDirection: 'row', alignItems: 'baseline', gap: space.xs },
+  words: { flexShrink: 1 },
+  nis: { alignItems: 'flex-end' },
+  value: { fontFamily: fonts.number },
 });

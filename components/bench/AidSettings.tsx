@@ -16,8 +16,8 @@ export const AID_GROUPS: readonly FieldGroup[] = ['clipping', 'stops', 'vehicle'
 export function AidSettings({ bench }: { bench: Bench }) {
   return (
     <View style={{ gap: space.l }}>
-      {AID_GROUPS.map((group) => (
-        <FieldSettings key={group} bench={bench} group={group} />
+      {AID_GROUPS.map((group, i) => (
+        <FieldSettings key={group} bench={bench} group={group} ruled={i > 0} />
       ))}
       <RunOptions bench={bench} />
     </View>

@@ -30,7 +30,7 @@ export function BudgetView({ bench, direction, height }: BudgetViewProps) {
   return (
     <QuietFrame
       title={`Error budget, ${direction}`}
-      aside="share of the predicted variance; 1σ above"
+      aside="share of variance, 1σ above"
       words={budget ? budgetWords(budget) : 'The runs so far were not split by their sources.'}
       height={height}
       legend={budget ? <Legend sources={budget.sources} /> : null}

@@ -12,12 +12,16 @@ import { leafAt } from './parameter-schema';
 import type { Bench } from './use-bench';
 
 /** A section of settings under its name: switches, and the values of those that are on. */
-export function FieldSettings({ bench, group }: { bench: Bench; group: FieldGroup }) {
+export function FieldSettings({ bench, group, ruled }: { bench: Bench; group: FieldGroup; ruled: boolean }) {
   const { palette } = useTheme();
   const title = FIELD_GROUPS[group];
   const fields = fieldsThatCount(group, (path) => readPath(bench.config.parameters, path) === true);
   return (
-    <View role="group" aria-label={title} style={[styles.section, { borderTopColor: palette.rule }]}>
+    <View
+      role="group"
+      aria-label={title}
+      style={[styles.section, ruled ? [styles.ruled, { borderTopColor: palette.rule }] : null]}
+    >
       <Text variant="label" strong level={3}>
         {title}
       </Text>
@@ -53,5 +57,6 @@ function Setting({ bench, field }: { bench: Bench; field: ParameterField }) {
 }
 
 const styles = StyleSheet.create({
-  section: { gap: space.s, borderTopWidth: hairline, paddingTop: space.m },
+  section: { gap: space.s, paddingTop: space.m },
+  ruled: { borderTopWidth: hairline },
 });

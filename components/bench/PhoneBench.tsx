@@ -50,7 +50,7 @@ export function PhoneBench({
     const next = PHONE_CHARTS[at + by];
     if (next) choose(next.id);
   });
-  const sheetPx = Math.round(height * 0.46);
+  const sheetPx = Math.max(LEAST_SHEET_PX, Math.min(Math.round(height * 0.46), height - BESIDE_SHEET_PX));
   // With the sheet open the chart takes exactly what is left above it.
   const chartPx = open ? Math.max(150, room - TABS_PX) : Math.max(240, Math.round(height * 0.36));
   const list = (
@@ -145,6 +145,9 @@ function OneChart({ bench, chart, height }: { bench: Bench; chart: PhoneChart; h
   return <TimeChart key={chart} content={charts[chart]} group={bench.group} height={height} />;
 }
 
+/** Title, bottom bar and the least chart with its switcher stay in sight beside the open sheet, px. */
+const BESIDE_SHEET_PX = 112 + 64 + 150 + 76;
+const LEAST_SHEET_PX = 200;
 /** The switcher over the chart and the margins around it, px. */
 const TABS_PX = 76;
 

@@ -29,7 +29,7 @@ export function QuietFrame(props: QuietFrameProps) {
       onLayout={(event) => setWidth(Math.floor(event.nativeEvent.layout.width))}
     >
       <View style={styles.head}>
-        <Text variant="label" strong level={3}>
+        <Text variant="label" strong level={3} style={styles.title}>
           {props.title}
         </Text>
         <Text variant="small" tone="soft" numberOfLines={1} style={styles.aside}>
@@ -73,6 +73,7 @@ const styles = StyleSheet.create({
     paddingLeft: 46,
     paddingRight: space.s,
   },
+  title: { flexShrink: 0 },
   aside: { flexShrink: 1 },
   legend: { paddingLeft: 46, paddingRight: 8, paddingBottom: 2 },
   words: { paddingLeft: 46, paddingVertical: space.l },

@@ -1,9 +1,12 @@
 import { lazy, useMemo } from 'react';
+import { StyleSheet, View } from 'react-native';
 import { Text } from '@/components/ui/Text';
+import { useTheme } from '@/components/ui/ThemeProvider';
+import { space } from '@/constants/theme';
 import type { InnovationGroup } from './innovation-charts';
 import { QuietFrame } from './QuietFrame';
 import { useSummary, type Bench } from './use-bench';
-import { whiteness, whitenessSentence, whitenessWords } from './whiteness-data';
+import { axisWords, whiteness, whitenessSentence, type Whiteness } from './whiteness-data';
 
 // By dynamic import, with the other quiet charts: they stay out of the first chunk.
 const AutocorrelationChart = lazy(async () => ({
@@ -32,15 +35,38 @@ export function WhitenessView({ bench, group, height }: WhitenessViewProps) {
             : 'No figures yet.'
       }
       height={height}
-      legend={
-        found ? (
-          <Text variant="small" tone="soft">
-            {`Ljung–Box over ${found.lags} lags: ${whitenessWords(found)}; small where they are not white`}
-          </Text>
-        ) : null
-      }
+      legend={found ? <Legend found={found} /> : null}
     >
       {(width, room) => (found ? <AutocorrelationChart {...found} width={width} height={room} /> : null)}
     </QuietFrame>
   );
 }
+
+/** The axes as they stand at each lag, left to right, each with its portmanteau test. */
+function Legend({ found }: { found: Whiteness }) {
+  const { palette } = useTheme();
+  return (
+    <View style={styles.legend}>
+      <Text variant="small" tone="soft">
+        Ljung–Box, left to right:
+      </Text>
+      {found.axes.map((axis) => (
+        <View key={axis.label} style={styles.entry}>
+          <View style={[styles.swatch, { backgroundColor: palette[axis.tone] }]} />
+          <Text variant="small" tone={axis.p !== null && axis.p < NOT_WHITE ? 'ochre' : 'soft'}>
+            {axisWords(axis)}
+          </Text>
+        </View>
+      ))}
+    </View>
+  );
+}
+
+/** White innovations fall below this in one run of a hundred. */
+const NOT_WHITE = 0.01;
+
+const styles = StyleSheet.create({
+  legend: { flexDirection: 'row', flexWrap: 'wrap', columnGap: space.m },
+  entry: { flexDirection: 'row', alignItems: 'center', gap: space.xs },
+  swatch: { width: 4, height: 12 },
+});

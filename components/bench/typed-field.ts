@@ -9,11 +9,15 @@ import { parseTyped } from './slider-model';
 
 export type TypedResult = { value: number | null } | { message: string };
 
-/** The value as it stands in the field, in the display unit and without rounding that a person would notice. */
+/** The value as it stands in the field, in the display unit: as short as it can be told, four digits where it is endless. */
 export function fieldText(field: ParameterField, value: ParameterValue): string {
   if (typeof value !== 'number') return '';
   const unit = fieldUnit(field);
-  return String(Number((unit ? toDisplay(value, unit) : value).toPrecision(7))).replace('-', '−');
+  const exact = unit ? toDisplay(value, unit) : value;
+  const short = [1, 2, 3, 4, 5, 6, 7]
+    .map((digits) => Number(exact.toPrecision(digits)))
+    .find((one) => Math.abs(one - exact) <= 1e-9 * Math.abs(exact));
+  return String(short ?? Number(exact.toPrecision(4))).replace('-', '−');
 }
 
 /**

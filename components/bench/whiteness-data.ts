@@ -48,9 +48,8 @@ export function whiteness(summary: RunSummary | null, group: InnovationGroup): W
   return axes.length > 0 ? { axes, band, lags: Math.max(...axes.map(({ values }) => values.length)) } : null;
 }
 
-/** "N p 0.430 · E p < 0.001": small where the innovations are not white. */
-export const whitenessWords = ({ axes }: Whiteness): string =>
-  axes.map(({ label, p }) => `${label} ${probability(p)}`).join(' · ');
+/** "N p 0.43", "E p < 0.001": small where the innovations are not white. */
+export const axisWords = ({ label, p }: WhitenessAxis): string => `${label} ${probability(p)}`;
 
 /** The chart in a sentence. */
 export function whitenessSentence({ axes, band, lags }: Whiteness): string {

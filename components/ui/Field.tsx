@@ -13,7 +13,7 @@ export interface FieldProps extends Omit<TextInputProps, 'style' | 'autoComplete
   error?: string;
   hint?: string;
   required?: boolean;
-  /** Digits: set in the mono face, decimal keyboard on the phone. */
+  /** Digits: set in the mono face (a placeholder's words are not), decimal keyboard on the phone. */
   numeric?: boolean;
   icon?: IconName;
   /** Hides the label from sight (a search field); the screen reader keeps it. */
@@ -68,7 +68,7 @@ export function Field({
           styles.input,
           icon ? styles.withIcon : null,
           multiline ? styles.multiline : null,
-          numeric ? styles.numeric : null,
+          numeric && rest.value !== '' ? styles.numeric : null,
           {
             color: palette.ink,
             backgroundColor: palette.well,

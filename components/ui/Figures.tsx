@@ -1,4 +1,5 @@
 import { Fragment } from 'react';
+import { StyleSheet } from 'react-native';
 import { fonts } from '@/constants/theme';
 import { Text, type TextProps } from './Text';
 
@@ -6,7 +7,7 @@ export interface FiguresProps extends Omit<TextProps, 'children'> {
   children: string;
 }
 
-/** A line in which measured numbers stand in the mono face and words, counts and clocks do not: "20 min 40 s". */
+/** A line in which measured numbers stand in the mono face; words, counts, clocks and lengths of time in words do not. */
 export function Figures({ children, variant = 'label', ...rest }: FiguresProps) {
   return (
     <Text variant={variant} {...rest}>
@@ -16,7 +17,7 @@ export function Figures({ children, variant = 'label', ...rest }: FiguresProps) 
             key={i}
             variant={variant}
             {...rest}
-            style={[rest.style, { fontFamily: fonts.number, fontSize: mono[variant] }]}
+            style={[rest.style, styles.figure, { fontSize: mono[variant] }]}
           >
             {part.text}
           </Text>
@@ -28,7 +29,7 @@ export function Figures({ children, variant = 'label', ...rest }: FiguresProps) 
   );
 }
 
-/** Cuts a line at its measured numbers: those that a unit follows. */
+/** Cuts a line at its measured numbers: those that a unit follows. "20 min 40 s" is told, not measured. */
 export function splitFigures(line: string): { text: string; figure: boolean }[] {
   return line
     .split(MEASURED)
@@ -36,8 +37,12 @@ export function splitFigures(line: string): { text: string; figure: boolean }[] 
     .filter(({ text }) => text !== '');
 }
 
-const UNITS = 's|ms|µs|min|h|Hz|kHz|B|kB|MB|GB|TB|%|°|rad|mm|m|km|g|mg|µg|kn|σ|×';
-const MEASURED = new RegExp(`([−+-]?\\d[\\d.\\u2009]*)(?=[ \\u00a0\\u202f](?:${UNITS})(?![a-z]))`);
+const UNITS = 's|ms|µs|Hz|kHz|B|kB|MB|GB|TB|%|°|rad|mm|m|km|g|mg|µg|kn|σ|×';
+const MEASURED = new RegExp(
+  `((?<!min |\\d)[−+-]?\\d[\\d.\\u2009]*)(?=[ \\u00a0\\u202f](?:${UNITS})(?![a-z]))`,
+);
 
-/** The mono face runs wider, so that it is set a little smaller beside words. */
+/** The mono face runs wider, so that it is set a little smaller and closer beside words. */
 const mono = { title: 26, heading: 18, body: 15, label: 13, small: 11 } as const;
+
+const styles = StyleSheet.create({ figure: { fontFamily: fonts.number, letterSpacing: -0.7 } });

@@ -74,7 +74,8 @@ test('a range may be left out, and then the data tell', () => {
 test('leaving a field as it was changes nothing of its last digits', () => {
   show('aids');
   flip('Zero-rotation update');
-  type('Zero-rotation σ, °/h', '20.62648');
+  expect(screen.getByLabelText('Zero-rotation σ, °/h')).toHaveDisplayValue('20.63');
+  type('Zero-rotation σ, °/h', '20.63');
   expect(aids().zeroRotation.sigmaRadPerS).toBe(1e-4);
 });
 

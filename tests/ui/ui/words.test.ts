@@ -8,7 +8,8 @@ const figures = (line: string) =>
     .map((part) => part.text);
 
 test.each([
-  ['Crawler 2 · today 09:12 · 20 min 40 s', ['20', '40']],
+  ['Crawler 2 · today 09:12 · 20 min 40 s', []],
+  ['run done in 0.28 s', ['0.28']],
   ['60 001 samples at 100 Hz', ['100']],
   ['off by −0.35 s', ['−0.35']],
   ['version 3 of 12', []],

@@ -1,4 +1,4 @@
-import { whiteness, whitenessSentence, whitenessWords } from '@/components/bench/whiteness-data';
+import { axisWords, whiteness, whitenessSentence } from '@/components/bench/whiteness-data';
 import { correlationStems } from '@/components/charts/quiet/correlation-stems';
 import type { ChannelStatistics } from '@/shared/contracts/runs';
 import { makeSummary } from './summary';
@@ -30,7 +30,7 @@ test('axes of the group, those with too small a sample left out', () => {
   expect(found.axes.map(({ label }) => label)).toEqual(['N', 'E']);
   expect(found.axes[0]).toMatchObject({ values: [0.5, 0.05, -0.2], outside: 2, p: 0.43 });
   expect([found.band, found.lags]).toEqual([0.098, 3]);
-  expect(whitenessWords(found)).toBe('N p 0.43 · E p < 0.001');
+  expect(found.axes.map(axisWords)).toEqual(['N p 0.43', 'E p < 0.001']);
   expect(whitenessSentence(found)).toBe(
     '95 % band ±0.098. N: 2 of 3 lags outside, Ljung–Box p 0.43; E: 2 of 3 lags outside, Ljung–Box p < 0.001.',
   );
