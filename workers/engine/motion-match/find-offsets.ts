@@ -1,7 +1,7 @@
 /** All that two logs say of their clocks: the offset, and whether the receiver's velocity is older than its position. */
 import type { GnssColumns } from '../types';
 import type { MotionIntegrals } from './motion-integrals';
-import { clockOffset, type OffsetEstimate } from './offset';
+import { clockOffset, type OffsetEstimate } from './clock-offset';
 import type { MotionSource } from './track-stretches';
 
 export interface ClockFindings {

@@ -1,33 +1,8 @@
-import { scenarioSchema, type ScenarioInput } from '@/shared/contracts/scenarios';
-import { findClockOffsets } from '@/workers/engine/clock-offset/find-offsets';
-import { MotionIntegrator, type MotionIntegrals } from '@/workers/engine/clock-offset/motion-integrals';
-import type { GnssOptions } from '@/workers/engine/simulator/gnss';
-import { simulateScenario } from '@/workers/engine/simulator/scenario';
+import { findClockOffsets } from '@/workers/engine/motion-match/find-offsets';
 import type { GnssColumns, ImuColumns } from '@/workers/engine/types';
+import { drive, integrals } from './support';
 
 jest.setTimeout(60_000);
-
-function integrals({ timeS, gyro, accel }: ImuColumns): MotionIntegrals {
-  const integrator = new MotionIntegrator();
-  timeS.forEach((t, k) => {
-    integrator.add(
-      t,
-      Float64Array.from([...gyro, ...accel], (axis) => axis[k]!),
-    );
-  });
-  return integrator.finish();
-}
-
-function drive(input: ScenarioInput, gnss: Partial<GnssOptions> = {}) {
-  const scenario = {
-    motion: 'road' as const,
-    durationS: 300,
-    imuRateHz: 50,
-    gnssRateHz: 1,
-    staticStartS: 10,
-  };
-  return simulateScenario(scenarioSchema.parse({ ...scenario, ...input }), { gnss });
-}
 
 /** What a receiver whose clock runs `offsetS` behind would have stamped. */
 const stamped = (gnss: GnssColumns, offsetS: number): GnssColumns => ({
