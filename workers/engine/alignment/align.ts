@@ -76,6 +76,7 @@ export function align(
     levelled: found.levelling !== 'given',
     attitudeVariance: tiltFromEulerVariance(found.eulerVariance, found.pitch, found.yaw),
     headingArm: found.headingArm,
+    eastBiasVariance: found.compass?.eastBiasVariance ?? null,
   };
   const p = initialCovariance(causes);
   const { headingUntilS = -Infinity } = found;
@@ -87,7 +88,8 @@ function gyroBiasAtStart(found: FoundAttitude, parameters: Parameters, dcm: Floa
   const given = parameters.initial.gyroBiasRadPerS;
   if (given !== undefined || found.rest === null)
     return { bias: given ?? [0, 0, 0], variance: [prior, prior, prior] as const, fromRest: false };
-  return { ...restGyroBias(found.rest, parameters, dcm, latRad, found.eulerVariance[2]), fromRest: true };
+  const yawVariance = found.compass?.totalVariance ?? found.eulerVariance[2];
+  return { ...restGyroBias(found.rest, parameters, dcm, latRad, yawVariance), fromRest: true };
 }
 
 function report(found: FoundAttitude, timeS: number, q: Float64Array, p: Float64Array): Alignment['report'] {

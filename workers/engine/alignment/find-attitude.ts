@@ -10,6 +10,7 @@ import { normalGravity } from '../gravity';
 import { medianSpacing } from '../strapdown/imu-intervals';
 import { EngineError, type AidColumns, type ImuColumns } from '../types';
 import { searchHeading, type FoundHeading, type HeadingQuestion } from './heading-search';
+import { gyrocompass, type CompassHeading } from './gyrocompass';
 import { headingFromAid } from './heading-aid';
 import { levelMoving } from './moving-level';
 import { restBiasVariance } from './rest-bias';
@@ -38,6 +39,8 @@ export interface FoundAttitude {
   headingSentence: string;
   /** Readings of a heading aid up to here were used, s. */
   headingUntilS?: number;
+  /** The heading is from the Earth's rotation: it shares the gyro bias towards east. */
+  compass?: CompassHeading;
 }
 
 /** 1σ of a given attitude whose σ was not given, rad. */
@@ -164,14 +167,35 @@ interface HeadingPart {
   heading: FoundAttitude['heading'];
   headingSentence: string;
   headingUntilS?: number;
+  compass?: CompassHeading;
 }
 
 function findHeading(s: Situation, roll: number, pitch: number): HeadingPart {
   const known = knownHeading(s);
   if (known !== null) return known;
-  const found = searchHeading(question(s, roll, pitch));
+  const compass = s.rest && gyrocompass(s.rest, s.parameters, roll, pitch, latitude(s));
+  const asked = question(s, roll, pitch);
+  const found = searchHeading(asked);
+  if (compass !== null && (found === null || compass.totalVariance < carriedVariance(asked, found)))
+    return compassPart(s, compass);
   if (found === null) throw noHeading(s.parameters);
   return headingPart(s, found);
+}
+
+/** Of a heading found from GNSS, at the start, what the gyro bias does to it on the way included, rad². */
+function carriedVariance({ gyroBiasSigma }: HeadingQuestion, { sigma, biasArm }: FoundHeading): number {
+  return sigma ** 2 + (gyroBiasSigma * Math.hypot(...biasArm)) ** 2;
+}
+
+function compassPart(s: Situation, compass: CompassHeading): HeadingPart {
+  return {
+    yaw: compass.yaw,
+    yawVariance: compass.ownVariance,
+    headingArm: null,
+    heading: 'gyrocompass',
+    headingSentence: `heading by gyrocompassing over ${s.rest!.meanDurationS.toFixed(1)} s`,
+    compass,
+  };
 }
 
 /** Given, or read from a heading aid at the start; null where neither is there. */
@@ -239,7 +263,7 @@ function headingPart(s: Situation, found: FoundHeading): HeadingPart {
 function noHeading(parameters: Parameters): EngineError {
   return new EngineError(
     'no-heading',
-    `Heading cannot be found: the log never exceeds ${parameters.initial.courseSpeedMPerS} m/s. Give initial.headingDeg, switch on a heading aid, or lower initial.courseSpeedMPerS.`,
+    `Heading cannot be found: the log never exceeds ${parameters.initial.courseSpeedMPerS} m/s. Give initial.headingDeg, switch on a heading aid, or lower initial.courseSpeedMPerS. Gyros find north by themselves only at rest and with a turn-on bias of some thousandths of the Earth rate.`,
   );
 }
 

@@ -30,6 +30,8 @@ export interface InitialCauses {
   attitudeVariance: Float64Array;
   /** Heading carried by the gyros: ∫C_D· dt, s; null if not. */
   headingArm: readonly [number, number, number] | null;
+  /** Heading from the Earth's rotation: variance of the gyro bias towards east, which turned it, (rad/s)²; null if not. */
+  eastBiasVariance: number | null;
   /** States behind the fifteen: where they lie and their variances, one after the other. */
   layout: StateLayout;
   optionalVariance: Float64Array;
@@ -50,7 +52,9 @@ export function initialCovariance(causes: InitialCauses): Float64Array {
   }
   for (let i = STATES; i < size; i += 1) s.set(i, i, causes.optionalVariance[i - STATES]!);
   for (let i = 0; i < size; i += 1) j.set(i, i, 1);
+  addEastBias(s, causes);
   addLevelling(j, causes);
+  addCompass(j, causes);
   addHeadingArm(j, causes);
   addEarthRate(j, causes);
   addLeverArm(j, causes);
@@ -69,13 +73,17 @@ export function initialBudget(causes: InitialCauses): Partial<Record<BudgetSourc
     positionVariance: none,
     velocityVariance: none,
     gyroBiasVariance: none,
+    eastBiasVariance: causes.eastBiasVariance === null ? null : 0,
     accelBiasVariance: none,
     attitudeVariance: new Float64Array(9),
     optionalVariance: new Float64Array(causes.optionalVariance.length),
   };
   const alone = (part: Partial<InitialCauses>) => initialCovariance({ ...nothing, ...part });
   return {
-    'gyro bias': alone({ gyroBiasVariance: causes.gyroBiasVariance }),
+    'gyro bias': alone({
+      gyroBiasVariance: causes.gyroBiasVariance,
+      eastBiasVariance: causes.eastBiasVariance,
+    }),
     'accelerometer bias': alone({ accelBiasVariance: causes.accelBiasVariance }),
     'initial attitude': alone({ attitudeVariance: causes.attitudeVariance }),
     'initial velocity': alone({ velocityVariance: causes.velocityVariance }),
@@ -117,6 +125,30 @@ function addLevelling(j: Matrix, { levelled, dcm, gravity, layout }: InitialCaus
   }
 }
 
+/** The gyro bias towards east was not told by the rest: V(I − eeᵀ) + v_e eeᵀ for the east axis e in the body. */
+function addEastBias(s: Matrix, { eastBiasVariance, gyroBiasVariance: [own], dcm }: InitialCauses): void {
+  if (eastBiasVariance === null) return;
+  for (let i = 0; i < 3; i += 1)
+    for (let k = 0; k < 3; k += 1)
+      s.set(
+        GYRO_BIAS + i,
+        GYRO_BIAS + k,
+        (i === k ? own : 0) + (eastBiasVariance - own) * dcm[3 + i]! * dcm[3 + k]!,
+      );
+}
+
+/** φ_D = −(C δb_g)_E/(Ω cos φ) − tan φ · φ_N, beside what is its own (gyrocompass.ts). */
+function addCompass(j: Matrix, { eastBiasVariance, dcm, latRad }: InitialCauses): void {
+  if (eastBiasVariance === null) return;
+  const north = EARTH_RATE * Math.cos(latRad);
+  for (let i = 0; i < 3; i += 1) j.set(ATTITUDE + 2, GYRO_BIAS + i, -dcm[3 + i]! / north);
+  for (let cause = 0; cause < j.columns; cause += 1) {
+    if (cause === ATTITUDE + 2) continue;
+    const tilt = -Math.tan(latRad) * j.get(ATTITUDE, cause);
+    j.set(ATTITUDE + 2, cause, j.get(ATTITUDE + 2, cause) + tilt);
+  }
+}
+
 /** φ_D(start) = φ_D(course) − ∫C_D· dt δb_g. */
 function addHeadingArm(j: Matrix, { headingArm }: InitialCauses): void {
   if (headingArm === null) return;
@@ -124,12 +156,15 @@ function addHeadingArm(j: Matrix, { headingArm }: InitialCauses): void {
 }
 
 /** A bias read at rest took the Earth rate off with the computed attitude: δb_g = n + Cᵀ(ω_ie × φ). */
-function addEarthRate(j: Matrix, { gyroBiasFromRest, dcm, latRad }: InitialCauses): void {
+function addEarthRate(j: Matrix, causes: InitialCauses): void {
+  const { gyroBiasFromRest, dcm, latRad, eastBiasVariance } = causes;
   if (!gyroBiasFromRest) return;
   const north = EARTH_RATE * Math.cos(latRad);
   const down = -EARTH_RATE * Math.sin(latRad);
   // [ω_ie×] row by row.
   const cross = [0, -down, 0, down, 0, -north, 0, north, 0];
+  // A heading from the Earth's rotation leaves no rate towards east, whatever the attitude.
+  if (eastBiasVariance !== null) cross.fill(0, 3, 6);
   for (let axis = 0; axis < 3; axis += 1)
     for (let cause = 0; cause < j.columns; cause += 1) {
       let sum = j.get(GYRO_BIAS + axis, cause);

@@ -28,11 +28,14 @@ export function restGyroBias(
 
 /** Variance of the bias at the stretch's start once its mean is known, rad²/s². */
 export function restBiasVariance(rest: StaticStretch, parameters: Parameters): number {
-  const model = biasParameters(parameters).gyro;
-  const prior = initialBiasVariance(model);
-  const duration = rest.meanDurationS;
-  // White noise of the mean, and how far the bias wandered between the start and the mean (a third of its walk).
-  const noise =
-    parameters.gyro.whiteNoiseRadPerSqrtS ** 2 / duration + (biasNoiseDensity(model) * duration) / 3;
+  const prior = initialBiasVariance(biasParameters(parameters).gyro);
+  const noise = restNoiseVariance(rest, parameters);
   return (prior * noise) / (prior + noise);
+}
+
+/** White noise of the mean, and how far the bias wandered between the start and the mean (a third of its walk), rad²/s². */
+export function restNoiseVariance(rest: StaticStretch, parameters: Parameters): number {
+  const duration = rest.meanDurationS;
+  const walk = biasNoiseDensity(biasParameters(parameters).gyro);
+  return parameters.gyro.whiteNoiseRadPerSqrtS ** 2 / duration + (walk * duration) / 3;
 }
