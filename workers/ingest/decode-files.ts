@@ -3,13 +3,16 @@
  * into the store. A fault anywhere throws IntakeRejected; whoever calls clears what was written by then.
  */
 import type { HealthReport, Strip, TimeOrigin } from '@/shared/contracts/recordings';
+import { IDENTITY_AXES } from '@/shared/contracts/vehicles';
 import { writeTable, type Columns, type WrittenFile } from '../recordings/arrow-file';
+import { gnssColumns } from '../recordings/load';
 import { storeKeys } from '../store/types';
 import { decodeImu } from './decode-imu';
 import { decodeGnss, decodeReference } from './decode-track';
 import { healthReport } from './health-report';
 import { clockOf, proposedOrigin, type IntakeContext } from './intake-context';
 import { sensorRoles } from './map-columns';
+import { motionFindings } from './motion-findings';
 import { stripOf } from './strip';
 
 export type { IntakeContext } from './intake-context';
@@ -32,12 +35,15 @@ export async function decodeFiles(context: IntakeContext): Promise<DecodedFiles>
   const imu = await decodeImu(context, originS, gnss.report);
   const { facts } = imu;
   const reference = await decodeReference(context, originS, [facts.startS, facts.endS]);
+  const axes = map.axes ?? context.vehicleAxes ?? IDENTITY_AXES;
+  const matched = motionFindings(facts, gnssColumns(gnss.columns), { map: context.map, axes });
+  await context.breathe();
   const gnssFile = await writeTable(context.store, storeKeys.gnss(context.recordingId), gnss.columns);
   return {
     startS: facts.startS,
     endS: facts.endS,
     timeOrigin: clockOf(context, role, map.time, originS).timeOrigin(),
-    health: healthReport(facts, gnss.report, context.assumed, [...imu.findings, ...gnss.findings]),
+    health: healthReport(facts, gnss.report, context.assumed, [...imu.findings, ...gnss.findings], matched),
     strip: stripOf(facts, gnss.columns),
     gnss: gnss.columns,
     written: { imu: imu.written, gnss: gnssFile, reference },

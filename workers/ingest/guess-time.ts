@@ -46,13 +46,22 @@ export function guessTime(head: CsvHead, finder: ColumnFinder, role: FileRole): 
     weekAndSeconds(finder) ??
     dateAndTime(head, finder, role) ??
     single(head, finder, role) ??
-    byNamePart(head, role)
+    byNamePart(head, role) ??
+    borrowed(head, finder, role)
   );
 }
 
 function single(head: CsvHead, finder: ColumnFinder, role: FileRole): GuessedTime | null {
   const own = (header: string) => !namesOtherDevice(header, role) && !isEmptyColumn(head, header);
   const found = finder.find(TIME_WORDS, own) ?? finder.find(TIME_OF_WEEK_WORDS, own);
+  return found && fromValues(head, found.header, found.index, found.unit, role);
+}
+
+/** The time of another device, where every row has it: an IMU that is stamped by its receiver. */
+function borrowed(head: CsvHead, finder: ColumnFinder, role: FileRole): GuessedTime | null {
+  const filled = (header: string) =>
+    textsOf(head, head.headers.indexOf(header)).length >= 0.9 * head.rows.length;
+  const found = finder.find(TIME_WORDS, filled);
   return found && fromValues(head, found.header, found.index, found.unit, role);
 }
 

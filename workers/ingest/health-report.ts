@@ -1,18 +1,22 @@
 /** The health report: what was found, how serious it is, and the verdict in one line. */
-import type { HealthFinding, HealthReport, Severity } from '@/shared/contracts/recordings';
+import type { HealthFinding, HealthReport } from '@/shared/contracts/recordings';
 import { formatDuration, formatNumber } from '@/shared/format';
-import { radToDeg, STANDARD_GRAVITY_M_S2 } from '@/shared/units';
+import { finding } from './finding';
 import type { GnssReport } from './gnss-health';
 import type { ImuFacts } from './imu-health';
 
 type Interval = [number, number];
 
-/** `assumed`: what was taken for granted of the columns, in whole sentences; `noted`: what was passed over in the files. */
+/**
+ * `assumed`: what was taken for granted of the columns, in whole sentences; `noted`: what was passed over in the files;
+ * `matched`: what units, axes and clocks look like.
+ */
 export function healthReport(
   imu: ImuFacts,
   gnss: GnssReport,
   assumed: readonly string[],
   noted: readonly HealthFinding[],
+  matched: readonly HealthFinding[],
 ): HealthReport {
   const overlapS: Interval = [Math.max(imu.startS, gnss.startS), Math.min(imu.endS, gnss.endS)];
   const findings = [
@@ -20,7 +24,7 @@ export function healthReport(
     ...noted,
     ...rateFindings(imu),
     ...rowFindings(imu),
-    ...gravityFindings(imu),
+    ...matched,
     ...gnssFindings(imu, gnss, overlapS),
   ]; // prettier-ignore
   return {
@@ -37,26 +41,6 @@ export function healthReport(
     findings,
   };
 }
-
-interface FindingParts {
-  figure?: { value: number; unit: string };
-  intervals?: readonly Interval[];
-  remedy?: string;
-}
-
-const finding = (
-  code: string,
-  severity: Severity,
-  sentence: string,
-  { figure, intervals, remedy }: FindingParts = {},
-): HealthFinding => ({
-  code,
-  severity,
-  sentence,
-  figure: figure ?? null,
-  intervalsS: [...(intervals ?? [])],
-  remedy: remedy ?? null,
-});
 
 function rateFindings(imu: ImuFacts): HealthFinding[] {
   const found: HealthFinding[] = [];
@@ -116,58 +100,6 @@ function rowFindings(imu: ImuFacts): HealthFinding[] {
 }
 
 const rows = (count: number) => (count === 1 ? 'One row' : `${count} rows`);
-
-/** Gravity in the quietest second tells wrong units, and an IMU that is mounted otherwise than the map says. */
-function gravityFindings(imu: ImuFacts): HealthFinding[] {
-  const { quiet } = imu;
-  const force = quiet ? Math.hypot(...quiet.accelMean) : imu.meanForce;
-  const figure = { value: force, unit: 'm/s²' };
-  const intervals: Interval[] = quiet ? [[quiet.startS, quiet.endS]] : [];
-  const share = force / STANDARD_GRAVITY_M_S2;
-  if (share < 0.5 || share > 1.5)
-    return [
-      finding('gravity-size', 'stop', `In its quietest second the accelerometer shows ${formatNumber(force)} m/s² instead of about 9.81.`, {
-        figure, intervals, remedy: unitHint(share),
-      }),
-    ]; // prettier-ignore
-  const found: HealthFinding[] = [];
-  if (Math.abs(share - 1) > 0.05)
-    found.push(
-      finding('gravity-off', 'warn', `In its quietest second the accelerometer shows ${formatNumber(force, 4)} m/s² instead of about 9.81.`, {
-        figure, intervals, remedy: 'Expect a large accelerometer bias or scale error, or a log without a standstill.',
-      }),
-    ); // prettier-ignore
-  if (quiet && quiet.accelMean[2] > 0.7 * force)
-    found.push(
-      finding('upside-down', 'warn', 'Gravity points up: the z axis that should look down seems to look up.', {
-        figure: { value: quiet.accelMean[2], unit: 'm/s²' }, intervals,
-        remedy: 'Set the axes on the vehicle or on the mapping screen, for example forward +x, right −y, down −z.',
-      }),
-    ); // prettier-ignore
-  else if (quiet && quiet.accelMean[2] > -0.7 * force)
-    found.push(
-      finding('axes', 'warn', 'Gravity does not lie along the z axis: the IMU seems to be mounted otherwise than the axes say.', {
-        figure: { value: quiet.accelMean[2], unit: 'm/s²' }, intervals,
-        remedy: 'Set the axes on the vehicle or on the mapping screen.',
-      }),
-    ); // prettier-ignore
-  const turn = quiet ? Math.hypot(...quiet.gyroMean) : 0;
-  if (quiet && turn > 0.35 && quiet.gyroSpread < 0.05)
-    found.push(
-      finding('gyro-offset', 'warn', `In its quietest second the gyro shows ${formatNumber(radToDeg(turn))} °/s.`, {
-        figure: { value: radToDeg(turn), unit: '°/s' }, intervals,
-        remedy: 'Check the unit of the gyro columns (rad/s or °/s) on the mapping screen.',
-      }),
-    ); // prettier-ignore
-  return found;
-}
-
-function unitHint(share: number): string {
-  if (share > 0.08 && share < 0.13) return 'The accelerometer looks like g read as m/s²: set its unit to g.';
-  if (share > 80 && share < 130) return 'The accelerometer looks like mg read as m/s²: set its unit to mg.';
-  if (share > 8 && share < 12) return 'The accelerometer looks like m/s² read as g: set its unit to m/s².';
-  return 'Check the unit of the accelerometer columns on the mapping screen.';
-}
 
 function gnssFindings(imu: ImuFacts, gnss: GnssReport, overlapS: Interval): HealthFinding[] {
   const found: HealthFinding[] = [];

@@ -1,6 +1,7 @@
 /** What is noticed of the IMU while its samples pass by, in memory that does not grow with the log. */
 import type { ImuSampling } from '../engine/types';
 import { FlatTopFinder, mergeIntervals } from './clipping';
+import { MotionIntegrator, type MotionIntegrals } from '../engine/motion-match/motion-integrals';
 import { QuietWindowFinder, type QuietWindow } from './quiet-window';
 
 export interface ImuFacts {
@@ -25,6 +26,7 @@ export interface ImuFacts {
   quiet: QuietWindow | null;
   /** Mean length of the specific force, m/s². */
   meanForce: number;
+  motion: MotionIntegrals;
 }
 
 const MAX_GAPS = 1000;
@@ -34,6 +36,7 @@ const SMALLEST_ACCEL_RANGE = 15;
 
 export class ImuHealth {
   private readonly quiet = new QuietWindowFinder();
+  private readonly motion = new MotionIntegrator();
   private readonly flatTops: FlatTopFinder[];
   private readonly rates = new Float64Array(6);
   private readonly gapLimitS: number;
@@ -76,6 +79,7 @@ export class ImuHealth {
     const [x, y, z] = [this.rates[3]!, this.rates[4]!, this.rates[5]!];
     this.forceSum += Math.sqrt(x * x + y * y + z * z);
     this.quiet.add(timeS, this.rates);
+    this.motion.add(timeS, this.rates);
     this.samples += 1;
     this.lastS = timeS;
   }
@@ -115,6 +119,7 @@ export class ImuHealth {
       clippedS: mergeIntervals(flat, 10 * this.nominalS),
       quiet: this.quiet.finish(),
       meanForce: this.forceSum / Math.max(1, this.samples),
+      motion: this.motion.finish(),
     };
   }
 

@@ -101,7 +101,7 @@ async function* unpacked(
 async function* decoded(bytes: AsyncGenerator<Uint8Array>, file: RawFile): AsyncGenerator<string> {
   const [first, rest] = await probed(bytes, PROBE_BYTES);
   if (first.length === 0) throw empty(file);
-  const mark = Buffer.from(first.subarray(0, 2)).toString('hex');
+  const mark = markOf(first);
   const isUtf16 = UTF16_MARKS.includes(mark);
   if (!isUtf16) refuseBinary(first, file);
   const decoder = decoderFor(mark);
@@ -109,6 +109,15 @@ async function* decoded(bytes: AsyncGenerator<Uint8Array>, file: RawFile): Async
   yield start.startsWith('\uFEFF') ? start.slice(1) : start;
   for await (const chunk of rest) yield decoder.write(chunk);
   yield decoder.end();
+}
+
+/** The byte-order mark; UTF-16 without one shows by its zeros, every second byte. */
+function markOf(start: Uint8Array): string {
+  const probe = start.subarray(0, 512);
+  const zeros = (from: number) => probe.filter((byte, i) => i % 2 === from && byte === 0).length;
+  if (probe.length > 16 && zeros(1) > probe.length / 3 && zeros(0) === 0) return 'fffe';
+  if (probe.length > 16 && zeros(0) > probe.length / 3 && zeros(1) === 0) return 'feff';
+  return Buffer.from(start.subarray(0, 2)).toString('hex');
 }
 
 interface Decoder {
@@ -172,7 +181,9 @@ async function probed(
 }
 
 function refuseBinary(start: Uint8Array, file: RawFile): void {
-  const probe = start.subarray(0, PROBE_BYTES);
+  // Zeros at the end are what a power cut leaves of a block.
+  const last = start.subarray(0, PROBE_BYTES).findLastIndex((byte) => byte !== 0);
+  const probe = start.subarray(0, last + 1);
   const control = probe.reduce((count, byte) => count + (byte < 9 || (byte > 13 && byte < 32) ? 1 : 0), 0);
   if (!probe.includes(0) && control <= probe.length * 0.02) return;
   const isZip = probe[0] === 0x50 && probe[1] === 0x4b;

@@ -40,14 +40,21 @@ export type Logs = Partial<Record<FileRole, string | Uint8Array>>;
 export async function decodeLogs(
   store: Store,
   logs: Logs,
-  options: { channelMap?: ChannelMap; axes?: AxisMap; recordingId?: string; helpers?: JobHelpers } = {},
+  options: {
+    channelMap?: ChannelMap;
+    axes?: AxisMap;
+    recordingId?: string;
+    helpers?: JobHelpers;
+    /** What the uploader's machine calls the files. */
+    names?: Partial<Record<FileRole, string>>;
+  } = {},
 ): Promise<DecodeResult> {
   const recordingId = options.recordingId ?? 'rec';
   const files = [];
   for (const [role, content] of Object.entries(logs) as [FileRole, string | Uint8Array][]) {
     const key = storeKeys.raw(recordingId, role);
     await store.put(key, typeof content === 'string' ? Buffer.from(content) : content);
-    files.push({ role, name: `${role}.csv`, key });
+    files.push({ role, name: options.names?.[role] ?? `${role}.csv`, key });
   }
   const job = {
     kind: 'decode' as const,
