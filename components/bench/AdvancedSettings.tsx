@@ -48,6 +48,8 @@ function GnssSettings({ bench }: { bench: Bench }) {
           { value: 'fixed', label: 'the fixed values below' },
         ]}
       />
+      <NumberSetting bench={bench} field={fieldAt('gnss.positionInflation')} />
+      <NumberSetting bench={bench} field={fieldAt('gnss.velocityInflation')} />
       <NumberSetting bench={bench} field={fieldAt('gnss.latencyS')} />
     </View>
   );

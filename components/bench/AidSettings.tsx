@@ -10,7 +10,7 @@ import type { Bench } from './use-bench';
 import type { Parameters } from '@/shared/contracts/parameters';
 
 /** Groups of what helps the filter besides GNSS, in the order of the bench. */
-export const AID_GROUPS: readonly FieldGroup[] = ['clipping', 'stops', 'vehicle', 'states'];
+export const AID_GROUPS: readonly FieldGroup[] = ['clipping', 'stops', 'vehicle', 'sensors', 'states'];
 
 /** Clipping, the vehicle's own aids, and what the run works out besides. */
 export function AidSettings({ bench }: { bench: Bench }) {

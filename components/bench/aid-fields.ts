@@ -1,5 +1,6 @@
 /** Fields of what helps the filter besides GNSS: clipping, stops, the vehicle's nature, states beyond the fifteen. */
 import type { ParameterField } from './parameter-field';
+import { SENSOR_FIELDS } from './sensor-fields';
 
 const CLIPPING = ['clipping.enabled'];
 const clippingFields: readonly ParameterField[] = [
@@ -216,5 +217,6 @@ export const AID_FIELDS: readonly ParameterField[] = [
   ...clippingFields,
   ...stopFields,
   ...vehicleFields,
+  ...SENSOR_FIELDS,
   ...stateFields,
 ];

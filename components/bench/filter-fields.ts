@@ -21,6 +21,22 @@ const gnssFields: readonly ParameterField[] = [
     label: 'Accuracy from',
     words: { receiver: 'the receiver', fixed: 'fixed values' },
   },
+  {
+    path: 'gnss.positionInflation',
+    group: 'gnss',
+    label: 'Position R inflated by',
+    quantity: 'factor',
+    hint: 'for errors that stay alike from fix to fix',
+    needs: ['gnss.usePosition'],
+  },
+  {
+    path: 'gnss.velocityInflation',
+    group: 'gnss',
+    label: 'Velocity R inflated by',
+    quantity: 'factor',
+    hint: 'for errors that stay alike from fix to fix',
+    needs: ['gnss.useVelocity'],
+  },
   { path: 'gnss.positionFloorM', group: 'gnss', label: 'Least position σ', quantity: 'length' },
   { path: 'gnss.velocityFloorMPerS', group: 'gnss', label: 'Least velocity σ', quantity: 'speed' },
   {

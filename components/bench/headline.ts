@@ -38,7 +38,9 @@ export function headlineFigures(summary: RunSummary | null, baseline: RunSummary
         ? drift.windows === 1
           ? '1 window'
           : `RMS of ${drift.windows} windows`
-        : 'draw an outage on the strip',
+        : summary
+          ? 'draw an outage on the strip'
+          : '',
     },
     ratioFigure(drift, before),
     nisFigure('position', summary, baseline),
@@ -113,7 +115,9 @@ function nisFigure(
     change: changeOf(mean, before?.nisMean, ''),
     remark: bounds
       ? `${outside ? (mean < bounds[0] ? 'too low, ' : 'too high, ') : ''}bounds ${formatNumber(bounds[0])} to ${formatNumber(bounds[1])}`
-      : 'not used',
+      : summary
+        ? 'not used'
+        : '',
   };
 }
 

@@ -11,6 +11,7 @@ export type FieldGroup =
   | 'clipping'
   | 'stops'
   | 'vehicle'
+  | 'sensors'
   | 'states';
 
 export const FIELD_GROUPS: Record<FieldGroup, string> = {
@@ -23,6 +24,7 @@ export const FIELD_GROUPS: Record<FieldGroup, string> = {
   clipping: 'Clipping',
   stops: 'Stops',
   vehicle: 'Vehicle constraint',
+  sensors: 'Other sensors',
   states: 'Further states',
 };
 

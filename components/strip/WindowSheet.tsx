@@ -5,7 +5,8 @@ import { Dialog } from '@/components/ui/Dialog';
 import { Field } from '@/components/ui/Field';
 import { Sheet } from '@/components/ui/Sheet';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
-import type { Outage } from '@/shared/contracts/runs';
+import { withholdSchema, type Outage } from '@/shared/contracts/runs';
+import { WITHHELD } from './WindowHandles';
 import { parseClock, windowProblem, type WindowLimits } from './window-model';
 
 export interface WindowSheetProps {
@@ -73,15 +74,16 @@ export function WindowSheet({
       />
       <Choice
         label="Withheld from the filter"
-        shape="segments"
+        shape="select"
         value={withhold}
         onChange={setWithhold}
-        options={[
-          { value: 'gnss', label: 'All GNSS' },
-          { value: 'position', label: 'Position' },
-          { value: 'velocity', label: 'Velocity' },
-        ]}
+        options={OPTIONS}
       />
     </Frame>
   );
 }
+
+const OPTIONS = withholdSchema.options.map((value) => ({
+  value,
+  label: WITHHELD[value][0]!.toUpperCase() + WITHHELD[value].slice(1),
+}));

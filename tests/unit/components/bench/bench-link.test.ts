@@ -29,6 +29,7 @@ describe('a link', () => {
         { startS: 700, endS: 760, withhold: 'velocity' },
       ],
       baselineRunId: '7c1e0c1e-0000-4000-8000-000000000003',
+      options: { smooth: true, errorBudget: false },
       view: 'track',
     };
     expect(reopened(link)).toEqual({ link, problems: [] });
