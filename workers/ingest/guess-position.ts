@@ -91,14 +91,16 @@ function angleUnit(head: CsvHead, lat: FoundColumn, lon: FoundColumn): AngleUnit
   const lons = valuesOf(head, lon);
   const largest = (values: readonly number[]) => values.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
   const [maxLat, maxLon] = [largest(lats), largest(lons)];
+  const usual = [...lats].map(Math.abs).sort((a, b) => a - b)[lats.length >> 1] ?? 0;
   if (lat.unit === 'rad')
     return maxLat <= Math.PI / 2
       ? { unit: 'rad', confidence: 0.98, reason: 'The headers say radians, and the values lie within ±π/2.' }
       : { unit: 'rad', confidence: 0.2, reason: `The headers say radians, but a latitude of ${maxLat} is beyond ±π/2.` };
   if (lats.length === 0) return { unit: 'deg', confidence: 0.5, reason: 'No fix lies in the first rows: degrees are only a guess.' };
-  if (maxLat > 1e5 && lats.every(Number.isInteger))
+  if (usual > 1e5 && lats.every(Number.isInteger))
     return { unit: '1e-7deg', confidence: 0.95, reason: 'Whole numbers of this size are 10⁻⁷ degrees.' };
-  if (maxLat > 90 && maxLat <= 9000 && maxLon <= 18_000 && [...lats, ...lons].every((value) => Math.abs(value) % 100 < 60))
+  const swapped = usual <= 180 && maxLon <= 90;
+  if (usual > 90 && !swapped && maxLat <= 9000 && maxLon <= 18_000 && [...lats, ...lons].every((value) => Math.abs(value) % 100 < 60))
     return { unit: 'ddmm.mmmm', confidence: 0.95, reason: 'Values beyond 90 whose last two whole digits stay below 60 are degrees and minutes.' };
   if (lat.unit !== 'deg' && maxLat <= Math.PI / 2 && maxLon <= Math.PI && maxLat > 0)
     return { unit: 'rad', confidence: 0.7, reason: 'No unit is named, and all values lie within ±π/2 and ±π, as radians do.' };

@@ -54,16 +54,19 @@ test.each(DEFECTS)('%s: found as %s, put right by its remedy', async (_name, cod
   expect(mended.health.findings.filter(({ severity }) => severity !== 'info')).toEqual([]);
 });
 
-test.each([-2, 0.4, 5])('a GNSS clock %d s off: found with its figure, put right by its remedy', async (offsetS) => {
-  const { imu, gnss } = drive({ seed: 22 });
-  const late = { ...gnss, timeS: gnss.timeS.map((t) => t - offsetS) };
-  const found = await intake(imu, late);
-  const finding = found.health.findings.find(({ code }) => code === 'clock-offset')!;
-  expect(finding.severity).toBe(Math.abs(offsetS) > 0.5 ? 'stop' : 'warn');
-  expect(Math.abs(finding.figure!.value - offsetS)).toBeLessThan(0.02);
-  const mended = await intake(imu, late, { ...found.channelMap, ...finding.fix!.map });
-  expect(mended.health.findings.map(({ code }) => code)).not.toContain('clock-offset');
-});
+test.each([-2, 0.4, 5])(
+  'a GNSS clock %d s off: found with its figure, put right by its remedy',
+  async (offsetS) => {
+    const { imu, gnss } = drive({ seed: 22 });
+    const late = { ...gnss, timeS: gnss.timeS.map((t) => t - offsetS) };
+    const found = await intake(imu, late);
+    const finding = found.health.findings.find(({ code }) => code === 'clock-offset')!;
+    expect(finding.severity).toBe(Math.abs(offsetS) > 0.5 ? 'stop' : 'warn');
+    expect(Math.abs(finding.figure!.value - offsetS)).toBeLessThan(0.02);
+    const mended = await intake(imu, late, { ...found.channelMap, ...finding.fix!.map });
+    expect(mended.health.findings.map(({ code }) => code)).not.toContain('clock-offset');
+  },
+);
 
 test.each(['road', 'crawler', 'fixed-wing', 'multirotor', 'static'] as const)(
   'a sound %s log raises nothing that stops it',
