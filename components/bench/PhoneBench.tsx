@@ -8,7 +8,6 @@ import { Button } from '@/components/ui/Button';
 import { Text } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { hairline, radius, space } from '@/constants/theme';
-import { AidFigures } from './AidFigures';
 import { BudgetOff, BudgetView, useSplit } from './BudgetView';
 import { NoWindows, Track } from './ChartDeck';
 import { PHONE_CHARTS, type PhoneChart, type ViewId } from './chart-views';
@@ -16,6 +15,7 @@ import { Findings } from './Findings';
 import { Headline } from './Headline';
 import { ParameterSheet } from './ParameterSheet';
 import { DriftGrowth, InnovationHistogram } from './QuietCharts';
+import { RunFigures } from './RunFigures';
 import { RunProblem, RunProgressLine } from './RunStatus';
 import { useSwipe } from './use-swipe';
 import { useTimeCharts } from './use-charts';
@@ -87,7 +87,7 @@ export function PhoneBench({
         <>
           <RunProblem bench={bench} />
           <Headline bench={bench} columns={2} />
-          <AidFigures bench={bench} />
+          <RunFigures bench={bench} />
           <Findings bench={bench} />
         </>
       )}

@@ -4,12 +4,12 @@ import { StripEditor } from '@/components/strip/StripEditor';
 import { Text } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { hairline, radius, space } from '@/constants/theme';
-import { AidFigures } from './AidFigures';
 import { ChartDeck } from './ChartDeck';
 import type { ViewId } from './chart-views';
 import { Findings } from './Findings';
 import { Headline } from './Headline';
 import { ParameterPanel } from './ParameterPanel';
+import { RunFigures } from './RunFigures';
 import { RunProblem, RunProgressLine } from './RunStatus';
 import type { Bench } from './use-bench';
 
@@ -30,7 +30,7 @@ export function WideBench({
     <>
       <RunProblem bench={bench} />
       <Headline bench={bench} columns={extraWide ? 2 : 3} />
-      <AidFigures bench={bench} />
+      <RunFigures bench={bench} />
       <Findings bench={bench} />
     </>
   );

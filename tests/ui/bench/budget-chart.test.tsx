@@ -1,5 +1,4 @@
 import { screen } from '@testing-library/react-native';
-import { aidName } from '@/components/bench/AidFigures';
 import { budgetWords } from '@/components/bench/BudgetView';
 import { errorBudget } from '@/components/bench/budget-data';
 import { BudgetChart } from '@/components/charts/quiet/BudgetChart';
@@ -53,8 +52,4 @@ test('the words say what the bars show', () => {
   expect(budgetWords(budget)).toBe(
     'After 30.0 s 5.00 m (1σ): gyro bias 64 %, GNSS noise 36 %. After 60.0 s 10.0 m (1σ): gyro bias 64 %, GNSS noise 36 %.',
   );
-});
-
-test('aids have names for people', () => {
-  expect([aidName('zero-velocity'), aidName('non-holonomic')]).toEqual(['Zero velocity', 'Non-holonomic']);
 });
