@@ -275,6 +275,13 @@ export const healthFindingSchema = z.object({
   figure: z.object({ value: z.number(), unit: z.string() }).nullable(),
   intervalsS: z.array(z.tuple([z.number(), z.number()])),
   remedy: z.string().nullable(),
+  fix: z
+    .object({
+      label: z.string().describe('What a button says.'),
+      map: channelMapSchema.describe('Parts that take the place of those in force.'),
+    })
+    .optional()
+    .describe('A remedy that can be accepted as it stands.'),
 });
 export type HealthFinding = z.infer<typeof healthFindingSchema>;
 

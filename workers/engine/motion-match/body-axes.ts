@@ -4,7 +4,7 @@
  */
 import type { GnssColumns } from '../types';
 import type { MotionIntegrals } from './motion-integrals';
-import { meanVertical, motionOf, RunningIntegral, trackStretches } from './track-stretches';
+import { meanVertical, RunningIntegral, trackStretches } from './track-stretches';
 
 /** True body axis = sign × the axis that now bears number `axis` (0, 1, 2: forward, right, down). */
 export interface TrueAxis {
@@ -28,7 +28,7 @@ export function strayAxes(motion: MotionIntegrals, gnss: GnssColumns, shiftS: nu
   const vertical = meanVertical(motion);
   const down = strongest(vertical);
   if (Math.abs(vertical[down.axis]!) < ALONG_AXIS) return null;
-  const { along, across } = correlations(motion, gnss, shiftS, vertical);
+  const { along, across } = correlations(motion, gnss, shiftS);
   const forward = strongest(along);
   const right = strongest(across);
   const plain = Math.min(Math.abs(along[forward.axis]!), Math.abs(across[right.axis]!)) >= FOLLOWS;
@@ -44,23 +44,20 @@ function strongest(values: readonly number[]): TrueAxis {
   return { axis, sign: values[axis]! < 0 ? -1 : 1 };
 }
 
-/** Of each body axis' specific force, interval by interval, with the change of speed and with speed × turn. */
-function correlations(
-  motion: MotionIntegrals,
-  gnss: GnssColumns,
-  shiftS: number,
-  vertical: readonly number[],
-) {
+/** Of each body axis' specific force, interval by interval, with the change of speed and with speed × turn, by GNSS. */
+function correlations(motion: MotionIntegrals, gnss: GnssColumns, shiftS: number) {
   const source = gnss.velocityNed[0].some((value) => Number.isFinite(value)) ? 'velocity' : 'position';
-  const heading = motionOf(motion, 'turn', vertical);
   const forces = motion.accel.map((axis) => new RunningIntegral(motion.timeS, axis));
   const rows: number[][] = [];
-  for (const { fromS, toS, value } of trackStretches(gnss, 'speed', source))
-    for (let i = 1; i < value.length; i += 1) {
-      const [t0, t1] = [0.5 * (fromS[i - 1]! + toS[i - 1]!) + shiftS, 0.5 * (fromS[i]! + toS[i]!) + shiftS];
-      const mean = (integral: RunningIntegral) => (integral.at(t1) - integral.at(t0)) / (t1 - t0);
-      const turn = mean(heading) * 0.5 * (value[i - 1]! + value[i]!);
-      const row = [(value[i]! - value[i - 1]!) / (t1 - t0), turn, ...forces.map(mean)];
+  for (const { fromS, toS, value: course, speed } of trackStretches(gnss, 'turn', source))
+    for (let i = 1; i < course.length; i += 1) {
+      const [t0, t1] = [0.5 * (fromS[i - 1]! + toS[i - 1]!), 0.5 * (fromS[i]! + toS[i]!)];
+      const rate = (change: number) => change / (t1 - t0);
+      const row = [
+        rate(speed[i]! - speed[i - 1]!),
+        rate(course[i]! - course[i - 1]!) * 0.5 * (speed[i - 1]! + speed[i]!),
+        ...forces.map((integral) => rate(integral.at(t1 + shiftS) - integral.at(t0 + shiftS))),
+      ];
       if (row.every(Number.isFinite)) rows.push(row);
     }
   const of = (a: number, b: number) => (rows.length < LEAST_INTERVALS ? 0 : correlation(rows, a, b));

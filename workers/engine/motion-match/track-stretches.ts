@@ -16,6 +16,8 @@ export interface TrackStretch {
   toS: Float64Array;
   /** Course without jumps (rad), or speed (m/s). */
   value: Float64Array;
+  /** m/s. */
+  speed: Float64Array;
   /** 1/variance. */
   weight: Float64Array;
 }
@@ -77,6 +79,7 @@ function stretchOf(points: readonly Point[], kind: MotionKind): TrackStretch {
     fromS: Float64Array.from(points, (point) => point.fromS),
     toS: Float64Array.from(points, (point) => point.toS),
     value: Float64Array.from(values),
+    speed: Float64Array.from(points, (point) => point.speed),
     weight: Float64Array.from(points, (point) => 1 / variance(point)),
   };
 }

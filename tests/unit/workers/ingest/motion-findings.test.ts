@@ -29,7 +29,6 @@ async function intake(imu: ImuColumns, gnss: GnssColumns, channelMap?: ChannelMa
   const logs = { imu: imuText(imu), gnss: gnssText(gnss) };
   return ready(await decodeLogs(at.store, logs, channelMap ? { channelMap } : {}));
 }
-const both = (imu: ImuColumns, group: (made: ImuColumns) => ImuColumns) => group(imu);
 const negate = (imu: ImuColumns, ...axes: (0 | 1 | 2)[]) =>
   axes.reduce((made, axis) => imuScale(imuScale(made, 'gyro', -1, axis), 'accel', -1, axis), imu);
 
@@ -45,7 +44,7 @@ const DEFECTS: [string, string, (imu: ImuColumns) => ImuColumns][] = [
 
 test.each(DEFECTS)('%s: found as %s, put right by its remedy', async (_name, code, spoil) => {
   const { imu, gnss } = drive({ seed: 21 });
-  const spoilt = both(imu, spoil);
+  const spoilt = spoil(imu);
   const found = await intake(spoilt, gnss);
   const finding = found.health.findings.find((one) => one.code === code);
   expect(found.health.verdict).toBe('not-usable');
