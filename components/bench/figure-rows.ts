@@ -1,5 +1,10 @@
 /** What a run found besides the headline: aids, the truth, further states. Pure. */
-import type { AidStatistics, OptionalStateResult, RunSummary } from '@/shared/contracts/runs';
+import type {
+  AidStatistics,
+  OptionalStateResult,
+  RunSummary,
+  TruthStatistics,
+} from '@/shared/contracts/runs';
 import { formatNumber } from '@/shared/format';
 import type { FigureRow } from './FigureRows';
 
@@ -28,7 +33,7 @@ export function truthRows(summary: RunSummary | null): FigureRow[] {
     key: string,
     label: string,
     unit: string,
-    of: (one: typeof truth) => number | null | undefined,
+    of: (one: TruthStatistics) => number | null | undefined,
   ) => {
     const [filtered, after] = [of(truth), smoothed ? of(smoothed) : null];
     if (filtered == null) return [];
