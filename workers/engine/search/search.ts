@@ -14,7 +14,7 @@ import type { SearchRequest, SearchResult, SearchRun, TunedValue } from './types
 
 /** Stands for what cannot be scored: worse than anything that can. */
 const HOPELESS = 1e9;
-const EVALUATIONS_A_VALUE = 40;
+const EVALUATIONS_A_VALUE = 25;
 /** A value this near to a bound, in ln x, lies at it. */
 const AT_BOUND = 1e-3;
 

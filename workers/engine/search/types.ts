@@ -40,7 +40,7 @@ export interface SearchRequest {
   outlierShare?: number;
   /** Weight of the coasting drift beside the likelihood; 1: each window counts like one more fix. Default 0. */
   driftWeight?: number;
-  /** Evaluations for the search over the whole box before it is refined; default 40 a tuned value. */
+  /** Evaluations for the search over the whole box before it is refined; default 25 a tuned value. */
   evaluations?: number;
 }
 

@@ -1,4 +1,5 @@
-import { createRun, createSearch, EngineError, type SearchCase, type SearchRequest } from '@/workers/engine';
+import { createRun, EngineError } from '@/workers/engine';
+import { createSearch, type SearchCase, type SearchRequest } from '@/workers/engine/search';
 import { ErrorStateFilter } from '@/workers/engine/filter/error-state-filter';
 import { prepareFixes } from '@/workers/engine/filter/fixes';
 import { align } from '@/workers/engine/alignment/align';
