@@ -1,4 +1,4 @@
-/** Prints how long the noise analysis of a long static log takes: `npx tsx tests/bench/allan.ts [hours]`. */
+/** Prints how long the noise analysis of a long static log takes: `npm run bench -- allan [hours]`. */
 import { analyseNoise } from '@/workers/engine/allan/analysis';
 import { noiseSeries } from '@/tests/support/noise-series';
 

@@ -1,4 +1,4 @@
-/** Prints how well the strapdown closes on noise-free analytic motions: `npx tsx tests/bench/closure.ts`. */
+/** Prints how well the strapdown closes on noise-free analytic motions: `npm run bench -- closure`. */
 import { degToRad } from '@/shared/units';
 import { createRandom } from '@/workers/engine/random';
 import type { Motion, MotionOptions } from '@/workers/engine/simulator/motion';

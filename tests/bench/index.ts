@@ -1,16 +1,39 @@
-/** npm run bench: the engine alone, then the whole stack. `npm run bench -- stack` (or engine) runs one of them. */
+/**
+ * npm run bench: the engine alone, then the whole stack. `npm run bench -- NAME [arguments]` runs one of the benches below;
+ * several may be named one after the other.
+ */
 import { failWith } from '@/scripts/lib/project';
+import { runBundled } from '@/tests/support/bundled';
 import { benchEngine } from './engine';
+import { benchIngest } from './ingest';
+import { benchSearch } from './search';
 import { benchStack } from './stack';
 
-const BENCHES: Record<string, () => void | Promise<void>> = { engine: benchEngine, stack: benchStack };
+const script = (file: string) => (args: string[]) => void runBundled(`tests/bench/${file}.ts`, args);
+const count = (args: string[]) => (args[0] === undefined ? undefined : Number(args[0]));
 
-async function main(names: string[]): Promise<void> {
-  for (const name of names.length > 0 ? names : Object.keys(BENCHES)) {
-    const bench = BENCHES[name];
-    if (!bench) throw new Error(`There is no bench "${name}". Benches: ${Object.keys(BENCHES).join(', ')}.`);
-    await bench();
+/** In the order of their arguments: megabytes; runs and part of a title; hours; seeds. */
+const BENCHES: Record<string, (args: string[]) => void | Promise<void>> = {
+  engine: benchEngine,
+  stack: benchStack,
+  ingest: (args) => benchIngest(count(args)),
+  closure: script('closure'),
+  'monte-carlo': script('monte-carlo'),
+  allan: script('allan'),
+  search: (args) => benchSearch(count(args)),
+};
+const BY_DEFAULT = ['engine', 'stack'];
+
+async function main(words: string[]): Promise<void> {
+  const calls: { name: string; args: string[] }[] =
+    words.length > 0 ? [] : BY_DEFAULT.map((name) => ({ name, args: [] }));
+  for (const word of words) {
+    const last = calls.at(-1);
+    if (Object.hasOwn(BENCHES, word)) calls.push({ name: word, args: [] });
+    else if (last !== undefined) last.args.push(word);
+    else throw new Error(`There is no bench "${word}". Benches: ${Object.keys(BENCHES).join(', ')}.`);
   }
+  for (const { name, args } of calls) await BENCHES[name]!(args);
 }
 
 main(process.argv.slice(2)).catch(failWith);

@@ -1,6 +1,6 @@
 /**
  * The workers alone: decoding of a large CSV (rows/s, peak memory of the process), and what the pool adds to a run
- * (time to the first frame and to the result). `node --import tsx tests/bench/ingest.ts [megabytes]`.
+ * (time to the first frame and to the result). `npm run bench -- ingest [megabytes]`.
  */
 import { createWriteStream, mkdirSync, mkdtempSync, readFileSync, rmSync } from 'node:fs';
 import { once } from 'node:events';

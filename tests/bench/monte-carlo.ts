@@ -1,5 +1,5 @@
 /**
- * Prints the filter's consistency over many seeded runs: `npx tsx tests/bench/monte-carlo.ts [runs] [part of a title]`.
+ * Prints the filter's consistency over many seeded runs: `npm run bench -- monte-carlo [runs] [part of a title]`.
  */
 import { averageBounds, sigmaInterval } from '@/workers/engine/statistics/consistency';
 import { mean, standardDeviation } from '@/workers/engine/statistics/descriptive';
