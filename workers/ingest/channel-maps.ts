@@ -6,10 +6,13 @@ import type {
   FileRole,
   IntakeProblem,
 } from '@/shared/contracts/recordings';
+import { AID_KINDS } from '../recordings/aids';
+import { aidPlace } from './aid-place';
 import { columnIndex } from './cells';
 import type { CsvHead } from './csv';
 import { ColumnFinder } from './find-columns';
 import type { Guess } from './guess';
+import { guessAids } from './guess-aids';
 import { guessGnssMap, guessReferenceMap } from './guess-gnss';
 import { guessImuMap } from './guess-imu';
 import { guessTime } from './guess-time';
@@ -52,7 +55,37 @@ export function settleMaps(heads: Heads, given: ChannelMap | null): SettledMaps 
     else settled.problems.push(unmapped(role, head, guess.missing, isMerged(heads)));
   }
   if (settled.map.imu) settled.problems.push(...completeAccelTime(heads, settled.map));
+  settleAids(heads, given, settled);
   return settled;
+}
+
+/** Sensors beside are a gain where they are, and no fault where they are not; only what a given map names must be there. */
+function settleAids(heads: Heads, given: ChannelMap | null, settled: SettledMaps): void {
+  if (given?.aids) {
+    settled.map.aids = given.aids;
+    settled.problems.push(...unknownAids(heads, given));
+    return;
+  }
+  const { map, guesses } = guessAids(heads, settled.map);
+  if (Object.keys(map).length > 0) settled.map.aids = map;
+  for (const { role, guess } of guesses) {
+    const preview = settled.previews.find((one) => one.role === role);
+    if (preview) preview.guesses = [...(preview.guesses ?? []), guess];
+  }
+}
+
+function unknownAids(heads: Heads, given: ChannelMap): IntakeProblem[] {
+  return AID_KINDS.flatMap((kind) => {
+    const aid = given.aids?.[kind];
+    if (!aid) return [];
+    const role = aid.file ?? (heads.has('aids') ? 'aids' : 'imu');
+    const head = heads.get(role);
+    if (!head) return [fileMissing(role)];
+    const problems = unknownAmong(role, head, [aid.column, aid.sigma ?? [], aid.time?.columns ?? []].flat());
+    return problems.length > 0 || aidPlace(kind, given, heads)
+      ? problems
+      : [unmapped(role, head, ['time'], false)];
+  });
 }
 
 function guessOf(role: MappedRole, heads: Heads, head: CsvHead): Guess<NonNullable<ChannelMap[MappedRole]>> {
@@ -134,6 +167,13 @@ function unmapped(role: FileRole, head: CsvHead, missing: readonly string[], mer
       : 'Say on the mapping screen which column it is and in which unit.',
   ); // prettier-ignore
 }
+
+const fileMissing = (role: FileRole) =>
+  problem(
+    'file-missing', { file: role },
+    `The channel map names a column of the ${FILE_NAMES[role]}, which was not uploaded.`,
+    'Upload that file too, or choose a column of another one on the mapping screen.',
+  ); // prettier-ignore
 
 /** "a, b and c". */
 export const listed = (items: readonly string[]) =>

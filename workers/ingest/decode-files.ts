@@ -4,9 +4,11 @@
  */
 import type { HealthReport, Strip, TimeOrigin } from '@/shared/contracts/recordings';
 import { IDENTITY_AXES } from '@/shared/contracts/vehicles';
+import type { AidKind } from '../recordings/aids';
 import { writeTable, type Columns, type WrittenFile } from '../recordings/arrow-file';
 import { gnssColumns } from '../recordings/load';
 import { storeKeys } from '../store/types';
+import { decodeAids } from './decode-aids';
 import { decodeImu } from './decode-imu';
 import { decodeGnss, decodeReference } from './decode-track';
 import { healthReport } from './health-report';
@@ -24,7 +26,10 @@ export interface DecodedFiles {
   health: HealthReport;
   strip: Strip;
   gnss: Columns;
-  written: Record<'imu' | 'gnss', WrittenFile> & { reference: WrittenFile | null };
+  written: Record<'imu' | 'gnss', WrittenFile> & {
+    reference: WrittenFile | null;
+    aids: Partial<Record<AidKind, WrittenFile>>;
+  };
 }
 
 export async function decodeFiles(context: IntakeContext): Promise<DecodedFiles> {
@@ -35,6 +40,7 @@ export async function decodeFiles(context: IntakeContext): Promise<DecodedFiles>
   const imu = await decodeImu(context, originS, gnss.report);
   const { facts } = imu;
   const reference = await decodeReference(context, originS, [facts.startS, facts.endS]);
+  const aids = await decodeAids(context, originS);
   const axes = map.axes ?? context.vehicleAxes ?? IDENTITY_AXES;
   const matched = motionFindings(facts, gnssColumns(gnss.columns), { map: context.map, axes });
   await context.breathe();
@@ -43,9 +49,15 @@ export async function decodeFiles(context: IntakeContext): Promise<DecodedFiles>
     startS: facts.startS,
     endS: facts.endS,
     timeOrigin: clockOf(context, role, map.time, originS).timeOrigin(),
-    health: healthReport(facts, gnss.report, context.assumed, [...imu.findings, ...gnss.findings], matched),
+    health: healthReport(
+      facts,
+      gnss.report,
+      context.assumed,
+      [...imu.findings, ...gnss.findings, ...aids.findings],
+      matched,
+    ),
     strip: stripOf(facts, gnss.columns),
     gnss: gnss.columns,
-    written: { imu: imu.written, gnss: gnssFile, reference },
+    written: { imu: imu.written, gnss: gnssFile, reference, aids: aids.written },
   };
 }

@@ -1,7 +1,7 @@
 /** Headers taken apart: a plain name and a unit, whatever the case, the brackets, the separators. */
 import type { FileRole } from '@/shared/contracts/recordings';
 
-export type UnitQuantity = 'time' | 'rate' | 'accel' | 'angle' | 'length' | 'speed';
+export type UnitQuantity = 'time' | 'rate' | 'accel' | 'angle' | 'length' | 'speed' | 'pressure';
 
 /** Spellings of units, without case, separators and exponent signs, and what they are called in a channel map. */
 export const UNIT_WORDS: Record<UnitQuantity, Record<string, string>> = {
@@ -25,6 +25,9 @@ export const UNIT_WORDS: Record<UnitQuantity, Record<string, string>> = {
   },
   angle: { deg: 'deg', degs: 'deg', degree: 'deg', degrees: 'deg', rad: 'rad', rads: 'rad', radian: 'rad', radians: 'rad' },
   length: { m: 'm', meter: 'm', meters: 'm', metre: 'm', metres: 'm', mm: 'mm', millimeters: 'mm', millimetres: 'mm', ft: 'ft', feet: 'ft', foot: 'ft' },
+  pressure: {
+    pa: 'Pa', pascal: 'Pa', hpa: 'hPa', mbar: 'hPa', millibar: 'hPa', kpa: 'kPa',
+  },
   speed: {
     ms: 'm/s', mps: 'm/s', msec: 'm/s', meterss: 'm/s', metress: 'm/s', metersec: 'm/s', ms1: 'm/s',
     mms: 'mm/s', mmps: 'mm/s',

@@ -49,7 +49,7 @@ export async function eachBatch(
       if (!batch.unfinished || !isCut(error)) throw error;
       notes.cutLine = batch.lines[0];
     }
-    context.progress((order.indexOf(role) + table.readShare()) / order.length);
+    if (order.includes(role)) context.progress((order.indexOf(role) + table.readShare()) / order.length);
     await context.breathe();
   }
   return notes;

@@ -165,3 +165,14 @@ export const ATTITUDE_WORDS = {
   pitch: { quantity: 'angle', names: ['pitch', 'pitchangle', 'theta', 'eulerpitch', 'eulery'] },
   yaw: { quantity: 'angle', names: ['yaw', 'yawangle', 'heading', 'psi', 'azimuth', 'euleryaw', 'eulerz', 'trueheading'] },
 } as const satisfies Record<string, ChannelWords>; // prettier-ignore
+
+/** Sensors besides IMU and GNSS; plain names count only in a file of their own. */
+export const AID_WORDS = {
+  barometricHeight: { quantity: 'length', names: ['barometricheight', 'barometricaltitude', 'baroheight', 'baroaltitude', 'baroalt', 'heightbaro', 'altbaro', 'altitudebaro', 'pressureheight', 'pressurealtitude', 'pressurealt'] },
+  plainHeight: { quantity: 'length', names: ['height', 'altitude', 'alt', 'h', 'baro', 'barometer'] },
+  pressure: { quantity: 'pressure', names: ['pressure', 'airpressure', 'baropressure', 'barometerpressure', 'barometricpressure', 'staticpressure', 'atmosphericpressure', 'baro', 'barometer', 'press'] },
+  heading: { quantity: 'angle', names: ['trueheading', 'headingtrue', 'heading', 'hdg', 'hdt', 'compassheading', 'compass', 'magneticheading', 'magheading', 'headingmagnetic', 'headingmag'] },
+  wheelSpeed: { quantity: 'speed', names: ['wheelspeed', 'odometerspeed', 'odospeed', 'speedodometer', 'speedwheel', 'vehiclespeed', 'canspeed', 'wheelvelocity', 'odometervelocity', 'odovel', 'axlespeed'] },
+  plainSpeed: { quantity: 'speed', names: ['speed', 'velocity', 'v', 'forwardspeed'] },
+  distance: { quantity: 'length', names: ['odometer', 'odometerdistance', 'odo', 'mileage', 'distancedriven', 'wheeldistance'] },
+} as const satisfies Record<string, ChannelWords>; // prettier-ignore

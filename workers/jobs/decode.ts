@@ -8,6 +8,7 @@ import { IntakeRejected } from '../ingest/problems';
 import { readTableHead } from '../ingest/tables';
 import type { RawFile } from '../ingest/text-source';
 import type { DecodeJob, DecodeResult } from '../protocol';
+import { AID_KINDS } from '../recordings/aids';
 import { writeDecodedNote } from '../recordings/files';
 import { storeKeys, type Store } from '../store/types';
 import { writeBaselineTrack } from './baseline-track';
@@ -29,6 +30,7 @@ export async function decode(job: DecodeJob, helpers: JobHelpers): Promise<Decod
       previews: settled.previews,
     };
 
+  let reached = 0;
   try {
     const decoded = await decodeFiles({
       store,
@@ -38,7 +40,11 @@ export async function decode(job: DecodeJob, helpers: JobHelpers): Promise<Decod
       map: settled.map,
       vehicleAxes: job.vehicleAxes,
       assumed: settled.assumed,
-      progress: (share) => helpers.progress(share * 0.95),
+      progress: (share) => {
+        // A file may be gone through twice.
+        reached = Math.max(reached, share * 0.95);
+        helpers.progress(reached);
+      },
       breathe: helpers.breathe,
     });
     await writeBaselineTrack(store, job.recordingId, decoded.gnss);
@@ -46,6 +52,7 @@ export async function decode(job: DecodeJob, helpers: JobHelpers): Promise<Decod
     await writeDecodedNote(store, job.recordingId, {
       sha256,
       hasReference: decoded.written.reference !== null,
+      aids: AID_KINDS.filter((kind) => decoded.written.aids[kind]),
     });
     helpers.progress(1);
     return {
@@ -101,10 +108,11 @@ async function readHeads(files: ReadonlyMap<FileRole, RawFile>, store: Store) {
   return { heads, problems };
 }
 
-/** Over the hashes of the files, in the order IMU, GNSS, reference. */
-function hashOf({ imu, gnss, reference }: DecodedFiles['written']): string {
+/** Over the hashes of the files, in the order IMU, GNSS, reference, aids. */
+function hashOf({ imu, gnss, reference, aids }: DecodedFiles['written']): string {
   const hash = createHash('sha256');
-  for (const file of [imu, gnss, reference]) if (file) hash.update(file.sha256, 'hex');
+  for (const file of [imu, gnss, reference, ...AID_KINDS.map((kind) => aids[kind])])
+    if (file) hash.update(file.sha256, 'hex');
   return hash.digest('hex');
 }
 
@@ -112,4 +120,5 @@ function hashOf({ imu, gnss, reference }: DecodedFiles['written']): string {
 async function removeDecoded(store: Store, recordingId: string): Promise<void> {
   const { decoded, imu, gnss, reference, gnssOnly } = storeKeys;
   for (const key of [decoded, imu, gnss, reference, gnssOnly]) await store.removePrefix(key(recordingId));
+  for (const kind of AID_KINDS) await store.removePrefix(storeKeys.aid(recordingId, kind));
 }

@@ -1,4 +1,5 @@
 /** The decoded files of a recording: which columns each holds, and the note that says that they are complete. */
+import type { AidKind } from './aids';
 import { storeKeys, StoreKeyMissing, type Store } from '../store/types';
 
 export const IMU_COLUMNS = [
@@ -19,9 +20,11 @@ export const SAMPLING_KEY = 'sampling';
 
 /** Written under storeKeys.decoded when all decoded files are in place. */
 export interface DecodedNote {
-  /** Over the decoded channel files, in the order IMU, GNSS, reference. */
+  /** Over the decoded channel files, in the order IMU, GNSS, reference, barometer, heading, odometer. */
   sha256: string;
   hasReference: boolean;
+  /** Which of barometer, heading and odometer there are; left out: none. */
+  aids?: AidKind[];
 }
 
 export async function writeDecodedNote(store: Store, recordingId: string, note: DecodedNote): Promise<void> {

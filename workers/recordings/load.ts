@@ -9,7 +9,8 @@ import type {
 } from '../engine/types';
 import { JobFailed } from '../protocol';
 import { storeKeys, type Store } from '../store/types';
-import { readTable, type Columns } from './arrow-file';
+import { aidColumns, type AidKind } from './aids';
+import { readTable, type ArrowTable, type Columns } from './arrow-file';
 import { readDecodedNote, SAMPLING_KEY } from './files';
 
 export interface LoadedRecording {
@@ -28,16 +29,26 @@ export async function loadRecording(store: Store, recordingId: string): Promise<
     readTable(store, storeKeys.gnss(recordingId)),
     note.hasReference ? readTable(store, storeKeys.reference(recordingId)) : null,
   ]);
+  const aids = await readAids(store, recordingId, note.aids ?? []);
   const sampling = (imu.metadata.get(SAMPLING_KEY) ?? 'mean-rate') as ImuSampling;
   const columns: RecordingColumns = {
     imu: imuColumns(imu.columns, sampling),
     gnss: gnssColumns(gnss.columns),
     reference: reference ? referenceColumns(reference.columns) : null,
+    aids: aidColumns(Object.fromEntries(aids.map(({ kind, table }) => [kind, table.columns]))),
   };
-  const tables = [imu, gnss, reference].flatMap((table) => table ?? []);
+  const tables = [imu, gnss, reference, ...aids.map(({ table }) => table)].flatMap((table) => table ?? []);
   const values = tables.reduce((sum, table) => sum + table.rows * Object.keys(table.columns).length, 0);
   return { columns, sha256: note.sha256, bytes: values * 8 };
 }
+
+const readAids = (store: Store, recordingId: string, kinds: readonly AidKind[]) =>
+  Promise.all(
+    kinds.map(async (kind): Promise<{ kind: AidKind; table: ArrowTable }> => ({
+      kind,
+      table: await readTable(store, storeKeys.aid(recordingId, kind)),
+    })),
+  );
 
 export const notDecoded = () =>
   new JobFailed('not-decoded', 'The recording has not been decoded. Look at its problems on its page.');

@@ -48,6 +48,8 @@ export const storeKeys = {
   imu: (recordingId: string) => `recordings/${recordingId}/imu.arrow`,
   gnss: (recordingId: string) => `recordings/${recordingId}/gnss.arrow`,
   reference: (recordingId: string) => `recordings/${recordingId}/reference.arrow`,
+  /** Barometer, heading or odometer. */
+  aid: (recordingId: string, kind: string) => `recordings/${recordingId}/aid-${kind}.arrow`,
   /** What the decoded files are and their hashes; written last, so that a recording without it is not decoded. */
   decoded: (recordingId: string) => `recordings/${recordingId}/decoded.json`,
   /** GNSS-only baseline track. */
