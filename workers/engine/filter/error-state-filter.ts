@@ -1,60 +1,41 @@
 /**
- * The error-state filter over a recording, 15 states and those that are switched on behind them: strapdown at full rate, covariance at its own rate, GNSS fixes
- * at their exact measurement times, errors fed back at once (closed loop).
+ * The error-state filter over a recording, 15 states and those that are switched on behind them: strapdown at full rate,
+ * covariance at its own rate, GNSS fixes and other sensors' readings at their exact measurement times, errors fed back at
+ * once (closed loop).
  *
- * Read in this order: `advanceSample` (one IMU interval with the fixes that lie in it), `covarianceStep`,
- * `applyFix`, `feedBack`, `recover`.
+ * Read in this order: `advanceSample` (one IMU interval with the fixes that lie in it), `CarriedState.covarianceStep`,
+ * `applyFix`, `aid`, `feedBack`, then recovery.ts.
  */
 import type { Parameters } from '@/shared/contracts/parameters';
 import type { Outage } from '@/shared/contracts/runs';
 import type { AidColumns, ImuColumns } from '../types';
 import { ANGLE, ANGLE_BEND, DURATION, ImuIntervals } from '../strapdown/imu-intervals';
-import { NAV_ACCEL_BIAS, NAV_GYRO_BIAS } from '../strapdown/navigation-state';
-import { Strapdown } from '../strapdown/strapdown';
+import { NAV_GYRO_BIAS } from '../strapdown/navigation-state';
+import { CarriedState } from './carried-state';
 import { findClipping } from './clipping';
 import { ClippingWatch } from './clipping-watch';
 import { resetAttitudeCovariance } from './attitude-feedback';
 import { correctState } from './correct-state';
 import { DataAids } from './data-aids';
-import type { BudgetShare, ErrorBudget } from './error-budget';
 import type { AidName, FilterListener, FilterSnapshot, GroupName } from './filter-types';
 import { ALL_AXES, type Fixes } from './fixes';
 import { GapBridge } from './gap-bridge';
-import { Gate } from './gate';
+import { gatesOf, type Gate } from './gate';
 import { GnssModels } from './gnss-models';
 import { HeadingWatch } from './heading-watch';
 import { MeasurementUpdate } from './measurement-update';
-import { ProcessNoise } from './process-noise';
-import { OptionalStates } from './optional-states';
-import { Propagation } from './propagation';
 import { recoverGroups } from './recovery';
-import type { Tape } from './tape';
 import { VehicleAids } from './vehicle-aids';
-import { ATTITUDE, layoutOf, type StateLayout } from './states';
-import type { TransitionSource } from './transition';
-import { transitionOf } from './wide-transition';
+import { ATTITUDE } from './states';
 
 /** A fix this close to an IMU sample, s, counts as simultaneous. */
 const SAME_TIME_S = 1e-7;
 /** Gaps are bridged in steps of at most this, s. */
 const GAP_STEP_S = 0.02;
 
-export class ErrorStateFilter {
-  readonly strapdown: Strapdown;
-  /** Where which state lies. */
-  readonly layout: StateLayout;
-  /** States behind the fifteen; null where there are none. */
-  readonly optional: OptionalStates | null;
-  /** What the covariance's steps are formed from. */
-  readonly motion: TransitionSource;
-  /** Covariance of the error states, size × size, row by row. */
-  readonly p: Float64Array;
+export class ErrorStateFilter extends CarriedState {
   /** IMU sample that the state belongs to. */
   sample = 0;
-  /** Takes down what the smoother needs, where one is wanted. */
-  tape: Tape | null = null;
-  /** Splits the covariance by cause, where that is wanted. */
-  budget: ErrorBudget | null = null;
   /** Next fix to be looked at. */
   private fix = 0;
   readonly gates: Readonly<Record<GroupName | AidName, Gate>>;
@@ -63,11 +44,9 @@ export class ErrorStateFilter {
   /** Windows that may name aids. */
   private outages: readonly Outage[] = [];
   private readonly intervals: ImuIntervals;
-  private readonly propagation: Propagation;
   private readonly update: MeasurementUpdate;
   private readonly models: GnssModels;
   private readonly rate = new Float64Array(3);
-  readonly noise: ProcessNoise;
   private readonly stepS: number;
   private readonly headingWatch = new HeadingWatch();
   private readonly clipping: ClippingWatch;
@@ -77,35 +56,17 @@ export class ErrorStateFilter {
     private readonly imu: ImuColumns,
     private readonly fixes: Fixes,
     private withheld: Uint8Array,
-    readonly parameters: Parameters,
+    parameters: Parameters,
     leverArmM: readonly [number, number, number],
     private readonly listener: FilterListener,
     data: AidColumns | null = null,
   ) {
-    this.strapdown = new Strapdown(parameters.mechanisation.scheme);
-    this.layout = layoutOf(parameters);
-    const { size } = this.layout;
-    this.p = new Float64Array(size * size);
-    this.optional = OptionalStates.of(this.layout, leverArmM);
-    this.motion = this.optional === null ? this.strapdown : motionWith(this.strapdown, this.optional);
-    this.propagation = new Propagation(transitionOf(this.layout));
-    this.update = new MeasurementUpdate(size);
+    super(parameters, leverArmM);
+    this.update = new MeasurementUpdate(this.layout.size);
     this.intervals = new ImuIntervals(imu);
-    const gate = () => new Gate(parameters.gate);
-    this.gates = {
-      position: gate(),
-      velocity: gate(),
-      'zero-velocity': gate(),
-      'zero-rotation': gate(),
-      'non-holonomic': gate(),
-      barometer: gate(),
-      heading: gate(),
-      odometer: gate(),
-      attitude: gate(),
-    };
+    this.gates = gatesOf(parameters.gate);
     this.aids = VehicleAids.of(imu, parameters);
     this.data = DataAids.of(data, parameters.aids);
-    this.noise = new ProcessNoise(parameters);
     // A rate drawn on from the last two intervals has 2.5 times the variance of one.
     const { nominalS } = this.intervals;
     const rateNoise = nominalS > 0 ? (2.5 * this.noise.gyroWhite) / nominalS : 0;
@@ -145,7 +106,7 @@ export class ErrorStateFilter {
     const end = imu.timeS[k]!;
     if (intervals.isGap) this.reportGap(start, end);
     else this.optional?.scaleInterval(intervals.interval);
-    if (k >= this.clipping.from) this.enterClipping(k);
+    if (k >= this.clipping.from) this.clipping.enter(k, this);
     let from = 0;
     while (this.fix < fixes.count && fixes.timeS[this.fix]! <= end + SAME_TIME_S) {
       const j = this.fix;
@@ -162,7 +123,7 @@ export class ErrorStateFilter {
     if (from < 1) this.move(from, 1);
     this.sample = k;
     if (this.strapdown.sumForce[3]! >= this.stepS) this.covarianceStep();
-    if (k >= this.clipping.from) this.leaveClipping(k);
+    if (k >= this.clipping.from) this.clipping.leave(k, this);
     this.aids?.apply(k, this);
   }
 
@@ -183,28 +144,6 @@ export class ErrorStateFilter {
       data.apply(this);
     }
     return at;
-  }
-
-  /** Clipped samples: noise for what they may have missed, from the run's first sample to its last. */
-  private enterClipping(k: number): void {
-    const { run } = this.clipping;
-    if (run === null || k > run.from) return;
-    this.covarianceStep();
-    this.noise.gyroExtra = run.gyroNoise;
-    this.noise.accelExtra = run.accelNoise;
-    this.warn(
-      'clipped',
-      `${run.to - run.from + 1} IMU samples were at the end of the sensor's range; the uncertainty was widened over them.`,
-      this.timeS,
-    );
-  }
-
-  private leaveClipping(k: number): void {
-    if (k < this.clipping.run!.to) return;
-    this.covarianceStep();
-    this.noise.gyroExtra = 0;
-    this.noise.accelExtra = 0;
-    this.clipping.next();
   }
 
   /** Strapdown over a part of the loaded interval; a gap goes in small steps with noise of its own. */
@@ -244,49 +183,6 @@ export class ErrorStateFilter {
       `The IMU gave nothing for ${(end - start).toFixed(2)} s; the last rates were held and the uncertainty widened.`,
       start,
     );
-  }
-
-  /** Carries the covariance (and decaying biases) up to the strapdown's time. */
-  covarianceStep(): void {
-    const { strapdown, noise } = this;
-    const dt = strapdown.sumForce[3]!;
-    if (dt === 0) return;
-    this.propagate(this.p, dt);
-    this.tape?.writeStep(this.motion);
-    this.budget?.step(this.propagation, noise);
-    strapdown.resetSums();
-    this.optional?.resetSums();
-    if (noise.gyroDecay > 0) this.decay(NAV_GYRO_BIAS, Math.exp(-noise.gyroDecay * dt));
-    if (noise.accelDecay > 0) this.decay(NAV_ACCEL_BIAS, Math.exp(-noise.accelDecay * dt));
-  }
-
-  private propagate(p: Float64Array, dt: number): void {
-    const { motion, propagation, noise } = this;
-    propagation.transition.form(motion, noise.gyroDecay, noise.accelDecay);
-    noise.fill(dt);
-    propagation.propagate(p, noise.half);
-  }
-
-  private decay(at: number, factor: number): void {
-    const { nav } = this.strapdown;
-    for (let i = 0; i < 3; i += 1) nav[at + i] = nav[at + i]! * factor;
-  }
-
-  /** The covariance at the current sample in `out`, the filter's own left as it is between its steps. */
-  covarianceNow(out: Float64Array): Float64Array {
-    out.set(this.p);
-    const dt = this.strapdown.sumForce[3]!;
-    if (dt > 0) this.propagate(out, dt);
-    return out;
-  }
-
-  /** The error budget at the current sample; null where none is kept. */
-  budgetNow(): BudgetShare[] | null {
-    if (this.budget === null) return null;
-    const dt = this.strapdown.sumForce[3]!;
-    if (dt > 0) this.propagation.transition.form(this.motion, this.noise.gyroDecay, this.noise.accelDecay);
-    if (dt > 0) this.noise.fill(dt);
-    return this.budget.shares(dt > 0 ? this.propagation : null, this.noise);
   }
 
   /** Position, then velocity of fix j, at the share `at` of the loaded interval. */
@@ -404,12 +300,3 @@ export class ErrorStateFilter {
     Object.values(this.gates).forEach((gate, i) => gate.restore(saved.gates[i]!));
   }
 }
-
-/** The strapdown's sums, which keep their arrays, and beside them what was measured. */
-const motionWith = (strapdown: Strapdown, { sumMeasured }: OptionalStates): TransitionSource => ({
-  nav: strapdown.nav,
-  earth: strapdown.earth,
-  sumDcm: strapdown.sumDcm,
-  sumForce: strapdown.sumForce,
-  sumMeasured,
-});

@@ -3,7 +3,9 @@
  * long that the filter itself must be doubted.
  */
 import type { Parameters } from '@/shared/contracts/parameters';
+import { aidNameSchema } from '@/shared/contracts/runs';
 import { chiSquaredQuantile } from '../statistics/distributions';
+import type { AidName, GroupName } from './filter-types';
 
 /** Fewer rejections in a row than this never start a recovery. */
 const RECOVERY_MIN_COUNT = 3;
@@ -64,4 +66,11 @@ export class Gate {
     this.streakStartS = saved[1]!;
     this.judged = saved[2]!;
   }
+}
+
+/** A gate for each measurement group: a joint count would let good positions shut velocity out. */
+export function gatesOf(parameters: Parameters['gate']): Readonly<Record<GroupName | AidName, Gate>> {
+  const names = ['position', 'velocity', ...aidNameSchema.options] as const;
+  const gates = Object.fromEntries(names.map((name) => [name, new Gate(parameters)]));
+  return gates as Record<GroupName | AidName, Gate>;
 }

@@ -106,23 +106,20 @@ export class MeasurementUpdate {
    */
   private joseph(p: Float64Array, ph: Float64Array, s: Float64Array): void {
     const { gain, size } = this;
-    for (let i = 0; i < size; i += 1) {
-      const row = i * size;
-      const own = i * MAX_ROWS;
+    for (let i = 0, row = 0, own = 0; i < size; i += 1, row += size, own += MAX_ROWS) {
       const ka = gain[own]!;
       const kb = gain[own + 1]!;
       const kc = gain[own + 2]!;
       const ra = ka * s[0]! + kb * s[3]! + kc * s[6]! - ph[own]!;
       const rb = ka * s[1]! + kb * s[4]! + kc * s[7]! - ph[own + 1]!;
       const rc = ka * s[2]! + kb * s[5]! + kc * s[8]! - ph[own + 2]!;
-      for (let j = i; j < size; j += 1) {
-        const at = j * MAX_ROWS;
+      for (let j = i, at = own, mirror = row + i; j < size; j += 1, at += MAX_ROWS, mirror += size) {
         const value =
           p[row + j]! -
           (ka * ph[at]! + kb * ph[at + 1]! + kc * ph[at + 2]!) +
           (ra * gain[at]! + rb * gain[at + 1]! + rc * gain[at + 2]!);
         p[row + j] = value;
-        p[j * size + i] = value;
+        p[mirror] = value;
       }
     }
   }
@@ -130,8 +127,7 @@ export class MeasurementUpdate {
   /** out = PHᵀ, size × MAX_ROWS. */
   private project(p: Float64Array, out: Float64Array): void {
     const { h, columns, columnCount, size } = this;
-    for (let i = 0; i < size; i += 1) {
-      const row = i * size;
+    for (let i = 0, row = 0, to = 0; i < size; i += 1, row += size, to += MAX_ROWS) {
       let a = 0;
       let b = 0;
       let c = 0;
@@ -142,9 +138,9 @@ export class MeasurementUpdate {
         b += value * h[size + j]!;
         c += value * h[2 * size + j]!;
       }
-      out[i * MAX_ROWS] = a;
-      out[i * MAX_ROWS + 1] = b;
-      out[i * MAX_ROWS + 2] = c;
+      out[to] = a;
+      out[to + 1] = b;
+      out[to + 2] = c;
     }
   }
 

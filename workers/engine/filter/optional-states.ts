@@ -6,6 +6,7 @@
 import type { Parameters } from '@/shared/contracts/parameters';
 import { ANGLE, ANGLE_BEND, VELOCITY_INCREMENT } from '../strapdown/imu-intervals';
 import { STATES, type StateLayout } from './states';
+import type { TransitionSource } from './transition';
 
 const PPM = 1e-6;
 
@@ -56,6 +57,11 @@ export class OptionalStates {
     this.values = new Float64Array(layout.size - STATES);
     if (layout.leverArm >= 0) this.values.set(leverArmM, layout.leverArm - STATES);
     this.scales = layout.gyroScale >= 0 || layout.accelScale >= 0;
+  }
+
+  /** What the covariance's steps are formed from: the strapdown's sums, which keep their arrays, and what was measured. */
+  motionOf({ nav, earth, sumDcm, sumForce }: TransitionSource): TransitionSource {
+    return { nav, earth, sumDcm, sumForce, sumMeasured: this.sumMeasured };
   }
 
   /** The lever arm as it is estimated (a view, m); null where it is not a state. */

@@ -20,17 +20,17 @@ export class Propagation {
     const { product: m, transition } = this;
     const { size } = transition;
     const diagonal = size + 1;
-    for (let i = 0; i < size; i += 1) p[i * diagonal] = p[i * diagonal]! + halfNoise[i]!;
+    for (let i = 0, at = 0; i < size; i += 1, at += diagonal) p[at] = p[at]! + halfNoise[i]!;
     // Row c of m becomes column c of ΦP.
     transition.apply(p, size, 1, m, size);
     // Row i of P becomes Φ times row i of ΦP; the rows of biases and what follows them come from symmetry.
     transition.apply(m, 1, size, p, GYRO_BIAS);
     this.biasRows(p, size);
-    for (let i = 1; i < size; i += 1) {
+    for (let i = 1, row = size; i < size; i += 1, row += size) {
       const end = i < GYRO_BIAS ? i : GYRO_BIAS;
-      for (let j = 0; j < end; j += 1) p[i * size + j] = p[j * size + i]!;
+      for (let j = 0, mirror = i; j < end; j += 1, mirror += size) p[row + j] = p[mirror]!;
     }
-    for (let i = 0; i < size; i += 1) p[i * diagonal] = p[i * diagonal]! + halfNoise[i]!;
+    for (let i = 0, at = 0; i < size; i += 1, at += diagonal) p[at] = p[at]! + halfNoise[i]!;
   }
 
   /** Biases, and what follows them, among themselves: only the decay acts. */
