@@ -78,6 +78,18 @@ export function useMapRecording(id: string) {
   });
 }
 
+/** Accepts the remedy of a finding, or (null) takes the latest back; the recording is decoded again. */
+export function useRemedy(id: string) {
+  const client = useQueryClient();
+  return useMutation({
+    mutationFn: (code: string | null) =>
+      code === null
+        ? api<Recording>(`/recordings/${id}/remedies/undo`, { method: 'POST' })
+        : api<Recording>(`/recordings/${id}/remedies`, { method: 'POST', body: { code } }),
+    onSuccess: (recording) => keep(client, recording),
+  });
+}
+
 export function useDeleteRecording() {
   const client = useQueryClient();
   return useMutation({

@@ -15,10 +15,14 @@ export interface HealthCardProps {
   health: HealthReport;
   /** Shows a finding's first stretch on the plots. */
   onShow?: (interval: readonly [number, number]) => void;
+  /** Accepts the remedy of a finding; left out: nothing can be changed. */
+  onFix?: (code: string) => void;
+  /** The finding whose remedy is being accepted. */
+  fixing?: string | null;
 }
 
 /** What the intake found: the verdict first, then each finding with its figure, its times and what to do. */
-export function HealthCard({ health, onShow }: HealthCardProps) {
+export function HealthCard({ health, onShow, onFix, fixing }: HealthCardProps) {
   const { palette } = useTheme();
   const verdict = VERDICTS[health.verdict];
   const beyond = beyondVerdict(health.sentence, verdict.word);
@@ -55,6 +59,8 @@ export function HealthCard({ health, onShow }: HealthCardProps) {
           key={`${finding.code}-${finding.intervalsS[0]?.[0] ?? ''}`}
           finding={finding}
           onShow={onShow}
+          onFix={onFix}
+          busy={fixing === finding.code}
         />
       ))}
     </Card>
@@ -85,7 +91,12 @@ function Headline({
   );
 }
 
-function Finding({ finding, onShow }: { finding: HealthFinding; onShow: HealthCardProps['onShow'] }) {
+interface FindingProps extends Pick<HealthCardProps, 'onShow' | 'onFix'> {
+  finding: HealthFinding;
+  busy: boolean;
+}
+
+function Finding({ finding, onShow, onFix, busy }: FindingProps) {
   const { palette } = useTheme();
   const { tone, icon, word } = SEVERITIES[finding.severity];
   const first = finding.intervalsS[0];
@@ -105,16 +116,19 @@ function Finding({ finding, onShow }: { finding: HealthFinding; onShow: HealthCa
             {finding.remedy}
           </Text>
         ) : null}
-        {first && onShow ? (
-          <View style={styles.show}>
+        <View style={finding.fix && onFix ? styles.buttons : styles.show}>
+          {finding.fix && onFix ? (
+            <Button label={finding.fix.label} icon="check" busy={busy} onPress={() => onFix(finding.code)} />
+          ) : null}
+          {first && onShow ? (
             <Button
               label="Show on the plots"
               aria-label={`Show on the plots: ${finding.sentence}`}
               kind="plain"
               onPress={() => onShow(first)}
             />
-          </View>
-        ) : null}
+          ) : null}
+        </View>
       </View>
       {finding.figure ? (
         <Quantity value={finding.figure.value} unit={finding.figure.unit} size="label" align="right" />
@@ -175,4 +189,5 @@ const styles = StyleSheet.create({
   },
   words: { flex: 1, gap: 2 },
   show: { flexDirection: 'row', marginLeft: -space.l },
+  buttons: { flexDirection: 'row', flexWrap: 'wrap', gap: space.s, paddingTop: space.xs },
 });

@@ -21,7 +21,7 @@ import { DeleteDialog } from './DeleteDialog';
 import { EditDialog } from './EditDialog';
 import { FactsCard } from './FactsCard';
 import { FilesCard } from './FilesCard';
-import { HealthCard } from './HealthCard';
+import { Health, RemediesCard } from './RemediesCard';
 import { NotesCard } from './NotesCard';
 import { ProblemsCard } from './ProblemsCard';
 import { sourceLine } from './RecordingCard';
@@ -75,7 +75,8 @@ function Loaded({ recording }: { recording: Recording }) {
       <View style={extraWide ? styles.columns : styles.stack}>
         <View style={extraWide ? styles.main : styles.stack}>
           <State recording={recording} />
-          {recording.health ? <HealthCard health={recording.health} onShow={show} /> : null}
+          {recording.health ? <Health recording={recording} health={recording.health} onShow={show} /> : null}
+          <RemediesCard recording={recording} />
           {recording.status === 'ready' && recording.startS !== null && recording.endS !== null ? (
             <View ref={plots}>
               <ChannelsCard

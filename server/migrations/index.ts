@@ -3,6 +3,7 @@ import { createAccounts } from './2026-01-10-create-accounts';
 import { createMessages } from './2026-01-10-create-messages';
 import { createRecordings } from './2026-01-11-create-recordings';
 import { createRunsAndSets } from './2026-01-12-create-runs-and-sets';
+import { addRemedies } from './2026-12-01-add-remedies';
 import { addSensorModel } from './2026-12-01-add-sensor-model';
 import { addSmoothingAndBudget } from './2026-12-01-add-smoothing-and-budget';
 import { allowSecondImuFile } from './2026-12-01-allow-second-imu-file';
@@ -16,6 +17,7 @@ export const MIGRATIONS: readonly Migration[] = [
   addSmoothingAndBudget,
   addSensorModel,
   allowSecondImuFile,
+  addRemedies,
 ];
 
 /** Brings the database at `url` up to date; answers the names that were applied. */

@@ -16,6 +16,7 @@ import type {
   HealthReport,
   IntakeProblem,
   RecordingStatus,
+  Remedy,
   Strip,
   TimeOrigin,
 } from '@/shared/contracts/recordings';
@@ -23,6 +24,11 @@ import type { Scenario } from '@/shared/contracts/scenarios';
 import type { User } from './accounts';
 import { bind, idColumn } from './base';
 import type { Vehicle } from './vehicle';
+
+/** A remedy with the map that was given before it; null: guessed from the headers. */
+export interface AcceptedRemedy extends Remedy {
+  before: ChannelMap | null;
+}
 
 export class Recording extends Model<InferAttributes<Recording>, InferCreationAttributes<Recording>> {
   declare id: CreationOptional<string>;
@@ -39,6 +45,8 @@ export class Recording extends Model<InferAttributes<Recording>, InferCreationAt
   declare givenMap: CreationOptional<ChannelMap | null>;
   /** In force: given, or guessed. */
   declare channelMap: CreationOptional<ChannelMap | null>;
+  /** Accepted, in order; what they stood on is kept for the way back. */
+  declare remedies: CreationOptional<AcceptedRemedy[]>;
   declare scenario: CreationOptional<Scenario | null>;
   declare startS: CreationOptional<number | null>;
   declare endS: CreationOptional<number | null>;
@@ -88,6 +96,7 @@ export const bindRecording = (sequelize: Sequelize) =>
     previews: { type: DataTypes.JSONB, defaultValue: [] },
     givenMap: DataTypes.JSONB,
     channelMap: DataTypes.JSONB,
+    remedies: { type: DataTypes.JSONB, defaultValue: [] },
     scenario: DataTypes.JSONB,
     startS: DataTypes.DOUBLE,
     endS: DataTypes.DOUBLE,

@@ -22,6 +22,7 @@ export const presentRecording = (row: RecordingRow): Recording => ({
   strip: row.strip,
   files: presentFiles(row),
   channelMap: row.channelMap ?? row.givenMap,
+  remedies: (row.remedies ?? []).map(({ code, label, at, by }) => ({ code, label, at, by })),
   previews: row.previews ?? [],
 });
 

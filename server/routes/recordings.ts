@@ -8,6 +8,7 @@ import {
   recordingMetaSchema,
   recordingPatchSchema,
   recordingSchema,
+  remedyRequestSchema,
   seriesQuerySchema,
   seriesSchema,
 } from '@/shared/contracts/recordings';
@@ -26,6 +27,7 @@ import {
   listRecordings,
   mapRecording,
 } from '../services/recordings';
+import { acceptRemedy, undoRemedy } from '../services/remedies';
 import { sensorNoise } from '../services/sensor-noise';
 import { idParams } from './parts';
 import { type Route, workspaceRoute } from './route';
@@ -125,6 +127,30 @@ export const recordingRoutes: Route[] = [
     success: { status: 202, description: 'Decoding follows', ...one },
     handle: async ({ ctx, actor, params, body }) =>
       presentRecording(await mapRecording(ctx, actor, params.id, body)),
+  }),
+  workspaceRoute({
+    method: 'post',
+    path: '/recordings/:id/remedies',
+    tag,
+    summary: 'Accept a remedy of the health report, and decode again',
+    permission: 'recording:write',
+    params: idParams,
+    body: remedyRequestSchema,
+    success: { status: 202, description: 'Decoding follows', ...one },
+    failures: { 409: 'Not decoded, or changed by somebody else' },
+    handle: async ({ ctx, actor, params, body }) =>
+      presentRecording(await acceptRemedy(ctx, actor, params.id, body.code)),
+  }),
+  workspaceRoute({
+    method: 'post',
+    path: '/recordings/:id/remedies/undo',
+    tag,
+    summary: 'Take the latest remedy back, and decode again',
+    permission: 'recording:write',
+    params: idParams,
+    success: { status: 202, description: 'Decoding follows', ...one },
+    failures: { 409: 'None is in force, or changed by somebody else' },
+    handle: async ({ ctx, actor, params }) => presentRecording(await undoRemedy(ctx, actor, params.id)),
   }),
   workspaceRoute({
     method: 'get',

@@ -176,6 +176,7 @@ export async function mapRecording(
   const recording = await getRecording(ctx, actor, id);
   await ctx.db.transaction(async (transaction) => {
     await redecode(ctx, id, map, transaction);
+    await ctx.db.Recording.update({ remedies: [] }, { where: { id }, transaction });
     await recordBy(
       ctx,
       actor,

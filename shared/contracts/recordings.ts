@@ -323,6 +323,17 @@ export const timeOriginSchema = z.object({
 });
 export type TimeOrigin = z.infer<typeof timeOriginSchema>;
 
+/** A remedy of the health report that somebody accepted. */
+export const remedySchema = z.object({
+  code: z.string().describe('Of the finding.'),
+  label: z.string(),
+  at: isoTimeSchema,
+  by: z.string(),
+});
+export type Remedy = z.infer<typeof remedySchema>;
+/** POST /recordings/:id/remedies. */
+export const remedyRequestSchema = z.object({ code: z.string().min(1).max(100) });
+
 export const recordingFileSchema = z.object({
   role: fileRoleSchema,
   name: z.string(),
@@ -351,6 +362,7 @@ export const recordingSchema = z.object({
   strip: stripSchema.nullable(),
   files: z.array(recordingFileSchema),
   channelMap: channelMapSchema.nullable().describe('The map in force: given, or guessed from the headers.'),
+  remedies: z.array(remedySchema).describe('Accepted, in order; mapping by hand begins anew.'),
   previews: z.array(filePreviewSchema).describe('Empty in lists.'),
 });
 export type Recording = z.infer<typeof recordingSchema>;

@@ -8,6 +8,7 @@ export const recordingOf = (overrides: Partial<Recording> = {}): Recording => ({
   status: 'ready',
   progress: 1,
   problems: [],
+  remedies: [],
   vehicleId: null,
   vehicleName: 'Crawler 2',
   createdAt: '2026-11-03T08:00:00Z',
