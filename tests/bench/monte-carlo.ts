@@ -40,7 +40,10 @@ for (const { name, scenario } of scenarios)
     const title = `${name}, bias wander ${wander}, start ${start}`;
     if (!title.includes(part)) continue;
     const began = performance.now();
-    const result = monteCarlo({ name, scenario, start, wander, outagesS, settleS: 120 }, Number(runs));
+    const result = monteCarlo(
+      { name, scenario, start, wander, outagesS, settleS: 120, smooth: true },
+      Number(runs),
+    );
     print(`${title}, ${runs} runs of ${scenario.durationS} s`, result);
     console.log(`  ${((performance.now() - began) / 1000).toFixed(0)} s\n`);
   }
@@ -48,14 +51,17 @@ for (const { name, scenario } of scenarios)
 function print(title: string, result: MonteCarloResult): void {
   console.log(title);
   for (const failure of result.failures) console.log(`  FAILED ${failure}`);
-  for (const block of BLOCK_NAMES) {
-    const values = result.nees[block];
-    const n = block === 'all' ? 15 : 3;
-    const [low, high] = averageBounds(values.length, n);
-    console.log(
-      `  NEES ${block.padEnd(10)}${figure(values)}   one epoch of all runs: [${low.toFixed(2)}, ${high.toFixed(2)}]`,
-    );
-  }
+  for (const [title, nees] of [
+    ['NEES ', result.nees],
+    ['smoothed', result.smoothedNees],
+  ] as const)
+    for (const block of BLOCK_NAMES) {
+      const values = nees[block];
+      const [low, high] = averageBounds(values.length, block === 'all' ? 15 : 3);
+      console.log(
+        `  ${title} ${block.padEnd(10)}${figure(values)}   one epoch of all runs: [${low.toFixed(2)}, ${high.toFixed(2)}]`,
+      );
+    }
   for (const group of ['position', 'velocity'] as const)
     console.log(`  NIS  ${group.padEnd(10)}${figure(result.nis[group])}`);
   console.log(

@@ -23,6 +23,8 @@ export interface MonteCarloCase {
   wander?: ImuModel['wander'];
   /** Epochs before this are not counted, s. */
   settleS: number;
+  /** The smoother too. */
+  smooth?: boolean;
 }
 
 const BLOCKS = { position: [0, 3], velocity: [3, 3], attitude: [6, 3], gyroBias: [9, 3], accelBias: [12, 3], all: [0, 15] } as const; // prettier-ignore
@@ -32,6 +34,8 @@ export const BLOCK_NAMES = Object.keys(BLOCKS) as Block[];
 export interface MonteCarloResult {
   /** Per run: mean over its epochs of the NEES of each block. */
   nees: Record<Block, number[]>;
+  /** The same of the smoothed solution, its stretches without GNSS included; empty where it was not asked for. */
+  smoothedNees: Record<Block, number[]>;
   /** Per run: mean NIS of accepted and refused fixes alike. */
   nis: { position: number[]; velocity: number[] };
   rejected: number;
@@ -104,9 +108,13 @@ function givenStart({ reference }: SimulatedRecording, seed: number): Parameters
   };
 }
 
+const emptyNees = () =>
+  Object.fromEntries(BLOCK_NAMES.map((block) => [block, []])) as unknown as Record<Block, number[]>;
+
 export function monteCarlo(study: MonteCarloCase, runs: number, firstSeed = 1): MonteCarloResult {
   const result: MonteCarloResult = {
-    nees: Object.fromEntries(BLOCK_NAMES.map((block) => [block, []])) as unknown as Record<Block, number[]>,
+    nees: emptyNees(),
+    smoothedNees: emptyNees(),
     nis: { position: [], velocity: [] },
     rejected: 0,
     measured: 0,
@@ -135,24 +143,19 @@ function oneRun(
   result: MonteCarloResult,
 ): void {
   const outages = study.outagesS.map(([startS, endS]) => ({ startS, endS, withhold: 'gnss' as const }));
-  const run = new Run(recording, { parameters, leverArmM, outages, outputRateHz: 1 });
-  const sums = new Map<Block, { sum: number; count: number }>(
-    BLOCK_NAMES.map((block) => [block, { sum: 0, count: 0 }]),
-  );
+  const smooth = study.smooth === true;
+  const run = new Run(recording, { parameters, leverArmM, outages, outputRateHz: 1, smooth });
   const error = new ErrorVector(recording);
+  const coasts = (timeS: number) => study.outagesS.some(([from, to]) => timeS >= from && timeS < to + 5);
+  const filtered = new NeesMeans(error, (timeS) => timeS >= study.settleS && !coasts(timeS));
+  const smoothed = new NeesMeans(error, (timeS) => timeS >= study.settleS);
   // The run hands every kept state with its covariance to its comparison with truth: listen there.
-  run.truth!.add = (timeS, nav, p) => {
-    if (timeS < study.settleS || study.outagesS.some(([from, to]) => timeS >= from && timeS < to + 5)) return;
-    const x = error.at(timeS, nav);
-    for (const block of BLOCK_NAMES) {
-      const entry = sums.get(block)!;
-      entry.sum += blockNees(x, p, BLOCKS[block][0], BLOCKS[block][1]);
-      entry.count += 1;
-    }
-  };
+  run.truth!.add = filtered.add;
+  if (smooth) run.smoothedTruth!.add = smoothed.add;
   while (!run.advance(100_000));
   const finished = run.finish();
-  for (const [block, { sum, count }] of sums) result.nees[block].push(sum / count);
+  filtered.give(result.nees);
+  if (smooth) smoothed.give(result.smoothedNees);
   for (const group of ['position', 'velocity'] as const) {
     const table = finished[group];
     const nis = table.nis.filter((_, i) => table.timeS[i]! >= study.settleS);
@@ -191,6 +194,29 @@ class ErrorVector {
       x[ACCEL_BIAS + i] = nav[NAV_ACCEL_BIAS + i]! - recording.accelBias[i][k]!;
     }
     return x;
+  }
+}
+
+/** Means of a run's NEES over the epochs that count. */
+class NeesMeans {
+  private readonly sums = new Map(BLOCK_NAMES.map((block) => [block, 0]));
+  private count = 0;
+
+  constructor(
+    private readonly error: ErrorVector,
+    private readonly counts: (timeS: number) => boolean,
+  ) {}
+
+  readonly add = (timeS: number, nav: Float64Array, p: Float64Array): void => {
+    if (!this.counts(timeS)) return;
+    const x = this.error.at(timeS, nav);
+    for (const block of BLOCK_NAMES)
+      this.sums.set(block, this.sums.get(block)! + blockNees(x, p, BLOCKS[block][0], BLOCKS[block][1]));
+    this.count += 1;
+  };
+
+  give(to: Record<Block, number[]>): void {
+    for (const [block, sum] of this.sums) to[block].push(sum / this.count);
   }
 }
 

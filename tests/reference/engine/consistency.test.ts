@@ -21,6 +21,7 @@ const drive: MonteCarloCase = {
   start: 'given',
   outagesS: [[140, 200]],
   settleS: 60,
+  smooth: true,
 };
 const result = monteCarlo(drive, RUNS);
 const rootMean = (values: number[]) => Math.sqrt(mean(values.map((x) => x * x)));
@@ -41,6 +42,21 @@ test.each([
   expect(average).toBeGreaterThan(low);
   expect(average).toBeLessThan(high);
 });
+
+test.each([
+  ['position', 3],
+  ['velocity', 3],
+  ['attitude', 3],
+  ['all', 15],
+] as const)(
+  'the smoother’s average NEES of %s likewise, the stretch without GNSS included',
+  (block, dimension) => {
+    const [low, high] = averageBounds(RUNS, dimension);
+    const average = mean(result.smoothedNees[block]);
+    expect(average).toBeGreaterThan(low);
+    expect(average).toBeLessThan(high);
+  },
+);
 
 test('average NIS of position and velocity is 3; clean fixes are refused at the gate’s own rate', () => {
   const fixes = result.measured / 2;
