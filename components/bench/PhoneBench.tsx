@@ -65,6 +65,7 @@ export function PhoneBench({
         />
       )}
       <RunProgressLine bench={bench} />
+      {open ? null : <RunProblem bench={bench} />}
       <View style={[styles.card, { backgroundColor: palette.sheet, borderColor: palette.rule }]}>
         <VisuallyHidden>
           <Text level={2}>Charts</Text>
@@ -85,7 +86,6 @@ export function PhoneBench({
       </View>
       {open ? null : (
         <>
-          <RunProblem bench={bench} />
           <Headline bench={bench} columns={2} />
           <RunFigures bench={bench} />
           <Findings bench={bench} />

@@ -88,6 +88,7 @@ const stopFields: readonly ParameterField[] = [
     label: 'Accelerometer spread at a stop below',
     quantity: 'accelBias',
     unit: 'm/s²',
+    hint: 'too high: a smooth drive at steady speed passes for a stop',
     needs: STOPS,
   },
 ];
