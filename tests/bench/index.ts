@@ -12,7 +12,7 @@ import { benchStack } from './stack';
 const script = (file: string) => (args: string[]) => void runBundled(`tests/bench/${file}.ts`, args);
 const count = (args: string[]) => (args[0] === undefined ? undefined : Number(args[0]));
 
-/** In the order of their arguments: megabytes; runs and part of a title; hours; seeds. */
+/** In the order of their arguments: megabytes; runs and part of a title; hours; seeds; seeds. */
 const BENCHES: Record<string, (args: string[]) => void | Promise<void>> = {
   engine: benchEngine,
   stack: benchStack,
@@ -20,6 +20,7 @@ const BENCHES: Record<string, (args: string[]) => void | Promise<void>> = {
   closure: script('closure'),
   'monte-carlo': script('monte-carlo'),
   allan: script('allan'),
+  robustness: script('robustness'),
   search: (args) => benchSearch(count(args)),
 };
 const BY_DEFAULT = ['engine', 'stack'];

@@ -1,6 +1,7 @@
 import { parametersSchema } from '@/shared/contracts/parameters';
 import { createRun, type ImuColumns, type RunResult } from '@/workers/engine';
 import { findClipping } from '@/workers/engine/filter/clipping';
+import { addShock } from '@/tests/support/shock';
 import { requestOf, simulateCase } from '../support/monte-carlo';
 
 const DEFAULTS = parametersSchema.parse({}).clipping;
@@ -58,29 +59,11 @@ describe('a shock beyond the range, then no GNSS', () => {
       { motion: 'road', durationS: 160, imuRateHz: 100, staticStartS: 20, seed },
       { clipping: { enabled, accelRangeMPerS2: RANGE } },
     );
-    const { imu, reference } = simulated.recording;
-    // What is felt and cut: up to the range; what the vehicle does: the whole. Its speed changes by the rest.
-    const k = imu.timeS.findIndex((t) => t >= 99.9);
-    const missed = 1.5; // m/s: 3 samples of 10 ms, 50 m/s² beyond the range
-    for (let i = k; i < k + 3; i += 1) imu.accel[0][i] = RANGE;
-    const felt = 3 * 0.01 * RANGE;
-    const [roll, pitch, yaw] = reference.attitude.map((column) => column[k]!) as [number, number, number];
-    expect(Math.abs(roll) + Math.abs(pitch)).toBeLessThan(0.5);
-    const shift = felt + missed;
-    for (let i = k; i < imu.timeS.length; i += 1) {
-      // From the shock on the true vehicle is faster by the whole of it, along its heading then.
-      const t = imu.timeS[i]! - imu.timeS[k]!;
-      reference.velocityNed[0][i] = reference.velocityNed[0][i]! + shift * Math.cos(yaw);
-      reference.velocityNed[1][i] = reference.velocityNed[1][i]! + shift * Math.sin(yaw);
-      reference.latRad[i] = reference.latRad[i]! + (shift * Math.cos(yaw) * t) / 6.37e6;
-      reference.lonRad[i] =
-        reference.lonRad[i]! + (shift * Math.sin(yaw) * t) / (6.39e6 * Math.cos(reference.latRad[i]!));
-    }
+    addShock(simulated.recording, { atS: 99.9, samples: 3, shockMPerS2: 80, rangeMPerS2: RANGE });
     const run = createRun(
       simulated.recording,
       requestOf(simulated, { outages: [{ startS: 99.8, endS: 130, withhold: 'gnss' }] }),
     );
-    // GNSS after the outage still tells of the drive without the shock: only the window counts.
     while (!run.advance(1e6));
     return run.finish();
   }
