@@ -17,7 +17,8 @@ export interface CsvLayout {
 }
 
 const DELIMITERS = [';', '\t', '|', ','] as const;
-const COMMENT = /^\s*(?:[#%]|\/\/)/;
+/** Comments; and sentences of a receiver that share the log with the table. */
+const COMMENT = /^\s*(?:[#%]|\/\/|\$[A-Z]{2}[A-Z]{3}$|\$[A-Z]{2}[A-Z]{3},)/;
 /** A spreadsheet's own line, in front of everything. */
 const SEPARATOR_LINE = /^\s*"?sep=(.)"?\s*$/i;
 /** Lines that the layout is judged by, and how long a preamble may be. */

@@ -5,7 +5,7 @@ import { Clock } from './clock';
 import type { CsvHead } from './csv';
 import { ColumnFinder, type FoundColumn } from './find-columns';
 import { guessed, type Guess } from './guess';
-import { guessPosition, type GuessedPosition } from './guess-position';
+import { areWhole, guessPosition, type GuessedPosition } from './guess-position';
 import { guessTime, type GuessedTime } from './guess-time';
 import { guessVelocity, type GuessedVelocity } from './guess-velocity';
 import { namesOtherDevice } from './header-words';
@@ -27,6 +27,8 @@ export function guessGnssMap(head: CsvHead, merged = false): Guess<GnssMap> {
   const velocity = velocityOf(head, find, time, position.map);
   const positionSigma = guessPositionSigma(find);
   const velocitySigma = guessVelocitySigma(find);
+  if (position.map.unit === '1e-7deg')
+    takeMillimetres(head, find, velocity.map, positionSigma, velocitySigma);
   if (velocity.map) map.velocity = velocity.map;
   if (positionSigma) map.positionSigma = positionSigma;
   if (velocity.map && velocitySigma) map.velocitySigma = velocitySigma;
@@ -79,6 +81,23 @@ function velocityOf(head: CsvHead, find: Find, time: GuessedTime, position: Gnss
   const inDegrees = position.unit === 'deg' && place[0] && place[1] ? ([place[0], place[1]] as const) : null;
   return guessVelocity(head, find, (row) => clock.read(row) ?? NaN, inDegrees);
 } // prettier-ignore
+
+/** Beside angles in 10⁻⁷ degrees whole numbers without a unit are mm and mm/s, as receivers send them. */
+function takeMillimetres(
+  head: CsvHead,
+  find: Find,
+  velocity: GnssMap['velocity'],
+  positionSigma: SigmaMap | null,
+  velocitySigma: SigmaMap | null,
+): void {
+  const whole = (...channels: GnssChannel[]) => {
+    const columns = channels.flatMap((channel) => find(channel) ?? []);
+    return columns.every(({ unit }) => unit === null) && areWhole(head, columns);
+  };
+  if (velocity?.frame === 'ned' && whole('vn', 've', 'vd')) velocity.unit = 'mm/s';
+  if (positionSigma && whole('sigmaHorizontal', 'sigmaVertical')) positionSigma.unit = 'mm';
+  if (velocitySigma && whole('sigmaSpeed')) velocitySigma.unit = 'mm/s';
+}
 
 /** A merged log that writes the last fix beside every IMU sample: far fewer positions than rows with one. */
 function holdsFixes(head: CsvHead, position: GnssMap['position']): boolean {

@@ -35,6 +35,8 @@ export function guessPosition(head: CsvHead, find: Find): GuessedPosition {
     heightDatum: height === sea && sea !== null ? 'sea-level' : 'ellipsoid',
   };
   if (height) map.height = height.header;
+  // Receivers that count angles in 10⁻⁷ degrees count lengths in mm.
+  if (height && unit === '1e-7deg' && height.unit === null && areWhole(head, [height])) map.heightUnit = 'mm';
   const [ns, ew] = [find('latHemisphere'), find('lonHemisphere')];
   if (ns && ew && holdsLetters(head, ns, /^[NS]/i) && holdsLetters(head, ew, /^[EW]/i))
     Object.assign(map, { latHemisphere: ns.header, lonHemisphere: ew.header });
@@ -117,6 +119,12 @@ function valuesOf(head: CsvHead, { index }: FoundColumn): number[] {
     const value = numberIn(row[index], head.decimalComma) ?? degreesIn(row[index], head.decimalComma);
     return value === undefined || Number.isNaN(value) || value === 0 ? [] : [value];
   });
+}
+
+/** Whole numbers and at least one of them. */
+export function areWhole(head: CsvHead, columns: readonly FoundColumn[]): boolean {
+  const values = columns.flatMap((column) => valuesOf(head, column));
+  return values.length > 0 && values.every(Number.isInteger);
 }
 
 const holdsLetters = (head: CsvHead, { index }: FoundColumn, letter: RegExp) =>

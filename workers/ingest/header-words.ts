@@ -43,7 +43,20 @@ export interface HeaderReading {
 }
 
 /** Words that say which device a column belongs to and nothing else. */
-const IMU_WORDS = ['imu', 'ins', 'sensor', 'body', 'raw', 'cal', 'calibrated', 'data'];
+const IMU_WORDS = [
+  'imu',
+  'ins',
+  'sensor',
+  'body',
+  'raw',
+  'cal',
+  'calibrated',
+  'data',
+  'field',
+  'msg',
+  'header',
+  'value',
+];
 const GNSS_WORDS = ['gnss', 'gps', 'rtk', 'receiver', 'antenna', 'nav', 'pvt', 'raw', 'data'];
 /** Units in three parts at most: `m_s_2`. */
 const MAX_UNIT_TOKENS = 3;

@@ -148,8 +148,8 @@ export function noOverlap(role: 'gnss' | 'reference', imu: [number, number], oth
   return rejection(
     'no-overlap', { file: role },
     `The ${FILE_NAMES[role]} and the IMU file do not overlap in time: the IMU runs from ${span(imu)}, the ${FILE_NAMES[role]} from ${span(other)} on the same axis.`,
-    'Check that both belong to the same drive; where their clocks differ, give the offset on the mapping screen.',
+    `Check that both belong to the same drive; where their clocks differ, give the offset on the mapping screen: ${seconds(imu[0] - other[0])} on the times of the ${FILE_NAMES[role]} would make both begin together.`,
   ); // prettier-ignore
 }
 
-const seconds = (value: number) => `${Number(value.toPrecision(12))} s`;
+const seconds = (value: number) => `${Number(value.toFixed(6))} s`;

@@ -9,6 +9,10 @@ import { unixToIso } from './utc';
 const START = /\$[A-Z]{2}[A-Z]{3},/;
 const DAY_S = 86_400;
 
+/** Whether some lines are sentences: a log may hold them among rows of a table. */
+export const holdsNmea = (text: string) =>
+  text.split('\n').filter((line) => /^\s*\$[A-Z]{2}[A-Z]{3},/.test(line)).length > 1;
+
 export function looksLikeNmea(text: string): boolean {
   const lines = text
     .slice(0, 8192)

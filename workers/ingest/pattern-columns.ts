@@ -18,12 +18,17 @@ export interface SensedTriple {
 }
 
 const AXES = ['x', 'y', 'z'];
+/** Logs of arrays number their axes. */
+const INDEXED = /^([^[({]*?)[[_.(]?([0-2])[\])]?$/;
 const SYLLABLES: Record<Sensor, RegExp> = {
   gyro: /gyr|omega|\bang|rate|rot(?!ation (vector|matrix))|\bw\b|spin|turn/,
   accel: /acc|force|\blin|\ba\b|\bf\b/,
 };
-const OTHERS = /mag|euler|quat|orient|vel|speed|pos|grav|baro|\bm\b/;
+/** An angular velocity is a rate, any other velocity is none; what tells of errors is no measurement. */
+const OTHERS =
+  /mag|euler|quat|orient|(?<!ang\w* ?)vel|speed|pos|grav|baro|^m\b|cov|var|bias|std|sigma|noise|offset|temp|clip|integral|rms|status/;
 
+const INCREMENTS = ['rad', 'deg', 'm/s', 'g*s'];
 /** Words behind the axis that are no unit. */
 const PLAIN_TAILS = ['raw', 'cal', 'calibrated', 'data', 'axis', 'imu', 'sensor'];
 
@@ -89,18 +94,16 @@ function groupsOf(head: CsvHead): Group[] {
 }
 
 function axisOf(header: string): { axis: number; pattern: string } | null {
-  const tokens = words(
-    header
-      .replace(/([a-z])([A-Z])/g, '$1 $2')
-      .toLowerCase()
-      .replace(/[([{].*$/, ''),
-  );
+  const plain = header.replace(/([a-z])([A-Z])/g, '$1 $2').toLowerCase();
+  const tokens = words(plain.replace(/[([{][^0-9].*$/, ''));
   const at = tokens.findLastIndex((token) => AXES.includes(token));
   if (at >= 0)
     return { axis: AXES.indexOf(tokens[at]!), pattern: tokens.filter((_, i) => i !== at).join(' ') };
-  const last = tokens[0] ?? '';
-  const axis = AXES.indexOf(last.at(-1) ?? '');
-  return axis < 0 ? null : { axis, pattern: [last.slice(0, -1), ...tokens.slice(1)].join(' ') };
+  const first = tokens[0] ?? '';
+  const axis = AXES.indexOf(first.at(-1) ?? '');
+  if (axis >= 0) return { axis, pattern: [first.slice(0, -1), ...tokens.slice(1)].join(' ') };
+  const indexed = INDEXED.exec(plain.trim());
+  return indexed && { axis: Number(indexed[2]), pattern: words(indexed[1]!).join(' ') };
 }
 
 /** Whether anything stands where a unit would: one that is not known is not passed over. */
@@ -109,15 +112,19 @@ const namesUnit = (head: CsvHead, columns: Triple) =>
     const tokens = words(header.toLowerCase());
     const tail = tokens.slice(tokens.findLastIndex((token) => AXES.includes(token)) + 1);
     const after = tail.length === tokens.length ? [] : tail.filter((token) => !PLAIN_TAILS.includes(token));
-    return after.length > 0 || /[([{]/.test(header) || (head.units?.[index] ?? '') !== '';
+    return after.length > 0 || /[([{][^0-9]/.test(header) || (head.units?.[index] ?? '') !== '';
   });
 
+/** The unit of a rate or an acceleration that all three name; one of increments is more likely cut short. */
 function commonUnit(head: CsvHead, columns: Triple, quantity: 'rate' | 'accel'): string | null {
   const units = columns.map(({ header, index }) => {
-    const readings = readHeader(header, head.units?.[index] ?? null);
+    const plain = INDEXED.exec(header)?.[1] ?? header;
+    const readings = readHeader(plain, head.units?.[index] ?? null);
     return readings.flatMap(({ unit }) => (unit === null ? [] : (unitOf(quantity, unit) ?? [])))[0] ?? null;
   });
-  return units.every((unit) => unit === units[0]) ? (units[0] ?? null) : null;
+  const [unit] = units;
+  const alike = unit && units.every((one) => one === unit) && !INCREMENTS.includes(unit);
+  return alike ? unit : null;
 }
 
 const withUnit = (columns: Triple, unit: string) => columns.map((column) => ({ ...column, unit })) as Triple;

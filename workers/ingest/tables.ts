@@ -3,7 +3,7 @@ import type { FileRole } from '@/shared/contracts/recordings';
 import type { Store } from '../store/types';
 import { csvHead, headText, readRows, type CsvBatch, type CsvHead } from './csv';
 import { gpxHead, gpxRows, looksLikeXml } from './gpx';
-import { looksLikeNmea, nmeaHead, nmeaRows } from './nmea';
+import { holdsNmea, looksLikeNmea, nmeaHead, nmeaRows } from './nmea';
 import type { TableNotes } from './table-notes';
 import { empty, openText, type RawFile } from './text-source';
 
@@ -21,7 +21,7 @@ export async function readTableHead(store: Store, file: RawFile): Promise<CsvHea
 
 function headOf(text: string, complete: boolean, role: FileRole): CsvHead {
   if (!text.trim()) throw empty({ role });
-  if (looksLikeNmea(text)) return nmeaHead(text, complete, role);
+  if (looksLikeNmea(text) || (role === 'gnss' && holdsNmea(text))) return nmeaHead(text, complete, role);
   return looksLikeXml(text) ? gpxHead(text, complete, role) : csvHead(text, complete, role);
 }
 

@@ -30,7 +30,7 @@ export const TIME_WORDS: ChannelWords = {
   names: [
     'time', 't', 'timestamp', 'timeofday', 'localtime', 'gpstime',  'timestamps', 'times', 'ts', 'stamp', 'timetag', 'sampletime', 'systemtime', 'hosttime',
     'elapsed', 'elapsedtime', 'timeelapsed', 'secondselapsed', 'unixtime', 'unix', 'epoch', 'epochtime', 'posixtime', 'clock',
-    'utctime', 'timeutc', 'utc', 'datetime', 'dateandtime', 'isotime', 'date', 'timeboot', 'uptime', 'timesinceboot', 'micros', 'millis',
+    'utctime', 'timeutc', 'utc', 'datetime', 'dateandtime', 'isotime', 'date', 'timeboot', 'uptime', 'timesinceboot', 'timestartup', 'timesincestart', 'timesincestartup', 'stamptime', 'micros', 'millis',
   ],
 }; // prettier-ignore
 /** A day without a time. */
@@ -135,11 +135,11 @@ export const GNSS_WORDS = {
   vu: along('speed', UP, VELOCITY_STEMS),
   speed: {
     quantity: 'speed',
-    names: ['groundspeed', 'speedoverground', 'sog', 'gspeed', 'hspeed', 'speedground', 'horizontalspeed', 'speed', 'velocity'],
+    names: ['groundspeed', 'speedoverground', 'sog', 'gspeed', 'hspeed', 'speedground', 'horizontalspeed', 'speed', 'velocity', 'spd', 'gspd', 'groundspd'],
   },
   course: {
     quantity: 'angle',
-    names: ['course', 'courseoverground', 'cog', 'trackangle', 'track', 'courseangle', 'headmot', 'headingofmotion', 'motionheading', 'bearing'],
+    names: ['course', 'courseoverground', 'cog', 'trackangle', 'track', 'courseangle', 'headmot', 'headingofmotion', 'motionheading', 'bearing', 'gcrs', 'crs', 'gcourse'],
   },
   sigmaN: along('length', NORTH, SIGMA_STEMS),
   sigmaE: along('length', EAST, SIGMA_STEMS),

@@ -93,7 +93,8 @@ async function readHeads(files: ReadonlyMap<FileRole, RawFile>, store: Store) {
   const heads = new Map<FileRole, CsvHead>();
   const problems: IntakeProblem[] = [];
   for (const [role, file] of files) {
-    if (role === 'gnss' && file.key === files.get('imu')?.key) continue;
+    const isSameFile = role === 'gnss' && file.key === files.get('imu')?.key;
+    if (isSameFile && problems.length > 0) continue;
     try {
       const head = await readTableHead(store, file);
       heads.set(role, head);
@@ -103,8 +104,6 @@ async function readHeads(files: ReadonlyMap<FileRole, RawFile>, store: Store) {
       problems.push(...error.problems);
     }
   }
-  const imu = heads.get('imu');
-  if (imu && !heads.has('gnss') && files.get('gnss')?.key === files.get('imu')?.key) heads.set('gnss', imu);
   return { heads, problems };
 }
 

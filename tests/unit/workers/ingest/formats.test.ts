@@ -1,6 +1,6 @@
 /** Tables as loggers, spreadsheets and power cuts leave them: each lands on its clean twin, or is refused by name. */
 import { gzipSync } from 'node:zlib';
-import { csvText, decodeLogs, IMU_HEADER, ready, testStore, type TestStore } from '../support';
+import { csvText, decodeLogs, GNSS_HEADER, IMU_HEADER, ready, testStore, type TestStore } from '../support';
 import { decodedLogs, expectSameGnss, expectSameImu, GNSS, IMU, PLAIN_GNSS, PLAIN_IMU } from './twin';
 
 jest.setTimeout(60_000);
@@ -53,6 +53,57 @@ test('headers in capitals with the unit of a power: [rad s^-1]', async () => {
   const imu = csvText(header, IMU.map((row) => [Math.round(row[0]! * 1e9), ...row.slice(1)]));
   expectSameImu(await decodedLogs(at, { imu, gnss: PLAIN_GNSS }));
 }); // prettier-ignore
+
+const NAMED: [string, string, number][] = [
+  [
+    'axes numbered as an array, the rate’s unit cut short',
+    'timestamp,gyro_rad[0],gyro_rad[1],gyro_rad[2],gyro_integral_dt,accelerometer_m_s2[0],accelerometer_m_s2[1],accelerometer_m_s2[2]',
+    1e6,
+  ],
+  [
+    'fields of a message, the header behind a percent sign',
+    '%time,field.angular_velocity.x,field.angular_velocity.y,field.angular_velocity.z,field.angular_velocity_covariance0,field.linear_acceleration.x,field.linear_acceleration.y,field.linear_acceleration.z',
+    1e9,
+  ],
+  ['words of one letter and a counter', 'TimeUS,GyrX,GyrY,GyrZ,I,AccX,AccY,AccZ', 1e6],
+];
+
+test.each(NAMED)('headers: %s', async (_, header, ticks) => {
+  const rows = IMU.map((row) => [Math.round(row[0]! * ticks), ...row.slice(1, 4), 0, ...row.slice(4)]);
+  expectSameImu(await decodedLogs(at, { imu: csvText(header, rows), gnss: PLAIN_GNSS }));
+});
+
+test('fixes as a receiver’s message holds them: 10⁻⁷ degrees, mm, mm/s, ms of the week', async () => {
+  const gnss = csvText(
+    'iTOW,lon,lat,height,hMSL,hAcc,vAcc,velN,velE,velD,gSpeed,sAcc',
+    GNSS.map((r) => [
+      r[0]! * 1000,
+      Math.round(r[2]! * 1e7),
+      Math.round(r[1]! * 1e7),
+      r[3]! * 1000,
+      0,
+      1500,
+      2500,
+      ...r.slice(4).map((v) => Math.round(v * 1000)),
+      860,
+      120,
+    ]),
+  );
+  const columns = await decodedLogs(at, { imu: PLAIN_IMU, gnss });
+  expectSameGnss(columns, 0, { rad: 1e-9 });
+  expect(columns.gnss.positionSigma.map((axis) => axis[2])).toEqual([1.5, 1.5, 2.5]);
+  expect(columns.gnss.velocitySigma[0][2]).toBe(0.12);
+});
+
+test('two clocks without a common start: the refusal names the offset that would bring them together', async () => {
+  const gnss = csvText(
+    GNSS_HEADER,
+    GNSS.map((r) => [r[0]! + 677.5, ...r.slice(1)]),
+  );
+  const result = await decodeLogs(at.store, { imu: PLAIN_IMU, gnss });
+  expect(result).toMatchObject({ outcome: 'rejected', problems: [{ code: 'no-overlap', file: 'gnss' }] });
+  if (result.outcome === 'rejected') expect(result.problems[0]!.remedy).toContain('-677.5 s');
+});
 
 test('a path in the name of a file leads nowhere else in the store', async () => {
   const names = { imu: '../../../../etc/imu.csv', gnss: '..\\gnss.csv' };

@@ -1,5 +1,6 @@
 /** Receivers' own logs, NMEA 0183 and GPX: each lands on the same fixes as the clean twin, or is refused by name. */
 import { gzipSync } from 'node:zlib';
+import type { ChannelMap } from '@/shared/contracts/recordings';
 import { KNOT_M_S, RAD_PER_DEG } from '@/shared/units';
 import { loadRecording } from '@/workers/recordings/load';
 import { csvText, decodeLogs, IMU_HEADER, ready, testStore, type TestStore } from '../support';
@@ -173,6 +174,27 @@ test.each(REFUSED)('refused: %s', async (_, gnss, problem) => {
   const result = await decodeLogs(at.store, { imu, gnss });
   expect(result).toMatchObject({ outcome: 'rejected', problems: [{ file: 'gnss', ...problem }] });
   if (result.outcome === 'rejected') expect(result.problems[0]!.remedy.length).toBeGreaterThan(20);
+});
+
+test('sentences among the rows of an IMU’s table: one log for both', async () => {
+  const rows = PLAIN_IMU.trimEnd().split('\n');
+  const imu = rows.flatMap((row, k) => (k % 20 === 1 ? [gga(GNSS[(k - 1) / 20]!), row] : [row])).join('\n');
+  const channelMap: ChannelMap = {
+    gnss: {
+      time: { columns: ['time_of_day'], base: 'time-of-day', offsetS: -36_000, stamp: 'end' },
+      position: {
+        lat: 'latitude_deg',
+        lon: 'longitude_deg',
+        height: 'height_ellipsoid_m',
+        unit: 'deg',
+        heightUnit: 'm',
+        heightDatum: 'ellipsoid',
+      },
+    },
+  };
+  const columns = await decodedLogs(at, { imu }, { channelMap });
+  expectSameImu(columns);
+  expectSamePositions(columns, 0, WRITTEN);
 });
 
 test('an NMEA log in the place of the IMU is not taken for one', async () => {
