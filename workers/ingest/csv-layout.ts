@@ -1,5 +1,6 @@
 /** How a table is laid out, found from its first lines: delimiter, preamble, header, units, decimal sign. */
 import { parseAll } from './csv-parse';
+import type { TagLayout } from './csv-tags';
 
 export interface CsvLayout {
   delimiter: string;
@@ -14,6 +15,8 @@ export interface CsvLayout {
   decimalComma: boolean;
   /** Rows that repeat the header (logs put together) start with this; undefined where there is no header. */
   repeatedHeader?: string[];
+  /** Rows name their sensor and share columns; the headers are those of the arranged rows. */
+  tags?: TagLayout;
 }
 
 const DELIMITERS = [';', '\t', '|', ','] as const;
@@ -116,12 +119,24 @@ function findHeader(
   split: (line: string) => string[],
 ): FoundHeader {
   const first = split(lines[firstAt]!);
-  if (!isData(first)) return { headers: withoutTail(first), headerLine: firstAt + 1, dataAt: firstAt + 1 };
+  if (!isData(first) && !isTagged(first, lines.slice(firstAt + 1, firstAt + JUDGED_LINES), split))
+    return { headers: withoutTail(first), headerLine: firstAt + 1, dataAt: firstAt + 1 };
   const above = firstAt > 0 ? split(lines[firstAt - 1]!.replace(/^\s*(?:[#%]+|\/\/)\s*/, '')) : [];
   const fits = Math.abs(above.length - first.length) <= 1;
   if (isComment(lines[firstAt - 1] ?? '') && above.length > 1 && fits)
     return { headers: withoutTail(above), headerLine: firstAt, dataAt: firstAt };
   return { headers: first.map((_, i) => `column ${i + 1}`), headerLine: null, dataAt: firstAt };
+}
+
+/** Numbers behind one word that comes again below: the first row of a log without header whose rows name their sensor. */
+function isTagged(
+  cells: readonly string[],
+  below: readonly string[],
+  split: (line: string) => string[],
+): boolean {
+  const at = cells.findIndex((cell) => cell !== '' && !isNumeric(cell) && !isTimeText(cell));
+  const rest = cells.filter((_, i) => i !== at);
+  return rest.length > 2 && isData(rest) && below.some((line) => split(line)[at] === cells[at]);
 }
 
 const isData = (cells: readonly string[]) =>

@@ -3,6 +3,7 @@ import type { FileRole } from '@/shared/contracts/recordings';
 import type { NmeaSettings } from './nmea';
 import { isComment, layOut, type CsvLayout } from './csv-layout';
 import { parseAll, parsePart } from './csv-parse';
+import { findTags, untagged } from './csv-tags';
 import { FILE_NAMES, rejection } from './problems';
 import { empty } from './text-source';
 
@@ -57,7 +58,10 @@ export function csvHead(text: string, complete: boolean, role: FileRole): CsvHea
     throw tooManyColumns(role, String(layout.headers.length), layout.headerLine ?? layout.firstLine);
   const { dataAt, ...rest } = layout;
   const rows = parseAll(lines.slice(dataAt).join('\n'), layout.delimiter);
-  return { ...rest, rows: rows.filter((row) => !isSkipped(row) && !isHeaderAgain(row, layout)), complete };
+  const kept = rows.filter((row) => !isSkipped(row) && !isHeaderAgain(row, layout));
+  const tags = findTags(layout, kept);
+  if (!tags) return { ...rest, rows: kept, complete };
+  return { ...rest, headers: tags.headers, units: null, rows: untagged(kept, tags), tags, complete };
 }
 
 /** Data rows of the whole file. Throws IntakeRejected for lines without end. */
@@ -121,7 +125,7 @@ function numbered(
     }
     line += 1 + (hasQuotes ? row.reduce((count, cell) => count + cell.split('\n').length - 1, 0) : 0);
   }
-  return { rows: kept, lines, nextLine: line };
+  return { rows: layout.tags ? untagged(kept, layout.tags) : kept, lines, nextLine: line };
 }
 
 /** Cheap, so that rows of numbers need no closer look; an empty first cell may be a header's too. */

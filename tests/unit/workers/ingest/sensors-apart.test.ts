@@ -124,6 +124,52 @@ test.each(ONE_LOG)('one log for IMU and GNSS: %s', async (_, imu) => {
   expect(result.health.findings.map(({ code }) => code)).toEqual(expect.not.arrayContaining(['incomplete-rows', 'gnss-duplicates', 'gnss-no-fix'])); // prettier-ignore
 });
 
+const GYR = (r: number[]) => ['GYR', r[0]!, ...r.slice(1, 4)];
+const ACC = (r: number[]) => ['ACC', r[0]!, ...r.slice(4)];
+const FIX = (r: number[]) => ['GPS', r[0]!, ...r.slice(1, 4)];
+const inTurn = (...kinds: [number[][], (r: number[]) => (number | string)[]][]) =>
+  kinds.flatMap(([rows, cells]) => rows.map(cells)).sort((a, b) => Number(a[1]) - Number(b[1]));
+
+test('rows that name their sensor and share columns x, y, z', async () => {
+  const imu = csvText('sensor,time_s,x,y,z', inTurn([IMU, GYR], [IMU, ACC]));
+  const columns = await decodedLogs(at, { imu, gnss });
+  expectSameImu(columns);
+});
+
+test('rows that name their sensor, fixes among them, without a header: by a map', async () => {
+  const imu = inTurn([IMU, GYR], [IMU, ACC], [GNSS, FIX])
+    .map((row) => row.join(','))
+    .join('\n');
+  const time = { columns: ['column 2'], base: 's' as const, offsetS: 0, stamp: 'end' as const };
+  const of = (tag: string): [string, string, string] => [
+    `${tag} column 3`,
+    `${tag} column 4`,
+    `${tag} column 5`,
+  ];
+  const [lat, lon, height] = of('GPS');
+  const channelMap: ChannelMap = {
+    imu: {
+      time,
+      gyro: { columns: of('GYR'), unit: 'rad/s' },
+      accel: { columns: of('ACC'), unit: 'm/s^2', sign: 'specific-force' },
+      accelTime: time,
+      sampling: 'mean-rate',
+    },
+    gnss: { time, position: { lat, lon, height, unit: 'deg', heightUnit: 'm', heightDatum: 'ellipsoid' } },
+  };
+  const columns = await decodedLogs(at, { imu }, { channelMap });
+  expectSameImu(columns);
+  expectSamePositions(columns);
+});
+
+test('a column of words that are no sensors leaves the table as it is', async () => {
+  const fixes = csvText(
+    'provider,time_s,lat,lon,height_m',
+    GNSS.map((row, k) => [k % 2 === 0 ? 'gps' : 'network', ...row.slice(0, 4)]),
+  );
+  expectSamePositions(await decodedLogs(at, { imu: PLAIN_IMU, gnss: fixes }));
+});
+
 test('one log sent for both roles is the same as sent once', async () => {
   const imu = ONE_LOG[0]![1];
   expectSamePositions(await decodedLogs(at, { imu, gnss: imu }));
