@@ -21,8 +21,13 @@ import { EngineError } from '../types';
 import { gaussianScore, mixedScore, Tally, wideScore } from './score';
 import type { Interval, SearchCase } from './types';
 
-/** The first seconds after a start show the alignment more than the sensors, s. */
-const SETTLE_S = 10;
+/**
+ * After a start this long is not scored, s, but at most this share of the pass. Until the first turns tell tilt from
+ * accelerometer bias, what the levelling left enters to second order (b²/2g along the vertical: 8 mm/s² for 40 mg), which
+ * a filter of first order takes for noise; and the fixes that gave the heading are not news to the filter.
+ */
+const SETTLE_S = 120;
+const SETTLE_SHARE = 0.2;
 /** While a search goes on, a good fix in ten million is rejected. */
 const OPEN_GATE = 0.9999999;
 
@@ -67,7 +72,7 @@ export class Trial {
     this.timeS = imu.timeS;
     this.fixes = prepareFixes(gnss, judged.gnss);
     const { sample, fix, nav, p } = align(imu, this.fixes, judged, source.leverArmM);
-    this.scoredFromS = rules.scoredFromS ?? imu.timeS[sample]! + SETTLE_S;
+    this.scoredFromS = rules.scoredFromS ?? settledAt(imu.timeS, sample, rules.untilS);
     this.none = new Uint8Array(this.fixes.count);
     const outages = (source.outages ?? []).filter(({ endS }) => endS <= rules.untilS);
     this.windows = layWindows(imu.timeS, sample, outages).filter((w) => w.last > w.first);
@@ -168,6 +173,12 @@ export class Trial {
     tally.windows += 1;
     tally.driftSquares += position[0]! ** 2 + position[1]! ** 2;
   }
+}
+
+function settledAt(timeS: Float64Array, start: number, untilS: number): number {
+  const startS = timeS[start]!;
+  const endS = Math.min(untilS, timeS[timeS.length - 1]!);
+  return startS + Math.min(SETTLE_S, SETTLE_SHARE * (endS - startS));
 }
 
 const holds = (intervals: readonly Interval[], timeS: number) =>

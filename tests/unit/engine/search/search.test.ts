@@ -110,11 +110,13 @@ test('without outliers’ share the score is Σ(ln|S| + νᵀS⁻¹ν) of the fi
   const fixes = prepareFixes(gnss, parameters.gnss);
   const { sample, fix, nav, p } = align(imu, fixes, parameters, drive.scenario.leverArmM);
   let sum = 0;
+  // The first fifth, at most two minutes, is left to settle.
+  const settledS = imu.timeS[sample]! + 0.2 * (180 - imu.timeS[sample]!);
   const none = new Uint8Array(fixes.count);
   const filter = new ErrorStateFilter(imu, fixes, none, parameters, drive.scenario.leverArmM, {
     onWarning: () => undefined,
     onInnovation: (_group, timeS, _axes, { s, innovation }) => {
-      if (timeS < imu.timeS[sample]! + 10 || timeS >= 120) return;
+      if (timeS < settledS || timeS >= 120) return;
       const covariance = Matrix.from1DArray(3, 3, [...s]);
       const v = Matrix.columnVector([...innovation]);
       sum += Math.log(determinant(covariance)) + v.transpose().mmul(inverse(covariance)).mmul(v).get(0, 0);
