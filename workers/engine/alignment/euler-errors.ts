@@ -16,14 +16,14 @@ export function eulerSigmas(p: Float64Array, pitch: number, yaw: number, out: Fl
   const sinYaw = Math.sin(yaw);
   const cosPitch = Math.max(MIN_COS_PITCH, Math.cos(pitch));
   const tanPitch = Math.sin(pitch) / cosPitch;
-  out[0] = sigmaAlong(p, cosYaw / cosPitch, sinYaw / cosPitch, 0);
-  out[1] = sigmaAlong(p, sinYaw, -cosYaw, 0);
-  out[2] = sigmaAlong(p, tanPitch * cosYaw, tanPitch * sinYaw, 1);
+  const size = sizeOf(p);
+  out[0] = sigmaAlong(p, size, cosYaw / cosPitch, sinYaw / cosPitch, 0);
+  out[1] = sigmaAlong(p, size, sinYaw, -cosYaw, 0);
+  out[2] = sigmaAlong(p, size, tanPitch * cosYaw, tanPitch * sinYaw, 1);
   return out;
 }
 
-function sigmaAlong(p: Float64Array, n: number, e: number, d: number): number {
-  const size = sizeOf(p);
+function sigmaAlong(p: Float64Array, size: number, n: number, e: number, d: number): number {
   const at = ATTITUDE * size + ATTITUDE;
   const nn = p[at]!;
   const ne = p[at + 1]!;

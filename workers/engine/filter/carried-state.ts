@@ -5,11 +5,11 @@ import { Strapdown } from '../strapdown/strapdown';
 import type { BudgetShare, ErrorBudget } from './error-budget';
 import { OptionalStates } from './optional-states';
 import { ProcessNoise } from './process-noise';
-import { Propagation } from './propagation';
+import type { Propagation } from './propagation';
 import { layoutOf, type StateLayout } from './states';
 import type { Tape } from './tape';
 import type { TransitionSource } from './transition';
-import { transitionOf } from './wide-transition';
+import { propagationOf } from './wide-propagation';
 
 export class CarriedState {
   readonly strapdown: Strapdown;
@@ -37,7 +37,7 @@ export class CarriedState {
     this.p = new Float64Array(this.layout.size ** 2);
     this.optional = OptionalStates.of(this.layout, leverArmM);
     this.motion = this.optional?.motionOf(this.strapdown) ?? this.strapdown;
-    this.propagation = new Propagation(transitionOf(this.layout));
+    this.propagation = propagationOf(this.layout);
     this.noise = new ProcessNoise(parameters);
   }
 

@@ -23,10 +23,11 @@ import { GapBridge } from './gap-bridge';
 import { gatesOf, type Gate } from './gate';
 import { GnssModels } from './gnss-models';
 import { HeadingWatch } from './heading-watch';
-import { MeasurementUpdate } from './measurement-update';
+import type { MeasurementUpdate } from './measurement-update';
 import { recoverGroups } from './recovery';
 import { VehicleAids } from './vehicle-aids';
 import { ATTITUDE } from './states';
+import { updateOf } from './wide-update';
 
 /** A fix this close to an IMU sample, s, counts as simultaneous. */
 const SAME_TIME_S = 1e-7;
@@ -62,7 +63,7 @@ export class ErrorStateFilter extends CarriedState {
     data: AidColumns | null = null,
   ) {
     super(parameters, leverArmM);
-    this.update = new MeasurementUpdate(this.layout.size);
+    this.update = updateOf(this.layout);
     this.intervals = new ImuIntervals(imu);
     this.gates = gatesOf(parameters.gate);
     this.aids = VehicleAids.of(imu, parameters);

@@ -10,6 +10,7 @@ import { STATES } from './states';
 
 export const MAX_ROWS = 3;
 
+/** For the fifteen states; sizes are constants here, as in Propagation. With more of them, WideUpdate. */
 export class MeasurementUpdate {
   /** Rows in use, 1…3; the others measure nothing. */
   rows = 0;
@@ -68,14 +69,20 @@ export class MeasurementUpdate {
 
   /** After `prepare`: K, the correction, and P in place. */
   apply(p: Float64Array): void {
-    const { gain, ph, inverse, innovation, correction, size } = this;
+    this.formGain(this.ph);
+    this.joseph(p, this.ph, this.s);
+  }
+
+  /** K = PHᵀS⁻¹ and Kν. */
+  protected formGain(ph: Float64Array): void {
+    const { gain, inverse, innovation, correction } = this;
     const i00 = inverse[0]!;
     const i01 = inverse[1]!;
     const i02 = inverse[2]!;
     const i11 = inverse[4]!;
     const i12 = inverse[5]!;
     const i22 = inverse[8]!;
-    for (let i = 0; i < size; i += 1) {
+    for (let i = 0; i < STATES; i += 1) {
       const at = i * MAX_ROWS;
       const a = ph[at]!;
       const b = ph[at + 1]!;
@@ -88,7 +95,6 @@ export class MeasurementUpdate {
       gain[at + 2] = kc;
       correction[i] = ka * innovation[0]! + kb * innovation[1]! + kc * innovation[2]!;
     }
-    this.joseph(p, ph, this.s);
   }
 
   /** After `apply`: the same gain on another covariance, with the measurements' noise or without. */
@@ -104,30 +110,34 @@ export class MeasurementUpdate {
    * Joseph's form multiplied out, P − K(HP) + (KS − PHᵀ)Kᵀ with S = HPHᵀ + R: what it adds to the short form is of second
    * order in an error of K. Upper triangle, then mirrored.
    */
-  private joseph(p: Float64Array, ph: Float64Array, s: Float64Array): void {
-    const { gain, size } = this;
-    for (let i = 0, row = 0, own = 0; i < size; i += 1, row += size, own += MAX_ROWS) {
+  protected joseph(p: Float64Array, ph: Float64Array, s: Float64Array): void {
+    const { gain } = this;
+    for (let i = 0; i < STATES; i += 1) {
+      const row = i * STATES;
+      const own = i * MAX_ROWS;
       const ka = gain[own]!;
       const kb = gain[own + 1]!;
       const kc = gain[own + 2]!;
       const ra = ka * s[0]! + kb * s[3]! + kc * s[6]! - ph[own]!;
       const rb = ka * s[1]! + kb * s[4]! + kc * s[7]! - ph[own + 1]!;
       const rc = ka * s[2]! + kb * s[5]! + kc * s[8]! - ph[own + 2]!;
-      for (let j = i, at = own, mirror = row + i; j < size; j += 1, at += MAX_ROWS, mirror += size) {
+      for (let j = i; j < STATES; j += 1) {
+        const at = j * MAX_ROWS;
         const value =
           p[row + j]! -
           (ka * ph[at]! + kb * ph[at + 1]! + kc * ph[at + 2]!) +
           (ra * gain[at]! + rb * gain[at + 1]! + rc * gain[at + 2]!);
         p[row + j] = value;
-        p[mirror] = value;
+        p[j * STATES + i] = value;
       }
     }
   }
 
   /** out = PHᵀ, size × MAX_ROWS. */
-  private project(p: Float64Array, out: Float64Array): void {
-    const { h, columns, columnCount, size } = this;
-    for (let i = 0, row = 0, to = 0; i < size; i += 1, row += size, to += MAX_ROWS) {
+  protected project(p: Float64Array, out: Float64Array): void {
+    const { h, columns, columnCount } = this;
+    for (let i = 0; i < STATES; i += 1) {
+      const row = i * STATES;
       let a = 0;
       let b = 0;
       let c = 0;
@@ -135,24 +145,24 @@ export class MeasurementUpdate {
         const j = columns[n]!;
         const value = p[row + j]!;
         a += value * h[j]!;
-        b += value * h[size + j]!;
-        c += value * h[2 * size + j]!;
+        b += value * h[STATES + j]!;
+        c += value * h[2 * STATES + j]!;
       }
-      out[to] = a;
-      out[to + 1] = b;
-      out[to + 2] = c;
+      out[i * MAX_ROWS] = a;
+      out[i * MAX_ROWS + 1] = b;
+      out[i * MAX_ROWS + 2] = c;
     }
   }
 
   /** out = H(PHᵀ) + R. */
-  private innovationCovariance(ph: Float64Array, out: Float64Array): void {
-    const { h, columns, columnCount, r, size } = this;
+  protected innovationCovariance(ph: Float64Array, out: Float64Array): void {
+    const { h, columns, columnCount, r } = this;
     for (let a = 0; a < MAX_ROWS; a += 1)
       for (let b = a; b < MAX_ROWS; b += 1) {
         let sum = a === b ? r[a]! : 0;
         for (let n = 0; n < columnCount; n += 1) {
           const j = columns[n]!;
-          sum += h[a * size + j]! * ph[j * MAX_ROWS + b]!;
+          sum += h[a * STATES + j]! * ph[j * MAX_ROWS + b]!;
         }
         out[a * MAX_ROWS + b] = sum;
         out[b * MAX_ROWS + a] = sum;

@@ -220,18 +220,20 @@ function congruence(m: Float64Array, s: Float64Array, work: Float64Array, out: F
   const n = sizeOf(s);
   // work = S M
   work.fill(0);
-  for (let k = 0; k < n; k += 1)
-    for (let j = 0; j < n; j += 1) {
-      const value = m[k * n + j]!;
+  for (let k = 0, row = 0; k < n; k += 1, row += n)
+    for (let j = 0, to = 0; j < n; j += 1, to += n) {
+      const value = m[row + j]!;
       if (value === 0) continue;
-      for (let i = 0; i < n; i += 1) work[j * n + i] = work[j * n + i]! + s[k * n + i]! * value;
+      for (let i = 0; i < n; i += 1) work[to + i] = work[to + i]! + s[row + i]! * value;
     }
-  // Row j of work is column j of SM: out = Mᵀ(SM).
-  for (let i = 0; i < n; i += 1)
-    for (let j = i; j < n; j += 1) {
-      let sum = 0;
-      for (let k = 0; k < n; k += 1) sum += m[k * n + i]! * work[j * n + k]!;
-      out[i * n + j] = sum;
-      out[j * n + i] = sum;
+  // Row j of work is column j of SM: out = Mᵀ(SM), upper triangle, then mirrored.
+  out.fill(0);
+  for (let k = 0, row = 0; k < n; k += 1, row += n)
+    for (let i = 0, to = 0; i < n; i += 1, to += n) {
+      const value = m[row + i]!;
+      if (value === 0) continue;
+      for (let j = i, at = to + k; j < n; j += 1, at += n) out[to + j] = out[to + j]! + value * work[at]!;
     }
+  for (let i = 1, row = n; i < n; i += 1, row += n)
+    for (let j = 0, mirror = i; j < i; j += 1, mirror += n) out[row + j] = out[mirror]!;
 }

@@ -44,6 +44,9 @@ export class Transition {
   readonly size: number = STATES;
   /** Coefficients, see `C`. */
   readonly coefficients = new Float64Array(C.size);
+  /** For `dense`: the identity, and what it becomes. */
+  private unit: Float64Array | null = null;
+  private columns: Float64Array | null = null;
 
   /**
    * Fills the transition from the sums that the strapdown gathered over the step and the state at its end.
@@ -298,12 +301,18 @@ export class Transition {
   /** Φ as a dense matrix (size × size, row by row) in `out`: for the smoother, the tests and study. */
   dense(out: Float64Array): Float64Array {
     const { size } = this;
-    const unit = new Float64Array(size * size);
-    const columns = new Float64Array(size * size);
-    for (let i = 0; i < size; i += 1) unit[i * (size + 1)] = 1;
-    this.apply(unit, size, 1, columns, size);
-    for (let r = 0; r < size; r += 1)
-      for (let c = 0; c < size; c += 1) out[r * size + c] = columns[c * size + r]!;
+    this.unit ??= identity(size);
+    this.columns ??= new Float64Array(size * size);
+    const { columns } = this;
+    this.apply(this.unit, size, 1, columns, size);
+    for (let r = 0, row = 0; r < size; r += 1, row += size)
+      for (let c = 0, at = r; c < size; c += 1, at += size) out[row + c] = columns[at]!;
     return out;
   }
+}
+
+function identity(size: number): Float64Array {
+  const unit = new Float64Array(size * size);
+  for (let i = 0; i < size; i += 1) unit[i * (size + 1)] = 1;
+  return unit;
 }

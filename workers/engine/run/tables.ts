@@ -47,6 +47,7 @@ export class SolutionWriter {
   /** A row anywhere. Order of columns: SOLUTION_COLUMNS. */
   writeAt(row: number, timeS: number, nav: Float64Array, p: Float64Array, values?: Float64Array): void {
     const { columns, quaternion, euler, sigma } = this;
+    const diagonal = sizeOf(p) + 1;
     for (let i = 0; i < 4; i += 1) quaternion[i] = nav[QUAT + i]!;
     eulerFromQuat(quaternion, euler);
     eulerSigmas(p, euler[1]!, euler[2]!, sigma);
@@ -59,16 +60,16 @@ export class SolutionWriter {
       columns[7 + i]![row] = radToDeg(euler[i]!);
       columns[10 + i]![row] = nav[NAV_GYRO_BIAS + i]!;
       columns[13 + i]![row] = nav[NAV_ACCEL_BIAS + i]!;
-      columns[16 + i]![row] = deviation(p, POSITION + i);
-      columns[19 + i]![row] = deviation(p, VELOCITY + i);
+      columns[16 + i]![row] = Math.sqrt(p[(POSITION + i) * diagonal]!);
+      columns[19 + i]![row] = Math.sqrt(p[(VELOCITY + i) * diagonal]!);
       columns[22 + i]![row] = radToDeg(sigma[i]!);
-      columns[25 + i]![row] = deviation(p, GYRO_BIAS + i);
-      columns[28 + i]![row] = deviation(p, ACCEL_BIAS + i);
+      columns[25 + i]![row] = Math.sqrt(p[(GYRO_BIAS + i) * diagonal]!);
+      columns[28 + i]![row] = Math.sqrt(p[(ACCEL_BIAS + i) * diagonal]!);
     }
     columns[31]![row] = p[1]!;
     this.optional.forEach(({ state, value, perUnit }, i) => {
       columns[32 + i]![row] = values![value]! * perUnit;
-      columns[32 + this.optional.length + i]![row] = deviation(p, state) * perUnit;
+      columns[32 + this.optional.length + i]![row] = Math.sqrt(p[state * diagonal]!) * perUnit;
     });
   }
 
@@ -76,8 +77,6 @@ export class SolutionWriter {
     return cut(this.table, this.count);
   }
 }
-
-const deviation = (p: Float64Array, i: number) => Math.sqrt(p[i * (sizeOf(p) + 1)]!);
 
 export class InnovationWriter {
   readonly table: InnovationTable;

@@ -17,6 +17,7 @@ import { emptyError, ReferenceReader, stateError } from '@/workers/engine/run/re
 import type { AidErrors } from '@/workers/engine/simulator/aid-sensors';
 import { averageBounds } from '@/workers/engine/statistics/consistency';
 import { HEIGHT, NAV_SIZE, QUAT, VN } from '@/workers/engine/strapdown/navigation-state';
+import { WideUpdate } from '@/workers/engine/filter/wide-update';
 import { Strapdown } from '@/workers/engine/strapdown/strapdown';
 import { nees, requestOf, simulateCase, type SimulatedCase } from '../support/monte-carlo';
 
@@ -46,7 +47,7 @@ test.each<[string, number, Model]>([
   ['attitude', 3, (s, _e, u) => fullAttitude(s, 0.1, -0.2, 2.1, [1, 1, 1], u)],
 ])('H of %s is the derivative of its innovation', (_name, rows, model) => {
   const at = (error: Float64Array) => {
-    const update = new MeasurementUpdate(SIZE);
+    const update = new WideUpdate(SIZE);
     model(disturbed(error), error, update);
     return update;
   };

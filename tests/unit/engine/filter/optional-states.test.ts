@@ -3,15 +3,14 @@ import { parametersSchema, type ParametersInput } from '@/shared/contracts/param
 import { quatFromEuler } from '@/workers/engine/attitude';
 import { prepareFixes } from '@/workers/engine/filter/fixes';
 import { GnssModels } from '@/workers/engine/filter/gnss-models';
-import { MeasurementUpdate } from '@/workers/engine/filter/measurement-update';
 import { OptionalStates } from '@/workers/engine/filter/optional-states';
-import { Propagation } from '@/workers/engine/filter/propagation';
 import { layoutOf, STATES } from '@/workers/engine/filter/states';
-import { transitionOf } from '@/workers/engine/filter/wide-transition';
+import { WidePropagation } from '@/workers/engine/filter/wide-propagation';
 import { createRandom } from '@/workers/engine/random';
 import { averageBounds } from '@/workers/engine/statistics/consistency';
 import { DURATION, INTERVAL_SIZE } from '@/workers/engine/strapdown/imu-intervals';
 import { NAV_SIZE, QUAT, VN } from '@/workers/engine/strapdown/navigation-state';
+import { WideUpdate } from '@/workers/engine/filter/wide-update';
 import { Strapdown } from '@/workers/engine/strapdown/strapdown';
 import { optionalNees, runCase } from '../support/optional-case';
 
@@ -53,9 +52,10 @@ function run(scale: readonly number[]) {
 function formed() {
   const { strapdown, optional } = run([0, 0, 0, 0, 0, 0]);
   const { nav, earth, sumDcm, sumForce } = strapdown;
-  const transition = transitionOf(layout);
+  const propagation = new WidePropagation(layout);
+  const { transition } = propagation;
   transition.form({ nav, earth, sumDcm, sumForce, sumMeasured: optional.sumMeasured }, 1 / 20, 1 / 50);
-  return { transition, truth: nav.slice() };
+  return { transition, propagation };
 }
 
 test('the layout places what is switched on, in a fixed order', () => {
@@ -95,14 +95,14 @@ test('Φ of the scale factors is the derivative of the strapdown itself', () => 
 
 test('covariance with all states is ΦPΦᵀ with trapezoidal noise', () => {
   const { size } = layout;
-  const { transition } = formed();
+  const { transition, propagation } = formed();
   const random = createRandom(3);
   const root = Matrix.zeros(size, size);
   for (let i = 0; i < size; i += 1) for (let j = 0; j < size; j += 1) root.set(i, j, random.normal());
   const start = root.mmul(root.transpose());
   const p = Float64Array.from(start.to1DArray());
   const halfNoise = Float64Array.from({ length: size }, (_, i) => 1e-3 * (i + 1));
-  new Propagation(transition).propagate(p, halfNoise);
+  propagation.propagate(p, halfNoise);
   const phi = Matrix.from1DArray(size, size, transition.dense(new Float64Array(size * size)));
   const half = Matrix.diag([...halfNoise]);
   const expected = phi.mmul(Matrix.add(start, half)).mmul(phi.transpose()).add(half);
@@ -130,7 +130,7 @@ test.each(['position', 'velocity'] as const)(
     strapdown.start(startNav());
     const rate = [0.2, -0.3, 0.5];
     const at = (arm: readonly number[], scale: readonly number[]) => {
-      const update = new MeasurementUpdate(layout.size);
+      const update = new WideUpdate(layout.size);
       const models = new GnssModels(arm, 0, layout);
       if (kind === 'position') models.position(strapdown, fixes, 0, 7, update);
       else
