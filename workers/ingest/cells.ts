@@ -11,6 +11,8 @@ export function numberIn(cell: string | undefined, decimalComma: boolean): numbe
   const value = Number(decimalComma ? cell.replace(',', '.') : cell);
   // An empty cell would count as 0; hexadecimal and the like are no measurements.
   if (value - value === 0 && value !== 0) return isOtherBase(cell) ? undefined : value;
+  // The zeros of a log: nothing to look for in 0.000 or -0.
+  if (value === 0 && cell.charCodeAt(0) > 44 && !isOtherBase(cell)) return 0;
   const text = cell.trim();
   if (MISSING.test(text)) return NaN;
   return value === 0 ? 0 : undefined;

@@ -119,7 +119,7 @@ function numbered(
   const lines: number[] = [];
   let line = firstLine;
   for (const row of rows) {
-    if (!isSkipped(row) && !(startsWithLetter(row[0]!) && isHeaderAgain(row, layout))) {
+    if (startsNumber(row[0]!) || !(isSkipped(row) || isHeaderAgain(row, layout))) {
       kept.push(row);
       lines.push(line);
     }
@@ -128,8 +128,11 @@ function numbered(
   return { rows: layout.tags ? untagged(kept, layout.tags) : kept, lines, nextLine: line };
 }
 
-/** Cheap, so that rows of numbers need no closer look; an empty first cell may be a header's too. */
-const startsWithLetter = (cell: string) => !(cell.charCodeAt(0) < 58);
+/** A digit, sign or point: cheap to see, and such rows need no closer look. */
+function startsNumber(cell: string): boolean {
+  const code = cell.charCodeAt(0);
+  return (code > 47 && code < 58) || code === 43 || code === 45 || code === 46;
+}
 
 /** A header beyond all measure is told before it is split. */
 function checkWidth(lines: readonly string[], role: FileRole): void {
