@@ -1,4 +1,4 @@
-import { Matrix } from 'ml-matrix';
+import { inverse, Matrix } from 'ml-matrix';
 import { parametersSchema, type ParametersInput } from '@/shared/contracts/parameters';
 import { quatFromEuler } from '@/workers/engine/attitude';
 import { prepareFixes } from '@/workers/engine/filter/fixes';
@@ -112,6 +112,42 @@ test('covariance with all states is ΦPΦᵀ with trapezoidal noise', () => {
       expect(Math.abs(p[i * size + j]! - expected.get(i, j)) / unit).toBeLessThan(1e-12);
       expect(p[i * size + j]).toBe(p[j * size + i]);
     }
+});
+
+test('an update of all states is Joseph’s form, written out', () => {
+  const { size } = layout;
+  const random = createRandom(5);
+  const draw = (rows: number, columns: number) => {
+    const out = Matrix.zeros(rows, columns);
+    for (let i = 0; i < rows; i += 1) for (let j = 0; j < columns; j += 1) out.set(i, j, random.normal());
+    return out;
+  };
+  const root = draw(size, size);
+  const start = root.mmul(root.transpose());
+  const h = draw(2, size);
+  const p = Float64Array.from(start.to1DArray());
+  const update = new WideUpdate(size);
+  update.begin(
+    2,
+    Array.from({ length: size }, (_, i) => i),
+  );
+  update.h.set(h.to1DArray());
+  update.r.set([0.5, 2]);
+  update.innovation.set([1.2, -0.7]);
+  update.prepare(p);
+  update.apply(p);
+  const r = Matrix.diag([0.5, 2]);
+  const s = h.mmul(start).mmul(h.transpose()).add(r);
+  const k = start.mmul(h.transpose()).mmul(inverse(s));
+  const rest = Matrix.eye(size).sub(k.mmul(h));
+  const expected = rest.mmul(start).mmul(rest.transpose()).add(k.mmul(r).mmul(k.transpose()));
+  const nu = Matrix.columnVector([1.2, -0.7]);
+  const correction = k.mmul(nu);
+  expect(update.nis).toBeCloseTo(nu.transpose().mmul(inverse(s)).mmul(nu).get(0, 0), 10);
+  for (let i = 0; i < size; i += 1) {
+    expect(update.correction[i]).toBeCloseTo(correction.get(i, 0), 9);
+    for (let j = 0; j < size; j += 1) expect(p[i * size + j]).toBeCloseTo(expected.get(i, j), 8);
+  }
 });
 
 test.each(['position', 'velocity'] as const)(
