@@ -5,6 +5,7 @@
 import { failWith } from '@/scripts/lib/project';
 import { runBundled } from '@/tests/support/bundled';
 import { benchEngine } from './engine';
+import { benchHealth } from './health';
 import { benchIngest } from './ingest';
 import { benchSearch } from './search';
 import { benchStack } from './stack';
@@ -12,7 +13,7 @@ import { benchStack } from './stack';
 const script = (file: string) => (args: string[]) => void runBundled(`tests/bench/${file}.ts`, args);
 const count = (args: string[]) => (args[0] === undefined ? undefined : Number(args[0]));
 
-/** In the order of their arguments: megabytes; runs and part of a title; hours; seeds; seeds. */
+/** In the order of their arguments: megabytes; runs and part of a title; hours; seeds; seeds; seeds. */
 const BENCHES: Record<string, (args: string[]) => void | Promise<void>> = {
   engine: benchEngine,
   stack: benchStack,
@@ -21,7 +22,9 @@ const BENCHES: Record<string, (args: string[]) => void | Promise<void>> = {
   'monte-carlo': script('monte-carlo'),
   allan: script('allan'),
   robustness: script('robustness'),
+  memory: script('memory'),
   search: (args) => benchSearch(count(args)),
+  health: (args) => benchHealth(count(args)),
 };
 const BY_DEFAULT = ['engine', 'stack'];
 

@@ -12,6 +12,7 @@ import { decodeAids } from './decode-aids';
 import { decodeImu } from './decode-imu';
 import { decodeGnss, decodeReference } from './decode-track';
 import { healthReport } from './health-report';
+import { defectFindings } from './defect-findings';
 import { clockOf, proposedOrigin, type IntakeContext } from './intake-context';
 import { sensorRoles } from './map-columns';
 import { motionFindings } from './motion-findings';
@@ -42,7 +43,11 @@ export async function decodeFiles(context: IntakeContext): Promise<DecodedFiles>
   const reference = await decodeReference(context, originS, [facts.startS, facts.endS]);
   const aids = await decodeAids(context, originS);
   const axes = map.axes ?? context.vehicleAxes ?? IDENTITY_AXES;
-  const matched = motionFindings(facts, gnssColumns(gnss.columns), { map: context.map, axes });
+  const fixes = gnssColumns(gnss.columns);
+  const matched = [
+    ...motionFindings(facts, fixes, { map: context.map, axes }),
+    ...defectFindings(facts, fixes),
+  ];
   await context.breathe();
   const gnssFile = await writeTable(context.store, storeKeys.gnss(context.recordingId), gnss.columns);
   return {

@@ -24,7 +24,7 @@ export function gravityFindings(
     const unit = likelyUnit(share);
     const sentence = `In its quietest second the accelerometer shows ${formatNumber(force)} m/s² instead of about 9.81.`;
     const remedy = unit
-      ? `Its values look like ${unit.words}.`
+      ? `Its values look like ${unit.words}: set its unit to ${unit.words}.`
       : 'Check the unit of the accelerometer columns on the mapping screen.';
     const fix = unit && { label: `Read it in ${unit.words}`, map: withAccelUnit(inForce, unit.unit) };
     return [
@@ -32,7 +32,9 @@ export function gravityFindings(
     ];
   }
   const found: HealthFinding[] = [];
-  if (Math.abs(share - 1) > 0.05)
+  // In a turn there is more than gravity.
+  const still = !quiet || Math.hypot(...quiet.gyroMean) < 0.05;
+  if (still && Math.abs(share - 1) > 0.05)
     found.push(
       finding(
         'gravity-off',

@@ -83,6 +83,14 @@ function rowFindings(imu: ImuFacts): HealthFinding[] {
         figure: { value: imu.duplicates, unit: 'rows' },
       }),
     ); // prettier-ignore
+  if (imu.late > 0)
+    found.push(
+      finding('imu-order', 'warn', `${rows(imu.late)} of the IMU file came late and ${imu.late === 1 ? 'was' : 'were'} put where the stamps say.`, {
+        figure: { value: imu.late, unit: 'rows' },
+        intervals: imu.lateS,
+        remedy: 'Look at the logger’s queue: samples overtake each other.',
+      }),
+    ); // prettier-ignore
   if (imu.repeatedStamps > 0)
     found.push(
       finding('repeated-stamps', 'warn', `${rows(imu.repeatedStamps)} of the IMU file had the stamp of the row before but other values and dropped out (first in line ${imu.firstRepeatedLine}).`, {

@@ -17,6 +17,8 @@ export interface ImuRows {
 
 /** Rows at the start that are nothing but zeros: the logger ran before its sensor. */
 const MAX_ZERO_ROWS = 100;
+/** A row may come this many rows late and is put in its place; later than that the clock was set back. */
+const MOST_LATE_ROWS = 16;
 /** About 44 min at 100 Hz: such a log is one piece and loads without a copy. */
 const PIECE_ROWS = 1 << 18;
 
@@ -25,8 +27,7 @@ export class ImuDecoder {
   private readonly own: number;
   private readonly raw = new Float64Array(6);
   private readonly body = new Float64Array(6);
-  private readonly previous = new Float64Array(6);
-  private piece: Float64Array[] = newPiece();
+  private readonly piece: Float64Array[] = newPiece();
   private rows = 0;
   private lastS = -Infinity;
   private zeroRows = 0;
@@ -89,11 +90,11 @@ export class ImuDecoder {
     const { body } = this;
     if (this.lastS === -Infinity && this.isStartingUp(line)) return;
     convertSample(this.conversion, this.raw, body);
-    if (timeS <= this.lastS) return this.repeat(timeS, line);
+    if (timeS === this.lastS) return this.repeat(line, this.rows - 1);
+    if (timeS < this.lastS) return this.putBack(timeS, line);
     const { piece, rows } = this;
     piece[0]![rows] = timeS;
     for (let i = 0; i < 6; i += 1) piece[i + 1]![rows] = body[i]!;
-    this.previous.set(body);
     this.lastS = timeS;
     this.rows += 1;
     this.health.add(timeS, body);
@@ -107,29 +108,42 @@ export class ImuDecoder {
     return true;
   }
 
-  private repeat(timeS: number, line: number): void {
-    if (timeS < this.lastS) {
+  /** The stamp of `row` again. */
+  private repeat(line: number, row: number): void {
+    const { piece } = this;
+    if (this.body.every((value, i) => value === piece[i + 1]![row])) this.health.addDuplicate();
+    else this.health.addRepeatedStamp(line);
+  }
+
+  /** A row that comes late goes where its time belongs. */
+  private putBack(timeS: number, line: number): void {
+    const { piece, body } = this;
+    const earliest = Math.max(0, this.rows - MOST_LATE_ROWS);
+    let at = this.rows;
+    while (at > earliest && piece[0]![at - 1]! > timeS) at -= 1;
+    if (at === earliest || piece[0]![at - 1] === timeS)
       throw rejection(
         'time-backwards', { file: 'imu', line },
         `In line ${line} of the ${FILE_NAMES.imu} time runs backwards: ${timeS} s after ${this.lastS} s.`,
         'Sort the log by time, or cut it where the clock was set, and upload it again.',
       ); // prettier-ignore
-    }
-    if (this.body.every((value, i) => value === this.previous[i])) this.health.addDuplicate();
-    else this.health.addRepeatedStamp(line);
+    for (const column of piece) column.copyWithin(at + 1, at, this.rows);
+    piece[0]![at] = timeS;
+    for (let i = 0; i < 6; i += 1) piece[i + 1]![at] = body[i]!;
+    this.health.addLate(timeS, this.lastS);
+    this.rows += 1;
+    if (this.rows === PIECE_ROWS) this.passOn();
   }
 
+  /** The last rows stay: one that comes late may belong between them. */
   private passOn(): void {
-    const { piece, rows } = this;
-    const whole = rows === PIECE_ROWS;
-    this.write(
-      Object.fromEntries(IMU_COLUMNS.map((name, i) => [name, whole ? piece[i]! : piece[i]!.slice(0, rows)])),
-    );
-    this.piece = newPiece();
-    this.rows = 0;
+    const { piece } = this;
+    const kept = this.rows === PIECE_ROWS ? MOST_LATE_ROWS : 0;
+    const passed = this.rows - kept;
+    this.write(Object.fromEntries(IMU_COLUMNS.map((name, i) => [name, piece[i]!.slice(0, passed)])));
+    for (const column of piece) column.copyWithin(0, passed, this.rows);
+    this.rows = kept;
   }
 }
 
-function newPiece(): Float64Array[] {
-  return IMU_COLUMNS.map(() => new Float64Array(PIECE_ROWS));
-}
+const newPiece = (): Float64Array[] => IMU_COLUMNS.map(() => new Float64Array(PIECE_ROWS));

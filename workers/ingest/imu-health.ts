@@ -2,6 +2,8 @@
 import type { ImuSampling } from '../engine/types';
 import { FlatTopFinder, mergeIntervals } from './clipping';
 import { MotionIntegrator, type MotionIntegrals } from '../engine/motion-match/motion-integrals';
+import { ShockFinder, type Shock } from './shocks';
+import { StuckFinder, type StuckStretch } from './stuck-axes';
 import { QuietWindowFinder, type QuietWindow } from './quiet-window';
 
 export interface ImuFacts {
@@ -17,12 +19,17 @@ export interface ImuFacts {
   gapsS: [number, number][];
   gapCount: number;
   duplicates: number;
+  /** Rows that came late and were put in their places, and the stretches in which they did, s. */
+  late: number;
+  lateS: [number, number][];
   /** Rows with a repeated stamp but other values. */
   repeatedStamps: number;
   firstRepeatedLine: number | null;
   incompleteRows: number;
   firstIncompleteLine: number | null;
   clippedS: [number, number][];
+  stuck: StuckStretch[];
+  shocks: Shock[];
   quiet: QuietWindow | null;
   /** Mean length of the specific force, m/s². */
   meanForce: number;
@@ -37,6 +44,8 @@ const SMALLEST_ACCEL_RANGE = 15;
 export class ImuHealth {
   private readonly quiet = new QuietWindowFinder();
   private readonly motion = new MotionIntegrator();
+  private readonly stuck = new StuckFinder();
+  private readonly shocks = new ShockFinder();
   private readonly flatTops: FlatTopFinder[];
   private readonly rates = new Float64Array(6);
   private readonly gapLimitS: number;
@@ -50,6 +59,8 @@ export class ImuHealth {
   private squaredJitter = 0;
   private forceSum = 0;
   private duplicates = 0;
+  private late = 0;
+  private readonly lateStretches: [number, number][] = [];
   private repeatedStamps = 0;
   private firstRepeatedLine: number | null = null;
   private incompleteRows = 0;
@@ -80,12 +91,22 @@ export class ImuHealth {
     this.forceSum += Math.sqrt(x * x + y * y + z * z);
     this.quiet.add(timeS, this.rates);
     this.motion.add(timeS, this.rates);
+    this.stuck.add(timeS, values);
+    this.shocks.add(timeS, x, y, z);
     this.samples += 1;
     this.lastS = timeS;
   }
 
   addDuplicate(): void {
     this.duplicates += 1;
+  }
+
+  /** A row of `timeS` that came after one of `afterS`. */
+  addLate(timeS: number, afterS: number): void {
+    this.late += 1;
+    const last = this.lateStretches.at(-1);
+    if (last && timeS - last[1] < 1) last[1] = Math.max(last[1], afterS);
+    else if (this.lateStretches.length < MAX_GAPS) this.lateStretches.push([timeS, afterS]);
   }
 
   addRepeatedStamp(line: number): void {
@@ -112,11 +133,15 @@ export class ImuHealth {
       gapsS: this.gaps,
       gapCount: this.gapCount,
       duplicates: this.duplicates,
+      late: this.late,
+      lateS: this.lateStretches,
       repeatedStamps: this.repeatedStamps,
       firstRepeatedLine: this.firstRepeatedLine,
       incompleteRows: this.incompleteRows,
       firstIncompleteLine: this.firstIncompleteLine,
       clippedS: mergeIntervals(flat, 10 * this.nominalS),
+      stuck: this.stuck.finish(),
+      shocks: this.shocks.finish(),
       quiet: this.quiet.finish(),
       meanForce: this.forceSum / Math.max(1, this.samples),
       motion: this.motion.finish(),

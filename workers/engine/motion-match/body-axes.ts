@@ -47,7 +47,7 @@ function strongest(values: readonly number[]): TrueAxis {
 /** Of each body axis' specific force, interval by interval, with the change of speed and with speed × turn, by GNSS. */
 function correlations(motion: MotionIntegrals, gnss: GnssColumns, shiftS: number) {
   const source = gnss.velocityNed[0].some((value) => Number.isFinite(value)) ? 'velocity' : 'position';
-  const forces = motion.accel.map((axis) => new RunningIntegral(motion.timeS, axis));
+  const forces = motion.accel.map((axis) => new RunningIntegral(motion.timeS, axis, motion.breaksS));
   const rows: number[][] = [];
   for (const { fromS, toS, value: course, speed } of trackStretches(gnss, 'turn', source))
     for (let i = 1; i < course.length; i += 1) {
@@ -58,7 +58,8 @@ function correlations(motion: MotionIntegrals, gnss: GnssColumns, shiftS: number
         rate(course[i]! - course[i - 1]!) * 0.5 * (speed[i - 1]! + speed[i]!),
         ...forces.map((integral) => rate(integral.at(t1 + shiftS) - integral.at(t0 + shiftS))),
       ];
-      if (row.every(Number.isFinite)) rows.push(row);
+      const broken = forces[0]!.broken(t0 + shiftS, t1 + shiftS);
+      if (!broken && row.every(Number.isFinite)) rows.push(row);
     }
   const of = (a: number, b: number) => (rows.length < LEAST_INTERVALS ? 0 : correlation(rows, a, b));
   return { along: [2, 3, 4].map((axis) => of(0, axis)), across: [2, 3, 4].map((axis) => of(1, axis)) };

@@ -35,7 +35,7 @@ export const SEARCH_S = 10;
 const COARSE_S = 0.05;
 const FINE_S = 0.01;
 const LEAST_FIXES = 20;
-const LEAST_CORRELATION = 0.6;
+const LEAST_CORRELATION: Record<MotionKind, number> = { turn: 0.9, speed: 0.6 };
 /** A second best shift at least this far off must be worse by this much in the log-likelihood, or nothing is known. */
 const RIVAL_S = 1.5;
 const RIVAL_LOG_LIKELIHOOD = 8;
@@ -55,7 +55,7 @@ export function clockOffset(
   if (motion.timeS.length < 2) return null;
   const stretches = trackStretches(gnss, kind, source);
   const integral = motionOf(motion, kind, vertical);
-  const best = bestShift(stretches, integral);
+  const best = bestShift(stretches, integral, LEAST_CORRELATION[kind]);
   const found = best && atVertex(stretches, integral, best);
   if (!found || kind !== 'turn') return found;
   const shifts = tiltedHeadings(motion, vertical, VERTICAL_SIGMA).map((tilted) => {
@@ -75,11 +75,15 @@ interface Fit {
   factor: number;
 }
 
-function bestShift(stretches: readonly TrackStretch[], integral: RunningIntegral): Fit | null {
+function bestShift(
+  stretches: readonly TrackStretch[],
+  integral: RunningIntegral,
+  leastCorrelation: number,
+): Fit | null {
   const coarse = scan(stretches, integral, [-SEARCH_S, SEARCH_S], COARSE_S);
   const best = least(coarse);
   if (!best || best.fixes < LEAST_FIXES || Math.abs(best.shift) > SEARCH_S - RIVAL_S) return null;
-  if (Math.abs(best.correlation) < LEAST_CORRELATION) return null;
+  if (Math.abs(best.correlation) < leastCorrelation) return null;
   const rival = least(coarse.filter((one) => Math.abs(one.shift - best.shift) >= RIVAL_S));
   if (rival && 0.5 * best.fixes * Math.log(rival.variance / best.variance) < RIVAL_LOG_LIKELIHOOD)
     return null;
@@ -148,6 +152,7 @@ function fitAt(stretches: readonly TrackStretch[], integral: RunningIntegral, sh
 
 /** Weighted sums of squares and products of x and the value, the best line of each taken out. */
 function withoutLine({ fromS, toS, value, weight }: TrackStretch, integral: RunningIntegral, shift: number) {
+  if (integral.broken(fromS[0]! + shift, toS[toS.length - 1]! + shift)) return null;
   let [fixes, w, t, tt, x, tx, y, ty, xx, xy, yy] = [0, 0, 0, 0, 0, 0, 0, 0, 0, 0, 0];
   const [t0, y0] = [fromS[0]!, value[0]!];
   let x0 = NaN;

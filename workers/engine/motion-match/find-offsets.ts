@@ -3,6 +3,7 @@ import type { GnssColumns } from '../types';
 import type { MotionIntegrals } from './motion-integrals';
 import { clockOffset, type OffsetEstimate } from './clock-offset';
 import type { MotionSource } from './track-stretches';
+import { velocityLag, type VelocityLag } from './velocity-lag';
 
 export interface ClockFindings {
   /** Added to the GNSS times it brings the positions onto the IMU's clock, s, with its 1σ; null: the motion does not tell. */
@@ -18,22 +19,44 @@ export interface ClockFindings {
   turnAxis: number | null;
 }
 
-/** A lag, or a disagreement, counts from here, σ. */
+/** A lag counts from here, σ. */
 const SIGNIFICANT = 3;
 
 export function findClockOffsets(motion: MotionIntegrals, gnss: GnssColumns): ClockFindings {
   const by = (source: MotionSource) => {
     const turn = clockOffset(motion, gnss, 'turn', source);
-    return { turn, all: combined([turn, clockOffset(motion, gnss, 'speed', source)]) };
+    return { turn, all: combined([plausible(turn), plausible(clockOffset(motion, gnss, 'speed', source))]) };
   };
-  const [position, velocity] = [by('position'), by('velocity')];
-  const turn = velocity.turn ?? position.turn;
+  const velocity = by('velocity');
+  // Positions alone tell less by far; beside velocities they tell how old those are.
+  const position = velocity.all ? null : by('position');
+  const lag = velocity.all ? significant(velocityLag(gnss)) : null;
+  const turn = velocity.turn ?? position?.turn ?? null;
   return {
-    ...together(position.all, velocity.all),
+    offset: velocity.all ? later(velocity.all, lag) : (position?.all ?? null),
+    velocityLag: lag,
     turnFactor: turn?.factor ?? null,
     turnAxis: turn ? null : axisOfTurns(motion, gnss),
   };
 }
+
+type Weighed = Pick<OffsetEstimate, 'offsetS' | 'sigmaS'>;
+
+/** Only motion that the IMU feels in full size, but for its sign and unit, is the motion that GNSS saw. */
+function plausible(found: OffsetEstimate | null): OffsetEstimate | null {
+  if (!found) return null;
+  const size = Math.abs(found.factor);
+  return UNITS.some((unit) => size > unit / SIZE && size < unit * SIZE) ? found : null;
+}
+const UNITS = [1, 180 / Math.PI, Math.PI / 180, 9.80665, 1 / 9.80665];
+const SIZE = 1.35;
+
+const significant = (lag: VelocityLag | null): VelocityLag | null =>
+  lag && Math.abs(lag.lagS) > SIGNIFICANT * lag.sigmaS ? lag : null;
+
+/** Positions are younger than the velocities that the offset was found from. */
+const later = ({ offsetS, sigmaS }: Weighed, lag: VelocityLag | null): Weighed =>
+  lag ? { offsetS: offsetS + lag.lagS, sigmaS: Math.hypot(sigmaS, lag.sigmaS) } : { offsetS, sigmaS };
 
 /** Turns are about the vertical: a body axis that follows the course far from it has been taken for another. */
 function axisOfTurns(motion: MotionIntegrals, gnss: GnssColumns): number | null {
@@ -49,19 +72,6 @@ function axisOfTurns(motion: MotionIntegrals, gnss: GnssColumns): number | null 
 }
 
 const LEAST_TURN_CORRELATION = 0.9;
-
-type Weighed = Pick<OffsetEstimate, 'offsetS' | 'sigmaS'>;
-
-function together(
-  position: Weighed | null,
-  velocity: Weighed | null,
-): Pick<ClockFindings, 'offset' | 'velocityLag'> {
-  if (!position || !velocity) return { offset: position ?? velocity, velocityLag: null };
-  const lagS = position.offsetS - velocity.offsetS;
-  const sigmaS = Math.hypot(position.sigmaS, velocity.sigmaS);
-  if (Math.abs(lagS) > SIGNIFICANT * sigmaS) return { offset: position, velocityLag: { lagS, sigmaS } };
-  return { offset: combined([position, velocity]), velocityLag: null };
-}
 
 /** Mean weighted by 1/σ²; widened where the parts disagree. */
 function combined(parts: readonly (Weighed | null)[]): Weighed | null {

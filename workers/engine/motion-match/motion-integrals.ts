@@ -10,6 +10,8 @@ export interface MotionIntegrals {
   timeS: Float64Array;
   gyro: readonly [Float64Array, Float64Array, Float64Array];
   accel: readonly [Float64Array, Float64Array, Float64Array];
+  /** Ends of pauses: what happened in them is not in the integrals, s. */
+  breaksS: Float64Array;
 }
 
 /** Gathers them while samples pass by; memory grows by 56 bytes a grid step. */
@@ -18,12 +20,14 @@ export class MotionIntegrator {
   private readonly rows: number[][] = [[], [], [], [], [], [], []];
   private lastS = NaN;
   private writtenS = -Infinity;
+  private readonly breaks: number[] = [];
 
   /** `rates`: gyro x y z rad/s, accelerometer x y z m/s², mean over the interval that ends at `timeS`. */
   add(timeS: number, rates: Float64Array): void {
     const interval = timeS - this.lastS;
     if (interval > 0 && interval <= LONGEST_INTERVAL_S)
       for (let i = 0; i < 6; i += 1) this.sum[i]! += rates[i]! * interval;
+    else if (interval > 0) this.breaks.push(timeS);
     this.lastS = timeS;
     if (timeS - this.writtenS < STEP_S) return;
     this.writtenS = timeS;
@@ -37,6 +41,7 @@ export class MotionIntegrator {
       timeS: column(0),
       gyro: [column(1), column(2), column(3)],
       accel: [column(4), column(5), column(6)],
+      breaksS: Float64Array.from(this.breaks),
     };
   }
 }

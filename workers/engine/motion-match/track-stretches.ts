@@ -154,10 +154,16 @@ export class RunningIntegral {
   constructor(
     private readonly timeS: Float64Array,
     private readonly first: Float64Array,
+    private readonly breaksS: Float64Array,
   ) {
     this.second = new Float64Array(first.length);
     for (let k = 1; k < first.length; k += 1)
       this.second[k] = this.second[k - 1]! + 0.5 * (first[k]! + first[k - 1]!) * (timeS[k]! - timeS[k - 1]!);
+  }
+
+  /** Whether a pause lies between two times: the integral is worth nothing across it. */
+  broken(fromS: number, toS: number): boolean {
+    return this.breaksS.some((timeS) => timeS > fromS && timeS <= toS);
   }
 
   /** NaN outside. */
@@ -205,7 +211,7 @@ export function motionOf(
   vertical: readonly number[],
 ): RunningIntegral {
   const first = kind === 'turn' ? along(motion.gyro, vertical) : motion.accel[0];
-  return new RunningIntegral(motion.timeS, first);
+  return new RunningIntegral(motion.timeS, first, motion.breaksS);
 }
 
 /** Headings if the vertical were tilted by `tilt` rad about forward and about right: what roll and pitch leak. */
@@ -216,7 +222,7 @@ export const tiltedHeadings = (
 ): RunningIntegral[] =>
   [0, 1].map((axis) => {
     const tilted = vertical.map((part, i) => part + (i === axis ? tilt : 0));
-    return new RunningIntegral(motion.timeS, along(motion.gyro, tilted));
+    return new RunningIntegral(motion.timeS, along(motion.gyro, tilted), motion.breaksS);
   });
 
 /** On average an IMU feels gravity alone: its mean specific force points up, whatever the mounting. */
