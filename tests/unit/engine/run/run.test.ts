@@ -82,11 +82,47 @@ describe('a run without outages', () => {
   });
 });
 
-test('the same input gives the same bytes, however it is sliced', () => {
-  const once = complete(runOf(withoutTruth, [GNSS_OUT]), 1e9);
-  const again = complete(runOf(withoutTruth, [GNSS_OUT]), 37);
+/** The same drive with other sensors logged too; `parameters` say what is made of them. */
+function withEverything(): SimulatedCase {
+  const simulated = simulateCase(
+    { ...road.scenario, durationS: 90 },
+    {
+      aids: {
+        barometer: { enabled: true },
+        heading: { enabled: true },
+        odometer: { enabled: true },
+        attitude: { enabled: true },
+        nonHolonomic: { enabled: true },
+      },
+      states: {
+        gyroScale: { enabled: true },
+        accelScale: { enabled: true },
+        leverArm: { enabled: true },
+        barometerBias: { enabled: true },
+      },
+    },
+    {
+      aids: {
+        barometer: { rateHz: 4, phaseS: 0.013, sigmaM: 0.5, offsetSigmaM: 10 },
+        heading: { rateHz: 3, phaseS: 0.007, sigmaRad: 0.02 },
+        odometer: { rateHz: 7, sigmaMPerS: 0.1 },
+        attitude: { rateHz: 1, sigmaRad: 0.01 },
+      },
+    },
+  );
+  return { ...simulated, recording: { ...simulated.recording, reference: null as never } };
+}
+
+test.each([
+  ['all options off', () => withoutTruth],
+  ['all states and aids on', withEverything],
+])('the same input gives the same bytes, however it is sliced: %s', (_name, make) => {
+  const simulated = make();
+  const once = complete(runOf(simulated, [GNSS_OUT]), 1e9);
+  const again = complete(runOf(simulated, [GNSS_OUT]), 37);
   expect(bytes(once).equals(bytes(again))).toBe(true);
   expect(once.summary).toEqual(again.summary);
+  expect(once.solution.lat_deg!.every(Number.isFinite)).toBe(true);
 });
 
 test('the output rate does not change the solution', () => {
