@@ -55,6 +55,7 @@ export function settleMaps(heads: Heads, given: ChannelMap | null): SettledMaps 
     else settled.problems.push(unmapped(role, head, guess.missing, isMerged(heads)));
   }
   if (settled.map.imu) settled.problems.push(...completeAccelTime(heads, settled.map));
+  if (isMerged(heads)) shareTime(settled, given);
   settleAids(heads, given, settled);
   return settled;
 }
@@ -101,6 +102,14 @@ export function isMerged(heads: Heads): boolean {
     imu === gnss ||
     (imu.headers.join() === gnss.headers.join() && imu.rows[0]?.join() === gnss.rows[0]?.join())
   );
+}
+
+/** One column of one log counts the same for both sensors; the IMU's rate tells its unit better than the fixes do. */
+function shareTime({ map }: SettledMaps, given: ChannelMap | null): void {
+  if (!map.imu || !map.gnss || given?.gnss) return;
+  if (map.imu.time.columns.join() !== map.gnss.time.columns.join()) return;
+  const { offsetS, stamp } = map.gnss.time;
+  map.gnss = { ...map.gnss, time: { ...map.imu.time, offsetS, stamp } };
 }
 
 /** A given map may leave out how the accelerometer's own file tells time: that is guessed then. */

@@ -4,6 +4,7 @@ import type { CsvHead } from './csv';
 import { ColumnFinder } from './find-columns';
 import { guessed, type Guess } from './guess';
 import { accelUnitOf, gyroUnitOf, type GuessedUnit } from './guess-imu-units';
+import { guessUnnamedImu } from './guess-unnamed-imu';
 import { guessTime, type GuessedTime } from './guess-time';
 import { namesOtherDevice } from './header-words';
 import { sensedTriple, type Sensor, type Triple } from './pattern-columns';
@@ -21,6 +22,8 @@ interface FoundSensor {
 
 /** `second`: the head of a second file, where gyro and accelerometer have one each. */
 export function guessImuMap(first: CsvHead, second?: CsvHead): Guess<ImuMap> {
+  const unnamed = !second && guessUnnamedImu(first);
+  if (unnamed) return unnamed;
   const heads: [ImuRole, CsvHead][] = second ? [['imu', first], ['imu2', second]] : [['imu', first]]; // prettier-ignore
   const whole = heads.flatMap(([role, head]) => incrementsOf(role, head) ?? ratesOf(role, head) ?? []);
   const increments = whole[0] ? whole[0].increments : false;

@@ -51,6 +51,10 @@ export function guessTime(head: CsvHead, finder: ColumnFinder, role: FileRole): 
   );
 }
 
+/** Of a column that no header names. */
+export const timeByStep = (head: CsvHead, index: number, role: FileRole): GuessedTime =>
+  counted(head, head.headers[index]!, index, role);
+
 function single(head: CsvHead, finder: ColumnFinder, role: FileRole): GuessedTime | null {
   const own = (header: string) => !namesOtherDevice(header, role) && !isEmptyColumn(head, header);
   const found = finder.find(TIME_WORDS, own) ?? finder.find(TIME_OF_WEEK_WORDS, own);
@@ -147,6 +151,13 @@ function fromValues(
       : `The header “${header}” says ${BASE_WORDS[base]}, but the values step by ${step}, which is unusual for that.`;
     return named([header], base, fits ? 0.98 : 0.4, reason);
   }
+  return counted(head, header, index, role);
+}
+
+/** A count whose unit only its step tells. */
+function counted(head: CsvHead, header: string, index: number, role: FileRole): GuessedTime {
+  const values = valuesOf(head, index);
+  const step = medianStep(values);
   const base = baseOf(values, PLAUSIBLE_S[role]);
   const assumed = `The time column “${header}” names no unit: taken as ${BASE_WORDS[base]}.`;
   const reason = `“${header}” names no unit; its values step by ${step}, a usual interval in ${BASE_WORDS[base]}.`;

@@ -24,6 +24,11 @@ const axis3 = <P extends string>(
   >;
 };
 
+const withNames = ({ quantity, names }: ChannelWords, more: readonly string[]): ChannelWords => ({
+  quantity,
+  names: [...names, ...more],
+});
+
 /** One column of time. */
 export const TIME_WORDS: ChannelWords = {
   quantity: 'time',
@@ -57,12 +62,25 @@ export const TIME_OF_WEEK_WORDS: ChannelWords = {
   names: ['tow', 'gpstow', 'timeofweek', 'gpstimeofweek', 'secondsofweek', 'gpssecondsofweek', 'gpsseconds', 'sow', 'itow'],
 }; // prettier-ignore
 
-export const IMU_WORDS = {
+/** Body rates by their letters and by what turns. */
+const BODY_RATES = {
+  gyro_x: ['p', 'rollrate'],
+  gyro_y: ['q', 'pitchrate'],
+  gyro_z: ['r', 'yawrate'],
+} as const;
+
+const NAMED_AXES = {
   ...axis3('gyro', 'rate', ['gyro', 'gyr', 'gyroscope', 'gyrorate', 'angularvelocity', 'angvel', 'angularrate', 'rotationrate', 'turnrate', 'rate', 'omega', 'w', 'g']),
   ...axis3('accel', 'accel', ['accel', 'acc', 'acceleration', 'accelerometer', 'linearacceleration', 'linacc', 'specificforce', 'force', 'f', 'a']),
   ...axis3('dtheta', 'rate', ['deltatheta', 'dtheta', 'deltaangle', 'dangle', 'dang', 'deltaang']),
   ...axis3('dv', 'accel', ['deltav', 'dv', 'deltavelocity', 'dvel', 'deltavel']),
 }; // prettier-ignore
+export const IMU_WORDS = {
+  ...NAMED_AXES,
+  gyro_x: withNames(NAMED_AXES.gyro_x, BODY_RATES.gyro_x),
+  gyro_y: withNames(NAMED_AXES.gyro_y, BODY_RATES.gyro_y),
+  gyro_z: withNames(NAMED_AXES.gyro_z, BODY_RATES.gyro_z),
+};
 export type ImuChannel = keyof typeof IMU_WORDS;
 
 const along = (
@@ -108,7 +126,7 @@ export const GNSS_WORDS = {
   lon: { quantity: 'angle', names: ['lon', 'long', 'lng', 'longitude', 'geodeticlongitude', 'positionlon', 'poslon'] },
   heightEllipsoid: {
     quantity: 'length',
-    names: ['heightellipsoid', 'ellipsoidheight', 'ellipsoidalheight', 'heightaboveellipsoid', 'hae', 'altellipsoid', 'altitudeellipsoid', 'heighthae', 'althae', 'height', 'h', 'hgt'],
+    names: ['heightellipsoid', 'ellipsoidheight', 'ellipsoidalheight', 'heightaboveellipsoid', 'hae', 'altellipsoid', 'altitudeellipsoid', 'heighthae', 'althae', 'height', 'h', 'hgt', 'hell', 'ellheight', 'heightell'],
   },
   heightSea: {
     quantity: 'length',
@@ -139,7 +157,7 @@ export const GNSS_WORDS = {
   },
   course: {
     quantity: 'angle',
-    names: ['course', 'courseoverground', 'cog', 'trackangle', 'track', 'courseangle', 'headmot', 'headingofmotion', 'motionheading', 'bearing', 'gcrs', 'crs', 'gcourse'],
+    names: ['course', 'courseoverground', 'cog', 'trackangle', 'track', 'courseangle', 'headmot', 'headingofmotion', 'motionheading', 'bearing', 'gcrs', 'crs', 'gcourse', 'gpsheading', 'gnssheading'],
   },
   sigmaN: along('length', NORTH, SIGMA_STEMS),
   sigmaE: along('length', EAST, SIGMA_STEMS),

@@ -66,11 +66,21 @@ const NAMED: [string, string, number][] = [
     1e9,
   ],
   ['words of one letter and a counter', 'TimeUS,GyrX,GyrY,GyrZ,I,AccX,AccY,AccZ', 1e6],
+  ['body rates by their letters', 't_us,p (rad/s),q (rad/s),r (rad/s),n,ax,ay,az', 1e6],
 ];
 
 test.each(NAMED)('headers: %s', async (_, header, ticks) => {
   const rows = IMU.map((row) => [Math.round(row[0]! * ticks), ...row.slice(1, 4), 0, ...row.slice(4)]);
   expectSameImu(await decodedLogs(at, { imu: csvText(header, rows), gnss: PLAIN_GNSS }));
+});
+
+test('seven columns without a header: gravity tells the sensors apart, and that is said', async () => {
+  const imu = ROWS.join('\n');
+  const result = ready(await decodeLogs(at.store, { imu, gnss: PLAIN_GNSS }));
+  expect(
+    result.health.findings.some(({ sentence }) => sentence.includes('columns 2 to 4 are taken for the gyro')),
+  ).toBe(true);
+  expectSameImu(await decodedLogs(at, { imu, gnss: PLAIN_GNSS }));
 });
 
 test('fixes as a receiver’s message holds them: 10⁻⁷ degrees, mm, mm/s, ms of the week', async () => {

@@ -113,6 +113,7 @@ const fixAt = (k: number) => GNSS[Math.min(GNSS.length - 1, Math.floor(k / 20))]
 const ONE_LOG: [string, string][] = [
   ['rows of their own on one clock', csvText(MERGED, byTime([...IMU.map((r) => [...r, ...SIX]), ...GNSS.map((r) => [r[0]!, ...SIX, ...r.slice(1)])]))],
   ['fixes beside the sample of their epoch', csvText(MERGED, IMU.map((r, k) => [...r, ...(isEpoch(k) ? fixAt(k) : SIX)]))],
+  ['milliseconds of one column, whose unit only the IMU tells', csvText(MERGED.replace('time_s', 'timestamp'), IMU.map((r, k) => [r[0]! * 1000, ...r.slice(1), ...fixAt(k)]))],
   ['each fix held until the next', csvText(MERGED, IMU.map((r, k) => [...r, ...fixAt(k)]))],
 ]; // prettier-ignore
 
