@@ -1,7 +1,7 @@
 import { scenarioSchema } from '@/shared/contracts/scenarios';
 import { dcmFromQuat, quatFromEuler, quatMultiply, rotationVectorFromQuat } from '@/workers/engine/attitude';
 import { wrapAngle } from '@/workers/engine/geodesy';
-import { emptyReference, ReferenceReader } from '@/workers/engine/run/reference';
+import { type emptyReference, ReferenceReader } from '@/workers/engine/run/reference';
 import { simulateScenario } from '@/workers/engine/simulator/scenario';
 
 const scenario = scenarioSchema.parse({ motion: 'fixed-wing', durationS: 300, imuRateHz: 50, seed: 12 });
