@@ -1,5 +1,5 @@
 /** One row of a GNSS or reference file in degrees, metres, m/s, north–east–down. NaN where a value is missing. */
-import type { FileRole, GnssMap, ReferenceMap } from '@/shared/contracts/recordings';
+import type { GnssMap, ReferenceMap } from '@/shared/contracts/recordings';
 import { KNOT_M_S, RAD_PER_DEG } from '@/shared/units';
 import { degreesIn, hemisphereIn, minutesIn, type CellParser } from './angles';
 import { numberIn } from './cells';
