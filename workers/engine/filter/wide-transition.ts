@@ -10,12 +10,15 @@ export class WideTransition extends Transition {
   override readonly size: number;
   /** Mean angular rate (rad/s) and specific force (m/s²) of the step. */
   private readonly mean = new Float64Array(6);
-  private readonly x = new Float64Array(STATES);
-  private readonly y = new Float64Array(STATES);
+  /** The fifteen of each vector, biases with what the scale factors add to them; and Φ times that. */
+  private readonly x: Float64Array;
+  private readonly y: Float64Array;
 
   constructor(private readonly layout: StateLayout) {
     super();
     this.size = layout.size;
+    this.x = new Float64Array(layout.size * STATES);
+    this.y = new Float64Array(layout.size * STATES);
   }
 
   /** As `Transition.form`; `source` must have `sumMeasured`. */
@@ -32,32 +35,27 @@ export class WideTransition extends Transition {
     target: Float64Array,
     count: number,
   ): void {
-    const { x, y, size } = this;
-    for (let v = 0; v < count; v += 1) {
-      const at = v * vectorStep;
-      const to = v * size;
-      for (let i = 0; i < STATES; i += 1) x[i] = source[at + i * elementStep]!;
-      this.addScale(this.layout.gyroScale, GYRO_BIAS, 0, source, at, elementStep);
-      this.addScale(this.layout.accelScale, ACCEL_BIAS, 3, source, at, elementStep);
-      super.apply(x, STATES, 1, y, 1);
-      for (let i = 0; i < GYRO_BIAS; i += 1) target[to + i] = y[i]!;
+    const { x, y, size, layout } = this;
+    for (let v = 0, at = 0, to = 0; v < count; v += 1, at += vectorStep, to += STATES) {
+      for (let i = 0, from = at; i < STATES; i += 1, from += elementStep) x[to + i] = source[from]!;
+      if (layout.gyroScale >= 0)
+        this.addScale(to + GYRO_BIAS, 0, source, at + layout.gyroScale * elementStep, elementStep);
+      if (layout.accelScale >= 0)
+        this.addScale(to + ACCEL_BIAS, 3, source, at + layout.accelScale * elementStep, elementStep);
+    }
+    super.apply(x, STATES, 1, y, count);
+    for (let v = 0, at = 0, to = 0; v < count; v += 1, at += vectorStep, to += size) {
+      const own = v * STATES;
+      for (let i = 0; i < GYRO_BIAS; i += 1) target[to + i] = y[own + i]!;
       for (let i = GYRO_BIAS; i < size; i += 1)
         target[to + i] = this.decay(i) * source[at + i * elementStep]!;
     }
   }
 
-  /** Adds scale × measured to the biases in `x`. */
-  private addScale(
-    first: number,
-    bias: number,
-    mean: number,
-    source: Float64Array,
-    at: number,
-    step: number,
-  ): void {
-    if (first < 0) return;
+  /** Adds scale × measured to the three biases from `bias` on in `x`. */
+  private addScale(bias: number, mean: number, source: Float64Array, at: number, step: number): void {
     for (let i = 0; i < 3; i += 1)
-      this.x[bias + i] = this.x[bias + i]! + this.mean[mean + i]! * source[at + (first + i) * step]!;
+      this.x[bias + i] = this.x[bias + i]! + this.mean[mean + i]! * source[at + i * step]!;
   }
 
   private decay(i: number): number {
