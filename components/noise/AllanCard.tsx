@@ -1,10 +1,9 @@
 import { lazy, Suspense, useMemo, useState } from 'react';
-import { StyleSheet, View } from 'react-native';
+import { View } from 'react-native';
 import { VisuallyHidden } from '@/components/charts/VisuallyHidden';
 import { Card } from '@/components/ui/Card';
 import { Skeleton } from '@/components/ui/Skeleton';
 import { Text } from '@/components/ui/Text';
-import { space } from '@/constants/theme';
 import type { NoiseAnalysis } from '@/shared/contracts/noise';
 import type { SensorFigures } from '@/shared/contracts/vehicles';
 import { formatNumber } from '@/shared/format';
@@ -34,7 +33,7 @@ export function AllanCard({ sensor, analysis, datasheet }: AllanCardProps) {
     return datasheetCurve(datasheet, sensor, [Math.min(...taus), Math.max(...taus)]);
   }, [curves, datasheet, sensor]);
   return (
-    <Card title={`${title}: Allan deviation`} style={styles.card}>
+    <Card title={`${title}: Allan deviation`}>
       <Text variant="label" tone="soft">
         {`x solid, y dashed, z dotted; bars 68 %; the fit in thin lines${expected ? '; the datasheet in grey' : ''}.`}
       </Text>
@@ -68,5 +67,3 @@ function sentence({ axis, points }: ReturnType<typeof allanCurves>[number], unit
   const [first] = points;
   return `Axis ${axis}: ${formatNumber(first!.deviation)} ${unit} at ${formatNumber(first!.tauS)} s, lowest ${formatNumber(lowest.deviation)} ${unit} at ${formatNumber(lowest.tauS)} s.`;
 }
-
-const styles = StyleSheet.create({ card: { flex: 1, minWidth: 0, gap: space.s } });

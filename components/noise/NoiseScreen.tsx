@@ -15,6 +15,7 @@ import { useRecording } from '@/hooks/recordings';
 import { useVehicle } from '@/hooks/vehicles';
 import type { Recording } from '@/shared/contracts/recordings';
 import { AllanCard } from './AllanCard';
+import { SENSOR_NAMES } from './sensors';
 import { NoiseActions } from './NoiseActions';
 import { StretchCard } from './StretchCard';
 import { TermsCard } from './TermsCard';
@@ -80,12 +81,18 @@ function Loaded({ recording }: { recording: Recording }) {
       {analysis ? (
         <>
           <View style={extraWide ? styles.columns : styles.stack}>
-            <AllanCard sensor="gyro" analysis={analysis} datasheet={datasheet} />
-            <AllanCard sensor="accel" analysis={analysis} datasheet={datasheet} />
+            {SENSOR_NAMES.map((sensor) => (
+              <View key={sensor} style={extraWide ? styles.column : null}>
+                <AllanCard sensor={sensor} analysis={analysis} datasheet={datasheet} />
+              </View>
+            ))}
           </View>
           <View style={extraWide ? styles.columns : styles.stack}>
-            <TermsCard sensor="gyro" analysis={analysis} datasheet={datasheet} />
-            <TermsCard sensor="accel" analysis={analysis} datasheet={datasheet} />
+            {SENSOR_NAMES.map((sensor) => (
+              <View key={sensor} style={extraWide ? styles.column : null}>
+                <TermsCard sensor={sensor} analysis={analysis} datasheet={datasheet} />
+              </View>
+            ))}
           </View>
           <Card title="What to know of these figures">
             {analysis.notes.map((note) => (
@@ -105,5 +112,6 @@ function Loaded({ recording }: { recording: Recording }) {
 
 const styles = StyleSheet.create({
   columns: { flexDirection: 'row', gap: space.l, alignItems: 'stretch' },
+  column: { flex: 1, minWidth: 0 },
   stack: { gap: space.l },
 });

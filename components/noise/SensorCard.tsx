@@ -17,7 +17,7 @@ import { usePatchVehicle } from '@/hooks/vehicles';
 import { sensorFiguresSchema, type SensorModel, type Vehicle } from '@/shared/contracts/vehicles';
 import { formatClock } from '@/shared/format';
 import { defaultUnit, fromDisplay } from '@/shared/units';
-import { SENSORS, shownFigure, type Sensor } from './sensors';
+import { SENSOR_NAMES, SENSORS, shownFigure, type Sensor } from './sensors';
 
 const shown = z.record(
   z.string(),
@@ -25,7 +25,6 @@ const shown = z.record(
 );
 const formSchema = z.object({ name: z.string().max(120), gyro: shown, accel: shown });
 type SensorForm = z.infer<typeof formSchema>;
-const NAMES = Object.keys(SENSORS) as Sensor[];
 
 /** The IMU's noise as its datasheet gives it, and as it was measured. */
 export function SensorCard({ vehicle, readOnly }: { vehicle: Vehicle; readOnly: boolean }) {
@@ -55,7 +54,7 @@ export function SensorCard({ vehicle, readOnly }: { vehicle: Vehicle; readOnly: 
         placeholder="Type and serial number"
         editable={!readOnly}
       />
-      {NAMES.map((sensor) => (
+      {SENSOR_NAMES.map((sensor) => (
         <View key={sensor} style={styles.sensor}>
           <Text variant="label" strong level={3}>
             {`${SENSORS[sensor].title}, datasheet`}
@@ -96,7 +95,7 @@ function Measured({ measured }: { measured: NonNullable<SensorModel['measured']>
         {`${measured.recordingName}, ${formatClock(measured.fromS)}–${formatClock(measured.toS)}`}
       </Figures>
       <View style={styles.fields}>
-        {NAMES.flatMap((sensor) =>
+        {SENSOR_NAMES.flatMap((sensor) =>
           SENSORS[sensor].figures.flatMap((spec) => {
             const value = shownFigure(measured, sensor, spec);
             if (value === null) return [];

@@ -19,7 +19,7 @@ export interface TermsCardProps {
 export function TermsCard({ sensor, analysis, datasheet }: TermsCardProps) {
   const { title, figures } = SENSORS[sensor];
   return (
-    <Card title={`${title}: fitted terms`} style={styles.card}>
+    <Card title={`${title}: fitted terms`}>
       {figures
         .filter(({ term }) => term !== null)
         .map((spec) => (
@@ -80,7 +80,6 @@ function Term({ sensor, spec, analysis, datasheet }: TermsCardProps & { spec: Fi
 }
 
 const styles = StyleSheet.create({
-  card: { flex: 1, minWidth: 0 },
   term: { borderTopWidth: hairline, paddingTop: space.m, gap: space.xs },
   axes: { flexDirection: 'row', flexWrap: 'wrap', gap: space.m },
   axis: { flexGrow: 1, flexBasis: 120, minWidth: 0 },

@@ -46,6 +46,8 @@ export const SENSORS: Record<Sensor, SensorSpec> = {
   },
 }; // prettier-ignore
 
+export const SENSOR_NAMES = Object.keys(SENSORS) as Sensor[];
+
 /** A figure in its display unit; null where it is not known. */
 export function shownFigure(figures: SensorFigures | null, sensor: Sensor, spec: FigureSpec): number | null {
   const si = figureOf(figures, sensor, spec.field);

@@ -2,11 +2,11 @@
 import type { BenchLink } from '@/components/bench/bench-link';
 import { parametersSchema } from '@/shared/contracts/parameters';
 import type { SensorFigures } from '@/shared/contracts/vehicles';
-import { figureOf, SENSORS, type Sensor } from './sensors';
+import { figureOf, SENSOR_NAMES, SENSORS } from './sensors';
 
 /** Only what is known, and what the contract accepts. */
 export function startValues(figures: SensorFigures): NonNullable<BenchLink['changes']> {
-  return (Object.keys(SENSORS) as Sensor[]).flatMap((sensor) =>
+  return SENSOR_NAMES.flatMap((sensor) =>
     SENSORS[sensor].figures.flatMap(({ field }) => {
       const value = figureOf(figures, sensor, field);
       if (value === null || !parametersSchema.safeParse({ [sensor]: { [field]: value } }).success) return [];

@@ -1,7 +1,7 @@
 /** What the filter takes of a noise analysis, and what to know of it. */
 import type { NoiseTerm } from '@/shared/contracts/noise';
 import type { SensorFigures } from '@/shared/contracts/vehicles';
-import { formatNumber } from '@/shared/format';
+import { formatDuration } from '@/shared/format';
 import type { NoiseAnalysis } from '../engine/allan/analysis';
 import { noiseStartValues, type NoiseStartValues } from '../engine/allan/start-values';
 
@@ -59,8 +59,8 @@ export function notesOf(analyses: readonly NoiseAnalysis[], cut: boolean): strin
       return axes.length > 0 ? [`${sensor} ${axes.join(', ')}`] : [];
     });
     if (hidden.length === 0) return [];
-    const minutes = formatNumber(analyses[0]!.durationS / 60, 2);
-    return [`${minutes} min at rest cannot tell the ${words} of ${hidden.join(' and ')}. ${advice}`];
+    const length = formatDuration(analyses[0]!.durationS);
+    return [`${length} at rest cannot tell the ${words} of ${hidden.join(' and ')}. ${advice}`];
   });
   if (cut) notes.push('The stretch has gaps: its longest part without one was taken.');
   notes.push('A turn-on bias shows only over several starts: take it from the datasheet.');
