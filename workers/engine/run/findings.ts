@@ -7,6 +7,7 @@ import { formatNumber } from '@/shared/format';
 import { meanVarianceFactor } from '../statistics/correlation';
 import { chiSquaredQuantile } from '../statistics/distributions';
 import { percentile } from '../statistics/descriptive';
+import { aidFindings } from './aid-findings';
 import { coastingFindings } from './coasting-findings';
 import type { Run } from './run';
 import type { InnovationWriter } from './tables';
@@ -27,7 +28,7 @@ type GroupName = 'position' | 'velocity';
 
 export function findings(summary: Figures, run: Run): RunFinding[] {
   const all = (['position', 'velocity'] as const).flatMap((group) => groupFindings(summary, run, group));
-  all.push(...coastingFindings(summary, run));
+  all.push(...coastingFindings(summary, run), ...aidFindings(summary, run));
   const order = { stop: 0, warn: 1, info: 2, good: 3 };
   return all.sort((a, b) => order[a.severity] - order[b.severity]);
 }
