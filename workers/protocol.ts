@@ -11,6 +11,7 @@ import type {
   FileRole,
   HealthReport,
   IntakeProblem,
+  MapPreview,
   Series,
   SeriesChannel,
   Strip,
@@ -28,6 +29,10 @@ export interface DecodeJob {
   channelMap: ChannelMap | null;
   /** Used where the channel map says nothing of axes. */
   vehicleAxes: AxisMap;
+}
+/** What a channel map makes of the beginnings of the files; nothing is kept. */
+export interface MapPreviewJob extends Omit<DecodeJob, 'kind'> {
+  kind: 'map-preview';
 }
 /** A bad file is an outcome, not an error: nothing of it is kept in the store but the raw upload. */
 export type DecodeResult =
@@ -139,6 +144,7 @@ export interface JobResults {
   scenario: ScenarioResult;
   run: RunJobResult;
   noise: NoiseAnalysis;
+  'map-preview': MapPreview;
   'recording-series': Series;
   'baseline-track': BaselineTrack;
   'run-series': Uint8Array;
@@ -149,6 +155,7 @@ export type WorkerJob =
   | ScenarioJob
   | RunJob
   | NoiseJob
+  | MapPreviewJob
   | RecordingSeriesJob
   | BaselineTrackJob
   | RunSeriesJob

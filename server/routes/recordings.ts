@@ -4,6 +4,7 @@ import {
   baselineTrackQuerySchema,
   baselineTrackSchema,
   channelMapSchema,
+  mapPreviewSchema,
   recordingListQuerySchema,
   recordingMetaSchema,
   recordingPatchSchema,
@@ -26,6 +27,7 @@ import {
   getRecording,
   listRecordings,
   mapRecording,
+  previewMap,
 } from '../services/recordings';
 import { acceptRemedy, undoRemedy } from '../services/remedies';
 import { sensorNoise } from '../services/sensor-noise';
@@ -127,6 +129,18 @@ export const recordingRoutes: Route[] = [
     success: { status: 202, description: 'Decoding follows', ...one },
     handle: async ({ ctx, actor, params, body }) =>
       presentRecording(await mapRecording(ctx, actor, params.id, body)),
+  }),
+  workspaceRoute({
+    method: 'post',
+    path: '/recordings/:id/map-preview',
+    tag,
+    summary: 'What a channel map makes of the first rows; changes nothing',
+    permission: 'recording:write',
+    params: idParams,
+    body: channelMapSchema,
+    success: { status: 200, description: 'The preview', schema: mapPreviewSchema, name: 'MapPreview' },
+    failures: { 409: 'A newer preview took its place' },
+    handle: ({ ctx, actor, params, body }) => previewMap(ctx, actor, params.id, body),
   }),
   workspaceRoute({
     method: 'post',

@@ -111,16 +111,18 @@ async function simulate(ctx: Context, recording: Recording): Promise<void> {
   recording.files = await ctx.db.RecordingFile.findAll({ where: { recordingId } });
 }
 
+/** What a decoding job is told of a recording, whatever map it is to try. */
+export const decodeJobOf = (recording: Recording, channelMap: ChannelMap | null) => ({
+  recordingId: recording.id,
+  files: (recording.files ?? []).map(({ role, name, storeKey }) => ({ role, name, key: storeKey })),
+  channelMap,
+  vehicleAxes: recording.vehicle?.axes ?? IDENTITY_AXES,
+});
+
 function runDecode(ctx: Context, recording: Recording): Promise<DecodeResult> {
   const from = recording.scenario ? SCENARIO_SHARE : 0;
   const job = ctx.pool.submit(
-    {
-      kind: 'decode',
-      recordingId: recording.id,
-      files: (recording.files ?? []).map(({ role, name, storeKey }) => ({ role, name, key: storeKey })),
-      channelMap: recording.givenMap,
-      vehicleAxes: recording.vehicle?.axes ?? IDENTITY_AXES,
-    },
+    { kind: 'decode', ...decodeJobOf(recording, recording.givenMap) },
     { onEvent: progressReport(ctx, recording, from, 1 - from) },
   );
   return ctx.activeJobs.track(recording.id, job);

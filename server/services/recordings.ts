@@ -4,6 +4,7 @@ import { type Includeable, Op, type Transaction, type WhereOptions } from 'seque
 import type {
   ChannelMap,
   FileRole,
+  MapPreview,
   RecordingListQuery,
   RecordingMeta,
   RecordingPatch,
@@ -11,12 +12,12 @@ import type {
 } from '@/shared/contracts/recordings';
 import type { ScenarioRequest } from '@/shared/contracts/scenarios';
 import { IDENTITY_AXES } from '@/shared/contracts/vehicles';
-import { storeKeys } from '@/workers';
+import { JobCancelled, storeKeys } from '@/workers';
 import type { Actor, Context } from '../context';
 import { conflict, inUse, invalid, noSuch } from '../errors';
 import type { Recording } from '../models/recording';
 import { escapeLike, recordBy } from './audit';
-import { announce, redecode, sendDecode } from './decoding';
+import { announce, decodeJobOf, redecode, sendDecode } from './decoding';
 import { discardFiles } from './discard';
 import { type Found, newestFirst } from './paging';
 import { sameAxes } from './vehicles';
@@ -185,6 +186,22 @@ export async function mapRecording(
     );
   });
   return getRecording(ctx, actor, id);
+}
+
+/** What `map` makes of the first rows; nothing is changed. A newer preview by the same person takes its place. */
+export async function previewMap(
+  ctx: Context,
+  actor: Actor,
+  id: string,
+  map: ChannelMap,
+): Promise<MapPreview> {
+  const recording = await getRecording(ctx, actor, id);
+  const job = { kind: 'map-preview', ...decodeJobOf(recording, map) } as const;
+  const latestKey = `map-preview:${id}:${actor.userId}`;
+  return ctx.pool.submit(job, { latestKey, retryOnCrash: true }).result.catch((error: unknown) => {
+    if (error instanceof JobCancelled && error.superseded) throw conflict('A newer preview took its place.');
+    throw error;
+  });
 }
 
 /** Deletes it with its runs. Throws 409 while a version that has left the draft state rests on it. */

@@ -426,3 +426,12 @@ export const seriesSchema = z.object({
   ),
 });
 export type Series = z.infer<typeof seriesSchema>;
+
+/** POST /recordings/:id/map-preview with a channel map: what it makes of the first rows. */
+export const mapPreviewSchema = z.object({
+  outcome: z.enum(['ready', 'needs-mapping', 'rejected']),
+  problems: z.array(intakeProblemSchema),
+  health: healthReportSchema.nullable().describe('Of the first rows alone.'),
+  series: seriesSchema.nullable().describe('Gyro and accelerometer of the first rows, thinned.'),
+});
+export type MapPreview = z.infer<typeof mapPreviewSchema>;

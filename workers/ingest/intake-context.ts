@@ -21,6 +21,8 @@ export interface IntakeContext {
   map: ChannelMap;
   vehicleAxes: AxisMap;
   assumed: readonly string[];
+  /** Rows of each file after which reading stops: for a preview; Infinity: all. */
+  rowLimit: number;
   /** Share of all bytes that has been read, 0…1. */
   progress(share: number): void;
   breathe(): Promise<void>;
@@ -42,6 +44,7 @@ export async function eachBatch(
   const notes: TableNotes = {};
   const order = FILE_ORDER.filter((one) => context.files.has(one));
   const table = await openTable(context.store, context.files.get(role)!, context.heads.get(role)!, notes);
+  let rows = 0;
   for await (const batch of table.batches) {
     try {
       await take(batch);
@@ -51,6 +54,8 @@ export async function eachBatch(
     }
     if (order.includes(role)) context.progress((order.indexOf(role) + table.readShare()) / order.length);
     await context.breathe();
+    rows += batch.rows.length;
+    if (rows >= context.rowLimit) break;
   }
   return notes;
 }

@@ -14,7 +14,12 @@ import { storeKeys, type Store } from '../store/types';
 import { writeBaselineTrack } from './baseline-track';
 import type { JobHelpers } from './helpers';
 
-export async function decode(job: DecodeJob, helpers: JobHelpers): Promise<DecodeResult> {
+/** `rowLimit`: rows of each file after which reading stops. */
+export async function decode(
+  job: DecodeJob,
+  helpers: JobHelpers,
+  rowLimit = Infinity,
+): Promise<DecodeResult> {
   const { store } = helpers;
   await removeDecoded(store, job.recordingId);
   const files = filesOf(job);
@@ -40,6 +45,7 @@ export async function decode(job: DecodeJob, helpers: JobHelpers): Promise<Decod
       map: settled.map,
       vehicleAxes: job.vehicleAxes,
       assumed: settled.assumed,
+      rowLimit,
       progress: (share) => {
         // A file may be gone through twice.
         reached = Math.max(reached, share * 0.95);
@@ -47,7 +53,7 @@ export async function decode(job: DecodeJob, helpers: JobHelpers): Promise<Decod
       },
       breathe: helpers.breathe,
     });
-    await writeBaselineTrack(store, job.recordingId, decoded.gnss);
+    if (rowLimit === Infinity) await writeBaselineTrack(store, job.recordingId, decoded.gnss);
     const sha256 = hashOf(decoded.written);
     await writeDecodedNote(store, job.recordingId, {
       sha256,

@@ -3,6 +3,7 @@ import type { JobKind, JobOf, JobResults, WorkerJob } from '../protocol';
 import { baselineTrack } from './baseline-track';
 import { decode } from './decode';
 import type { JobHelpers } from './helpers';
+import { mapPreview } from './map-preview';
 import { noise } from './noise';
 import { recordingSeries } from './recording-series';
 import { run } from './run';
@@ -17,6 +18,7 @@ export const handlers: { [K in JobKind]: JobHandler<K> } = {
   scenario,
   run,
   noise,
+  'map-preview': mapPreview,
   'recording-series': recordingSeries,
   'baseline-track': baselineTrack,
   'run-series': runSeries,

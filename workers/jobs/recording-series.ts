@@ -15,6 +15,15 @@ interface Channel {
 
 export async function recordingSeries(job: RecordingSeriesJob, helpers: JobHelpers): Promise<Series> {
   const { columns } = await helpers.recordings.load(job.recordingId);
+  return seriesOf(columns, job, helpers);
+}
+
+/** The channels that `job` names, thinned. */
+export async function seriesOf(
+  columns: RecordingColumns,
+  job: Pick<RecordingSeriesJob, 'channels' | 'fromS' | 'toS' | 'points'>,
+  helpers: Pick<JobHelpers, 'breathe'>,
+): Promise<Series> {
   const channels: Series['channels'] = [];
   for (const name of job.channels) {
     channels.push({ name, unit: SERIES_CHANNELS[name], ...decimated(channelOf(columns, name), job) });
