@@ -6,7 +6,7 @@ import type { CsvHead } from './csv';
 import { ColumnFinder, type FoundColumn } from './find-columns';
 import { guessed, type Guess } from './guess';
 import { areWhole, guessPosition, type GuessedPosition } from './guess-position';
-import { guessTime, type GuessedTime } from './guess-time';
+import { guessTime, medianStep, type GuessedTime } from './guess-time';
 import { guessVelocity, type GuessedVelocity } from './guess-velocity';
 import { namesOtherDevice } from './header-words';
 import { ATTITUDE_WORDS, GNSS_WORDS, type GnssChannel } from './vocabulary';
@@ -33,7 +33,8 @@ export function guessGnssMap(head: CsvHead, merged = false): Guess<GnssMap> {
   if (positionSigma) map.positionSigma = positionSigma;
   if (velocity.map && velocitySigma) map.velocitySigma = velocitySigma;
   if (quality) map.quality = quality.header;
-  if (merged && holdsFixes(head, map.position)) map.repeats = 'drop';
+  const dense = merged || typicalStepS(head, time) <= DENSE_S;
+  if (dense && holdsFixes(head, map.position)) map.repeats = 'drop';
   const sigmas = ofSigma('position σ', positionSigma).concat(
     ofSigma('velocity σ', map.velocitySigma ?? null),
   );
@@ -76,7 +77,7 @@ const missingOf = (hasTime: boolean, position: GuessedPosition, find: Find) => [
 ];
 
 function velocityOf(head: CsvHead, find: Find, time: GuessedTime, position: GnssMap['position']): GuessedVelocity {
-  const clock = new Clock(time.map, time.map.columns.map((name) => columnIndex(head.headers, name)), head.decimalComma);
+  const clock = clockFor(head, time);
   const place = [find('lat'), find('lon')];
   const inDegrees = position.unit === 'deg' && place[0] && place[1] ? ([place[0], place[1]] as const) : null;
   return guessVelocity(head, find, (row) => clock.read(row) ?? NaN, inDegrees);
@@ -98,6 +99,18 @@ function takeMillimetres(
   if (positionSigma && whole('sigmaHorizontal', 'sigmaVertical')) positionSigma.unit = 'mm';
   if (velocitySigma && whole('sigmaSpeed')) velocitySigma.unit = 'mm/s';
 }
+
+/** Rows that come faster than receivers give fixes, s. */
+const DENSE_S = 0.04;
+const STEP_ROWS = 500;
+
+function typicalStepS(head: CsvHead, time: GuessedTime): number {
+  const clock = clockFor(head, time);
+  return medianStep(head.rows.slice(0, STEP_ROWS).map((row) => clock.read(row) ?? NaN));
+}
+
+const clockFor = (head: CsvHead, { map }: GuessedTime) =>
+  new Clock(map, map.columns.map((name) => columnIndex(head.headers, name)), head.decimalComma); // prettier-ignore
 
 /** A merged log that writes the last fix beside every IMU sample: far fewer positions than rows with one. */
 function holdsFixes(head: CsvHead, position: GnssMap['position']): boolean {

@@ -171,6 +171,23 @@ test('a column of words that are no sensors leaves the table as it is', async ()
   expectSamePositions(await decodedLogs(at, { imu: PLAIN_IMU, gnss: fixes }));
 });
 
+test('a file of fixes that holds each over many rows counts it once', async () => {
+  const held = csvText(
+    'time_s,lat_deg,lon_deg,height_m,vn_m_s,ve_m_s,vd_m_s',
+    IMU.map((r, k) => [r[0]!, ...fixAt(k)]),
+  );
+  expectSameGnss(await decodedLogs(at, { imu: PLAIN_IMU, gnss: held }));
+});
+
+test('a fast receiver at rest keeps every fix', async () => {
+  const rest = csvText(
+    'time_s,lat_deg,lon_deg,height_m',
+    Array.from({ length: 30 }, (_, k) => [k / 10, 47.21, -14.63, 40]),
+  );
+  const { gnss: fixes } = await decodedLogs(at, { imu: PLAIN_IMU, gnss: rest });
+  expect(fixes.timeS).toHaveLength(30);
+});
+
 test('one log sent for both roles is the same as sent once', async () => {
   const imu = ONE_LOG[0]![1];
   expectSamePositions(await decodedLogs(at, { imu, gnss: imu }));
