@@ -32,8 +32,10 @@ export interface OffsetEstimate {
 
 /** Searched on both sides, s. */
 export const SEARCH_S = 10;
-const COARSE_S = 0.05;
-const FINE_S = 0.01;
+const COARSE_S = 0.1;
+const FINE_S = 0.02;
+/** Half the width of the parabola at the end: wide enough that the grid's corners do not show, s. */
+const VERTEX_S = 0.1;
 const LEAST_FIXES = 20;
 const LEAST_CORRELATION: Record<MotionKind, number> = { turn: 0.9, speed: 0.6 };
 /** A second best shift at least this far off must be worse by this much in the log-likelihood, or nothing is known. */
@@ -96,8 +98,7 @@ function atVertex(
   integral: RunningIntegral,
   { shift }: Fit,
 ): OffsetEstimate | null {
-  // Wide enough that the grid's corners do not show.
-  const step = 2 * COARSE_S;
+  const step = VERTEX_S;
   const [before, at, after] = [-step, 0, step].map((by) => fitAt(stretches, integral, shift + by));
   if (!before || !at || !after) return null;
   const curvature = (before.variance + after.variance - 2 * at.variance) / (step * step);

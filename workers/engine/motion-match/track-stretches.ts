@@ -36,8 +36,9 @@ const POSITION_SIGMA = 1;
 /** A course has this error besides: the vehicle's side slip, rad; and a speed this one: slopes, m/s. */
 const COURSE_FLOOR = 0.01;
 const SPEED_FLOOR = 0.05;
-/** Faster epochs are thinned to about this spacing, s. */
+/** Faster epochs are thinned to about this spacing, s; and of long logs stretches are left out evenly beyond so many fixes. */
 const SPACING_S = 0.45;
+const MOST_FIXES = 2500;
 
 export function trackStretches(gnss: GnssColumns, kind: MotionKind, source: MotionSource): TrackStretch[] {
   const rows = thinned(gnss, source);
@@ -62,7 +63,14 @@ export function trackStretches(gnss: GnssColumns, kind: MotionKind, source: Moti
     open.push(point);
   }
   close();
-  return stretches;
+  return evenly(stretches);
+}
+
+/** A share of the stretches from all over the log. */
+function evenly(stretches: TrackStretch[]): TrackStretch[] {
+  const fixes = stretches.reduce((sum, { value }) => sum + value.length, 0);
+  const share = Math.min(1, MOST_FIXES / Math.max(1, fixes));
+  return stretches.filter((_, i) => Math.floor((i + 1) * share) > Math.floor(i * share));
 }
 
 function stretchOf(points: readonly Point[], kind: MotionKind): TrackStretch {
@@ -186,16 +194,23 @@ export class RunningIntegral {
     return this.second[k]! + 0.5 * (this.first[k]! + this.at(timeS)) * past;
   }
 
-  /** Row k with timeS in [t_k, t_k+1]; −1 outside. Rows are nearly even, so that the search begins near its end. */
+  /** Row k with timeS in [t_k, t_k+1]; −1 outside. Rows are nearly even: a few steps from where an even grid would have it. */
   private row(timeS: number): number {
     const { timeS: grid } = this;
     const last = grid.length - 1;
     if (!(timeS >= grid[0]! && timeS <= grid[last]!)) return -1;
-    let [low, high] = [0, last];
+    const even = ((timeS - grid[0]!) / (grid[last]! - grid[0]!)) * last;
+    let k = Math.min(last - 1, Math.floor(even));
+    let step = 1;
+    // Outwards in growing steps, then halved.
+    let [low, high] = [k, k + 1];
+    while (low > 0 && grid[low]! > timeS) [low, step] = [Math.max(0, low - step), 2 * step];
+    step = 1;
+    while (high < last && grid[high]! < timeS) [high, step] = [Math.min(last, high + step), 2 * step];
     while (high - low > 1) {
-      const middle = (low + high) >> 1;
-      if (grid[middle]! <= timeS) low = middle;
-      else high = middle;
+      k = (low + high) >> 1;
+      if (grid[k]! <= timeS) low = k;
+      else high = k;
     }
     return low;
   }
