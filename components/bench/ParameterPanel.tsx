@@ -11,6 +11,7 @@ import { GateChoice } from './GateChoice';
 import { readNumber } from './parameter-path';
 import { GROUP_TITLES, SLIDERS, type ParameterGroup, type SliderSpec } from './parameter-specs';
 import { RuledSlider } from './RuledSlider';
+import { SensorPresets } from './SensorPresets';
 import type { Bench } from './use-bench';
 
 const DEFAULTS = defaultParameters();
@@ -53,6 +54,7 @@ function Group({ bench, group, titled }: { bench: Bench; group: ParameterGroup; 
         </Text>
       ) : null}
       {group === 'gate' ? <GateChoice bench={bench} /> : null}
+      {group === 'gyro' || group === 'accel' ? <SensorPresets bench={bench} sensor={group} /> : null}
       {group === 'aids' && titled ? (
         <Text variant="label" tone="soft" style={styles.state}>
           {aidWords(bench.config.parameters)}
