@@ -4,7 +4,7 @@
  */
 import { inverse, Matrix } from 'ml-matrix';
 import type { Parameters } from '@/shared/contracts/parameters';
-import { quatFromRotationVector, quatMultiply } from '@/workers/engine/attitude';
+import { dcmFromQuat, quatFromRotationVector, quatMultiply } from '@/workers/engine/attitude';
 import { biasDecayRate, biasNoiseDensity } from '@/workers/engine/filter/bias-models';
 import { biasParameters } from '@/workers/engine/filter/bias-parameters';
 import type { Fixes } from '@/workers/engine/filter/fixes';
@@ -223,8 +223,15 @@ export class DenseFilter {
     this.feedBack(c);
   }
 
-  private feedBack(c: readonly number[]): void {
-    const { nav } = this.strapdown;
+  private feedBack(correction: readonly number[]): void {
+    const { nav, dcm } = this.strapdown;
+    const c = [...correction];
+    // Tilt and accelerometer bias along their curve: half the turn to the estimate, all of it to the covariance.
+    const attitude = Matrix.from1DArray(3, 3, dcm);
+    const w = attitude.transpose().mmul(Matrix.columnVector([c[6]!, c[7]!, 0])).to1DArray(); // prettier-ignore
+    const bias = Matrix.columnVector(c.slice(12));
+    const bent = Matrix.add(bias, skew(w).mmul(bias).mul(0.5)).to1DArray();
+    c.splice(12, 3, ...bent);
     const lat = nav[LAT]!;
     nav[LON] = nav[LON]! + c[1]! / ((transverseRadius(lat) + nav[HEIGHT]!) * Math.cos(lat));
     nav[LAT] = lat + c[0]! / (meridianRadius(lat) + nav[HEIGHT]!);
@@ -245,6 +252,8 @@ export class DenseFilter {
     ]);
     const g = Matrix.eye(N);
     block(g, 6, 6, about.mmul(Matrix.eye(3).sub(skew([c[6]!, c[7]!, 0]).mul(0.5))));
+    const turn = quatFromRotationVector(w[0]!, w[1]!, w[2]!, new Float64Array(4));
+    block(g, 12, 12, Matrix.from1DArray(3, 3, dcmFromQuat(turn, new Float64Array(9))));
     this.p = g.mmul(this.p).mmul(g.transpose());
   }
 }

@@ -2,7 +2,7 @@
 import type { Outage, RunSummary } from '@/shared/contracts/runs';
 import type { Parameters } from '@/shared/contracts/parameters';
 
-export const ENGINE_VERSION = '0.3.0';
+export const ENGINE_VERSION = '0.4.0';
 
 export type ImuSampling = 'mean-rate' | 'instantaneous' | 'increment';
 

@@ -2,7 +2,7 @@
 import type { Parameters } from '@/shared/contracts/parameters';
 import type { AidColumns } from '../types';
 import { barometricHeight, forwardSpeed, fullAttitude, heading } from './data-aid-models';
-import type { ErrorStateFilter } from './error-state-filter';
+import type { CorrectedState } from './corrected-state';
 import type { AidName } from './filter-types';
 import type { MeasurementUpdate } from './measurement-update';
 
@@ -10,7 +10,7 @@ import type { MeasurementUpdate } from './measurement-update';
 interface Sensor {
   name: AidName;
   timeS: Float64Array;
-  setUp(row: number, filter: ErrorStateFilter, update: MeasurementUpdate): boolean;
+  setUp(row: number, filter: CorrectedState, update: MeasurementUpdate): boolean;
 }
 
 export class DataAids {
@@ -49,7 +49,7 @@ export class DataAids {
   }
 
   /** The next row; the filter has moved to its time. */
-  apply(filter: ErrorStateFilter): void {
+  apply(filter: CorrectedState): void {
     const time = this.nextS;
     const i = this.sensors.findIndex(({ timeS }, s) => timeS[this.next[s]!] === time);
     const sensor = this.sensors[i]!;

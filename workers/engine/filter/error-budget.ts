@@ -4,6 +4,7 @@
  * belongs to. All is linear in the causes, so that the parts sum to the filter's covariance.
  */
 import { resetAttitudeCovariance } from './attitude-feedback';
+import type { BiasTurn } from './bias-feedback';
 import type { MeasurementUpdate } from './measurement-update';
 import type { ProcessNoise } from './process-noise';
 import type { Propagation } from './propagation';
@@ -80,8 +81,12 @@ export class ErrorBudget {
     this.sources.forEach((name, i) => update.applyGain(this.parts[i]!, name === source));
   }
 
-  reset(correction: Float64Array): void {
-    for (const part of this.parts) resetAttitudeCovariance(part, correction);
+  /** After a correction was fed back: as the filter's covariance. */
+  reset(correction: Float64Array, biasTurn: BiasTurn): void {
+    for (const part of this.parts) {
+      resetAttitudeCovariance(part, correction);
+      biasTurn.covariance(part);
+    }
   }
 
   /** A recovery: states scaled (DPD), some cut off and given a variance by GNSS. */

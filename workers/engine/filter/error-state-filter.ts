@@ -4,68 +4,50 @@
  * once (closed loop).
  *
  * Read in this order: `advanceSample` (one IMU interval with the fixes that lie in it), `CarriedState.covarianceStep`,
- * `applyFix`, `aid`, `feedBack`, then recovery.ts.
+ * `applyFix`, `CorrectedState.judge`, `take` and `feedBack`, then recovery.ts.
  */
 import type { Parameters } from '@/shared/contracts/parameters';
 import type { Outage } from '@/shared/contracts/runs';
 import type { AidColumns, ImuColumns } from '../types';
-import { ANGLE, ANGLE_BEND, DURATION, ImuIntervals } from '../strapdown/imu-intervals';
+import { ANGLE, ANGLE_BEND, DURATION } from '../strapdown/imu-intervals';
 import { NAV_GYRO_BIAS } from '../strapdown/navigation-state';
-import { CarriedState } from './carried-state';
 import { findClipping } from './clipping';
 import { ClippingWatch } from './clipping-watch';
-import { resetAttitudeCovariance } from './attitude-feedback';
-import { correctState } from './correct-state';
+import { CorrectedState } from './corrected-state';
 import { DataAids } from './data-aids';
-import type { AidName, FilterListener, FilterSnapshot, GroupName } from './filter-types';
-import { ALL_AXES, type Fixes } from './fixes';
+import type { FilterListener, FilterSnapshot } from './filter-types';
+import type { Fixes } from './fixes';
 import { GapBridge } from './gap-bridge';
-import { gatesOf, type Gate } from './gate';
 import { GnssModels } from './gnss-models';
-import { HeadingWatch } from './heading-watch';
-import type { MeasurementUpdate } from './measurement-update';
-import { recoverGroups } from './recovery';
 import { VehicleAids } from './vehicle-aids';
 import { ATTITUDE } from './states';
-import { updateOf } from './wide-update';
 
 /** A fix this close to an IMU sample, s, counts as simultaneous. */
 const SAME_TIME_S = 1e-7;
 /** Gaps are bridged in steps of at most this, s. */
 const GAP_STEP_S = 0.02;
 
-export class ErrorStateFilter extends CarriedState {
-  /** IMU sample that the state belongs to. */
-  sample = 0;
+export class ErrorStateFilter extends CorrectedState {
   /** Next fix to be looked at. */
   private fix = 0;
-  readonly gates: Readonly<Record<GroupName | AidName, Gate>>;
   private readonly aids: VehicleAids | null;
   private readonly data: DataAids | null;
-  /** Windows that may name aids. */
-  private outages: readonly Outage[] = [];
-  private readonly intervals: ImuIntervals;
-  private readonly update: MeasurementUpdate;
   private readonly models: GnssModels;
   private readonly rate = new Float64Array(3);
   private readonly stepS: number;
-  private readonly headingWatch = new HeadingWatch();
   private readonly clipping: ClippingWatch;
 
   /** `withheld`: bits of `withheldBy` for each fix. `data`: what other sensors logged. */
   constructor(
-    private readonly imu: ImuColumns,
+    imu: ImuColumns,
     private readonly fixes: Fixes,
     private withheld: Uint8Array,
     parameters: Parameters,
     leverArmM: readonly [number, number, number],
-    private readonly listener: FilterListener,
+    listener: FilterListener,
     data: AidColumns | null = null,
   ) {
-    super(parameters, leverArmM);
-    this.update = updateOf(this.layout);
-    this.intervals = new ImuIntervals(imu);
-    this.gates = gatesOf(parameters.gate);
+    super(imu, parameters, leverArmM, listener);
     this.aids = VehicleAids.of(imu, parameters);
     this.data = DataAids.of(data, parameters.aids);
     // A rate drawn on from the last two intervals has 2.5 times the variance of one.
@@ -88,14 +70,6 @@ export class ErrorStateFilter extends CarriedState {
     this.watchHeading();
     this.clipping.start(sample);
     this.data?.start(this.timeS, headingS);
-  }
-
-  private watchHeading(): void {
-    this.headingWatch.restart(this.timeS, Math.sqrt(this.p[(ATTITUDE + 2) * (this.layout.size + 1)]!));
-  }
-
-  get timeS(): number {
-    return this.imu.timeS[this.sample]!;
   }
 
   /** Moves on to the next IMU sample, taking in the fixes measured on the way, those at its own time included. */
@@ -196,12 +170,12 @@ export class ErrorStateFilter extends CarriedState {
     this.covarianceStep();
     if (positionAxes !== 0) {
       this.models.position(strapdown, fixes, j, positionAxes, update);
-      this.judge('position', j, positionAxes);
+      this.judge('position', fixes.timeS[j]!, positionAxes);
     }
     if (velocityAxes !== 0) {
       this.rateAt(at);
       this.models.velocity(strapdown, this.rate, fixes, j, velocityAxes, update);
-      this.judge('velocity', j, velocityAxes);
+      this.judge('velocity', fixes.timeS[j]!, velocityAxes);
     }
   }
 
@@ -212,55 +186,6 @@ export class ErrorStateFilter extends CarriedState {
       this.rate[i] =
         (interval[ANGLE + i]! + (2 * at - 1) * interval[ANGLE_BEND + i]!) / interval[DURATION]! -
         this.strapdown.nav[NAV_GYRO_BIAS + i]!;
-  }
-
-  private judge(group: GroupName, j: number, axes: number): void {
-    const { update, fixes } = this;
-    update.prepare(this.p);
-    const time = fixes.timeS[j]!;
-    const verdict = this.gates[group].judge(time, update.rows, update.nis);
-    this.listener.onInnovation(group, time, axes, update, verdict === 'accept');
-    if (verdict === 'accept') {
-      this.take(update, 'GNSS noise');
-    } else if (verdict === 'recover') {
-      recoverGroups(this, group, time, axes, update);
-    }
-  }
-
-  /** An aid at a time that the filter has reached: `setUp` forms innovation, H and R, or says false: nothing measured. */
-  aid(name: AidName, setUp: (update: MeasurementUpdate) => unknown, timeS = this.timeS): void {
-    const { update } = this;
-    if (this.outages.some((w) => w.withhold === name && timeS >= w.startS && timeS < w.endS)) return;
-    this.covarianceStep();
-    if (setUp(update) === false) return;
-    update.prepare(this.p);
-    // An aid that is refused says that it does not hold here; it never moves the state by force.
-    const accepted = this.gates[name].judge(timeS, update.rows, update.nis) === 'accept';
-    this.listener.onInnovation(name, timeS, ALL_AXES, update, accepted);
-    if (accepted) this.take(update, 'aids');
-  }
-
-  private take(update: MeasurementUpdate, source: 'GNSS noise' | 'aids'): void {
-    update.apply(this.p);
-    this.budget?.update(update, source);
-    this.tape?.writeUpdate(update);
-    this.feedBack(update.correction);
-  }
-
-  /** Adds a correction (measured − predicted, through the gain) to the state and turns P into the new attitude. */
-  feedBack(correction: Float64Array): void {
-    const { strapdown, p } = this;
-    const wrong = this.headingWatch.add(-correction[ATTITUDE + 2]!);
-    if (wrong !== null) this.warn('heading-corrected', wrong, this.timeS);
-    correctState(strapdown.nav, strapdown.earth, correction);
-    this.optional?.correct(correction, this.intervals.interval);
-    strapdown.attitudeChanged();
-    resetAttitudeCovariance(p, correction);
-    this.budget?.reset(correction);
-  }
-
-  warn(code: string, sentence: string, timeS: number): void {
-    this.listener.onWarning(code, sentence, timeS);
   }
 
   /** Replaces the outage mask, and the windows that may name aids: what is withheld from here on. */

@@ -3,7 +3,7 @@
  * group measures is set from the fix; where velocity is in doubt too, attitude and biases are widened by the factor
  * that the rejected innovation shows, so that what made the state run away can be found again.
  */
-import type { ErrorStateFilter } from './error-state-filter';
+import type { CorrectedState } from './corrected-state';
 import type { GroupName } from './filter-types';
 import { biasParameters } from './bias-parameters';
 import { initialBiasVariance } from './bias-models';
@@ -20,7 +20,7 @@ const MIN_VELOCITY_SIGMA = 1;
 
 /** `update` holds the prepared innovation of `group` at `timeS` for the axes given as bits. */
 export function recoverGroups(
-  filter: ErrorStateFilter,
+  filter: CorrectedState,
   group: GroupName,
   timeS: number,
   axes: number,
@@ -79,7 +79,7 @@ function isolate(p: Float64Array, i: number, variance: number): void {
 function widen(
   p: Float64Array,
   excess: number,
-  parameters: ErrorStateFilter['parameters'],
+  parameters: CorrectedState['parameters'],
   scale: Float64Array,
 ): void {
   const size = sizeOf(p);

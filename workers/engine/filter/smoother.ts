@@ -4,10 +4,11 @@
  * inverting a covariance at each step, and with nothing kept but what the filter did.
  *
  * Backwards in time, with e = true − computed (what is to be added to the state):
- *   over an update    λ ← Aᵀλ − HᵀS⁻¹ν,  Λ ← AᵀΛA + HᵀS⁻¹H,  A = G(I − KH), G the reset of the attitude
+ *   over an update    λ ← Aᵀλ − HᵀS⁻¹ν,  Λ ← AᵀΛA + HᵀS⁻¹H,  A = G(I − KH), G the reset of attitude and bias
  *   over a step       λ ← Φᵀλ,           Λ ← ΦᵀΛΦ
  *   anywhere          e = −Pλ,           P_s = P − PΛP.
  */
+import { BiasTurn } from './bias-feedback';
 import { MAX_ROWS } from './measurement-update';
 import { ATTITUDE, PLAIN_LAYOUT, sizeOf, type StateLayout } from './states';
 import { BREAK, Motion, OUTPUT, STEP, UPDATE, type Tape, type TapeMark } from './tape';
@@ -28,6 +29,7 @@ export class Smoother {
   private readonly outInformation: Float64Array;
   private readonly vector: Float64Array;
   private readonly projected: Float64Array;
+  private readonly biasTurn = new BiasTurn();
   private readonly step = new Motion();
   private hasStep = false;
 
@@ -155,9 +157,11 @@ export class Smoother {
   }
   private readonly core = new Float64Array(MAX_ROWS * MAX_ROWS);
 
-  /** λ ← Gᵀλ, Λ ← GᵀΛG for the attitude's reset (attitude-feedback.ts). */
+  /** λ ← Gᵀλ, Λ ← GᵀΛG for the resets (bias-feedback.ts, attitude-feedback.ts). */
   private passReset(): void {
-    const { turn } = this.tape;
+    const { turn, tilt } = this.tape;
+    this.biasTurn.form(tilt);
+    this.biasTurn.adjoint(this.lambda, this.information);
     const size = this.n;
     const n = 0.5 * turn[0]!;
     const e = 0.5 * turn[1]!;

@@ -62,6 +62,8 @@ export class Tape {
   readonly innovation = new Float64Array(MAX_ROWS);
   /** Attitude part of the correction that was fed back, rad. */
   readonly turn = new Float64Array(3);
+  /** Its tilt in b, rad: what the accelerometer bias was turned by (bias-feedback.ts). */
+  readonly tilt = new Float64Array(3);
   /** 1 for states that a recovery cut from the past. */
   readonly cut: Float64Array;
   private readonly blocks: Float64Array[] = [];
@@ -92,9 +94,9 @@ export class Tape {
     this.close(this.motionSize, STEP);
   }
 
-  /** An accepted update, after its gain was formed. */
-  writeUpdate(update: MeasurementUpdate): void {
-    const size = MAX_ROWS * this.size * 2 + MAX_ROWS * MAX_ROWS + MAX_ROWS + 3;
+  /** An accepted update, after its gain was formed, and the tilt of its correction in b, rad. */
+  writeUpdate(update: MeasurementUpdate, tilt: Float64Array): void {
+    const size = MAX_ROWS * this.size * 2 + MAX_ROWS * MAX_ROWS + MAX_ROWS + 6;
     this.open(size);
     this.put(update.h);
     this.put(update.gain);
@@ -102,6 +104,7 @@ export class Tape {
     this.put(update.innovation);
     for (let i = 0; i < 3; i += 1) this.blocks[this.block]![this.at + i] = update.correction[ATTITUDE + i]!;
     this.at += 3;
+    this.put(tilt);
     this.close(size, UPDATE);
   }
 
@@ -185,6 +188,7 @@ export class Tape {
       take(this.inverse);
       take(this.innovation);
       take(this.turn);
+      take(this.tilt);
     }
     if (kind === BREAK) take(this.cut);
     if (kind !== OUTPUT) return;

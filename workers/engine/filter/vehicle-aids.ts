@@ -3,7 +3,7 @@ import type { Parameters } from '@/shared/contracts/parameters';
 import { medianSpacing } from '../strapdown/imu-intervals';
 import type { ImuColumns } from '../types';
 import { nonHolonomic, zeroRotation, zeroVelocity } from './aid-models';
-import type { ErrorStateFilter } from './error-state-filter';
+import type { CorrectedState } from './corrected-state';
 import { VELOCITY } from './states';
 import { StopDetector } from './stop-detector';
 import { VN } from '../strapdown/navigation-state';
@@ -37,7 +37,7 @@ export class VehicleAids {
   }
 
   /** After the filter has reached sample k: the aids that are due. */
-  apply(k: number, filter: ErrorStateFilter): void {
+  apply(k: number, filter: CorrectedState): void {
     const { aids, gyro } = this.parameters;
     if (this.stops.add(k) && mayStand(filter)) {
       if (aids.zeroVelocity.enabled)
@@ -59,7 +59,7 @@ export class VehicleAids {
     if (aids.nonHolonomic.enabled && this.imu.timeS[k]! >= this.nextConstraintS) this.constrain(k, filter);
   }
 
-  private constrain(k: number, filter: ErrorStateFilter): void {
+  private constrain(k: number, filter: CorrectedState): void {
     const { nonHolonomic: constraint } = this.parameters.aids;
     this.nextConstraintS = this.imu.timeS[k]! + constraint.intervalS - 1e-6;
     const { nav } = filter.strapdown;
@@ -81,7 +81,7 @@ export class VehicleAids {
   }
 }
 
-function mayStand({ strapdown: { nav }, p, layout }: ErrorStateFilter): boolean {
+function mayStand({ strapdown: { nav }, p, layout }: CorrectedState): boolean {
   const speed = Math.hypot(nav[VN]!, nav[VN + 1]!, nav[VN + 2]!);
   const at = (i: number) => p[(VELOCITY + i) * (layout.size + 1)]!;
   return speed < STOP_MAX_SPEED + STOP_SIGMAS * Math.sqrt(at(0) + at(1) + at(2));

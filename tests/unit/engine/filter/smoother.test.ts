@@ -1,4 +1,5 @@
 import { inverse, Matrix } from 'ml-matrix';
+import { dcmFromQuat, quatFromRotationVector } from '@/workers/engine/attitude';
 import { align } from '@/workers/engine/alignment/align';
 import { ErrorStateFilter } from '@/workers/engine/filter/error-state-filter';
 import { prepareFixes } from '@/workers/engine/filter/fixes';
@@ -58,7 +59,7 @@ interface Moment {
   /** Of a step: its transition and length, s. */
   phi: Matrix;
   dt: number;
-  /** Of an update: I − KH, the correction that was fed back, the reset of the attitude. */
+  /** Of an update: I − KH, the correction that was fed back, the reset of attitude and accelerometer bias. */
   rest: Matrix;
   correction: Matrix;
   reset: Matrix;
@@ -99,6 +100,9 @@ function rauchTungStriebel({ filter, tape, startP }: ReturnType<typeof taped>, l
       const [c, s] = [Math.cos(d), Math.sin(d)];
       const tilt = new Matrix([[1, 0, -e / 2], [0, 1, n / 2], [e / 2, -n / 2, 1]]); // prettier-ignore
       moment.reset.setSubMatrix(new Matrix([[c, s, 0], [-s, c, 0], [0, 0, 1]]).mmul(tilt), 6, 6); // prettier-ignore
+      const [x, y, z] = tape.tilt as unknown as [number, number, number];
+      const turn = dcmFromQuat(quatFromRotationVector(x, y, z, new Float64Array(4)), new Float64Array(9));
+      moment.reset.setSubMatrix(square(turn), 12, 12);
     }
     expect(kind).not.toBe(BREAK);
     moments.unshift(moment);
