@@ -137,6 +137,11 @@ export const aidParametersSchema = z.object({
       accelSpreadMPerS2: positive(1e-4, 10)
         .default(0.25)
         .describe('Standing still: the accelerometers spread less than this within a window, m/s².'),
+      speedMPerS: positive(0.01, 10)
+        .default(0.5)
+        .describe(
+          'Slower than this a quiet vehicle may be standing, m/s. A stop counts only where no GNSS velocity of the last 2 s is above it (or 3σ), the estimated speed is below it or 3σ, and that speed + 3σ is below half of what was last known, four times this where no motion was.',
+        ),
     })
     .prefault({}),
   zeroVelocity: z

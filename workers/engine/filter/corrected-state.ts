@@ -65,17 +65,18 @@ export class CorrectedState extends CarriedState {
     }
   }
 
-  /** An aid at a time that the filter has reached: `setUp` forms innovation, H and R, or says false: nothing measured. */
-  aid(name: AidName, setUp: (update: MeasurementUpdate) => unknown, timeS = this.timeS): void {
+  /** An aid at a time that the filter has reached: `setUp` forms innovation, H and R, or says false: nothing measured. True where it was taken in. */
+  aid(name: AidName, setUp: (update: MeasurementUpdate) => unknown, timeS = this.timeS): boolean {
     const { update } = this;
-    if (this.outages.some((w) => w.withhold === name && timeS >= w.startS && timeS < w.endS)) return;
+    if (this.outages.some((w) => w.withhold === name && timeS >= w.startS && timeS < w.endS)) return false;
     this.covarianceStep();
-    if (setUp(update) === false) return;
+    if (setUp(update) === false) return false;
     update.prepare(this.p);
     // An aid that is refused says that it does not hold here; it never moves the state by force.
     const accepted = this.gates[name].judge(timeS, update.rows, update.nis) === 'accept';
     this.listener.onInnovation(name, timeS, ALL_AXES, update, accepted);
     if (accepted) this.take(update, 'aids');
+    return accepted;
   }
 
   private take(update: MeasurementUpdate, source: 'GNSS noise' | 'aids'): void {

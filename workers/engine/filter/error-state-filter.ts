@@ -177,6 +177,7 @@ export class ErrorStateFilter extends CorrectedState {
       this.models.velocity(strapdown, this.rate, fixes, j, velocityAxes, update);
       this.judge('velocity', fixes.timeS[j]!, velocityAxes);
     }
+    this.aids?.addFix(fixes, j, velocityAxes, this);
   }
 
   /** Angular rate at the share `at` of the loaded interval, rates linear in time, bias taken off. */

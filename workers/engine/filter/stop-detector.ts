@@ -27,8 +27,7 @@ export class StopDetector {
   }
 
   /**
-   * Takes in sample k. True at the end of a window that was still, if the one before was too: the first window of a
-   * stop may hold the last of the braking.
+   * Takes in sample k; true at the end of a window, which `isStill` then speaks of.
    */
   add(k: number): boolean {
     const { axes, sums, squares, scale } = this;
@@ -39,13 +38,18 @@ export class StopDetector {
     }
     this.count += 1;
     if (this.count < this.length) return false;
-    this.stillWindows = this.isStill() ? this.stillWindows + 1 : 0;
+    this.stillWindows = this.wasQuiet() ? this.stillWindows + 1 : 0;
     for (let i = 0; i < 3; i += 1) this.meanRate[i] = sums[i]! / this.count;
     this.clear();
+    return true;
+  }
+
+  /** The last window was still, and the one before too: the first window of a stop may hold the last of the braking. */
+  get isStill(): boolean {
     return this.stillWindows >= 2;
   }
 
-  private isStill(): boolean {
+  private wasQuiet(): boolean {
     for (let i = 0; i < 6; i += 1) {
       const mean = this.sums[i]! / this.count;
       const spread = Math.sqrt(Math.max(0, this.squares[i]! / this.count - mean * mean));
