@@ -8,23 +8,29 @@ import {
   type InfiniteData,
   type QueryClient,
 } from '@tanstack/react-query';
+import { useState } from 'react';
 import type { Page } from '@/shared/contracts/common';
 import type {
   ChannelMap,
+  FileRole,
+  MapPreview,
   Recording,
   RecordingMeta,
   RecordingPatch,
   Series,
   SeriesChannel,
 } from '@/shared/contracts/recordings';
-import { api, apiUpload, type Upload } from './api';
+import { api, ApiProblem, apiUpload, type Upload } from './api';
 import { STALE } from './query-client';
+import { useDebounced } from './use-debounced';
 
 export const recordingKeys = {
   all: ['recordings'] as const,
   list: (search: string) => ['recordings', 'list', search] as const,
   one: (id: string) => ['recordings', 'one', id] as const,
   series: (id: string, query: SeriesRequest) => ['recordings', 'series', id, query] as const,
+  preview: (id: string, map: string) => ['recordings', 'map-preview', id, map] as const,
+  ofVehicle: (vehicleId: string) => ['recordings', 'list', 'vehicle', vehicleId] as const,
 };
 
 /** How often a recording that is being decoded is looked at, ms. */
@@ -78,6 +84,59 @@ export function useMapRecording(id: string) {
   });
 }
 
+const PREVIEW_PAUSE_MS = 400;
+
+/**
+ * What a map makes of the first rows, once it has stood still. `map` null: nothing to ask, the latest answer stays.
+ * While a newer answer is on its way, and where it fails, the older one stays too.
+ */
+export function useMapPreview(id: string, map: ChannelMap | null) {
+  const now = map ? JSON.stringify(map) : '';
+  const asked = useDebounced(now, PREVIEW_PAUSE_MS);
+  const query = useQuery({
+    queryKey: recordingKeys.preview(id, asked),
+    queryFn: ({ signal }) =>
+      api<MapPreview>(`/recordings/${id}/map-preview`, {
+        method: 'POST',
+        body: JSON.parse(asked) as ChannelMap,
+        signal,
+      }),
+    enabled: asked !== '',
+    staleTime: STALE.slow,
+    placeholderData: keepPreviousData,
+    retry: (count, error) => isSuperseded(error) && count < 4,
+    retryDelay: PREVIEW_PAUSE_MS,
+  });
+  const [latest, setLatest] = useState<MapPreview>();
+  if (query.data && query.data !== latest) setLatest(query.data);
+  return {
+    preview: query.data ?? latest,
+    computing: query.isFetching || asked !== now,
+    // Another window's preview took the place of this one: no fault of the map.
+    error: isSuperseded(query.error) ? null : query.error,
+  };
+}
+
+const isSuperseded = (error: unknown) => error instanceof ApiProblem && error.status === 409;
+
+/** How many earlier recordings of a vehicle are looked through for their mapping. */
+const EARLIER = 8;
+
+/** The latest decoded recordings of a vehicle; '' for none. */
+export function useRecordingsOfVehicle(vehicleId: string) {
+  return useQuery({
+    queryKey: recordingKeys.ofVehicle(vehicleId),
+    queryFn: ({ signal }) =>
+      api<Page<Recording>>('/recordings', {
+        query: { vehicleId, status: 'ready', limit: EARLIER },
+        signal,
+      }),
+    enabled: vehicleId !== '',
+    select: (page) => page.items,
+    staleTime: STALE.list,
+  });
+}
+
 /** Accepts the remedy of a finding, or (null) takes the latest back; the recording is decoded again. */
 export function useRemedy(id: string) {
   const client = useQueryClient();
@@ -104,9 +163,20 @@ export function useDeleteRecording() {
 export interface UploadInput {
   meta: RecordingMeta;
   imu: File;
-  gnss: File;
+  /** Left out where the IMU log holds the fixes. */
+  gnss?: File;
+  /** What the first IMU log lacks, where gyro and accelerometer have a file each. */
+  imu2?: File;
   reference?: File;
+  /** Barometer, heading, odometer. */
+  aids?: File;
 }
+
+/** The files of an upload, in the order in which they are sent. */
+export const filesOf = ({ imu, gnss, imu2, reference, aids }: UploadInput): [FileRole, File][] =>
+  (Object.entries({ imu, gnss, imu2, reference, aids }) as [FileRole, File | undefined][]).flatMap(
+    ([role, file]) => (file ? [[role, file]] : []),
+  );
 
 /** Sends the files; `meta` goes first so that the server can refuse before the bulk arrives. */
 export function uploadRecording(
@@ -115,9 +185,7 @@ export function uploadRecording(
 ): Upload<Recording> {
   const form = new FormData();
   form.append('meta', JSON.stringify(input.meta));
-  form.append('imu', input.imu, input.imu.name);
-  form.append('gnss', input.gnss, input.gnss.name);
-  if (input.reference) form.append('reference', input.reference, input.reference.name);
+  for (const [role, file] of filesOf(input)) form.append(role, file, file.name);
   return apiUpload<Recording>('/recordings', form, onProgress);
 }
 

@@ -1,7 +1,7 @@
 import { useCallback, useEffect, useRef, useState } from 'react';
 import type { Recording } from '@/shared/contracts/recordings';
 import type { Upload } from './api';
-import { uploadRecording, useKeepRecording, type UploadInput } from './recordings';
+import { filesOf, uploadRecording, useKeepRecording, type UploadInput } from './recordings';
 
 export type UploadState =
   | { phase: 'idle' }
@@ -51,4 +51,4 @@ export function useUpload(onDone: (recording: Recording) => void) {
   return { state, start, cancel: () => running.current?.cancel() };
 }
 
-const sizeOf = (input: UploadInput) => input.imu.size + input.gnss.size + (input.reference?.size ?? 0);
+const sizeOf = (input: UploadInput) => filesOf(input).reduce((sum, [, file]) => sum + file.size, 0);

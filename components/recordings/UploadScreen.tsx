@@ -16,12 +16,13 @@ import { NoPermission } from '@/components/ui/NoPermission';
 import { Notice } from '@/components/ui/Notice';
 import { Text } from '@/components/ui/Text';
 import { space } from '@/constants/theme';
+import { useRecordingsOfVehicle } from '@/hooks/recordings';
 import { useCan } from '@/hooks/session';
 import { useUpload, type UploadState } from '@/hooks/use-upload';
 import { useVehicles } from '@/hooks/vehicles';
 import { nameSchema } from '@/shared/contracts/common';
-import type { Recording } from '@/shared/contracts/recordings';
-import { FilePick } from './FilePick';
+import { fileRoleSchema, type Recording } from '@/shared/contracts/recordings';
+import { UploadFiles } from './UploadFiles';
 import { UploadProgress } from './UploadProgress';
 
 const file = (what: string) => z.custom<File>((value) => Boolean(value), `Choose the ${what}.`);
@@ -29,10 +30,12 @@ const uploadSchema = z.object({
   name: nameSchema,
   vehicleId: z.string(),
   imu: file('IMU log'),
-  gnss: file('GNSS log'),
+  gnss: file('GNSS log').optional(),
+  imu2: file('second IMU log').optional(),
   reference: file('reference trajectory').optional(),
+  aids: file('log of other sensors').optional(),
 });
-type UploadForm = z.infer<typeof uploadSchema>;
+export type UploadForm = z.infer<typeof uploadSchema>;
 
 /** Pick the logs of one drive, name it, send it; then the recording's own page watches it decode. */
 export function UploadScreen() {
@@ -47,7 +50,7 @@ export function UploadScreen() {
   const { setError } = form;
   useEffect(() => {
     if (upload.state.phase === 'failed')
-      showProblem(upload.state.error, ['name', 'vehicleId', 'imu', 'gnss', 'reference'], setError);
+      showProblem(upload.state.error, ['name', 'vehicleId', ...fileRoleSchema.options], setError);
   }, [upload.state, setError]);
   const submit = form.handleSubmit(async ({ name, vehicleId, ...files }) => {
     await upload.start({ meta: { name, vehicleId: vehicleId || undefined }, ...files });
@@ -66,7 +69,7 @@ export function UploadScreen() {
       width="text"
     >
       <Card title="Files">
-        <Files form={form} disabled={sending} />
+        <UploadFiles form={form} disabled={sending} onFirst={(chosen) => suggestName(form, chosen)} />
       </Card>
       <Card title="What it is">
         <About form={form} disabled={sending} />
@@ -83,51 +86,16 @@ export function UploadScreen() {
   );
 }
 
-function Files({ form, disabled }: { form: UseFormReturn<UploadForm>; disabled: boolean }) {
-  const { errors } = form.formState;
-  const [imu, gnss, reference] = form.watch(['imu', 'gnss', 'reference']);
-  const take = (role: 'imu' | 'gnss' | 'reference') => (chosen: File | undefined) => {
-    form.setValue(role, chosen, { shouldValidate: form.formState.isSubmitted });
-    if (role === 'imu' && chosen && form.getValues('name') === '')
-      form.setValue('name', nameFromFile(chosen.name), { shouldValidate: form.formState.isSubmitted });
-  };
-  return (
-    <View style={{ gap: space.m }}>
-      <FilePick
-        label="IMU log"
-        hint="CSV with time, three gyro and three accelerometer columns; gzip is fine."
-        file={imu}
-        onPick={take('imu')}
-        error={errors.imu?.message}
-        disabled={disabled}
-      />
-      <FilePick
-        label="GNSS log"
-        hint="CSV with time, latitude and longitude; velocity and accuracies if the receiver gives them."
-        file={gnss}
-        onPick={take('gnss')}
-        error={errors.gnss?.message}
-        disabled={disabled}
-      />
-      <FilePick
-        label="Reference trajectory"
-        hint="A better trajectory of the same drive, against which drift is then measured."
-        file={reference}
-        onPick={take('reference')}
-        error={errors.reference?.message}
-        optional
-        disabled={disabled}
-      />
-      <Text variant="label" tone="soft">
-        Columns whose headers name channel and unit, like time_s, gyro_x_deg_s or lat_deg, are understood; for
-        any others you say on the next page what they mean.
-      </Text>
-    </View>
-  );
+/** The IMU log's name serves until somebody writes a better one. */
+function suggestName(form: UseFormReturn<UploadForm>, chosen: File) {
+  if (form.getValues('name') === '')
+    form.setValue('name', nameFromFile(chosen.name), { shouldValidate: form.formState.isSubmitted });
 }
 
 function About({ form, disabled }: { form: UseFormReturn<UploadForm>; disabled: boolean }) {
   const vehicles = useVehicles();
+  const earlier = useRecordingsOfVehicle(form.watch('vehicleId'));
+  const mapped = (earlier.data ?? []).some(({ channelMap }) => channelMap);
   return (
     <View style={{ gap: space.l }}>
       <FormField
@@ -147,6 +115,11 @@ function About({ form, disabled }: { form: UseFormReturn<UploadForm>; disabled: 
         hint="It gives the antenna’s lever arm and how the IMU is mounted; it can be set later."
         disabled={disabled}
       />
+      {mapped ? (
+        <Text variant="label" tone="soft" aria-live="polite">
+          Should columns need mapping, the mapping of an earlier recording of this vehicle will be offered.
+        </Text>
+      ) : null}
     </View>
   );
 }

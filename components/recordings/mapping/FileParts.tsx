@@ -4,11 +4,17 @@ import { ANGLE_UNITS, PositionPart, SigmaPart, VelocityPart } from './TrackParts
 import { Column, fields, Group, Pick, type PartProps } from './parts';
 import { TimePart } from './TimePart';
 
+const REPEATS = [
+  { value: '', label: 'none, each row is a fix' },
+  { value: 'keep', label: 'are kept, each row is a fix' },
+  { value: 'drop', label: 'are left out: a fix stands until the next one' },
+] as const;
+
 /** Everything that a GNSS file may say. */
 export function GnssPart(props: PartProps) {
   return (
     <>
-      <TimePart {...props} role="gnss" />
+      <TimePart {...props} name="gnss.time" />
       <PositionPart {...props} role="gnss" />
       <VelocityPart {...props} role="gnss" />
       <SigmaPart {...props} of="positionSigma" />
@@ -16,6 +22,13 @@ export function GnssPart(props: PartProps) {
       <Group title="Fix">
         <View style={fields.row}>
           <Column {...props} name="gnss.quality" label="Fix quality" optional />
+          <Pick
+            control={props.control}
+            name="gnss.repeats"
+            label="Rows that repeat a fix"
+            options={REPEATS}
+            roomy
+          />
         </View>
       </Group>
     </>
@@ -27,7 +40,7 @@ export function ReferencePart(props: PartProps) {
   const given = useWatch({ control: props.control, name: 'reference.attitude.given' });
   return (
     <>
-      <TimePart {...props} role="reference" />
+      <TimePart {...props} name="reference.time" />
       <PositionPart {...props} role="reference" />
       <VelocityPart {...props} role="reference" />
       <Group title="Attitude">

@@ -1,8 +1,10 @@
-import { Controller, useFormState, useWatch } from 'react-hook-form';
+import { useWatch } from 'react-hook-form';
 import { View } from 'react-native';
-import { AxisPicker } from '@/components/vehicles/AxisPicker';
 import { accelUnitSchema, gyroUnitSchema, imuMapSchema } from '@/shared/contracts/recordings';
+import { Fold } from '../Fold';
+import { MountingPart } from './MountingPart';
 import { Column, fields, Group, Pick, plain, type PartProps } from './parts';
+import { SensorMore } from './SensorMore';
 import { TimePart } from './TimePart';
 
 const GYRO_UNITS = plain(gyroUnitSchema.options, {
@@ -25,20 +27,18 @@ const SAMPLING = plain(imuMapSchema.shape.sampling.unwrap().options, {
   instantaneous: 'rates at the instant of the stamp',
   increment: 'increments over each interval',
 });
-const AXES_FROM = [
-  { value: 'vehicle', label: 'as the vehicle says' },
-  { value: 'own', label: 'different in this file' },
+const ACCEL_TIME = [
+  { value: 'shared', label: 'the gyro’s rows and times' },
+  { value: 'own', label: 'rows and times of its own' },
 ] as const;
 const AXES = ['x', 'y', 'z'] as const;
 
 /** Gyro and accelerometer columns, their units, and how the sensor sits. */
-export function ImuPart({ control, headers }: PartProps) {
-  const axesFrom = useWatch({ control, name: 'imu.axesFrom' });
-  const { errors } = useFormState({ control });
-  const axesError = errors.imu?.axes?.message ?? errors.imu?.axes?.root?.message;
+export function ImuPart({ control, headers, twoFiles = false }: PartProps & { twoFiles?: boolean }) {
+  const accelTimeFrom = useWatch({ control, name: 'imu.accelTimeFrom' });
   return (
     <>
-      <TimePart control={control} headers={headers} role="imu" />
+      <TimePart control={control} headers={headers} name="imu.time" />
       <Group title="Gyro">
         <View style={fields.row}>
           {AXES.map((axis, i) => (
@@ -52,6 +52,7 @@ export function ImuPart({ control, headers }: PartProps) {
           ))}
           <Pick control={control} name="imu.gyroUnit" label="Gyro unit" options={GYRO_UNITS} />
         </View>
+        <SensorMore control={control} sensor="gyro" title="Gyro" twoFiles={twoFiles} />
       </Group>
       <Group title="Accelerometer">
         <View style={fields.row}>
@@ -70,25 +71,22 @@ export function ImuPart({ control, headers }: PartProps) {
           <Pick control={control} name="imu.accelSign" label="Sign" options={SIGNS} roomy />
           <Pick control={control} name="imu.sampling" label="The values are" options={SAMPLING} roomy />
         </View>
+        <SensorMore control={control} sensor="accel" title="Accelerometer" twoFiles={twoFiles} />
+        <Fold title="Accelerometer apart from the gyro" open={accelTimeFrom === 'own' || twoFiles}>
+          <View style={fields.row}>
+            <Pick
+              control={control}
+              name="imu.accelTimeFrom"
+              label="The accelerometer has"
+              options={ACCEL_TIME}
+            />
+          </View>
+          {accelTimeFrom === 'own' ? (
+            <TimePart control={control} headers={headers} name="imu.accelTime" of="Accelerometer" />
+          ) : null}
+        </Fold>
       </Group>
-      <Group title="Sensor axes">
-        <View style={fields.row}>
-          <Pick control={control} name="imu.axesFrom" label="The sensor is mounted" options={AXES_FROM} />
-        </View>
-        {axesFrom === 'own' ? (
-          <Controller
-            control={control}
-            name="imu.axes"
-            render={({ field }) =>
-              field.value ? (
-                <AxisPicker value={field.value} onChange={field.onChange} error={axesError} />
-              ) : (
-                <></>
-              )
-            }
-          />
-        ) : null}
-      </Group>
+      <MountingPart control={control} />
     </>
   );
 }

@@ -1,121 +1,135 @@
 import { zodResolver } from '@hookform/resolvers/zod';
-import { useForm, useWatch, type Control } from 'react-hook-form';
+import { useRef } from 'react';
+import { useForm } from 'react-hook-form';
 import { StyleSheet, View } from 'react-native';
 import { FormProblem } from '@/components/forms/FormProblem';
 import { showProblem } from '@/components/forms/problem';
-import { Button } from '@/components/ui/Button';
+import { useBreakpoint } from '@/components/layout/use-breakpoint';
 import { Card } from '@/components/ui/Card';
 import { Notice } from '@/components/ui/Notice';
+import { useToast } from '@/components/ui/ToastProvider';
 import { space } from '@/constants/theme';
-import type { ChannelMap, FilePreview, FileRole, Recording } from '@/shared/contracts/recordings';
+import type { ChannelMap, Recording } from '@/shared/contracts/recordings';
+import { Fold } from '../Fold';
+import { AidsPart } from './AidsPart';
 import { draftFromMap } from './draft-from-map';
-import { GnssPart, ReferencePart } from './FileParts';
-import { ImuPart } from './ImuPart';
+import { EarlierMapping } from './EarlierMapping';
+import { FileCard } from './FileCard';
+import { FILE_TITLES, titleOf } from './file-titles';
 import { mapDraftSchema, type MapDraft } from './map-draft';
-import { columnParts, mapFromDraft } from './map-from-draft';
-import type { PartProps } from './parts';
-import { PreviewTable } from './PreviewTable';
-import { withUnshown } from './unshown-fields';
+import { mapFromDraft } from './map-from-draft';
+import { PreviewPane } from './PreviewPane';
+import type { TakeMap } from './PreviewFindings';
+import { SubmitBar } from './SubmitBar';
+import { useDraftPreview } from './use-draft-preview';
 
 export interface MappingFormProps {
-  recording: Pick<Recording, 'channelMap' | 'previews'>;
+  recording: Pick<Recording, 'id' | 'channelMap' | 'previews' | 'files' | 'vehicleId' | 'vehicleName'>;
   /** Sends the map; a refusal is thrown. */
   onSubmit: (map: ChannelMap) => Promise<unknown>;
 }
 
-/** A card a file: what its columns are, under its first rows. */
+/** A card a file, and beside them (below, on the phone) what the map makes of the first rows. */
 export function MappingForm({ recording, onSubmit }: MappingFormProps) {
-  const { control, handleSubmit, setError, formState } = useForm<MapDraft>({
+  const { previews, files } = recording;
+  const { extraWide } = useBreakpoint();
+  const pane = useRef<View>(null);
+  const { control, handleSubmit, setError, setValue, getValues, formState } = useForm<MapDraft>({
     resolver: zodResolver(mapDraftSchema),
     defaultValues: draftFromMap(recording),
   });
+  const { state, incomplete } = useDraftPreview(recording.id, control);
+  const take = useTake(previews, getValues, (draft) => {
+    for (const role of Object.keys(draft) as (keyof MapDraft)[])
+      setValue(role, draft[role], { shouldDirty: true, shouldValidate: formState.isSubmitted });
+  });
   const submit = handleSubmit(async (draft) => {
     try {
-      await onSubmit(withUnshown(mapFromDraft(draft), recording.channelMap));
+      await onSubmit(mapFromDraft(draft));
     } catch (error) {
       showProblem(error, [], setError);
     }
   });
-  const faults = Object.keys(formState.errors).filter((key) => key !== 'root') as FileRole[];
+  const faults = Object.keys(formState.errors).filter((key) => key !== 'root') as (keyof MapDraft)[];
+  const aidsKnown = Object.keys(recording.channelMap?.aids ?? {}).length > 0;
   return (
-    <View style={{ gap: space.l }}>
-      <View style={styles.files}>
-        {recording.previews.map((preview) => (
+    <View style={extraWide ? styles.columns : styles.stack}>
+      <View style={[styles.stack, extraWide ? styles.main : null]}>
+        <EarlierMapping recording={recording} previews={previews} onTake={take} />
+        {previews.map((preview) => (
           <FileCard
             key={preview.role}
             preview={preview}
-            headers={headersFor(preview, recording.previews)}
+            all={previews}
+            title={titleOf(preview.role, files)}
             control={control}
           />
         ))}
+        <Card>
+          <Fold
+            title="Barometer, heading, odometer"
+            open={aidsKnown || previews.some(({ role }) => role === 'aids')}
+            fault={faults.includes('aids')}
+          >
+            <AidsPart control={control} previews={previews} titles={FILE_TITLES} />
+          </Fold>
+        </Card>
       </View>
-      <FormProblem title="The map was not taken" message={formState.errors.root?.message} />
-      {faults.length > 0 ? (
-        <Notice tone="vermilion" urgent title="Something is still to be said">
-          {`Look for the marked fields of the ${faults.map((role) => TITLES[role]).join(' and the ')}.`}
-        </Notice>
-      ) : null}
-      <View style={{ flexDirection: 'row', justifyContent: 'flex-end' }}>
-        <Button
-          label="Use this map and decode"
-          kind="primary"
-          icon="check"
-          busy={formState.isSubmitting}
-          onPress={() => void submit()}
-        />
+      <View ref={pane} style={[styles.stack, extraWide ? [styles.side, BESIDE] : null]}>
+        <PreviewPane state={state} incomplete={incomplete} onTake={take} />
+        <FormProblem title="The map was not taken" message={formState.errors.root?.message} />
+        {faults.length > 0 ? (
+          <Notice tone="vermilion" urgent title="Something is still to be said">
+            {`Look for the marked fields of the ${faults.map((role) => FILE_TITLES[role]).join(' and the ')}.`}
+          </Notice>
+        ) : null}
+        {extraWide ? <SubmitBar {...bar()} /> : null}
       </View>
+      {extraWide ? null : <SubmitBar {...bar()} />}
     </View>
   );
+
+  function bar() {
+    return {
+      busy: formState.isSubmitting,
+      preview: state.preview,
+      onSubmit: () => void submit(),
+      onLook: () => {
+        const element = pane.current as unknown;
+        if (typeof HTMLElement !== 'undefined' && element instanceof HTMLElement)
+          element.scrollIntoView({ block: 'start' });
+      },
+    };
+  }
 }
 
-interface FileCardProps {
-  preview: FilePreview;
-  /** Columns to choose from. */
-  headers: readonly string[];
-  control: Control<MapDraft>;
+/** Puts parts of a map into the form; the toast takes them out again. */
+function useTake(
+  previews: Recording['previews'],
+  read: () => MapDraft,
+  write: (draft: Partial<MapDraft>) => void,
+): TakeMap {
+  const toast = useToast();
+  return (parts, label) => {
+    const before = structuredClone(read());
+    const whole = draftFromMap({ channelMap: { ...mapFromDraft(before), ...parts }, previews });
+    const changed = (Object.keys(parts) as (keyof ChannelMap)[]).filter((role) => whole[role] !== undefined);
+    write(Object.fromEntries(changed.map((role) => [role, whole[role]])));
+    toast({ message: `${label}: put into the form.`, undo: () => write(before) });
+  };
 }
 
-function FileCard({ preview, headers, control }: FileCardProps) {
-  const draft = useWatch({ control }) as MapDraft;
-  const Part = PARTS[preview.role];
-  return (
-    <Card title={TITLES[preview.role]} style={styles.file}>
-      {preview.missing.length > 0 ? (
-        <Notice tone="ochre" title="Not found in the headers">
-          {`${preview.missing.join(', ')}.`}
-        </Notice>
-      ) : null}
-      <PreviewTable preview={preview} parts={columnParts(draft, preview.role)} />
-      {Part ? <Part control={control} headers={headers} /> : null}
-    </Card>
-  );
-}
+/** Beside the form the preview stays in sight; React Native's types do not know it. */
+const BESIDE: object = {
+  position: 'sticky',
+  top: space.l,
+  maxHeight: 'calc(100vh - 32px)',
+  overflowY: 'auto',
+};
 
 const styles = StyleSheet.create({
-  files: { flexDirection: 'row', flexWrap: 'wrap', gap: space.l, alignItems: 'flex-start' },
-  file: { flexGrow: 1, flexShrink: 1, flexBasis: 520, minWidth: 0, maxWidth: '100%', gap: space.xl },
+  columns: { flexDirection: 'row', gap: space.l, alignItems: 'flex-start' },
+  stack: { gap: space.l },
+  main: { flex: 3, minWidth: 0 },
+  side: { flex: 2, minWidth: 0 },
 });
-
-/** The sensors of an IMU may lie in two files; one form maps both. */
-const headersFor = ({ role, headers }: FilePreview, all: readonly FilePreview[]) =>
-  role === 'imu'
-    ? [
-        ...headers,
-        ...(all.find((one) => one.role === 'imu2')?.headers ?? []).filter(
-          (header) => !headers.includes(header),
-        ),
-      ]
-    : headers;
-
-const PARTS: Partial<Record<FileRole, (props: PartProps) => React.JSX.Element>> = {
-  imu: ImuPart,
-  gnss: GnssPart,
-  reference: ReferencePart,
-};
-const TITLES: Record<FileRole, string> = {
-  imu: 'IMU file',
-  gnss: 'GNSS file',
-  reference: 'Reference file',
-  imu2: 'Second IMU file',
-  aids: 'Other sensors',
-};

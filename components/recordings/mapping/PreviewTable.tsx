@@ -7,22 +7,24 @@ import type { FilePreview } from '@/shared/contracts/recordings';
 
 export interface PreviewTableProps {
   preview: FilePreview;
+  /** How the file is called. */
+  title: string;
   /** Header → what it is taken for. */
   parts: ReadonlyMap<string, string>;
   rows?: number;
 }
 
 /** The first rows of a file as it writes them; each column says what it is taken for. */
-export function PreviewTable({ preview, parts, rows = 4 }: PreviewTableProps) {
+export function PreviewTable({ preview, title, parts, rows = 4 }: PreviewTableProps) {
   const { palette } = useTheme();
   return (
     <ScrollView
       horizontal
-      aria-label={`First rows of the file`}
+      aria-label={`First rows: ${title}`}
       {...web({ tabIndex: 0 })}
       style={[styles.box, { borderColor: palette.rule, backgroundColor: palette.well }]}
     >
-      <View role="table" aria-label="First rows of the file">
+      <View role="table" aria-label={`First rows: ${title}`}>
         <View role="row" style={styles.row}>
           {preview.headers.map((header, at) => {
             const part = parts.get(header);

@@ -6,7 +6,8 @@ import {
   positionUnitSchema,
   speedUnitSchema,
 } from '@/shared/contracts/recordings';
-import { SIGMA_AXES, VELOCITY_AXES } from './map-from-draft';
+import { Fold } from '../Fold';
+import { SIGMA_AXES, VELOCITY_AXES } from './column-parts';
 import { Column, fields, Group, Pick, plain, type PartProps } from './parts';
 
 export const ANGLE_UNITS = plain(angleUnitSchema.options, { deg: 'degrees', rad: 'radians' });
@@ -64,7 +65,36 @@ export function PositionPart({ control, headers, role }: Track) {
         />
         <Pick control={control} name={`${role}.position.heightDatum`} label="Height above" options={DATUMS} />
       </View>
+      <Hemispheres control={control} headers={headers} role={role} />
     </Group>
+  );
+}
+
+/** Letters beside angles that have no sign. */
+function Hemispheres({ control, headers, role }: Track) {
+  const [lat, lon] = useWatch({
+    control,
+    name: [`${role}.position.latHemisphere`, `${role}.position.lonHemisphere`],
+  });
+  return (
+    <Fold title="Columns that say N or S, E or W" open={Boolean(lat || lon)}>
+      <View style={fields.row}>
+        <Column
+          control={control}
+          headers={headers}
+          name={`${role}.position.latHemisphere`}
+          label="North or south"
+          optional
+        />
+        <Column
+          control={control}
+          headers={headers}
+          name={`${role}.position.lonHemisphere`}
+          label="East or west"
+          optional
+        />
+      </View>
+    </Fold>
   );
 }
 
@@ -90,6 +120,13 @@ export function VelocityPart({ control, headers, role }: Track) {
                 name={`${role}.velocity.courseUnit`}
                 label="Course in"
                 options={ANGLE_UNITS}
+              />
+              <Column
+                control={control}
+                headers={headers}
+                name={`${role}.velocity.climb`}
+                label="Climb, upwards"
+                optional
               />
             </>
           ) : (

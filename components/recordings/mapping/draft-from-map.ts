@@ -1,5 +1,6 @@
 /** Fills the mapping form: from the map in force or guessed, else from what the headers look like. */
 import type {
+  AidsMap,
   ChannelMap,
   FilePreview,
   GnssMap,
@@ -10,11 +11,14 @@ import type {
 } from '@/shared/contracts/recordings';
 import { IDENTITY_AXES } from '@/shared/contracts/vehicles';
 import type {
+  AidDraft,
+  AidsDraft,
   GnssDraft,
   ImuDraft,
   MapDraft,
   PositionDraft,
   ReferenceDraft,
+  SensorExtras,
   SigmaDraft,
   TimeDraft,
   VelocityDraft,
@@ -31,6 +35,7 @@ export function draftFromMap(recording: Pick<Recording, 'channelMap' | 'previews
     imu: imu && imuDraft(map.imu, imu),
     gnss: gnss && gnssDraft(map.gnss, gnss),
     reference: reference && referenceDraft(map.reference, reference),
+    aids: { known: map.aids !== undefined, ...aidsDraft(map.aids ?? {}) },
   };
 }
 
@@ -39,14 +44,42 @@ function imuDraft(map: ImuMap | undefined, headers: readonly string[]): ImuDraft
     time: timeDraft(map?.time, headers),
     gyro: map?.gyro.columns ?? three(headers, ['gyroX', 'gyroY', 'gyroZ']),
     gyroUnit: map?.gyro.unit ?? 'rad/s',
+    gyroMore: sensorExtras(map?.gyro),
     accel: map?.accel.columns ?? three(headers, ['accelX', 'accelY', 'accelZ']),
     accelUnit: map?.accel.unit ?? 'm/s^2',
+    accelMore: sensorExtras(map?.accel),
     accelSign: map?.accel.sign ?? 'specific-force',
+    accelTimeFrom: map?.accelTime ? 'own' : 'shared',
+    accelTime: timeDraft(map?.accelTime, []),
     sampling: map?.sampling ?? 'mean-rate',
     axesFrom: map?.axes ? 'own' : 'vehicle',
     axes: map?.axes ?? IDENTITY_AXES,
+    mounted: map?.mounting ? 'turned' : 'along',
+    mounting: map?.mounting ?? { rollDeg: 0, pitchDeg: 0, yawDeg: 0 },
   };
 }
+
+function sensorExtras(map: Pick<ImuMap['gyro'], 'file' | 'signs' | 'scale'> | undefined): SensorExtras {
+  const sense = (axis: 0 | 1 | 2) => (map?.signs?.[axis] === -1 ? 'turned' : 'kept');
+  return { file: map?.file ?? '', signs: [sense(0), sense(1), sense(2)], scale: map?.scale };
+}
+
+function aidsDraft({ barometer, heading, odometer }: AidsMap): Omit<AidsDraft, 'known'> {
+  return {
+    barometer: { ...aidDraft(barometer), unit: barometer?.unit ?? 'm' },
+    heading: { ...aidDraft(heading), unit: heading?.unit ?? 'deg', offsetDeg: heading?.offsetDeg },
+    odometer: { ...aidDraft(odometer), unit: odometer?.unit ?? 'm/s', scale: odometer?.scale },
+  };
+}
+
+const aidDraft = (map: AidsMap['barometer'] | AidsMap['heading'] | AidsMap['odometer']): AidDraft => ({
+  given: map ? 'yes' : 'no',
+  file: map?.file ?? '',
+  column: map?.column ?? '',
+  sigma: map?.sigma ?? '',
+  timeFrom: map?.time ? 'own' : 'shared',
+  time: timeDraft(map?.time, []),
+});
 
 function gnssDraft(map: GnssMap | undefined, headers: readonly string[]): GnssDraft {
   return {
@@ -56,6 +89,7 @@ function gnssDraft(map: GnssMap | undefined, headers: readonly string[]): GnssDr
     positionSigma: sigmaDraft(map?.positionSigma, 'm'),
     velocitySigma: sigmaDraft(map?.velocitySigma, 'm/s'),
     quality: map?.quality ?? '',
+    repeats: map?.repeats ?? '',
   };
 }
 
@@ -79,6 +113,12 @@ function timeDraft(map: TimeMap | undefined, headers: readonly string[]): TimeDr
     base: map?.base ?? 's',
     offsetS: map?.offsetS ?? 0,
     stamp: map?.stamp ?? 'end',
+    scale: map?.scale ?? '',
+    zoneMin: map?.zoneMin,
+    dateOrder: map?.dateOrder ?? '',
+    date: map?.date ?? '',
+    rateHz: map?.rateHz,
+    wrap: map?.wrap,
   };
 }
 
@@ -90,6 +130,8 @@ function positionDraft(map: GnssMap['position'] | undefined, headers: readonly s
     unit: map?.unit ?? 'deg',
     heightUnit: map?.heightUnit ?? 'm',
     heightDatum: map?.heightDatum ?? 'ellipsoid',
+    latHemisphere: map?.latHemisphere ?? '',
+    lonHemisphere: map?.lonHemisphere ?? '',
   };
 }
 
@@ -99,6 +141,7 @@ function velocityDraft(map: GnssMap['velocity']): VelocityDraft {
     columns: ['', '', ''],
     speed: '',
     course: '',
+    climb: '',
     unit: 'm/s',
     courseUnit: 'deg',
   };

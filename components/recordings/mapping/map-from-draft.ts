@@ -1,19 +1,15 @@
-/** The channel map that a complete mapping form stands for, and which column plays which part in it. */
-import type {
-  ChannelMap,
-  FileRole,
-  GnssMap,
-  ImuMap,
-  ReferenceMap,
-  TimeMap,
-} from '@/shared/contracts/recordings';
+/** The channel map that a complete mapping form stands for. */
+import type { ChannelMap, GnssMap, ImuMap, ReferenceMap, TimeMap } from '@/shared/contracts/recordings';
 import {
   TWO_COLUMN_BASES,
+  type AidDraft,
+  type AidsDraft,
   type GnssDraft,
   type ImuDraft,
   type MapDraft,
   type PositionDraft,
   type ReferenceDraft,
+  type SensorExtras,
   type SigmaDraft,
   type TimeDraft,
   type VelocityDraft,
@@ -24,103 +20,122 @@ export function mapFromDraft(draft: MapDraft): ChannelMap {
     imu: draft.imu && imuMap(draft.imu),
     gnss: draft.gnss && gnssMap(draft.gnss),
     reference: draft.reference && referenceMap(draft.reference),
+    ...aidsMap(draft.aids),
   };
 }
 
-/** For the preview: header → what it is taken for. */
-export function columnParts(draft: MapDraft, role: FileRole): Map<string, string> {
-  const parts = new Map<string, string>();
-  const put = (column: string | undefined, part: string) => {
-    if (column) parts.set(column, parts.has(column) ? `${parts.get(column)}, ${part}` : part);
+/** Which of the rarer statements about a clock a base takes; the rest is not sent. */
+export function timeExtrasOf(base: TimeMap['base']) {
+  const written = base === 'iso8601' || base === 'date+time';
+  return {
+    scale: base !== 'counter',
+    zoneMin: written || base === 'time-of-day',
+    dateOrder: written,
+    date: base === 'time-of-day',
+    rateHz: base === 'counter',
+    wrap: !written,
   };
-  const put3 = (columns: readonly string[], names: readonly string[]) =>
-    names.forEach((name, i) => put(columns[i], name));
-  const { imu } = draft;
-  if (role === 'imu' && imu) {
-    putTime(imu.time, put);
-    put3(imu.gyro, ['gyro x', 'gyro y', 'gyro z']);
-    put3(imu.accel, ['accel x', 'accel y', 'accel z']);
-  }
-  const track = role === 'gnss' ? draft.gnss : role === 'reference' ? draft.reference : undefined;
-  if (track) {
-    putTime(track.time, put);
-    put(track.position.lat, 'latitude');
-    put(track.position.lon, 'longitude');
-    put(track.position.height, 'height');
-    putVelocity(track.velocity, put, put3);
-  }
-  if (role === 'gnss' && draft.gnss) {
-    putSigma(draft.gnss.positionSigma, 'position σ', put3);
-    putSigma(draft.gnss.velocitySigma, 'velocity σ', put3);
-    put(draft.gnss.quality, 'fix quality');
-  }
-  if (role === 'reference' && draft.reference?.attitude.given === 'yes')
-    put3(draft.reference.attitude.columns, ['roll', 'pitch', 'yaw']);
-  return parts;
 }
 
-export const VELOCITY_AXES = {
-  ned: ['north', 'east', 'down'],
-  enu: ['east', 'north', 'up'],
-  neu: ['north', 'east', 'up'],
-  ecef: ['X', 'Y', 'Z'],
-} as const;
-
-export const SIGMA_AXES = { two: ['horizontal', 'vertical'], three: ['north', 'east', 'down'] } as const;
-
-type Put = (column: string | undefined, part: string) => void;
-type Put3 = (columns: readonly string[], names: readonly string[]) => void;
-
-function putTime(time: TimeDraft, put: Put) {
-  put(time.column, 'time');
-  if (TWO_COLUMN_BASES.includes(time.base)) put(time.second, 'time, fraction');
+function timeMap(time: TimeDraft): TimeMap {
+  const takes = timeExtrasOf(time.base);
+  const { scale, zoneMin, dateOrder, date, rateHz, wrap } = time;
+  return {
+    columns: TWO_COLUMN_BASES.includes(time.base) ? [time.column, time.second] : [time.column],
+    base: time.base,
+    offsetS: time.offsetS,
+    stamp: time.stamp,
+    ...(takes.scale && scale ? { scale } : null),
+    ...(takes.zoneMin && zoneMin !== undefined ? { zoneMin } : null),
+    ...(takes.dateOrder && dateOrder ? { dateOrder } : null),
+    ...(takes.date && date ? { date } : null),
+    ...(takes.rateHz && rateHz !== undefined ? { rateHz } : null),
+    ...(takes.wrap && wrap !== undefined ? { wrap } : null),
+  };
 }
-
-function putVelocity(velocity: VelocityDraft, put: Put, put3: Put3) {
-  if (velocity.frame === 'none') return;
-  if (velocity.frame === 'speed-course') {
-    put(velocity.speed, 'speed');
-    put(velocity.course, 'course');
-  } else {
-    put3(
-      velocity.columns,
-      VELOCITY_AXES[velocity.frame].map((axis) => `velocity ${axis}`),
-    );
-  }
-}
-
-function putSigma(sigma: SigmaDraft, name: string, put3: Put3) {
-  if (sigma.shape === 'none') return;
-  put3(
-    sigma.columns,
-    SIGMA_AXES[sigma.shape].map((axis) => `${name} ${axis}`),
-  );
-}
-
-const timeMap = (time: TimeDraft): TimeMap => ({
-  columns: TWO_COLUMN_BASES.includes(time.base) ? [time.column, time.second] : [time.column],
-  base: time.base,
-  offsetS: time.offsetS,
-  stamp: time.stamp,
-});
 
 const imuMap = (imu: ImuDraft): ImuMap => ({
   time: timeMap(imu.time),
-  gyro: { columns: imu.gyro, unit: imu.gyroUnit },
-  accel: { columns: imu.accel, unit: imu.accelUnit, sign: imu.accelSign },
+  gyro: { columns: imu.gyro, unit: imu.gyroUnit, ...sensorExtras(imu.gyroMore) },
+  accel: {
+    columns: imu.accel,
+    unit: imu.accelUnit,
+    sign: imu.accelSign,
+    ...sensorExtras(imu.accelMore),
+  },
+  ...(imu.accelTimeFrom === 'own' ? { accelTime: timeMap(imu.accelTime) } : null),
   sampling: imu.sampling,
   ...(imu.axesFrom === 'own' ? { axes: imu.axes } : null),
+  ...(imu.mounted === 'turned' ? { mounting: imu.mounting } : null),
 });
 
-const positionMap = ({ height, ...rest }: PositionDraft): GnssMap['position'] => ({
+function sensorExtras({
+  file,
+  signs,
+  scale,
+}: SensorExtras): Pick<ImuMap['gyro'], 'file' | 'signs' | 'scale'> {
+  const sense = (axis: 0 | 1 | 2) => (signs[axis] === 'turned' ? -1 : 1);
+  const senses: ImuMap['gyro']['signs'] = [sense(0), sense(1), sense(2)];
+  return {
+    ...(file ? { file } : null),
+    ...(signs.includes('turned') ? { signs: senses } : null),
+    ...(scale === undefined ? null : { scale }),
+  };
+}
+
+/** Nothing where nobody spoke of other sensors: the server then looks for them by their headers. */
+function aidsMap({ known, barometer, heading, odometer }: AidsDraft): Pick<ChannelMap, 'aids'> {
+  if ([barometer, heading, odometer].every(({ given }) => given === 'no')) return known ? { aids: {} } : {};
+  return {
+    aids: {
+      ...(barometer.given === 'yes' ? { barometer: { ...aidMap(barometer), unit: barometer.unit } } : null),
+      ...(heading.given === 'yes'
+        ? {
+            heading: {
+              ...aidMap(heading),
+              unit: heading.unit,
+              ...(heading.offsetDeg === undefined ? null : { offsetDeg: heading.offsetDeg }),
+            },
+          }
+        : null),
+      ...(odometer.given === 'yes'
+        ? {
+            odometer: {
+              ...aidMap(odometer),
+              unit: odometer.unit,
+              ...(odometer.scale === undefined ? null : { scale: odometer.scale }),
+            },
+          }
+        : null),
+    },
+  };
+}
+
+const aidMap = ({ column, file, sigma, timeFrom, time }: AidDraft) => ({
+  column,
+  ...(file ? { file } : null),
+  ...(sigma ? { sigma } : null),
+  ...(timeFrom === 'own' ? { time: timeMap(time) } : null),
+});
+
+const positionMap = ({
+  height,
+  latHemisphere,
+  lonHemisphere,
+  ...rest
+}: PositionDraft): GnssMap['position'] => ({
   ...rest,
   ...(height ? { height } : null),
+  ...(latHemisphere ? { latHemisphere } : null),
+  ...(lonHemisphere ? { lonHemisphere } : null),
 });
 
 function velocityMap(velocity: VelocityDraft): GnssMap['velocity'] {
-  const { frame, columns, speed, course, unit, courseUnit } = velocity;
+  const { frame, columns, speed, course, climb, unit, courseUnit } = velocity;
   if (frame === 'none') return undefined;
-  return frame === 'speed-course' ? { frame, speed, course, unit, courseUnit } : { frame, columns, unit };
+  return frame === 'speed-course'
+    ? { frame, speed, course, unit, courseUnit, ...(climb ? { climb } : null) }
+    : { frame, columns, unit };
 }
 
 function sigmaMap(sigma: SigmaDraft): GnssMap['positionSigma'] {
@@ -136,6 +151,7 @@ const gnssMap = (gnss: GnssDraft): GnssMap => ({
   positionSigma: sigmaMap(gnss.positionSigma),
   velocitySigma: sigmaMap(gnss.velocitySigma),
   ...(gnss.quality ? { quality: gnss.quality } : null),
+  ...(gnss.repeats ? { repeats: gnss.repeats } : null),
 });
 
 const referenceMap = (reference: ReferenceDraft): ReferenceMap => ({

@@ -1,10 +1,12 @@
 import { fireEvent, screen, waitFor } from '@testing-library/react-native';
 import { draftFromMap } from '@/components/recordings/mapping/draft-from-map';
 import { mapDraftSchema } from '@/components/recordings/mapping/map-draft';
-import { columnParts, mapFromDraft } from '@/components/recordings/mapping/map-from-draft';
+import { columnParts } from '@/components/recordings/mapping/column-parts';
+import { mapFromDraft } from '@/components/recordings/mapping/map-from-draft';
 import { MappingForm } from '@/components/recordings/mapping/MappingForm';
 import { channelMapSchema, type ChannelMap, type FilePreview } from '@/shared/contracts/recordings';
 import { renderAs } from '../render';
+import { recordingOf } from './fixtures';
 
 // A form of thirty choices is drawn again at every change: slow where several test files share a core.
 jest.setTimeout(30_000);
@@ -43,12 +45,49 @@ const MAP: ChannelMap = channelMapSchema.parse({
     attitude: { columns: ['r', 'p', 'y'], unit: 'rad' },
   },
 });
-const RECORDING = { channelMap: MAP, previews: [IMU, GNSS, REFERENCE] };
+const RECORDING = recordingOf({ channelMap: MAP, previews: [IMU, GNSS, REFERENCE] });
 
 test('a map survives the way through the form unchanged', () => {
   const draft = draftFromMap(RECORDING);
   expect(mapDraftSchema.safeParse(draft).success).toBe(true);
   expect(channelMapSchema.parse(mapFromDraft(draft))).toEqual(MAP);
+});
+
+test('whatever else a map says survives too', () => {
+  const map: ChannelMap = channelMapSchema.parse({
+    imu: {
+      ...MAP.imu,
+      time: { columns: ['c1'], base: 'counter', rateHz: 32768, wrap: 4294967296 },
+      gyro: { ...MAP.imu!.gyro, file: 'imu2', signs: [1, -1, 1], scale: 0.01 },
+      accelTime: { columns: ['c1'], base: 'time-of-day', date: '2026-11-03', zoneMin: 60, scale: 'gps' },
+      mounting: { rollDeg: 1, pitchDeg: -2, yawDeg: 90 },
+    },
+    gnss: {
+      ...MAP.gnss,
+      time: { columns: ['week'], base: 'iso8601', dateOrder: 'dmy', zoneMin: -120, scale: 'utc' },
+      position: { ...MAP.gnss!.position, latHemisphere: 'fix', lonHemisphere: 'fix' },
+      velocity: { ...MAP.gnss!.velocity, climb: 'epv' },
+      repeats: 'drop',
+    },
+    reference: MAP.reference,
+    aids: {
+      barometer: { column: 'c2', file: 'imu', unit: 'hPa', sigma: 'c3' },
+      heading: { column: 'crs', file: 'gnss', unit: 'deg', offsetDeg: 2.5 },
+      odometer: { column: 'c4', unit: 'count', scale: 0.02, time: { columns: ['c1'], base: 'us' } },
+    },
+  });
+  const draft = draftFromMap({ ...RECORDING, channelMap: map });
+  expect(mapDraftSchema.safeParse(draft).success).toBe(true);
+  expect(channelMapSchema.parse(mapFromDraft(draft))).toEqual(map);
+});
+
+test('other sensors that are taken away are said to be none, not left to a guess', () => {
+  const draft = draftFromMap({
+    ...RECORDING,
+    channelMap: { ...MAP, aids: { barometer: { column: 'c2', unit: 'm' } } },
+  });
+  draft.aids.barometer.given = 'no';
+  expect(mapFromDraft(draft).aids).toEqual({});
 });
 
 test('each column of the preview says what it is taken for', () => {
@@ -73,7 +112,9 @@ describe('the form', () => {
 
   test('names every column that is still missing and sends nothing', async () => {
     const submit = jest.fn();
-    renderAs(<MappingForm recording={{ channelMap: null, previews: [IMU] }} onSubmit={submit} />);
+    renderAs(
+      <MappingForm recording={recordingOf({ channelMap: null, previews: [IMU] })} onSubmit={submit} />,
+    );
     send();
     expect(await screen.findByText(/marked fields of the IMU file/)).toBeOnTheScreen();
     expect(screen.getAllByText('Choose a column.')).toHaveLength(7);
@@ -82,7 +123,9 @@ describe('the form', () => {
 
   test('sends the map once every column has its part', async () => {
     const submit = jest.fn<Promise<void>, [ChannelMap]>(() => Promise.resolve());
-    renderAs(<MappingForm recording={{ channelMap: null, previews: [IMU] }} onSubmit={submit} />);
+    renderAs(
+      <MappingForm recording={recordingOf({ channelMap: null, previews: [IMU] })} onSubmit={submit} />,
+    );
     const labels = ['Time column', 'Gyro x', 'Gyro y', 'Gyro z'];
     labels.push('Accelerometer x', 'Accelerometer y', 'Accelerometer z');
     labels.forEach((label, i) => choose(label, IMU.headers[i]!));
