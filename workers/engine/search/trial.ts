@@ -71,15 +71,18 @@ export class Trial {
     const judged = { ...parameters, gate };
     this.timeS = imu.timeS;
     this.fixes = prepareFixes(gnss, judged.gnss);
-    const { sample, fix, nav, p } = align(imu, this.fixes, judged, source.leverArmM);
+    const aids = source.recording.aids ?? null;
+    const { sample, fix, nav, p, headingUntilS } = align(imu, this.fixes, judged, source.leverArmM, aids);
     this.scoredFromS = rules.scoredFromS ?? settledAt(imu.timeS, sample, rules.untilS);
     this.none = new Uint8Array(this.fixes.count);
     const outages = (source.outages ?? []).filter(({ endS }) => endS <= rules.untilS);
     this.windows = layWindows(imu.timeS, sample, outages).filter((w) => w.last > w.first);
     const covered = reference !== null && truthCovers(reference, this.windows, imu.timeS);
     this.truth = covered ? new ReferenceReader(reference) : null;
-    this.filter = new ErrorStateFilter(imu, this.fixes, this.none, judged, source.leverArmM, this.listener());
-    this.filter.start(sample, fix, nav, p);
+    this.filter = new ErrorStateFilter(
+      imu, this.fixes, this.none, judged, source.leverArmM, this.listener(), aids,
+    ); // prettier-ignore
+    this.filter.start(sample, fix, nav, p, headingUntilS);
     let last = imu.timeS.length - 1;
     while (last > sample + 1 && imu.timeS[last - 1]! >= rules.untilS) last -= 1;
     this.last = last;
@@ -137,8 +140,9 @@ export class Trial {
 
   private beginCoasting(): void {
     const { filter, fixes, windows } = this;
+    const { outage } = windows[this.nextWindow]!;
     this.fork = filter.save();
-    filter.withhold(withheldBy(fixes, [windows[this.nextWindow]!.outage]));
+    filter.withhold(withheldBy(fixes, [outage]), [outage]);
   }
 
   private endCoasting(): void {
