@@ -111,7 +111,7 @@ interface TimeMoreProps extends Omit<TimePartProps, 'headers' | 'of'> {
 function TimeMore({ control, name, label, takes }: TimeMoreProps) {
   const time = useWatch({ control, name }) as TimeDraft;
   const { errors } = useFormState({ control });
-  const faults = (get(errors, name) ?? {}) as Partial<Record<keyof TimeDraft, unknown>>;
+  const faults = get<Partial<Record<keyof TimeDraft, unknown>>>(errors, name, {});
   const title = label(takes.zoneMin ? 'Time zone, offset, stamp' : 'Offset, stamp, wrap');
   return (
     <Fold

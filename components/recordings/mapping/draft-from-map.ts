@@ -52,12 +52,18 @@ function imuDraft(map: ImuMap | undefined, headers: readonly string[]): ImuDraft
     accelTimeFrom: map?.accelTime ? 'own' : 'shared',
     accelTime: timeDraft(map?.accelTime, []),
     sampling: map?.sampling ?? 'mean-rate',
-    axesFrom: map?.axes ? 'own' : 'vehicle',
-    axes: map?.axes ?? IDENTITY_AXES,
-    mounted: map?.mounting ? 'turned' : 'along',
-    mounting: map?.mounting ?? { rollDeg: 0, pitchDeg: 0, yawDeg: 0 },
+    ...mountingDraft(map),
   };
 }
+
+const mountingDraft = (
+  map: ImuMap | undefined,
+): Pick<ImuDraft, 'axesFrom' | 'axes' | 'mounted' | 'mounting'> => ({
+  axesFrom: map?.axes ? 'own' : 'vehicle',
+  axes: map?.axes ?? IDENTITY_AXES,
+  mounted: map?.mounting ? 'turned' : 'along',
+  mounting: map?.mounting ?? { rollDeg: 0, pitchDeg: 0, yawDeg: 0 },
+});
 
 function sensorExtras(map: Pick<ImuMap['gyro'], 'file' | 'signs' | 'scale'> | undefined): SensorExtras {
   const sense = (axis: 0 | 1 | 2) => (map?.signs?.[axis] === -1 ? 'turned' : 'kept');
