@@ -32,9 +32,6 @@ const MATCH_GRACE_S = 30;
  * certain, so that counting twice changes nothing to speak of.
  */
 const MATCH_CAUTION = 3;
-/** Estimates of both ways further apart than this many σ: the vehicle does not go where it points. */
-const DISAGREE_SIGMAS = 4;
-
 export interface HeadingQuestion {
   imu: ImuColumns;
   fixes: Fixes;
@@ -91,14 +88,24 @@ function choose(
   startS: number,
 ): FoundHeading | null {
   if (match !== null) match.sigma *= MATCH_CAUTION;
-  const chosen = match === null || (course !== null && agree(course, match) && course.sigma < match.sigma);
-  if (chosen) return course && { ...course, way: 'course', carriedS: course.timeS - startS };
-  return { ...match, way: 'match', carriedS: match.timeS - startS };
+  // What they differ by may be a slip as well as the match's error.
+  if (course !== null && match !== null)
+    course.sigma = pointsWhereItGoes(course, match)
+      ? Math.hypot(course.sigma, wrapAngle(course.yaw - match.yaw))
+      : Infinity;
+  if (match !== null && (course === null || match.sigma <= course.sigma))
+    return { ...match, way: 'match', carriedS: match.timeS - startS };
+  return course && { ...course, way: 'course', carriedS: course.timeS - startS };
 }
 
-function agree(course: HeadingEstimate, match: HeadingEstimate): boolean {
-  const own = match.sigma / MATCH_CAUTION;
-  return Math.abs(wrapAngle(course.yaw - match.yaw)) <= DISAGREE_SIGMAS * Math.hypot(course.sigma, own);
+/**
+ * Is the difference of both ways likelier where course and heading are one, and it is the estimates' error, than where
+ * the vehicle flies or slides to any side alike? Of even odds: N(Δ; 0, σ²) > 1/2π.
+ */
+function pointsWhereItGoes(course: HeadingEstimate, match: HeadingEstimate): boolean {
+  const sigma = Math.hypot(course.sigma, match.sigma / MATCH_CAUTION);
+  const z = wrapAngle(course.yaw - match.yaw) / sigma;
+  return z * z < 2 * Math.max(1, Math.log(Math.sqrt(2 * Math.PI) / sigma));
 }
 
 /** Takes the vehicle to point where it goes: course of a fix less what the gyros say the vehicle has turned. */
