@@ -2,7 +2,7 @@
 export * from './protocol';
 export { createPool, WorkerPool, type PoolOptions } from './pool';
 export type { PoolLog } from './worker-process';
-export { openStore, sweepStore } from './store/open';
+export { checkStore, openStore, sweepStore } from './store/open';
 export { safeFileName } from './store/keys';
 export { storeKeys, StoreFailed, StoreKeyMissing, type Store, type StoreConfig } from './store/types';
 export { ENGINE_VERSION } from './engine/types';

@@ -3,6 +3,8 @@ import { randomBytes } from 'node:crypto';
 import fs from 'node:fs';
 import path from 'node:path';
 import { z } from 'zod';
+import type { StoreConfig } from '@/workers';
+import { storeConfig, storeEnvironment } from './store';
 
 const megabytes = 1_000_000;
 const count = (fallback: number, low: number, high: number) =>
@@ -14,6 +16,7 @@ const environmentSchema = z.object({
   HOST: z.string().default('127.0.0.1'),
   DATABASE_URL: z.string().regex(/^postgres(ql)?:\/\//, 'must be a postgres:// address'),
   DATA_DIR: z.string().default('.data'),
+  ...storeEnvironment,
   SMTP_URL: z.string().optional(),
   MAIL_FROM: z.string().default('Driftwright <driftwright@localhost>'),
   PUBLIC_URL: z.url().optional(),
@@ -36,6 +39,8 @@ export interface Config {
   host: string;
   databaseUrl: string;
   dataDir: string;
+  /** Where files are kept: below the data folder unless STORE_URL names object storage. */
+  store: StoreConfig;
   smtpUrl: string | null;
   mailFrom: string;
   /** Where people reach this server; null: http://host:port as it listens. */
@@ -66,6 +71,7 @@ export function loadConfig(env: Record<string, string | undefined>): Config {
     host: e.HOST,
     databaseUrl: e.DATABASE_URL,
     dataDir,
+    store: storeConfig(e, dataDir),
     smtpUrl: e.SMTP_URL ?? null,
     mailFrom: e.MAIL_FROM,
     publicUrl: e.PUBLIC_URL?.replace(/\/+$/, '') ?? null,

@@ -1,12 +1,21 @@
 /** Opens the store that a configuration names; server and worker processes open the same one. */
 import { FolderStore } from './folder';
+import { S3Store } from './s3';
 import type { Store, StoreConfig } from './types';
 
 export function openStore(config: StoreConfig): Store {
-  return new FolderStore(config.root);
+  return config.kind === 'folder' ? new FolderStore(config.root) : new S3Store(config);
 }
 
-/** Clears away what interrupted writes of dead processes left in a folder store; `pid`: of that process only. */
+/** Asks the object storage something simple. Throws StoreFailed where it is away or refuses; a folder is made by its first file. */
+export async function checkStore(config: StoreConfig): Promise<void> {
+  if (config.kind === 's3') await openStore(config).list('recordings/none/');
+}
+
+/**
+ * Clears away what interrupted writes of dead processes left in a folder store; `pid`: of that process only. Object
+ * storage shows nothing of a put that was cut off, and drops its parts by the bucket's own rule.
+ */
 export async function sweepStore(config: StoreConfig, pid?: number): Promise<void> {
-  await new FolderStore(config.root).sweep(pid);
+  if (config.kind === 'folder') await new FolderStore(config.root).sweep(pid);
 }

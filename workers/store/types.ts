@@ -38,8 +38,20 @@ export class StoreFailed extends Error {
   }
 }
 
+export interface S3StoreConfig {
+  kind: 's3';
+  bucket: string;
+  /** All keys lie below it; '' for none. */
+  prefix: string;
+  region: string;
+  /** Of an S3-compatible server; null: the SDK's own choice for the region. */
+  endpoint: string | null;
+  /** Null: what the SDK finds by itself (the machine's role, a profile). */
+  credentials: { accessKeyId: string; secretAccessKey: string; sessionToken?: string } | null;
+}
+
 /** How a worker process opens the same store as the server. */
-export type StoreConfig = { kind: 'folder'; root: string };
+export type StoreConfig = { kind: 'folder'; root: string } | S3StoreConfig;
 
 /** The one place that knows the layout of keys. */
 export const storeKeys = {
@@ -54,6 +66,7 @@ export const storeKeys = {
   decoded: (recordingId: string) => `recordings/${recordingId}/decoded.json`,
   /** GNSS-only baseline track. */
   gnssOnly: (recordingId: string) => `recordings/${recordingId}/gnss-only.arrow`,
+  recordingExport: (recordingId: string, name: string) => `recordings/${recordingId}/exports/${name}`,
   run: (runId: string) => `runs/${runId}/`,
   solution: (runId: string) => `runs/${runId}/solution.arrow`,
   /** Only where the run was smoothed. */
