@@ -17,7 +17,9 @@ import { isUnderWay, useRecording } from '@/hooks/recordings';
 import { useCan } from '@/hooks/session';
 import type { Recording } from '@/shared/contracts/recordings';
 import { ChannelsCard } from './ChannelsCard';
+import { DecodeAgain, StopDecoding } from './DecodingButtons';
 import { DeleteDialog } from './DeleteDialog';
+import { DownloadsCard } from './DownloadsCard';
 import { EditDialog } from './EditDialog';
 import { FactsCard } from './FactsCard';
 import { FilesCard } from './FilesCard';
@@ -93,6 +95,7 @@ function Loaded({ recording }: { recording: Recording }) {
           <FactsCard recording={recording} />
           {recording.status === 'ready' ? <NoiseLink recordingId={recording.id} /> : null}
           <FilesCard files={recording.files} />
+          {recording.status === 'ready' ? <DownloadsCard recording={recording} /> : null}
         </View>
       </View>
     </Screen>
@@ -121,7 +124,7 @@ function Actions({ recording }: { recording: Recording }) {
       {mayDelete ? (
         <Button label="Delete" icon="delete" iconOnly kind="danger" onPress={() => setOpen('delete')} />
       ) : null}
-      {recording.status === 'ready' ? (
+      {recording.status === 'ready' && recording.health?.gnss.epochs !== 0 ? (
         <Button
           label="Open in bench"
           kind="primary"
@@ -134,6 +137,8 @@ function Actions({ recording }: { recording: Recording }) {
     </>
   );
 }
+
+const wasStopped = ({ problems }: Recording) => problems.some(({ code }) => code === 'stopped');
 
 /** What stands between this recording and its use, if anything does. */
 function State({ recording }: { recording: Recording }): ReactNode {
@@ -148,6 +153,11 @@ function State({ recording }: { recording: Recording }): ReactNode {
         <Text variant="label" tone="soft">
           It goes on without you: leave this page if you like.
         </Text>
+        {mayWrite ? (
+          <View style={styles.buttons}>
+            <StopDecoding id={recording.id} />
+          </View>
+        ) : null}
       </Card>
     );
   if (recording.status === 'needs-mapping')
@@ -169,9 +179,14 @@ function State({ recording }: { recording: Recording }): ReactNode {
     );
   if (recording.status === 'rejected')
     return (
-      <ProblemsCard title="The files could not be used" tone="vermilion" problems={recording.problems}>
+      <ProblemsCard
+        title={wasStopped(recording) ? 'Decoding was stopped' : 'The files could not be used'}
+        tone="vermilion"
+        problems={recording.problems}
+      >
         {mayWrite ? (
           <View style={styles.buttons}>
+            {wasStopped(recording) ? <DecodeAgain recording={recording} /> : null}
             <Button
               label="Upload the mended files"
               icon="upload"

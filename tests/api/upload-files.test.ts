@@ -1,5 +1,6 @@
 import { recordingSchema, type Recording } from '@/shared/contracts/recordings';
-import { type Api, startApi } from '../support/api';
+import type { Run } from '@/shared/contracts/runs';
+import { type Api, startApi, until } from '../support/api';
 import { buildMember, decoded, upload } from '../support/api-factories';
 import { smallLogs } from '../support/api-logs';
 
@@ -37,7 +38,7 @@ describe('an upload of other files than one IMU and one GNSS log', () => {
     const answer = await engineer.post('/recordings', form);
     expect(answer.status).toBe(201);
     const recording = await decoded(engineer, recordingSchema.parse(answer.body).id);
-    return { recording, plain: await decoded(engineer, (await upload(engineer)).id) };
+    return { engineer, recording, plain: await decoded(engineer, (await upload(engineer)).id) };
   }
 
   const sameData = ({ recording, plain }: { recording: Recording; plain: Recording }) => {
@@ -70,10 +71,17 @@ describe('an upload of other files than one IMU and one GNSS log', () => {
     );
   });
 
-  it('without any fixes asks for them', async () => {
-    const { recording } = await sent({ imu });
-    expect(recording.status).toBe('needs-mapping');
-    expect(recording.problems[0]).toMatchObject({ code: 'columns-missing', file: 'gnss' });
-    expect(recording.problems[0]?.remedy).toContain('Upload the GNSS file');
+  it('without any fixes serves for the sensor’s noise, and says why it cannot be run', async () => {
+    const { engineer, recording } = await sent({ imu });
+    expect(recording.status).toBe('ready');
+    expect(recording.health?.verdict).toBe('with-care');
+    expect(recording.health?.findings.map(({ code }) => code)).toContain('no-gnss');
+    expect((await engineer.post(`/recordings/${recording.id}/noise`, {})).status).toBe(200);
+    const run = (await engineer.post('/runs', { recordingId: recording.id })).body as Run;
+    const ended = await until('the run has ended', async () => {
+      const { state, failure } = (await engineer.get(`/runs/${run.id}`)).body as Run;
+      return state === 'failed' && failure;
+    });
+    expect(ended).toContain('GNSS');
   });
 });

@@ -64,16 +64,16 @@ test('an empty file is refused beside its name, and what was chosen stays', asyn
 
 test('headers that say nothing are mapped by the person, and the recording becomes ready', async () => {
   const imu = changedImu('plain.csv', (text) =>
-    text.replace(/^.*/, 'time_s,p,q,r,accel_x_m_s2,accel_y_m_s2,accel_z_m_s2'),
+    text.replace(/^.*/, 'time_s,c4,c5,c6,accel_x_m_s2,accel_y_m_s2,accel_z_m_s2'),
   );
   await uploadLogs(page, 'Plain headers', { imu, gnss: logs.gnss });
   await heading(page, 'Say what the columns mean').waitFor({ timeout: 60_000 });
   await button(page, 'Map the columns').click();
   await heading(page, 'Map the columns').waitFor();
   for (const [axis, column] of [
-    ['x', 'p'],
-    ['y', 'q'],
-    ['z', 'r'],
+    ['x', 'c4'],
+    ['y', 'c5'],
+    ['z', 'c6'],
   ] as const) {
     await page.getByLabel(`Gyro ${axis}`, { exact: true }).selectOption(column);
   }

@@ -10,7 +10,7 @@ import { gnssColumns } from '../recordings/load';
 import { storeKeys } from '../store/types';
 import { decodeAids } from './decode-aids';
 import { decodeImu } from './decode-imu';
-import { decodeGnss, decodeReference } from './decode-track';
+import { decodeGnss, decodeReference, noGnss } from './decode-track';
 import { healthReport } from './health-report';
 import { defectFindings } from './defect-findings';
 import { clockOf, proposedOrigin, type IntakeContext } from './intake-context';
@@ -37,7 +37,7 @@ export async function decodeFiles(context: IntakeContext): Promise<DecodedFiles>
   const map = context.map.imu!;
   const role = sensorRoles(map, context.heads).gyro;
   const originS = proposedOrigin(context, role, map.time);
-  const gnss = await decodeGnss(context, originS);
+  const gnss = context.map.gnss ? await decodeGnss(context, originS) : noGnss();
   const imu = await decodeImu(context, originS, gnss.report);
   const { facts } = imu;
   const reference = await decodeReference(context, originS, [facts.startS, facts.endS]);

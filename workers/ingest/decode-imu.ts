@@ -55,7 +55,7 @@ export async function decodeImu(context: IntakeContext, originS: number, gnss: G
     const facts = health.finish();
     if (facts.samples < 2) throw partner && decoder.unpaired > 1 ? apart(decoder.unpaired) : headerOnly('imu');
     // The beginnings of two files need not meet.
-    if (context.rowLimit === Infinity) checkOverlap(facts, gnss);
+    if (context.rowLimit === Infinity && gnss.epochs > 0) checkOverlap(facts, gnss);
     const findings = [...noteFindings(roles.gyro, notes), ...unpairedFindings(decoder.unpaired)];
     return { facts, findings, written: await writer.finish() };
   } catch (error) {

@@ -1,7 +1,7 @@
 /** The fixes and the reference trajectory of a recording. */
 import type { HealthFinding } from '@/shared/contracts/recordings';
 import { ArrowFileWriter, type Columns, type WrittenFile } from '../recordings/arrow-file';
-import { REFERENCE_COLUMNS } from '../recordings/files';
+import { GNSS_COLUMNS, REFERENCE_COLUMNS } from '../recordings/files';
 import { storeKeys } from '../store/types';
 import { columnIndex } from './cells';
 import { headerOnly } from './csv';
@@ -52,6 +52,13 @@ export async function decodeGnss(context: IntakeContext, imuOriginS: number): Pr
     ); // prettier-ignore
   if (facts.epochs < 2) throw headerOnly('gnss');
   return { columns, report: gnssReport(columns, facts), findings: noteFindings('gnss', notes) };
+}
+
+/** Of an IMU log by itself: it serves to find the sensor's noise. */
+export function noGnss(): DecodedGnss {
+  const columns = Object.fromEntries(GNSS_COLUMNS.map((name) => [name, new Float64Array()]));
+  const facts = { epochs: 0, noFixRows: 0, duplicates: 0, outOfOrder: 0 };
+  return { columns, report: gnssReport(columns, facts), findings: [] };
 }
 
 const trackInterval = (context: IntakeContext, role: 'gnss' | 'reference') =>

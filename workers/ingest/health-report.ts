@@ -18,7 +18,10 @@ export function healthReport(
   noted: readonly HealthFinding[],
   matched: readonly HealthFinding[],
 ): HealthReport {
-  const overlapS: Interval = [Math.max(imu.startS, gnss.startS), Math.min(imu.endS, gnss.endS)];
+  const overlapS: Interval =
+    gnss.epochs === 0
+      ? [imu.startS, imu.startS]
+      : [Math.max(imu.startS, gnss.startS), Math.min(imu.endS, gnss.endS)];
   const findings = [
     ...assumed.map((sentence) => finding('assumed', 'info', sentence, { remedy: 'Say it on the mapping screen if that is wrong.' })),
     ...noted,
@@ -110,6 +113,12 @@ function rowFindings(imu: ImuFacts): HealthFinding[] {
 const rows = (count: number) => (count === 1 ? 'One row' : `${count} rows`);
 
 function gnssFindings(imu: ImuFacts, gnss: GnssReport, overlapS: Interval): HealthFinding[] {
+  if (gnss.epochs === 0)
+    return [
+      finding('no-gnss', 'warn', 'There is no GNSS in it: it serves to find the sensor’s noise, not for runs.', {
+        remedy: 'To tune on it, upload it again with the GNSS log of the same drive.',
+      }),
+    ]; // prettier-ignore
   const found: HealthFinding[] = [];
   const share = (overlapS[1] - overlapS[0]) / (imu.endS - imu.startS);
   if (share < 0.9)

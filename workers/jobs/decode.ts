@@ -1,7 +1,7 @@
 /** Raw uploads to a checked, decoded recording in the store. A bad file is an outcome that says what to do, not an error. */
 import { createHash } from 'node:crypto';
 import type { FileRole, IntakeProblem } from '@/shared/contracts/recordings';
-import { previewOf, settleMaps } from '../ingest/channel-maps';
+import { previewOf, settleMaps, type SettledMaps } from '../ingest/channel-maps';
 import { headerOnly, type CsvHead } from '../ingest/csv';
 import { decodeFiles, type DecodedFiles } from '../ingest/decode-files';
 import { IntakeRejected } from '../ingest/problems';
@@ -26,7 +26,7 @@ export async function decode(
   const { heads, problems } = await readHeads(files, store);
   const previews = () => [...heads].map(([role, head]) => previewOf(role, head, []));
   if (problems.length > 0) return { outcome: 'rejected', channelMap: null, problems, previews: previews() };
-  const settled = settleMaps(heads, job.channelMap);
+  const settled = imuAlone(job, files, heads, settleMaps(heads, job.channelMap));
   if (settled.problems.length > 0)
     return {
       outcome: 'needs-mapping',
@@ -86,6 +86,26 @@ export async function decode(
   }
 }
 
+/** No GNSS file was sent and the IMU's log holds no position whatever: it is an IMU by itself, and no fault. */
+function imuAlone(
+  job: DecodeJob,
+  files: Map<FileRole, RawFile>,
+  heads: Map<FileRole, CsvHead>,
+  settled: SettledMaps,
+): SettledMaps {
+  const sent = job.files.some(({ role }) => role === 'gnss');
+  if (sent || settled.map.gnss || job.channelMap?.gnss) return settled;
+  const missing = settled.previews.find(({ role }) => role === 'gnss')?.missing ?? [];
+  if (!missing.includes('latitude') || !missing.includes('longitude')) return settled;
+  files.delete('gnss');
+  heads.delete('gnss');
+  return {
+    ...settled,
+    problems: settled.problems.filter(({ file }) => file !== 'gnss'),
+    previews: settled.previews.filter(({ role }) => role !== 'gnss'),
+  };
+}
+
 /** One log may hold the IMU and the GNSS: without a GNSS file the IMU's stands for it too. */
 function filesOf(job: DecodeJob): Map<FileRole, RawFile> {
   const files = new Map<FileRole, RawFile>(job.files.map((file) => [file.role, file]));
@@ -125,5 +145,6 @@ function hashOf({ imu, gnss, reference, aids }: DecodedFiles['written']): string
 async function removeDecoded(store: Store, recordingId: string): Promise<void> {
   const { decoded, imu, gnss, reference, gnssOnly } = storeKeys;
   for (const key of [decoded, imu, gnss, reference, gnssOnly]) await store.removePrefix(key(recordingId));
+  await store.removePrefix(storeKeys.recordingExport(recordingId, ''));
   for (const kind of AID_KINDS) await store.removePrefix(storeKeys.aid(recordingId, kind));
 }

@@ -217,7 +217,6 @@ const REFUSED: [string, Logs, object][] = [
   ['an accelerometer whose time runs backwards', { imu: GYRO, imu2: accelAt([...steps(100, 0.01), ...steps(100, 0.01)]), gnss }, { outcome: 'rejected', problems: [{ code: 'time-backwards', file: 'imu2', line: 102 }] }],
   ['an empty second file', { imu: GYRO, imu2: '', gnss }, { outcome: 'rejected', problems: [{ code: 'empty', file: 'imu2' }] }],
   ['text in the second file', { imu: GYRO, imu2: ACCEL.replace('\n0.5,', '\n0.5,oops'), gnss }, { outcome: 'rejected', problems: [{ code: 'not-a-number', file: 'imu2', line: 52 }] }],
-  ['no fixes anywhere', { imu: PLAIN_IMU }, { outcome: 'needs-mapping', problems: [{ code: 'columns-missing', file: 'gnss' }] }],
 ]; // prettier-ignore
 
 test.each(REFUSED)('told: %s', async (_, logs, expected) => {
