@@ -8,7 +8,7 @@ import { ProcessNoise } from './process-noise';
 import type { Propagation } from './propagation';
 import { layoutOf, type StateLayout } from './states';
 import type { Tape } from './tape';
-import type { TransitionSource } from './transition';
+import type { TransitionSource } from './transition-coefficients';
 import { propagationOf } from './wide-propagation';
 
 export class CarriedState {

@@ -6,7 +6,7 @@
 import type { Parameters } from '@/shared/contracts/parameters';
 import { ANGLE, ANGLE_BEND, VELOCITY_INCREMENT } from '../strapdown/imu-intervals';
 import { STATES, type StateLayout } from './states';
-import type { TransitionSource } from './transition';
+import type { TransitionSource } from './transition-coefficients';
 
 const PPM = 1e-6;
 

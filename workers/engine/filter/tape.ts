@@ -5,7 +5,7 @@
 import { ATTITUDE, STATES } from './states';
 import type { MeasurementUpdate } from './measurement-update';
 import { MAX_ROWS } from './measurement-update';
-import type { TransitionSource } from './transition';
+import type { TransitionSource } from './transition-coefficients';
 import { NAV_SIZE } from '../strapdown/navigation-state';
 
 /** Kinds of records. */

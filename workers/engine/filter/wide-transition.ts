@@ -4,7 +4,8 @@
  * states themselves, and lever arm and barometer bias with them, stay as they are.
  */
 import { ACCEL_BIAS, GYRO_BIAS, STATES, type StateLayout } from './states';
-import { Transition, type TransitionSource } from './transition';
+import { Transition } from './transition';
+import type { TransitionSource } from './transition-coefficients';
 
 export class WideTransition extends Transition {
   override readonly size: number;

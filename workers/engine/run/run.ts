@@ -6,12 +6,11 @@
  * goes on unreported to the end as the reference, and the coasting pass forks from the snapshot and reports the rest.
  */
 import { radToDeg } from '@/shared/units';
-import { align, type Alignment } from '../alignment/align';
+import type { Alignment } from '../alignment/align';
 import { initialBudget } from '../alignment/initial-covariance';
-import { ErrorStateFilter } from '../filter/error-state-filter';
+import type { ErrorStateFilter } from '../filter/error-state-filter';
 import type { FilterListener, FilterSnapshot } from '../filter/filter-types';
 import { ErrorBudget } from '../filter/error-budget';
-import { prepareFixes, withheldBy } from '../filter/fixes';
 import { layoutOf, type StateLayout } from '../filter/states';
 import { Tape, type TapeMark } from '../filter/tape';
 import { HEIGHT, LAT, LON, VN } from '../strapdown/navigation-state';
@@ -24,14 +23,14 @@ import {
 } from '../types';
 import { AidTally } from './aid-tally';
 import { CoastingComparison } from './coasting';
-import { countKept, keptSamples } from './output-grid';
-import { truthCovers } from './reference';
+import { countKept } from './output-grid';
+import { planRun, startFilter, type RunPlan } from './plan';
 import { SmoothingPass } from './smoothing';
 import { summarise } from './summary';
 import { InnovationWriter, SolutionWriter } from './tables';
 import { TruthComparison } from './truth-comparison';
 import { Warnings } from './warnings';
-import { layWindows, lowerBound, type CoastWindow } from './windows';
+import { lowerBound } from './windows';
 
 /** What a sample of smoothing costs against one of filtering, and how many samples' work an output stands for. */
 const SMOOTHING_SHARE = 0.5;
@@ -54,15 +53,11 @@ export class Run implements EngineRun {
   readonly coasting: CoastingComparison;
   readonly truth: TruthComparison | null;
   private readonly filter: ErrorStateFilter;
-  private readonly windows: CoastWindow[];
-  private readonly kept: Uint8Array;
-  private readonly withheld: Uint8Array;
+  private readonly plan: RunPlan;
   private readonly timeS: Float64Array;
   private readonly last: number;
   private readonly layout: StateLayout;
   private readonly p: Float64Array;
-  /** Last sample before the first window: where the passes part; −1 where one pass does it. */
-  private readonly forkSample: number;
   private snapshot: FilterSnapshot | null = null;
   private phase: 'reported' | 'reference' | 'smooth-reference' | 'smooth-reported' | 'done' = 'reported';
   private readonly tape: Tape | null;
@@ -77,35 +72,17 @@ export class Run implements EngineRun {
     readonly recording: RecordingColumns,
     readonly request: RunRequest,
   ) {
-    const { imu, gnss, reference } = recording;
-    const { parameters, leverArmM, outages } = request;
-    checkRecording(recording);
-    this.layout = layoutOf(parameters);
+    const { imu, reference } = recording;
+    const plan = planRun(recording, request);
+    this.plan = plan;
+    this.alignment = plan.alignment;
+    this.layout = layoutOf(request.parameters);
     this.p = new Float64Array(this.layout.size ** 2);
     this.timeS = imu.timeS;
     this.last = imu.timeS.length - 1;
-    const fixes = prepareFixes(gnss, parameters.gnss);
-    const aids = recording.aids ?? null;
-    this.alignment = align(imu, fixes, parameters, leverArmM, aids);
-    const start = this.alignment.sample;
-    this.extentS = [imu.timeS[start]!, imu.timeS[this.last]!];
-    this.windows = layWindows(imu.timeS, start, outages);
-    this.withheld = withheldBy(fixes, outages);
-    this.kept = keptSamples(imu.timeS, start, request.outputRateHz);
-
-    const truthServes = reference !== null && truthCovers(reference, this.windows, imu.timeS);
-    this.coasting = new CoastingComparison(
-      this.windows, this.kept, imu.timeS, truthServes ? reference : null,
-    ); // prettier-ignore
-    const forks = this.windows.length > 0 && !truthServes;
-    this.forkSample = forks ? Math.max(start, lowerBound(imu.timeS, this.windows[0]!.outage.startS) - 1) : -1;
-    const withheldAtFirst = forks ? new Uint8Array(fixes.count) : this.withheld;
-    this.filter = new ErrorStateFilter(
-      imu, fixes, withheldAtFirst, parameters, leverArmM, this.listener(), aids,
-    ); // prettier-ignore
-    if (!forks) this.filter.withhold(this.withheld, outages);
-    const { fix, nav: startNav, p: startP, headingUntilS } = this.alignment;
-    this.filter.start(start, fix, startNav, startP, headingUntilS);
+    this.extentS = [imu.timeS[this.alignment.sample]!, imu.timeS[this.last]!];
+    this.coasting = new CoastingComparison(plan.windows, plan.kept, imu.timeS, plan.truth);
+    this.filter = startFilter(plan, recording, request, this.listener());
 
     this.tape = request.smooth === true ? new Tape(this.layout.size) : null;
     this.filter.tape = this.tape;
@@ -115,18 +92,18 @@ export class Run implements EngineRun {
         : null;
     this.filter.budget = this.budget;
 
-    this.solution = new SolutionWriter(countKept(this.kept), this.layout);
-    this.position = new InnovationWriter(fixes.count);
-    this.velocity = new InnovationWriter(fixes.count);
+    this.solution = new SolutionWriter(countKept(plan.kept), this.layout);
+    this.position = new InnovationWriter(plan.fixes.count);
+    this.velocity = new InnovationWriter(plan.fixes.count);
     this.truth = reference === null ? null : new TruthComparison(reference);
     if (this.tape !== null) {
-      this.smoothed = new SolutionWriter(countKept(this.kept), this.layout);
+      this.smoothed = new SolutionWriter(countKept(plan.kept), this.layout);
       this.smoothedTruth = reference === null ? null : new TruthComparison(reference);
     }
     const { nav } = this.alignment;
     this.origin = { latDeg: radToDeg(nav[LAT]!), lonDeg: radToDeg(nav[LON]!), heightM: nav[HEIGHT]! };
     this.report();
-    if (this.filter.sample === this.forkSample) this.fork();
+    if (this.filter.sample === plan.forkSample) this.fork();
   }
 
   private listener(): FilterListener {
@@ -163,7 +140,8 @@ export class Run implements EngineRun {
 
   get progress(): number {
     if (this.phase === 'done') return 1;
-    const { last, forkSample } = this;
+    const { last } = this;
+    const { forkSample } = this.plan;
     const whole = last - this.alignment.sample;
     const beyond = forkSample >= 0 ? last - forkSample : 0;
     const smoothing = this.tape === null ? 0 : SMOOTHING_SHARE * (whole + beyond);
@@ -188,6 +166,7 @@ export class Run implements EngineRun {
 
   advance(samples: number): boolean {
     const { filter } = this;
+    const { forkSample } = this.plan;
     for (let i = 0; i < samples && this.phase !== 'done'; i += 1) {
       if (this.smoothing !== null) {
         i += SAMPLES_AN_OUTPUT;
@@ -199,7 +178,7 @@ export class Run implements EngineRun {
         this.done += 1;
         if (this.phase === 'reported') this.report();
         else this.recordReference();
-        if (filter.sample === this.forkSample && this.snapshot === null) this.fork();
+        if (filter.sample === forkSample && this.snapshot === null) this.fork();
       }
       if (filter.sample === this.last) this.endPass();
     }
@@ -216,7 +195,8 @@ export class Run implements EngineRun {
 
   /** The reported solution at the filter's sample, where it is kept or compared. */
   private report(): void {
-    const { filter, kept } = this;
+    const { filter } = this;
+    const { kept } = this.plan;
     const k = filter.sample;
     const compared = this.coasting.wants(k);
     if (kept[k] === 0 && !compared) return;
@@ -285,7 +265,7 @@ export class Run implements EngineRun {
   private backToFork(): void {
     this.filter.budget = this.budget;
     this.filter.restore(this.snapshot!);
-    this.filter.withhold(this.withheld, this.request.outages);
+    this.filter.withhold(this.plan.withheld, this.request.outages);
     this.phase = 'reported';
   }
 
@@ -300,18 +280,4 @@ export class Run implements EngineRun {
       summary: summarise(this),
     };
   }
-}
-
-function checkRecording({ imu }: RecordingColumns): void {
-  if (imu.timeS.length < 10)
-    throw new EngineError(
-      'too-short',
-      `The IMU log holds ${imu.timeS.length} samples; a run needs at least 10. Upload the whole log.`,
-    );
-  for (let k = 1; k < imu.timeS.length; k += 1)
-    if (!(imu.timeS[k]! > imu.timeS[k - 1]!))
-      throw new EngineError(
-        'time-order',
-        `IMU times must increase: sample ${k + 1} at ${imu.timeS[k]} s follows ${imu.timeS[k - 1]} s. Decode the recording again.`,
-      );
 }
