@@ -7,7 +7,7 @@ import type { ChannelGuess } from '@/shared/contracts/recordings';
 import { Fold } from '../Fold';
 
 /** Below it a person should look. */
-const SURE = 0.7;
+export const SURE = 0.7;
 
 /** What the columns were taken for and why; what is not sure stands first and open. */
 export function GuessList({ guesses }: { guesses: readonly ChannelGuess[] }) {

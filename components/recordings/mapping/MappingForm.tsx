@@ -62,6 +62,7 @@ export function MappingForm({ recording, onSubmit }: MappingFormProps) {
             preview={preview}
             all={previews}
             title={titleOf(preview.role, files)}
+            fault={faults.includes(preview.role as keyof MapDraft)}
             control={control}
           />
         ))}
@@ -93,6 +94,7 @@ export function MappingForm({ recording, onSubmit }: MappingFormProps) {
     return {
       busy: formState.isSubmitting,
       preview: state.preview,
+      computing: state.computing && !incomplete,
       onSubmit: () => void submit(),
       onLook: () => {
         const element = pane.current as unknown;

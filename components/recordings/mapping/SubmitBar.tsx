@@ -11,13 +11,14 @@ import { gravityCheck, openFindings } from './preview-checks';
 export interface SubmitBarProps {
   busy: boolean;
   preview: MapPreview | undefined;
+  computing: boolean;
   onSubmit: () => void;
   /** Scrolls to the preview; on the phone it lies below the fields. */
   onLook: () => void;
 }
 
 /** The deed, within reach of the thumb on the phone, with what the preview says of the map so far. */
-export function SubmitBar({ busy, preview, onSubmit, onLook }: SubmitBarProps) {
+export function SubmitBar({ busy, preview, computing, onSubmit, onLook }: SubmitBarProps) {
   const { palette } = useTheme();
   const { extraWide } = useBreakpoint();
   const send = (
@@ -31,7 +32,7 @@ export function SubmitBar({ busy, preview, onSubmit, onLook }: SubmitBarProps) {
     />
   );
   if (extraWide) return <View style={styles.end}>{send}</View>;
-  const { words, tone } = summaryOf(preview);
+  const { words, tone } = summaryOf(preview, computing);
   return (
     <View style={[styles.bar, STICKY, { backgroundColor: palette.ground, borderTopColor: palette.rule }]}>
       <View style={styles.line}>
@@ -45,11 +46,15 @@ export function SubmitBar({ busy, preview, onSubmit, onLook }: SubmitBarProps) {
 }
 
 /** The preview in a line. */
-function summaryOf(preview: MapPreview | undefined): {
+function summaryOf(
+  preview: MapPreview | undefined,
+  computing: boolean,
+): {
   words: string;
   tone: 'pine' | 'ochre' | 'vermilion' | 'soft';
 } {
-  if (!preview) return { words: 'No preview yet', tone: 'soft' };
+  if (!preview)
+    return { words: computing ? 'The first rows are being read' : 'No preview yet', tone: 'soft' };
   const count = preview.problems.length;
   if (preview.outcome !== 'ready')
     return { words: count === 1 ? 'One problem stops it' : `${count} problems stop it`, tone: 'vermilion' };
