@@ -32,6 +32,7 @@ const MAP: ChannelMap = channelMapSchema.parse({
   },
 });
 const IN_G: ChannelMap = { imu: { ...MAP.imu!, accel: { ...MAP.imu!.accel, unit: 'g' } } };
+const OTHER_COLUMNS: ChannelMap = { imu: { ...MAP.imu!, time: { ...MAP.imu!.time, columns: ['clock'] } } };
 const FINDING: HealthFinding = {
   code: 'gravity-size',
   severity: 'stop',
@@ -129,6 +130,39 @@ describe('the preview beside the form', () => {
     expect(screen.getByLabelText('Accelerometer unit').props.value).toBe('g');
     expect(await screen.findByText(GRAVITY_RIGHT, {}, { timeout: 5000 })).toBeOnTheScreen();
     expect(screen.queryByRole('button', { name: 'Read it in g' })).toBeNull();
+  });
+
+  test('an earlier mapping of the vehicle fills the form, and can be taken back', async () => {
+    const earlier = recordingOf({
+      id: '4f0c8a52-0f4e-4a1c-9a55-3d1f0f3b7e21',
+      name: 'Breakwater loop 2',
+      channelMap: IN_G,
+    });
+    const other = { ...earlier, id: '4f0c8a52-0f4e-4a1c-9a55-3d1f0f3b7e22', channelMap: OTHER_COLUMNS };
+    globalThis.fetch = jest.fn((address: string) =>
+      Promise.resolve(
+        json(
+          address.includes('vehicleId=')
+            ? { items: [earlier, other], nextCursor: null }
+            : previewOf([0, 0, -9.79]),
+        ),
+      ),
+    ) as unknown as typeof fetch;
+    const vehicleId = '4f0c8a52-0f4e-4a1c-9a55-3d1f0f3b7e30';
+    renderAs(
+      <MappingForm
+        recording={recordingOf({ channelMap: null, vehicleId, previews: [IMU] })}
+        onSubmit={() => Promise.resolve()}
+      />,
+    );
+    const choice = await screen.findByLabelText(/mapping of an earlier recording/);
+    expect(screen.getByText('1 more of Crawler 2 with other columns.')).toBeOnTheScreen();
+    fireEvent(choice, 'change', { target: { value: earlier.id } });
+    expect(screen.getByLabelText('Gyro x').props.value).toBe('a');
+    expect(screen.getByLabelText('Accelerometer unit').props.value).toBe('g');
+    fireEvent.press(screen.getByRole('button', { name: 'Undo' }));
+    expect(screen.getByLabelText('Gyro x').props.value).toBe('');
+    expect(await screen.findByText('waits for the form')).toBeOnTheScreen();
   });
 
   test('problems say where, what and what to do', async () => {
