@@ -10,6 +10,7 @@ import type { Alignment } from '../alignment/align';
 import { initialBudget } from '../alignment/initial-covariance';
 import type { ErrorStateFilter } from '../filter/error-state-filter';
 import type { FilterListener, FilterSnapshot } from '../filter/filter-types';
+import { BiasSpread } from '../filter/bias-spread';
 import { ErrorBudget } from '../filter/error-budget';
 import { layoutOf, type StateLayout } from '../filter/states';
 import { Tape, type TapeMark } from '../filter/tape';
@@ -58,6 +59,7 @@ export class Run implements EngineRun {
   private readonly last: number;
   private readonly layout: StateLayout;
   private readonly p: Float64Array;
+  private readonly biasSpread = new BiasSpread();
   private snapshot: FilterSnapshot | null = null;
   private phase: 'reported' | 'reference' | 'smooth-reference' | 'smooth-reported' | 'done' = 'reported';
   private readonly tape: Tape | null;
@@ -208,8 +210,9 @@ export class Run implements EngineRun {
       );
     filter.covarianceNow(this.p);
     if (kept[k] === 1) {
-      this.solution.write(this.timeS[k]!, nav, this.p, filter.optional?.values);
       this.tape?.writeOutput(k, filter.motion, this.p, filter.optional?.values);
+      this.biasSpread.add(this.p, filter.strapdown.dcm);
+      this.solution.write(this.timeS[k]!, nav, this.p, filter.optional?.values);
       this.truth?.add(this.timeS[k]!, nav, this.p);
     }
     if (compared) this.coasting.compare(k, nav, this.p, () => filter.budgetNow());
