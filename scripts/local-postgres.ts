@@ -6,12 +6,13 @@
  * a private cluster is made in `folder` and started on a free port. It stops with us, however we end.
  */
 import { execFileSync } from 'node:child_process';
-import { rmSync } from 'node:fs';
+import { existsSync, readFileSync, rmSync } from 'node:fs';
 import path from 'node:path';
 import { aptInstall } from './lib/apt';
 import { databaseAccount } from './postgres/account';
 import { findPostgres } from './postgres/binaries';
 import {
+  homeOf,
   openCluster,
   readSecret,
   runAs,
@@ -72,6 +73,15 @@ export async function startLocalPostgres(options: LocalPostgresOptions = {}): Pr
       if (cluster.throwaway) rmSync(cluster.home, { recursive: true, force: true });
     },
   };
+}
+
+/** Address of the database in `folder` where it runs just now. Makes and starts nothing. */
+export function findLocalPostgres(folder: string): string | undefined {
+  const home = homeOf(databaseAccount(), folder);
+  const secretFile = path.join(home, 'secret.json');
+  const running = runningServer(path.join(home, 'data'));
+  if (!running || !existsSync(secretFile)) return undefined;
+  return urlsOf(JSON.parse(readFileSync(secretFile, 'utf8')) as Secret, running.port).url;
 }
 
 const foreign = (url: string, adminUrl: string): LocalPostgres => ({

@@ -8,20 +8,27 @@ import type { Mailer } from './mail/mailer';
 import type { Database } from './models';
 import type { Queue } from './queue/queue';
 import type { Live } from './realtime/live';
+import type { Relay } from './realtime/relay';
 import type { ActiveJobs } from './services/active-jobs';
 import type { ActiveRuns } from './services/active-runs';
 
-export interface Context {
+export interface Context extends JobContext {
   config: Config;
+  mail: Mailer;
+  live: Live;
+  activeRuns: ActiveRuns;
+}
+
+/** The part of it that the queue's jobs need: all that a process without an HTTP side has. */
+export interface JobContext {
   log: Logger;
   db: Database;
   store: Store;
   pool: Pool;
   queue: Queue;
-  mail: Mailer;
-  live: Live;
+  live: Pick<Live, 'recordingChanged'>;
   instance: Instance;
-  activeRuns: ActiveRuns;
+  relay: Relay;
   activeJobs: ActiveJobs;
   clock: () => Date;
   /** Aborted when the server stops: whoever waits or retries ends then. */

@@ -10,6 +10,8 @@ import type { Logger } from 'pino';
 /** First half of the two-part lock key: keeps these locks apart from every other use. */
 const LOCK_CLASS = 1_148_347_975;
 const RECONNECT_MS = 500;
+/** PostgreSQL's channel for notifications. */
+export const CHANNEL = 'driftwright';
 
 export interface Instance {
   readonly id: string;
@@ -18,8 +20,15 @@ export interface Instance {
   stop(): Promise<void>;
 }
 
-/** Takes this server's lock, and takes it again whenever the database comes back. */
-export async function joinInstances(url: string, log: Logger): Promise<Instance> {
+/**
+ * Takes this server's lock, and takes it again whenever the database comes back. On the same connection it listens:
+ * `hear` gets what the servers tell one another over the channel.
+ */
+export async function joinInstances(
+  url: string,
+  log: Logger,
+  hear: (text: string) => void,
+): Promise<Instance> {
   const id = randomUUID();
   let client: Client | null = null;
   let stopped = false;
@@ -31,7 +40,9 @@ export async function joinInstances(url: string, log: Logger): Promise<Instance>
       if (client === next) client = null;
       if (!stopped) setTimeout(() => void holdAgain(), RECONNECT_MS).unref();
     });
+    next.on('notification', ({ payload }) => hear(payload ?? ''));
     await next.connect();
+    await next.query(`LISTEN ${CHANNEL}`);
     await next.query('SELECT pg_advisory_lock($1, hashtext($2))', [LOCK_CLASS, id]);
     client = next;
   };

@@ -1,31 +1,23 @@
 /** Start and stop as one object: what is opened here, in order, is closed here in the opposite order. */
 import http from 'node:http';
 import type { AddressInfo } from 'node:net';
-import fs from 'node:fs';
-import path from 'node:path';
-import { pino } from 'pino';
-import { createPool, openStore, type StoreConfig } from '@/workers';
+import type { RecordingChanged } from '@/shared/contracts/live';
 import { createApp } from './app';
 import { type Config, ConfigError } from './config';
 import type { Context } from './context';
-import { joinInstances } from './instance';
 import { startMailer } from './mail/mailer';
 import { startMailSink } from './mail/sink';
 import { openSessions } from './middleware/session';
-import { migrate } from './migrations';
-import { openDatabase } from './models';
-import { openQueue } from './queue/queue';
-import { createLive } from './realtime/live';
+import { Closers, GRACE_MS, openCommon, openLog, requireWorkerBundle } from './opening';
+import { jobHandlers } from './queue/handlers';
+import { createLive, type Live } from './realtime/live';
+import type { Relay } from './realtime/relay';
 import { seedDemo } from './seed/demo';
-import { ActiveJobs } from './services/active-jobs';
 import { ActiveRuns } from './services/active-runs';
-import { decode } from './services/decoding';
-import { keepRecovering, recover } from './services/recovery';
+import { clearUpAfter, keepRecovering, recover } from './services/recovery';
 import { sweepUploads } from './services/upload-folder';
 import { answerStarting } from './starting';
 
-/** How long jobs in hand and open connections may take to end, ms. */
-const GRACE_MS = 4_000;
 /** A person thinks for longer than Node's five seconds between two clicks. */
 const KEEP_ALIVE_MS = 65_000;
 
@@ -38,63 +30,40 @@ export interface RunningServer {
 
 /** Opens everything, serves, and answers when requests are taken. Throws ConfigError for what the operator can mend. */
 export async function startServer(config: Config): Promise<RunningServer> {
-  const closers: (() => Promise<unknown>)[] = [];
-  const closeAll = async () => {
-    for (const close of closers.splice(0).reverse()) await close();
-  };
+  const closers = new Closers();
   try {
-    return await open(config, closers, closeAll);
+    return await open(config, closers);
   } catch (error) {
-    await closeAll();
+    await closers.closeAll();
     throw error;
   }
 }
 
-async function open(
-  config: Config,
-  closers: (() => Promise<unknown>)[],
-  closeAll: () => Promise<void>,
-): Promise<RunningServer> {
-  if (!fs.existsSync(config.workerEntry)) {
-    throw new ConfigError(`The worker bundle ${config.workerEntry} is missing: npm run build makes it.`);
-  }
-  const log = pino({ level: config.logLevel, base: null, timestamp: pino.stdTimeFunctions.isoTime });
-  const clock = () => new Date();
+async function open(config: Config, closers: Closers): Promise<RunningServer> {
+  requireWorkerBundle(config);
+  const log = openLog(config);
   const server = http.createServer({ keepAliveTimeout: KEEP_ALIVE_MS }, answerStarting);
   await listen(server, config); // first, so that a busy port is told before anything else is touched
-  closers.push(async () => void server.close());
-
-  const storeConfig: StoreConfig = { kind: 'folder', root: path.join(config.dataDir, 'store') };
-  const store = openStore(storeConfig);
-  const pool = createPool({ size: config.workers, entry: config.workerEntry, store: storeConfig, log });
-  closers.push(() => pool.close());
-
-  await migrate(config.databaseUrl); // while the worker processes warm up
-  const db = openDatabase(config.databaseUrl, log);
-  closers.push(() => db.close());
-  const instance = await joinInstances(config.databaseUrl, log);
-  closers.push(() => instance.stop());
-  const queue = await openQueue(config.databaseUrl, db.sequelize, log);
-  closers.push(() => queue.stop(GRACE_MS));
+  closers.add(async () => void server.close());
+  const opened = await openCommon(config, log, closers, false);
+  const { db, queue, relay, instance, activeJobs, clock } = opened;
   const sink = config.smtpUrl ? null : await startMailSink(db, log);
-  if (sink) closers.push(() => sink.stop());
+  if (sink) closers.add(() => sink.stop());
   const smtpUrl = config.smtpUrl ?? sink!.url;
   const mail = startMailer({ db, smtpUrl, from: config.mailFrom, log, clock });
-  closers.push(() => mail.stop());
+  closers.add(() => mail.stop());
   const sessions = openSessions(config, log);
-  closers.push(() => sessions.close());
-  closers.push(() => closeHttp(server));
+  closers.add(() => sessions.close());
+  closers.add(() => closeHttp(server));
   const live = createLive();
-  closers.push(() => live.close());
+  closers.add(() => live.close());
 
   const stopping = new AbortController();
   const activeRuns = new ActiveRuns();
-  const activeJobs = new ActiveJobs();
   const ctx: Context = {
-    config, log, db, store, pool, queue, mail, live, instance, activeRuns, activeJobs, clock,
-    stopping: stopping.signal,
+    ...opened, config, mail, activeRuns, live: tellingOthers(live, relay), stopping: stopping.signal,
   }; // prettier-ignore
-  closers.push(async () => {
+  closers.add(async () => {
     server.close();
     stopping.abort();
     await activeJobs.cancelAll();
@@ -104,11 +73,11 @@ async function open(
   });
 
   await sweepUploads(config.dataDir);
-  await recover(ctx);
+  await recover(ctx, clearUpAfter);
   const consumers = Math.max(1, config.workers - 1);
-  await queue.consume({ decode: (payload, lastAttempt) => decode(ctx, payload, lastAttempt) }, consumers);
+  await queue.consume(jobHandlers(ctx), consumers);
   if (config.demo) await seedDemo(ctx);
-  void keepRecovering(ctx);
+  void keepRecovering(ctx, clearUpAfter);
   server.off('request', answerStarting);
   server.on('request', createApp(ctx, sessions));
   live.attach(server, ctx, sessions); // after the application: it takes its own requests out of those before it
@@ -116,7 +85,21 @@ async function open(
   const url = `http://${config.host.includes(':') ? `[${config.host}]` : config.host}:${port}`;
   log.info({ url, instance: instance.id }, 'listening');
   let stopped: Promise<void> | undefined;
-  return { url, ctx, stop: () => (stopped ??= closeAll()) };
+  return { url, ctx, stop: () => (stopped ??= closers.closeAll()) };
+}
+
+/** What changes here is told to the servers beside, and what changes there to the pages that are connected here. */
+function tellingOthers(live: Live, relay: Relay): Live {
+  relay.on((message) => {
+    if (message.type !== 'recording-changed') return;
+    const { workspaceId, recordingId, status, progress } = message;
+    live.recordingChanged({ workspaceId, recordingId, status, progress });
+  });
+  const recordingChanged = (message: RecordingChanged) => {
+    live.recordingChanged(message);
+    relay.tell({ type: 'recording-changed', ...message });
+  };
+  return { ...live, recordingChanged };
 }
 
 function listen(server: http.Server, { port, host }: Config): Promise<void> {

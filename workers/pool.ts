@@ -17,6 +17,8 @@ export interface PoolOptions {
   log: PoolLog;
   /** Decoded recordings that each process may hold in memory, bytes. */
   cacheBytes?: number;
+  /** Nobody waits at a screen for it: no process is kept free of bulk jobs. */
+  bulkOnly?: boolean;
 }
 
 /** Starts the processes at once, so that the first job finds them warm. */
@@ -187,7 +189,8 @@ export class WorkerPool implements Pool {
   /** Where there are several processes, one is always left to the people who wait at a screen. */
   private hasRoomForBulk(): boolean {
     const bulkRunning = this.slots.filter((slot) => slot.entry?.bulk).length;
-    return bulkRunning < Math.max(1, this.options.size - 1);
+    const { size, bulkOnly = false } = this.options;
+    return bulkRunning < (bulkOnly ? size : Math.max(1, size - 1));
   }
 
   private slotFor(entry: Entry): Slot | null {

@@ -1,4 +1,4 @@
-/** The server and its worker process as two plain JavaScript files. Packages stay outside, so that native ones work. */
+/** The server, the queue's consumer and the worker process as plain JavaScript files. Packages stay outside, so that native ones work. */
 import { existsSync } from 'node:fs';
 import path from 'node:path';
 import { build, type BuildOptions } from 'esbuild';
@@ -30,11 +30,18 @@ const COMMON: BuildOptions = {
 /** Bundles where something has changed; answers whether it did. */
 export async function buildServer(): Promise<boolean> {
   const hash = hashInputs(SERVER_INPUTS);
-  if (isStamped('server', hash) && [BUILD.server, BUILD.worker].every((file) => existsSync(file)))
+  if (
+    isStamped('server', hash) &&
+    [BUILD.server, BUILD.consumer, BUILD.worker].every((file) => existsSync(file))
+  )
     return false;
   await build({
     ...COMMON,
-    entryPoints: { index: inRoot('server/index.ts'), worker: inRoot('workers/entry.ts') },
+    entryPoints: {
+      index: inRoot('server/index.ts'),
+      consumer: inRoot('server/consumer.ts'),
+      worker: inRoot('workers/entry.ts'),
+    },
     outdir: path.dirname(BUILD.server),
   });
   writeStamp('server', hash);

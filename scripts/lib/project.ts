@@ -9,6 +9,7 @@ export const BUILD = {
   client: inRoot('dist/client'),
   server: inRoot('dist/server/index.js'),
   worker: inRoot('dist/server/worker.js'),
+  consumer: inRoot('dist/server/consumer.js'),
 };
 
 export interface Settings {

@@ -110,12 +110,18 @@ function temporaryHome(account: Account): string {
   return home;
 }
 
+/** Where the cluster of `folder` lies: elsewhere where its account cannot enter the folder. */
+export function homeOf(account: Account, folder: string): string {
+  const home = path.resolve(folder);
+  if (canEnter(account, path.dirname(home))) return home;
+  const tag = createHash('sha256').update(home).digest('hex').slice(0, 10);
+  return `/var/tmp/driftwright-postgres-${tag}`;
+}
+
 function keptHome(account: Account, folder: string, log: (line: string) => void): string {
-  let home = path.resolve(folder);
-  mkdirSync(path.dirname(home), { recursive: true });
-  if (!canEnter(account, path.dirname(home))) {
-    const tag = createHash('sha256').update(home).digest('hex').slice(0, 10);
-    home = `/var/tmp/driftwright-postgres-${tag}`;
+  mkdirSync(path.dirname(path.resolve(folder)), { recursive: true });
+  const home = homeOf(account, folder);
+  if (home !== path.resolve(folder)) {
     log(`The database is kept in ${home}: account "${account.name}" cannot enter the project's folder.`);
   }
   mkdirSync(home, { recursive: true });

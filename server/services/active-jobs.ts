@@ -1,11 +1,21 @@
 /** Batch jobs that this process has in hand, by the recording they work on, so that they can be cancelled. */
-export class ActiveJobs {
-  private readonly jobs = new Map<string, { cancel: () => void; ended: Promise<unknown> }>();
+interface Entry {
+  generation: number;
+  cancel: () => void;
+  ended: Promise<unknown>;
+}
 
-  /** Remembers a job until it ends. */
-  async track<T>(recordingId: string, job: { result: Promise<T>; cancel(): void }): Promise<T> {
+export class ActiveJobs {
+  private readonly jobs = new Map<string, Entry>();
+
+  /** Remembers a job, begun for a recording's mapping number `generation`, until it ends. */
+  async track<T>(
+    recordingId: string,
+    generation: number,
+    job: { result: Promise<T>; cancel(): void },
+  ): Promise<T> {
     const ended = job.result.catch(() => undefined);
-    const entry = { cancel: () => job.cancel(), ended };
+    const entry = { generation, cancel: () => job.cancel(), ended };
     this.jobs.set(recordingId, entry);
     try {
       return await job.result;
@@ -14,11 +24,16 @@ export class ActiveJobs {
     }
   }
 
-  /** Cancels what works on the recording and waits until it has let go of its files. */
-  async cancel(recordingId: string): Promise<void> {
+  has(recordingId: string): boolean {
+    return this.jobs.has(recordingId);
+  }
+
+  /** Cancels what works on the recording for a mapping before number `before`, and waits until it has ended. */
+  async cancel(recordingId: string, before = Infinity): Promise<void> {
     const job = this.jobs.get(recordingId);
-    job?.cancel();
-    await job?.ended;
+    if (!job || job.generation >= before) return;
+    job.cancel();
+    await job.ended;
   }
 
   async cancelAll(): Promise<void> {

@@ -1,13 +1,13 @@
 /** Decoding: the queue's job that turns a recording's raw files into channels, or says why it cannot. */
 import { Op, type Transaction } from 'sequelize';
-import type { ChannelMap, IntakeProblem, RecordingStatus } from '@/shared/contracts/recordings';
+import type { ChannelMap, IntakeProblem } from '@/shared/contracts/recordings';
 import { IDENTITY_AXES } from '@/shared/contracts/vehicles';
-import { type DecodeResult, JobFailed, storeKeys, WorkerCrashed } from '@/workers';
-import type { Context } from '../context';
-import { persist } from '../database-state';
+import { type DecodeResult, JobCancelled } from '@/workers';
+import type { JobContext } from '../context';
 import type { Recording } from '../models/recording';
 import type { JobPayload } from '../queue/queue';
-import { discardFiles } from './discard';
+import { claim, conclude, letGo } from './decoding-hold';
+import { problemOf } from './decoding-problems';
 
 /** Rows and sockets hear of progress no more often than this, ms. */
 const PROGRESS_EVERY_MS = 500;
@@ -16,7 +16,7 @@ const SCENARIO_SHARE = 0.5;
 
 /** Queues the decoding of a recording that has just been confirmed or mapped anew. Higher priorities go first. */
 export const sendDecode = (
-  ctx: Context,
+  ctx: JobContext,
   { id: recordingId, generation }: Recording,
   transaction: Transaction,
   priority = 0,
@@ -24,7 +24,7 @@ export const sendDecode = (
 
 /** Puts a recording back to the start with `givenMap`, and queues it; what is under way for it is void. */
 export async function redecode(
-  ctx: Context,
+  ctx: JobContext,
   id: string,
   givenMap: ChannelMap | null,
   transaction: Transaction,
@@ -32,16 +32,26 @@ export async function redecode(
   const lock = transaction.LOCK.UPDATE;
   const recording = await ctx.db.Recording.findByPk(id, { lock, transaction, rejectOnEmpty: true });
   const generation = recording.generation + 1;
-  await recording.update({ ...UNDECODED, givenMap, generation, instanceId: null }, { transaction });
+  await recording.update({ ...UNDECODED, givenMap, generation }, { transaction });
   await sendDecode(ctx, recording, transaction);
   transaction.afterCommit(() => {
-    void ctx.activeJobs.cancel(id);
+    stopDecoding(ctx, id, generation);
     announce(ctx, recording);
   });
 }
 
+/** Stops, here and in the processes beside, what decodes a recording for a mapping before number `before`. */
+export function stopDecoding(ctx: JobContext, recordingId: string, before: number): void {
+  void ctx.activeJobs.cancel(recordingId, before);
+  ctx.relay.tell({ type: 'stop-decoding', recordingId, before });
+}
+
 /** Decodes again what took its axes from the vehicle. */
-export async function redecodeOf(ctx: Context, vehicleId: string, transaction: Transaction): Promise<void> {
+export async function redecodeOf(
+  ctx: JobContext,
+  vehicleId: string,
+  transaction: Transaction,
+): Promise<void> {
   const where = { vehicleId, confirmedAt: { [Op.ne]: null }, deletedAt: null };
   for (const recording of await ctx.db.Recording.findAll({ where, transaction })) {
     if (!recording.givenMap?.imu?.axes) await redecode(ctx, recording.id, recording.givenMap, transaction);
@@ -49,7 +59,7 @@ export async function redecodeOf(ctx: Context, vehicleId: string, transaction: T
 }
 
 /** Tells the workspace how a recording stands. */
-export function announce(ctx: Context, { id, workspaceId, status, progress }: Recording): void {
+export function announce(ctx: JobContext, { id, workspaceId, status, progress }: Recording): void {
   ctx.live.recordingChanged({ workspaceId, recordingId: id, status, progress });
 }
 
@@ -58,7 +68,7 @@ export function announce(ctx: Context, { id, workspaceId, status, progress }: Re
  * Throws to be tried again.
  */
 export async function decode(
-  ctx: Context,
+  ctx: JobContext,
   { recordingId, generation }: JobPayload<'decode'>,
   lastAttempt: boolean,
 ): Promise<void> {
@@ -67,11 +77,12 @@ export async function decode(
   announce(ctx, recording);
   try {
     if (recording.scenario && (recording.files ?? []).length === 0) await simulate(ctx, recording);
-    await conclude(ctx, recording, outcomeColumns(await runDecode(ctx, recording)));
+    await finish(ctx, recording, outcomeColumns(await runDecode(ctx, recording)));
   } catch (error) {
     const problem = problemOf(error, lastAttempt);
-    if (!problem) throw error;
-    await conclude(ctx, recording, { status: 'rejected', progress: 1, problems: [problem] });
+    if (problem) return finish(ctx, recording, { status: 'rejected', progress: 1, problems: [problem] });
+    const isWanted = await letGo(ctx, recording);
+    if (isWanted || !(error instanceof JobCancelled)) throw error;
   }
 }
 
@@ -90,22 +101,12 @@ const UNDECODED = {
   sha256: null,
 } as const;
 
-/** Marks the recording as being decoded here; null when there is nothing to do any more. */
-async function claim(ctx: Context, id: string, generation: number): Promise<Recording | null> {
-  const open: RecordingStatus[] = ['uploaded', 'decoding'];
-  const [count] = await ctx.db.Recording.update(
-    { status: 'decoding', progress: 0, instanceId: ctx.instance.id },
-    { where: { id, generation, status: open, deletedAt: null } },
-  );
-  return count === 0 ? null : ctx.db.Recording.findByPk(id, { include: ['files', 'vehicle'] });
-}
-
-async function simulate(ctx: Context, recording: Recording): Promise<void> {
+async function simulate(ctx: JobContext, recording: Recording): Promise<void> {
   const { id: recordingId, scenario } = recording;
   if (!scenario) return;
   const report = progressReport(ctx, recording, 0, SCENARIO_SHARE);
   const job = ctx.pool.submit({ kind: 'scenario', recordingId, scenario }, { onEvent: report });
-  const { files } = await ctx.activeJobs.track(recordingId, job);
+  const { files } = await ctx.activeJobs.track(recordingId, recording.generation, job);
   const rows = files.map(({ role, name, key, bytes, sha256 }) => ({ recordingId, role, name, storeKey: key, bytes, sha256 })); // prettier-ignore
   await ctx.db.RecordingFile.bulkCreate(rows, { updateOnDuplicate: ['name', 'storeKey', 'bytes', 'sha256'] });
   recording.files = await ctx.db.RecordingFile.findAll({ where: { recordingId } });
@@ -119,16 +120,16 @@ export const decodeJobOf = (recording: Recording, channelMap: ChannelMap | null)
   vehicleAxes: recording.vehicle?.axes ?? IDENTITY_AXES,
 });
 
-function runDecode(ctx: Context, recording: Recording): Promise<DecodeResult> {
+function runDecode(ctx: JobContext, recording: Recording): Promise<DecodeResult> {
   const from = recording.scenario ? SCENARIO_SHARE : 0;
   const job = ctx.pool.submit(
     { kind: 'decode', ...decodeJobOf(recording, recording.givenMap) },
     { onEvent: progressReport(ctx, recording, from, 1 - from) },
   );
-  return ctx.activeJobs.track(recording.id, job);
+  return ctx.activeJobs.track(recording.id, recording.generation, job);
 }
 
-function progressReport(ctx: Context, recording: Recording, from: number, share: number) {
+function progressReport(ctx: JobContext, recording: Recording, from: number, share: number) {
   let last = 0;
   return (event: { type: string; progress?: number }) => {
     const now = Date.now();
@@ -137,22 +138,15 @@ function progressReport(ctx: Context, recording: Recording, from: number, share:
     recording.progress = Math.min(1, from + share * event.progress);
     const { id, generation, progress } = recording;
     announce(ctx, recording);
-    ctx.db.Recording.update({ progress }, { where: { id, generation, status: 'decoding' } }).catch(
+    ctx.db.Recording.update({ progress }, { where: { id, generation, status: 'decoding' } }).then(
+      ([count]) => (count === 0 ? ctx.activeJobs.cancel(id, generation + 1) : undefined),
       () => undefined,
     );
   };
 }
 
-/** Writes how it ended, once, unless a newer mapping or a deletion came first. */
-async function conclude(ctx: Context, recording: Recording, columns: Partial<Recording>): Promise<void> {
-  const { id, generation } = recording;
-  const where = { id, generation, status: 'decoding' as const, deletedAt: null };
-  const write = () => ctx.db.Recording.update({ ...columns, instanceId: null }, { where });
-  const [count] = await persist(write, ctx);
-  if (count === 0) {
-    if (!(await ctx.db.Recording.findByPk(id))) await discardFiles(ctx, storeKeys.recording(id));
-    return;
-  }
+async function finish(ctx: JobContext, recording: Recording, columns: Partial<Recording>): Promise<void> {
+  if (!(await conclude(ctx, recording, columns))) return;
   Object.assign(recording, { status: columns.status, progress: 1 });
   announce(ctx, recording);
 }
@@ -163,23 +157,4 @@ function outcomeColumns(result: DecodeResult): Partial<Recording> {
   if (result.outcome !== 'ready') return { ...ended, problems: result.problems };
   const { startS, endS, hasReference, timeOrigin, health, strip, sha256 } = result;
   return { ...ended, problems: [], startS, endS, hasReference, timeOrigin, health, strip, sha256 };
-}
-
-/** What to tell people when trying again does not help; null: try again. */
-function problemOf(error: unknown, lastAttempt: boolean): IntakeProblem | null {
-  const nowhere = { file: null, line: null, column: null };
-  if (error instanceof JobFailed && (error.code !== 'worker-start' || lastAttempt)) {
-    const remedy = 'Mend the file and upload it again, or correct the channel map.';
-    return { ...nowhere, code: error.code, message: error.message, remedy };
-  }
-  if (error instanceof WorkerCrashed && lastAttempt) {
-    const message = 'The computing process stopped each time it worked on these files.';
-    return {
-      ...nowhere,
-      code: 'worker-crashed',
-      message,
-      remedy: 'Upload a shorter piece, or tell the operator.',
-    };
-  }
-  return null;
 }

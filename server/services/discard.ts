@@ -1,11 +1,11 @@
 /** Removing what a cancelled or deleted piece of work has stored. */
-import type { Context } from '../context';
+import type { JobContext } from '../context';
 
 /** A worker that was told to stop may still be finishing a write, ms. */
 const SETTLE_MS = 3_000;
 
 /** Removes every key under `prefix`, and once more a moment later. */
-export async function discardFiles(ctx: Context, prefix: string): Promise<void> {
+export async function discardFiles(ctx: JobContext, prefix: string): Promise<void> {
   await ctx.store.removePrefix(prefix);
   const again = setTimeout(() => {
     ctx.store.removePrefix(prefix).catch((error: unknown) => ctx.log.warn({ err: error, prefix }, 'discard'));

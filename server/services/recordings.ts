@@ -221,6 +221,7 @@ export async function deleteRecording(ctx: Context, actor: Actor, id: string): P
 export async function forget(ctx: Context, id: string): Promise<void> {
   const active = ctx.activeRuns.of(id);
   for (const run of active) run.cancel();
+  ctx.relay.tell({ type: 'stop-decoding', recordingId: id, before: null });
   await Promise.all([ctx.activeJobs.cancel(id), ...active.map((run) => run.ended)]);
   const runs = await ctx.db.Run.findAll({ where: { recordingId: id }, attributes: ['id'] });
   for (const run of runs) await discardFiles(ctx, storeKeys.run(run.id));

@@ -2,28 +2,31 @@
 import { Op } from 'sequelize';
 import type { RunState } from '@/shared/contracts/runs';
 import { storeKeys } from '@/workers';
-import type { Context } from '../context';
+import type { Context, JobContext } from '../context';
 import { isDatabaseAway, pause } from '../database-state';
 import { announce, sendDecode } from './decoding';
 import { discardFiles } from './discard';
 import { forget } from './recordings';
 import { launch, RESTARTED } from './run-launch';
 
-const LOOK_EVERY_MS = 30_000;
+const LOOK_EVERY_MS = 5_000;
 const GOING: RunState[] = ['queued', 'running'];
 
 /**
- * Every half minute, for the sake of other servers, until this one stops. A server counts as dead when it was found so
+ * Every few seconds, for the sake of other processes, until this one stops. One counts as dead when it was found so
  * twice in a row: after a restart of the database all of them need a moment to take their locks again.
  */
-export async function keepRecovering(ctx: Context): Promise<void> {
+export async function keepRecovering<C extends JobContext>(
+  ctx: C,
+  clearUp: (ctx: C, dead: string[]) => Promise<void>,
+): Promise<void> {
   let suspects: string[] = [];
   while (!ctx.stopping.aborted) {
     await pause(LOOK_EVERY_MS, ctx.stopping);
     if (ctx.stopping.aborted) return;
     try {
       const dead = await findDead(ctx);
-      await clearUpAfter(ctx, dead.filter((id) => suspects.includes(id))); // prettier-ignore
+      await clearUp(ctx, dead.filter((id) => suspects.includes(id))); // prettier-ignore
       suspects = dead;
     } catch (error) {
       if (!isDatabaseAway(error)) ctx.log.error({ err: error }, 'recovery');
@@ -32,11 +35,15 @@ export async function keepRecovering(ctx: Context): Promise<void> {
 }
 
 /** At start: whoever is found dead now was so before. */
-export const recover = async (ctx: Context): Promise<void> => clearUpAfter(ctx, await findDead(ctx));
+export const recover = async <C extends JobContext>(
+  ctx: C,
+  clearUp: (ctx: C, dead: string[]) => Promise<void>,
+): Promise<void> => clearUp(ctx, await findDead(ctx));
 
-const findDead = async (ctx: Context): Promise<string[]> => ctx.instance.deadAmong(await holders(ctx));
+const findDead = async (ctx: JobContext): Promise<string[]> => ctx.instance.deadAmong(await holders(ctx));
 
-async function clearUpAfter(ctx: Context, dead: string[]): Promise<void> {
+/** A server's share. */
+export async function clearUpAfter(ctx: Context, dead: string[]): Promise<void> {
   await dropUnconfirmed(ctx, dead);
   await finishDeletions(ctx);
   await decodeAgain(ctx, dead);
@@ -44,7 +51,7 @@ async function clearUpAfter(ctx: Context, dead: string[]): Promise<void> {
 }
 
 /** Servers that rows in hand name. */
-async function holders(ctx: Context): Promise<string[]> {
+async function holders(ctx: JobContext): Promise<string[]> {
   const where = { instanceId: { [Op.ne]: null } };
   const recordings = await ctx.db.Recording.findAll({
     where,
@@ -75,15 +82,22 @@ async function finishDeletions(ctx: Context): Promise<void> {
   for (const { id } of await ctx.db.Recording.findAll({ where, attributes: ['id'] })) await forget(ctx, id);
 }
 
-async function decodeAgain(ctx: Context, dead: string[]): Promise<void> {
+/** Takes decodings up again that were cut off: all that a process without an HTTP side does for the dead. */
+export async function decodeAgain(ctx: JobContext, dead: string[]): Promise<void> {
   const where = { status: 'decoding' as const, instanceId: dead };
   for (const recording of await ctx.db.Recording.findAll({ where })) {
-    ctx.log.info({ recordingId: recording.id }, 'a decoding that was cut off is taken up again');
-    await ctx.db.transaction(async (transaction) => {
-      await recording.update({ status: 'uploaded', progress: 0, instanceId: null }, { transaction });
-      await sendDecode(ctx, recording, transaction);
+    const { id, generation, instanceId } = recording;
+    const back = { status: 'uploaded', progress: 0, instanceId: null } as const;
+    const isOurs = await ctx.db.transaction(async (transaction) => {
+      // Whoever else looks after the dead does the same: one of them changes the row.
+      const same = { where: { ...where, id, generation, instanceId }, transaction };
+      const [count] = await ctx.db.Recording.update(back, same);
+      if (count > 0) await sendDecode(ctx, recording, transaction);
+      return count > 0;
     });
-    announce(ctx, recording);
+    if (!isOurs) continue;
+    ctx.log.info({ recordingId: id }, 'a decoding that was cut off is taken up again');
+    announce(ctx, Object.assign(recording, back));
   }
 }
 

@@ -6,7 +6,8 @@
 import { createReadStream } from 'node:fs';
 import { rm } from 'node:fs/promises';
 import { Readable } from 'node:stream';
-import type { S3Client } from '@aws-sdk/client-s3';
+import type * as Sdk from '@aws-sdk/client-s3';
+import type { Upload as SdkUpload } from '@aws-sdk/lib-storage';
 import { assertStoreKey, assertStorePrefix } from './keys';
 import { isMissing, s3Failure, type Doing } from './s3-failures';
 import { StoreKeyMissing, type S3StoreConfig, type Store } from './types';
@@ -20,8 +21,14 @@ const REMOVED_AT_ONCE = 1000;
 const SILENCE_MS = 60_000;
 const CONNECT_MS = 5_000;
 
+interface Connection {
+  client: Sdk.S3Client;
+  sdk: typeof Sdk;
+  Upload: typeof SdkUpload;
+}
+
 export class S3Store implements Store {
-  private opened: Promise<S3Client> | undefined;
+  private opened: Promise<Connection> | undefined;
 
   constructor(private readonly config: S3StoreConfig) {}
 
@@ -39,18 +46,16 @@ export class S3Store implements Store {
 
   async stream(key: string): Promise<Readable> {
     assertStoreKey(key);
-    const { GetObjectCommand } = await import('@aws-sdk/client-s3');
-    return this.tell('read', key, async (client) => {
-      const { Body } = await client.send(new GetObjectCommand(this.at(key)));
+    return this.tell('read', key, async ({ client, sdk }) => {
+      const { Body } = await client.send(new sdk.GetObjectCommand(this.at(key)));
       return Body as Readable; // on Node it is one
     });
   }
 
   async bytes(key: string): Promise<Uint8Array> {
     assertStoreKey(key);
-    const { GetObjectCommand } = await import('@aws-sdk/client-s3');
-    return this.tell('read', key, async (client) => {
-      const { Body } = await client.send(new GetObjectCommand(this.at(key)));
+    return this.tell('read', key, async ({ client, sdk }) => {
+      const { Body } = await client.send(new sdk.GetObjectCommand(this.at(key)));
       return (await Body?.transformToByteArray()) ?? new Uint8Array(0);
     });
   }
@@ -74,30 +79,21 @@ export class S3Store implements Store {
 
   async removePrefix(prefix: string): Promise<void> {
     assertStorePrefix(prefix);
-    const { DeleteObjectsCommand } = await import('@aws-sdk/client-s3');
     const keys = await this.list(prefix);
     while (keys.length > 0) {
       const Objects = keys.splice(0, REMOVED_AT_ONCE).map((key) => ({ Key: this.at(key).Key }));
-      await this.tell('remove', undefined, async (client) => {
-        const Delete = { Objects, Quiet: true };
-        const { Errors = [] } = await client.send(
-          new DeleteObjectsCommand({ Bucket: this.config.bucket, Delete }),
-        );
-        const [left] = Errors;
-        if (left)
-          throw Object.assign(new Error(left.Message), {
-            name: left.Code,
-            $metadata: { httpStatusCode: 400 },
-          });
+      await this.tell('remove', undefined, async ({ client, sdk }) => {
+        const input = { Bucket: this.config.bucket, Delete: { Objects, Quiet: true } };
+        const { Errors = [] } = await client.send(new sdk.DeleteObjectsCommand(input));
+        if (Errors[0]) throw refusalOf(Errors[0]);
       });
     }
   }
 
   private async putStream(key: string, source: Readable): Promise<{ bytes: number }> {
-    const { Upload } = await import('@aws-sdk/lib-storage');
     const watched = watch(source);
     try {
-      const client = await this.client();
+      const { client, Upload } = await this.connection();
       const params = { ...this.at(key), Body: Readable.from(watched.pieces(), { objectMode: false }) };
       await new Upload({ client, params, partSize: PART_BYTES, queueSize: PARTS_AT_ONCE }).done();
       return { bytes: watched.bytes };
@@ -110,9 +106,10 @@ export class S3Store implements Store {
   }
 
   private putWhole(key: string, bytes: Uint8Array): Promise<{ bytes: number }> {
-    return this.tell('write', undefined, async (client) => {
-      const { PutObjectCommand } = await import('@aws-sdk/client-s3');
-      await client.send(new PutObjectCommand({ ...this.at(key), Body: bytes, ContentLength: bytes.length }));
+    return this.tell('write', undefined, async ({ client, sdk }) => {
+      await client.send(
+        new sdk.PutObjectCommand({ ...this.at(key), Body: bytes, ContentLength: bytes.length }),
+      );
       return { bytes: bytes.length };
     });
   }
@@ -120,10 +117,9 @@ export class S3Store implements Store {
   /** Null where nothing is stored under `key`. */
   private async sizeOf(key: string): Promise<number | null> {
     assertStoreKey(key);
-    const { HeadObjectCommand } = await import('@aws-sdk/client-s3');
-    return this.tell('read', undefined, async (client) => {
+    return this.tell('read', undefined, async ({ client, sdk }) => {
       try {
-        return (await client.send(new HeadObjectCommand(this.at(key)))).ContentLength ?? 0;
+        return (await client.send(new sdk.HeadObjectCommand(this.at(key)))).ContentLength ?? 0;
       } catch (error) {
         if (isMissing(error)) return null;
         throw error;
@@ -133,13 +129,14 @@ export class S3Store implements Store {
 
   /** Keys page by page, our own prefix taken off. */
   private async *pages(prefix: string): AsyncGenerator<string[]> {
-    const { ListObjectsV2Command } = await import('@aws-sdk/client-s3');
     const { Bucket, Key: Prefix } = this.at(prefix);
     const ours = Prefix.length - prefix.length;
     let StartAfter: string | undefined; // understood by more servers than tokens to continue by
     do {
-      const command = new ListObjectsV2Command({ Bucket, Prefix, StartAfter });
-      const page = await this.tell('read', undefined, (client) => client.send(command));
+      const input = { Bucket, Prefix, StartAfter };
+      const page = await this.tell('read', undefined, ({ client, sdk }) =>
+        client.send(new sdk.ListObjectsV2Command(input)),
+      );
       const keys = (page.Contents ?? []).flatMap(({ Key }) => Key ?? []);
       yield keys.map((key) => key.slice(ours));
       StartAfter = page.IsTruncated ? keys.at(-1) : undefined;
@@ -151,7 +148,7 @@ export class S3Store implements Store {
     return { Bucket: bucket, Key: prefix === '' ? key : `${prefix}/${key}` };
   }
 
-  private client(): Promise<S3Client> {
+  private connection(): Promise<Connection> {
     return (this.opened ??= connect(this.config));
   }
 
@@ -159,10 +156,10 @@ export class S3Store implements Store {
   private async tell<T>(
     doing: Doing,
     key: string | undefined,
-    work: (client: S3Client) => Promise<T>,
+    work: (connection: Connection) => Promise<T>,
   ): Promise<T> {
     try {
-      return await work(await this.client());
+      return await work(await this.connection());
     } catch (error) {
       throw s3Failure(error, doing, key);
     }
@@ -170,9 +167,9 @@ export class S3Store implements Store {
 }
 
 /** Checksums only where the protocol wants them: servers other than the first of their kind store what they do not know. */
-async function connect({ region, endpoint, credentials }: S3StoreConfig): Promise<S3Client> {
-  const { S3Client: Client } = await import('@aws-sdk/client-s3');
-  return new Client({
+async function connect({ region, endpoint, credentials }: S3StoreConfig): Promise<Connection> {
+  const [sdk, { Upload }] = await Promise.all([import('@aws-sdk/client-s3'), import('@aws-sdk/lib-storage')]);
+  const client = new sdk.S3Client({
     region,
     ...(endpoint === null ? {} : { endpoint }),
     ...(credentials === null ? {} : { credentials }),
@@ -181,7 +178,12 @@ async function connect({ region, endpoint, credentials }: S3StoreConfig): Promis
     responseChecksumValidation: 'WHEN_REQUIRED',
     requestHandler: { connectionTimeout: CONNECT_MS, socketTimeout: SILENCE_MS },
   });
+  return { client, sdk, Upload };
 }
+
+/** One object of many that was not removed, as the error that a request for it alone would have been. */
+const refusalOf = ({ Code, Message }: Sdk._Error) =>
+  Object.assign(new Error(Message), { name: Code ?? 'Unknown', $metadata: { httpStatusCode: 400 } });
 
 interface Watched {
   bytes: number;
