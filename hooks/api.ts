@@ -73,6 +73,10 @@ export function apiUrl(path: string, query: RequestOptions['query'] = {}): strin
   return API_PREFIX + path + (text ? `?${text}` : '');
 }
 
+/** Address of a file that the browser fetches by itself: the workspace goes along, as no header can. */
+export const downloadUrl = (path: string, query: RequestOptions['query'] = {}): string =>
+  apiUrl(path, { ...query, workspace: workspaceId ?? undefined });
+
 export interface Upload<T> {
   done: Promise<T>;
   cancel: () => void;

@@ -17,6 +17,7 @@ import type {
   Strip,
   TimeOrigin,
 } from '@/shared/contracts/recordings';
+import type { DecodedChannel } from '@/shared/contracts/recording-files';
 import type { Scenario } from '@/shared/contracts/scenarios';
 import type { AxisMap } from '@/shared/contracts/vehicles';
 import type { StoreConfig } from './store/types';
@@ -99,6 +100,13 @@ export interface RecordingSeriesJob {
   toS: number | null;
   points: number;
 }
+/** Writes decoded columns as CSV under storeKeys.recordingExport and answers its key. */
+export interface RecordingExportJob {
+  kind: 'recording-export';
+  recordingId: string;
+  channel: DecodedChannel;
+  name: string;
+}
 /** Allan analysis of a stretch at rest. */
 export interface NoiseJob {
   kind: 'noise';
@@ -146,6 +154,7 @@ export interface JobResults {
   noise: NoiseAnalysis;
   'map-preview': MapPreview;
   'recording-series': Series;
+  'recording-export': { key: string; bytes: number };
   'baseline-track': BaselineTrack;
   'run-series': Uint8Array;
   'run-export': { key: string; bytes: number };
@@ -157,6 +166,7 @@ export type WorkerJob =
   | NoiseJob
   | MapPreviewJob
   | RecordingSeriesJob
+  | RecordingExportJob
   | BaselineTrackJob
   | RunSeriesJob
   | RunExportJob;

@@ -1,6 +1,7 @@
 /** Every route of the API, version 1. */
 import { accountRoutes } from './accounts';
 import { parameterSetRoutes } from './parameter-sets';
+import { recordingFileRoutes } from './recording-files';
 import { recordingRoutes } from './recordings';
 import type { Route } from './route';
 import { runRoutes } from './runs';
@@ -14,6 +15,7 @@ export const ROUTES: readonly Route[] = [
   ...teamRoutes,
   ...vehicleRoutes,
   ...recordingRoutes,
+  ...recordingFileRoutes,
   ...runRoutes,
   ...parameterSetRoutes,
 ];

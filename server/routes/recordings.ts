@@ -29,6 +29,7 @@ import {
   mapRecording,
   previewMap,
 } from '../services/recordings';
+import { cancelDecoding } from '../services/recording-cancel';
 import { acceptRemedy, undoRemedy } from '../services/remedies';
 import { sensorNoise } from '../services/sensor-noise';
 import { idParams } from './parts';
@@ -129,6 +130,17 @@ export const recordingRoutes: Route[] = [
     success: { status: 202, description: 'Decoding follows', ...one },
     handle: async ({ ctx, actor, params, body }) =>
       presentRecording(await mapRecording(ctx, actor, params.id, body)),
+  }),
+  workspaceRoute({
+    method: 'post',
+    path: '/recordings/:id/cancel',
+    tag,
+    summary: 'Stop the decoding; the files are kept, and a channel map decodes them again',
+    permission: 'recording:write',
+    params: idParams,
+    success: { status: 200, description: 'The recording as it stands now', ...one },
+    failures: { 409: 'It is not being decoded' },
+    handle: async ({ ctx, actor, params }) => presentRecording(await cancelDecoding(ctx, actor, params.id)),
   }),
   workspaceRoute({
     method: 'post',

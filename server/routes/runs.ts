@@ -1,5 +1,3 @@
-import type { Response } from 'express';
-import { pipeline } from 'node:stream/promises';
 import { z } from 'zod';
 import { pageOf } from '@/shared/contracts/common';
 import {
@@ -13,17 +11,10 @@ import {
 import type { RunExportJob } from '@/workers';
 import { presentPage } from '../presenters/page';
 import { presentRun, presentRunListItem } from '../presenters/run';
-import {
-  cancelRun,
-  createRun,
-  type Download,
-  exportRun,
-  getRun,
-  listRuns,
-  runSeries,
-} from '../services/runs';
+import { cancelRun, createRun, exportRun, getRun, listRuns, runSeries } from '../services/runs';
 import { idParams } from './parts';
 import { type Route, SENT, workspaceRoute } from './route';
+import { sendFile } from './send-file';
 
 const tag = 'Runs';
 const one = { schema: runSchema, name: 'Run' };
@@ -142,12 +133,3 @@ export const runRoutes: Route[] = [
     }),
   ),
 ];
-
-async function sendFile(res: Response, type: string, { stream, bytes, fileName }: Download) {
-  res.setHeader('Content-Type', type);
-  res.setHeader('Content-Length', bytes);
-  res.attachment(fileName);
-  res.setHeader('Content-Type', type);
-  await pipeline(stream, res);
-  return SENT;
-}

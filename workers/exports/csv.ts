@@ -1,4 +1,4 @@
-/** A run's tables as CSV: numbers in full, so that nothing is lost on the way; empty where a value is missing. */
+/** Tables as CSV: numbers in full, so that nothing is lost on the way; empty where a value is missing. */
 import { INNOVATION_COLUMNS, SOLUTION_COLUMNS } from '@/shared/contracts/runs';
 import type { InnovationTable, SolutionTable } from '../engine/types';
 import type { RunTables } from '../recordings/results';
@@ -17,6 +17,13 @@ export function* solutionCsv(solution: SolutionTable): Generator<string> {
   const columns = names.map((name) => solution[name]!);
   yield `${names.join(',')}\n`;
   yield* pieces(solution.time_s!.length, (row) => columns.map((column) => cell(column[row]!)).join(','));
+}
+
+/** Every column as it is kept, its unit in its name. */
+export function* tableCsv(columns: Record<string, Float64Array>): Generator<string> {
+  const kept = Object.values(columns);
+  yield `${Object.keys(columns).join(',')}\n`;
+  yield* pieces(kept[0]?.length ?? 0, (row) => kept.map((column) => cell(column[row]!)).join(','));
 }
 
 /** Long form in time order: one row a scalar channel; `nis` and `accepted` are its group's. */

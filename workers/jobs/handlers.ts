@@ -5,6 +5,7 @@ import { decode } from './decode';
 import type { JobHelpers } from './helpers';
 import { mapPreview } from './map-preview';
 import { noise } from './noise';
+import { recordingExport } from './recording-export';
 import { recordingSeries } from './recording-series';
 import { run } from './run';
 import { runExport } from './run-export';
@@ -20,6 +21,7 @@ export const handlers: { [K in JobKind]: JobHandler<K> } = {
   noise,
   'map-preview': mapPreview,
   'recording-series': recordingSeries,
+  'recording-export': recordingExport,
   'baseline-track': baselineTrack,
   'run-series': runSeries,
   'run-export': runExport,

@@ -1,5 +1,4 @@
 /** A run as a file for other programs. What was not kept (another rate, the smoothed solution) is computed again. */
-import { Readable } from 'node:stream';
 import { createRun } from '../engine';
 import { innovationsCsv, solutionCsv } from '../exports/csv';
 import { trackGeoJson, trackGpx, trackKml, type AboveSeaLevel } from '../exports/track';
@@ -9,6 +8,7 @@ import { safeFileName } from '../store/keys';
 import { storeKeys, StoreKeyMissing } from '../store/types';
 import type { JobHelpers } from './helpers';
 import { drive, requestOf } from './run';
+import { putText } from './text-file';
 
 export async function runExport(
   job: RunExportJob,
@@ -16,12 +16,7 @@ export async function runExport(
 ): Promise<{ key: string; bytes: number }> {
   const tables = await tablesFor(job, helpers);
   const key = storeKeys.export(job.run.runId, safeFileName(job.name));
-  const text = await textOf(job, tables);
-  const { bytes } = await helpers.store.put(
-    key,
-    Readable.from(breathing(text, helpers), { objectMode: false }),
-  );
-  return { key, bytes };
+  return putText(key, await textOf(job, tables), helpers);
 }
 
 async function tablesFor(job: RunExportJob, helpers: JobHelpers): Promise<RunTables> {
@@ -61,11 +56,4 @@ function solutionOf(job: RunExportJob, { solution, smoothed }: RunTables) {
 async function aboveSeaLevel(): Promise<AboveSeaLevel> {
   const { ellipsoidToEgm96 } = await import('egm96-universal');
   return ellipsoidToEgm96;
-}
-
-async function* breathing(text: Iterable<string>, helpers: JobHelpers): AsyncGenerator<Buffer> {
-  for (const piece of text) {
-    yield Buffer.from(piece);
-    await helpers.breathe();
-  }
 }
