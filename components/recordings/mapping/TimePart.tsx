@@ -111,13 +111,12 @@ interface TimeMoreProps extends Omit<TimePartProps, 'headers' | 'of'> {
 function TimeMore({ control, name, label, takes }: TimeMoreProps) {
   const time = useWatch({ control, name }) as TimeDraft;
   const { errors } = useFormState({ control });
-  const faults = get<Partial<Record<keyof TimeDraft, unknown>>>(errors, name, {});
   const title = label(takes.zoneMin ? 'Time zone, offset, stamp' : 'Offset, stamp, wrap');
   return (
     <Fold
       title={title}
       open={isUnusual(time)}
-      fault={Boolean(faults.zoneMin ?? faults.wrap ?? faults.offsetS)}
+      fault={['offsetS', 'zoneMin', 'wrap'].some((field) => Boolean(get(errors, `${name}.${field}`)))}
     >
       <View style={fields.row}>
         <View style={fields.cell}>
