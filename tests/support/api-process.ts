@@ -42,14 +42,7 @@ export async function startConsumerProcess(
   dataDir: string,
   env: Record<string, string> = {},
 ): Promise<OwnProcess> {
-  const { line: _line, ...started } = await launch(
-    'server/consumer.ts',
-    'taking jobs',
-    databaseUrl,
-    dataDir,
-    env,
-  );
-  return started;
+  return launch('server/consumer.ts', 'taking jobs', databaseUrl, dataDir, env);
 }
 
 async function launch(

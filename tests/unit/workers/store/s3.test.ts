@@ -43,12 +43,12 @@ test('a storage that is away is told as such', async () => {
 }, 30_000);
 
 /** A server that only ever does `answer`, and a store of it. */
-async function against<T>(answer: http.RequestListener, use: (store: S3Store) => Promise<T>): Promise<T> {
+async function against<T>(answer: http.RequestListener, ask: (store: S3Store) => Promise<T>): Promise<T> {
   const server = http.createServer(answer);
   await new Promise<void>((resolve) => server.listen(0, '127.0.0.1', resolve));
   const { port } = server.address() as AddressInfo;
   try {
-    return await use(withConfig({ endpoint: `http://127.0.0.1:${port}` }));
+    return await ask(withConfig({ endpoint: `http://127.0.0.1:${port}` }));
   } finally {
     server.closeAllConnections();
     await new Promise((resolve) => server.close(resolve));
