@@ -11,8 +11,8 @@
  */
 import { ACCEL_BIAS, ATTITUDE, sizeOf } from './states';
 
-/** Below this, rad², a turn is lost in the covariance's own digits. */
-const NO_TURN = 1e-14;
+/** A turn below this, rad² (2″), changes no σ by a part in ten thousand, nor do all such turns of a run together. */
+const NO_TURN = 1e-10;
 
 /** w = Ĉᵀ(c_N, c_E, 0) of a correction (rad, in b) in `out`; `dcm` n←b, row by row, before it is corrected. */
 export function tiltInBody(dcm: Float64Array, correction: Float64Array, out: Float64Array): void {

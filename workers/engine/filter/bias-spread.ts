@@ -9,6 +9,9 @@ import { ACCEL_BIAS, ATTITUDE, sizeOf } from './states';
 const NEXT: readonly number[] = [1, 2, 0];
 const LAST: readonly number[] = [2, 0, 1];
 
+/** Less than this share of the smallest bias variance is not worth adding. */
+const NEGLIGIBLE = 1e-3;
+
 export class BiasSpread {
   /** Covariances of w (rad) and x (m/s²) in b, 3×3, row by row. */
   private readonly ww = new Float64Array(9);
@@ -20,8 +23,9 @@ export class BiasSpread {
    * `p`: size × size, what is handed out, never what is propagated; `dcm`: n←b, row by row.
    */
   add(p: Float64Array, dcm: Float64Array): void {
-    this.read(p, dcm);
     const size = sizeOf(p);
+    if (isStraight(p, size)) return;
+    this.read(p, dcm);
     const first = ACCEL_BIAS * (size + 1);
     for (let i = 0; i < 3; i += 1)
       for (let l = 0; l < 3; l += 1) {
@@ -62,4 +66,13 @@ export class BiasSpread {
         this.xx[3 * i + k] = p[(ACCEL_BIAS + i) * size + ACCEL_BIAS + k]!;
       }
   }
+}
+
+/** |q|² ≤ ¼|w|²|x|²: with tilts this well known the curve is as good as its tangent. */
+function isStraight(p: Float64Array, size: number): boolean {
+  const tilt = p[ATTITUDE * (size + 1)]! + p[(ATTITUDE + 1) * (size + 1)]!;
+  const x = p[ACCEL_BIAS * (size + 1)]!;
+  const y = p[(ACCEL_BIAS + 1) * (size + 1)]!;
+  const z = p[(ACCEL_BIAS + 2) * (size + 1)]!;
+  return tilt * (x + y + z) < NEGLIGIBLE * Math.min(x, y, z);
 }
