@@ -13,6 +13,7 @@ import { button, heading, signIn, uploadLogs } from './steps';
 
 const DECODED_MS = 60_000;
 const GNSS_LATE_S = 2;
+const THEMES = { phone: 'night', wide: 'paper' } as const;
 
 let stack: Stack;
 let browser: Browser;
@@ -55,7 +56,7 @@ describe.each<ViewportName>(['phone', 'wide'])('on the %s screen', (viewport) =>
   let faults: string[];
 
   beforeAll(async () => {
-    ({ page, faults } = await openWindow(browser, stack.url, { viewport }));
+    ({ page, faults } = await openWindow(browser, stack.url, { viewport, theme: THEMES[viewport] }));
     await signIn(page, engineer.email, DEMO_PASSWORD);
   });
   afterAll(() => page?.context().close());

@@ -7,7 +7,6 @@ import { showProblem } from '@/components/forms/problem';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
 import { Card } from '@/components/ui/Card';
 import { Notice } from '@/components/ui/Notice';
-import { useToast } from '@/components/ui/ToastProvider';
 import { space } from '@/constants/theme';
 import type { ChannelMap, Recording } from '@/shared/contracts/recordings';
 import { Fold } from '../Fold';
@@ -19,9 +18,10 @@ import { FILE_TITLES, titleOf } from './file-titles';
 import { mapDraftSchema, type MapDraft } from './map-draft';
 import { mapFromDraft } from './map-from-draft';
 import { PreviewPane } from './PreviewPane';
-import type { TakeMap } from './PreviewFindings';
 import { SubmitBar } from './SubmitBar';
+import { TakenNote } from './TakenNote';
 import { useDraftPreview } from './use-draft-preview';
+import { useTake } from './use-take';
 
 export interface MappingFormProps {
   recording: Pick<Recording, 'id' | 'channelMap' | 'previews' | 'files' | 'vehicleId' | 'vehicleName'>;
@@ -39,7 +39,7 @@ export function MappingForm({ recording, onSubmit }: MappingFormProps) {
     defaultValues: draftFromMap(recording),
   });
   const { state, incomplete } = useDraftPreview(recording.id, control);
-  const take = useTake(previews, getValues, (draft) => {
+  const { take, note } = useTake(previews, getValues, (draft) => {
     for (const role of Object.keys(draft) as (keyof MapDraft)[])
       setValue(role, draft[role], { shouldDirty: true, shouldValidate: formState.isSubmitted });
   });
@@ -78,6 +78,7 @@ export function MappingForm({ recording, onSubmit }: MappingFormProps) {
       </View>
       <View ref={pane} style={[styles.stack, extraWide ? [styles.side, BESIDE] : null]}>
         <PreviewPane state={state} incomplete={incomplete} onTake={take} />
+        {extraWide ? <TakenNote {...note} /> : null}
         <FormProblem title="The map was not taken" message={formState.errors.root?.message} />
         {faults.length > 0 ? (
           <Notice tone="vermilion" urgent title="Something is still to be said">
@@ -86,7 +87,11 @@ export function MappingForm({ recording, onSubmit }: MappingFormProps) {
         ) : null}
         {extraWide ? <SubmitBar {...bar()} /> : null}
       </View>
-      {extraWide ? null : <SubmitBar {...bar()} />}
+      {extraWide ? null : (
+        <SubmitBar {...bar()}>
+          <TakenNote {...note} />
+        </SubmitBar>
+      )}
     </View>
   );
 
@@ -103,22 +108,6 @@ export function MappingForm({ recording, onSubmit }: MappingFormProps) {
       },
     };
   }
-}
-
-/** Puts parts of a map into the form; the toast takes them out again. */
-function useTake(
-  previews: Recording['previews'],
-  read: () => MapDraft,
-  write: (draft: Partial<MapDraft>) => void,
-): TakeMap {
-  const toast = useToast();
-  return (parts, label) => {
-    const before = structuredClone(read());
-    const whole = draftFromMap({ channelMap: { ...mapFromDraft(before), ...parts }, previews });
-    const changed = (Object.keys(parts) as (keyof ChannelMap)[]).filter((role) => whole[role] !== undefined);
-    write(Object.fromEntries(changed.map((role) => [role, whole[role]])));
-    toast({ message: `${label}: put into the form.`, undo: () => write(before) });
-  };
 }
 
 /** Beside the form the preview stays in sight; React Native's types do not know it. */

@@ -30,7 +30,7 @@ export function SensorMore({ control, sensor, title, twoFiles }: SensorMoreProps
   const name = `imu.${sensor}More` as const;
   const now = useWatch({ control, name }) as SensorExtras;
   const { errors } = useFormState({ control });
-  const unusual = now.signs.includes('turned') || now.scale !== undefined || now.file !== '';
+  const unusual = now.signs.includes('turned') || now.scale !== undefined;
   return (
     <Fold
       title={`${title}: signs and scale${twoFiles ? ', file' : ''}`}

@@ -15,10 +15,12 @@ export interface SubmitBarProps {
   onSubmit: () => void;
   /** Scrolls to the preview; on the phone it lies below the fields. */
   onLook: () => void;
+  /** Above the line, on the phone. */
+  children?: React.ReactNode;
 }
 
 /** The deed, within reach of the thumb on the phone, with what the preview says of the map so far. */
-export function SubmitBar({ busy, preview, computing, onSubmit, onLook }: SubmitBarProps) {
+export function SubmitBar({ busy, preview, computing, onSubmit, onLook, children }: SubmitBarProps) {
   const { palette } = useTheme();
   const { extraWide } = useBreakpoint();
   const send = (
@@ -35,6 +37,7 @@ export function SubmitBar({ busy, preview, computing, onSubmit, onLook }: Submit
   const { words, tone } = summaryOf(preview, computing);
   return (
     <View style={[styles.bar, STICKY, { backgroundColor: palette.ground, borderTopColor: palette.rule }]}>
+      {children}
       <View style={styles.line}>
         <Icon name={ICONS[tone]} tone={tone} size={20} />
         <Figures style={styles.words}>{words}</Figures>
