@@ -5,11 +5,12 @@ import path from 'node:path';
 import AxeBuilder from '@axe-core/playwright';
 import type { Browser, Page } from 'playwright-core';
 import { DEMO_PASSWORD, DEMO_PEOPLE } from '@/fixtures/demo-scenario';
+import { inRoot } from '@/scripts/lib/project';
 import { STANDARD_GRAVITY_M_S2 } from '@/shared/units';
 import { launchBrowser, openWindow, picture, type ViewportName } from '@/tests/support/browser';
 import { writeLogs, type LogFiles } from '@/tests/support/log-files';
 import { Stack } from '@/tests/support/stack';
-import { button, heading, signIn, uploadLogs } from './steps';
+import { button, field, heading, signIn, uploadLogs } from './steps';
 
 const DECODED_MS = 60_000;
 const GNSS_LATE_S = 2;
@@ -120,6 +121,19 @@ describe.each<ViewportName>(['phone', 'wide'])('on the %s screen', (viewport) =>
     await remedy.waitFor({ timeout: DECODED_MS });
     await finding.first().waitFor();
     expect(await button(page, 'Take it back').count()).toBe(0);
+  });
+
+  test('one log that holds both sensors goes in alone', async () => {
+    await page.goto('/recordings/upload');
+    const chooser = page.waitForEvent('filechooser');
+    await button(page, 'Choose the IMU log').click();
+    await (await chooser).setFiles(inRoot('fixtures', 'logs', 'merged.csv'));
+    await field(page, 'Name').fill(`One log, ${viewport}`);
+    await button(page, 'Upload').click();
+    await heading(page, `One log, ${viewport}`).waitFor();
+    await button(page, 'Open in bench').waitFor({ timeout: DECODED_MS });
+    await button(page, 'Correct the mapping').click();
+    await heading(page, 'GNSS in the IMU file').waitFor();
   });
 
   test('no page threw an error on the way', () => {
