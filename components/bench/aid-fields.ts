@@ -91,6 +91,14 @@ const stopFields: readonly ParameterField[] = [
     hint: 'too high: a smooth drive at steady speed passes for a stop',
     needs: STOPS,
   },
+  {
+    path: 'aids.stopDetection.speedMPerS',
+    group: 'stops',
+    label: 'Speed at a stop below',
+    quantity: 'speed',
+    hint: 'or 3σ of it; GNSS and the braking seen must agree',
+    needs: STOPS,
+  },
 ];
 
 const VEHICLE = ['aids.nonHolonomic.enabled'];
