@@ -24,6 +24,8 @@ export interface JobContext {
   log: Logger;
   db: Database;
   store: Store;
+  /** Clears away what processes of this machine that died in the middle of a write left in the store. */
+  sweepStore: () => Promise<void>;
   pool: Pool;
   queue: Queue;
   live: Pick<Live, 'recordingChanged'>;

@@ -1,7 +1,7 @@
 /** What every process of ours opens, with or without an HTTP side: files, worker processes, database, queue. */
 import fs from 'node:fs';
 import { type Logger, pino } from 'pino';
-import { checkStore, createPool, openStore, StoreFailed } from '@/workers';
+import { checkStore, createPool, openStore, StoreFailed, sweepStore } from '@/workers';
 import { type Config, ConfigError } from './config';
 import type { JobContext } from './context';
 import { joinInstances } from './instance';
@@ -66,7 +66,11 @@ export async function openCommon(
     if (message.type !== 'stop-decoding') return;
     void activeJobs.cancel(message.recordingId, message.before ?? Infinity);
   });
-  return { log, db, store, pool, queue, instance, relay, activeJobs, clock: () => new Date() };
+  return {
+    log, db, store, pool, queue, instance, relay, activeJobs,
+    sweepStore: () => sweepStore(config.store),
+    clock: () => new Date(),
+  }; // prettier-ignore
 }
 
 async function reachStore(config: Config): Promise<void> {

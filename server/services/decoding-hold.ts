@@ -40,14 +40,17 @@ async function isAtWork(ctx: JobContext, instanceId: string, recordingId: string
   return (await ctx.instance.deadAmong([instanceId])).length === 0;
 }
 
-/** Writes how it ended, once; answers false where a newer mapping, a stop or a deletion came first. */
+/**
+ * Writes how it ended, once; answers false where a newer mapping, a stop or a deletion came first, or where this process
+ * was out of reach for so long that another took the recording up.
+ */
 export async function conclude(
   ctx: JobContext,
   recording: Recording,
   columns: Partial<Recording>,
 ): Promise<boolean> {
   const { id, generation } = recording;
-  const where = { id, generation, status: 'decoding' as const, deletedAt: null };
+  const where = { id, generation, status: 'decoding' as const, deletedAt: null, instanceId: ctx.instance.id };
   const write = () => ctx.db.Recording.update({ ...columns, instanceId: null }, { where });
   const [count] = await persist(write, ctx);
   if (count === 0) await releaseVoid(ctx, id);

@@ -138,7 +138,8 @@ function progressReport(ctx: JobContext, recording: Recording, from: number, sha
     recording.progress = Math.min(1, from + share * event.progress);
     const { id, generation, progress } = recording;
     announce(ctx, recording);
-    ctx.db.Recording.update({ progress }, { where: { id, generation, status: 'decoding' } }).then(
+    const where = { id, generation, status: 'decoding' as const, instanceId: ctx.instance.id };
+    ctx.db.Recording.update({ progress }, { where }).then(
       ([count]) => (count === 0 ? ctx.activeJobs.cancel(id, generation + 1) : undefined),
       () => undefined,
     );

@@ -26,7 +26,9 @@ export async function keepRecovering<C extends JobContext>(
     if (ctx.stopping.aborted) return;
     try {
       const dead = await findDead(ctx);
-      await clearUp(ctx, dead.filter((id) => suspects.includes(id))); // prettier-ignore
+      const gone = dead.filter((id) => suspects.includes(id));
+      await clearUp(ctx, gone);
+      if (gone.length > 0) await ctx.sweepStore(); // its worker processes have ended by now
       suspects = dead;
     } catch (error) {
       if (!isDatabaseAway(error)) ctx.log.error({ err: error }, 'recovery');
