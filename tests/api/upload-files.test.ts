@@ -30,7 +30,7 @@ describe('an upload of other files than one IMU and one GNSS log', () => {
   const { imu, gnss } = smallLogs();
   const rows = table(imu);
 
-  async function sent(files: Record<string, string>): Promise<{ recording: Recording; plain: Recording }> {
+  async function sent(files: Record<string, string>) {
     const engineer = await buildMember(api, 'engineer');
     const form = new FormData();
     form.set('meta', JSON.stringify({ name: 'Breakwater in parts' }));
