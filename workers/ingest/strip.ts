@@ -22,7 +22,21 @@ export function stripOf(imu: ImuFacts, gnss: Columns): Strip {
     const speed = speedAt(gnss, i);
     if (speed !== null) speeds[bucket] = Math.max(speeds[bucket] ?? 0, speed);
   }
+  bridge(speeds, Math.ceil(MAX_DIFFERENCE_S / width));
   return { startS, endS, speedMPerS: speeds, gnssFixes: fixes, gapsS: imu.gapsS, clippedS: imu.clippedS };
+}
+
+/** Between fixes that follow one another the speed is drawn through; where GNSS was away it stays open. */
+function bridge(speeds: (number | null)[], most: number): void {
+  let last = -1;
+  speeds.forEach((speed, at) => {
+    if (speed === null) return;
+    const from = last < 0 ? speed : speeds[last]!;
+    if (last >= 0 && at - last <= most)
+      for (let k = last + 1; k < at; k += 1)
+        speeds[k] = rounded(from + ((speed - from) * (k - last)) / (at - last));
+    last = at;
+  });
 }
 
 /** From the receiver's velocity, else from the way since the last fix. */
