@@ -3,6 +3,7 @@ import { useBreakpoint } from '@/components/layout/use-breakpoint';
 import { StripEditor } from '@/components/strip/StripEditor';
 import { Text } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
+import { web } from '@/components/ui/web-props';
 import { hairline, radius, space } from '@/constants/theme';
 import { ChartDeck } from './ChartDeck';
 import type { ViewId } from './chart-views';
@@ -64,7 +65,14 @@ export function WideBench({
         {extraWide ? (
           <>
             {deck}
-            <ScrollView style={[styles.side, { width: 276 }]} contentContainerStyle={styles.figures}>
+            <ScrollView
+              role="region"
+              aria-label="Figures and findings"
+              // Where no finding has a button the keyboard must still reach what lies below.
+              {...web({ tabIndex: 0 })}
+              style={[styles.side, { width: 276 }]}
+              contentContainerStyle={styles.figures}
+            >
               {figures}
             </ScrollView>
           </>
