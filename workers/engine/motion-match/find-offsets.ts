@@ -20,7 +20,7 @@ export interface ClockFindings {
 }
 
 /** A lag counts from here, σ. */
-const SIGNIFICANT = 3;
+const SIGNIFICANT = 4;
 
 export function findClockOffsets(motion: MotionIntegrals, gnss: GnssColumns): ClockFindings {
   const by = (source: MotionSource) => {
