@@ -1,5 +1,6 @@
 /** Positions that no vehicle reached: they leave the path of their neighbours by far more than the fixes scatter. */
 import { nedOffset } from '../engine/geodesy';
+import { percentile } from '../engine/statistics/descriptive';
 import type { GnssColumns } from '../engine/types';
 
 export interface GnssJump {
@@ -24,7 +25,14 @@ const MOST_KEPT = 500;
 /** Steps that velocity (or, without it, the step before) does not explain. There and back again is one jump. */
 export function gnssJumps(gnss: GnssColumns): GnssJump[] {
   const steps = stepsOf(gnss);
-  const scatter = 1.4826 * median(steps.map(({ missM }) => Math.hypot(...missM)));
+  const median =
+    steps.length === 0
+      ? 0
+      : percentile(
+          steps.map(({ missM }) => Math.hypot(...missM)),
+          0.5,
+        );
+  const scatter = 1.4826 * median;
   const jumps: GnssJump[] = [];
   let out: Step | null = null;
   for (const step of steps) {
@@ -93,10 +101,4 @@ function ledBy(gnss: GnssColumns, a: number, b: number) {
   return Number.isFinite(north + east)
     ? { north: north * intervalS, east: east * intervalS, intervalS }
     : null;
-}
-
-function median(values: readonly number[]): number {
-  if (values.length === 0) return 0;
-  const sorted = [...values].sort((a, b) => a - b);
-  return sorted[sorted.length >> 1]!;
 }

@@ -171,7 +171,15 @@ export class RunningIntegral {
 
   /** Whether a pause lies between two times: the integral is worth nothing across it. */
   broken(fromS: number, toS: number): boolean {
-    return this.breaksS.some((timeS) => timeS > fromS && timeS <= toS);
+    const { breaksS } = this;
+    // Asked for every stretch at every shift, and a poor log has thousands of pauses.
+    let [low, high] = [0, breaksS.length];
+    while (low < high) {
+      const middle = (low + high) >> 1;
+      if (breaksS[middle]! <= fromS) low = middle + 1;
+      else high = middle;
+    }
+    return low < breaksS.length && breaksS[low]! <= toS;
   }
 
   /** NaN outside. */
