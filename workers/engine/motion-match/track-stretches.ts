@@ -3,6 +3,7 @@
  * shift between the two clocks. From velocities (at the epochs) or from positions (chords: means over the intervals),
  * because a receiver's velocity may be older than its position.
  */
+import { meridianRadius, transverseRadius } from '../geodesy';
 import type { GnssColumns } from '../types';
 import type { MotionIntegrals } from './motion-integrals';
 
@@ -128,15 +129,18 @@ const velocityPoints = (gnss: GnssColumns, rows: readonly number[]): Point[] =>
     };
   });
 
-/** Between neighbouring positions: mean velocity over the interval. A spherical Earth is good enough for directions. */
+/** Between neighbouring positions: mean velocity over the interval. */
 function chords(gnss: GnssColumns, rows: readonly number[]): Point[] {
   const points: Point[] = [];
   for (let i = 1; i < rows.length; i += 1) {
     const [a, b] = [rows[i - 1]!, rows[i]!];
     const interval = gnss.timeS[b]! - gnss.timeS[a]!;
     if (interval > LONGEST_INTERVAL_S) continue;
-    const north = (gnss.latRad[b]! - gnss.latRad[a]!) * EARTH_RADIUS_M;
-    const east = wrapped(gnss.lonRad[b]! - gnss.lonRad[a]!) * EARTH_RADIUS_M * Math.cos(gnss.latRad[a]!);
+    const north = (gnss.latRad[b]! - gnss.latRad[a]!) * meridianRadius(gnss.latRad[a]!);
+    const east =
+      wrapped(gnss.lonRad[b]! - gnss.lonRad[a]!) *
+      transverseRadius(gnss.latRad[a]!) *
+      Math.cos(gnss.latRad[a]!);
     points.push({
       fromS: gnss.timeS[a]!,
       toS: gnss.timeS[b]!,
@@ -149,7 +153,6 @@ function chords(gnss: GnssColumns, rows: readonly number[]): Point[] {
   return points;
 }
 
-const EARTH_RADIUS_M = 6_371_000;
 const finite = (value: number | undefined, otherwise: number) =>
   value !== undefined && Number.isFinite(value) && value > 0 ? value : otherwise;
 const wrapped = (angle: number) => Math.atan2(Math.sin(angle), Math.cos(angle));

@@ -2,6 +2,7 @@
  * By how much a receiver's velocities are older than its positions, from the fixes alone: p(t) − ∫v dt = lag · v(t) + a
  * line, a stretch at a time. Velocities that lag lead the integral behind the positions in proportion to the speed.
  */
+import { meridianRadius, transverseRadius } from '../geodesy';
 import type { GnssColumns } from '../types';
 
 export interface VelocityLag {
@@ -16,7 +17,6 @@ const LEAST_FIXES = 12;
 const LEAST_UNREST = 0.5;
 /** Residuals beyond this many σ are left out the second time: fixes that jump. */
 const OUTLIER = 4;
-const EARTH_RADIUS_M = 6_371_000;
 
 /** Null without velocities, or without changes of velocity. */
 export function velocityLag(gnss: GnssColumns): VelocityLag | null {
@@ -60,9 +60,12 @@ function reduced(gnss: GnssColumns, rows: readonly number[]): Row[] {
   const [first] = rows;
   const time = rows.map((j) => gnss.timeS[j]! - gnss.timeS[first!]!);
   const place = [
-    rows.map((j) => (gnss.latRad[j]! - gnss.latRad[first!]!) * EARTH_RADIUS_M),
+    rows.map((j) => (gnss.latRad[j]! - gnss.latRad[first!]!) * meridianRadius(gnss.latRad[first!]!)),
     rows.map(
-      (j) => (gnss.lonRad[j]! - gnss.lonRad[first!]!) * EARTH_RADIUS_M * Math.cos(gnss.latRad[first!]!),
+      (j) =>
+        (gnss.lonRad[j]! - gnss.lonRad[first!]!) *
+        transverseRadius(gnss.latRad[first!]!) *
+        Math.cos(gnss.latRad[first!]!),
     ),
   ];
   return place.flatMap((positions, axis) => {
