@@ -26,19 +26,29 @@ export function ProblemsCard({ title, tone, problems, children }: ProblemsCardPr
       </View>
       {problems.map((problem, at) => (
         <View key={at} style={[styles.problem, { borderTopColor: palette.rule }]}>
-          {placeOf(problem) ? (
-            <Figures strong tone="soft">
-              {placeOf(problem)}
-            </Figures>
-          ) : null}
-          <Figures variant="body">{problem.message}</Figures>
-          <Text variant="label" tone="soft">
-            {problem.remedy}
-          </Text>
+          <ProblemWords problem={problem} />
         </View>
       ))}
       {children ? <View style={[styles.problem, { borderTopColor: palette.rule }]}>{children}</View> : null}
     </Card>
+  );
+}
+
+/** Where, what, and what to do. */
+export function ProblemWords({ problem }: { problem: IntakeProblem }) {
+  const place = placeOf(problem);
+  return (
+    <>
+      {place ? (
+        <Figures strong tone="soft">
+          {place}
+        </Figures>
+      ) : null}
+      <Figures variant="body">{problem.message}</Figures>
+      <Text variant="label" tone="soft">
+        {problem.remedy}
+      </Text>
+    </>
   );
 }
 

@@ -2,11 +2,10 @@ import { StyleSheet, View } from 'react-native';
 import { Button } from '@/components/ui/Button';
 import { Figures } from '@/components/ui/Figures';
 import { Icon } from '@/components/ui/Icon';
-import { Text } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { space } from '@/constants/theme';
 import type { ChannelMap, HealthFinding, IntakeProblem } from '@/shared/contracts/recordings';
-import { placeOf } from '../ProblemsCard';
+import { ProblemWords } from '../ProblemsCard';
 
 /** Changes the form: the parts that take the place of those in it, and what the button said. */
 export type TakeMap = (parts: ChannelMap, label: string) => void;
@@ -41,15 +40,7 @@ export function PreviewProblems({ problems }: { problems: IntakeProblem[] }) {
     <>
       {problems.map((problem, at) => (
         <Ruled key={at} tone="vermilion">
-          {placeOf(problem) ? (
-            <Figures strong tone="soft">
-              {placeOf(problem)}
-            </Figures>
-          ) : null}
-          <Figures variant="body">{problem.message}</Figures>
-          <Text variant="label" tone="soft">
-            {problem.remedy}
-          </Text>
+          <ProblemWords problem={problem} />
         </Ruled>
       ))}
     </>
