@@ -4,8 +4,8 @@ import { space } from '@/constants/theme';
 import { AidSettings } from './AidSettings';
 import { ChoiceSetting } from './ChoiceSetting';
 import { NumberSetting } from './NumberSetting';
-import { fieldAt } from './parameter-fields';
-import type { ParameterGroup } from './parameter-specs';
+import { fieldAt } from '@/shared/parameters/parameter-fields';
+import type { ParameterGroup } from '@/shared/parameters/parameter-specs';
 import type { Bench } from './use-bench';
 
 /** Settings of a group that are chosen or typed rather than slid. */

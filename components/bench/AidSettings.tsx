@@ -1,9 +1,9 @@
 import { View } from 'react-native';
 import { space } from '@/constants/theme';
 import { FieldSettings } from './FieldSettings';
-import { FIELD_GROUPS, type FieldGroup } from './parameter-field';
-import { FIELDS } from './parameter-fields';
-import { readPath } from './parameter-path';
+import { FIELD_GROUPS, type FieldGroup } from '@/shared/parameters/parameter-field';
+import { FIELDS } from '@/shared/parameters/parameter-fields';
+import { readPath } from '@/shared/parameters/parameter-path';
 import { leafAt } from './parameter-schema';
 import { RunOptions } from './RunOptions';
 import type { Bench } from './use-bench';

@@ -1,5 +1,5 @@
 import { Choice, type ChoiceOption } from '@/components/ui/Choice';
-import { readPath } from './parameter-path';
+import { readPath } from '@/shared/parameters/parameter-path';
 import type { Bench } from './use-bench';
 
 export interface ChoiceSettingProps {

@@ -5,9 +5,9 @@ import { useTheme } from '@/components/ui/ThemeProvider';
 import { hairline, space } from '@/constants/theme';
 import { ChoiceSetting } from './ChoiceSetting';
 import { NumberSetting } from './NumberSetting';
-import { FIELD_GROUPS, type FieldGroup, type ParameterField } from './parameter-field';
-import { fieldsThatCount } from './parameter-fields';
-import { readPath } from './parameter-path';
+import { FIELD_GROUPS, type FieldGroup, type ParameterField } from '@/shared/parameters/parameter-field';
+import { fieldsThatCount } from '@/shared/parameters/parameter-fields';
+import { readPath } from '@/shared/parameters/parameter-path';
 import { leafAt } from './parameter-schema';
 import type { Bench } from './use-bench';
 

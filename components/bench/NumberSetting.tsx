@@ -1,7 +1,7 @@
 import { useState } from 'react';
 import { Field } from '@/components/ui/Field';
-import { fieldUnit, type ParameterField } from './parameter-field';
-import { readPath } from './parameter-path';
+import { fieldUnit, type ParameterField } from '@/shared/parameters/parameter-field';
+import { readPath } from '@/shared/parameters/parameter-path';
 import { leafAt } from './parameter-schema';
 import { fieldText, readField } from './typed-field';
 import type { Bench } from './use-bench';

@@ -8,8 +8,13 @@ import { defaultParameters } from '@/shared/contracts/parameters';
 import { AdvancedSettings } from './AdvancedSettings';
 import { aidWords } from './AidSettings';
 import { GateChoice } from './GateChoice';
-import { readNumber } from './parameter-path';
-import { GROUP_TITLES, SLIDERS, type ParameterGroup, type SliderSpec } from './parameter-specs';
+import { readNumber } from '@/shared/parameters/parameter-path';
+import {
+  GROUP_TITLES,
+  SLIDERS,
+  type ParameterGroup,
+  type SliderSpec,
+} from '@/shared/parameters/parameter-specs';
 import { RuledSlider } from './RuledSlider';
 import { SensorPresets } from './SensorPresets';
 import type { Bench } from './use-bench';

@@ -6,7 +6,7 @@ import { useTheme } from '@/components/ui/ThemeProvider';
 import { hairline, space, touchTarget } from '@/constants/theme';
 import { HistoryActions } from './BenchActions';
 import { ParameterPanel } from './ParameterPanel';
-import type { ParameterGroup } from './parameter-specs';
+import type { ParameterGroup } from '@/shared/parameters/parameter-specs';
 import type { Bench } from './use-bench';
 import { ViewTabs } from './ViewTabs';
 

@@ -6,7 +6,7 @@ import { web } from '@/components/ui/web-props';
 import { fonts, space, touchTarget } from '@/constants/theme';
 import { formatChange, formatNumber } from '@/shared/format';
 import { toDisplay, type DisplayUnit } from '@/shared/units';
-import type { SliderSpec } from './parameter-specs';
+import type { SliderSpec } from '@/shared/parameters/parameter-specs';
 import { RulerDrawing, RULER_INSET_PX } from './RulerDrawing';
 import { bindSliderGestures } from './slider-gestures';
 import { defaultUnit, fractionOf, sliderKey, valueAt } from './slider-model';

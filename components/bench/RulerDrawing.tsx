@@ -4,7 +4,8 @@ import { logMarks } from '@/components/charts/model/ticks';
 import { px } from '@/components/charts/model/hatch';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { toDisplay, type DisplayUnit } from '@/shared/units';
-import { fractionOf, type LogRange } from './slider-model';
+import type { LogRange } from '@/shared/parameters/parameter-specs';
+import { fractionOf } from './slider-model';
 
 /** Margin at both ends, so that the thumb stays inside. */
 export const RULER_INSET_PX = 10;

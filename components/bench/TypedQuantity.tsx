@@ -7,7 +7,8 @@ import { web } from '@/components/ui/web-props';
 import { fonts, radius, space, touchTarget, typeScale } from '@/constants/theme';
 import { formatNumber } from '@/shared/format';
 import { toDisplay, type DisplayUnit, type Quantity } from '@/shared/units';
-import { parseTyped, type LogRange } from './slider-model';
+import type { LogRange } from '@/shared/parameters/parameter-specs';
+import { parseTyped } from './slider-model';
 
 export interface TypedQuantityProps {
   label: string;

@@ -4,7 +4,7 @@
  */
 import { parametersSchema, type Parameters } from '@/shared/contracts/parameters';
 import { outagesSchema, type Outage } from '@/shared/contracts/runs';
-import { differences, writePath, type ParameterValue } from './parameter-path';
+import { differences, writePath, type ParameterValue } from '@/shared/parameters/parameter-path';
 
 export interface BenchLink {
   recordingId: string;

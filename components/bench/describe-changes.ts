@@ -1,11 +1,11 @@
 /** What differs between two parameter sets, in lines for people. Pure. */
 import type { Parameters } from '@/shared/contracts/parameters';
 import { formatNumber } from '@/shared/format';
-import { FIELD_GROUPS, type ParameterField } from './parameter-field';
-import { FIELDS } from './parameter-fields';
-import { differences, readPath, type ParameterValue } from './parameter-path';
-import { GROUP_TITLES, SLIDERS } from './parameter-specs';
-import { shownValue, unitSymbol } from './parameter-words';
+import { FIELD_GROUPS, type ParameterField } from '@/shared/parameters/parameter-field';
+import { FIELDS } from '@/shared/parameters/parameter-fields';
+import { differences, readPath, type ParameterValue } from '@/shared/parameters/parameter-path';
+import { GROUP_TITLES, SLIDERS } from '@/shared/parameters/parameter-specs';
+import { shownValue, unitSymbol } from '@/shared/parameters/parameter-words';
 
 /** "Gyro white noise (ARW): 0.299 → 0.32 °/√h", "Stops, zero-velocity update: off → on". */
 export function describeChanges(from: Parameters, to: Parameters): string[] {

@@ -8,12 +8,7 @@ import {
   type DisplayUnit,
   type Quantity,
 } from '@/shared/units';
-
-export interface LogRange {
-  /** SI, above zero. */
-  low: number;
-  high: number;
-}
+import type { LogRange } from '@/shared/parameters/parameter-specs';
 
 /** Place of `value` along the rule, 0…1, held inside. */
 export function fractionOf(value: number, { low, high }: LogRange): number {

@@ -2,8 +2,8 @@
 import { parseNumber } from '@/components/forms/parse-number';
 import { formatNumber } from '@/shared/format';
 import { fromDisplay, toDisplay } from '@/shared/units';
-import { fieldUnit, type ParameterField } from './parameter-field';
-import type { ParameterValue } from './parameter-path';
+import { fieldUnit, type ParameterField } from '@/shared/parameters/parameter-field';
+import type { ParameterValue } from '@/shared/parameters/parameter-path';
 import type { ParameterLeaf } from './parameter-schema';
 import { parseTyped } from './slider-model';
 

@@ -4,7 +4,7 @@ import { useEffect } from 'react';
 import { useSession } from '@/hooks/session';
 import { benchHref, benchQuery, type BenchLink } from './bench-link';
 import { rememberBench } from './last-bench';
-import { differences } from './parameter-path';
+import { differences } from '@/shared/parameters/parameter-path';
 import type { Bench } from './use-bench';
 
 /** The address follows this long after the last change, ms: a drag writes it once. */

@@ -8,7 +8,7 @@ import { pinnedName, type Baseline, type BenchConfig, type BenchStart, type RunO
 import type { CurvesSource } from './curves';
 import { GhostStore, ghostKey, type Ghost } from './ghost-store';
 import { commit, redo, startHistory, undo, type History } from './history';
-import { writePath, type ParameterValue } from './parameter-path';
+import { writePath, type ParameterValue } from '@/shared/parameters/parameter-path';
 
 export interface Bench {
   start: BenchStart;

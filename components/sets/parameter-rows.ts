@@ -1,9 +1,8 @@
 /** Every parameter as a row of a table: its name, its display unit, its value there, and what it was in the version before. */
-import { FIELD_GROUPS, type FieldGroup, type ParameterField } from '@/components/bench/parameter-field';
-import { FIELDS } from '@/components/bench/parameter-fields';
-import { readPath } from '@/components/bench/parameter-path';
-import { SLIDERS } from '@/components/bench/parameter-specs';
-import { shownValue, unitSymbol } from '@/components/bench/parameter-words';
+import { FIELD_GROUPS, type FieldGroup } from '@/shared/parameters/parameter-field';
+import { PARAMETER_LIST } from '@/shared/parameters/parameter-list';
+import { readPath } from '@/shared/parameters/parameter-path';
+import { shownValue, unitSymbol } from '@/shared/parameters/parameter-words';
 import type { Parameters } from '@/shared/contracts/parameters';
 
 export interface ParameterRow {
@@ -24,7 +23,7 @@ export interface ParameterSection {
 /** Sections in the order of the bench; `parent` null: a first version. Rows that were never set are left out. */
 export function parameterSections(parameters: Parameters, parent: Parameters | null): ParameterSection[] {
   const sections = new Map<FieldGroup, ParameterRow[]>();
-  for (const spec of ROWS) {
+  for (const spec of PARAMETER_LIST) {
     const now = readPath(parameters, spec.path);
     const then = parent ? readPath(parent, spec.path) : null;
     if (now === null && then === null) continue;
@@ -45,14 +44,3 @@ export function parameterSections(parameters: Parameters, parent: Parameters | n
 /** How many parameters a version changed. */
 export const changeCount = (sections: readonly ParameterSection[]): number =>
   sections.reduce((sum, { rows }) => sum + rows.filter((row) => row.changed).length, 0);
-
-/** What is slid first, then what is typed or switched, group by group. */
-const ROWS: readonly ParameterField[] = (Object.keys(FIELD_GROUPS) as FieldGroup[]).flatMap((group) => [
-  ...SLIDERS.filter((slider) => slider.group === group).map(({ path, label, quantity }) => ({
-    path,
-    label,
-    quantity,
-    group,
-  })),
-  ...FIELDS.filter((field) => field.group === group),
-]);

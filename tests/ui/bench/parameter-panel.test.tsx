@@ -1,7 +1,7 @@
 import { fireEvent, screen } from '@testing-library/react-native';
 import { ParameterPanel } from '@/components/bench/ParameterPanel';
 import { describeChanges } from '@/components/bench/describe-changes';
-import type { ParameterGroup } from '@/components/bench/parameter-specs';
+import type { ParameterGroup } from '@/shared/parameters/parameter-specs';
 import { defaultParameters } from '@/shared/contracts/parameters';
 import { RAD_PER_DEG } from '@/shared/units';
 import { renderAs } from '../render';

@@ -1,6 +1,6 @@
 import { useState, type ReactNode } from 'react';
 import { NO_OPTIONS, type BenchConfig } from '@/components/bench/bench-start';
-import { writePath } from '@/components/bench/parameter-path';
+import { writePath } from '@/shared/parameters/parameter-path';
 import type { Bench } from '@/components/bench/use-bench';
 import { ChartGroup } from '@/components/charts/chart-group';
 import { LiveController, type LiveHandlers, type LiveTransport } from '@/hooks/live/live-controller';

@@ -1,10 +1,10 @@
 import { screen, within } from '@testing-library/react-native';
-import type { ParameterField } from '@/components/bench/parameter-field';
-import { FIELDS } from '@/components/bench/parameter-fields';
-import { writePath } from '@/components/bench/parameter-path';
+import type { ParameterField } from '@/shared/parameters/parameter-field';
+import { FIELDS } from '@/shared/parameters/parameter-fields';
+import { writePath } from '@/shared/parameters/parameter-path';
 import { leafAt, parameterLeaves } from '@/components/bench/parameter-schema';
-import { SLIDERS } from '@/components/bench/parameter-specs';
-import { unitSymbol } from '@/components/bench/parameter-words';
+import { SLIDERS } from '@/shared/parameters/parameter-specs';
+import { unitSymbol } from '@/shared/parameters/parameter-words';
 import { changeCount, parameterSections } from '@/components/sets/parameter-rows';
 import { ParameterTable } from '@/components/sets/ParameterTable';
 import { defaultParameters, type Parameters } from '@/shared/contracts/parameters';

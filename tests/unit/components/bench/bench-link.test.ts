@@ -1,5 +1,5 @@
 import { applyChanges, benchHref, readBenchQuery, type BenchLink } from '@/components/bench/bench-link';
-import { differences, readPath } from '@/components/bench/parameter-path';
+import { differences, readPath } from '@/shared/parameters/parameter-path';
 import { defaultParameters, parametersSchema } from '@/shared/contracts/parameters';
 
 const recordingId = '7c1e0c1e-0000-4000-8000-000000000001';

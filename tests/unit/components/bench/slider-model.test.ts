@@ -1,5 +1,5 @@
-import { SLIDERS } from '@/components/bench/parameter-specs';
-import { readNumber, writePath } from '@/components/bench/parameter-path';
+import { SLIDERS } from '@/shared/parameters/parameter-specs';
+import { readNumber, writePath } from '@/shared/parameters/parameter-path';
 import { fractionOf, parseTyped, sliderKey, valueAt } from '@/components/bench/slider-model';
 import { defaultParameters } from '@/shared/contracts/parameters';
 import { defaultUnit, fromDisplay, toDisplay } from '@/shared/units';
