@@ -3,6 +3,7 @@ import { StyleSheet, View } from 'react-native';
 import { recordingPath } from '@/components/layout/paths';
 import { Screen } from '@/components/layout/Screen';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
+import type { Stretch } from '@/components/strip/stretches';
 import { Card } from '@/components/ui/Card';
 import { ErrorState } from '@/components/ui/ErrorState';
 import { Notice } from '@/components/ui/Notice';
@@ -12,6 +13,7 @@ import { Text } from '@/components/ui/Text';
 import { space } from '@/constants/theme';
 import { useNoise } from '@/hooks/noise';
 import { useRecording } from '@/hooks/recordings';
+import { useDebounced } from '@/hooks/use-debounced';
 import { useVehicle } from '@/hooks/vehicles';
 import type { Recording } from '@/shared/contracts/recordings';
 import { AllanCard } from './AllanCard';
@@ -53,8 +55,11 @@ export function NoiseScreen({ id }: { id: string }) {
 
 function Loaded({ recording }: { recording: Recording }) {
   const { extraWide } = useBreakpoint();
-  const [span, setSpan] = useState<readonly [number, number] | null>(null);
-  const noise = useNoise(recording.id, span);
+  const [span, setSpan] = useState<Stretch | null>(null);
+  // A key held down moves an edge many times; only where it comes to rest is analysed.
+  const settled = useDebounced(span, 400);
+  const longest = useNoise(recording.id, null);
+  const noise = useNoise(recording.id, settled);
   const vehicle = useVehicle(recording.vehicleId ?? '');
   const datasheet = vehicle.data?.sensor?.datasheet ?? null;
   const analysis = noise.data;
@@ -69,7 +74,13 @@ function Loaded({ recording }: { recording: Recording }) {
         ) : undefined
       }
     >
-      <StretchCard recording={recording} analysis={analysis ?? null} onChoose={setSpan} />
+      <StretchCard
+        recording={recording}
+        found={longest.data?.stretchesS ?? []}
+        chosen={span}
+        analysis={analysis ?? null}
+        onChoose={setSpan}
+      />
       {noise.isPending ? (
         <Card>
           <Progress label="Working out the Allan deviation of six axes" />

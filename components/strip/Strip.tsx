@@ -7,6 +7,7 @@ import { useTheme } from '@/components/ui/ThemeProvider';
 import { fonts, typeScale } from '@/constants/theme';
 import { placeLabels } from './labels';
 import { stripGeometry, stripLayout, stripSentence, type StripGeometry } from './strip-model';
+import type { WindowTone } from './window-kinds';
 
 export interface StripProps {
   strip: StripData;
@@ -33,7 +34,7 @@ export function Strip({ strip, width, height, outages = [], compact, cursor }: S
       <Svg width={width} height={height} aria-hidden>
         <StripGround geometry={geometry} />
         {outages.map((window, i) => (
-          <OutageGround key={i} geometry={geometry} window={window} />
+          <WindowGround key={i} geometry={geometry} window={window} />
         ))}
         {compact ? null : <StripLabels geometry={geometry} windows={outages} height={height} />}
         {cursor === null || cursor === undefined ? null : (
@@ -75,34 +76,33 @@ export function StripGround({ geometry }: { geometry: StripGeometry }) {
   );
 }
 
-/** One outage window: tint, hatching, edges. */
-export function OutageGround({
+/** One window: tint, edges, and hatching where the filter coasts. */
+export function WindowGround({
   geometry,
   window,
+  tone = 'vermilion',
 }: {
   geometry: StripGeometry;
   window: { startS: number; endS: number };
+  tone?: WindowTone;
 }) {
   const { palette } = useTheme();
   const [left, right] = [geometry.x(window.startS), geometry.x(window.endS)];
   const bottom = geometry.layout.tickBottom;
+  const width = Math.max(1, right - left);
+  const ink = palette[tone];
   return (
     <G>
-      <Rect
-        x={left}
-        y={0}
-        width={Math.max(1, right - left)}
-        height={bottom}
-        fill={palette.vermilion}
-        fillOpacity={0.1}
-      />
-      <Path
-        d={hatchPath(left, 0, right - left, bottom, 7)}
-        stroke={palette.vermilion}
-        strokeOpacity={0.45}
-        strokeWidth={1}
-      />
-      <Path d={`M${left} 0V${bottom}M${right} 0V${bottom}`} stroke={palette.vermilion} strokeWidth={1.25} />
+      <Rect x={left} y={0} width={width} height={bottom} fill={ink} fillOpacity={0.1} />
+      {tone === 'vermilion' ? (
+        <Path
+          d={hatchPath(left, 0, right - left, bottom, 7)}
+          stroke={ink}
+          strokeOpacity={0.45}
+          strokeWidth={1}
+        />
+      ) : null}
+      <Path d={`M${left} 0V${bottom}M${right} 0V${bottom}`} stroke={ink} strokeWidth={1.25} />
     </G>
   );
 }
@@ -113,11 +113,13 @@ export function StripLabels({
   windows,
   selected,
   height,
+  tone = 'vermilion',
 }: {
   geometry: StripGeometry;
   windows: readonly { startS: number; endS: number }[];
   selected?: number | null;
   height: number;
+  tone?: WindowTone;
 }) {
   const { palette } = useTheme();
   const labels = placeLabels({ x: geometry.x, windows, selected, characterPx: LABEL_CHARACTER_PX });
@@ -131,7 +133,7 @@ export function StripLabels({
           textAnchor="middle"
           fontSize={typeScale.small}
           fontFamily={label.kind === 'window' ? fonts.labelStrong : fonts.label}
-          fill={label.kind === 'window' ? palette.vermilion : palette.inkSoft}
+          fill={label.kind === 'window' ? palette[tone] : palette.inkSoft}
         >
           {label.text}
         </SvgText>

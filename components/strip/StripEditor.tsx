@@ -9,12 +9,13 @@ import { web } from '@/components/ui/web-props';
 import { hairline, radius, space } from '@/constants/theme';
 import type { Strip as StripData } from '@/shared/contracts/recordings';
 import type { Outage } from '@/shared/contracts/runs';
-import { OutageGround, StripGround, StripLabels, LABELS_PX } from './Strip';
-import { bindStripGestures } from './strip-gestures';
+import { WindowGround, StripGround, StripLabels, LABELS_PX } from './Strip';
 import { stripGeometry, stripLayout, stripSentence, type StripGeometry } from './strip-model';
+import { useStripSurface } from './use-strip-surface';
 import { WindowBar } from './WindowBar';
 import { WindowHandles } from './WindowHandles';
-import { placeWindow, sortWindows, type WindowPart } from './window-model';
+import { OUTAGE_WINDOW } from './window-kinds';
+import { drawOutage, placeWindow, sortWindows, type WindowPart } from './window-model';
 import { windowKey } from './window-keys';
 import { WindowSheet } from './WindowSheet';
 
@@ -40,7 +41,19 @@ export function StripEditor({ strip, height, windows, onChange, group }: StripEd
     () => stripGeometry(strip, stripLayout(width, height, 10, LABELS_PX)),
     [strip, width, height],
   );
-  const surface = useStripSurface({ geometry, limits, windows, onChange, group, setSelected });
+  const surface = useStripSurface<Outage>(
+    {
+      x: () => geometry.x,
+      limits: () => limits,
+      windows: () => windows,
+      editable: () => onChange !== undefined,
+      draw: (before, fromS, toS, snapS) => drawOutage(before, limits, fromS, toS, snapS),
+      change: (next, settled) => onChange?.(next, settled),
+      select: setSelected,
+      cursor: (timeS) => group.cursor.set(timeS),
+    },
+    geometry.layout.width > 0,
+  );
   const card = useDeselectOutside(setSelected);
   const current = selected !== null && selected < windows.length ? selected : null;
 
@@ -93,7 +106,7 @@ export function StripEditor({ strip, height, windows, onChange, group }: StripEd
               <Svg width={width} height={height} aria-hidden>
                 <StripGround geometry={geometry} />
                 {windows.map((window, i) => (
-                  <OutageGround key={i} geometry={geometry} window={window} />
+                  <WindowGround key={i} geometry={geometry} window={window} />
                 ))}
                 <StripLabels geometry={geometry} windows={windows} selected={current} height={height} />
                 <SharedMarks geometry={geometry} group={group} />
@@ -102,6 +115,7 @@ export function StripEditor({ strip, height, windows, onChange, group }: StripEd
             {onChange ? (
               <WindowHandles
                 geometry={geometry}
+                kind={OUTAGE_WINDOW}
                 windows={windows}
                 limits={limits}
                 selected={current}
@@ -196,38 +210,6 @@ function useDeselectOutside(setSelected: (index: number | null) => void) {
     return () => page.removeEventListener('pointerdown', onDown);
   }, [setSelected]);
   return card;
-}
-
-interface SurfaceInput {
-  geometry: StripGeometry;
-  limits: { startS: number; endS: number };
-  windows: readonly Outage[];
-  onChange?: (windows: Outage[], settled: boolean) => void;
-  group: ChartGroup;
-  setSelected: (index: number | null) => void;
-}
-
-function useStripSurface(input: SurfaceInput) {
-  const surface = useRef<View>(null);
-  const latest = useRef(input);
-  useEffect(() => {
-    latest.current = input;
-  });
-  const ready = input.geometry.layout.width > 0;
-  useEffect(() => {
-    const element = surface.current as unknown as HTMLElement | null;
-    if (!ready || !element?.addEventListener) return;
-    return bindStripGestures(element, {
-      x: () => latest.current.geometry.x,
-      limits: () => latest.current.limits,
-      windows: () => latest.current.windows,
-      editable: () => latest.current.onChange !== undefined,
-      change: (windows, settled) => latest.current.onChange?.(windows, settled),
-      select: (index) => latest.current.setSelected(index),
-      cursor: (timeS) => latest.current.group.cursor.set(timeS),
-    });
-  }, [ready]);
-  return surface;
 }
 
 function moveCursor(group: ChartGroup, key: string, shift: boolean): boolean {

@@ -6,7 +6,7 @@ import { fonts, hairline, radius, space } from '@/constants/theme';
 import type { Outage } from '@/shared/contracts/runs';
 import { formatClock } from '@/shared/format';
 import { lengthLabel } from './labels';
-import { WITHHELD } from './WindowHandles';
+import { WITHHELD } from './window-kinds';
 
 export interface WindowBarProps {
   window: Outage;

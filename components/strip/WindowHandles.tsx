@@ -2,14 +2,15 @@ import { StyleSheet, View } from 'react-native';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { web } from '@/components/ui/web-props';
 import { formatClock } from '@/shared/format';
-import type { Outage } from '@/shared/contracts/runs';
 import { lengthLabel } from './labels';
 import type { StripGeometry } from './strip-model';
+import { windowTimes, type WindowKind } from './window-kinds';
 import type { WindowLimits, WindowPart } from './window-model';
 
-export interface WindowHandlesProps {
+export interface WindowHandlesProps<W extends WindowLimits> {
   geometry: StripGeometry;
-  windows: readonly Outage[];
+  kind: WindowKind<W>;
+  windows: readonly W[];
   limits: WindowLimits;
   selected: number | null;
   onFocus: (index: number) => void;
@@ -22,35 +23,23 @@ const LEAST_PX = 24;
 /** How far an edge's box reaches into its window, px. */
 const INSIDE_PX = 4;
 
-export const WITHHELD: Record<Outage['withhold'], string> = {
-  gnss: 'all GNSS',
-  position: 'position',
-  velocity: 'velocity',
-  'zero-velocity': 'zero-velocity updates',
-  'zero-rotation': 'zero-rotation updates',
-  'non-holonomic': 'the non-holonomic constraint',
-  barometer: 'the barometer',
-  heading: 'the heading aid',
-  odometer: 'the odometer',
-  attitude: 'the attitude aid',
-};
-
 /** What the keyboard and the screen reader hold of each window: the window and its two edges. The pointer goes through. */
-export function WindowHandles(props: WindowHandlesProps) {
+export function WindowHandles<W extends WindowLimits>(props: WindowHandlesProps<W>) {
   return props.windows.map((window, index) => (
     <Handles key={index} {...props} window={window} index={index} />
   ));
 }
 
-function Handles({
+function Handles<W extends WindowLimits>({
   geometry,
+  kind,
   limits,
   selected,
   onFocus,
   onKey,
   window,
   index,
-}: WindowHandlesProps & { window: Outage; index: number }) {
+}: WindowHandlesProps<W> & { window: W; index: number }) {
   const { palette } = useTheme();
   const [left, right] = [geometry.x(window.startS), geometry.x(window.endS)];
   const { tickBottom } = geometry.layout;
@@ -62,7 +51,8 @@ function Handles({
         if (onKey(index, part, event.key, event.shiftKey)) event.preventDefault();
       },
     });
-  const name = `Outage window ${index + 1}`;
+  const name = kind.name(index);
+  const ink = palette[kind.tone];
   const edge = (part: 'start' | 'end', at: number, valueS: number) => (
     <View
       role="slider"
@@ -85,8 +75,8 @@ function Handles({
           {
             top: 1,
             left: part === 'start' ? LEAST_PX - 2 * INSIDE_PX : 0,
-            borderColor: palette.vermilion,
-            backgroundColor: selected === index ? palette.vermilion : palette.sheet,
+            borderColor: ink,
+            backgroundColor: selected === index ? ink : palette.sheet,
           },
         ]}
       />
@@ -97,9 +87,7 @@ function Handles({
   const body = (
     <View
       role="button"
-      aria-label={`${name}: ${formatClock(window.startS)} to ${formatClock(window.endS)}, ${lengthLabel(
-        window.endS - window.startS,
-      )}, ${WITHHELD[window.withhold]} withheld. Arrow keys move it, Enter opens its times, Delete removes it.`}
+      aria-label={`${name}: ${windowTimes(window)}. ${kind.more(window)}`}
       onFocus={() => onFocus(index)}
       {...listen('body')}
       style={[styles.body, { left, width: right - left, height: tickBottom }]}

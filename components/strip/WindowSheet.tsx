@@ -6,7 +6,7 @@ import { Field } from '@/components/ui/Field';
 import { Sheet } from '@/components/ui/Sheet';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
 import { withholdSchema, type Outage } from '@/shared/contracts/runs';
-import { WITHHELD } from './WindowHandles';
+import { WITHHELD } from './window-kinds';
 import { parseClock, windowProblem, type WindowLimits } from './window-model';
 
 export interface WindowSheetProps {

@@ -1,29 +1,27 @@
 /** Pointer on the full-width strip: draws on empty ground, moves by the body, resizes by the edges, moves the cursor. */
-import type { Outage } from '@/shared/contracts/runs';
 import type { Scale } from '@/components/charts/model/scale';
-import {
-  drawWindow,
-  moveWindow,
-  resizeWindow,
-  sortWindows,
-  type WindowLimits,
-  type WindowPart,
-} from './window-model';
+import { moveWindow, resizeWindow, type WindowLimits, type WindowPart } from './window-model';
 
-export interface StripGestureHost {
+export interface StripGestureHost<W extends WindowLimits> {
   x: () => Scale;
   limits: () => WindowLimits;
-  windows: () => readonly Outage[];
+  windows: () => readonly W[];
   /** False: only the cursor moves. */
   editable: () => boolean;
-  change: (windows: Outage[], settled: boolean) => void;
+  /** A drag within a window draws anew instead of moving it. */
+  drawsInside?: boolean;
+  /** The windows after a drag from `fromS` to `toS`; null where there is no room. */
+  draw: (before: readonly W[], fromS: number, toS: number, snapS: number) => W[] | null;
+  change: (windows: W[], settled: boolean) => void;
   select: (index: number | null) => void;
   cursor: (timeS: number | null) => void;
+  /** A press without a move on anything but an edge. */
+  tap?: (timeS: number) => void;
 }
 
 /** What lies under `x` px: a window's edge before its body; `reachPx` is how far beside an edge still counts. */
 export function hitWindow(
-  windows: readonly Outage[],
+  windows: readonly WindowLimits[],
   scale: Scale,
   x: number,
   reachPx: number,
@@ -51,29 +49,36 @@ const MOUSE_REACH_PX = 9;
 /** Half of a touch target. */
 const TOUCH_REACH_PX = 22;
 
-interface Drag {
+interface Drag<W> {
   pointer: number;
   startX: number;
   moved: boolean;
   hit: { index: number; part: WindowPart } | null;
-  before: readonly Outage[];
+  before: readonly W[];
 }
 
 /** Listens on `element`; answers a function that stops. */
-export function bindStripGestures(element: HTMLElement, host: StripGestureHost): () => void {
-  let drag: Drag | null = null;
+export function bindStripGestures<W extends WindowLimits>(
+  element: HTMLElement,
+  host: StripGestureHost<W>,
+): () => void {
+  let drag: Drag<W> | null = null;
   const local = (event: PointerEvent) => event.clientX - element.getBoundingClientRect().left;
   const reach = (event: PointerEvent) => (event.pointerType === 'mouse' ? MOUSE_REACH_PX : TOUCH_REACH_PX);
   const timeAt = (x: number) => {
     const { startS, endS } = host.limits();
     return Math.min(endS, Math.max(startS, host.x().invert(x)));
   };
+  const hitAt = (x: number, event: PointerEvent) => {
+    const hit = host.editable() ? hitWindow(host.windows(), host.x(), x, reach(event)) : null;
+    return host.drawsInside && hit?.part === 'body' ? null : hit;
+  };
 
   function onDown(event: PointerEvent) {
     if (drag || (event.pointerType === 'mouse' && event.button !== 0)) return;
     // A handle that has the focus keeps it; the ground must not steal the pointer from buttons on it.
     const x = local(event);
-    const hit = host.editable() ? hitWindow(host.windows(), host.x(), x, reach(event)) : null;
+    const hit = hitAt(x, event);
     drag = { pointer: event.pointerId, startX: x, moved: false, hit, before: host.windows() };
     element.setPointerCapture?.(event.pointerId);
     if (hit) host.select(hit.index);
@@ -95,7 +100,7 @@ export function bindStripGestures(element: HTMLElement, host: StripGestureHost):
 
   function hover(x: number, event: PointerEvent) {
     host.cursor(timeAt(x));
-    const hit = host.editable() ? hitWindow(host.windows(), host.x(), x, reach(event)) : null;
+    const hit = hitAt(x, event);
     element.style.cursor = !host.editable()
       ? 'default'
       : !hit
@@ -105,12 +110,9 @@ export function bindStripGestures(element: HTMLElement, host: StripGestureHost):
           : 'ew-resize';
   }
 
-  function dragged({ hit, before, startX }: Drag, x: number, fine: boolean): Outage[] | null {
+  function dragged({ hit, before, startX }: Drag<W>, x: number, fine: boolean): W[] | null {
     const [scale, limits, snapS] = [host.x(), host.limits(), fine ? 0.1 : 1];
-    if (!hit) {
-      const drawn = drawWindow(before, limits, timeAt(startX), timeAt(x), snapS);
-      return drawn && sortWindows([...before, drawn]);
-    }
+    if (!hit) return host.draw(before, timeAt(startX), timeAt(x), snapS);
     const window = before[hit.index];
     if (!window) return null;
     const byS = scale.invert(x) - scale.invert(startX);
@@ -133,6 +135,7 @@ export function bindStripGestures(element: HTMLElement, host: StripGestureHost):
       if (!ended.hit) {
         host.select(null);
         host.cursor(timeAt(x));
+        host.tap?.(timeAt(x));
       }
       return;
     }

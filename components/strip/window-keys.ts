@@ -1,18 +1,17 @@
 /** Keys on a focused window or one of its edges. Pure: answers the windows to have, or nothing. */
-import type { Outage } from '@/shared/contracts/runs';
 import { FINE_S, SNAP_S, moveWindow, resizeWindow, type WindowLimits, type WindowPart } from './window-model';
 
 const PAGE_S = 10;
 
 /** The windows after `key` on `part` of window `index`; null when the key is not one of its own. Shift is fine. */
-export function windowKey(
-  windows: readonly Outage[],
+export function windowKey<W extends WindowLimits>(
+  windows: readonly W[],
   limits: WindowLimits,
   index: number,
   part: WindowPart,
   key: string,
   shift: boolean,
-): Outage[] | null {
+): W[] | null {
   const window = windows[index];
   if (!window) return null;
   if (key === 'Delete' || key === 'Backspace') return windows.filter((_, i) => i !== index);

@@ -1,4 +1,4 @@
-/** Outage windows as they are drawn, moved, resized and typed: they never overlap and never leave the recording. Pure. */
+/** Windows on the strip as they are drawn, moved, resized and typed: they never overlap and never leave the recording. Pure. */
 import type { Outage } from '@/shared/contracts/runs';
 
 /** Where windows may lie, s. */
@@ -14,12 +14,12 @@ export const FINE_S = 0.1;
 /** Shorter windows say nothing of drift. */
 export const LEAST_WINDOW_S = 1;
 
-export const sortWindows = (windows: readonly Outage[]): Outage[] =>
+export const sortWindows = <W extends WindowLimits>(windows: readonly W[]): W[] =>
   [...windows].sort((a, b) => a.startS - b.startS);
 
 /** The free stretch around window `index` (or around the time `atS` when drawing): up to the neighbours or the ends. */
 export function freeAround(
-  windows: readonly Outage[],
+  windows: readonly WindowLimits[],
   limits: WindowLimits,
   atS: number,
   index = -1,
@@ -37,29 +37,41 @@ export function freeAround(
 
 /** The window drawn from `fromS` to `toS`, snapped and cut; null where there is no room. */
 export function drawWindow(
+  windows: readonly WindowLimits[],
+  limits: WindowLimits,
+  fromS: number,
+  toS: number,
+  snapS = SNAP_S,
+): WindowLimits | null {
+  const free = freeAround(windows, limits, fromS);
+  if (!free) return null;
+  const low = clamp(snap(Math.min(fromS, toS), snapS), free.startS, free.endS);
+  const high = clamp(snap(Math.max(fromS, toS), snapS), free.startS, free.endS);
+  if (high - low >= LEAST_WINDOW_S) return { startS: low, endS: high };
+  const startS = clamp(low, free.startS, latestStart(free));
+  return { startS, endS: startS + LEAST_WINDOW_S };
+}
+
+/** The outage windows with one more, drawn from `fromS` to `toS`; null where there is no room. */
+export function drawOutage(
   windows: readonly Outage[],
   limits: WindowLimits,
   fromS: number,
   toS: number,
   snapS = SNAP_S,
-): Outage | null {
-  const free = freeAround(windows, limits, fromS);
-  if (!free) return null;
-  const low = clamp(snap(Math.min(fromS, toS), snapS), free.startS, free.endS);
-  const high = clamp(snap(Math.max(fromS, toS), snapS), free.startS, free.endS);
-  if (high - low >= LEAST_WINDOW_S) return { startS: low, endS: high, withhold: 'gnss' };
-  const startS = clamp(low, free.startS, free.endS - LEAST_WINDOW_S);
-  return { startS, endS: startS + LEAST_WINDOW_S, withhold: 'gnss' };
+): Outage[] | null {
+  const drawn = drawWindow(windows, limits, fromS, toS, snapS);
+  return drawn && sortWindows([...windows, { ...drawn, withhold: 'gnss' }]);
 }
 
 /** Window `index` moved so that it starts near `startS`; its length stays. It stops at its neighbours. */
-export function moveWindow(
-  windows: readonly Outage[],
+export function moveWindow<W extends WindowLimits>(
+  windows: readonly W[],
   limits: WindowLimits,
   index: number,
   startS: number,
   snapS = SNAP_S,
-): Outage[] {
+): W[] {
   const window = windows[index];
   if (!window) return [...windows];
   const length = window.endS - window.startS;
@@ -69,21 +81,21 @@ export function moveWindow(
 }
 
 /** One edge of window `index` put near `atS`; it stops at the neighbour and at the least length. */
-export function resizeWindow(
-  windows: readonly Outage[],
+export function resizeWindow<W extends WindowLimits>(
+  windows: readonly W[],
   limits: WindowLimits,
   index: number,
   edge: WindowEdge,
   atS: number,
   snapS = SNAP_S,
-): Outage[] {
+): W[] {
   const window = windows[index];
   if (!window) return [...windows];
   const free = freeAround(windows, limits, (window.startS + window.endS) / 2, index) ?? limits;
   const snapped = snap(atS, snapS);
   const next =
     edge === 'start'
-      ? { ...window, startS: clamp(snapped, free.startS, window.endS - LEAST_WINDOW_S) }
+      ? { ...window, startS: clamp(snapped, free.startS, latestStart({ ...free, endS: window.endS })) }
       : { ...window, endS: clamp(snapped, window.startS + LEAST_WINDOW_S, free.endS) };
   return replaced(windows, index, next);
 }
@@ -158,9 +170,11 @@ export function parseClock(text: string): number {
   );
 }
 
+/** Where a window of least length may still start; the rounding of the difference must not put it before the stretch. */
+const latestStart = ({ startS, endS }: WindowLimits) => Math.max(startS, endS - LEAST_WINDOW_S);
 const clamp = (value: number, low: number, high: number) => Math.min(high, Math.max(low, value));
 const snap = (value: number, step: number) => round(Math.round(value / step) * step);
 /** Times keep a millisecond: finer is noise of the arithmetic. */
 const round = (value: number) => Math.round(value * 1000) / 1000;
-const replaced = (windows: readonly Outage[], index: number, window: Outage) =>
+const replaced = <W extends WindowLimits>(windows: readonly W[], index: number, window: W) =>
   windows.map((old, i) => (i === index ? window : old));

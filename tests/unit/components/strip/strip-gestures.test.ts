@@ -1,5 +1,7 @@
 import { bindStripGestures, hitWindow } from '@/components/strip/strip-gestures';
 import { windowKey } from '@/components/strip/window-keys';
+import { stretchAt, type Stretch } from '@/components/strip/stretches';
+import { drawOutage, drawWindow, type WindowLimits } from '@/components/strip/window-model';
 import { linearScale } from '@/components/charts/model/scale';
 import type { Outage } from '@/shared/contracts/runs';
 import { Stage } from '../pointer-stage';
@@ -22,6 +24,7 @@ function open(initial: Outage[], editable = true) {
     limits: () => limits,
     windows: () => state.windows,
     editable: () => editable,
+    draw: (before, fromS, toS, snapS) => drawOutage(before, limits, fromS, toS, snapS),
     change: (windows, settled) => Object.assign(state, { windows, settled }),
     select: (selected) => Object.assign(state, { selected }),
     cursor: (cursor) => Object.assign(state, { cursor }),
@@ -105,6 +108,55 @@ describe('dragging', () => {
     stage.pointer('pointermove', 300);
     stage.pointer('pointerup', 300);
     expect(state).toMatchObject({ windows: [at(200, 300)], selected: null, cursor: 600 });
+  });
+});
+
+describe('choosing one stretch', () => {
+  function choosing(initial: WindowLimits[]) {
+    const state = { windows: initial, tapped: null as number | null };
+    const stage = new Stage();
+    bindStripGestures<WindowLimits>(stage.element, {
+      x: () => x,
+      limits: () => limits,
+      windows: () => state.windows,
+      editable: () => true,
+      drawsInside: true,
+      draw: (_, fromS, toS, snapS) => {
+        const drawn = drawWindow([], limits, fromS, toS, snapS);
+        return drawn && [drawn];
+      },
+      change: (windows) => Object.assign(state, { windows }),
+      select: () => undefined,
+      cursor: () => undefined,
+      tap: (tapped) => Object.assign(state, { tapped }),
+    });
+    return { state, stage };
+  }
+
+  it.each([
+    ['inside the one that is chosen', 200, 250, { startS: 400, endS: 500 }],
+    ['across its edge and beyond', 150, 400, { startS: 300, endS: 800 }],
+    ['on an edge: resizes it', 100, 50, { startS: 100, endS: 1000 }],
+  ])('a drag %s', (_, from, to, expected) => {
+    const { state, stage } = choosing([{ startS: 200, endS: 1000 }]);
+    stage.pointer('pointerdown', from);
+    stage.pointer('pointermove', to);
+    stage.pointer('pointerup', to);
+    expect(state).toEqual({ windows: [expected], tapped: null });
+  });
+
+  it('a tap says where, even inside the chosen one', () => {
+    const { state, stage } = choosing([{ startS: 200, endS: 1000 }]);
+    stage.pointer('pointerdown', 250);
+    stage.pointer('pointerup', 250);
+    expect(state.tapped).toBe(500);
+  });
+
+  it('of overlapping stretches the shortest is under the finger', () => {
+    const found: Stretch[] = [[0, 400], [100, 200], [500, 600]]; // prettier-ignore
+    expect(stretchAt(found, 150)).toEqual([100, 200]);
+    expect(stretchAt(found, 300)).toEqual([0, 400]);
+    expect(stretchAt(found, 450)).toBeNull();
   });
 });
 

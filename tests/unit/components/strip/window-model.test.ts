@@ -1,4 +1,5 @@
 import {
+  drawOutage,
   drawWindow,
   moveWindow,
   parseClock,
@@ -10,23 +11,25 @@ import { outagesSchema, type Outage } from '@/shared/contracts/runs';
 
 const limits = { startS: 0.4, endS: 1000.2 };
 const at = (startS: number, endS: number): Outage => ({ startS, endS, withhold: 'gnss' });
+/** What drawing answers: a stretch of time, whatever it will stand for. */
+const span = (startS: number, endS: number) => ({ startS, endS });
 const windows = [at(100, 160), at(300, 330), at(900, 960)];
 
 describe('drawing', () => {
   it('snaps to whole seconds in either direction', () => {
-    expect(drawWindow(windows, limits, 200.3, 240.7)).toEqual(at(200, 241));
-    expect(drawWindow(windows, limits, 240.7, 200.3)).toEqual(at(200, 241));
+    expect(drawWindow(windows, limits, 200.3, 240.7)).toEqual(span(200, 241));
+    expect(drawWindow(windows, limits, 240.7, 200.3)).toEqual(span(200, 241));
   });
 
   it('stops at the neighbours and at the ends of the recording', () => {
-    expect(drawWindow(windows, limits, 200, 500)).toEqual(at(200, 300));
-    expect(drawWindow(windows, limits, 980, 2000)).toEqual(at(980, 1000.2));
-    expect(drawWindow(windows, limits, 50, -50)).toEqual(at(0.4, 50));
+    expect(drawWindow(windows, limits, 200, 500)).toEqual(span(200, 300));
+    expect(drawWindow(windows, limits, 980, 2000)).toEqual(span(980, 1000.2));
+    expect(drawWindow(windows, limits, 50, -50)).toEqual(span(0.4, 50));
   });
 
   it('is at least a second long, even of a mere click', () => {
-    expect(drawWindow(windows, limits, 200, 200)).toEqual(at(200, 201));
-    expect(drawWindow(windows, limits, 1000, 1000)).toEqual(at(999.2, 1000.2));
+    expect(drawWindow(windows, limits, 200, 200)).toEqual(span(200, 201));
+    expect(drawWindow(windows, limits, 1000, 1000)).toEqual(span(999.2, 1000.2));
   });
 
   it('does not begin inside another window', () => expect(drawWindow(windows, limits, 120, 400)).toBeNull());
@@ -74,8 +77,8 @@ it('every sequence of drags leaves windows that the contract takes', () => {
     if (choice < 0.4) state = moveWindow(state, limits, index, time);
     else if (choice < 0.9) state = resizeWindow(state, limits, index, choice < 0.6 ? 'start' : 'end', time);
     else {
-      const drawn = drawWindow(state, limits, time, time + random() * 100);
-      if (drawn && state.length < 20) state = [...state, drawn];
+      const drawn = drawOutage(state, limits, time, time + random() * 100);
+      if (drawn && drawn.length <= 20) state = drawn;
     }
   }
   expect(outagesSchema.safeParse(state).success).toBe(true);
