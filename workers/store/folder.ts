@@ -54,7 +54,7 @@ export class FolderStore implements Store {
   async stream(key: string): Promise<Readable> {
     try {
       const handle = await open(this.pathOf(key), 'r');
-      return handle.createReadStream({ highWaterMark: 256 * 1024 });
+      return handle.createReadStream({ highWaterMark: 64 * 1024 });
     } catch (error) {
       throw missingOr(error, key);
     }
