@@ -7,6 +7,7 @@ import { addRemedies } from './2026-12-01-add-remedies';
 import { addSensorModel } from './2026-12-01-add-sensor-model';
 import { addSmoothingAndBudget } from './2026-12-01-add-smoothing-and-budget';
 import { allowSecondImuFile } from './2026-12-01-allow-second-imu-file';
+import { createMapTemplates } from './2026-12-01-create-map-templates';
 import { runMigrations, type Migration } from './runner';
 
 export const MIGRATIONS: readonly Migration[] = [
@@ -18,6 +19,7 @@ export const MIGRATIONS: readonly Migration[] = [
   addSensorModel,
   allowSecondImuFile,
   addRemedies,
+  createMapTemplates,
 ];
 
 /** Brings the database at `url` up to date; answers the names that were applied. */

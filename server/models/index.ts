@@ -2,6 +2,7 @@
 import { Sequelize, type Transaction } from 'sequelize';
 import type { Logger } from 'pino';
 import { bindAccounts } from './accounts';
+import { bindMapTemplate } from './map-template';
 import { bindMessages } from './messages';
 import { bindParameterSet, bindSetVersion } from './parameter-set';
 import { bindRecording, bindRecordingFile } from './recording';
@@ -35,13 +36,15 @@ function bindModels(sequelize: Sequelize) {
     ...bindAccounts(sequelize),
     ...bindMessages(sequelize),
     Vehicle: bindVehicle(sequelize),
+    MapTemplate: bindMapTemplate(sequelize),
     Recording: bindRecording(sequelize),
     RecordingFile: bindRecordingFile(sequelize),
     Run: bindRun(sequelize),
     ParameterSet: bindParameterSet(sequelize),
     SetVersion: bindSetVersion(sequelize),
   };
-  const { Recording, RecordingFile, Run, ParameterSet, SetVersion, User, Vehicle } = models;
+  const { MapTemplate, Recording, RecordingFile, Run, ParameterSet, SetVersion, User, Vehicle } = models;
+  MapTemplate.belongsTo(User, { as: 'createdBy', foreignKey: 'createdById' });
   Recording.belongsTo(Vehicle, { as: 'vehicle', foreignKey: 'vehicleId' });
   Recording.belongsTo(User, { as: 'createdBy', foreignKey: 'createdById' });
   Recording.hasMany(RecordingFile, { as: 'files', foreignKey: 'recordingId' });

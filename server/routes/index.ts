@@ -1,5 +1,6 @@
 /** Every route of the API, version 1. */
 import { accountRoutes } from './accounts';
+import { mapTemplateRoutes } from './map-templates';
 import { parameterSetRoutes } from './parameter-sets';
 import { recordingFileRoutes } from './recording-files';
 import { recordingRoutes } from './recordings';
@@ -14,6 +15,7 @@ export const ROUTES: readonly Route[] = [
   ...accountRoutes,
   ...teamRoutes,
   ...vehicleRoutes,
+  ...mapTemplateRoutes,
   ...recordingRoutes,
   ...recordingFileRoutes,
   ...runRoutes,
