@@ -75,6 +75,12 @@ export const fonts = {
   number: 'AzeretMono_400Regular, ui-monospace, Menlo, Consolas, monospace',
 } as const;
 
+/** In saved pictures, by the families' own names: another machine may have them, and has something like them. */
+export const pictureFonts = {
+  label: `"Barlow Semi Condensed", Barlow, "Arial Narrow", ${FALLBACK}`,
+  number: '"Azeret Mono", ui-monospace, Menlo, Consolas, "DejaVu Sans Mono", monospace',
+} as const;
+
 export const typeScale = { small: 12, label: 14, body: 16, heading: 20, title: 28 } as const;
 /** Spacing in fours. */
 export const space = { xs: 4, s: 8, m: 12, l: 16, xl: 24, xxl: 32 } as const;

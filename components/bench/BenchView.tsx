@@ -1,5 +1,6 @@
 import { useEffect, useState } from 'react';
 import { StyleSheet, View } from 'react-native';
+import { ChartOrigin } from '@/components/charts/chart-origin';
 import { Screen } from '@/components/layout/Screen';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
 import { Figures } from '@/components/ui/Figures';
@@ -13,6 +14,7 @@ import { WIDE_VIEWS, type ViewId } from './chart-views';
 import { PhoneBench } from './PhoneBench';
 import { RunStatus } from './RunStatus';
 import { useBench } from './use-bench';
+import { useRunOrigin } from './use-run-origin';
 import { useBenchAddress, type OwnQueries } from './use-bench-address';
 import { WideBench } from './WideBench';
 
@@ -33,6 +35,7 @@ export function BenchView({ start, locked, shown, own }: BenchViewProps) {
   const [view, setView] = useState<ViewId>(
     () => WIDE_VIEWS.find((one) => one.id === start.view)?.id ?? 'overview',
   );
+  const origin = useRunOrigin(bench);
   useBenchAddress(bench, view, own);
   const notes = start.notes.join(' ');
   useEffect(() => {
@@ -62,7 +65,9 @@ export function BenchView({ start, locked, shown, own }: BenchViewProps) {
       width="full"
       scroll={false}
     >
-      <Body bench={bench} view={view} onView={setView} />
+      <ChartOrigin.Provider value={origin}>
+        <Body bench={bench} view={view} onView={setView} />
+      </ChartOrigin.Provider>
     </Screen>
   );
 }

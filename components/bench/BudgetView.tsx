@@ -2,6 +2,7 @@ import { lazy, useMemo } from 'react';
 import { StyleSheet, View } from 'react-native';
 import Svg, { Path, Rect } from 'react-native-svg';
 import { hatchPath } from '@/components/charts/model/hatch';
+import { budgetSave } from '@/components/charts/quiet/quiet-saves';
 import { sourceInk } from '@/components/charts/quiet/source-ink';
 import { Button } from '@/components/ui/Button';
 import { Text } from '@/components/ui/Text';
@@ -27,12 +28,13 @@ export interface BudgetViewProps {
 export function BudgetView({ bench, direction, height }: BudgetViewProps) {
   const summary = useSummary(bench);
   const budget = useMemo(() => errorBudget(summary, direction), [summary, direction]);
+  const head = { title: `Error budget, ${direction}`, aside: 'share of variance, 1σ above' };
   return (
     <QuietFrame
-      title={`Error budget, ${direction}`}
-      aside="share of variance, 1σ above"
+      {...head}
       words={budget ? budgetWords(budget) : 'The runs so far were not split by their sources.'}
       height={height}
+      save={budget && budgetSave(budget, { ...head, sentence: budgetWords(budget) })}
       legend={budget ? <Legend sources={budget.sources} /> : null}
     >
       {(width, room) =>

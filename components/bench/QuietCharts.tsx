@@ -1,4 +1,5 @@
 import { lazy, useMemo } from 'react';
+import { driftGrowthSave, histogramSave } from '@/components/charts/quiet/quiet-saves';
 import { useLive } from '@/hooks/use-live-run';
 import { useRunCurves } from '@/hooks/runs';
 import { formatNumber } from '@/shared/format';
@@ -13,6 +14,8 @@ const DriftGrowthChart = lazy(async () => ({ default: (await quiet()).DriftGrowt
 const HistogramChart = lazy(async () => ({ default: (await quiet()).HistogramChart }));
 
 const EXPECTED = Array.from({ length: 81 }, (_, i) => ({ x: -4 + i / 10, density: unitNormal(-4 + i / 10) }));
+
+const X_LABEL = 'innovation ÷ predicted σ';
 
 /** How the drift of all windows grows, against the prediction. Redrawn when a run is done. */
 export function DriftGrowth({ bench, height }: { bench: Bench; height: number }) {
@@ -29,10 +32,11 @@ export function DriftGrowth({ bench, height }: { bench: Bench; height: number })
         })
         .join(' ')
     : 'No window has coasted yet: draw an outage on the strip.';
+  const head = { title: 'Drift growth, horizontal', aside: 'every window, 1σ dashed · m' };
   return (
     <QuietFrame
-      title="Drift growth, horizontal"
-      aside="every window, 1σ dashed · m"
+      {...head}
+      save={growth && driftGrowthSave(growth, { ...head, sentence: words })}
       words={words}
       height={height}
     >
@@ -66,10 +70,20 @@ export function InnovationHistogram({
     [whole.data, group, summary],
   );
   const found = held ?? fetched;
+  const head = {
+    title: `${group === 'position' ? 'Position' : 'Velocity'} innovation ÷ σ`,
+    aside: 'unit normal in green',
+  };
   return (
     <QuietFrame
-      title={`${group === 'position' ? 'Position' : 'Velocity'} innovation ÷ σ`}
-      aside="unit normal in green"
+      {...head}
+      save={
+        found &&
+        histogramSave(
+          { bins: found.bins, expected: EXPECTED, xLabel: X_LABEL },
+          { ...head, sentence: foundWords(found) },
+        )
+      }
       words={found ? foundWords(found) : missingWords(summary !== null, count, fetchable && !whole.isError)}
       height={height}
     >
@@ -78,7 +92,7 @@ export function InnovationHistogram({
           <HistogramChart
             bins={found.bins}
             expected={EXPECTED}
-            xLabel="innovation ÷ predicted σ"
+            xLabel={X_LABEL}
             width={width}
             height={room}
           />

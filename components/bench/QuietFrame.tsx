@@ -1,5 +1,7 @@
 import { Suspense, useState, type ReactNode } from 'react';
 import { StyleSheet, View } from 'react-native';
+import type { QuietSave } from '@/components/charts/quiet/quiet-saves';
+import { SaveControl } from '@/components/charts/SaveControl';
 import { VisuallyHidden } from '@/components/charts/VisuallyHidden';
 import { Skeleton } from '@/components/ui/Skeleton';
 import { Text } from '@/components/ui/Text';
@@ -11,6 +13,8 @@ export interface QuietFrameProps {
   /** The chart in a sentence; shown in its place where there is none. */
   words: string;
   height: number;
+  /** What the chart saves; left out or null: nothing yet. */
+  save?: QuietSave | null;
   /** Under the title; takes as many lines as it needs, and the chart what they leave. */
   legend?: ReactNode;
   /** Draws into what is left of the frame, px. */
@@ -35,6 +39,7 @@ export function QuietFrame(props: QuietFrameProps) {
         <Text variant="small" tone="soft" numberOfLines={1} style={styles.aside}>
           {props.aside}
         </Text>
+        {props.save ? <SaveControl name={props.title} {...props.save} /> : null}
       </View>
       {drawn && props.legend ? (
         <View
@@ -72,9 +77,10 @@ const styles = StyleSheet.create({
     gap: space.m,
     paddingLeft: 46,
     paddingRight: space.s,
+    zIndex: 1,
   },
   title: { flexShrink: 0 },
-  aside: { flexShrink: 1 },
+  aside: { flexShrink: 1, marginLeft: 'auto' },
   legend: { paddingLeft: 46, paddingRight: 8, paddingBottom: 2 },
   words: { paddingLeft: 46, paddingVertical: space.l },
 });

@@ -1,5 +1,6 @@
 import { lazy, useMemo } from 'react';
 import { StyleSheet, View } from 'react-native';
+import { correlationSave } from '@/components/charts/quiet/quiet-saves';
 import { Text } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { space } from '@/constants/theme';
@@ -23,10 +24,10 @@ export interface WhitenessViewProps {
 export function WhitenessView({ bench, group, height }: WhitenessViewProps) {
   const summary = useSummary(bench);
   const found = useMemo(() => whiteness(summary, group), [summary, group]);
+  const head = { title: `Autocorrelation, ${group}`, aside: '95 % band in green' };
   return (
     <QuietFrame
-      title={`Autocorrelation, ${group}`}
-      aside="95 % band in green"
+      {...head}
       words={
         found
           ? whitenessSentence(found)
@@ -35,6 +36,7 @@ export function WhitenessView({ bench, group, height }: WhitenessViewProps) {
             : 'No figures yet.'
       }
       height={height}
+      save={found && correlationSave(found, { ...head, sentence: whitenessSentence(found) })}
       legend={found ? <Legend found={found} /> : null}
     >
       {(width, room) => (found ? <AutocorrelationChart {...found} width={width} height={room} /> : null)}

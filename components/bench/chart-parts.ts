@@ -39,6 +39,8 @@ export interface CurveSpec {
   width?: number;
   breaks?: boolean;
   series: SeriesOfRun;
+  /** Name in a saved table; left out: the id. */
+  column?: string;
   /** False: the baseline draws no ghost of it. */
   ghost?: boolean;
   /** The ghost's name in the legend, where one curve alone is shown. */
@@ -47,11 +49,12 @@ export interface CurveSpec {
 
 /** One curve in its three states: the baseline's ghost, the remainder of the run before, the run itself. */
 export function curveLayers(source: CurvesSource, spec: CurveSpec): { under: Layer[]; over: LineLayer } {
-  const { id, tone, dash, width, breaks, series } = spec;
+  const { id, tone, dash, width, breaks, series, column = id } = spec;
   const pick = (which: keyof Curves) => () => series(source.curves()[which]);
   const ghost: LineLayer = {
     kind: 'line',
     id: `${id}.ghost`,
+    column: `${column} baseline`,
     tone: 'ghost',
     dash,
     breaks,
@@ -72,7 +75,7 @@ export function curveLayers(source: CurvesSource, spec: CurveSpec): { under: Lay
   };
   return {
     under: spec.ghost === false ? [remainder] : [ghost, remainder],
-    over: { kind: 'line', id, tone, dash, width, breaks, label: spec.label, series: pick('current') },
+    over: { kind: 'line', id, column, tone, dash, width, breaks, label: spec.label, series: pick('current') },
   };
 }
 
@@ -92,6 +95,7 @@ export function axisCurves<T extends FrameTable>(
 ): CurveSpec[] {
   return axes.map((axis) => ({
     id: `${id}.${axis.key}`,
+    column: `${id} ${axis.key}`,
     label: axis.label,
     tone: axis.tone,
     dash: axisDash[axis.tone],
@@ -105,7 +109,7 @@ export function sigmaBand(
   id: string,
   tone: AxisSpec['tone'],
   series: SeriesOfRun,
-  options: Pick<BandLayer, 'label' | 'breaks'> & { centre?: SeriesOfRun } = {},
+  options: Pick<BandLayer, 'label' | 'breaks' | 'column'> & { centre?: SeriesOfRun } = {},
 ): BandLayer {
   const { centre, ...rest } = options;
   return {

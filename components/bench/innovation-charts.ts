@@ -42,6 +42,7 @@ export function innovationChart(
   const bands = NED.map((axis) =>
     sigmaBand(source, `sigma.${axis.key}`, axis.tone, sigma(axis), {
       breaks: true,
+      column: `three_sigma ${axis.key}`,
       label: axis.key === 'n' ? '±3σ' : undefined,
     }),
   );
@@ -120,8 +121,23 @@ export function nisChart(
     unit: '',
     remark: () => `no unit, mean ${dimension()} expected`,
     layers: [
-      { kind: 'rules', id: 'mean', tone: 'pine', dash: '3 3', width: 1, values: () => [dimension()] },
-      { kind: 'rules', id: 'bounds', tone: 'pine', label: '95 % of single values', values: bounds },
+      {
+        kind: 'rules',
+        id: 'mean',
+        column: 'mean_expected',
+        tone: 'pine',
+        dash: '3 3',
+        width: 1,
+        values: () => [dimension()],
+      },
+      {
+        kind: 'rules',
+        id: 'bounds',
+        column: 'bounds_95',
+        tone: 'pine',
+        label: '95 % of single values',
+        values: bounds,
+      },
       {
         kind: 'dots',
         id: 'before',
@@ -133,6 +149,7 @@ export function nisChart(
       {
         kind: 'dots',
         id: 'accepted',
+        column: 'nis',
         tone: 'profile',
         label: 'NIS',
         series: () => nis(true)(source.curves().current),

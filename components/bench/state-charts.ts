@@ -31,9 +31,9 @@ export function sigmaChart(
   windows: Windows,
 ): ChartContent {
   const specs = {
-    position: axisCurves('s', 'state', NED, (axis) => `sigma_${axis.key}_m` as StateColumn),
-    velocity: axisCurves('s', 'state', NED, (axis) => `sigma_v${axis.key}_m_s` as StateColumn),
-    attitude: axisCurves('s', 'state', ANGLES, (axis) => `sigma_${axis.key}_deg` as StateColumn),
+    position: axisCurves('sigma', 'state', NED, (axis) => `sigma_${axis.key}_m` as StateColumn),
+    velocity: axisCurves('sigma', 'state', NED, (axis) => `sigma_v${axis.key}_m_s` as StateColumn),
+    attitude: axisCurves('sigma', 'state', ANGLES, (axis) => `sigma_${axis.key}_deg` as StateColumn),
   }[state];
   const unit = { position: 'm', velocity: 'm/s', attitude: '°' }[state];
   return {
@@ -60,6 +60,7 @@ export function sigmaChart(
 export function horizontalSigmaChart(source: CurvesSource, windows: Windows): ChartContent {
   const spec: CurveSpec = {
     id: 'horizontal',
+    column: 'sigma_horizontal',
     label: 'horizontal σ',
     ghostLabel: 'baseline',
     tone: 'north',
@@ -88,7 +89,7 @@ export function biasChart(source: CurvesSource, sensor: 'gyro' | 'accel', window
   const unit = QUANTITIES[sensor === 'gyro' ? 'gyroBias' : 'accelBias'][0];
   const si = sensor === 'gyro' ? 'rad_s' : 'm_s2';
   const estimate = (key: string) => `${sensor}_bias_${key}_${si}` as StateColumn;
-  const specs = axisCurves('b', 'state', XYZ, (axis) => estimate(axis.key), 1 / unit.toSi);
+  const specs = axisCurves('bias', 'state', XYZ, (axis) => estimate(axis.key), 1 / unit.toSi);
   const bands = XYZ.map((axis) =>
     sigmaBand(
       source,
@@ -148,6 +149,7 @@ export function coastingChart(
       {
         kind: 'area',
         id: 'predicted',
+        column: 'predicted_95',
         tone: 'vermilion',
         label: '95 % predicted',
         breaks: true,

@@ -1,6 +1,6 @@
 /** The chart contents of a bench, made once. */
 import { useEffect, useMemo, useRef } from 'react';
-import type { TrackContent } from '@/components/charts/TrackChart';
+import type { TrackContent } from '@/components/charts/model/track-drawing';
 import { useRecordingSeries } from '@/hooks/recordings';
 import { useGnssOnlyTrack } from '@/hooks/runs';
 import { formatNumber } from '@/shared/format';
@@ -35,6 +35,7 @@ export function useTrackContent(bench: Bench): TrackContent {
       solution: () => stateTrack(run()),
       isCoasting: (timeS) => isCoasting(windows(), timeS),
       ghost: () => stateTrack(source.curves().ghost),
+      smoothed: () => stateTrack(null),
       fixes: () => fixTrack(fixes, gnssOnly, run()),
       gnssOnly: () => gnssOnlyTrack(gnssOnly, run()),
       reference: () => referenceTrack(run()),

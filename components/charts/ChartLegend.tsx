@@ -1,4 +1,4 @@
-import { useSyncExternalStore } from 'react';
+import { useSyncExternalStore, type ReactNode } from 'react';
 import { StyleSheet, View } from 'react-native';
 import Svg, { Path, Rect } from 'react-native-svg';
 import { Text } from '@/components/ui/Text';
@@ -8,6 +8,7 @@ import { formatNumber } from '@/shared/format';
 import type { ChartGroup } from './chart-group';
 import { inkOf } from './drawing/layer-style';
 import type { ChartContent, Layer } from './model/layers';
+import { legendOrder, samplePath } from './model/legend';
 import { readLayer } from './table-rows';
 import { formatAxisTime } from './model/ticks';
 
@@ -18,10 +19,12 @@ export interface ChartLegendProps {
   aside: string;
   /** Title and unit in one line, the legend in the next. */
   narrow: boolean;
+  /** At the end of the line. */
+  action?: ReactNode;
 }
 
 /** Title, what each line is, and at the cursor its value; the unit to the right. */
-export function ChartLegend({ content, group, aside, narrow }: ChartLegendProps) {
+export function ChartLegend({ content, group, aside, narrow, action }: ChartLegendProps) {
   const cursor = useSyncExternalStore(group.cursor.subscribe, () => group.cursor.current);
   const legend = (
     <View style={[styles.legend, narrow ? styles.wholeLine : null]}>
@@ -47,18 +50,10 @@ export function ChartLegend({ content, group, aside, narrow }: ChartLegendProps)
           .filter(Boolean)
           .join(' · ')}
       </Text>
+      {action}
       {narrow ? legend : null}
     </View>
   );
-}
-
-/** Lines first and in the order of their axes, whatever lies on top of what; then grounds, marks and rules. */
-function legendOrder(layers: readonly Layer[]): Layer[] {
-  const axes = ['N', 'E', 'D'];
-  const kinds: Layer['kind'][] = ['line', 'dots', 'band', 'area', 'diamonds', 'rules'];
-  const rank = ({ kind, tone, label = '' }: Layer) =>
-    kinds.indexOf(kind) * 10 + (tone === 'ghost' ? 5 : Math.max(0, axes.indexOf(label)));
-  return layers.filter((layer) => layer.label !== undefined).sort((a, b) => rank(a) - rank(b));
 }
 
 function Reading({ layer, timeS }: { layer: Layer; timeS: number }) {
@@ -80,15 +75,9 @@ function Sample({ layer }: { layer: Layer }) {
         <Rect x={0.5} y={1} width={15} height={8} {...ink} strokeOpacity={0.6} fillOpacity={0.2} />
       </Svg>
     );
-  const d =
-    layer.kind === 'dots'
-      ? 'M3 5h0M8 3h0M13 6h0'
-      : layer.kind === 'diamonds'
-        ? 'M8 1l4 4l-4 4l-4 -4Z'
-        : 'M0 5H18';
   return (
     <Svg width={18} height={10} aria-hidden>
-      <Path d={d} {...ink} />
+      <Path d={samplePath(layer.kind)} {...ink} />
     </Svg>
   );
 }

@@ -3,7 +3,6 @@ import { StyleSheet, View } from 'react-native';
 import Svg, { ClipPath, Defs, G, Path, Rect } from 'react-native-svg';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { web } from '@/components/ui/web-props';
-import { formatNumber } from '@/shared/format';
 import { bindChartGestures, chartKey } from './chart-gestures';
 import type { ChartGroup } from './chart-group';
 import { ChartLegend } from './ChartLegend';
@@ -11,8 +10,12 @@ import { ChartTable } from './ChartTable';
 import { ChartAnnotations, ChartAxes, type AxesDrawing } from './drawing/ChartAxes';
 import { inkOf } from './drawing/layer-style';
 import { ShapeSet } from './drawing/shape-set';
+import { timeFigure } from './figure/time-figure';
+import { timeTables } from './figure/time-tables';
+import { asideOf } from './model/aside';
 import type { ChartContent, Layer } from './model/layers';
 import { chartBuffers, drawChart, type LayerPaths, type PlotBox } from './model/time-chart';
+import { SaveControl } from './SaveControl';
 
 export interface TimeChartProps {
   content: ChartContent;
@@ -54,7 +57,19 @@ export function TimeChart({ content, group, height, timeAxis = true }: TimeChart
         style={[styles.head, { paddingLeft: GUTTER_PX }]}
         onLayout={(event) => setHeadPx(event.nativeEvent.layout.height)}
       >
-        <ChartLegend content={content} group={group} aside={axes.aside} narrow={width < NARROW_PX} />
+        <ChartLegend
+          content={content}
+          group={group}
+          aside={axes.aside}
+          narrow={width < NARROW_PX}
+          action={
+            <SaveControl
+              name={content.title}
+              figure={() => timeFigure(content, group.viewport.current)}
+              tables={() => timeTables(content, group.viewport.current, group.viewport.whole)}
+            />
+          }
+        />
       </View>
       <View
         ref={surface}
@@ -157,7 +172,7 @@ function useDrawing({ content, group, box, width, shapes, setAxes }: DrawingInpu
         valueTicks: drawing.valueTicks,
         timeTicks: drawing.timeTicks,
         annotations: drawing.annotations,
-        aside: [beyondText(drawing.beyond, content.unit), content.remark?.()].filter(Boolean).join(' · '),
+        aside: asideOf(content, drawing.beyond),
       };
       const key = JSON.stringify(axes);
       if (key !== lastAxes.current) {
@@ -204,15 +219,10 @@ function drawLayer(shapes: ShapeSet, layer: Layer, paths: LayerPaths | undefined
   shapes.attribute(stroke, 'stroke-opacity', String((layer.opacity ?? 1) * (dense ? 0.75 : 1)));
 }
 
-const beyondText = ({ count, largest }: { count: number; largest: number }, unit: string) =>
-  count === 0
-    ? ''
-    : `${count} beyond the scale, largest ${formatNumber(largest, 3)}${unit ? ` ${unit}` : ''}`;
-
 const NO_AXES = { valueTicks: [], timeTicks: [], annotations: [], aside: '' };
 const KEYS_HINT = 'Arrow keys move the cursor, plus and minus zoom, 0 shows all.';
 
 const styles = StyleSheet.create({
-  head: { paddingRight: 10 },
+  head: { paddingRight: 10, zIndex: 1 },
   surface: { userSelect: 'none', cursor: 'auto' },
 });

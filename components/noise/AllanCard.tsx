@@ -1,5 +1,7 @@
 import { lazy, Suspense, useMemo, useState } from 'react';
 import { View } from 'react-native';
+import { allanSave } from '@/components/charts/quiet/quiet-saves';
+import { SaveControl } from '@/components/charts/SaveControl';
 import { VisuallyHidden } from '@/components/charts/VisuallyHidden';
 import { Card } from '@/components/ui/Card';
 import { Skeleton } from '@/components/ui/Skeleton';
@@ -32,8 +34,14 @@ export function AllanCard({ sensor, analysis, datasheet }: AllanCardProps) {
     const taus = curves.flatMap(({ points }) => points.map(({ tauS }) => tauS));
     return datasheetCurve(datasheet, sensor, [Math.min(...taus), Math.max(...taus)]);
   }, [curves, datasheet, sensor]);
+  const heading = `${title}: Allan deviation`;
+  const sentences = curves.map((curve) => sentence(curve, deviation.symbol)).join(' ');
+  const save = allanSave(
+    { curves, expected, unit: deviation.symbol },
+    { title: heading, aside: 'bars 68 %', sentence: sentences },
+  );
   return (
-    <Card title={`${title}: Allan deviation`}>
+    <Card title={heading} action={<SaveControl name={heading} {...save} />}>
       <Text variant="label" tone="soft">
         {`x solid, y dashed, z dotted; bars 68 %; the fit in thin lines${expected ? '; the datasheet in grey' : ''}.`}
       </Text>
@@ -55,7 +63,7 @@ export function AllanCard({ sensor, analysis, datasheet }: AllanCardProps) {
           </View>
         ) : null}
         <VisuallyHidden>
-          <Text>{curves.map((curve) => sentence(curve, deviation.symbol)).join(' ')}</Text>
+          <Text>{sentences}</Text>
         </VisuallyHidden>
       </View>
     </Card>

@@ -1,5 +1,6 @@
 import { useState } from 'react';
 import { StyleSheet, View } from 'react-native';
+import { ChartOrigin, originOf } from '@/components/charts/chart-origin';
 import { recordingPath } from '@/components/layout/paths';
 import { Screen } from '@/components/layout/Screen';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
@@ -94,7 +95,9 @@ function Loaded({ recording }: { recording: Recording }) {
           <View style={extraWide ? styles.columns : styles.stack}>
             {SENSOR_NAMES.map((sensor) => (
               <View key={sensor} style={extraWide ? styles.column : null}>
-                <AllanCard sensor={sensor} analysis={analysis} datasheet={datasheet} />
+                <ChartOrigin.Provider value={originOf(recording.name)}>
+                  <AllanCard sensor={sensor} analysis={analysis} datasheet={datasheet} />
+                </ChartOrigin.Provider>
               </View>
             ))}
           </View>

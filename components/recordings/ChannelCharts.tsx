@@ -1,11 +1,12 @@
 import { useEffect, useMemo, useState } from 'react';
 import { View } from 'react-native';
+import { ChartOrigin, originOf } from '@/components/charts/chart-origin';
 import { ChartGroup } from '@/components/charts/chart-group';
 import { TimeChart } from '@/components/charts/TimeChart';
 import { ErrorState } from '@/components/ui/ErrorState';
 import { Text } from '@/components/ui/Text';
 import { space } from '@/constants/theme';
-import { useRecordingSeries } from '@/hooks/recordings';
+import { useRecording, useRecordingSeries } from '@/hooks/recordings';
 import { useDebounced } from '@/hooks/use-debounced';
 import { ALL_CHANNELS, CHANNEL_CHARTS, channelContent } from './channel-content';
 
@@ -24,6 +25,8 @@ export default function ChannelCharts({ recordingId, extentS, hasVelocity, focus
   const [from, to] = extentS;
   const group = useMemo(() => new ChartGroup([from, to]), [from, to]);
   const view = useView(group);
+  const name = useRecording(recordingId).data?.name ?? 'recording';
+  const origin = useMemo(() => originOf(name), [name]);
   const series = useRecordingSeries(recordingId, {
     channels: ALL_CHANNELS,
     points: POINTS,
@@ -50,20 +53,22 @@ export default function ChannelCharts({ recordingId, extentS, hasVelocity, focus
       />
     );
   return (
-    <View style={{ gap: space.s }}>
-      {charts.map((content, at) => (
-        <TimeChart
-          key={content.id}
-          content={content}
-          group={group}
-          height={at === charts.length - 1 ? 176 : 156}
-          timeAxis={at === charts.length - 1}
-        />
-      ))}
-      <Text variant="small" tone="soft">
-        Drag, pinch or turn the wheel to look closer; double tap shows the whole recording.
-      </Text>
-    </View>
+    <ChartOrigin.Provider value={origin}>
+      <View style={{ gap: space.s }}>
+        {charts.map((content, at) => (
+          <TimeChart
+            key={content.id}
+            content={content}
+            group={group}
+            height={at === charts.length - 1 ? 176 : 156}
+            timeAxis={at === charts.length - 1}
+          />
+        ))}
+        <Text variant="small" tone="soft">
+          Drag, pinch or turn the wheel to look closer; double tap shows the whole recording.
+        </Text>
+      </View>
+    </ChartOrigin.Provider>
   );
 }
 

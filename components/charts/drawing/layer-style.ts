@@ -1,5 +1,6 @@
 /** How each kind of layer is inked. */
 import type { Palette } from '@/constants/theme';
+import type { Inked } from '../figure/shapes';
 import type { Layer } from '../model/layers';
 
 export interface Ink {
@@ -14,38 +15,40 @@ export interface Ink {
 
 /** Ink of `layer` in `palette`. */
 export function inkOf(layer: Layer, palette: Palette): Ink {
-  const colour = palette[layer.tone];
-  const base: Ink = {
-    stroke: colour,
-    strokeWidth: 1.5,
-    strokeOpacity: layer.opacity ?? 1,
-    strokeLinecap: 'butt',
-    fill: 'none',
-    fillOpacity: 0,
+  const { stroke, strokeWidth = 1, strokeOpacity = 1, dash, round, fill, fillOpacity = 0 } = layerInk(layer);
+  return {
+    stroke: palette[stroke ?? layer.tone],
+    strokeWidth,
+    strokeOpacity,
+    strokeDasharray: dash,
+    strokeLinecap: round ? 'round' : 'butt',
+    fill: fill ? palette[fill] : 'none',
+    fillOpacity,
   };
+}
+
+/** The same by the palette's names. */
+export function layerInk(layer: Layer): Inked {
+  const { tone, opacity = 1 } = layer;
+  const base: Inked = { stroke: tone, strokeWidth: 1.5, strokeOpacity: opacity };
   switch (layer.kind) {
     case 'line':
-      return {
-        ...base,
-        strokeWidth: layer.width ?? 1.5,
-        strokeDasharray: layer.dash,
-        strokeLinecap: layer.dash ? 'butt' : 'round',
-      };
+      return { ...base, strokeWidth: layer.width ?? 1.5, dash: layer.dash, round: !layer.dash };
     case 'band':
     case 'area':
       return {
         ...base,
         strokeWidth: 1,
-        strokeDasharray: layer.kind === 'band' ? layer.dash : undefined,
-        strokeOpacity: 0.45 * (layer.opacity ?? 1),
-        fill: colour,
-        fillOpacity: (layer.kind === 'band' ? 0.06 : 0.16) * (layer.opacity ?? 1),
+        dash: layer.kind === 'band' ? layer.dash : undefined,
+        strokeOpacity: 0.45 * opacity,
+        fill: tone,
+        fillOpacity: (layer.kind === 'band' ? 0.06 : 0.16) * opacity,
       };
     case 'dots':
-      return { ...base, strokeWidth: 2.6, strokeLinecap: 'round' };
+      return { ...base, strokeWidth: 2.6, round: true };
     case 'diamonds':
-      return { ...base, strokeWidth: 1.5 };
+      return base;
     case 'rules':
-      return { ...base, strokeWidth: layer.width ?? 1.25, strokeDasharray: layer.dash };
+      return { ...base, strokeWidth: layer.width ?? 1.25, dash: layer.dash };
   }
 }

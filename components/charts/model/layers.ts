@@ -9,6 +9,8 @@ interface LayerLook {
   id: string;
   tone: ChartTone;
   opacity?: number;
+  /** Name in a saved table, without its unit; left out: the id. */
+  column?: string;
   /** Drawn from this time on only: the part that a newer run has not reached yet. */
   fromS?: () => number;
 }

@@ -104,9 +104,9 @@ describe('a newer run over an older one', () => {
   const drawing = draw(chart);
 
   it('draws the older one only where the newer has not come, and the ghost whole', () => {
-    expect(Math.max(...points(drawing.layers['s.n']!.stroke).map(([x]) => x))).toBe(300);
-    expect(Math.min(...points(drawing.layers['s.n.before']!.stroke).map(([x]) => x))).toBe(300);
-    const ghost = points(drawing.layers['s.n.ghost']!.stroke).map(([x]) => x);
+    expect(Math.max(...points(drawing.layers['sigma.n']!.stroke).map(([x]) => x))).toBe(300);
+    expect(Math.min(...points(drawing.layers['sigma.n.before']!.stroke).map(([x]) => x))).toBe(300);
+    const ghost = points(drawing.layers['sigma.n.ghost']!.stroke).map(([x]) => x);
     expect([Math.min(...ghost), Math.max(...ghost)]).toEqual([0, 1000]);
   });
 
