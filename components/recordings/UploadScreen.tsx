@@ -1,7 +1,7 @@
 import { zodResolver } from '@hookform/resolvers/zod';
 import { router } from 'expo-router';
 import { useCallback, useEffect } from 'react';
-import { useForm, type UseFormReturn } from 'react-hook-form';
+import { useForm, useWatch, type UseFormReturn } from 'react-hook-form';
 import { View } from 'react-native';
 import { z } from 'zod';
 import { FormChoice } from '@/components/forms/FormChoice';
@@ -16,11 +16,13 @@ import { NoPermission } from '@/components/ui/NoPermission';
 import { Notice } from '@/components/ui/Notice';
 import { Text } from '@/components/ui/Text';
 import { space } from '@/constants/theme';
+import { useMapTemplates } from '@/hooks/map-templates';
 import { useRecordingsOfVehicle } from '@/hooks/recordings';
 import { useCan } from '@/hooks/session';
 import { useUpload, type UploadState } from '@/hooks/use-upload';
 import { useVehicles } from '@/hooks/vehicles';
 import { nameSchema } from '@/shared/contracts/common';
+import type { MapTemplate } from '@/shared/contracts/map-templates';
 import { fileRoleSchema, type Recording } from '@/shared/contracts/recordings';
 import { UploadFiles } from './UploadFiles';
 import { UploadProgress } from './UploadProgress';
@@ -29,6 +31,7 @@ const file = (what: string) => z.custom<File>((value) => Boolean(value), `Choose
 const uploadSchema = z.object({
   name: nameSchema,
   vehicleId: z.string(),
+  templateId: z.string(),
   imu: file('IMU log'),
   gnss: file('GNSS log').optional(),
   imu2: file('second IMU log').optional(),
@@ -42,7 +45,7 @@ export function UploadScreen() {
   const mayUpload = useCan('recording:write');
   const form = useForm<UploadForm>({
     resolver: zodResolver(uploadSchema),
-    defaultValues: { name: '', vehicleId: '' },
+    defaultValues: { name: '', vehicleId: '', templateId: '' },
   });
   const done = useCallback((recording: Recording) => router.replace(recordingPath(recording.id)), []);
   const upload = useUpload(done);
@@ -52,8 +55,11 @@ export function UploadScreen() {
     if (upload.state.phase === 'failed')
       showProblem(upload.state.error, ['name', 'vehicleId', ...fileRoleSchema.options], setError);
   }, [upload.state, setError]);
-  const submit = form.handleSubmit(async ({ name, vehicleId, ...files }) => {
-    await upload.start({ meta: { name, vehicleId: vehicleId || undefined }, ...files });
+  const vehicleId = useWatch({ control: form.control, name: 'vehicleId' });
+  const templates = useMapTemplates(vehicleId).data ?? [];
+  const submit = form.handleSubmit(async ({ templateId, name, vehicleId: of, ...files }) => {
+    const channelMap = templates.find(({ id }) => id === templateId)?.channelMap;
+    await upload.start({ meta: { name, vehicleId: of || undefined, channelMap }, ...files });
   });
   if (!mayUpload)
     return (
@@ -72,7 +78,7 @@ export function UploadScreen() {
         <UploadFiles form={form} disabled={sending} onFirst={(chosen) => suggestName(form, chosen)} />
       </Card>
       <Card title="What it is">
-        <About form={form} disabled={sending} />
+        <About form={form} templates={templates} disabled={sending} />
       </Card>
       <Outcome state={upload.state} />
       {upload.state.phase === 'sending' ? (
@@ -92,7 +98,14 @@ function suggestName(form: UseFormReturn<UploadForm>, chosen: File) {
     form.setValue('name', nameFromFile(chosen.name), { shouldValidate: form.formState.isSubmitted });
 }
 
-function About({ form, disabled }: { form: UseFormReturn<UploadForm>; disabled: boolean }) {
+interface AboutProps {
+  form: UseFormReturn<UploadForm>;
+  /** Of the vehicle that is chosen. */
+  templates: readonly MapTemplate[];
+  disabled: boolean;
+}
+
+function About({ form, templates, disabled }: AboutProps) {
   const vehicles = useVehicles();
   const earlier = useRecordingsOfVehicle(form.watch('vehicleId'));
   const mapped = (earlier.data ?? []).some(({ channelMap }) => channelMap);
@@ -115,7 +128,17 @@ function About({ form, disabled }: { form: UseFormReturn<UploadForm>; disabled: 
         hint="It gives the antenna’s lever arm and how the IMU is mounted; it can be set later."
         disabled={disabled}
       />
-      {mapped ? (
+      {templates.length > 0 ? (
+        <FormChoice
+          control={form.control}
+          name="templateId"
+          label="Use a mapping template"
+          placeholder="None: let the columns be recognised"
+          options={templates.map(({ id, name }) => ({ value: id, label: name }))}
+          hint="If the logs lack one of its columns, the recording says which and waits for you to map them."
+          disabled={disabled}
+        />
+      ) : mapped ? (
         <Text variant="label" tone="soft" aria-live="polite">
           Should columns need mapping, the mapping of an earlier recording of this vehicle will be offered.
         </Text>

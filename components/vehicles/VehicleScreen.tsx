@@ -14,6 +14,7 @@ import { useCan } from '@/hooks/session';
 import { useCreateVehicle, useDeleteVehicle, usePatchVehicle, useVehicle } from '@/hooks/vehicles';
 import type { Vehicle } from '@/shared/contracts/vehicles';
 import { SensorCard } from '@/components/noise/SensorCard';
+import { TemplatesCard } from './TemplatesCard';
 import { VehicleForm } from './VehicleForm';
 import { KINDS } from './vehicle-words';
 
@@ -73,6 +74,7 @@ function Loaded({ vehicle, back }: { vehicle: Vehicle; back: '/vehicles' | undef
         }}
       />
       <SensorCard vehicle={vehicle} readOnly={!mayWrite} />
+      <TemplatesCard vehicle={vehicle} readOnly={!mayWrite} />
       {deleting ? <DeleteVehicle vehicle={vehicle} onClose={() => setDeleting(false)} /> : null}
     </Screen>
   );
@@ -95,7 +97,7 @@ function DeleteVehicle({ vehicle, onClose }: { vehicle: Vehicle; onClose: () => 
       open
       danger
       title={`Delete ${vehicle.name}?`}
-      message="Its lever arm and IMU mounting are lost. A vehicle that recordings or parameter sets use cannot be deleted."
+      message="Its lever arm, IMU mounting, sensor model and mapping templates are lost. A vehicle that recordings or parameter sets use cannot be deleted."
       confirmLabel="Delete the vehicle"
       busy={remove.isPending}
       onConfirm={() => void confirm()}

@@ -1,10 +1,11 @@
 import { zodResolver } from '@hookform/resolvers/zod';
-import { useRef } from 'react';
+import { useRef, useState } from 'react';
 import { useForm } from 'react-hook-form';
 import { StyleSheet, View } from 'react-native';
 import { FormProblem } from '@/components/forms/FormProblem';
 import { showProblem } from '@/components/forms/problem';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
+import { Button } from '@/components/ui/Button';
 import { Card } from '@/components/ui/Card';
 import { Notice } from '@/components/ui/Notice';
 import { space } from '@/constants/theme';
@@ -12,14 +13,15 @@ import type { ChannelMap, Recording } from '@/shared/contracts/recordings';
 import { Fold } from '../Fold';
 import { AidsPart } from './AidsPart';
 import { draftFromMap } from './draft-from-map';
-import { EarlierMapping } from './EarlierMapping';
 import { FileCard } from './FileCard';
 import { FILE_TITLES, titleOf } from './file-titles';
 import { mapDraftSchema, type MapDraft } from './map-draft';
 import { mapFromDraft } from './map-from-draft';
 import { PreviewPane } from './PreviewPane';
+import { SaveTemplateDialog } from './SaveTemplateDialog';
 import { SubmitBar } from './SubmitBar';
 import { TakenNote } from './TakenNote';
+import { TakeOver } from './TakeOver';
 import { useDraftPreview } from './use-draft-preview';
 import { useTake } from './use-take';
 
@@ -50,12 +52,14 @@ export function MappingForm({ recording, onSubmit }: MappingFormProps) {
       showProblem(error, [], setError);
     }
   });
+  const [template, setTemplate] = useState<ChannelMap | null>(null);
+  const keep = handleSubmit((draft) => setTemplate(mapFromDraft(draft)));
   const faults = Object.keys(formState.errors).filter((key) => key !== 'root') as (keyof MapDraft)[];
   const aidsKnown = Object.keys(recording.channelMap?.aids ?? {}).length > 0;
   return (
     <View style={extraWide ? styles.columns : styles.stack}>
       <View style={[styles.stack, extraWide ? styles.main : null]}>
-        <EarlierMapping recording={recording} previews={previews} onTake={take} />
+        <TakeOver recording={recording} previews={previews} onTake={take} />
         {previews.map((preview) => (
           <FileCard
             key={preview.role}
@@ -75,6 +79,12 @@ export function MappingForm({ recording, onSubmit }: MappingFormProps) {
             <AidsPart control={control} previews={previews} titles={FILE_TITLES} />
           </Fold>
         </Card>
+        <View style={styles.keep}>
+          <Button label="Save as template" icon="copy" onPress={() => void keep()} />
+        </View>
+        {template ? (
+          <SaveTemplateDialog recording={recording} channelMap={template} onClose={() => setTemplate(null)} />
+        ) : null}
       </View>
       <View ref={pane} style={[styles.stack, extraWide ? [styles.side, BESIDE] : null]}>
         <PreviewPane state={state} incomplete={incomplete} onTake={take} />
@@ -121,6 +131,7 @@ const BESIDE: object = {
 const styles = StyleSheet.create({
   columns: { flexDirection: 'row', gap: space.l, alignItems: 'flex-start' },
   stack: { gap: space.l },
+  keep: { flexDirection: 'row' },
   main: { flex: 3, minWidth: 0 },
   side: { flex: 2, minWidth: 0 },
 });

@@ -1,5 +1,5 @@
 import { act, fireEvent, screen } from '@testing-library/react-native';
-import { fits } from '@/components/recordings/mapping/earlier-maps';
+import { fits, fittingParts, misfits, misfitWords } from '@/components/recordings/mapping/map-fit';
 import { GuessList } from '@/components/recordings/mapping/GuessList';
 import { MappingForm } from '@/components/recordings/mapping/MappingForm';
 import { gravityCheck, turnCheck } from '@/components/recordings/mapping/preview-checks';
@@ -31,6 +31,7 @@ const MAP: ChannelMap = channelMapSchema.parse({
     accel: { columns: ['d', 'e', 'f'], unit: 'm/s^2' },
   },
 });
+const VEHICLE_ID = '4f0c8a52-0f4e-4a1c-9a55-3d1f0f3b7e30';
 const IN_G: ChannelMap = { imu: { ...MAP.imu!, accel: { ...MAP.imu!.accel, unit: 'g' } } };
 const OTHER_COLUMNS: ChannelMap = { imu: { ...MAP.imu!, time: { ...MAP.imu!.time, columns: ['clock'] } } };
 const FINDING: HealthFinding = {
@@ -132,6 +133,19 @@ describe('the preview beside the form', () => {
     expect(screen.queryByRole('button', { name: 'Read it in g' })).toBeNull();
   });
 
+  function renderOfVehicle({ earlier = [], templates = [] }: { earlier?: object[]; templates?: object[] }) {
+    const answer = (address: string) => {
+      if (address.includes('map-templates')) return { items: templates, nextCursor: null };
+      if (address.includes('vehicleId=')) return { items: earlier, nextCursor: null };
+      return previewOf([0, 0, -9.79]);
+    };
+    globalThis.fetch = jest.fn((address: string) =>
+      Promise.resolve(json(answer(address))),
+    ) as unknown as typeof fetch;
+    const recording = recordingOf({ channelMap: null, vehicleId: VEHICLE_ID, previews: [IMU] });
+    renderAs(<MappingForm recording={recording} onSubmit={() => Promise.resolve()} />);
+  }
+
   test('an earlier mapping of the vehicle fills the form, and can be taken back', async () => {
     const earlier = recordingOf({
       id: '4f0c8a52-0f4e-4a1c-9a55-3d1f0f3b7e21',
@@ -139,30 +153,35 @@ describe('the preview beside the form', () => {
       channelMap: IN_G,
     });
     const other = { ...earlier, id: '4f0c8a52-0f4e-4a1c-9a55-3d1f0f3b7e22', channelMap: OTHER_COLUMNS };
-    globalThis.fetch = jest.fn((address: string) =>
-      Promise.resolve(
-        json(
-          address.includes('vehicleId=')
-            ? { items: [earlier, other], nextCursor: null }
-            : previewOf([0, 0, -9.79]),
-        ),
-      ),
-    ) as unknown as typeof fetch;
-    const vehicleId = '4f0c8a52-0f4e-4a1c-9a55-3d1f0f3b7e30';
-    renderAs(
-      <MappingForm
-        recording={recordingOf({ channelMap: null, vehicleId, previews: [IMU] })}
-        onSubmit={() => Promise.resolve()}
-      />,
-    );
-    const choice = await screen.findByLabelText(/mapping of an earlier recording/);
-    expect(screen.getByText('1 more of Crawler 2 with other columns.')).toBeOnTheScreen();
+    renderOfVehicle({ earlier: [earlier, other] });
+    const choice = await screen.findByLabelText(/earlier mapping of/);
+    expect(screen.getByText(/One earlier recording has other columns/)).toBeOnTheScreen();
     fireEvent(choice, 'change', { target: { value: earlier.id } });
     expect(screen.getByLabelText('Gyro x').props.value).toBe('a');
     expect(screen.getByLabelText('Accelerometer unit').props.value).toBe('g');
     fireEvent.press(screen.getByRole('button', { name: 'Undo' }));
     expect(screen.getByLabelText('Gyro x').props.value).toBe('');
     expect(await screen.findByText('waits for the form')).toBeOnTheScreen();
+  });
+
+  test('a template fills the form; one of other columns says which are missing and changes nothing', async () => {
+    const template = {
+      id: '4f0c8a52-0f4e-4a1c-9a55-3d1f0f3b7e41',
+      vehicleId: VEHICLE_ID,
+      name: 'Autumn logger',
+      channelMap: IN_G,
+      createdAt: '2026-11-03T08:00:00Z',
+      createdBy: 'Maren Holt',
+    };
+    const other = { ...template, id: `${template.id.slice(0, -1)}2`, channelMap: OTHER_COLUMNS };
+    renderOfVehicle({ templates: [template, other] });
+    const choice = await screen.findByLabelText(/Use a template/);
+    fireEvent(choice, 'change', { target: { value: other.id } });
+    expect(screen.getByText(/The IMU file lacks “/)).toBeOnTheScreen();
+    expect(screen.getByLabelText('Gyro x').props.value).toBe('');
+    fireEvent(choice, 'change', { target: { value: template.id } });
+    expect(screen.queryByText(/The IMU file lacks/)).toBeNull();
+    expect(screen.getByLabelText('Gyro x').props.value).toBe('a');
   });
 
   test('problems say where, what and what to do', async () => {
@@ -248,6 +267,16 @@ describe('an earlier map', () => {
     ];
     expect(fits(MAP, [first, second])).toBe(true);
     expect(fits(MAP, [first])).toBe(false);
+  });
+  test('that fits in part says which columns are missing, and gives the rest', () => {
+    const map = { ...MAP, aids: { barometer: { column: 'baro', unit: 'm' as const } } };
+    expect(misfits(map, [IMU]).map(misfitWords)).toEqual(['the files lack “baro”']);
+    expect(Object.keys(fittingParts(map, [IMU]))).toEqual(['imu']);
+    const shorter = { ...IMU, headers: IMU.headers.slice(2) };
+    expect(misfits(MAP, [shorter]).map(misfitWords)).toEqual([
+      `the IMU file lacks “${IMU.headers[0]}”, “${IMU.headers[1]}”`,
+    ]);
+    expect(fittingParts(MAP, [shorter])).toEqual({});
   });
 });
 
