@@ -27,6 +27,7 @@ export const workspaceRequired = problem(400, 'workspace-required', 'The workspa
 export const notSignedIn = problem(401, 'not-signed-in', 'Not signed in');
 export const wrongCredentials = problem(401, 'wrong-credentials', 'Sign-in failed');
 export const forbidden = problem(403, 'forbidden', 'Your role does not allow this');
+export const ownWork = problem(403, 'own-work', 'Not for its own author');
 export const crossSite = problem(403, 'cross-site', 'The request came from another site');
 export const notFound = problem(404, 'not-found', 'Not found');
 export const conflict = problem(409, 'conflict', 'Not possible as things stand');

@@ -8,6 +8,7 @@ import { addSensorModel } from './2026-12-01-add-sensor-model';
 import { addSmoothingAndBudget } from './2026-12-01-add-smoothing-and-budget';
 import { allowSecondImuFile } from './2026-12-01-allow-second-imu-file';
 import { createMapTemplates } from './2026-12-01-create-map-templates';
+import { reviewVersions } from './2026-12-01-review-versions';
 import { runMigrations, type Migration } from './runner';
 
 export const MIGRATIONS: readonly Migration[] = [
@@ -20,6 +21,7 @@ export const MIGRATIONS: readonly Migration[] = [
   allowSecondImuFile,
   addRemedies,
   createMapTemplates,
+  reviewVersions,
 ];
 
 /** Brings the database at `url` up to date; answers the names that were applied. */

@@ -8,6 +8,7 @@ import { bindParameterSet, bindSetVersion } from './parameter-set';
 import { bindRecording, bindRecordingFile } from './recording';
 import { bindRun } from './run';
 import { bindVehicle } from './vehicle';
+import { bindVersionComment } from './version-comment';
 
 export type Database = ReturnType<typeof bindModels> & {
   sequelize: Sequelize;
@@ -42,6 +43,7 @@ function bindModels(sequelize: Sequelize) {
     Run: bindRun(sequelize),
     ParameterSet: bindParameterSet(sequelize),
     SetVersion: bindSetVersion(sequelize),
+    VersionComment: bindVersionComment(sequelize),
   };
   const { MapTemplate, Recording, RecordingFile, Run, ParameterSet, SetVersion, User, Vehicle } = models;
   MapTemplate.belongsTo(User, { as: 'createdBy', foreignKey: 'createdById' });
@@ -54,6 +56,8 @@ function bindModels(sequelize: Sequelize) {
   ParameterSet.belongsTo(User, { as: 'createdBy', foreignKey: 'createdById' });
   ParameterSet.hasMany(SetVersion, { as: 'versions', foreignKey: 'setId' });
   SetVersion.belongsTo(User, { as: 'createdBy', foreignKey: 'createdById' });
+  SetVersion.belongsTo(User, { as: 'submittedBy', foreignKey: 'submittedById' });
   SetVersion.belongsTo(User, { as: 'reviewedBy', foreignKey: 'reviewedById' });
+  models.VersionComment.belongsTo(User, { as: 'createdBy', foreignKey: 'createdById' });
   return models;
 }

@@ -40,6 +40,8 @@ export class AuditEntry extends Model<InferAttributes<AuditEntry>, InferCreation
   declare actorName: string;
   declare action: string;
   declare subject: string;
+  /** Id of what it was done to; there is no foreign key: the entry outlives it. */
+  declare subjectId: CreationOptional<string | null>;
   declare detail: Record<string, unknown>;
   declare address: string | null;
   declare createdAt: CreationOptional<Date>;
@@ -73,6 +75,7 @@ export function bindMessages(sequelize: Sequelize) {
       actorName: DataTypes.TEXT,
       action: DataTypes.TEXT,
       subject: DataTypes.TEXT,
+      subjectId: DataTypes.UUID,
       detail: DataTypes.JSONB,
       address: DataTypes.TEXT,
       createdAt: DataTypes.DATE,

@@ -25,6 +25,8 @@ export class ParameterSet extends Model<
   declare vehicleId: ForeignKey<string | null>;
   declare createdById: ForeignKey<string>;
   declare name: string;
+  /** Highest number that a version was given: a discarded draft's is not given again. */
+  declare lastNumber: CreationOptional<number>;
   declare createdAt: CreationOptional<Date>;
   declare vehicle?: NonAttribute<Vehicle | null>;
   declare createdBy?: NonAttribute<User>;
@@ -43,11 +45,16 @@ export class SetVersion extends Model<InferAttributes<SetVersion>, InferCreation
   declare recordingId: ForeignKey<string | null>;
   declare parentNumber: number | null;
   declare createdById: ForeignKey<string>;
+  declare submittedById: CreationOptional<ForeignKey<string | null>>;
+  declare submittedAt: CreationOptional<Date | null>;
+  /** The vehicle that it was released for. */
+  declare vehicleId: CreationOptional<ForeignKey<string | null>>;
   declare reviewComment: CreationOptional<string | null>;
   declare reviewedById: ForeignKey<string | null>;
   declare reviewedAt: CreationOptional<Date | null>;
   declare createdAt: CreationOptional<Date>;
   declare createdBy?: NonAttribute<User>;
+  declare submittedBy?: NonAttribute<User | null>;
   declare reviewedBy?: NonAttribute<User | null>;
 }
 
@@ -58,6 +65,7 @@ export const bindParameterSet = (sequelize: Sequelize) =>
     vehicleId: DataTypes.UUID,
     createdById: DataTypes.UUID,
     name: DataTypes.TEXT,
+    lastNumber: { type: DataTypes.INTEGER, defaultValue: 0 },
     createdAt: DataTypes.DATE,
   });
 
@@ -74,6 +82,9 @@ export const bindSetVersion = (sequelize: Sequelize) =>
     recordingId: DataTypes.UUID,
     parentNumber: DataTypes.INTEGER,
     createdById: DataTypes.UUID,
+    submittedById: DataTypes.UUID,
+    submittedAt: DataTypes.DATE,
+    vehicleId: DataTypes.UUID,
     reviewComment: DataTypes.TEXT,
     reviewedById: DataTypes.UUID,
     reviewedAt: DataTypes.DATE,

@@ -44,6 +44,8 @@ export const presentAuditEntry = ({
   actorName,
   action,
   subject,
+  subjectId,
+  address,
   detail,
 }: AuditRow): AuditEntry => ({
   id,
@@ -51,5 +53,7 @@ export const presentAuditEntry = ({
   actor: actorName,
   action,
   subject,
+  subjectId: subjectId ?? null,
+  address,
   detail,
 });

@@ -24,6 +24,8 @@ export function presentSet({ set, versions }: WholeSet): ParameterSet {
       createdBy: latest.createdBy?.name ?? '',
     },
     versionCount: versions.length,
+    releasedNumber: versions.find((version) => version.state === 'released')?.number ?? null,
+    inReviewNumbers: versions.filter(({ state }) => state === 'in-review').map(({ number }) => number),
   };
 }
 
@@ -45,7 +47,9 @@ export const presentVersion = (row: SetVersion): ParameterSetVersion => ({
   createdAt: row.createdAt.toISOString(),
   createdBy: row.createdBy?.name ?? '',
   createdById: row.createdById,
-  reviewComment: row.reviewComment,
+  submittedAt: row.submittedAt?.toISOString() ?? null,
+  submittedBy: row.submittedBy?.name ?? null,
+  reviewComment: row.reviewComment ?? null,
   reviewedBy: row.reviewedBy?.name ?? null,
   reviewedAt: row.reviewedAt?.toISOString() ?? null,
 });

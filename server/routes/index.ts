@@ -9,6 +9,7 @@ import { runRoutes } from './runs';
 import { statusRoutes } from './status';
 import { teamRoutes } from './team';
 import { vehicleRoutes } from './vehicles';
+import { versionRoutes } from './versions';
 
 export const ROUTES: readonly Route[] = [
   ...statusRoutes,
@@ -20,4 +21,5 @@ export const ROUTES: readonly Route[] = [
   ...recordingFileRoutes,
   ...runRoutes,
   ...parameterSetRoutes,
+  ...versionRoutes,
 ];

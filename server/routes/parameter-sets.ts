@@ -1,29 +1,19 @@
-import { z } from 'zod';
-import { idSchema, nameSchema, pageOf, pageQuerySchema } from '@/shared/contracts/common';
+import { pageOf } from '@/shared/contracts/common';
 import {
   parameterSetCreateSchema,
   parameterSetDetailSchema,
+  parameterSetListQuerySchema,
+  parameterSetPatchSchema,
   parameterSetSchema,
-  versionCreateSchema,
-  versionSchema,
 } from '@/shared/contracts/parameter-sets';
 import { presentPage } from '../presenters/page';
-import { presentSet, presentSetDetail, presentVersion } from '../presenters/parameter-set';
-import {
-  createSet,
-  createVersion,
-  getSet,
-  getVersion,
-  listSets,
-  renameSet,
-} from '../services/parameter-sets';
+import { presentSet, presentSetDetail } from '../presenters/parameter-set';
+import { changeSet, createSet, getSet, listSets } from '../services/parameter-sets';
 import { idParams } from './parts';
 import { type Route, workspaceRoute } from './route';
 
 const tag = 'Parameter sets';
 const detail = { schema: parameterSetDetailSchema, name: 'ParameterSetDetail' };
-const version = { schema: versionSchema, name: 'ParameterSetVersion' };
-const versionParams = z.object({ id: idSchema, n: z.coerce.number().int().positive() });
 
 export const parameterSetRoutes: Route[] = [
   workspaceRoute({
@@ -32,7 +22,7 @@ export const parameterSetRoutes: Route[] = [
     tag,
     summary: 'Parameter sets of the workspace',
     permission: 'workspace:read',
-    query: pageQuerySchema,
+    query: parameterSetListQuerySchema,
     success: {
       status: 200,
       description: 'Newest first',
@@ -66,36 +56,13 @@ export const parameterSetRoutes: Route[] = [
     method: 'patch',
     path: '/parameter-sets/:id',
     tag,
-    summary: 'Rename a set',
+    summary: 'Rename a set, or give it a vehicle',
     permission: 'set:draft',
     params: idParams,
-    body: z.object({ name: nameSchema }),
+    body: parameterSetPatchSchema,
     success: { status: 200, description: 'The set', ...detail },
-    failures: { 409: 'The name is taken' },
+    failures: { 409: 'The name is taken, or the vehicle is settled' },
     handle: async ({ ctx, actor, params, body }) =>
-      presentSetDetail(await renameSet(ctx, actor, params.id, body.name)),
-  }),
-  workspaceRoute({
-    method: 'post',
-    path: '/parameter-sets/:id/versions',
-    tag,
-    summary: 'Save a further version, a draft',
-    permission: 'set:draft',
-    params: idParams,
-    body: versionCreateSchema,
-    success: { status: 201, description: 'The version', ...version },
-    handle: async ({ ctx, actor, params, body }) =>
-      presentVersion(await createVersion(ctx, actor, params.id, body)),
-  }),
-  workspaceRoute({
-    method: 'get',
-    path: '/parameter-sets/:id/versions/:n',
-    tag,
-    summary: 'One version',
-    permission: 'workspace:read',
-    params: versionParams,
-    success: { status: 200, description: 'The version', ...version },
-    handle: async ({ ctx, actor, params }) =>
-      presentVersion(await getVersion(ctx, actor, params.id, params.n)),
+      presentSetDetail(await changeSet(ctx, actor, params.id, body)),
   }),
 ];

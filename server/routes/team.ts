@@ -20,7 +20,7 @@ import {
   presentMember,
   presentSinkMessage,
 } from '../presenters/accounts';
-import { presentPage } from '../presenters/page';
+import { presentPage, presentWhole } from '../presenters/page';
 import { listAudit } from '../services/audit';
 import {
   acceptInvitation,
@@ -40,8 +40,6 @@ const userParams = z.object({ userId: idSchema });
 const tokenParams = z.object({ token: z.string().min(20).max(200) });
 const slowly = (ctx: Context) => limitAttempts(ctx.config.signInAttempts);
 const all = <T extends z.ZodType>(item: T) => pageOf(item);
-/** A list that is never long enough for pages, in the form of one. */
-const whole = <R, T>(rows: R[], present: (row: R) => T) => ({ items: rows.map(present), nextCursor: null });
 
 export const teamRoutes: Route[] = [
   workspaceRoute({
@@ -51,7 +49,7 @@ export const teamRoutes: Route[] = [
     summary: 'Members of the workspace',
     permission: 'workspace:read',
     success: { status: 200, description: 'All members', schema: all(memberSchema), name: 'MemberPage' },
-    handle: async ({ ctx, actor }) => whole(await listMembers(ctx, actor), presentMember),
+    handle: async ({ ctx, actor }) => presentWhole(await listMembers(ctx, actor), presentMember),
   }),
   workspaceRoute({
     method: 'patch',
@@ -89,7 +87,7 @@ export const teamRoutes: Route[] = [
       schema: all(invitationSchema),
       name: 'InvitationPage',
     },
-    handle: async ({ ctx, actor }) => whole(await listInvitations(ctx, actor), presentInvitation),
+    handle: async ({ ctx, actor }) => presentWhole(await listInvitations(ctx, actor), presentInvitation),
   }),
   workspaceRoute({
     method: 'post',

@@ -11,6 +11,8 @@ interface Entry {
   by: { userId: string; name: string; address: string | null } | null;
   action: string;
   subject: string;
+  /** Id of what it was done to, so that its history can be read. */
+  subjectId?: string;
   detail?: Record<string, unknown>;
 }
 
@@ -22,6 +24,7 @@ export async function record(ctx: Context, entry: Entry, transaction: Transactio
       actorName: entry.by?.name ?? 'Server',
       action: entry.action,
       subject: entry.subject,
+      subjectId: entry.subjectId ?? null,
       detail: entry.detail ?? {},
       address: entry.by?.address ?? null,
     },
@@ -33,7 +36,7 @@ export async function record(ctx: Context, entry: Entry, transaction: Transactio
 export const recordBy = (
   ctx: Context,
   actor: Actor,
-  what: Pick<Entry, 'action' | 'subject' | 'detail'>,
+  what: Pick<Entry, 'action' | 'subject' | 'subjectId' | 'detail'>,
   transaction: Transaction,
 ): Promise<void> => record(ctx, { workspaceId: actor.workspaceId, by: actor, ...what }, transaction);
 

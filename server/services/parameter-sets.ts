@@ -1,14 +1,17 @@
-/** Parameter sets and their versions. */
+/** Parameter sets: a name, a vehicle, and versions that versions.ts looks after. */
 import { Op, type Transaction, UniqueConstraintError, type WhereOptions } from 'sequelize';
-import type { PageQuery } from '@/shared/contracts/common';
-import type { ParameterSetCreate, VersionCreate } from '@/shared/contracts/parameter-sets';
+import type {
+  ParameterSetCreate,
+  ParameterSetListQuery,
+  ParameterSetPatch,
+  VersionState,
+} from '@/shared/contracts/parameter-sets';
 import type { Actor, Context } from '../context';
 import { conflict, invalid, noSuch } from '../errors';
 import type { ParameterSet, SetVersion } from '../models/parameter-set';
 import { escapeLike, recordBy } from './audit';
 import { type Found, newestFirst } from './paging';
-
-const PEOPLE = ['createdBy', 'reviewedBy'];
+import { addVersion, checkEvidence, PEOPLE } from './versions';
 
 /** A set with its versions, newest first. */
 export interface WholeSet {
@@ -16,11 +19,18 @@ export interface WholeSet {
   versions: SetVersion[];
 }
 
-export async function listSets(ctx: Context, actor: Actor, query: PageQuery): Promise<Found<WholeSet>> {
-  const { workspaceId } = actor;
-  const where: WhereOptions<ParameterSet> = query.search
-    ? { workspaceId, name: { [Op.iLike]: `%${escapeLike(query.search)}%` } }
-    : { workspaceId };
+export async function listSets(
+  ctx: Context,
+  actor: Actor,
+  query: ParameterSetListQuery,
+): Promise<Found<WholeSet>> {
+  const { search, vehicleId, state } = query;
+  const where: WhereOptions<ParameterSet> = {
+    workspaceId: actor.workspaceId,
+    ...(search ? { name: { [Op.iLike]: `%${escapeLike(search)}%` } } : {}),
+    ...(vehicleId ? { vehicleId } : {}),
+    ...(state ? { id: { [Op.in]: withVersionIn(ctx, state) } } : {}),
+  };
   const { items, nextCursor } = await newestFirst(ctx.db.ParameterSet, query, where, {
     include: ['vehicle', 'createdBy'],
   });
@@ -34,27 +44,21 @@ export async function listSets(ctx: Context, actor: Actor, query: PageQuery): Pr
   return { items: items.map((set) => ({ set, versions: of(set) })), nextCursor };
 }
 
+function withVersionIn({ db: { sequelize } }: Context, state: VersionState) {
+  return sequelize.literal(`(SELECT set_id FROM set_versions WHERE state = ${sequelize.escape(state)})`);
+}
+
 /** Throws 404 for one that is not in the workspace. */
 export async function getSet(ctx: Context, actor: Actor, id: string): Promise<WholeSet> {
-  const set = await findSet(ctx, actor, id);
+  const where = { id, workspaceId: actor.workspaceId };
+  const set = await ctx.db.ParameterSet.findOne({ where, include: ['vehicle', 'createdBy'] });
+  if (!set) throw noSuch('parameter set');
   const versions = await ctx.db.SetVersion.findAll({
     where: { setId: id },
     include: PEOPLE,
     order: [['number', 'DESC']],
   });
   return { set, versions };
-}
-
-export async function getVersion(
-  ctx: Context,
-  actor: Actor,
-  id: string,
-  number: number,
-): Promise<SetVersion> {
-  await findSet(ctx, actor, id);
-  const version = await ctx.db.SetVersion.findOne({ where: { setId: id, number }, include: PEOPLE });
-  if (!version) throw noSuch('version of this parameter set');
-  return version;
 }
 
 /** Makes the set with its first version. Throws 409 for a name that is taken. */
@@ -69,106 +73,44 @@ export async function createSet(ctx: Context, actor: Actor, input: ParameterSetC
         { workspaceId, createdById, vehicleId, name },
         { transaction },
       );
-      await addVersion(ctx, actor, made, { ...version, parentNumber: undefined }, 1, transaction);
+      await addVersion(ctx, actor, made, { ...version, parentNumber: undefined }, transaction);
       return made;
     })
     .catch(nameTaken(name));
   return getSet(ctx, actor, set.id);
 }
 
-/** Numbers follow one another, also when two people save at once: the set's row is locked meanwhile. */
-export async function createVersion(
+/** Throws 409 for a name that is taken, and for another vehicle once a version is in review or has been released. */
+export async function changeSet(
   ctx: Context,
   actor: Actor,
   id: string,
-  input: VersionCreate,
-): Promise<SetVersion> {
-  const set = await findSet(ctx, actor, id);
-  await checkEvidence(ctx, actor, input);
-  const number = await ctx.db.transaction(async (transaction) => {
-    await ctx.db.ParameterSet.findByPk(id, {
-      lock: transaction.LOCK.UPDATE,
-      transaction,
-      rejectOnEmpty: true,
-    });
-    const newest: number | null = await ctx.db.SetVersion.max('number', {
-      where: { setId: id },
-      transaction,
-    });
-    const next = (newest ?? 0) + 1;
-    if (input.parentNumber && input.parentNumber >= next) {
-      const message = `There is no version ${input.parentNumber} of this set.`;
-      throw invalid(message, { errors: [{ path: 'parentNumber', message }] });
-    }
-    await addVersion(ctx, actor, set, input, next, transaction);
-    return next;
-  });
-  return getVersion(ctx, actor, id, number);
-}
-
-export async function renameSet(ctx: Context, actor: Actor, id: string, name: string): Promise<WholeSet> {
-  const set = await findSet(ctx, actor, id);
-  const before = set.name;
+  patch: ParameterSetPatch,
+): Promise<WholeSet> {
+  await getSet(ctx, actor, id);
+  if (patch.vehicleId) await checkVehicle(ctx, actor, patch.vehicleId);
   await ctx.db
     .transaction(async (transaction) => {
-      await set.update({ name }, { transaction });
-      await recordBy(ctx, actor, { action: 'set.renamed', subject: name, detail: { before } }, transaction);
+      const lock = transaction.LOCK.UPDATE;
+      const set = await ctx.db.ParameterSet.findByPk(id, { lock, transaction, rejectOnEmpty: true });
+      const { name, vehicleId } = set;
+      const moves = patch.vehicleId !== undefined && patch.vehicleId !== vehicleId;
+      if (moves) await refuseOnceSubmitted(ctx, set, transaction);
+      await set.update(patch, { transaction });
+      const detail = { before: { name, vehicleId }, after: { name: set.name, vehicleId: set.vehicleId } };
+      const what = { action: 'set.changed', subject: set.name, subjectId: id, detail };
+      await recordBy(ctx, actor, what, transaction);
     })
-    .catch(nameTaken(name));
+    .catch(nameTaken(patch.name ?? ''));
   return getSet(ctx, actor, id);
 }
 
-async function findSet(ctx: Context, actor: Actor, id: string): Promise<ParameterSet> {
-  const where = { id, workspaceId: actor.workspaceId };
-  const set = await ctx.db.ParameterSet.findOne({ where, include: ['vehicle', 'createdBy'] });
-  if (!set) throw noSuch('parameter set');
-  return set;
-}
-
-async function addVersion(
-  ctx: Context,
-  actor: Actor,
-  set: ParameterSet,
-  input: VersionCreate,
-  number: number,
-  transaction: Transaction,
-): Promise<void> {
-  const { note, parameters, outages, runId = null, recordingId = null, parentNumber = null } = input;
-  await ctx.db.SetVersion.create(
-    {
-      setId: set.id,
-      number,
-      note,
-      parameters,
-      outages,
-      runId,
-      recordingId,
-      parentNumber,
-      createdById: actor.userId,
-      reviewedById: null,
-    },
-    { transaction },
-  );
-  const what = { action: 'set.version-created', subject: set.name, detail: { number, note, runId } };
-  await recordBy(ctx, actor, what, transaction);
-}
-
-/** The run and the recording that a version names must be of the workspace. */
-async function checkEvidence(
-  ctx: Context,
-  actor: Actor,
-  { runId, recordingId }: VersionCreate,
-): Promise<void> {
-  const { workspaceId } = actor;
-  const [run, recording] = await Promise.all([
-    runId ? ctx.db.Run.count({ where: { id: runId, workspaceId } }) : 1,
-    recordingId ? ctx.db.Recording.count({ where: { id: recordingId, workspaceId, deletedAt: null } }) : 1,
-  ]);
-  const errors = [
-    ...(run ? [] : [{ path: 'runId', message: 'There is no such run in this workspace.' }]),
-    ...(recording ? [] : [{ path: 'recordingId', message: 'There is no such recording in this workspace.' }]),
-  ];
-  if (errors.length > 0) throw invalid(errors.map((error) => error.message).join(' '), { errors });
+async function refuseOnceSubmitted(ctx: Context, set: ParameterSet, transaction: Transaction) {
+  const state: VersionState[] = ['in-review', 'released', 'superseded'];
+  const version = await ctx.db.SetVersion.findOne({ where: { setId: set.id, state }, transaction });
+  if (!version) return;
+  const message = `“${set.name}” keeps its vehicle: version ${version.number} is in review or has been released for it. Make a set of its own for another vehicle.`;
+  throw conflict(message, { errors: [{ path: 'vehicleId', message }] });
 }
 
 async function checkVehicle(ctx: Context, actor: Actor, vehicleId: string | null): Promise<void> {

@@ -99,6 +99,11 @@ export const auditEntrySchema = z.object({
   actor: z.string(),
   action: z.string(),
   subject: z.string(),
-  detail: z.record(z.string(), z.unknown()),
+  subjectId: idSchema.nullable().describe('Of what it was done to, where that has an id.'),
+  address: z
+    .string()
+    .nullable()
+    .describe('Where the request came from; left out of the history of a version.'),
+  detail: z.record(z.string(), z.unknown()).describe('What it was about; `before` and `after` of a change.'),
 });
 export type AuditEntry = z.infer<typeof auditEntrySchema>;

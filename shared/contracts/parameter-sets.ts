@@ -1,6 +1,6 @@
 /** Named, versioned parameter sets. A version is draft, in review, returned, released or superseded. */
 import { z } from 'zod';
-import { idSchema, isoTimeSchema, nameSchema } from './common';
+import { idSchema, isoTimeSchema, nameSchema, pageQuerySchema } from './common';
 import { parametersSchema } from './parameters';
 import { outagesSchema } from './runs';
 
@@ -19,6 +19,38 @@ export const versionCreateSchema = z.object({
 });
 export type VersionCreate = z.infer<typeof versionCreateSchema>;
 export type VersionCreateInput = z.input<typeof versionCreateSchema>;
+
+/** For PATCH of a draft: what is left out stays. */
+export const versionPatchSchema = z.object({
+  note: noteSchema.optional(),
+  parameters: parametersSchema.optional().describe('Takes the place of all of them.'),
+  outages: outagesSchema.optional(),
+  runId: idSchema.nullable().optional(),
+  recordingId: idSchema.nullable().optional(),
+});
+export type VersionPatch = z.infer<typeof versionPatchSchema>;
+
+/** A new draft that begins as a copy of a version. */
+export const versionReviseSchema = z.object({
+  note: noteSchema.optional().describe('Left out: says which version it comes from.'),
+});
+export type VersionRevise = z.infer<typeof versionReviseSchema>;
+
+export const parameterSetPatchSchema = z.object({
+  name: nameSchema.optional(),
+  vehicleId: idSchema
+    .nullable()
+    .optional()
+    .describe('Fixed once a version is in review or has been released.'),
+});
+export type ParameterSetPatch = z.infer<typeof parameterSetPatchSchema>;
+
+/** GET /parameter-sets. `state`: sets that have a version in it. */
+export const parameterSetListQuerySchema = pageQuerySchema.extend({
+  vehicleId: idSchema.optional(),
+  state: versionStateSchema.optional(),
+});
+export type ParameterSetListQuery = z.infer<typeof parameterSetListQuerySchema>;
 
 export const parameterSetCreateSchema = z.object({
   name: nameSchema,
@@ -41,6 +73,8 @@ export const versionSchema = z.object({
   createdAt: isoTimeSchema,
   createdBy: z.string(),
   createdById: idSchema,
+  submittedAt: isoTimeSchema.nullable(),
+  submittedBy: z.string().nullable(),
   reviewComment: z.string().nullable(),
   reviewedBy: z.string().nullable(),
   reviewedAt: isoTimeSchema.nullable(),
@@ -62,9 +96,25 @@ export const parameterSetSchema = z.object({
     createdBy: z.string(),
   }),
   versionCount: z.number().int(),
+  releasedNumber: z.number().int().nullable().describe('The version that is released just now.'),
+  inReviewNumbers: z.array(z.number().int()).describe('Versions that wait for a review, newest first.'),
 });
 export type ParameterSet = z.infer<typeof parameterSetSchema>;
 export const parameterSetDetailSchema = parameterSetSchema.extend({ versions: z.array(versionSchema) });
 export type ParameterSetDetail = z.infer<typeof parameterSetDetailSchema>;
 
-export const reviewSchema = z.object({ comment: z.string().trim().max(4000).default('') });
+const reviewText = z.string().trim().max(4000);
+export const reviewSchema = z.object({ comment: reviewText.default('') });
+export type Review = z.infer<typeof reviewSchema>;
+/** POST …/return: who wrote it must learn why. */
+export const returnSchema = z.object({ comment: reviewText.min(1, 'Say what is to be mended.') });
+export type ReviewReturn = z.infer<typeof returnSchema>;
+/** POST …/release. */
+export const releaseSchema = reviewSchema.extend({
+  withoutRequirements: reviewText
+    .min(10, 'Say in a sentence why it may be released without requirements.')
+    .optional()
+    .describe('Why it is released though no requirement applies to its vehicle; refused where one does.'),
+});
+export type ReviewRelease = z.infer<typeof releaseSchema>;
+export type ReviewReleaseInput = z.input<typeof releaseSchema>;

@@ -12,6 +12,7 @@ const SIGNED_IN = 'signed in';
 const ALL = 'viewer, engineer, approver, admin';
 const TUNERS = 'engineer, approver, admin';
 const ADMINS = 'admin';
+const APPROVERS = 'approver';
 
 /** One line a route; a route that is missing here fails the test. */
 const TABLE: Record<string, string> = {
@@ -75,6 +76,16 @@ const TABLE: Record<string, string> = {
   'patch /parameter-sets/:id': TUNERS,
   'post /parameter-sets/:id/versions': TUNERS,
   'get /parameter-sets/:id/versions/:n': ALL,
+  'patch /parameter-sets/:id/versions/:n': TUNERS,
+  'delete /parameter-sets/:id/versions/:n': TUNERS,
+  'post /parameter-sets/:id/versions/:n/revise': TUNERS,
+  'post /parameter-sets/:id/versions/:n/submit': TUNERS,
+  'post /parameter-sets/:id/versions/:n/return': APPROVERS,
+  'post /parameter-sets/:id/versions/:n/release': APPROVERS,
+  'get /parameter-sets/:id/versions/:n/differences': ALL,
+  'get /parameter-sets/:id/versions/:n/history': ALL,
+  'get /parameter-sets/:id/versions/:n/comments': ALL,
+  'post /parameter-sets/:id/versions/:n/comments': ALL,
 };
 
 describe('access', () => {

@@ -23,6 +23,8 @@ const set = (recordingId: string | null): ParameterSetDetail => ({
   createdBy: 'Maren Holt',
   latest,
   versionCount: 1,
+  releasedNumber: null,
+  inReviewNumbers: [],
   versions: [
     {
       ...latest,
@@ -33,6 +35,8 @@ const set = (recordingId: string | null): ParameterSetDetail => ({
       recordingId,
       runId: null,
       parentNumber: null,
+      submittedAt: null,
+      submittedBy: null,
       reviewComment: null,
       reviewedBy: null,
       reviewedAt: null,
