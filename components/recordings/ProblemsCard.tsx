@@ -1,4 +1,5 @@
 import { StyleSheet, View } from 'react-native';
+import { Button } from '@/components/ui/Button';
 import { Card } from '@/components/ui/Card';
 import { Figures } from '@/components/ui/Figures';
 import { Text } from '@/components/ui/Text';
@@ -11,11 +12,15 @@ export interface ProblemsCardProps {
   title: string;
   tone: 'vermilion' | 'ochre';
   problems: readonly IntakeProblem[];
+  /** Accepts the remedy of a problem that offers one. */
+  onFix?: (code: string) => void;
+  /** Code of the one that is being accepted. */
+  fixing?: string | null;
   children?: React.ReactNode;
 }
 
 /** Why the files could not be used: what, in which line and column, and what to do. */
-export function ProblemsCard({ title, tone, problems, children }: ProblemsCardProps) {
+export function ProblemsCard({ title, tone, problems, onFix, fixing, children }: ProblemsCardProps) {
   const { palette } = useTheme();
   return (
     <Card bare style={{ borderLeftWidth: 3, borderLeftColor: palette[tone] }}>
@@ -27,6 +32,17 @@ export function ProblemsCard({ title, tone, problems, children }: ProblemsCardPr
       {problems.map((problem, at) => (
         <View key={at} style={[styles.problem, { borderTopColor: palette.rule }]}>
           <ProblemWords problem={problem} />
+          {problem.fix && onFix ? (
+            <View style={styles.fix}>
+              <Button
+                label={problem.fix.label}
+                kind="primary"
+                icon="check"
+                busy={fixing === problem.code}
+                onPress={() => onFix(problem.code)}
+              />
+            </View>
+          ) : null}
         </View>
       ))}
       {children ? <View style={[styles.problem, { borderTopColor: palette.rule }]}>{children}</View> : null}
@@ -65,5 +81,6 @@ export function placeOf(problem: IntakeProblem): string {
 
 const styles = StyleSheet.create({
   head: { padding: space.l },
+  fix: { flexDirection: 'row', flexWrap: 'wrap', paddingTop: space.s },
   problem: { padding: space.l, gap: space.xs, borderTopWidth: hairline },
 });

@@ -23,7 +23,7 @@ import { DownloadsCard } from './DownloadsCard';
 import { EditDialog } from './EditDialog';
 import { FactsCard } from './FactsCard';
 import { FilesCard } from './FilesCard';
-import { Health, RemediesCard } from './RemediesCard';
+import { Health, Problems, RemediesCard } from './RemediesCard';
 import { NotesCard } from './NotesCard';
 import { ProblemsCard } from './ProblemsCard';
 import { sourceLine } from './RecordingCard';
@@ -179,14 +179,21 @@ function State({ recording }: { recording: Recording }): ReactNode {
     );
   if (recording.status === 'rejected')
     return (
-      <ProblemsCard
+      <Problems
+        recording={recording}
         title={wasStopped(recording) ? 'Decoding was stopped' : 'The files could not be used'}
         tone="vermilion"
-        problems={recording.problems}
       >
         {mayWrite ? (
           <View style={styles.buttons}>
             {wasStopped(recording) ? <DecodeAgain recording={recording} /> : null}
+            {recording.previews.length > 0 && !wasStopped(recording) ? (
+              <Button
+                label="Correct the mapping"
+                icon="map"
+                onPress={() => router.push(mappingPath(recording.id))}
+              />
+            ) : null}
             <Button
               label="Upload the mended files"
               icon="upload"
@@ -194,7 +201,7 @@ function State({ recording }: { recording: Recording }): ReactNode {
             />
           </View>
         ) : null}
-      </ProblemsCard>
+      </Problems>
     );
   return null;
 }

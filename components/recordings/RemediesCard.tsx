@@ -10,6 +10,7 @@ import { isUnderWay, useRemedy } from '@/hooks/recordings';
 import { useCan } from '@/hooks/session';
 import type { Recording } from '@/shared/contracts/recordings';
 import { HealthCard, type HealthCardProps } from './HealthCard';
+import { ProblemsCard, type ProblemsCardProps } from './ProblemsCard';
 
 /** The health report with its remedies, for those who may accept them. */
 export function Health({
@@ -17,7 +18,30 @@ export function Health({
   ...rest
 }: { recording: Recording } & Pick<HealthCardProps, 'health' | 'onShow'>) {
   const mayWrite = useCan('recording:write');
-  const remedy = useRemedy(recording.id);
+  const { accept, accepting } = useAccept(recording.id);
+  const open = mayWrite && !isUnderWay(recording);
+  return <HealthCard {...rest} onFix={open ? (code) => void accept(code) : undefined} fixing={accepting} />;
+}
+
+/** What stopped the intake, with the remedies that can be accepted. */
+export function Problems({
+  recording,
+  ...rest
+}: { recording: Recording } & Omit<ProblemsCardProps, 'problems'>) {
+  const mayWrite = useCan('recording:write');
+  const { accept, accepting } = useAccept(recording.id);
+  return (
+    <ProblemsCard
+      {...rest}
+      problems={recording.problems}
+      onFix={mayWrite ? (code) => void accept(code) : undefined}
+      fixing={accepting}
+    />
+  );
+}
+
+function useAccept(id: string) {
+  const remedy = useRemedy(id);
   const toast = useToast();
   const accept = async (code: string) => {
     try {
@@ -27,14 +51,7 @@ export function Health({
       toast({ message: `Not accepted: ${messageOf(error)}` });
     }
   };
-  const open = mayWrite && !isUnderWay(recording);
-  return (
-    <HealthCard
-      {...rest}
-      onFix={open ? (code) => void accept(code) : undefined}
-      fixing={remedy.isPending ? remedy.variables : null}
-    />
-  );
+  return { accept, accepting: remedy.isPending ? remedy.variables : null };
 }
 
 /** Which remedies were accepted, and the way back; nothing where there are none. */

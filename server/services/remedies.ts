@@ -8,11 +8,15 @@ import { recordBy } from './audit';
 import { redecode } from './decoding';
 import { getReadyRecording, getRecording } from './recordings';
 
-/** Throws 409 for a recording that is not decoded, 422 for a finding that is not there or offers nothing. */
+/**
+ * Of a finding of the health report, or of the problem that stopped the intake. Throws 409 for a recording that is under
+ * way, 422 for a finding that is not there or offers nothing.
+ */
 export async function acceptRemedy(ctx: Context, actor: Actor, id: string, code: string): Promise<Recording> {
-  await getReadyRecording(ctx, actor, id);
   const recording = await getRecording(ctx, actor, id);
-  const fix = recording.health?.findings.find((finding) => finding.code === code && finding.fix)?.fix;
+  if (recording.status !== 'rejected') await getReadyRecording(ctx, actor, id);
+  const told = [...(recording.health?.findings ?? []), ...recording.problems];
+  const fix = told.find((one) => one.code === code && one.fix)?.fix;
   if (!fix) {
     const message = 'The health report has no such remedy any more: it may have been accepted already.';
     throw invalid(message, { errors: [{ path: 'code', message }] });

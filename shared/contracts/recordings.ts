@@ -233,6 +233,13 @@ export const recordingPatchSchema = z.object({
 });
 export type RecordingPatch = z.infer<typeof recordingPatchSchema>;
 
+/** A remedy that can be accepted as it stands. */
+export const mapFixSchema = z.object({
+  label: z.string().describe('What a button says.'),
+  map: channelMapSchema.describe('Parts that take the place of those in force.'),
+});
+export type MapFix = z.infer<typeof mapFixSchema>;
+
 /** Why a file could not be used: what, where, and what to do. `line` counts from 1 and includes the header. */
 export const intakeProblemSchema = z.object({
   code: z.string(),
@@ -241,6 +248,7 @@ export const intakeProblemSchema = z.object({
   column: z.string().nullable(),
   message: z.string(),
   remedy: z.string(),
+  fix: mapFixSchema.optional(),
 });
 export type IntakeProblem = z.infer<typeof intakeProblemSchema>;
 
@@ -275,13 +283,7 @@ export const healthFindingSchema = z.object({
   figure: z.object({ value: z.number(), unit: z.string() }).nullable(),
   intervalsS: z.array(z.tuple([z.number(), z.number()])),
   remedy: z.string().nullable(),
-  fix: z
-    .object({
-      label: z.string().describe('What a button says.'),
-      map: channelMapSchema.describe('Parts that take the place of those in force.'),
-    })
-    .optional()
-    .describe('A remedy that can be accepted as it stands.'),
+  fix: mapFixSchema.optional(),
 });
 export type HealthFinding = z.infer<typeof healthFindingSchema>;
 

@@ -3,11 +3,11 @@ import { type Api, type Caller, problemOf, startApi } from '../support/api';
 import { buildMember, decoded, upload } from '../support/api-factories';
 import { smallLogs } from '../support/api-logs';
 
-/** The stamps of a GNSS file moved by −1.5 s: its clock is late. */
-function lateLogs() {
+/** The stamps of a GNSS file moved by so many seconds. */
+function logsApart(byS: number) {
   const { imu, gnss } = smallLogs({ durationS: 200, seed: 31 });
   const [header, ...rows] = gnss.trim().split('\n');
-  const moved = rows.map((row) => row.replace(/^[^,]+/, (time) => String(Number(time) - 1.5)));
+  const moved = rows.map((row) => row.replace(/^[^,]+/, (time) => String(Number(time) + byS)));
   return { imu, gnss: [header, ...moved].join('\n') };
 }
 const codes = (recording: Recording) => recording.health?.findings.map(({ code }) => code);
@@ -19,7 +19,7 @@ describe('remedies', () => {
   beforeAll(async () => {
     api = await startApi();
     engineer = await buildMember(api, 'engineer');
-    late = await decoded(engineer, (await upload(engineer, {}, lateLogs())).id);
+    late = await decoded(engineer, (await upload(engineer, {}, logsApart(-1.5))).id);
   });
   afterAll(() => api.stop());
 
@@ -69,5 +69,22 @@ describe('remedies', () => {
     expect(mended.remedies).toHaveLength(1);
     await engineer.put(`/recordings/${late.id}/channel-map`, mended.channelMap!);
     expect((await decoded(engineer, late.id)).remedies).toEqual([]);
+  });
+
+  it.each([
+    ['an uptime beside UNIX time', 1_767_225_600, 'clocks-differ'],
+    ['two counters that began at different times', 8000, 'no-overlap'],
+  ])('bring together logs whose clocks share nothing: %s', async (_, byS, code) => {
+    const { id } = await upload(engineer, {}, logsApart(byS));
+    const refused = await decoded(engineer, id);
+    expect(refused).toMatchObject({ status: 'rejected', problems: [{ code, file: 'gnss' }] });
+    const answer = await engineer.post(`/recordings/${id}/remedies`, { code });
+    expect(answer.status).toBe(202);
+    const mended = await decoded(engineer, id);
+    expect(mended.status).toBe('ready');
+    expect(mended.channelMap?.gnss?.time.offsetS).toBeCloseTo(-byS, 0);
+    expect(codes(mended)).not.toContain('clock-offset');
+    await engineer.post(`/recordings/${id}/remedies/undo`);
+    expect(await decoded(engineer, id)).toMatchObject({ status: 'rejected', remedies: [] });
   });
 });

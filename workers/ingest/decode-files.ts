@@ -8,6 +8,7 @@ import type { AidKind } from '../recordings/aids';
 import { writeTable, type Columns, type WrittenFile } from '../recordings/arrow-file';
 import { gnssColumns } from '../recordings/load';
 import { storeKeys } from '../store/types';
+import { checkClocks } from './check-clocks';
 import { decodeAids } from './decode-aids';
 import { decodeImu } from './decode-imu';
 import { decodeGnss, decodeReference, noGnss } from './decode-track';
@@ -38,16 +39,17 @@ export async function decodeFiles(context: IntakeContext): Promise<DecodedFiles>
   const role = sensorRoles(map, context.heads).gyro;
   const originS = proposedOrigin(context, role, map.time);
   const gnss = context.map.gnss ? await decodeGnss(context, originS) : noGnss();
-  const imu = await decodeImu(context, originS, gnss.report);
+  const imu = await decodeImu(context, originS);
   const { facts } = imu;
-  const reference = await decodeReference(context, originS, [facts.startS, facts.endS]);
-  const aids = await decodeAids(context, originS);
   const axes = map.axes ?? context.vehicleAxes ?? IDENTITY_AXES;
   const fixes = gnssColumns(gnss.columns);
-  const matched = [
-    ...motionFindings(facts, fixes, { map: context.map, axes }),
-    ...defectFindings(facts, fixes),
-  ];
+  const inForce = { map: context.map, axes };
+  // The beginnings of two files need not meet.
+  if (context.rowLimit === Infinity && gnss.report.epochs > 0)
+    checkClocks(context, originS, facts, gnss.report, fixes, inForce);
+  const reference = await decodeReference(context, originS, [facts.startS, facts.endS]);
+  const aids = await decodeAids(context, originS);
+  const matched = [...motionFindings(facts, fixes, inForce), ...defectFindings(facts, fixes)];
   await context.breathe();
   const gnssFile = await writeTable(context.store, storeKeys.gnss(context.recordingId), gnss.columns);
   return {

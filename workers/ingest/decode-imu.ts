@@ -5,7 +5,6 @@ import { ArrowFileWriter, type WrittenFile } from '../recordings/arrow-file';
 import { IMU_COLUMNS, SAMPLING_KEY } from '../recordings/files';
 import { storeKeys } from '../store/types';
 import { headerOnly } from './csv';
-import type { GnssReport } from './gnss-health';
 import { imuConversion, samplingFault, stampShift } from './imu-conversion';
 import { ImuDecoder } from './imu-decoder';
 import { ImuHealth, type ImuFacts } from './imu-health';
@@ -14,7 +13,6 @@ import {
   eachBatch,
   merged,
   nominalInterval,
-  noOverlap,
   noteFindings,
   readerOf,
   type IntakeContext,
@@ -30,7 +28,7 @@ export interface DecodedImu {
 }
 
 /** Throws IntakeRejected; what was written by then is removed. */
-export async function decodeImu(context: IntakeContext, originS: number, gnss: GnssReport): Promise<DecodedImu> {
+export async function decodeImu(context: IntakeContext, originS: number): Promise<DecodedImu> {
   const map = context.map.imu!;
   checkSampling(context);
   const roles = sensorRoles(map, context.heads);
@@ -54,8 +52,6 @@ export async function decodeImu(context: IntakeContext, originS: number, gnss: G
     decoder.finish();
     const facts = health.finish();
     if (facts.samples < 2) throw partner && decoder.unpaired > 1 ? apart(decoder.unpaired) : headerOnly('imu');
-    // The beginnings of two files need not meet.
-    if (context.rowLimit === Infinity && gnss.epochs > 0) checkOverlap(facts, gnss);
     const findings = [...noteFindings(roles.gyro, notes), ...unpairedFindings(decoder.unpaired)];
     return { facts, findings, written: await writer.finish() };
   } catch (error) {
@@ -85,11 +81,6 @@ async function partnerOf(context: IntakeContext, originS: number): Promise<Senso
     exact: map.sampling === 'increment',
   });
 } // prettier-ignore
-
-function checkOverlap(imu: ImuFacts, gnss: GnssReport): void {
-  if (gnss.startS < imu.endS && gnss.endS > imu.startS) return;
-  throw noOverlap('gnss', [imu.startS, imu.endS], [gnss.startS, gnss.endS]);
-}
 
 const apart = (count: number) =>
   rejection(

@@ -16,6 +16,7 @@ import {
   nominalInterval,
   noOverlap,
   noteFindings,
+  originOf,
   readerOf,
   sharedOrigin,
   type IntakeContext,
@@ -34,7 +35,9 @@ export interface DecodedGnss {
 /** Throws IntakeRejected. */
 export async function decodeGnss(context: IntakeContext, imuOriginS: number): Promise<DecodedGnss> {
   const map = context.map.gnss!;
-  const originS = sharedOrigin(context, 'gnss', map.time, imuOriginS);
+  // Clocks that differ are told of when both logs have been read, and their motion compared; a preview tells at once.
+  const origin = context.rowLimit === Infinity ? originOf : sharedOrigin;
+  const originS = origin(context, 'gnss', map.time, imuOriginS);
   const conversion = new TrajectoryConversion(map, 'gnss');
   const collector = new GnssCollector(
     readerOf(context, 'gnss', clockOf(context, 'gnss', map.time, originS), map.time, conversion.columns),

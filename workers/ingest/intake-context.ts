@@ -1,5 +1,5 @@
 /** What all decoders of one intake share: files, heads, map; clocks on one axis; rows with progress and cancel. */
-import type { ChannelMap, FileRole, HealthFinding, TimeMap } from '@/shared/contracts/recordings';
+import type { ChannelMap, FileRole, HealthFinding, MapFix, TimeMap } from '@/shared/contracts/recordings';
 import type { AxisMap } from '@/shared/contracts/vehicles';
 import type { Store } from '../store/types';
 import { columnIndex } from './cells';
@@ -112,20 +112,40 @@ export function proposedOrigin(context: IntakeContext, role: FileRole, time: Tim
   return 0;
 }
 
-/**
- * The zero for another file. Two tell the same time only when both clocks are absolute or both are plain, unless the map
- * says how they differ. Throws IntakeRejected.
- */
+/** The zero for another file. Throws IntakeRejected where its clock and the IMU's have nothing in common. */
 export function sharedOrigin(context: IntakeContext, role: FileRole, time: TimeMap, originS: number): number {
-  const isAbsolute = proposedOrigin(context, role, time) !== 0;
-  if (isAbsolute !== (originS !== 0) && time.offsetS === 0)
-    throw rejection(
-      'clocks-differ', { file: role, column: time.columns[0]! },
-      `The ${FILE_NAMES[role]} tells ${isAbsolute ? 'an absolute time' : 'seconds since some start'}, the IMU file ${isAbsolute ? 'seconds since some start' : 'an absolute time'}.`,
-      `Give the seconds that bring the ${FILE_NAMES[role]} onto the IMU’s axis as its offset on the mapping screen.`,
-    ); // prettier-ignore
-  return isAbsolute ? originS : 0;
+  if (clocksDiffer(context, role, time, originS)) throw unlikeClocks(context, role, time);
+  return originOf(context, role, time, originS);
 }
+
+/** Two files tell the same time only when both clocks are absolute or both are plain, unless the map says how they differ. */
+export const clocksDiffer = (
+  context: IntakeContext,
+  role: FileRole,
+  time: TimeMap,
+  originS: number,
+): boolean => isAbsolute(context, role, time) !== (originS !== 0) && time.offsetS === 0;
+
+/** The zero for another file, whether or not its clock is of the IMU's kind. */
+export const originOf = (context: IntakeContext, role: FileRole, time: TimeMap, originS: number): number =>
+  isAbsolute(context, role, time) ? originS : 0;
+
+/** `fix`: how they are brought together, where the motion tells. */
+export function unlikeClocks(context: IntakeContext, role: FileRole, time: TimeMap, fix?: MapFix) {
+  const [own, imu] = isAbsolute(context, role, time) ? KINDS : [...KINDS].reverse();
+  return rejection(
+    'clocks-differ', { file: role, column: time.columns[0]! },
+    `The ${FILE_NAMES[role]} tells ${own}, the IMU file ${imu}.`,
+    fix ? BY_MOTION : `Give the seconds that bring the ${FILE_NAMES[role]} onto the IMU’s axis as its offset on the mapping screen.`,
+    fix,
+  ); // prettier-ignore
+}
+const KINDS = ['an absolute time', 'seconds since some start'] as const;
+const BY_MOTION =
+  'Both logs show the same motion: accept the shift that lays them over one another, or give another one on the mapping screen.';
+
+const isAbsolute = (context: IntakeContext, role: FileRole, time: TimeMap) =>
+  proposedOrigin(context, role, time) !== 0;
 
 /** Median interval of the rows that hold any of `columns`, s. */
 export function nominalInterval(
@@ -148,12 +168,18 @@ export function nominalInterval(
 
 export const merged = (context: IntakeContext) => isMerged(context.heads);
 
-export function noOverlap(role: 'gnss' | 'reference', imu: [number, number], other: [number, number]) {
+export function noOverlap(
+  role: 'gnss' | 'reference',
+  imu: [number, number],
+  other: [number, number],
+  fix?: MapFix,
+) {
   const span = ([from, to]: [number, number]) => `${seconds(from)} to ${seconds(to)}`;
   return rejection(
     'no-overlap', { file: role },
     `The ${FILE_NAMES[role]} and the IMU file do not overlap in time: the IMU runs from ${span(imu)}, the ${FILE_NAMES[role]} from ${span(other)} on the same axis.`,
-    `Check that both belong to the same drive; where their clocks differ, give the offset on the mapping screen: ${seconds(imu[0] - other[0])} on the times of the ${FILE_NAMES[role]} would make both begin together.`,
+    fix ? BY_MOTION : `Check that both belong to the same drive; where their clocks differ, give the offset on the mapping screen: ${seconds(imu[0] - other[0])} on the times of the ${FILE_NAMES[role]} would make both begin together.`,
+    fix,
   ); // prettier-ignore
 }
 

@@ -1,5 +1,5 @@
 /** What is wrong with a file, where, and what to do. */
-import type { FileRole, IntakeProblem } from '@/shared/contracts/recordings';
+import type { FileRole, IntakeProblem, MapFix } from '@/shared/contracts/recordings';
 
 /** The files cannot be used as they are; nothing of them is kept but the raw upload. */
 export class IntakeRejected extends Error {
@@ -20,6 +20,7 @@ export const problem = (
   place: ProblemPlace,
   message: string,
   remedy: string,
+  fix?: MapFix,
 ): IntakeProblem => ({
   code,
   file: place.file ?? null,
@@ -27,6 +28,7 @@ export const problem = (
   column: place.column ?? null,
   message,
   remedy,
+  ...(fix && { fix }),
 });
 
 /** An IntakeRejected with one problem, to be thrown. */

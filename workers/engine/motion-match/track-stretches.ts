@@ -93,7 +93,7 @@ function stretchOf(points: readonly Point[], kind: MotionKind): TrackStretch {
   };
 }
 
-interface Point {
+export interface Point {
   fromS: number;
   toS: number;
   speed: number;
@@ -101,7 +101,7 @@ interface Point {
   sigma: number;
 }
 
-function thinned(gnss: GnssColumns, source: MotionSource): number[] {
+export function thinned(gnss: GnssColumns, source: MotionSource): number[] {
   const rows: number[] = [];
   let last = -Infinity;
   for (let j = 0; j < gnss.timeS.length; j += 1) {
@@ -116,7 +116,7 @@ function thinned(gnss: GnssColumns, source: MotionSource): number[] {
   return rows;
 }
 
-const velocityPoints = (gnss: GnssColumns, rows: readonly number[]): Point[] =>
+export const velocityPoints = (gnss: GnssColumns, rows: readonly number[]): Point[] =>
   rows.map((j) => {
     const [north, east] = [gnss.velocityNed[0][j]!, gnss.velocityNed[1][j]!];
     const time = gnss.timeS[j]!;
@@ -130,7 +130,7 @@ const velocityPoints = (gnss: GnssColumns, rows: readonly number[]): Point[] =>
   });
 
 /** Between neighbouring positions: mean velocity over the interval. */
-function chords(gnss: GnssColumns, rows: readonly number[]): Point[] {
+export function chords(gnss: GnssColumns, rows: readonly number[]): Point[] {
   const points: Point[] = [];
   for (let i = 1; i < rows.length; i += 1) {
     const [a, b] = [rows[i - 1]!, rows[i]!];
@@ -259,5 +259,5 @@ export function meanVertical({ timeS, accel }: MotionIntegrals): number[] {
   return total.map((value) => -value / length);
 }
 
-const along = (axes: MotionIntegrals['gyro'], direction: readonly number[]): Float64Array =>
+export const along = (axes: MotionIntegrals['gyro'], direction: readonly number[]): Float64Array =>
   axes[0].map((x, k) => direction[0]! * x + direction[1]! * axes[1][k]! + direction[2]! * axes[2][k]!);
