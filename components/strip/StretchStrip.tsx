@@ -52,8 +52,8 @@ export function StretchStrip({ strip, height, found, chosen, onChoose }: Stretch
       change: choose,
       select: () => undefined,
       cursor: setAt,
-      tap: (timeS) => {
-        const stretch = stretchAt(found, timeS);
+      tap: (timeS, reachS) => {
+        const stretch = stretchAt(found, timeS, reachS);
         if (stretch) onChoose(stretch, true);
       },
     },

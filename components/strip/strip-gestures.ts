@@ -15,8 +15,8 @@ export interface StripGestureHost<W extends WindowLimits> {
   change: (windows: W[], settled: boolean) => void;
   select: (index: number | null) => void;
   cursor: (timeS: number | null) => void;
-  /** A press without a move on anything but an edge. */
-  tap?: (timeS: number) => void;
+  /** A press without a move, wherever it was; `reachS` is how far beside it still counts. */
+  tap?: (timeS: number, reachS: number) => void;
 }
 
 /** What lies under `x` px: a window's edge before its body; `reachPx` is how far beside an edge still counts. */
@@ -135,8 +135,8 @@ export function bindStripGestures<W extends WindowLimits>(
       if (!ended.hit) {
         host.select(null);
         host.cursor(timeAt(x));
-        host.tap?.(timeAt(x));
       }
+      host.tap?.(timeAt(x), timeAt(x + reach(event) / 2) - timeAt(x));
       return;
     }
     if (!host.editable()) return;

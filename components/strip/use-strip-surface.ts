@@ -24,7 +24,7 @@ export function useStripSurface<W extends WindowLimits>(host: StripGestureHost<W
       change: (...change) => latest.current.change(...change),
       select: (index) => latest.current.select(index),
       cursor: (timeS) => latest.current.cursor(timeS),
-      tap: (timeS) => latest.current.tap?.(timeS),
+      tap: (...tap) => latest.current.tap?.(...tap),
     });
   }, [ready]);
   return surface;

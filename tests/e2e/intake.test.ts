@@ -10,7 +10,7 @@ import { STANDARD_GRAVITY_M_S2 } from '@/shared/units';
 import { launchBrowser, openWindow, picture, type ViewportName } from '@/tests/support/browser';
 import { writeLogs, type LogFiles } from '@/tests/support/log-files';
 import { Stack } from '@/tests/support/stack';
-import { button, field, heading, signIn, uploadLogs } from './steps';
+import { button, chooseFile, field, heading, signIn, uploadLogs } from './steps';
 
 const DECODED_MS = 60_000;
 const GNSS_LATE_S = 2;
@@ -99,10 +99,39 @@ describe.each<ViewportName>(['phone', 'wide'])('on the %s screen', (viewport) =>
     expect(violations.flatMap(({ id, nodes }) => nodes.map(({ html }) => `${id}: ${html}`))).toEqual([]);
   });
 
+  test('the map is saved as a template of a vehicle, and shown on its page later', async () => {
+    await button(page, 'Save as template').click();
+    const dialog = page.getByRole('dialog');
+    await field(page, 'Name').fill(`Nameless logger, ${viewport}`);
+    await dialog.getByLabel('Vehicle').selectOption({ index: 1 });
+    await picture(page, 'intake', `${viewport}-template`);
+    await button(page, 'Save template').click();
+    await page.getByText('is saved').waitFor();
+  });
+
   test('the map is used, and the recording becomes ready', async () => {
     await button(page, 'Use this map and decode').click();
     await button(page, 'Open in bench').waitFor({ timeout: DECODED_MS });
     expect(await page.getByText('Stops its use').count()).toBe(0);
+  });
+
+  test('the template maps the next upload of the vehicle', async () => {
+    await page.goto('/recordings/upload');
+    await chooseFile(page, 'IMU log', nameless.imu);
+    await chooseFile(page, 'GNSS log', nameless.gnss);
+    await field(page, 'Name').fill(`By template, ${viewport}`);
+    await page.getByLabel('Vehicle').selectOption({ index: 1 });
+    await page.getByLabel('Use a mapping template').selectOption(`Nameless logger, ${viewport}`);
+    await button(page, 'Upload').click();
+    await heading(page, `By template, ${viewport}`).waitFor();
+    await button(page, 'Open in bench').waitFor({ timeout: DECODED_MS });
+    await page.goto('/vehicles');
+    await page
+      .getByRole('link', { name: /Crawler 1/ })
+      .first()
+      .click();
+    await page.getByText(`Nameless logger, ${viewport}`).waitFor();
+    await picture(page, 'intake', `${viewport}-templates`);
   });
 
   test('a clock that is off is found, shifted, and shifted back', async () => {
@@ -125,9 +154,7 @@ describe.each<ViewportName>(['phone', 'wide'])('on the %s screen', (viewport) =>
 
   test('one log that holds both sensors goes in alone', async () => {
     await page.goto('/recordings/upload');
-    const chooser = page.waitForEvent('filechooser');
-    await button(page, 'Choose the IMU log').click();
-    await (await chooser).setFiles(inRoot('fixtures', 'logs', 'merged.csv'));
+    await chooseFile(page, 'IMU log', inRoot('fixtures', 'logs', 'merged.csv'));
     await field(page, 'Name').fill(`One log, ${viewport}`);
     await button(page, 'Upload').click();
     await heading(page, `One log, ${viewport}`).waitFor();

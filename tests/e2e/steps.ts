@@ -23,13 +23,14 @@ export async function uploadLogs(page: Page, name: string, files: LogFiles): Pro
 /** Picks the files and presses Upload. */
 export async function sendLogs(page: Page, name: string, files: LogFiles): Promise<void> {
   await page.goto('/recordings/upload');
-  await choose(page, 'IMU log', files.imu);
-  await choose(page, 'GNSS log', files.gnss);
+  await chooseFile(page, 'IMU log', files.imu);
+  await chooseFile(page, 'GNSS log', files.gnss);
   await field(page, 'Name').fill(name);
   await button(page, 'Upload').click();
 }
 
-async function choose(page: Page, what: string, file: string): Promise<void> {
+/** Picks one file of the upload screen. */
+export async function chooseFile(page: Page, what: string, file: string): Promise<void> {
   const chooser = page.waitForEvent('filechooser');
   await button(page, `Choose the ${what}`).click();
   await (await chooser).setFiles(file);

@@ -39,6 +39,7 @@ export async function screensOf(server: string): Promise<Screen[]> {
     signedIn('today', '/', heading('Today')),
     signedIn('recordings', '/recordings', words(recording.name)),
     signedIn('recording', `/recordings/${recording.id}`, heading(recording.name)),
+    signedIn('mapping', `/recordings/${recording.id}/mapping`, heading('IMU file')),
     signedIn('noise', `/recordings/${recording.id}/noise`, heading('Gyro: Allan deviation')),
     signedIn('upload', '/recordings/upload', heading('Upload a recording')),
     signedIn('bench', `/bench/${recording.id}?w=${windows}`, runDone),

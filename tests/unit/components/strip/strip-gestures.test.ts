@@ -157,6 +157,8 @@ describe('choosing one stretch', () => {
     expect(stretchAt(found, 150)).toEqual([100, 200]);
     expect(stretchAt(found, 300)).toEqual([0, 400]);
     expect(stretchAt(found, 450)).toBeNull();
+    expect(stretchAt(found, 470, 40)).toEqual([500, 600]);
+    expect(stretchAt(found, 450, 40)).toBeNull();
   });
 });
 
