@@ -43,6 +43,8 @@ export interface FrameHead {
   extentS: [number, number];
   /** Origin of north/east/down in `state`, degrees and metres. */
   origin: { latDeg: number; lonDeg: number; heightM: number };
+  /** In GET /runs/:id/series: no kept row of the stretch was left out, so that a finer one would show no more. */
+  whole?: boolean;
 }
 
 export interface Frame {

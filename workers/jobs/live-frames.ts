@@ -2,6 +2,7 @@
 import { encodeFrame, type FrameTables } from '@/shared/contracts/frames';
 import type { EngineRun } from '../engine/types';
 import { coastingColumns, innovationColumns, stateColumns } from './frame-tables';
+import { drawnStates, Standouts } from './standouts';
 import { bucketFor, extremeRows, strideFor, strideRows } from './thinning';
 
 export interface LiveFramesOptions {
@@ -18,6 +19,9 @@ export class LiveFrames {
   private readonly sent = { solution: 0, position: 0, velocity: 0, coasting: 0 };
   private readonly stride: number;
   private readonly bucket: number;
+  private readonly standouts = new Standouts();
+  /** Rows of the solution that their ranges know. */
+  private seen = 0;
   private seq = 0;
 
   constructor(
@@ -48,9 +52,8 @@ export class LiveFrames {
   private newTables(last: boolean): FrameTables {
     const { tables, counts, origin } = this.run;
     const found: FrameTables = {};
-    const state = strideRows(this.sent.solution, counts.solution, this.stride, last);
+    const state = this.stateRows(last);
     if (state.length > 0) found.state = stateColumns(tables.solution, state, origin);
-    this.sent.solution = counts.solution;
     for (const group of ['position', 'velocity'] as const) {
       const to = last ? counts[group] : wholeBuckets(counts[group], this.bucket);
       const rows = extremeRows(tables[group], this.sent[group], to, this.bucket);
@@ -61,6 +64,21 @@ export class LiveFrames {
     if (coasting.length > 0) found.coasting = coastingColumns(tables.coasting, coasting);
     this.sent.coasting = counts.coasting;
     return found;
+  }
+
+  /** Strided rows at once; what stands out between two of them when the second is there. */
+  private stateRows(last: boolean): number[] {
+    const { tables, counts } = this.run;
+    const { stride, sent } = this;
+    const available = counts.solution;
+    const columns = drawnStates(tables.solution);
+    this.standouts.see(columns, this.seen, available);
+    this.seen = available;
+    const to = last ? available : Math.floor(Math.max(0, available - 1) / stride) * stride;
+    const rows = this.standouts.rows(columns, sent.solution, to, stride, available);
+    if (last && available > 0 && rows.at(-1) !== available - 1) rows.push(available - 1);
+    sent.solution = Math.max(sent.solution, to);
+    return rows;
   }
 }
 
