@@ -29,7 +29,8 @@ const RIVAL_S = 6;
 const RIVAL_LOG_LIKELIHOOD = 15;
 /** Steps in which the match is made finer than a second, and what they leave in doubt, s. */
 const PHASE_S = 0.25;
-const COARSE_SIGMA_S = 0.3;
+const DRAGS_PER_S = [0, 0.1, 0.2, 0.3, 0.4, 0.5, 0.6];
+const COARSE_SIGMA_S = 0.1;
 
 /** Null where the motion does not tell: too little of it, or several shifts fit alike. */
 export function matchClocks(motion: MotionIntegrals, gnss: GnssColumns): MatchedClocks | null {
@@ -49,15 +50,19 @@ export function matchClocks(motion: MotionIntegrals, gnss: GnssColumns): Matched
 
 /**
  * What is left below a second: the seconds of both logs are begun later and later, in steps; the parabola through the
- * summed scores around the best of the differences.
+ * summed scores around the best of the differences. Drag makes a hovering vehicle lean before it accelerates: the drag
+ * that fits best is taken.
  */
 function betweenSeconds(motion: MotionIntegrals, gnss: GnssColumns, offsetS: number): number {
   const phases = Array.from({ length: 1 / PHASE_S }, (_, i) => i * PHASE_S);
-  const seen = phases.map((afterS) => liveliest(gnssTraces(gnss, afterS))).filter((one) => one !== null);
   const differences = Array.from({ length: 2 / PHASE_S + 1 }, (_, i) => i * PHASE_S - 1);
-  const scores = differences.map((difference) =>
-    seen.reduce((sum, one) => sum + scoreAt(motion, one, offsetS + difference), 0),
-  );
+  const tried = DRAGS_PER_S.map((drag) => {
+    const seen = phases
+      .map((afterS) => liveliest(gnssTraces(gnss, afterS, drag)))
+      .filter((one) => one !== null);
+    return differences.map((by) => seen.reduce((sum, one) => sum + scoreAt(motion, one, offsetS + by), 0));
+  });
+  const scores = tried.reduce((best, one) => (Math.max(...one) > Math.max(...best) ? one : best));
   const at = scores.indexOf(Math.max(...scores));
   return differences[at]! + vertex(scores[at - 1], scores[at]!, scores[at + 1]) * PHASE_S;
 }

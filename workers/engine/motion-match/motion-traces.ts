@@ -48,8 +48,11 @@ export function imuTraces(motion: MotionIntegrals, afterS = 0): Traces | null {
   };
 }
 
-/** The same from velocities, or from positions where there are none; null where fewer than two say anything. */
-export function gnssTraces(gnss: GnssColumns, afterS = 0): Traces | null {
+/**
+ * The same from velocities, or from positions where there are none; null where fewer than two say anything. Hovering
+ * flight leans by (acceleration + drag · velocity) ÷ gravity; `drag` in 1/s.
+ */
+export function gnssTraces(gnss: GnssColumns, afterS = 0, drag = 0): Traces | null {
   const points = velocityPoints(gnss, thinned(gnss, 'velocity'));
   const known = points.length > 1 ? points : chords(gnss, thinned(gnss, 'position'));
   if (known.length < 2) return null;
@@ -65,10 +68,10 @@ export function gnssTraces(gnss: GnssColumns, afterS = 0): Traces | null {
   for (let k = 0; k < seconds; k += 1) {
     const [a, b, before, after] = [v(k), v(k + 1), v(k - 1), v(k + 2)];
     acceleration[k] = Math.hypot(b.north - a.north, b.east - a.east);
-    // Hovering flight leans by acceleration ÷ gravity; both at the ends of the second, by central differences.
-    const north = after.north - a.north - (b.north - before.north);
-    const east = after.east - a.east - (b.east - before.east);
-    tilt[k] = Math.hypot(north, east) / 2 / STANDARD_GRAVITY_M_S2;
+    // The acceleration at both ends of the second, by central differences.
+    const north = (after.north - a.north - (b.north - before.north)) / 2 + drag * (b.north - a.north);
+    const east = (after.east - a.east - (b.east - before.east)) / 2 + drag * (b.east - a.east);
+    tilt[k] = Math.hypot(north, east) / STANDARD_GRAVITY_M_S2;
     const moving = Math.min(Math.hypot(a.north, a.east), Math.hypot(b.north, b.east)) > LEAST_SPEED;
     if (moving) turn[k] = wrapAngle(Math.atan2(b.east, b.north) - Math.atan2(a.east, a.north));
   }
