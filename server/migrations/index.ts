@@ -7,8 +7,10 @@ import { addRemedies } from './2026-12-01-add-remedies';
 import { addSensorModel } from './2026-12-01-add-sensor-model';
 import { addSmoothingAndBudget } from './2026-12-01-add-smoothing-and-budget';
 import { allowSecondImuFile } from './2026-12-01-allow-second-imu-file';
+import { createRequirements } from './2026-12-01-create-requirements';
 import { createMapTemplates } from './2026-12-01-create-map-templates';
 import { reviewVersions } from './2026-12-01-review-versions';
+import { addPreferences } from './2026-12-01-add-preferences';
 import { runMigrations, type Migration } from './runner';
 
 export const MIGRATIONS: readonly Migration[] = [
@@ -21,7 +23,9 @@ export const MIGRATIONS: readonly Migration[] = [
   allowSecondImuFile,
   addRemedies,
   createMapTemplates,
+  addPreferences,
   reviewVersions,
+  createRequirements,
 ];
 
 /** Brings the database at `url` up to date; answers the names that were applied. */

@@ -6,6 +6,7 @@ import { bindMapTemplate } from './map-template';
 import { bindMessages } from './messages';
 import { bindParameterSet, bindSetVersion } from './parameter-set';
 import { bindRecording, bindRecordingFile } from './recording';
+import { bindRequirement, bindRequirementRecording } from './requirement';
 import { bindRun } from './run';
 import { bindVehicle } from './vehicle';
 import { bindVersionComment } from './version-comment';
@@ -43,6 +44,8 @@ function bindModels(sequelize: Sequelize) {
     Run: bindRun(sequelize),
     ParameterSet: bindParameterSet(sequelize),
     SetVersion: bindSetVersion(sequelize),
+    Requirement: bindRequirement(sequelize),
+    RequirementRecording: bindRequirementRecording(sequelize),
     VersionComment: bindVersionComment(sequelize),
   };
   const { MapTemplate, Recording, RecordingFile, Run, ParameterSet, SetVersion, User, Vehicle } = models;
@@ -59,5 +62,10 @@ function bindModels(sequelize: Sequelize) {
   SetVersion.belongsTo(User, { as: 'submittedBy', foreignKey: 'submittedById' });
   SetVersion.belongsTo(User, { as: 'reviewedBy', foreignKey: 'reviewedById' });
   models.VersionComment.belongsTo(User, { as: 'createdBy', foreignKey: 'createdById' });
+  const { Requirement, RequirementRecording } = models;
+  Requirement.belongsTo(Vehicle, { as: 'vehicle', foreignKey: 'vehicleId' });
+  Requirement.belongsTo(User, { as: 'createdBy', foreignKey: 'createdById' });
+  Requirement.hasMany(RequirementRecording, { as: 'recordings', foreignKey: 'requirementId' });
+  RequirementRecording.belongsTo(Recording, { as: 'recording', foreignKey: 'recordingId' });
   return models;
 }

@@ -4,6 +4,7 @@ import { mapTemplateRoutes } from './map-templates';
 import { parameterSetRoutes } from './parameter-sets';
 import { recordingFileRoutes } from './recording-files';
 import { recordingRoutes } from './recordings';
+import { requirementRoutes } from './requirements';
 import type { Route } from './route';
 import { runRoutes } from './runs';
 import { statusRoutes } from './status';
@@ -22,4 +23,5 @@ export const ROUTES: readonly Route[] = [
   ...runRoutes,
   ...parameterSetRoutes,
   ...versionRoutes,
+  ...requirementRoutes,
 ];

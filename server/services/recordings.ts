@@ -204,7 +204,7 @@ export async function previewMap(
   });
 }
 
-/** Deletes it with its runs. Throws 409 while a version that has left the draft state rests on it. */
+/** Deletes it with its runs. Throws 409 while a requirement is judged on it, or a version that has left the draft state rests on it. */
 export async function deleteRecording(ctx: Context, actor: Actor, id: string): Promise<void> {
   const recording = await getRecording(ctx, actor, id);
   await ctx.db.transaction(async (transaction) => {
@@ -264,6 +264,13 @@ async function refuseWhileRested(
 ): Promise<void> {
   const { id } = recording;
   const runs = await ctx.db.Run.findAll({ where: { recordingId: id }, attributes: ['id'], transaction });
+  const judged = await ctx.db.RequirementRecording.findOne({ where: { recordingId: id }, transaction });
+  if (judged) {
+    const requirement = await ctx.db.Requirement.findByPk(judged.requirementId, { transaction });
+    throw inUse(
+      `“${recording.name}” cannot be deleted: the requirement “${requirement?.name}” is judged on it. Take it out of the requirement first.`,
+    );
+  }
   const version = await ctx.db.SetVersion.findOne({
     where: {
       state: { [Op.ne]: 'draft' },

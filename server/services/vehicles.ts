@@ -75,14 +75,17 @@ export async function changeVehicle(
   return getVehicle(ctx, actor, id);
 }
 
-/** Throws 409 while recordings or parameter sets name it. */
+/** Throws 409 while recordings, parameter sets or requirements name it. */
 export async function deleteVehicle(ctx: Context, actor: Actor, id: string): Promise<void> {
   const vehicle = await findVehicle(ctx, actor.workspaceId, id);
   await ctx.db.transaction(async (transaction) => {
     await vehicle.reload({ lock: transaction.LOCK.UPDATE, transaction });
     const recordings = await ctx.db.Recording.count({ where: { vehicleId: id }, transaction });
     const sets = await ctx.db.ParameterSet.count({ where: { vehicleId: id }, transaction });
-    if (recordings + sets > 0) throw inUse(whatUsesIt(vehicle.name, recordings, sets));
+    const requirements = await ctx.db.Requirement.count({ where: { vehicleId: id }, transaction });
+    if (recordings + sets + requirements > 0) {
+      throw inUse(whatUsesIt(vehicle.name, recordings, sets, requirements));
+    }
     await vehicle.destroy({ transaction });
     await recordBy(ctx, actor, { action: 'vehicle.deleted', subject: vehicle.name }, transaction);
   });
@@ -106,8 +109,12 @@ async function countRecordings(ctx: Context, ids: string[]): Promise<Map<string,
   return new Map(rows.map((row) => [String(row.vehicleId), row.count]));
 }
 
-function whatUsesIt(name: string, recordings: number, sets: number): string {
-  const parts = [plural(recordings, 'recording'), plural(sets, 'parameter set')].filter(Boolean);
+function whatUsesIt(name: string, recordings: number, sets: number, requirements: number): string {
+  const parts = [
+    plural(recordings, 'recording'),
+    plural(sets, 'parameter set'),
+    plural(requirements, 'requirement'),
+  ].filter(Boolean);
   return `“${name}” cannot be deleted: ${parts.join(' and ')} use it. Give them another vehicle, or delete them first.`;
 }
 

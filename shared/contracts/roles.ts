@@ -5,7 +5,13 @@ export const roleSchema = z.enum(['viewer', 'engineer', 'approver', 'admin']);
 export type Role = z.infer<typeof roleSchema>;
 
 const READ = ['workspace:read', 'export:read', 'released-set:read', 'comment:write'] as const;
-const ENGINEER = ['recording:write', 'vehicle:write', 'run:create', 'set:draft'] as const;
+const ENGINEER = [
+  'recording:write',
+  'vehicle:write',
+  'run:create',
+  'set:draft',
+  'requirement:write',
+] as const;
 const APPROVER = ['set:review'] as const;
 const ADMIN = ['team:manage', 'token:manage', 'audit:read', 'mail:read', 'recording:delete'] as const;
 
