@@ -1,5 +1,6 @@
 /** Everything a service may need from outside, handed down; tests swap members. */
 import type { Logger } from 'pino';
+import type { Preferences } from '@/shared/contracts/preferences';
 import type { Role } from '@/shared/contracts/roles';
 import type { Pool, Store } from '@/workers';
 import type { Config } from './config';
@@ -44,6 +45,7 @@ export interface Person {
   email: string;
   /** Where the request came from. */
   address: string | null;
+  preferences: Preferences;
   memberships: { workspaceId: string; workspaceName: string; role: Role }[];
 }
 

@@ -4,6 +4,8 @@ export const RAD_PER_DEG = Math.PI / 180;
 /** Standard gravity, m/s², exact by definition (3rd CGPM, 1901). */
 export const STANDARD_GRAVITY_M_S2 = 9.80665;
 export const KNOT_M_S = 1852 / 3600;
+/** International foot, m, exact by definition. */
+export const FOOT_M = 0.3048;
 
 export const degToRad = (deg: number) => deg * RAD_PER_DEG;
 export const radToDeg = (rad: number) => rad / RAD_PER_DEG;
@@ -43,7 +45,10 @@ export const QUANTITIES = {
     { symbol: 'mg', toSi: STANDARD_GRAVITY_M_S2 * 1e-3 },
     { symbol: 'm/s²', toSi: 1 },
   ],
-  length: [{ symbol: 'm', toSi: 1 }],
+  length: [
+    { symbol: 'm', toSi: 1 },
+    { symbol: 'ft', toSi: FOOT_M },
+  ],
   speed: [
     { symbol: 'm/s', toSi: 1 },
     { symbol: 'km/h', toSi: 1 / 3.6 },
@@ -51,6 +56,7 @@ export const QUANTITIES = {
   ],
   angle: [
     { symbol: '°', toSi: RAD_PER_DEG },
+    { symbol: 'mrad', toSi: 1e-3 },
     { symbol: 'rad', toSi: 1 },
   ],
   time: [

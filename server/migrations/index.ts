@@ -11,6 +11,7 @@ import { createRequirements } from './2026-12-01-create-requirements';
 import { createMapTemplates } from './2026-12-01-create-map-templates';
 import { reviewVersions } from './2026-12-01-review-versions';
 import { addPreferences } from './2026-12-01-add-preferences';
+import { addPreferences } from './2026-12-01-add-preferences';
 import { runMigrations, type Migration } from './runner';
 
 export const MIGRATIONS: readonly Migration[] = [
@@ -23,6 +24,7 @@ export const MIGRATIONS: readonly Migration[] = [
   allowSecondImuFile,
   addRemedies,
   createMapTemplates,
+  addPreferences,
   addPreferences,
   reviewVersions,
   createRequirements,

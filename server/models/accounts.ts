@@ -18,6 +18,8 @@ export class User extends Model<InferAttributes<User>, InferCreationAttributes<U
   declare email: string;
   declare name: string;
   declare passwordHash: string;
+  /** As kept; read through services/preferences.ts. */
+  declare preferences: CreationOptional<object>;
   declare createdAt: CreationOptional<Date>;
   declare memberships?: NonAttribute<Membership[]>;
 }
@@ -72,6 +74,7 @@ export function bindAccounts(sequelize: Sequelize) {
       email: DataTypes.TEXT,
       name: DataTypes.TEXT,
       passwordHash: DataTypes.TEXT,
+      preferences: { type: DataTypes.JSONB, defaultValue: {} },
       createdAt: DataTypes.DATE,
     }),
     Workspace: bind(Workspace, sequelize, 'workspaces', {

@@ -4,8 +4,9 @@ import type { Person } from '../context';
 import type { Invitation as InvitationRow, Membership } from '../models/accounts';
 import type { AuditEntry as AuditRow, SinkLetter } from '../models/messages';
 
-export const presentMe = ({ userId, email, name, memberships }: Person): Me => ({
+export const presentMe = ({ userId, email, name, preferences, memberships }: Person): Me => ({
   user: { id: userId, email, name },
+  preferences,
   workspaces: memberships.map(({ workspaceId, workspaceName, role }) => ({
     id: workspaceId,
     name: workspaceName,

@@ -8,6 +8,7 @@ import {
   resetSchema,
   signInSchema,
 } from '@/shared/contracts/accounts';
+import { preferencesPatchSchema, preferencesSchema } from '@/shared/contracts/preferences';
 import type { Request } from 'express';
 import type { Context } from '../context';
 import { limitAttempts } from '../middleware/rate-limit';
@@ -16,6 +17,7 @@ import type { User } from '../models/accounts';
 import { presentMe } from '../presenters/accounts';
 import { completeReset, createFirstAdmin, loadPerson, requestReset, signIn } from '../services/accounts';
 import { describeInstallation } from '../services/installation';
+import { changePreferences } from '../services/preferences';
 import { baseUrl } from './parts';
 import { personRoute, publicRoute, type Route } from './route';
 
@@ -84,6 +86,20 @@ export const accountRoutes: Route[] = [
     summary: 'Who am I, in which workspaces',
     success: { status: 200, description: 'The signed-in person', schema: meSchema, name: 'Me' },
     handle: async ({ person }) => presentMe(person),
+  }),
+  personRoute({
+    method: 'patch',
+    path: '/me/preferences',
+    tag,
+    summary: 'Change what I chose for myself: display units, hints seen',
+    body: preferencesPatchSchema,
+    success: {
+      status: 200,
+      description: 'All of them',
+      schema: preferencesSchema,
+      name: 'Preferences',
+    },
+    handle: ({ ctx, person, body }) => changePreferences(ctx, person, body),
   }),
   publicRoute({
     method: 'post',

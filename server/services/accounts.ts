@@ -6,6 +6,7 @@ import { conflict, notFound, wrongCredentials } from '../errors';
 import { resetLetter } from '../mail/letters';
 import type { Membership, User } from '../models/accounts';
 import { record } from './audit';
+import { readPreferences } from './preferences';
 import { checkPassword, hashPassword, hashToken, newToken } from './secrets';
 
 const RESET_LIFE_MS = 3_600_000;
@@ -22,7 +23,8 @@ export async function loadPerson(
   });
   if (!user) return null;
   const memberships = (user.memberships ?? []).map(inShort);
-  return { userId, name: user.name, email: user.email, address, memberships };
+  const preferences = readPreferences(user.preferences);
+  return { userId, name: user.name, email: user.email, address, preferences, memberships };
 }
 
 const inShort = ({ workspaceId, workspace, role }: Membership) => ({

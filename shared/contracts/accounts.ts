@@ -1,6 +1,7 @@
 /** Sign-in, the first admin, invitations, password reset, members. */
 import { z } from 'zod';
 import { idSchema, isoTimeSchema, nameSchema } from './common';
+import { preferencesSchema } from './preferences';
 import { roleSchema } from './roles';
 
 export const emailSchema = z
@@ -42,6 +43,7 @@ export type Installation = z.infer<typeof installationSchema>;
 
 export const meSchema = z.object({
   user: z.object({ id: idSchema, email: z.string(), name: z.string() }),
+  preferences: preferencesSchema,
   workspaces: z.array(z.object({ id: idSchema, name: z.string(), role: roleSchema })),
 });
 export type Me = z.infer<typeof meSchema>;

@@ -24,6 +24,7 @@ const TABLE: Record<string, string> = {
   'delete /sessions/current': SIGNED_IN,
   'get /me': SIGNED_IN,
   'patch /me/preferences': SIGNED_IN,
+  'patch /me/preferences': SIGNED_IN,
   'post /password-resets': ANYBODY,
   'post /password-resets/complete': ANYBODY,
   'get /members': ALL,

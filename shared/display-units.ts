@@ -1,0 +1,50 @@
+/** Which unit each quantity is shown in, as a person chose it; what was not chosen has its default. Pure. */
+import { formatNumber } from './format';
+import { defaultUnit, QUANTITIES, toDisplay, type DisplayUnit, type Quantity } from './units';
+
+/** Symbol of the unit of each quantity that was chosen. */
+export type DisplayUnits = Partial<Record<Quantity, string>>;
+
+/** Quantities whose unit a person may choose, in the order of the profile. */
+export const CHOSEN_QUANTITIES = [
+  'angleRandomWalk',
+  'gyroBias',
+  'rateRandomWalk',
+  'velocityRandomWalk',
+  'accelBias',
+  'accelRandomWalk',
+  'angle',
+  'length',
+  'speed',
+] as const satisfies readonly Quantity[];
+export type ChosenQuantity = (typeof CHOSEN_QUANTITIES)[number];
+
+export const QUANTITY_NAMES: Record<ChosenQuantity, string> = {
+  angleRandomWalk: 'Gyro white noise (ARW)',
+  gyroBias: 'Angular rate and gyro bias',
+  rateRandomWalk: 'Rate random walk',
+  velocityRandomWalk: 'Accelerometer white noise (VRW)',
+  accelBias: 'Acceleration and accelerometer bias',
+  accelRandomWalk: 'Acceleration random walk',
+  angle: 'Angles',
+  length: 'Lengths',
+  speed: 'Speeds',
+};
+
+/** All units of a quantity, its default first. */
+export const unitsOf = (quantity: Quantity): readonly DisplayUnit[] => QUANTITIES[quantity];
+
+/** The unit that `quantity` is shown in; a symbol that is not one of its units counts as not chosen. */
+export const displayUnit = (quantity: Quantity, chosen: DisplayUnits = {}): DisplayUnit =>
+  chosenUnit(quantity, chosen) ?? defaultUnit(quantity);
+
+/** The unit that was chosen for `quantity`; null: none was, and a field may have its own. */
+export function chosenUnit(quantity: Quantity, chosen: DisplayUnits): DisplayUnit | null {
+  return unitsOf(quantity).find(({ symbol }) => symbol === chosen[quantity]) ?? null;
+}
+
+/** An SI value in words: "0.3 °/√h". */
+export function quantityText(si: number, quantity: Quantity, chosen: DisplayUnits = {}, digits = 3): string {
+  const unit = displayUnit(quantity, chosen);
+  return `${formatNumber(toDisplay(si, unit), digits)} ${unit.symbol}`;
+}
