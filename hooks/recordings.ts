@@ -21,6 +21,7 @@ import type {
   SeriesChannel,
 } from '@/shared/contracts/recordings';
 import { api, ApiProblem, apiUpload, type Upload } from './api';
+import type { TileSource } from './finer/use-tiles';
 import { STALE } from './query-client';
 import { useDebounced } from './use-debounced';
 
@@ -217,6 +218,20 @@ export function useRecordingSeries(id: string, request: SeriesRequest, enabled =
     placeholderData: keepPreviousData,
   });
 }
+
+const PIECE_POINTS = 2400;
+
+/** Where finer pieces of a recording's channels come from. */
+export const recordingTiles = (id: string, channels: readonly SeriesChannel[]): TileSource<Series> => ({
+  key: ['recordings', 'finer', id],
+  fetch: ({ fromS, toS }, signal) =>
+    api<Series>(`/recordings/${id}/series`, {
+      query: { channels: channels.join(','), from: fromS, to: toS, points: PIECE_POINTS },
+      signal,
+    }),
+  // Of buckets of two samples or less every one is there.
+  isWhole: ({ channels: found }) => found.every(({ timeS }) => timeS.length <= PIECE_POINTS / 2),
+});
 
 function keep(client: QueryClient, recording: Recording) {
   client.setQueryData(recordingKeys.one(recording.id), recording);

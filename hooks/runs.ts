@@ -1,10 +1,11 @@
 /** Runs over REST: one, its series, lists. Live frames bypass this cache (live/). */
-import { useQuery } from '@tanstack/react-query';
-import { decodeFrame } from '@/shared/contracts/frames';
+import { queryOptions, useQuery } from '@tanstack/react-query';
+import { decodeFrame, type Frame } from '@/shared/contracts/frames';
 import type { Page } from '@/shared/contracts/common';
 import type { BaselineTrack } from '@/shared/contracts/recordings';
 import type { Run, RunListItem, RunState } from '@/shared/contracts/runs';
 import { api, apiBytes, apiUrl } from './api';
+import type { TileSource } from './finer/use-tiles';
 import { RunData } from './live/run-data';
 import { STALE } from './query-client';
 
@@ -23,14 +24,14 @@ export interface RunListQuery {
 }
 
 /** GET /runs/:id; not asked while `id` is null. */
-export function useRun(id: string | null) {
-  return useQuery({
+export const oneRun = (id: string | null) =>
+  queryOptions({
     queryKey: runKeys.one(id ?? ''),
     queryFn: () => api<Run>(`/runs/${id}`),
     enabled: id !== null,
     staleTime: STALE.slow,
   });
-}
+export const useRun = (id: string | null) => useQuery(oneRun(id));
 
 /** GET /runs, newest first. */
 export function useRuns(query: RunListQuery, enabled = true) {
@@ -51,6 +52,22 @@ export function useRunCurves(id: string | null, points: number) {
     gcTime: 60_000,
   });
 }
+
+/** Rows of a finer piece of a run: two to a pixel of a wide screen, whatever part of the piece is in view. */
+const PIECE_POINTS = 2000;
+
+/** Where finer pieces of a run's curves come from. */
+export const runTiles = (runId: string): TileSource<Frame> => ({
+  key: ['runs', 'finer', runId],
+  fetch: async ({ fromS, toS }, signal) =>
+    decodeFrame(
+      await apiBytes(`/runs/${runId}/series`, {
+        query: { from: fromS, to: toS, points: PIECE_POINTS },
+        signal,
+      }),
+    ),
+  isWhole: ({ head }) => head.whole === true,
+});
 
 /** GET /recordings/:id/baseline-track: the GNSS-only solution that a run is looked at beside. */
 export function useGnssOnlyTrack(recordingId: string) {

@@ -7,7 +7,9 @@ import { useLive, useLiveRun } from '@/hooks/use-live-run';
 import { pinnedName, type Baseline, type BenchConfig, type BenchStart, type RunOptions } from './bench-start';
 import type { CurvesSource } from './curves';
 import { GhostStore, ghostKey, type Ghost } from './ghost-store';
+import { makeId } from './make-id';
 import { commit, redo, startHistory, undo, type History } from './history';
+import { useFinerCurves, type FinerCurves } from './use-finer-curves';
 import { writePath, type ParameterValue } from '@/shared/parameters/parameter-path';
 
 export interface Bench {
@@ -63,7 +65,8 @@ export function useBench(start: BenchStart, locked: string | null, shown: Run | 
   useEffect(() => live.subscribeData(() => group.invalidate()), [live, group]);
   useEffect(() => group.invalidate(), [config.outages, ghost, group]);
 
-  const source = useMemo<CurvesSource>(() => curvesSource(live, ghosts), [live, ghosts]);
+  const finer = useFinerCurves(live, ghost, group);
+  const source = useMemo<CurvesSource>(() => curvesSource(live, ghosts, finer), [live, ghosts, finer]);
   const change = useCallback((key: string, wasSettled: boolean, make: (old: BenchConfig) => BenchConfig) => {
     setHistory((old) => commit(old, make(old.present), key, wasSettled));
   }, []);
@@ -184,23 +187,13 @@ function useGhost(
   return ghosts;
 }
 
-function curvesSource(live: LiveController, ghosts: GhostStore): CurvesSource {
+function curvesSource(live: LiveController, ghosts: GhostStore, finer: FinerCurves): CurvesSource {
   return {
     curves: () => {
       const { current, previous } = live.data;
       const ghost = ghosts.current?.data ?? null;
-      return { current, previous, ghost: ghost === current ? null : ghost };
+      return { current: finer.of(current), previous, ghost: ghost === current ? null : finer.of(ghost) };
     },
     summary: () => live.state.summary,
   };
-}
-
-/** A random id; browsers give randomUUID on https and localhost only. */
-function makeId(): string {
-  if (typeof crypto.randomUUID === 'function') return crypto.randomUUID();
-  const bytes = crypto.getRandomValues(new Uint8Array(16));
-  bytes[6] = (bytes[6]! & 0x0f) | 0x40;
-  bytes[8] = (bytes[8]! & 0x3f) | 0x80;
-  const hex = [...bytes].map((byte) => byte.toString(16).padStart(2, '0')).join('');
-  return hex.replace(/^(.{8})(.{4})(.{4})(.{4})(.{12})$/, '$1-$2-$3-$4-$5');
 }

@@ -26,6 +26,7 @@ export interface ChartLegendProps {
 /** Title, what each line is, and at the cursor its value; the unit to the right. */
 export function ChartLegend({ content, group, aside, narrow, action }: ChartLegendProps) {
   const cursor = useSyncExternalStore(group.cursor.subscribe, () => group.cursor.current);
+  const detail = useSyncExternalStore(group.detail.subscribe, () => group.detail.current);
   const legend = (
     <View style={[styles.legend, narrow ? styles.wholeLine : null]}>
       {legendOrder(content.layers).map((layer) => (
@@ -46,7 +47,7 @@ export function ChartLegend({ content, group, aside, narrow, action }: ChartLege
       </Text>
       {narrow ? null : legend}
       <Text variant="small" tone="soft" style={styles.unit}>
-        {[cursor === null ? aside : `at ${formatAxisTime(cursor, 0.1)}`, content.unit]
+        {[DETAIL[detail], cursor === null ? aside : `at ${formatAxisTime(cursor, 0.1)}`, content.unit]
           .filter(Boolean)
           .join(' · ')}
       </Text>
@@ -55,6 +56,12 @@ export function ChartLegend({ content, group, aside, narrow, action }: ChartLege
     </View>
   );
 }
+
+const DETAIL = {
+  held: '',
+  fetching: 'finer points are coming',
+  failed: 'finer points did not come: the curve is coarse',
+} as const;
 
 function Reading({ layer, timeS }: { layer: Layer; timeS: number }) {
   const value = readLayer(layer, timeS);

@@ -1,14 +1,16 @@
-import { useEffect, useMemo, useState } from 'react';
+import { useEffect, useMemo } from 'react';
 import { View } from 'react-native';
 import { ChartOrigin, originOf } from '@/components/charts/chart-origin';
 import { ChartGroup } from '@/components/charts/chart-group';
+import { useDetailState, useSettledView } from '@/components/charts/use-detail';
 import { TimeChart } from '@/components/charts/TimeChart';
 import { ErrorState } from '@/components/ui/ErrorState';
 import { Text } from '@/components/ui/Text';
 import { space } from '@/constants/theme';
-import { useRecording, useRecordingSeries } from '@/hooks/recordings';
-import { useDebounced } from '@/hooks/use-debounced';
-import { ALL_CHANNELS, CHANNEL_CHARTS, channelContent } from './channel-content';
+import { splicedSeries } from '@/hooks/finer/splice';
+import { useTiles } from '@/hooks/finer/use-tiles';
+import { recordingTiles, useRecording, useRecordingSeries } from '@/hooks/recordings';
+import { ALL_CHANNELS, CHANNEL_CHARTS, channelContent, withGaps } from './channel-content';
 
 export interface ChannelChartsProps {
   recordingId: string;
@@ -24,20 +26,23 @@ const POINTS = 1500;
 export default function ChannelCharts({ recordingId, extentS, hasVelocity, focus }: ChannelChartsProps) {
   const [from, to] = extentS;
   const group = useMemo(() => new ChartGroup([from, to]), [from, to]);
-  const view = useView(group);
+  const view = useSettledView(group);
   const name = useRecording(recordingId).data?.name ?? 'recording';
   const origin = useMemo(() => originOf(name), [name]);
-  const series = useRecordingSeries(recordingId, {
-    channels: ALL_CHANNELS,
-    points: POINTS,
-    ...(view ? { from: view[0], to: view[1] } : null),
-  });
+  const series = useRecordingSeries(recordingId, { channels: ALL_CHANNELS, points: POINTS });
+  const source = useMemo(() => recordingTiles(recordingId, ALL_CHANNELS), [recordingId]);
+  const { pieces, fetching, error } = useTiles(source, view, extentS);
+  useDetailState(group, { fetching, failed: error !== null });
+  const shown = useMemo(() => {
+    const finer = pieces.map(({ span, data }) => ({ span, data: withGaps(data) }));
+    return series.data && splicedSeries(withGaps(series.data), finer);
+  }, [series.data, pieces]);
   const charts = useMemo(
     () =>
       CHANNEL_CHARTS.filter((chart) => hasVelocity || chart.id !== 'velocity').map((chart) =>
-        channelContent(chart, series.data),
+        channelContent(chart, shown),
       ),
-    [series.data, hasVelocity],
+    [shown, hasVelocity],
   );
   useEffect(() => {
     if (!focus) return;
@@ -70,14 +75,4 @@ export default function ChannelCharts({ recordingId, extentS, hasVelocity, focus
       </View>
     </ChartOrigin.Provider>
   );
-}
-
-/** The zoomed stretch once it stands still; null: the whole. */
-function useView(group: ChartGroup): readonly [number, number] | null {
-  const [view, setView] = useState<readonly [number, number] | null>(null);
-  useEffect(
-    () => group.viewport.subscribe(() => setView(group.viewport.zoomed ? group.viewport.current : null)),
-    [group],
-  );
-  return useDebounced(view, 200);
 }

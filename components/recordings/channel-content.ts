@@ -58,9 +58,9 @@ export const ALL_CHANNELS: readonly SeriesChannel[] = CHANNEL_CHARTS.flatMap((ch
   chart.axes.map((axis) => axis.channel),
 );
 
-/** One chart over `series`; channels that it lacks are left out. */
+/** One chart over `series` (gaps in it marked by withGaps); channels that it lacks are left out. */
 export function channelContent(chart: ChannelChart, series: Series | undefined): ChartContent {
-  const found = new Map(series?.channels.map((item) => [item.name, brokenAtGaps(item)]));
+  const found = new Map(series?.channels.map((item) => [item.name, timeSeries(item)]));
   const of = (channel: SeriesChannel): TimeSeries | null => found.get(channel) ?? null;
   return {
     id: `channel-${chart.id}`,
@@ -96,26 +96,39 @@ export function channelContent(chart: ChannelChart, series: Series | undefined):
 /** How many usual steps without a value make a gap. */
 const GAP_STEPS = 5;
 
+type Channel = Series['channels'][number];
+
 /** A line that stops where values are missing for long: a straight stroke across would claim what was not measured. */
-export function brokenAtGaps({
-  timeS,
-  values,
-}: Pick<Series['channels'][number], 'timeS' | 'values'>): TimeSeries {
+export const brokenAtGaps = (channel: Pick<Channel, 'timeS' | 'values'>): TimeSeries =>
+  timeSeries(gapped(channel));
+
+/** `series` with a point without value in each gap; pieces of unlike spacing are marked each by itself. */
+export const withGaps = (series: Series): Series => ({
+  channels: series.channels.map((channel) => ({ ...channel, ...gapped(channel) })),
+});
+
+function gapped({ timeS, values }: Pick<Channel, 'timeS' | 'values'>): Pick<Channel, 'timeS' | 'values'> {
   const steps = timeS.slice(1).map((time, i) => time - timeS[i]!);
   const usual = [...steps].sort((a, b) => a - b)[Math.floor((steps.length - 1) * 0.75)] ?? 0;
   const time: number[] = [];
-  const value: number[] = [];
+  const value: (number | null)[] = [];
   timeS.forEach((at, i) => {
     const step = steps[i - 1] ?? 0;
     if (usual > 0 && step > GAP_STEPS * usual) {
       time.push(at - step / 2);
-      value.push(Number.NaN);
+      value.push(null);
     }
     time.push(at);
-    value.push(values[i] ?? Number.NaN);
+    value.push(values[i] ?? null);
   });
-  return { length: time.length, time, at: (i) => value[i] ?? Number.NaN };
+  return { timeS: time, values: value };
 }
+
+const timeSeries = ({ timeS, values }: Pick<Channel, 'timeS' | 'values'>): TimeSeries => ({
+  length: timeS.length,
+  time: timeS,
+  at: (i) => values[i] ?? Number.NaN,
+});
 
 function valueExtent(all: readonly (TimeSeries | null)[], fromS: number, toS: number): Extent {
   let [low, high] = [Infinity, -Infinity];

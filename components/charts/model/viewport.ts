@@ -89,4 +89,27 @@ export class Cursor {
   };
 }
 
+/** Whether finer points of the stretch in view are on their way, have come, or could not. */
+export type DetailState = 'held' | 'fetching' | 'failed';
+
+export class Detail {
+  private state: DetailState = 'held';
+  private readonly listeners = new Set<Listener>();
+
+  get current(): DetailState {
+    return this.state;
+  }
+
+  set(state: DetailState): void {
+    if (state === this.state) return;
+    this.state = state;
+    for (const listener of this.listeners) listener();
+  }
+
+  subscribe = (listener: Listener): (() => void) => {
+    this.listeners.add(listener);
+    return () => this.listeners.delete(listener);
+  };
+}
+
 export const LEAST_SPAN_S = 0.5;
