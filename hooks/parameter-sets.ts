@@ -1,5 +1,5 @@
 /** Parameter sets and their versions. */
-import { useInfiniteQuery, useMutation, useQuery, useQueryClient } from '@tanstack/react-query';
+import { queryOptions, useInfiniteQuery, useMutation, useQuery, useQueryClient } from '@tanstack/react-query';
 import type { Page } from '@/shared/contracts/common';
 import type {
   ParameterSet,
@@ -28,14 +28,14 @@ export function useParameterSets(search = '') {
   });
 }
 
-/** One set with all its versions. */
-export function useParameterSet(id: string) {
-  return useQuery({
+/** One set with all its versions; not asked while `id` is ''. */
+export const oneSet = (id: string) =>
+  queryOptions({
     queryKey: setKeys.one(id),
     queryFn: ({ signal }) => api<ParameterSetDetail>(`/parameter-sets/${id}`, { signal }),
     enabled: id !== '',
   });
-}
+export const useParameterSet = (id: string) => useQuery(oneSet(id));
 
 export function useCreateParameterSet() {
   const client = useQueryClient();

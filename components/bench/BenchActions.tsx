@@ -1,8 +1,11 @@
+import { router } from 'expo-router';
 import { useEffect, useState } from 'react';
 import { Button } from '@/components/ui/Button';
 import { useToast } from '@/components/ui/ToastProvider';
 import { useLive } from '@/hooks/use-live-run';
 import { useCan } from '@/hooks/session';
+import { compareHref, type EntryRef } from '@/components/compare/compare-link';
+import { hrefOf } from '@/components/layout/paths';
 import { SaveDialog } from './SaveDialog';
 import type { Bench } from './use-bench';
 
@@ -42,8 +45,29 @@ export function HistoryActions({ bench, compact }: { bench: Bench; compact?: boo
         reason="Wait until the run is done."
         onPress={pin}
       />
+      <Button
+        {...look}
+        label="Compare"
+        icon="compare"
+        disabled={!done}
+        reason="Wait until the run is done."
+        onPress={() => router.push(hrefOf(compareWith(bench)))}
+      />
     </>
   );
+}
+
+/** The run on screen beside the baseline, over the windows of the moment. */
+function compareWith({ start, live, baseline, config }: Bench): string {
+  const { summaryRunId } = live.state;
+  const { set, recording } = start;
+  const pinned: EntryRef = baseline.runId
+    ? { run: baseline.runId }
+    : set
+      ? { set: set.id, version: set.version.number }
+      : 'start';
+  const current: EntryRef[] = summaryRunId && summaryRunId !== baseline.runId ? [{ run: summaryRunId }] : [];
+  return compareHref({ recordingId: recording.id, entries: [pinned, ...current], windows: config.outages });
 }
 
 /** Save, and the keys: Ctrl or ⌘ with Z and Shift Z undo and redo. */

@@ -133,10 +133,12 @@ const SUFFIX: Record<Outage['withhold'], string> = {
 };
 const WITHHELD_BY = new Map(Object.entries(SUFFIX).map(([withhold, suffix]) => [suffix, withhold]));
 
-const writeWindows = (windows: readonly Outage[]) =>
+/** "600~660,700~730v": start and end in s, and what is withheld where it is not all GNSS. */
+export const writeWindows = (windows: readonly Outage[]) =>
   windows.map(({ startS, endS, withhold }) => `${startS}~${endS}${SUFFIX[withhold]}`).join(',');
 
-function readWindows(text: string): Outage[] | null {
+/** Null where it cannot be read. */
+export function readWindows(text: string): Outage[] | null {
   if (text === '') return [];
   const windows = text.split(',').map((part) => {
     const match = /^(-?[\d.]+)~(-?[\d.]+)([a-z]*)$/.exec(part);

@@ -1,13 +1,18 @@
 import { router, useLocalSearchParams } from 'expo-router';
 import { StyleSheet, View } from 'react-native';
+import { useState } from 'react';
+import { compareHref } from '@/components/compare/compare-link';
+import { hrefOf } from '@/components/layout/paths';
 import { Screen } from '@/components/layout/Screen';
+import { RecordingPicker } from '@/components/recordings/RecordingPicker';
+import { Button } from '@/components/ui/Button';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
 import { ErrorState } from '@/components/ui/ErrorState';
 import { Figures } from '@/components/ui/Figures';
 import { SkeletonList } from '@/components/ui/Skeleton';
 import { space } from '@/constants/theme';
 import { useParameterSet } from '@/hooks/parameter-sets';
-import type { ParameterSetDetail } from '@/shared/contracts/parameter-sets';
+import type { ParameterSetDetail, ParameterSetVersion } from '@/shared/contracts/parameter-sets';
 import { VersionCard } from './VersionCard';
 import { VersionList } from './VersionList';
 
@@ -52,6 +57,7 @@ function Loaded({ set }: { set: ParameterSetDetail }) {
       title={set.name}
       subtitle={<Figures tone="soft">{line}</Figures>}
       back={wide ? undefined : '/sets'}
+      actions={versions.length > 1 ? <CompareVersions set={set} versions={versions} open={open} /> : null}
     >
       <View style={extraWide ? styles.columns : styles.stack}>
         <View style={extraWide ? styles.side : null}>
@@ -66,6 +72,36 @@ function Loaded({ set }: { set: ParameterSetDetail }) {
         </View>
       </View>
     </Screen>
+  );
+}
+
+/** The open version beside the one it came from, on a recording of choice. */
+function CompareVersions({
+  set,
+  versions,
+  open,
+}: {
+  set: ParameterSetDetail;
+  versions: ParameterSetVersion[];
+  open: ParameterSetVersion;
+}) {
+  const [picking, setPicking] = useState(false);
+  const other =
+    versions.find(({ number }) => number === open.parentNumber) ??
+    versions.find(({ number }) => number !== open.number);
+  if (!other) return null;
+  const entries = [other, open].map(({ number }) => ({ set: set.id, version: number }));
+  return (
+    <>
+      <Button label="Compare" icon="compare" onPress={() => setPicking(true)} />
+      {picking ? (
+        <RecordingPicker
+          title={`Versions ${other.number} and ${open.number} on which recording?`}
+          onPick={({ id }) => router.push(hrefOf(compareHref({ recordingId: id, entries })))}
+          onClose={() => setPicking(false)}
+        />
+      ) : null}
+    </>
   );
 }
 
