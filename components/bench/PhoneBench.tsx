@@ -20,6 +20,7 @@ import { RunProblem, RunProgressLine } from './RunStatus';
 import { useSwipe } from './use-swipe';
 import { useTimeCharts } from './use-charts';
 import type { Bench } from './use-bench';
+import { useStripChoices } from './use-strip-choices';
 import { ViewTabs } from './ViewTabs';
 import { WhitenessView } from './WhitenessView';
 
@@ -36,6 +37,7 @@ export function PhoneBench({
   const { height } = useBreakpoint();
   const [room, setRoom] = useState(0);
   const { palette } = useTheme();
+  const choices = useStripChoices(bench);
   const [open, setOpen] = useState(false);
   const [chart, setChart] = useState<PhoneChart>(
     () => PHONE_CHARTS.find((one) => one.view === view)?.id ?? 'coasting.horizontal',
@@ -62,6 +64,7 @@ export function PhoneBench({
           windows={bench.config.outages}
           onChange={bench.locked === null ? bench.setOutages : undefined}
           group={bench.group}
+          {...choices}
         />
       )}
       <RunProgressLine bench={bench} />

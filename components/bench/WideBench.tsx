@@ -13,6 +13,7 @@ import { ParameterPanel } from './ParameterPanel';
 import { RunFigures } from './RunFigures';
 import { RunProblem, RunProgressLine } from './RunStatus';
 import type { Bench } from './use-bench';
+import { useStripChoices } from './use-strip-choices';
 
 /** Wide: the strip over three columns, parameters, charts, figures and findings; two where there is less room. */
 export function WideBench({
@@ -26,6 +27,7 @@ export function WideBench({
 }) {
   const { extraWide, height } = useBreakpoint();
   const { palette } = useTheme();
+  const choices = useStripChoices(bench);
   const deck = <ChartDeck bench={bench} view={view} onView={onView} />;
   const figures = (
     <>
@@ -43,6 +45,7 @@ export function WideBench({
         windows={bench.config.outages}
         onChange={bench.locked === null ? bench.setOutages : undefined}
         group={bench.group}
+        {...choices}
       />
       <RunProgressLine bench={bench} />
       <View style={styles.columns}>

@@ -130,6 +130,7 @@ export function TimeChart({ content, group, height, timeAxis = true }: TimeChart
               })}
             </G>
             <ChartAnnotations annotations={axes.annotations} />
+            <Path ref={shapes.ref('brush')} d="" fill={palette.petrol} fillOpacity={0.16} />
             <Path ref={shapes.ref('cursor')} d="" stroke={palette.petrol} strokeWidth={1.5} />
           </Svg>
         ) : null}
@@ -161,6 +162,21 @@ function useDrawing({ content, group, box, width, shapes, setAxes }: DrawingInpu
       const x = inView ? box.left + ((at - from) / (to - from || 1)) * (box.right - box.left) : 0;
       shapes.set('cursor', inView ? `M${Math.round(x * 10) / 10} ${box.top}V${box.bottom}` : '');
     };
+    const drawBrush = () => {
+      const [from, to] = group.viewport.current;
+      const place = (timeS: number) =>
+        Math.min(
+          box.right,
+          Math.max(box.left, box.left + ((timeS - from) / (to - from || 1)) * (box.right - box.left)),
+        );
+      const [left, right] = group.brush.current?.map(place) ?? [];
+      shapes.set(
+        'brush',
+        left === undefined || right === undefined
+          ? ''
+          : `M${left.toFixed(1)} ${box.top}H${right.toFixed(1)}V${box.bottom}H${left.toFixed(1)}Z`,
+      );
+    };
     const draw = () => {
       const drawing = drawChart(content, group.viewport.current, box, keep.current);
       for (const layer of content.layers) drawLayer(shapes, layer, drawing.layers[layer.id]);
@@ -181,10 +197,10 @@ function useDrawing({ content, group, box, width, shapes, setAxes }: DrawingInpu
       }
     };
     const remove = group.add(draw);
-    const unsubscribe = group.cursor.subscribe(drawCursor);
+    const stop = [group.cursor.subscribe(drawCursor), group.brush.subscribe(drawBrush)];
     return () => {
       remove();
-      unsubscribe();
+      stop.forEach((unsubscribe) => unsubscribe());
     };
   }, [content, group, box, width, shapes, setAxes]);
 }

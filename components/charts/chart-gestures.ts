@@ -7,6 +7,8 @@ export interface PlotEdges {
   right: number;
 }
 
+const ordered = (a: number, b: number) => [Math.min(a, b), Math.max(a, b)] as const;
+
 const DOUBLE_TAP_MS = 300;
 const SLOP_PX = 5;
 
@@ -60,8 +62,9 @@ export function bindChartGestures(
     }
     if (Math.abs(x - start.x) > SLOP_PX) start.moved = true;
     if (!start.moved) return;
+    if (start.zoomBox) return group.brush.set(ordered(timeAt(start.x), timeAt(x)));
     // Nothing to pan in the whole view: there the finger moves the cursor instead.
-    if (!group.viewport.zoomed || start.zoomBox) return group.cursor.set(timeAt(x));
+    if (!group.viewport.zoomed) return group.cursor.set(timeAt(x));
     const { left, right } = edges();
     const perPx = (start.view[1] - start.view[0]) / Math.max(1, right - left);
     const by = (start.x - x) * perPx;
@@ -81,9 +84,9 @@ export function bindChartGestures(
     const x = local(event);
     pointers.delete(event.pointerId);
     if (pointers.size < 2) pinch = null;
+    if (start?.zoomBox) group.brush.set(null);
     if (start?.moved && start.zoomBox) {
-      const [a, b] = [timeAt(start.x), timeAt(x)];
-      group.viewport.show([Math.min(a, b), Math.max(a, b)]);
+      if (event.type === 'pointerup') group.viewport.show(ordered(timeAt(start.x), timeAt(x)));
     } else if (start && !start.moved && event.type === 'pointerup') onTap(x, event.timeStamp);
     if (pointers.size === 0) start = null;
   }

@@ -1,5 +1,5 @@
 /** Charts that share time, cursor and redraws: what changes raises a flag, one animation callback draws all that is flagged. */
-import { Cursor, Detail, Viewport } from './model/viewport';
+import { Brush, Cursor, Detail, Viewport } from './model/viewport';
 import type { Extent } from './model/scale';
 
 type Draw = () => void;
@@ -7,6 +7,7 @@ type Draw = () => void;
 export class ChartGroup {
   readonly viewport: Viewport;
   readonly cursor = new Cursor();
+  readonly brush = new Brush();
   readonly detail = new Detail();
   private readonly charts = new Set<Draw>();
   private readonly dirty = new Set<Draw>();

@@ -45,8 +45,8 @@ export function StretchStrip({ strip, height, found, chosen, onChoose }: Stretch
       editable: () => true,
       // A stretch at rest often fills the recording: what is wanted is a part of it, not the same elsewhere.
       drawsInside: true,
-      draw: (_, fromS, toS, snapS) => {
-        const drawn = drawWindow([], limits, fromS, toS, snapS);
+      draw: (_, fromS, toS, by) => {
+        const drawn = drawWindow([], limits, fromS, toS, by);
         return drawn && [drawn];
       },
       change: choose,

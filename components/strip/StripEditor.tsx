@@ -1,21 +1,23 @@
-import { useEffect, useMemo, useRef, useState } from 'react';
+import { useMemo, useState } from 'react';
 import { StyleSheet, View } from 'react-native';
-import Svg, { Path } from 'react-native-svg';
+import Svg from 'react-native-svg';
 import type { ChartGroup } from '@/components/charts/chart-group';
-import { ShapeSet } from '@/components/charts/drawing/shape-set';
-import { Button } from '@/components/ui/Button';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { web } from '@/components/ui/web-props';
 import { hairline, radius, space } from '@/constants/theme';
 import type { Strip as StripData } from '@/shared/contracts/recordings';
 import type { Outage } from '@/shared/contracts/runs';
 import { WindowGround, StripGround, StripLabels, LABELS_PX } from './Strip';
-import { stripGeometry, stripLayout, stripSentence, type StripGeometry } from './strip-model';
+import { SharedMarks } from './SharedMarks';
+import { useDeselectOutside } from './use-deselect-outside';
+import { StripButtons } from './StripButtons';
+import { snapTime } from './snapping';
+import { stripGeometry, stripLayout, stripSentence } from './strip-model';
 import { useStripSurface } from './use-strip-surface';
 import { WindowBar } from './WindowBar';
 import { WindowHandles } from './WindowHandles';
 import { OUTAGE_WINDOW } from './window-kinds';
-import { drawOutage, placeWindow, sortWindows, type WindowPart } from './window-model';
+import { drawOutage, placeWindow, SNAP_S, sortWindows, type WindowPart } from './window-model';
 import { windowKey } from './window-keys';
 import { WindowSheet } from './WindowSheet';
 
@@ -26,16 +28,24 @@ export interface StripEditorProps {
   /** `settled` is false while a finger or the mouse still moves. Left out: the windows cannot be changed. */
   onChange?: (windows: Outage[], settled: boolean) => void;
   group: ChartGroup;
+  /** What a run here has to withhold. */
+  withholdable?: readonly Outage['withhold'][];
+  /** Times of the fixes, where all are known: windows then begin and end at one. */
+  epochsS?: ArrayLike<number>;
 }
 
+const GNSS_PARTS = ['gnss', 'position', 'velocity'] as const;
+const NO_EPOCHS: readonly number[] = [];
 const USUAL_LENGTH_S = 60;
 
 /** The strip at the head of the bench: outage windows are drawn, moved, resized, typed and removed on it. */
-export function StripEditor({ strip, height, windows, onChange, group }: StripEditorProps) {
+export function StripEditor(props: StripEditorProps) {
+  const { strip, height, windows, onChange, group, withholdable = GNSS_PARTS, epochsS = NO_EPOCHS } = props;
   const { palette } = useTheme();
   const [width, setWidth] = useState(0);
   const [selected, setSelected] = useState<number | null>(null);
   const [sheet, setSheet] = useState<{ index: number; initial: Outage } | null>(null);
+  const [snaps, setSnaps] = useState(true);
   const limits = useMemo(() => ({ startS: strip.startS, endS: strip.endS }), [strip.startS, strip.endS]);
   const geometry = useMemo(
     () => stripGeometry(strip, stripLayout(width, height, 10, LABELS_PX)),
@@ -47,10 +57,18 @@ export function StripEditor({ strip, height, windows, onChange, group }: StripEd
       limits: () => limits,
       windows: () => windows,
       editable: () => onChange !== undefined,
-      draw: (before, fromS, toS, snapS) => drawOutage(before, limits, fromS, toS, snapS),
+      draw: (before, fromS, toS, by) => drawOutage(before, limits, fromS, toS, by),
       change: (next, settled) => onChange?.(next, settled),
       select: setSelected,
       cursor: (timeS) => group.cursor.set(timeS),
+      snap: (timeS, others, reachS) => snapTime({ timeS, stepS: SNAP_S, others, reachS, epochsS }),
+      snaps: () => snaps,
+      clockTop: () => geometry.layout.tickBottom,
+      brush: (stretch, done) => {
+        group.brush.set(done ? null : stretch);
+        if (done) group.viewport.show(stretch);
+      },
+      clockTap: () => group.viewport.reset(),
     },
     geometry.layout.width > 0,
   );
@@ -92,7 +110,7 @@ export function StripEditor({ strip, height, windows, onChange, group }: StripEd
               role="group"
               aria-label={`${stripSentence(strip, windows.length)}${
                 onChange ? ' Arrow keys move the cursor, Enter adds an outage window.' : ''
-              }`}
+              } A drag along its clock zooms the charts.`}
               {...web({
                 tabIndex: 0,
                 onKeyDown: (event) => {
@@ -139,13 +157,22 @@ export function StripEditor({ strip, height, windows, onChange, group }: StripEd
         ) : null}
       </View>
       {onChange ? (
-        <Button label="Add an outage window" icon="outage" iconOnly kind="plain" onPress={add} />
+        <StripButtons
+          onAdd={add}
+          windows={windows}
+          limits={limits}
+          withholdable={withholdable}
+          onSchedule={change}
+        />
       ) : null}
       {sheet ? (
         <WindowSheet
           {...sheet}
           windows={windows}
           limits={limits}
+          withholdable={withholdable}
+          snaps={snaps}
+          onSnaps={setSnaps}
           onApply={(window) => {
             change(
               sheet.index < 0
@@ -166,50 +193,6 @@ export function StripEditor({ strip, height, windows, onChange, group }: StripEd
 export function around({ startS, endS }: { startS: number; endS: number }): [number, number] {
   const margin = 0.7 * (endS - startS);
   return [startS - margin, endS + margin];
-}
-
-/** The cursor that all charts share, and under the profile what stretch they show. Set on the page without a render. */
-function SharedMarks({ geometry, group }: { geometry: StripGeometry; group: ChartGroup }) {
-  const { palette } = useTheme();
-  const [shapes] = useState(() => new ShapeSet());
-  useEffect(() => {
-    const draw = () => {
-      const at = group.cursor.current;
-      shapes.set(
-        'cursor',
-        at === null ? '' : `M${geometry.x(at).toFixed(1)} 0V${geometry.layout.tickBottom}`,
-      );
-      const [from, to] = group.viewport.current;
-      const y = geometry.layout.baseY + 1.5;
-      const view = `M${geometry.x(from).toFixed(1)} ${y}H${geometry.x(to).toFixed(1)}`;
-      shapes.set('view', group.viewport.zoomed ? view : '');
-    };
-    draw();
-    const stop = [group.cursor.subscribe(draw), group.viewport.subscribe(draw)];
-    return () => stop.forEach((unsubscribe) => unsubscribe());
-  }, [geometry, group, shapes]);
-  return (
-    <>
-      <Path ref={shapes.ref('view')} d="" stroke={palette.petrol} strokeWidth={3} />
-      <Path ref={shapes.ref('cursor')} d="" stroke={palette.petrol} strokeWidth={1.5} />
-    </>
-  );
-}
-
-/** A press anywhere else lets the selected window go, so that its bar covers nothing. */
-function useDeselectOutside(setSelected: (index: number | null) => void) {
-  const card = useRef<View>(null);
-  useEffect(() => {
-    const element = card.current as unknown as HTMLElement | null;
-    if (!element?.ownerDocument) return;
-    const page = element.ownerDocument;
-    const onDown = (event: PointerEvent) => {
-      if (!element.contains(event.target as Node)) setSelected(null);
-    };
-    page.addEventListener('pointerdown', onDown);
-    return () => page.removeEventListener('pointerdown', onDown);
-  }, [setSelected]);
-  return card;
 }
 
 function moveCursor(group: ChartGroup, key: string, shift: boolean): boolean {

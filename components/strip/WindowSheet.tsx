@@ -4,9 +4,10 @@ import { Choice } from '@/components/ui/Choice';
 import { Dialog } from '@/components/ui/Dialog';
 import { Field } from '@/components/ui/Field';
 import { Sheet } from '@/components/ui/Sheet';
+import { Toggle } from '@/components/ui/Toggle';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
-import { withholdSchema, type Outage } from '@/shared/contracts/runs';
-import { WITHHELD } from './window-kinds';
+import type { Outage } from '@/shared/contracts/runs';
+import { withholdOptions } from './window-kinds';
 import { parseClock, windowProblem, type WindowLimits } from './window-model';
 
 export interface WindowSheetProps {
@@ -15,6 +16,11 @@ export interface WindowSheetProps {
   initial: Outage;
   windows: readonly Outage[];
   limits: WindowLimits;
+  /** What a run here has to withhold. */
+  withholdable: readonly Outage['withhold'][];
+  /** Whether drags are snapped. */
+  snaps: boolean;
+  onSnaps: (snaps: boolean) => void;
   onApply: (window: Outage) => void;
   onRemove: () => void;
   onClose: () => void;
@@ -26,6 +32,9 @@ export function WindowSheet({
   initial,
   windows,
   limits,
+  withholdable,
+  snaps,
+  onSnaps,
   onApply,
   onRemove,
   onClose,
@@ -77,13 +86,14 @@ export function WindowSheet({
         shape="select"
         value={withhold}
         onChange={setWithhold}
-        options={OPTIONS}
+        options={withholdOptions(withholdable, withhold)}
+      />
+      <Toggle
+        label="Snap while dragging"
+        hint="To whole seconds, GNSS fixes and the edges of other windows. Alt held down does without."
+        value={snaps}
+        onChange={onSnaps}
       />
     </Frame>
   );
 }
-
-const OPTIONS = withholdSchema.options.map((value) => ({
-  value,
-  label: WITHHELD[value][0]!.toUpperCase() + WITHHELD[value].slice(1),
-}));

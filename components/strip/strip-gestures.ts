@@ -1,6 +1,14 @@
 /** Pointer on the full-width strip: draws on empty ground, moves by the body, resizes by the edges, moves the cursor. */
 import type { Scale } from '@/components/charts/model/scale';
-import { moveWindow, resizeWindow, type WindowLimits, type WindowPart } from './window-model';
+import {
+  FINE_S,
+  SNAP_S,
+  moveWindow,
+  resizeWindow,
+  type Snap,
+  type WindowLimits,
+  type WindowPart,
+} from './window-model';
 
 export interface StripGestureHost<W extends WindowLimits> {
   x: () => Scale;
@@ -11,10 +19,19 @@ export interface StripGestureHost<W extends WindowLimits> {
   /** A drag within a window draws anew instead of moving it. */
   drawsInside?: boolean;
   /** The windows after a drag from `fromS` to `toS`; null where there is no room. */
-  draw: (before: readonly W[], fromS: number, toS: number, snapS: number) => W[] | null;
+  draw: (before: readonly W[], fromS: number, toS: number, by: Snap) => W[] | null;
   change: (windows: W[], settled: boolean) => void;
   select: (index: number | null) => void;
   cursor: (timeS: number | null) => void;
+  /** Where a time comes to rest beside `others`, whose edges attract within `reachS`; left out: at whole seconds. */
+  snap?: (timeS: number, others: readonly W[], reachS: number) => number;
+  /** False: drags are not snapped. */
+  snaps?: () => boolean;
+  /** Below this, px from the top, lies the clock: a drag along it picks a stretch, as it goes and when it is done. */
+  clockTop?: () => number;
+  brush?: (stretch: readonly [number, number], done: boolean) => void;
+  /** A press without a move, on the clock. */
+  clockTap?: () => void;
   /** A press without a move, wherever it was; `reachS` is how far beside it still counts. */
   tap?: (timeS: number, reachS: number) => void;
 }
@@ -49,12 +66,16 @@ const MOUSE_REACH_PX = 9;
 /** Half of a touch target. */
 const TOUCH_REACH_PX = 22;
 
+/** How near another window's edge attracts, px. */
+const ATTRACTION_PX = 6;
+
 interface Drag<W> {
   pointer: number;
   startX: number;
   moved: boolean;
   hit: { index: number; part: WindowPart } | null;
   before: readonly W[];
+  onClock: boolean;
 }
 
 /** Listens on `element`; answers a function that stops. */
@@ -69,6 +90,18 @@ export function bindStripGestures<W extends WindowLimits>(
     const { startS, endS } = host.limits();
     return Math.min(endS, Math.max(startS, host.x().invert(x)));
   };
+  const isClock = (event: PointerEvent) =>
+    host.brush !== undefined &&
+    host.clockTop !== undefined &&
+    event.clientY - element.getBoundingClientRect().top >= host.clockTop();
+  /** Alt does without, shift is fine. */
+  const snapOf = (event: PointerEvent, others: readonly W[]): Snap => {
+    if (event.altKey || host.snaps?.() === false) return 0;
+    const { snap } = host;
+    if (event.shiftKey || !snap) return event.shiftKey ? FINE_S : SNAP_S;
+    const reachS = Math.abs(timeAt(ATTRACTION_PX) - timeAt(0));
+    return (timeS) => snap(timeS, others, reachS);
+  };
   const hitAt = (x: number, event: PointerEvent) => {
     const hit = host.editable() ? hitWindow(host.windows(), host.x(), x, reach(event)) : null;
     return host.drawsInside && hit?.part === 'body' ? null : hit;
@@ -78,8 +111,9 @@ export function bindStripGestures<W extends WindowLimits>(
     if (drag || (event.pointerType === 'mouse' && event.button !== 0)) return;
     // A handle that has the focus keeps it; the ground must not steal the pointer from buttons on it.
     const x = local(event);
-    const hit = hitAt(x, event);
-    drag = { pointer: event.pointerId, startX: x, moved: false, hit, before: host.windows() };
+    const onClock = isClock(event);
+    const hit = onClock ? null : hitAt(x, event);
+    drag = { pointer: event.pointerId, startX: x, moved: false, hit, before: host.windows(), onClock };
     element.setPointerCapture?.(event.pointerId);
     if (hit) host.select(hit.index);
   }
@@ -93,13 +127,23 @@ export function bindStripGestures<W extends WindowLimits>(
     if (event.pointerId !== drag.pointer) return;
     if (Math.abs(x - drag.startX) > SLOP_PX) drag.moved = true;
     if (!drag.moved) return;
+    if (drag.onClock) return host.brush?.(span(drag, x), false);
     if (!host.editable()) return host.cursor(timeAt(x));
-    const next = dragged(drag, x, event.shiftKey);
+    const next = dragged(drag, x, event);
     if (next) host.change(next, false);
   }
 
+  const span = ({ startX }: Drag<W>, x: number) => {
+    const [a, b] = [timeAt(startX), timeAt(x)];
+    return [Math.min(a, b), Math.max(a, b)] as const;
+  };
+
   function hover(x: number, event: PointerEvent) {
     host.cursor(timeAt(x));
+    if (isClock(event)) {
+      element.style.cursor = 'col-resize';
+      return;
+    }
     const hit = hitAt(x, event);
     element.style.cursor = !host.editable()
       ? 'default'
@@ -110,15 +154,19 @@ export function bindStripGestures<W extends WindowLimits>(
           : 'ew-resize';
   }
 
-  function dragged({ hit, before, startX }: Drag<W>, x: number, fine: boolean): W[] | null {
-    const [scale, limits, snapS] = [host.x(), host.limits(), fine ? 0.1 : 1];
-    if (!hit) return host.draw(before, timeAt(startX), timeAt(x), snapS);
+  function dragged({ hit, before, startX }: Drag<W>, x: number, event: PointerEvent): W[] | null {
+    const [scale, limits] = [host.x(), host.limits()];
+    const by = snapOf(
+      event,
+      before.filter((_, index) => index !== hit?.index),
+    );
+    if (!hit) return host.draw(before, timeAt(startX), timeAt(x), by);
     const window = before[hit.index];
     if (!window) return null;
     const byS = scale.invert(x) - scale.invert(startX);
-    if (hit.part === 'body') return moveWindow(before, limits, hit.index, window.startS + byS, snapS);
+    if (hit.part === 'body') return moveWindow(before, limits, hit.index, window.startS + byS, by);
     const edge = hit.part === 'start' ? window.startS : window.endS;
-    return resizeWindow(before, limits, hit.index, hit.part, edge + byS, snapS);
+    return resizeWindow(before, limits, hit.index, hit.part, edge + byS, by);
   }
 
   function onUp(event: PointerEvent) {
@@ -126,6 +174,12 @@ export function bindStripGestures<W extends WindowLimits>(
     const ended = drag;
     drag = null;
     const x = local(event);
+    if (ended.onClock) {
+      if (event.type === 'pointercancel') return;
+      if (ended.moved) host.brush?.(span(ended, x), true);
+      else host.clockTap?.();
+      return;
+    }
     if (event.type === 'pointercancel') {
       // The page scrolls instead: nothing was meant.
       if (ended.moved && host.editable()) host.change([...ended.before], true);
@@ -140,7 +194,7 @@ export function bindStripGestures<W extends WindowLimits>(
       return;
     }
     if (!host.editable()) return;
-    const next = dragged(ended, x, event.shiftKey);
+    const next = dragged(ended, x, event);
     if (!next) return;
     host.change(next, true);
     if (!ended.hit) {

@@ -24,6 +24,11 @@ export function useStripSurface<W extends WindowLimits>(host: StripGestureHost<W
       change: (...change) => latest.current.change(...change),
       select: (index) => latest.current.select(index),
       cursor: (timeS) => latest.current.cursor(timeS),
+      snap: latest.current.snap && ((...time) => latest.current.snap!(...time)),
+      snaps: () => latest.current.snaps?.() !== false,
+      clockTop: latest.current.clockTop && (() => latest.current.clockTop!()),
+      brush: latest.current.brush && ((...brush) => latest.current.brush!(...brush)),
+      clockTap: () => latest.current.clockTap?.(),
       tap: (...tap) => latest.current.tap?.(...tap),
     });
   }, [ready]);

@@ -33,6 +33,15 @@ export const CHOSEN_STRETCH: WindowKind<WindowLimits> = {
 export const windowTimes = ({ startS, endS }: WindowLimits): string =>
   `${formatClock(startS)} to ${formatClock(endS)}, ${lengthLabel(endS - startS)}`;
 
+/** A choice of what to withhold: what the run has, and whatever `chosen` is. */
+export function withholdOptions(having: readonly Outage['withhold'][], chosen: Outage['withhold']) {
+  const values = having.includes(chosen) ? having : [...having, chosen];
+  return values.map((value) => ({
+    value,
+    label: WITHHELD[value][0]!.toUpperCase() + WITHHELD[value].slice(1),
+  }));
+}
+
 export const WITHHELD: Record<Outage['withhold'], string> = {
   gnss: 'all GNSS',
   position: 'position',

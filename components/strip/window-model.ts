@@ -14,6 +14,9 @@ export const FINE_S = 0.1;
 /** Shorter windows say nothing of drift. */
 export const LEAST_WINDOW_S = 1;
 
+/** To what a time is snapped: steps of so many seconds (0: none), or a rule of its own. */
+export type Snap = number | ((timeS: number) => number);
+
 export const sortWindows = <W extends WindowLimits>(windows: readonly W[]): W[] =>
   [...windows].sort((a, b) => a.startS - b.startS);
 
@@ -41,12 +44,12 @@ export function drawWindow(
   limits: WindowLimits,
   fromS: number,
   toS: number,
-  snapS = SNAP_S,
+  by: Snap = SNAP_S,
 ): WindowLimits | null {
   const free = freeAround(windows, limits, fromS);
   if (!free) return null;
-  const low = clamp(snap(Math.min(fromS, toS), snapS), free.startS, free.endS);
-  const high = clamp(snap(Math.max(fromS, toS), snapS), free.startS, free.endS);
+  const low = clamp(snap(Math.min(fromS, toS), by), free.startS, free.endS);
+  const high = clamp(snap(Math.max(fromS, toS), by), free.startS, free.endS);
   if (high - low >= LEAST_WINDOW_S) return { startS: low, endS: high };
   const startS = clamp(low, free.startS, latestStart(free));
   return { startS, endS: startS + LEAST_WINDOW_S };
@@ -58,9 +61,9 @@ export function drawOutage(
   limits: WindowLimits,
   fromS: number,
   toS: number,
-  snapS = SNAP_S,
+  by: Snap = SNAP_S,
 ): Outage[] | null {
-  const drawn = drawWindow(windows, limits, fromS, toS, snapS);
+  const drawn = drawWindow(windows, limits, fromS, toS, by);
   return drawn && sortWindows([...windows, { ...drawn, withhold: 'gnss' }]);
 }
 
@@ -70,13 +73,13 @@ export function moveWindow<W extends WindowLimits>(
   limits: WindowLimits,
   index: number,
   startS: number,
-  snapS = SNAP_S,
+  by: Snap = SNAP_S,
 ): W[] {
   const window = windows[index];
   if (!window) return [...windows];
   const length = window.endS - window.startS;
   const free = freeAround(windows, limits, (window.startS + window.endS) / 2, index) ?? limits;
-  const held = clamp(snap(startS, snapS), free.startS, Math.max(free.startS, free.endS - length));
+  const held = clamp(snap(startS, by), free.startS, Math.max(free.startS, free.endS - length));
   return replaced(windows, index, { ...window, startS: round(held), endS: round(held + length) });
 }
 
@@ -87,12 +90,12 @@ export function resizeWindow<W extends WindowLimits>(
   index: number,
   edge: WindowEdge,
   atS: number,
-  snapS = SNAP_S,
+  by: Snap = SNAP_S,
 ): W[] {
   const window = windows[index];
   if (!window) return [...windows];
   const free = freeAround(windows, limits, (window.startS + window.endS) / 2, index) ?? limits;
-  const snapped = snap(atS, snapS);
+  const snapped = snap(atS, by);
   const next =
     edge === 'start'
       ? { ...window, startS: clamp(snapped, free.startS, latestStart({ ...free, endS: window.endS })) }
@@ -173,7 +176,10 @@ export function parseClock(text: string): number {
 /** Where a window of least length may still start; the rounding of the difference must not put it before the stretch. */
 const latestStart = ({ startS, endS }: WindowLimits) => Math.max(startS, endS - LEAST_WINDOW_S);
 const clamp = (value: number, low: number, high: number) => Math.min(high, Math.max(low, value));
-const snap = (value: number, step: number) => round(Math.round(value / step) * step);
+function snap(value: number, by: Snap): number {
+  if (typeof by === 'function') return by(value);
+  return round(by > 0 ? Math.round(value / by) * by : value);
+}
 /** Times keep a millisecond: finer is noise of the arithmetic. */
 const round = (value: number) => Math.round(value * 1000) / 1000;
 const replaced = <W extends WindowLimits>(windows: readonly W[], index: number, window: W) =>

@@ -89,6 +89,26 @@ export class Cursor {
   };
 }
 
+/** The stretch that is being picked by a drag; null: none. */
+export class Brush {
+  private stretch: Extent | null = null;
+  private readonly listeners = new Set<Listener>();
+
+  get current(): Extent | null {
+    return this.stretch;
+  }
+
+  set(stretch: Extent | null): void {
+    this.stretch = stretch;
+    for (const listener of this.listeners) listener();
+  }
+
+  subscribe = (listener: Listener): (() => void) => {
+    this.listeners.add(listener);
+    return () => this.listeners.delete(listener);
+  };
+}
+
 /** Whether finer points of the stretch in view are on their way, have come, or could not. */
 export type DetailState = 'held' | 'fetching' | 'failed';
 

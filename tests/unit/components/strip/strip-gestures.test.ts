@@ -52,6 +52,74 @@ describe('what lies under the pointer', () => {
   });
 });
 
+describe('snapping and the clock', () => {
+  function openAll(initial: Outage[], snaps = true) {
+    const state = { windows: initial, brush: [] as [number, number, boolean][], taps: 0 };
+    const stage = new Stage();
+    bindStripGestures<Outage>(stage.element, {
+      x: () => x,
+      limits: () => limits,
+      windows: () => state.windows,
+      editable: () => true,
+      draw: (before, fromS, toS, by) => drawOutage(before, limits, fromS, toS, by),
+      change: (windows) => void (state.windows = windows),
+      select: () => undefined,
+      cursor: () => undefined,
+      snap: (timeS, others, reachS) =>
+        others.find((other) => Math.abs(other.startS - timeS) <= reachS)?.startS ??
+        Math.round(timeS / 10) * 10,
+      snaps: () => snaps,
+      clockTop: () => 80,
+      brush: ([from, to], done) => void state.brush.push([from, to, done]),
+      clockTap: () => void state.taps++,
+    });
+    return { state, stage };
+  }
+  const drag = (stage: Stage, from: number, to: number, y = 20, more: Partial<PointerEvent> = {}) => {
+    stage.pointer('pointerdown', from, y, more);
+    stage.pointer('pointermove', to, y, more);
+    stage.pointer('pointerup', to, y, more);
+  };
+
+  it('rests where the rule says, drawn to the edges of the other windows', () => {
+    const { state, stage } = openAll([at(800, 860)]);
+    drag(stage, 101, 131);
+    expect(state.windows[0]).toEqual(at(200, 260));
+    drag(stage, 130, 397);
+    expect(state.windows[0]).toEqual(at(200, 800));
+  });
+
+  it('is off with Alt, and where it was switched off', () => {
+    const free = openAll([]);
+    drag(free.stage, 101.2, 131.7, 20, { altKey: true });
+    expect(free.state.windows).toEqual([at(202.4, 263.4)]);
+    const off = openAll([], false);
+    drag(off.stage, 101.2, 131.7);
+    expect(off.state.windows).toEqual([at(202.4, 263.4)]);
+  });
+
+  it('along the clock picks a stretch and draws no window; a tap there lets the zoom go', () => {
+    const { state, stage } = openAll([at(800, 860)]);
+    drag(stage, 500, 200, 90);
+    expect(state.windows).toEqual([at(800, 860)]);
+    expect(state.brush).toEqual([
+      [400, 1000, false],
+      [400, 1000, true],
+    ]);
+    stage.pointer('pointerdown', 300, 90);
+    stage.pointer('pointerup', 300, 90);
+    expect(state.taps).toBe(1);
+  });
+
+  it('picks nothing when the page takes the finger over', () => {
+    const { state, stage } = openAll([]);
+    stage.pointer('pointerdown', 200, 90);
+    stage.pointer('pointermove', 300, 90);
+    stage.pointer('pointercancel', 300, 90);
+    expect(state.brush.some(([, , done]) => done)).toBe(false);
+  });
+});
+
 describe('dragging', () => {
   it('on empty ground draws a window, live, and selects it', () => {
     const { state, stage } = open([at(800, 860)]);
