@@ -2,7 +2,7 @@ import { useMemo, useState } from 'react';
 import { StyleSheet, View } from 'react-native';
 import { ChartOrigin, originOf } from '@/components/charts/chart-origin';
 import { TimeChart } from '@/components/charts/TimeChart';
-import { recordingPath } from '@/components/layout/paths';
+import { benchPath, recordingPath } from '@/components/layout/paths';
 import { Screen } from '@/components/layout/Screen';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
 import { StripEditor } from '@/components/strip/StripEditor';
@@ -96,7 +96,7 @@ function Open({ recording, link }: { recording: Ready; link: CompareLink }) {
       subtitle={
         <Text variant="label" tone="soft">{`${recording.name}, the same outage windows for all`}</Text>
       }
-      back={wide ? undefined : '/bench'}
+      back={benchPath(recording.id)}
       width="full"
     >
       <StripEditor

@@ -1,11 +1,11 @@
 import type { ReactNode } from 'react';
 import { StyleSheet, View } from 'react-native';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
-import { AlignedNumber } from '@/components/ui/AlignedNumber';
 import { Figures } from '@/components/ui/Figures';
 import { Text, type Tone } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
-import { hairline, space } from '@/constants/theme';
+import { fonts, hairline, space } from '@/constants/theme';
+import { formatNumber } from '@/shared/format';
 import type { Verdict } from '@/components/bench/headline';
 import type { CompareRow, FigureCell, ParameterRow } from './compare-rows';
 import { EntryMark } from './EntryMark';
@@ -31,11 +31,12 @@ export function FigureTable({ rows, ...table }: TableProps & { rows: readonly Co
   );
 }
 
-/** Parameters that are not the same in all entries. */
+/** Parameters that are not the same in all entries; names above the cells, for it stands in a narrow column. */
 export function ParameterTable({ rows, ...table }: TableProps & { rows: readonly ParameterRow[] }) {
   return (
     <Table
       {...table}
+      folded
       rows={rows.map(({ path, label, unit, cells }) => ({
         key: path,
         label,
@@ -46,7 +47,7 @@ export function ParameterTable({ rows, ...table }: TableProps & { rows: readonly
               {cell}
             </Text>
           ) : (
-            <AlignedNumber key={i} value={cell} />
+            <Number key={i} value={cell} digits={3} tone="ink" />
           ),
         ),
       }))}
@@ -57,7 +58,7 @@ export function ParameterTable({ rows, ...table }: TableProps & { rows: readonly
 function FigureView({ cell }: { cell: FigureCell }) {
   return (
     <View>
-      <AlignedNumber value={cell.value} digits={cell.digits} tone={TONES[cell.verdict]} />
+      <Number value={cell.value} digits={cell.digits} tone={TONES[cell.verdict]} />
       {cell.change ? (
         <Figures variant="small" tone="soft">
           {cell.change}
@@ -72,6 +73,14 @@ function FigureView({ cell }: { cell: FigureCell }) {
   );
 }
 
+function Number({ value, digits, tone }: { value: number | null; digits: number; tone: Tone }) {
+  return (
+    <Text variant="body" tone={tone} style={styles.number}>
+      {value === null ? '–' : formatNumber(value, digits)}
+    </Text>
+  );
+}
+
 const TONES: Record<Verdict, Tone> = { good: 'pine', attention: 'ochre', bad: 'vermilion', plain: 'ink' };
 
 interface Row {
@@ -82,16 +91,16 @@ interface Row {
 }
 
 /** One column an entry; where it is narrow the row's name stands above its cells. */
-function Table({ label, names, rows }: TableProps & { rows: readonly Row[] }) {
-  const { wide } = useBreakpoint();
+function Table({ label, names, rows, folded }: TableProps & { rows: readonly Row[]; folded?: boolean }) {
+  const roomy = useBreakpoint().wide && !folded;
   const { palette } = useTheme();
   return (
     <View role="table" aria-label={label}>
       <View role="row" style={[styles.row, { borderBottomColor: palette.ink }]}>
-        <View role="columnheader" style={wide ? styles.label : styles.hidden} aria-label="Figure">
-          {wide ? (
+        <View role="columnheader" style={roomy ? styles.label : styles.hidden} aria-label="Name">
+          {roomy ? (
             <Text variant="small" strong tone="soft">
-              Figure
+              Name
             </Text>
           ) : null}
         </View>
@@ -108,9 +117,9 @@ function Table({ label, names, rows }: TableProps & { rows: readonly Row[] }) {
         <View
           key={row.key}
           role="row"
-          style={[styles.row, wide ? null : styles.folded, { borderBottomColor: palette.rule }]}
+          style={[styles.row, roomy ? null : styles.folded, { borderBottomColor: palette.rule }]}
         >
-          <View role="rowheader" style={wide ? styles.label : styles.line}>
+          <View role="rowheader" style={roomy ? styles.label : styles.line}>
             <Text variant="label" strong>
               {row.label}
               {row.unit ? <Text variant="small" tone="soft">{`  ${row.unit}`}</Text> : null}
@@ -134,4 +143,5 @@ const styles = StyleSheet.create({
   line: { width: '100%' },
   hidden: { width: 0 },
   cell: { flex: 1, minWidth: 0 },
+  number: { fontFamily: fonts.number },
 });

@@ -71,8 +71,8 @@ function chartOf(
     id: `compare.${id}`,
     title,
     unit,
-    // The first is drawn last, over the others.
-    layers: [...layers].reverse(),
+    // Dashes over the first one's whole line: where they agree, both are seen.
+    layers,
     windows,
     domain: (fromS, toS) => (positive ? fromZero : around)(all(), fromS, toS),
     sentence: () => `${runs.map(({ name }) => name).join(', ')} over the same time.`,

@@ -33,17 +33,21 @@ export function figureRows(summaries: readonly (RunSummary | null)[]): CompareRo
   const headline = (columns[0] ?? []).map((first, row): CompareRow => {
     const cells = columns.map((column) => column[row]!);
     const named = cells.find(({ value }) => value !== null) ?? first;
-    return { key: first.key, label: named.label, unit: named.unit, cells: cells.map(cellOf) };
+    return { key: first.key, label: named.label, unit: named.unit, cells: cells.map(headlineCell) };
   });
   return [...headline, ...SINGLE.flatMap((single) => singleRow(single, summaries))];
 }
 
-const cellOf = ({ value, digits, verdict, change, remark }: HeadlineFigure): FigureCell => ({
+/** What a figure should be stands with the first; with the others only where they miss it. */
+const headlineCell = (
+  { value, digits, verdict, change, remark }: HeadlineFigure,
+  at: number,
+): FigureCell => ({
   value,
   digits,
   verdict,
   change,
-  remark,
+  remark: at === 0 || verdict === 'bad' ? remark : '',
 });
 
 interface Single {
@@ -96,7 +100,7 @@ function singleRow(
       value,
       digits: 3,
       verdict: 'plain',
-      change: compared ? formatChange(value - reference, 3) : null,
+      change: !compared ? null : value === reference ? '±0' : formatChange(value - reference, 3),
       remark: '',
     };
   });

@@ -43,6 +43,11 @@ export async function screensOf(server: string): Promise<Screen[]> {
     signedIn('noise', `/recordings/${recording.id}/noise`, heading('Gyro: Allan deviation')),
     signedIn('upload', '/recordings/upload', heading('Upload a recording')),
     signedIn('bench', `/bench/${recording.id}?w=${windows}`, runDone),
+    signedIn(
+      'compare',
+      `/bench/compare?on=${recording.id}&of=start,set~${set.id}~1&w=${windows}`,
+      heading('Parameters that differ'),
+    ),
     signedIn('sets', '/sets', words(set.name)),
     signedIn('set', `/sets/${set.id}`, heading('Version 1')),
     signedIn('vehicles', '/vehicles', words(vehicle.name)),
