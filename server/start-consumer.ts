@@ -3,7 +3,7 @@ import type { Config } from './config';
 import type { JobContext } from './context';
 import { Closers, openCommon, openLog, requireWorkerBundle } from './opening';
 import { jobHandlers } from './queue/handlers';
-import { decodeAgain, keepRecovering, recover } from './services/recovery';
+import { keepRecovering, recover, takeUpJobs } from './services/recovery';
 
 export interface RunningConsumer {
   ctx: JobContext;
@@ -35,9 +35,9 @@ async function open(config: Config, closers: Closers): Promise<RunningConsumer> 
     stopping.abort();
     await ctx.activeJobs.cancelAll();
   });
-  await recover(ctx, decodeAgain);
+  await recover(ctx, takeUpJobs);
   await ctx.queue.consume(jobHandlers(ctx), config.workers);
-  void keepRecovering(ctx, decodeAgain);
+  void keepRecovering(ctx, takeUpJobs);
   log.info({ instance: ctx.instance.id }, 'taking jobs');
   let stopped: Promise<void> | undefined;
   return { ctx, stop: () => (stopped ??= closers.closeAll()) };

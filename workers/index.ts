@@ -5,4 +5,5 @@ export type { PoolLog } from './worker-process';
 export { checkStore, openStore, sweepStore } from './store/open';
 export { safeFileName } from './store/keys';
 export { storeKeys, StoreFailed, StoreKeyMissing, type Store, type StoreConfig } from './store/types';
+export { sha256OfJson } from './jobs/hashes';
 export { ENGINE_VERSION } from './engine/types';

@@ -59,7 +59,7 @@ const SECOND_SWEEP_MS = 5000;
 const MAX_FAILED_STARTS = 3;
 /** Processes that a job is given to before it is given up: one that ends them at once never says that it has begun. */
 const MAX_SENDS = 4;
-const BULK_KINDS: ReadonlySet<JobKind> = new Set(['decode', 'scenario']);
+const BULK_KINDS: ReadonlySet<JobKind> = new Set(['decode', 'scenario', 'verification-run']);
 
 export class WorkerPool implements Pool {
   private readonly slots: Slot[] = [];

@@ -18,8 +18,10 @@ import type {
   TimeOrigin,
 } from '@/shared/contracts/recordings';
 import type { DecodedChannel } from '@/shared/contracts/recording-files';
+import type { Schedule } from '@/shared/contracts/requirements';
 import type { Scenario } from '@/shared/contracts/scenarios';
 import type { AxisMap } from '@/shared/contracts/vehicles';
+import type { BiasSigma } from '@/shared/requirements/bias-sigma';
 import type { StoreConfig } from './store/types';
 
 export interface DecodeJob {
@@ -92,6 +94,17 @@ export interface RunJobResult {
   provenance: Omit<Provenance, 'files' | 'resultSha256'>;
 }
 
+/** A run without frames for requirements; windows are laid by `schedule`, which counts from the run's own alignment. */
+export interface VerificationRunJob extends Omit<RunSpec, 'outages' | 'smooth' | 'errorBudget'> {
+  kind: 'verification-run';
+  schedule: Schedule;
+}
+export interface VerificationRunResult extends RunJobResult {
+  /** The windows that were laid. */
+  outages: Outage[];
+  biasSigma: BiasSigma;
+}
+
 export interface RecordingSeriesJob {
   kind: 'recording-series';
   recordingId: string;
@@ -151,6 +164,7 @@ export interface JobResults {
   decode: DecodeResult;
   scenario: ScenarioResult;
   run: RunJobResult;
+  'verification-run': VerificationRunResult;
   noise: NoiseAnalysis;
   'map-preview': MapPreview;
   'recording-series': Series;
@@ -163,6 +177,7 @@ export type WorkerJob =
   | DecodeJob
   | ScenarioJob
   | RunJob
+  | VerificationRunJob
   | NoiseJob
   | MapPreviewJob
   | RecordingSeriesJob

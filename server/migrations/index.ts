@@ -7,10 +7,10 @@ import { addRemedies } from './2026-12-01-add-remedies';
 import { addSensorModel } from './2026-12-01-add-sensor-model';
 import { addSmoothingAndBudget } from './2026-12-01-add-smoothing-and-budget';
 import { allowSecondImuFile } from './2026-12-01-allow-second-imu-file';
+import { createVerification } from './2026-12-01-create-verification';
 import { createRequirements } from './2026-12-01-create-requirements';
 import { createMapTemplates } from './2026-12-01-create-map-templates';
 import { reviewVersions } from './2026-12-01-review-versions';
-import { addPreferences } from './2026-12-01-add-preferences';
 import { addPreferences } from './2026-12-01-add-preferences';
 import { runMigrations, type Migration } from './runner';
 
@@ -25,9 +25,9 @@ export const MIGRATIONS: readonly Migration[] = [
   addRemedies,
   createMapTemplates,
   addPreferences,
-  addPreferences,
   reviewVersions,
   createRequirements,
+  createVerification,
 ];
 
 /** Brings the database at `url` up to date; answers the names that were applied. */

@@ -9,6 +9,7 @@ import { bindRecording, bindRecordingFile } from './recording';
 import { bindRequirement, bindRequirementRecording } from './requirement';
 import { bindRun } from './run';
 import { bindVehicle } from './vehicle';
+import { bindVerificationCell, bindVerificationRun, bindWaiver } from './verification';
 import { bindVersionComment } from './version-comment';
 
 export type Database = ReturnType<typeof bindModels> & {
@@ -45,6 +46,9 @@ function bindModels(sequelize: Sequelize) {
     ParameterSet: bindParameterSet(sequelize),
     SetVersion: bindSetVersion(sequelize),
     Requirement: bindRequirement(sequelize),
+    VerificationRun: bindVerificationRun(sequelize),
+    VerificationCell: bindVerificationCell(sequelize),
+    Waiver: bindWaiver(sequelize),
     RequirementRecording: bindRequirementRecording(sequelize),
     VersionComment: bindVersionComment(sequelize),
   };
@@ -62,7 +66,9 @@ function bindModels(sequelize: Sequelize) {
   SetVersion.belongsTo(User, { as: 'submittedBy', foreignKey: 'submittedById' });
   SetVersion.belongsTo(User, { as: 'reviewedBy', foreignKey: 'reviewedById' });
   models.VersionComment.belongsTo(User, { as: 'createdBy', foreignKey: 'createdById' });
-  const { Requirement, RequirementRecording } = models;
+  const { Requirement, RequirementRecording, VerificationCell, VerificationRun, Waiver } = models;
+  VerificationCell.belongsTo(VerificationRun, { as: 'run', foreignKey: 'verificationRunId' });
+  Waiver.belongsTo(User, { as: 'createdBy', foreignKey: 'createdById' });
   Requirement.belongsTo(Vehicle, { as: 'vehicle', foreignKey: 'vehicleId' });
   Requirement.belongsTo(User, { as: 'createdBy', foreignKey: 'createdById' });
   Requirement.hasMany(RequirementRecording, { as: 'recordings', foreignKey: 'requirementId' });

@@ -12,6 +12,7 @@ import {
 import type { Parameters } from '@/shared/contracts/parameters';
 import type { VersionState } from '@/shared/contracts/parameter-sets';
 import type { Outage } from '@/shared/contracts/runs';
+import type { Evidence } from '@/shared/contracts/verification';
 import type { User } from './accounts';
 import { bind, idColumn } from './base';
 import type { Vehicle } from './vehicle';
@@ -45,6 +46,8 @@ export class SetVersion extends Model<InferAttributes<SetVersion>, InferCreation
   declare recordingId: ForeignKey<string | null>;
   declare parentNumber: number | null;
   declare createdById: ForeignKey<string>;
+  /** The verification as it stood when it was released. */
+  declare evidence: CreationOptional<Evidence | null>;
   declare submittedById: CreationOptional<ForeignKey<string | null>>;
   declare submittedAt: CreationOptional<Date | null>;
   /** The vehicle that it was released for. */
@@ -82,6 +85,7 @@ export const bindSetVersion = (sequelize: Sequelize) =>
     recordingId: DataTypes.UUID,
     parentNumber: DataTypes.INTEGER,
     createdById: DataTypes.UUID,
+    evidence: DataTypes.JSONB,
     submittedById: DataTypes.UUID,
     submittedAt: DataTypes.DATE,
     vehicleId: DataTypes.UUID,

@@ -7,6 +7,7 @@ import { z } from 'zod';
 /** Every job's payload; a name without a handler does not compile. */
 export const JOB_PAYLOADS = {
   decode: z.object({ recordingId: z.uuid(), generation: z.number().int() }),
+  verify: z.object({ verificationRunId: z.uuid() }),
 };
 export type JobName = keyof typeof JOB_PAYLOADS;
 export type JobPayload<N extends JobName> = z.infer<(typeof JOB_PAYLOADS)[N]>;
@@ -53,8 +54,7 @@ export async function openQueue(url: string, sequelize: Sequelize, log: Logger):
         const ids = [];
         for (let i = 0; i < concurrency; i++) {
           const work = async ([job]: PgBoss.JobWithMetadata[]) => {
-            if (job)
-              await handlers[name](JOB_PAYLOADS[name].parse(job.data), job.retryCount >= job.retryLimit);
+            if (job) await handle(handlers, name, job);
           };
           const options = { batchSize: 1, pollingIntervalSeconds: POLL_S, includeMetadata: true } as const;
           ids.push(await boss.work(name, options, work));
@@ -73,6 +73,16 @@ export async function openQueue(url: string, sequelize: Sequelize, log: Logger):
       await boss.stop({ graceful: true, timeout: graceMs, wait: true });
     },
   };
+}
+
+/** Reads the payload by its own schema and hands it to its own handler. */
+async function handle<N extends JobName>(
+  handlers: JobHandlers,
+  name: N,
+  { data, retryCount, retryLimit }: PgBoss.JobWithMetadata,
+): Promise<void> {
+  const payload = JOB_PAYLOADS[name].parse(data) as JobPayload<N>;
+  await handlers[name](payload, retryCount >= retryLimit);
 }
 
 /** While the database is away every poll fails: one line a while says as much. */

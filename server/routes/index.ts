@@ -10,6 +10,7 @@ import { runRoutes } from './runs';
 import { statusRoutes } from './status';
 import { teamRoutes } from './team';
 import { vehicleRoutes } from './vehicles';
+import { verificationRoutes } from './verification';
 import { versionRoutes } from './versions';
 
 export const ROUTES: readonly Route[] = [
@@ -24,4 +25,5 @@ export const ROUTES: readonly Route[] = [
   ...parameterSetRoutes,
   ...versionRoutes,
   ...requirementRoutes,
+  ...verificationRoutes,
 ];

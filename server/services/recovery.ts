@@ -8,6 +8,7 @@ import { announce, sendDecode } from './decoding';
 import { discardFiles } from './discard';
 import { forget } from './recordings';
 import { launch, RESTARTED } from './run-launch';
+import { verifyAgain } from './verification-jobs';
 
 const LOOK_EVERY_MS = 5_000;
 const GOING: RunState[] = ['queued', 'running'];
@@ -48,8 +49,14 @@ const findDead = async (ctx: JobContext): Promise<string[]> => ctx.instance.dead
 export async function clearUpAfter(ctx: Context, dead: string[]): Promise<void> {
   await dropUnconfirmed(ctx, dead);
   await finishDeletions(ctx);
-  await decodeAgain(ctx, dead);
+  await takeUpJobs(ctx, dead);
   await endRuns(ctx, dead);
+}
+
+/** The queue's jobs that were cut off: all that a process without an HTTP side does for the dead. */
+export async function takeUpJobs(ctx: JobContext, dead: string[]): Promise<void> {
+  await decodeAgain(ctx, dead);
+  await verifyAgain(ctx, dead);
 }
 
 /** Servers that rows in hand name. */
@@ -65,7 +72,12 @@ async function holders(ctx: JobContext): Promise<string[]> {
     attributes: ['instanceId'],
     group: ['instanceId'],
   });
-  const ids = [...recordings, ...runs].map((row) => row.instanceId);
+  const verifications = await ctx.db.VerificationRun.findAll({
+    where,
+    attributes: ['instanceId'],
+    group: ['instanceId'],
+  });
+  const ids = [...recordings, ...runs, ...verifications].map((row) => row.instanceId ?? null);
   return [...new Set(ids.filter((id) => id !== null))];
 }
 
@@ -84,8 +96,8 @@ async function finishDeletions(ctx: Context): Promise<void> {
   for (const { id } of await ctx.db.Recording.findAll({ where, attributes: ['id'] })) await forget(ctx, id);
 }
 
-/** Takes decodings up again that were cut off: all that a process without an HTTP side does for the dead. */
-export async function decodeAgain(ctx: JobContext, dead: string[]): Promise<void> {
+/** Takes decodings up again that were cut off. */
+async function decodeAgain(ctx: JobContext, dead: string[]): Promise<void> {
   const where = { status: 'decoding' as const, instanceId: dead };
   for (const recording of await ctx.db.Recording.findAll({ where })) {
     const { id, generation, instanceId } = recording;

@@ -1,7 +1,7 @@
-/** How long the series of bench runs are kept. Rows and summaries stay; a run that a version names keeps its series. */
+/** How long the series of runs are kept. Rows and summaries stay; a run that a version names or rests on keeps its series. */
 import { QueryTypes } from 'sequelize';
 import { storeKeys } from '@/workers';
-import type { Context } from '../context';
+import type { Context, JobContext } from '../context';
 
 const KEPT_PER_BENCH = 20;
 /** Over all benches of a workspace: a bench is made by every opening of the page. */
@@ -19,6 +19,36 @@ export async function pruneBench(ctx: Context, workspaceId: string, benchId: str
     await ctx.store.removePrefix(storeKeys.run(id));
   }
 }
+
+/**
+ * Removes the series of runs that no cell of the version's verification stands on any more. Those that a release was
+ * judged by stay, whatever is verified later.
+ */
+export async function pruneVerification(ctx: JobContext, versionId: string): Promise<void> {
+  const ids = await ctx.db.transaction(async (transaction) => {
+    const lock = transaction.LOCK.UPDATE; // nobody begins a verification of it meanwhile
+    const version = await ctx.db.SetVersion.findByPk(versionId, { lock, transaction });
+    if (!version || version.evidence) return [];
+    const bind = [versionId];
+    const left = await ctx.db.sequelize.query<{ id: string; run_id: string | null }>(LEFT_RUNS, {
+      bind,
+      transaction,
+      type: QueryTypes.SELECT,
+    });
+    const runIds = left.flatMap(({ run_id: id }) => (id === null ? [] : [id]));
+    await ctx.db.Run.update({ hasSeries: false }, { where: { id: runIds }, transaction });
+    await ctx.db.VerificationRun.destroy({ where: { id: left.map(({ id }) => id) }, transaction });
+    return runIds;
+  });
+  for (const id of ids) await ctx.store.removePrefix(storeKeys.run(id));
+}
+
+const LEFT_RUNS = `
+  SELECT id, run_id FROM verification_runs
+  WHERE version_id = $1 AND state IN ('done', 'failed')
+    AND NOT EXISTS (SELECT FROM verification_cells WHERE verification_run_id = verification_runs.id)
+    AND NOT EXISTS (SELECT FROM set_versions WHERE run_id = verification_runs.run_id)
+`;
 
 const OLD_RUNS = `
   SELECT id FROM (

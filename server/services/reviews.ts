@@ -8,6 +8,7 @@ import type { Actor, Context } from '../context';
 import { conflict, ownWork } from '../errors';
 import type { ParameterSet, SetVersion } from '../models/parameter-set';
 import { recordBy } from './audit';
+import { passGate } from './release-gate';
 import { getVersion, lockVersion, inWords } from './versions';
 
 /** From now on it is never changed. Throws 409 for what is no draft, or whose set has no vehicle. */
@@ -48,23 +49,34 @@ export async function returnVersion(
   return getVersion(ctx, actor, setId, number);
 }
 
-/** Makes it the one released version of its vehicle; the one before is superseded. Throws as `returnVersion`. */
+/** Makes it the one released version of its vehicle; the one before is superseded. Throws as `returnVersion` and `passGate`. */
 export async function releaseVersion(
   ctx: Context,
   actor: Actor,
   setId: string,
   number: number,
-  { comment }: ReviewRelease,
+  body: ReviewRelease,
 ): Promise<SetVersion> {
   await ctx.db.transaction(async (transaction) => {
     const { set, version } = await lockForReview(ctx, actor, setId, number, transaction);
     const vehicleId = vehicleOf(set);
     // Releases for one vehicle follow one another, whatever their sets.
-    await ctx.db.Vehicle.findByPk(vehicleId, { lock: transaction.LOCK.UPDATE, transaction });
+    const lock = transaction.LOCK.UPDATE;
+    const vehicle = await ctx.db.Vehicle.findByPk(vehicleId, { lock, transaction, rejectOnEmpty: true });
+    const { comment, withoutRequirements = null } = body;
+    const evidence = await passGate(ctx, set, version, vehicle, withoutRequirements, transaction);
     const superseded = await supersede(ctx, actor, vehicleId, transaction);
-    const released = { state: 'released', vehicleId, ...reviewedBy(ctx, actor, comment) } as const;
+    const released = { state: 'released', vehicleId, evidence, ...reviewedBy(ctx, actor, comment) } as const;
     await version.update(released, { transaction });
-    await note(ctx, actor, 'version.released', set, version, { comment, superseded }, transaction);
+    await note(
+      ctx,
+      actor,
+      'version.released',
+      set,
+      version,
+      { comment, withoutRequirements, superseded },
+      transaction,
+    );
   });
   return getVersion(ctx, actor, setId, number);
 }

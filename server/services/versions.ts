@@ -214,7 +214,8 @@ export async function checkEvidence(
   if (errors.length > 0) throw invalid(errors.map((error) => error.message).join(' '), { errors });
 }
 
-async function findSet(
+/** Throws 404 for one that is not in the workspace. */
+export async function findSet(
   ctx: Context,
   { workspaceId }: Actor,
   id: string,

@@ -11,6 +11,7 @@ import { run } from './run';
 import { runExport } from './run-export';
 import { runSeries } from './run-series';
 import { scenario } from './scenario';
+import { verificationRun } from './verification-run';
 
 export type JobHandler<K extends JobKind> = (job: JobOf<K>, helpers: JobHelpers) => Promise<JobResults[K]>;
 
@@ -18,6 +19,7 @@ export const handlers: { [K in JobKind]: JobHandler<K> } = {
   decode,
   scenario,
   run,
+  'verification-run': verificationRun,
   noise,
   'map-preview': mapPreview,
   'recording-series': recordingSeries,

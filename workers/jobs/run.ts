@@ -2,6 +2,7 @@
 import { createRun } from '../engine';
 import { ENGINE_VERSION, type EngineRun, type RunResult } from '../engine/types';
 import type { RunJob, RunJobResult, RunSpec } from '../protocol';
+import type { LoadedRecording } from '../recordings/load';
 import { writeRunTables } from '../recordings/results';
 import { sha256OfJson } from './hashes';
 import type { JobHelpers } from './helpers';
@@ -25,16 +26,25 @@ export async function run(job: RunJob, helpers: JobHelpers): Promise<RunJobResul
           expectedEpochs: recording.columns.gnss.timeS.length,
         })
       : null;
-  const result = await drive(engineRun, helpers, frames);
-  const { origin, extentS } = engineRun;
-  const resultSha256 = await writeRunTables(helpers.store, job.runId, { ...result, origin, extentS });
+  return keep(job, recording, engineRun, await drive(engineRun, helpers, frames), helpers);
+}
+
+/** Writes a run's tables to the store; answers its summary and where it comes from. */
+export async function keep(
+  spec: RunSpec,
+  recording: LoadedRecording,
+  { origin, extentS }: EngineRun,
+  result: RunResult,
+  { store }: JobHelpers,
+): Promise<RunJobResult> {
+  const resultSha256 = await writeRunTables(store, spec.runId, { ...result, origin, extentS });
   return {
     summary: result.summary,
     resultSha256,
     provenance: {
       engineVersion: ENGINE_VERSION,
       recordingSha256: recording.sha256,
-      parametersSha256: sha256OfJson({ ...job.parameters, leverArmM: job.leverArmM }),
+      parametersSha256: sha256OfJson({ ...spec.parameters, leverArmM: spec.leverArmM }),
     },
   };
 }
