@@ -20,6 +20,13 @@ export function stateTrack(data: RunData | null): PlanePoints & { timeAt: (index
   };
 }
 
+/** The fixed-interval smoother's track; none where the run has none. */
+export function smoothedTrack(data: RunData | null): PlanePoints {
+  if (!data) return NO_POINTS;
+  const [north, east] = [data.column('smoothed', 'north_m'), data.column('smoothed', 'east_m')];
+  return { length: data.table('smoothed').length, north: (i) => north[i]!, east: (i) => east[i]! };
+}
+
 /** Where the vehicle really was while coasting: the solution less its error, row by row of the coasting table. */
 export function referenceTrack(data: RunData | null): PlanePoints & { outage: (index: number) => number } {
   if (!data) return { length: 0, north: () => NaN, east: () => NaN, outage: () => -1 };

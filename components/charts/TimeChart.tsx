@@ -1,6 +1,7 @@
 import { useCallback, useEffect, useLayoutEffect, useMemo, useRef, useState } from 'react';
 import { StyleSheet, View } from 'react-native';
 import Svg, { ClipPath, Defs, G, Path, Rect } from 'react-native-svg';
+import { Text } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { web } from '@/components/ui/web-props';
 import { bindChartGestures, chartKey } from './chart-gestures';
@@ -13,6 +14,7 @@ import { ShapeSet } from './drawing/shape-set';
 import { timeFigure } from './figure/time-figure';
 import { timeTables } from './figure/time-tables';
 import { asideOf } from './model/aside';
+import { emptyWords } from './model/empty';
 import type { ChartContent, Layer } from './model/layers';
 import { chartBuffers, drawChart, type LayerPaths, type PlotBox } from './model/time-chart';
 import { SaveControl } from './SaveControl';
@@ -35,7 +37,7 @@ export function TimeChart({ content, group, height, timeAxis = true }: TimeChart
   const { palette } = useTheme();
   const [width, setWidth] = useState(0);
   const [headPx, setHeadPx] = useState(HEAD_PX);
-  const [axes, setAxes] = useState<AxesDrawing & { aside: string }>(NO_AXES);
+  const [axes, setAxes] = useState(NO_AXES);
   const plotHeight = Math.max(40, height - headPx);
   const box = useMemo<PlotBox>(
     () => ({
@@ -134,10 +136,24 @@ export function TimeChart({ content, group, height, timeAxis = true }: TimeChart
             <Path ref={shapes.ref('cursor')} d="" stroke={palette.petrol} strokeWidth={1.5} />
           </Svg>
         ) : null}
+        {axes.empty ? (
+          <View style={styles.empty}>
+            <Text variant="label" tone="soft" align="center">
+              {axes.empty}
+            </Text>
+          </View>
+        ) : null}
       </View>
       <ChartTable content={content} group={group} />
     </View>
   );
+}
+
+/** What React draws: it differs seldom. */
+interface DrawnAxes extends AxesDrawing {
+  aside: string;
+  /** In place of an empty plot. */
+  empty: string;
 }
 
 interface DrawingInput {
@@ -146,7 +162,7 @@ interface DrawingInput {
   box: PlotBox;
   width: number;
   shapes: ShapeSet;
-  setAxes: (axes: AxesDrawing & { aside: string }) => void;
+  setAxes: (axes: DrawnAxes) => void;
 }
 
 /** Draws with the group's frames: paths straight to the page, axes to React only when they differ. */
@@ -189,6 +205,7 @@ function useDrawing({ content, group, box, width, shapes, setAxes }: DrawingInpu
         timeTicks: drawing.timeTicks,
         annotations: drawing.annotations,
         aside: asideOf(content, drawing.beyond),
+        empty: emptyWords(content),
       };
       const key = JSON.stringify(axes);
       if (key !== lastAxes.current) {
@@ -235,10 +252,18 @@ function drawLayer(shapes: ShapeSet, layer: Layer, paths: LayerPaths | undefined
   shapes.attribute(stroke, 'stroke-opacity', String((layer.opacity ?? 1) * (dense ? 0.75 : 1)));
 }
 
-const NO_AXES = { valueTicks: [], timeTicks: [], annotations: [], aside: '' };
+const NO_AXES: DrawnAxes = { valueTicks: [], timeTicks: [], annotations: [], aside: '', empty: '' };
 const KEYS_HINT = 'Arrow keys move the cursor, plus and minus zoom, 0 shows all.';
 
 const styles = StyleSheet.create({
   head: { paddingRight: 10, zIndex: 1 },
+  empty: {
+    position: 'absolute',
+    inset: 0,
+    paddingHorizontal: GUTTER_PX,
+    alignItems: 'center',
+    justifyContent: 'center',
+    pointerEvents: 'none',
+  },
   surface: { userSelect: 'none', cursor: 'auto' },
 });

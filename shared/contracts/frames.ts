@@ -23,6 +23,8 @@ export const FRAME_TABLES = {
   velocity: ['time_s', 'n_m_s', 'e_m_s', 'd_m_s', 'sigma_n_m_s', 'sigma_e_m_s', 'sigma_d_m_s', 'nis', 'accepted'],
   /** Coasting error against truth or the fully aided solution; `outage` is the window's index. */
   coasting: ['time_s', 'outage', 'horizontal_m', 'vertical_m', 'north_m', 'east_m', 'predicted_horizontal_m', 'predicted_vertical_m'],
+  /** The fixed-interval smoother's track and its 1σ; only in GET /runs/:id/series, where the run kept one. */
+  smoothed: ['time_s', 'north_m', 'east_m', 'down_m', 'sigma_n_m', 'sigma_e_m', 'sigma_d_m'],
 } as const; // prettier-ignore
 
 export type FrameTable = keyof typeof FRAME_TABLES;

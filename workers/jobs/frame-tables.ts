@@ -13,8 +13,20 @@ interface Origin {
 const LOCAL_COLUMNS = new Set(['north_m', 'east_m', 'down_m']);
 
 /** The state with its position north, east, down of `origin`, m. */
-export function stateColumns(table: SolutionTable, rows: readonly number[], origin: Origin) {
-  const names = FRAME_TABLES.state.filter((name) => !LOCAL_COLUMNS.has(name));
+export const stateColumns = (table: SolutionTable, rows: readonly number[], origin: Origin) =>
+  localColumns('state', table, rows, origin);
+
+/** The smoothed track, as the state. */
+export const smoothedColumns = (table: SolutionTable, rows: readonly number[], origin: Origin) =>
+  localColumns('smoothed', table, rows, origin);
+
+function localColumns<T extends 'state' | 'smoothed'>(
+  name: T,
+  table: SolutionTable,
+  rows: readonly number[],
+  origin: Origin,
+): TableColumns<T> {
+  const names = FRAME_TABLES[name].filter((column) => !LOCAL_COLUMNS.has(column));
   const columns: Record<string, Float64Array | Float32Array> = pick(table, names, rows);
   const north = new Float32Array(rows.length);
   const east = new Float32Array(rows.length);
@@ -36,7 +48,7 @@ export function stateColumns(table: SolutionTable, rows: readonly number[], orig
     east[i] = offset[1]!;
     down[i] = offset[2]!;
   });
-  return { ...columns, north_m: north, east_m: east, down_m: down } as TableColumns<'state'>;
+  return { ...columns, north_m: north, east_m: east, down_m: down } as TableColumns<T>;
 }
 
 export function innovationColumns<T extends 'position' | 'velocity'>(

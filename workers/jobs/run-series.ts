@@ -3,7 +3,7 @@ import { encodeFrame } from '@/shared/contracts/frames';
 import type { CoastingTable, InnovationTable, SolutionTable } from '../engine/types';
 import type { RunSeriesJob } from '../protocol';
 import { readRunTables } from '../recordings/results';
-import { coastingColumns, innovationColumns, stateColumns } from './frame-tables';
+import { coastingColumns, innovationColumns, smoothedColumns, stateColumns } from './frame-tables';
 import type { JobHelpers } from './helpers';
 import { firstAfter, firstAtLeast } from './time-rows';
 import { drawnCoasting, drawnStates, Standouts } from './standouts';
@@ -13,6 +13,7 @@ export async function runSeries(job: RunSeriesJob, helpers: JobHelpers): Promise
   const tables = await readRunTables(helpers.store, job.runId);
   const span: [number, number] = [job.fromS ?? -Infinity, job.toS ?? Infinity];
   const { points } = job;
+  const { smoothed } = tables;
   const [from, to] = rowsWithin(tables.solution.time_s!, span);
   const coasting = rowsOfSpan(tables.coasting.time_s!, span);
   const counts = [to - from, coasting.length, ...[tables.position, tables.velocity].map(rowsIn)];
@@ -38,6 +39,9 @@ export async function runSeries(job: RunSeriesJob, helpers: JobHelpers): Promise
       state: stateColumns(tables.solution, stateRows(tables.solution, from, to, points), tables.origin),
       position: innovations('position', tables.position),
       velocity: innovations('velocity', tables.velocity),
+      ...(smoothed && {
+        smoothed: smoothedColumns(smoothed, stateRows(smoothed, from, to, points), tables.origin),
+      }),
       coasting: coastingColumns(tables.coasting, coastingRows(tables.coasting, coasting, points)),
     },
   });

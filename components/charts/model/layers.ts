@@ -86,6 +86,8 @@ export interface ChartContent {
   /** Extent of values to show for a stretch of time; it is widened to round values. */
   domain: (fromS: number, toS: number) => Extent;
   annotations?: () => readonly Annotation[];
+  /** Why there is nothing to draw; shown in place of an empty plot. Left out: nothing has come yet. */
+  empty?: () => string;
   /** The chart in a sentence, for the screen reader. */
   sentence: () => string;
 }

@@ -108,6 +108,21 @@ test('a stretch of the stored run comes at finer resolution', async () => {
   expect(stored.tables.coasting!.time_s.length).toBeGreaterThan(50);
 });
 
+test('the smoothed track comes along where the run kept one', async () => {
+  await run({ ...job, runId: 'smooth', smooth: true, framePoints: 0 }, testHelpers(at.store));
+  const of = async (runId: string) =>
+    decodeFrame(
+      await runSeries({ kind: 'run-series', runId, fromS: null, toS: null, points: 2000 }, helpers),
+    );
+  const { tables } = await of('smooth');
+  expect([...tables.smoothed!.time_s]).toEqual([...tables.state!.time_s]);
+  const last = tables.state!.time_s.length - 1;
+  expect(tables.smoothed!.north_m[last]).toBeCloseTo(tables.state!.north_m[last]!, 2);
+  const middle = Math.floor(last / 2);
+  expect(tables.smoothed!.sigma_n_m[middle]!).toBeLessThan(tables.state!.sigma_n_m[middle]!);
+  expect((await of('run')).tables.smoothed).toBeUndefined();
+});
+
 test('the largest innovation survives the thinning', async () => {
   const { position } = await readRunTables(at.store, 'run');
   const largest = Math.max(...position.innovation[0].map(Math.abs));
