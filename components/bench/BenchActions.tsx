@@ -5,6 +5,7 @@ import { useToast } from '@/components/ui/ToastProvider';
 import { useLive } from '@/hooks/use-live-run';
 import { useCan } from '@/hooks/session';
 import { compareHref, type EntryRef } from '@/components/compare/compare-link';
+import { useShortcuts } from '@/components/keyboard/use-shortcuts';
 import { hrefOf } from '@/components/layout/paths';
 import { SaveDialog } from './SaveDialog';
 import type { Bench } from './use-bench';
@@ -13,12 +14,14 @@ import type { Bench } from './use-bench';
 export function HistoryActions({ bench, compact }: { bench: Bench; compact?: boolean }) {
   const toast = useToast();
   const done = useLive(bench.live, (state) => state.phase === 'done');
-  if (bench.locked !== null) return null;
-  const look = compact ? ({ iconOnly: true, kind: 'plain' } as const) : {};
   const pin = () => {
     bench.pinCurrent();
     toast({ message: 'This run is the baseline now: later changes are seen against it.' });
   };
+  const compare = () => router.push(hrefOf(compareWith(bench)));
+  useShortcuts(done && bench.locked === null ? { p: pin, c: compare } : NO_KEYS);
+  if (bench.locked !== null) return null;
+  const look = compact ? ({ iconOnly: true, kind: 'plain' } as const) : {};
   return (
     <>
       <Button
@@ -51,11 +54,13 @@ export function HistoryActions({ bench, compact }: { bench: Bench; compact?: boo
         icon="compare"
         disabled={!done}
         reason="Wait until the run is done."
-        onPress={() => router.push(hrefOf(compareWith(bench)))}
+        onPress={compare}
       />
     </>
   );
 }
+
+const NO_KEYS = {};
 
 /** The run on screen beside the baseline, over the windows of the moment. */
 function compareWith({ start, live, baseline, config }: Bench): string {
@@ -70,11 +75,12 @@ function compareWith({ start, live, baseline, config }: Bench): string {
   return compareHref({ recordingId: recording.id, entries: [pinned, ...current], windows: config.outages });
 }
 
-/** Save, and the keys: Ctrl or ⌘ with Z and Shift Z undo and redo. */
+/** Save, and the keys of undo and redo. */
 export function SaveAction({ bench, label }: { bench: Bench; label: string }) {
   const [saving, setSaving] = useState(false);
   const maySave = useCan('set:draft');
   useUndoKeys(bench);
+  useShortcuts(maySave ? { s: () => setSaving(true) } : NO_KEYS);
   return (
     <>
       <Button

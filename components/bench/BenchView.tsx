@@ -1,6 +1,7 @@
 import { useEffect, useState } from 'react';
 import { StyleSheet, View } from 'react-native';
 import { ChartOrigin } from '@/components/charts/chart-origin';
+import { useShortcuts } from '@/components/keyboard/use-shortcuts';
 import { Screen } from '@/components/layout/Screen';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
 import { Figures } from '@/components/ui/Figures';
@@ -37,6 +38,10 @@ export function BenchView({ start, locked, shown, own }: BenchViewProps) {
   );
   const origin = useRunOrigin(bench);
   useBenchAddress(bench, view, own);
+  useShortcuts({
+    a: () => bench.group.viewport.reset(),
+    ...Object.fromEntries(WIDE_VIEWS.map(({ id }, i) => [String(i + 1), () => setView(id)])),
+  });
   const notes = start.notes.join(' ');
   useEffect(() => {
     if (notes) toast({ message: notes, tone: 'ochre' });

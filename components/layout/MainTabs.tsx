@@ -1,6 +1,7 @@
 import { usePathname } from 'expo-router';
 import { TabList, Tabs, TabSlot, TabTrigger } from 'expo-router/ui';
 import { StyleSheet, View } from 'react-native';
+import { Keyboard } from '@/components/keyboard/Keyboard';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { useSession } from '@/hooks/session';
 import { can } from '@/shared/contracts/roles';
@@ -29,6 +30,7 @@ export function MainTabs() {
         <TabSlot />
       </View>
       {wide ? null : <BottomBar path={path} more={more} />}
+      <Keyboard />
     </Tabs>
   );
 }

@@ -1,4 +1,5 @@
 import { ScrollView, StyleSheet, View } from 'react-native';
+import { KeyboardButton } from '@/components/keyboard/KeyboardButton';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { hairline, space } from '@/constants/theme';
 import { Mark } from './Mark';
@@ -25,6 +26,7 @@ export function SideRail({ path, more }: { path: string; more: readonly Place[] 
       {more.map((place) => (
         <PlaceLink key={place.name} place={place} current={isAt(path, place.href)} shape="rail" />
       ))}
+      <KeyboardButton />
     </ScrollView>
   );
 }
