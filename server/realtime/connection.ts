@@ -13,7 +13,10 @@ import { rooms } from './rooms';
 export type NoEvents = Record<string, never>;
 export interface SocketData {
   userId: string;
+  name: string;
   workspaceIds: string[];
+  /** The bench that is open on this connection. */
+  bench?: { room: string; recordingId: string; benchId: string };
   /** Sent, and not yet taken by the transport. */
   framesWaiting: number;
 }
@@ -31,7 +34,7 @@ export async function greet(ctx: Context, sessions: Sessions, socket: LiveSocket
   if (!session || !person) throw new Error('Not signed in: sign in and connect again.');
   const sid = session.id;
   const workspaceIds = person.memberships.map((member) => member.workspaceId);
-  socket.data = { userId: person.userId, workspaceIds, framesWaiting: 0 };
+  socket.data = { userId: person.userId, name: person.name, workspaceIds, framesWaiting: 0 };
   watchDrain(socket);
   await socket.join([rooms.session(sid), rooms.user(person.userId), ...workspaceIds.map(rooms.workspace)]);
   keepChecking(ctx, sessions, socket, sid);

@@ -2,6 +2,7 @@
 import type { Server as HttpServer } from 'node:http';
 import { Server } from 'socket.io';
 import {
+  type BenchRun,
   type ClientToServerEvents,
   LIVE_NAMESPACE,
   type RecordingChanged,
@@ -14,6 +15,7 @@ import type { Context } from '../context';
 import { isOwnOrigin } from '../middleware/cross-site';
 import type { Sessions } from '../middleware/session';
 import { greet, type LiveSocket, type NoEvents, type SocketData } from './connection';
+import { welcomeBenches } from './benches';
 import { sendFrame } from './frames';
 import { rooms } from './rooms';
 
@@ -26,6 +28,8 @@ export interface Live {
   summary(message: { runId: string; summary: RunSummary; hasSeries: boolean }): void;
   failed(message: RunFailed): void;
   recordingChanged(message: RecordingChanged): void;
+  /** A bench of the workspace starts a run. */
+  benchRun(workspaceId: string, message: BenchRun): void;
   /** A session has ended: its sockets end too. */
   endSession(sid: string): void;
   endUser(userId: string): void;
@@ -51,6 +55,8 @@ export function createLive(): Live {
     failed: (message) => void toRun(message.runId).emit('run:failed', message),
     recordingChanged: (message) =>
       void live.to(rooms.workspace(message.workspaceId)).emit('recording:changed', message),
+    benchRun: (workspaceId, message) =>
+      void live.to(rooms.bench(workspaceId, message.recordingId)).emit('bench:run', message),
     endSession: (sid) => live.in(rooms.session(sid)).disconnectSockets(true),
     endUser: (userId) => live.in(rooms.user(userId)).disconnectSockets(true),
     // The client connects again and finds itself in the workspaces that are left.
@@ -65,7 +71,10 @@ export function createLive(): Live {
       });
       io.engine.use(sessions.middleware);
       live.use((socket: LiveSocket, next) => {
-        greet(ctx, sessions, socket).then(() => next(), next);
+        greet(ctx, sessions, socket).then(() => {
+          welcomeBenches(ctx, live, socket);
+          next();
+        }, next);
       });
     },
     async close() {

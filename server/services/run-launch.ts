@@ -41,6 +41,7 @@ export function launch(ctx: Context, run: Run, recording: Recording): void {
   );
   active.cancel = () => job.cancel();
   active.ended = see(ctx, run, recording, active, job.result);
+  if (benchId) ctx.live.benchRun(workspaceId, { recordingId, benchId, runId: run.id });
 }
 
 /** What a worker must know of a run. */

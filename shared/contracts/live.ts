@@ -24,11 +24,34 @@ export interface RecordingChanged {
   /** Of decoding, 0…1 */
   progress: number;
 }
+/** An open bench over a recording: each has a name of its own by which its runs are known. */
+export interface BenchVisitor {
+  userId: string;
+  name: string;
+  benchId: string;
+}
+/** Sent to every bench that is open over the recording when one opens or closes. */
+export interface BenchCompany {
+  recordingId: string;
+  visitors: BenchVisitor[];
+}
+/** Sent to them when one of them starts a run. */
+export interface BenchRun {
+  recordingId: string;
+  benchId: string;
+  runId: string;
+}
 export type FollowAnswer = { ok: true } | { ok: false; reason: string };
 
 export interface ClientToServerEvents {
   'run:follow': (message: { runId: string }, answer: (result: FollowAnswer) => void) => void;
   'run:unfollow': (message: { runId: string }) => void;
+  /** Opens a bench over a recording; a socket has one, and a second takes its place. */
+  'bench:open': (
+    message: { recordingId: string; benchId: string },
+    answer: (result: FollowAnswer) => void,
+  ) => void;
+  'bench:close': () => void;
 }
 export interface ServerToClientEvents {
   /** An encoded frame (contracts/frames.ts). Volatile: a slow client misses frames, never the summary. */
@@ -37,4 +60,6 @@ export interface ServerToClientEvents {
   'run:summary': (message: { runId: string; summary: RunSummary; hasSeries: boolean }) => void;
   'run:failed': (message: RunFailed) => void;
   'recording:changed': (message: RecordingChanged) => void;
+  'bench:company': (message: BenchCompany) => void;
+  'bench:run': (message: BenchRun) => void;
 }

@@ -2,6 +2,8 @@
 import { io, type Socket } from 'socket.io-client';
 import { decodeFrame, type Frame } from '@/shared/contracts/frames';
 import {
+  type BenchCompany,
+  type BenchRun,
   type ClientToServerEvents,
   type FollowAnswer,
   LIVE_NAMESPACE,
@@ -21,7 +23,10 @@ export interface LiveClient {
   summaries: { runId: string; summary: RunSummary; hasSeries: boolean }[];
   failures: RunFailed[];
   recordings: RecordingChanged[];
+  company: BenchCompany[];
+  benchRuns: BenchRun[];
   follow(runId: string): Promise<FollowAnswer>;
+  openBench(recordingId: string, benchId: string): Promise<FollowAnswer>;
   close(): void;
 }
 
@@ -44,6 +49,10 @@ export async function connectLive(
     summaries: [],
     failures: [],
     recordings: [],
+    company: [],
+    benchRuns: [],
+    openBench: (recordingId, benchId) =>
+      new Promise<FollowAnswer>((resolve) => socket.emit('bench:open', { recordingId, benchId }, resolve)),
     follow: (runId) => new Promise<FollowAnswer>((resolve) => socket.emit('run:follow', { runId }, resolve)),
     close: () => void socket.disconnect(),
   };
@@ -52,6 +61,8 @@ export async function connectLive(
   socket.on('run:summary', (message) => client.summaries.push(message));
   socket.on('run:failed', (message) => client.failures.push(message));
   socket.on('recording:changed', (message) => client.recordings.push(message));
+  socket.on('bench:company', (message) => client.company.push(message));
+  socket.on('bench:run', (message) => client.benchRuns.push(message));
   await new Promise<void>((resolve, reject) => {
     socket.once('connect', resolve);
     socket.once('connect_error', reject);
