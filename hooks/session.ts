@@ -16,6 +16,7 @@ export interface Workspace {
 
 export interface Session {
   user: Me['user'];
+  preferences: Me['preferences'];
   workspace: Workspace;
   workspaces: readonly Workspace[];
   switchWorkspace: (id: string) => void;

@@ -43,6 +43,16 @@ export function chosenUnit(quantity: Quantity, chosen: DisplayUnits): DisplayUni
   return unitsOf(quantity).find(({ symbol }) => symbol === chosen[quantity]) ?? null;
 }
 
+/** Symbol, and what a raw number is multiplied by to be shown; `siPerRaw`: what one of it is in SI. */
+export function scaleOf(
+  quantity: Quantity,
+  chosen: DisplayUnits = {},
+  siPerRaw = 1,
+): { symbol: string; factor: number } {
+  const { symbol, toSi } = displayUnit(quantity, chosen);
+  return { symbol, factor: siPerRaw / toSi };
+}
+
 /** An SI value in words: "0.3 °/√h". */
 export function quantityText(si: number, quantity: Quantity, chosen: DisplayUnits = {}, digits = 3): string {
   const unit = displayUnit(quantity, chosen);

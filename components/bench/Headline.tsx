@@ -3,6 +3,7 @@ import { Figures } from '@/components/ui/Figures';
 import { Text, type Tone } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { fonts, hairline, radius, space } from '@/constants/theme';
+import { useDisplayUnits } from '@/hooks/preferences';
 import { formatNumber } from '@/shared/format';
 import { headlineFigures, type HeadlineFigure, type Verdict } from './headline';
 import { useSummary, type Bench } from './use-bench';
@@ -18,7 +19,7 @@ export interface HeadlineProps {
 export function Headline({ bench, only, columns }: HeadlineProps) {
   const { palette } = useTheme();
   const summary = useSummary(bench);
-  const all = headlineFigures(summary, bench.baselineSummary);
+  const all = headlineFigures(summary, bench.baselineSummary, useDisplayUnits());
   const figures = only ? all.filter((figure) => only.includes(figure.key)) : all;
   return (
     <View

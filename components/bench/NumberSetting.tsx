@@ -1,5 +1,6 @@
 import { useState } from 'react';
 import { Field } from '@/components/ui/Field';
+import { useDisplayUnits } from '@/hooks/preferences';
 import { fieldUnit, type ParameterField } from '@/shared/parameters/parameter-field';
 import { readPath } from '@/shared/parameters/parameter-path';
 import { leafAt } from './parameter-schema';
@@ -17,10 +18,12 @@ export function NumberSetting({ bench, field }: NumberSettingProps) {
   const value = readPath(bench.config.parameters, path);
   const [typed, setTyped] = useState<string | null>(null);
   const [problem, setProblem] = useState<string | null>(null);
-  const shown = fieldText(field, value);
+  const units = useDisplayUnits();
+  const shown = fieldText(field, value, units);
   const apply = () => {
     if (typed === null) return;
-    const result = typed === shown ? { value } : readField(field, { ...leafAt(path), ...range }, typed);
+    const result =
+      typed === shown ? { value } : readField(field, { ...leafAt(path), ...range }, typed, units);
     if ('message' in result) return setProblem(result.message);
     setProblem(null);
     setTyped(null);
@@ -29,7 +32,7 @@ export function NumberSetting({ bench, field }: NumberSettingProps) {
   return (
     <Field
       label={label}
-      unit={fieldUnit(field)?.symbol}
+      unit={fieldUnit(field, units)?.symbol}
       numeric
       value={typed ?? shown}
       placeholder={unset}

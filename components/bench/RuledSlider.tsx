@@ -4,12 +4,14 @@ import { useBreakpoint } from '@/components/layout/use-breakpoint';
 import { Text } from '@/components/ui/Text';
 import { web } from '@/components/ui/web-props';
 import { fonts, space, touchTarget } from '@/constants/theme';
+import { useDisplayUnits } from '@/hooks/preferences';
+import { displayUnit } from '@/shared/display-units';
 import { formatChange, formatNumber } from '@/shared/format';
 import { toDisplay, type DisplayUnit } from '@/shared/units';
 import type { SliderSpec } from '@/shared/parameters/parameter-specs';
 import { RulerDrawing, RULER_INSET_PX } from './RulerDrawing';
 import { bindSliderGestures } from './slider-gestures';
-import { defaultUnit, fractionOf, sliderKey, valueAt } from './slider-model';
+import { fractionOf, sliderKey, valueAt } from './slider-model';
 import { TypedQuantity } from './TypedQuantity';
 
 export interface RuledSliderProps {
@@ -29,7 +31,8 @@ export interface RuledSliderProps {
 
 /** A ruled logarithmic slider: drag, tap, keys, typed value with unit; double tap returns to the baseline. */
 export function RuledSlider({ spec, value, baseline, reference, unit, onChange, locked }: RuledSliderProps) {
-  const shownUnit = unit ?? defaultUnit(spec.quantity);
+  const chosen = useDisplayUnits();
+  const shownUnit = unit ?? displayUnit(spec.quantity, chosen);
   const [width, setWidth] = useState(0);
   const rulerPx = useBreakpoint().wide ? 36 : touchTarget;
   const rule = useSliderSurface({ spec, value, baseline, unit: shownUnit, onChange, locked, width });

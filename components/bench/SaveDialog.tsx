@@ -14,6 +14,7 @@ import { Figures } from '@/components/ui/Figures';
 import { Sheet } from '@/components/ui/Sheet';
 import { Text } from '@/components/ui/Text';
 import { useToast } from '@/components/ui/ToastProvider';
+import { useDisplayUnits } from '@/hooks/preferences';
 import { itemsOf } from '@/hooks/recordings';
 import { useCreateParameterSet, useCreateVersion, useParameterSets } from '@/hooks/parameter-sets';
 import { useLive } from '@/hooks/use-live-run';
@@ -37,7 +38,7 @@ export function SaveDialog({ bench, onClose }: { bench: Bench; onClose: () => vo
   const createSet = useCreateParameterSet();
   const createVersion = useCreateVersion(target);
   const run = useProvingRun(bench);
-  const changes = describeChanges(bench.start.from, bench.config.parameters);
+  const changes = describeChanges(bench.start.from, bench.config.parameters, useDisplayUnits());
   const form = useForm<Form>({ resolver: zodResolver(formSchema), defaultValues: { name: '', note: '' } });
   const problem = form.formState.errors.root?.message;
 

@@ -1,5 +1,6 @@
 /** Which charts there are, and how they are gathered into views: several stacked when wide, one at a time on the phone. */
 import type { ChartContent, TimeWindow } from '@/components/charts/model/layers';
+import type { DisplayUnits } from '@/shared/display-units';
 import type { CurvesSource } from './curves';
 import { innovationChart, nisChart } from './innovation-charts';
 import { biasChart, coastingChart, horizontalSigmaChart, sigmaChart } from './state-charts';
@@ -57,20 +58,24 @@ export type PhoneChart = (typeof PHONE_CHARTS)[number]['id'];
 export type TimeCharts = ReturnType<typeof makeTimeCharts>;
 
 /** All charts over time of a bench; made once, they read the curves at each drawing. */
-export function makeTimeCharts(source: CurvesSource, windows: () => readonly TimeWindow[]) {
+export function makeTimeCharts(
+  source: CurvesSource,
+  windows: () => readonly TimeWindow[],
+  units: DisplayUnits = {},
+) {
   return {
-    'innovation.position': innovationChart(source, 'position', windows),
-    'innovation.velocity': innovationChart(source, 'velocity', windows),
+    'innovation.position': innovationChart(source, 'position', windows, units),
+    'innovation.velocity': innovationChart(source, 'velocity', windows, units),
     'nis.position': nisChart(source, 'position', windows),
     'nis.velocity': nisChart(source, 'velocity', windows),
-    'sigma.horizontal': horizontalSigmaChart(source, windows),
-    'sigma.position': sigmaChart(source, 'position', windows),
-    'sigma.velocity': sigmaChart(source, 'velocity', windows),
-    'sigma.attitude': sigmaChart(source, 'attitude', windows),
-    'bias.gyro': biasChart(source, 'gyro', windows),
-    'bias.accel': biasChart(source, 'accel', windows),
-    'coasting.horizontal': coastingChart(source, 'horizontal', windows),
-    'coasting.vertical': coastingChart(source, 'vertical', windows),
+    'sigma.horizontal': horizontalSigmaChart(source, windows, units),
+    'sigma.position': sigmaChart(source, 'position', windows, units),
+    'sigma.velocity': sigmaChart(source, 'velocity', windows, units),
+    'sigma.attitude': sigmaChart(source, 'attitude', windows, units),
+    'bias.gyro': biasChart(source, 'gyro', windows, units),
+    'bias.accel': biasChart(source, 'accel', windows, units),
+    'coasting.horizontal': coastingChart(source, 'horizontal', windows, units),
+    'coasting.vertical': coastingChart(source, 'vertical', windows, units),
   } satisfies Record<string, ChartContent>;
 }
 

@@ -6,6 +6,8 @@ import type {
   TruthStatistics,
 } from '@/shared/contracts/runs';
 import { formatNumber } from '@/shared/format';
+import { scaleOf, type DisplayUnits } from '@/shared/display-units';
+import { RAD_PER_DEG } from '@/shared/units';
 import type { FigureRow } from './FigureRows';
 
 /** How often each aid was used and rejected, and its mean NIS. */
@@ -25,26 +27,28 @@ export const aidName = (aid: AidStatistics['aid']): string =>
   aid === 'non-holonomic' ? 'Non-holonomic' : aid[0]!.toUpperCase() + aid.slice(1).replaceAll('-', ' ');
 
 /** RMS errors against the truth where the recording has one; the smoothed ones beside them. */
-export function truthRows(summary: RunSummary | null): FigureRow[] {
+export function truthRows(summary: RunSummary | null, chosen: DisplayUnits = {}): FigureRow[] {
   const truth = summary?.truth;
   if (!truth) return [];
   const smoothed = summary.smoothedTruth ?? null;
   const row = (
     key: string,
     label: string,
-    unit: string,
+    { symbol, factor }: ReturnType<typeof scaleOf>,
     of: (one: TruthStatistics) => number | null | undefined,
   ) => {
     const [filtered, after] = [of(truth), smoothed ? of(smoothed) : null];
     if (filtered == null) return [];
-    const note = after == null ? 'RMS of the filter' : `RMS, smoothed ${formatNumber(after)} ${unit}`;
-    return [{ key, label, note, value: formatNumber(filtered), unit }];
+    const note =
+      after == null ? 'RMS of the filter' : `RMS, smoothed ${formatNumber(after * factor)} ${symbol}`;
+    return [{ key, label, note, value: formatNumber(filtered * factor), unit: symbol }];
   };
+  const length = scaleOf('length', chosen);
   return [
-    ...row('horizontal', 'Horizontal', 'm', (one) => one.horizontalRmseM),
-    ...row('vertical', 'Vertical', 'm', (one) => one.verticalRmseM),
-    ...row('velocity', 'Velocity', 'm/s', (one) => one.velocityRmseMPerS),
-    ...row('yaw', 'Yaw', '°', (one) => one.attitudeRmseDeg?.yaw),
+    ...row('horizontal', 'Horizontal', length, (one) => one.horizontalRmseM),
+    ...row('vertical', 'Vertical', length, (one) => one.verticalRmseM),
+    ...row('velocity', 'Velocity', scaleOf('speed', chosen), (one) => one.velocityRmseMPerS),
+    ...row('yaw', 'Yaw', scaleOf('angle', chosen, RAD_PER_DEG), (one) => one.attitudeRmseDeg?.yaw),
   ];
 }
 

@@ -1,5 +1,6 @@
 /** The headline figures of a run and what changed against the baseline. Pure. */
 import type { GroupStatistics, OutageResult, RunSummary } from '@/shared/contracts/runs';
+import { scaleOf, type DisplayUnits } from '@/shared/display-units';
 import { formatChange, formatNumber } from '@/shared/format';
 import { lengthLabel } from '@/components/strip/labels';
 
@@ -23,17 +24,26 @@ export interface HeadlineFigure {
 const DRIFT_AT_S = 60;
 
 /** Figures of `summary`; `baseline` is the baseline's over the same windows. */
-export function headlineFigures(summary: RunSummary | null, baseline: RunSummary | null): HeadlineFigure[] {
+export function headlineFigures(
+  summary: RunSummary | null,
+  baseline: RunSummary | null,
+  chosen: DisplayUnits = {},
+): HeadlineFigure[] {
+  const { symbol, factor } = scaleOf('length', chosen);
   const [drift, before] = [driftOf(summary), driftOf(baseline)];
   return [
     {
       key: 'drift',
       label: drift ? `Drift after ${lengthLabel(drift.afterS)}` : 'Drift',
-      value: drift?.actual ?? null,
-      unit: 'm',
+      value: drift && drift.actual * factor,
+      unit: symbol,
       digits: 3,
       verdict: 'plain',
-      change: changeOf(drift?.actual, before && before.afterS === drift?.afterS ? before.actual : null, ' m'),
+      change: changeOf(
+        drift && drift.actual * factor,
+        before && before.afterS === drift?.afterS ? before.actual * factor : null,
+        ` ${symbol}`,
+      ),
       remark: drift
         ? drift.windows === 1
           ? '1 window'

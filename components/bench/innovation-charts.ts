@@ -1,6 +1,7 @@
 /** Innovations with ±3σ and NIS with its χ² bounds, for position and velocity. */
 import { axisDash } from '@/constants/theme';
 import type { FrameColumn } from '@/shared/contracts/frames';
+import { scaleOf, type DisplayUnits } from '@/shared/display-units';
 import { formatNumber } from '@/shared/format';
 import type { ChartContent, Layer, TimeWindow } from '@/components/charts/model/layers';
 import { nisBounds95 } from '@/components/charts/model/chi-square';
@@ -24,11 +25,13 @@ export function innovationChart(
   source: CurvesSource,
   group: InnovationGroup,
   windows: () => readonly TimeWindow[],
+  chosen: DisplayUnits = {},
 ): ChartContent {
+  const { symbol, factor } = scaleOf(group === 'position' ? 'length' : 'speed', chosen);
   const innovation = (axis: AxisSpec) => (data: RunData | null) =>
-    data && filtered(seriesOf(data, group, column(group, axis.key)), wasAccepted(data, group));
+    data && filtered(seriesOf(data, group, column(group, axis.key), factor), wasAccepted(data, group));
   const sigma = (axis: AxisSpec) => (data: RunData | null) =>
-    seriesOf(data, group, column(group, `sigma_${axis.key}`), 3);
+    seriesOf(data, group, column(group, `sigma_${axis.key}`), 3 * factor);
   const curves: CurveSpec[] = NED.map((axis) => ({
     id: axis.key,
     label: axis.label,
@@ -67,7 +70,7 @@ export function innovationChart(
             : axes.reduce(
                 (worst, [value, width]) => {
                   const size = Math.abs(value![row]! / width![row]!);
-                  return size > worst.size ? { size, value: value![row]! } : worst;
+                  return size > worst.size ? { size, value: factor * value![row]! } : worst;
                 },
                 { size: 0, value: NaN },
               ).value;
@@ -76,7 +79,7 @@ export function innovationChart(
   return {
     id: `innovation.${group}`,
     title: group === 'position' ? 'Position innovation' : 'Velocity innovation',
-    unit: UNIT[group],
+    unit: symbol,
     layers: [...bands, ...lines.flatMap((line) => line.under), ...lines.map((line) => line.over), rejected],
     windows,
     domain: (fromS, toS) => {
@@ -98,6 +101,7 @@ export function innovationChart(
       const height = Math.max((three ?? 1) * 1.2, Math.min((most ?? 0) * 1.1, (three ?? 1) * 3));
       return [-height, height];
     },
+    empty: () => emptyInnovations(source, group),
     sentence: () => innovationSentence(source, group),
   };
 }
@@ -169,8 +173,20 @@ export function nisChart(
       const high = bounds()[1];
       return [0, Math.min(high * 4, Math.max(high * 1.3, (most ?? 0) * 1.05))];
     },
+    empty: () => emptyInnovations(source, group),
     sentence: () => nisSentence(source, group),
   };
+}
+
+/** Why a finished run has no innovations of a group. */
+function emptyInnovations(source: CurvesSource, group: InnovationGroup): string {
+  const summary = source.summary();
+  if (!summary) return 'No figures yet.';
+  const found = summary.groups.find((one) => one.group === group);
+  if (found && found.used + found.rejected > 0) return 'No fix in this stretch of time.';
+  return group === 'velocity'
+    ? 'No GNSS velocity was used: the recording has none, or all of it is withheld.'
+    : 'No GNSS position was used: the recording has none, or all of it is withheld.';
 }
 
 function innovationSentence(source: CurvesSource, group: InnovationGroup): string {

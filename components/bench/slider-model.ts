@@ -1,13 +1,7 @@
 /** The ruled logarithmic slider's arithmetic: values, places along the rule, keys, typed text. Pure. */
 import { formatNumber } from '@/shared/format';
-import {
-  QUANTITIES,
-  defaultUnit,
-  fromDisplay,
-  toDisplay,
-  type DisplayUnit,
-  type Quantity,
-} from '@/shared/units';
+import { unitsOf } from '@/shared/display-units';
+import { fromDisplay, toDisplay, type DisplayUnit, type Quantity } from '@/shared/units';
 import type { LogRange } from '@/shared/parameters/parameter-specs';
 
 /** Place of `value` along the rule, 0…1, held inside. */
@@ -104,10 +98,6 @@ export function parseTyped(text: string, quantity: Quantity, unit: DisplayUnit, 
     };
   return { value };
 }
-
-/** The display units of a quantity, the first being its default. */
-export const unitsOf = (quantity: Quantity): readonly DisplayUnit[] => QUANTITIES[quantity];
-export { defaultUnit };
 
 function unitOf(text: string, quantity: Quantity): DisplayUnit | undefined {
   const plain = (symbol: string) =>

@@ -2,7 +2,8 @@
 import type { FrameColumn } from '@/shared/contracts/frames';
 import type { OutageResult } from '@/shared/contracts/runs';
 import { formatNumber } from '@/shared/format';
-import { QUANTITIES } from '@/shared/units';
+import { displayUnit, scaleOf, type DisplayUnits } from '@/shared/display-units';
+import { RAD_PER_DEG } from '@/shared/units';
 import { radius95OverDrms } from '@/components/charts/model/chi-square';
 import type { Annotation, ChartContent, TimeWindow } from '@/components/charts/model/layers';
 import type { TimeSeries } from '@/components/charts/model/series';
@@ -21,6 +22,7 @@ import {
   type CurveSpec,
 } from './chart-parts';
 
+type Scaled = ReturnType<typeof scaleOf>;
 type Windows = () => readonly TimeWindow[];
 type StateColumn = FrameColumn<'state'>;
 
@@ -29,13 +31,18 @@ export function sigmaChart(
   source: CurvesSource,
   state: 'position' | 'velocity' | 'attitude',
   windows: Windows,
+  chosen: DisplayUnits = {},
 ): ChartContent {
-  const specs = {
-    position: axisCurves('sigma', 'state', NED, (axis) => `sigma_${axis.key}_m` as StateColumn),
-    velocity: axisCurves('sigma', 'state', NED, (axis) => `sigma_v${axis.key}_m_s` as StateColumn),
-    attitude: axisCurves('sigma', 'state', ANGLES, (axis) => `sigma_${axis.key}_deg` as StateColumn),
+  const { symbol: unit, factor } = {
+    position: scaleOf('length', chosen),
+    velocity: scaleOf('speed', chosen),
+    attitude: scaleOf('angle', chosen, RAD_PER_DEG),
   }[state];
-  const unit = { position: 'm', velocity: 'm/s', attitude: '°' }[state];
+  const specs = {
+    position: axisCurves('sigma', 'state', NED, (axis) => `sigma_${axis.key}_m` as StateColumn, factor),
+    velocity: axisCurves('sigma', 'state', NED, (axis) => `sigma_v${axis.key}_m_s` as StateColumn, factor),
+    attitude: axisCurves('sigma', 'state', ANGLES, (axis) => `sigma_${axis.key}_deg` as StateColumn, factor),
+  }[state];
   return {
     id: `sigma.${state}`,
     title: { position: 'Position σ', velocity: 'Velocity σ', attitude: 'Attitude σ' }[state],
@@ -50,14 +57,20 @@ export function sigmaChart(
       const key = ({ position: 'positionM', velocity: 'velocityMPerS', attitude: 'attitudeDeg' } as const)[
         state
       ];
-      const written = (values: readonly number[]) => values.map((value) => formatNumber(value)).join(', ');
+      const written = (values: readonly number[]) =>
+        values.map((value) => formatNumber(value * factor)).join(', ');
       return `Mean ${written(summary.meanSigma[key])} ${unit}, at the end ${written(summary.finalSigma[key])} ${unit}.`;
     },
   };
 }
 
 /** √(σ_N² + σ_E²): how far the filter believes itself off. */
-export function horizontalSigmaChart(source: CurvesSource, windows: Windows): ChartContent {
+export function horizontalSigmaChart(
+  source: CurvesSource,
+  windows: Windows,
+  chosen: DisplayUnits = {},
+): ChartContent {
+  const { symbol, factor } = scaleOf('length', chosen);
   const spec: CurveSpec = {
     id: 'horizontal',
     column: 'sigma_horizontal',
@@ -67,26 +80,33 @@ export function horizontalSigmaChart(source: CurvesSource, windows: Windows): Ch
     series: (data) =>
       derivedSeries(data, 'state', (run) => {
         const [n, e] = [run.column('state', 'sigma_n_m'), run.column('state', 'sigma_e_m')];
-        return (row) => Math.hypot(n[row]!, e[row]!);
+        return (row) => factor * Math.hypot(n[row]!, e[row]!);
       }),
   };
   return {
     id: 'sigma.horizontal',
     title: 'Horizontal σ',
-    unit: 'm',
+    unit: symbol,
     layers: stacked(source, [spec]),
     windows,
     domain: (fromS, toS) => fromZero(allRuns(source, [spec]), fromS, toS),
     sentence: () => {
       const sigma = source.summary()?.meanSigma.positionM;
-      return sigma ? `Mean ${formatNumber(Math.hypot(sigma[0], sigma[1]))} m.` : 'No figures yet.';
+      return sigma
+        ? `Mean ${formatNumber(factor * Math.hypot(sigma[0], sigma[1]))} ${symbol}.`
+        : 'No figures yet.';
     },
   };
 }
 
 /** Estimated biases with ±1σ. */
-export function biasChart(source: CurvesSource, sensor: 'gyro' | 'accel', windows: Windows): ChartContent {
-  const unit = QUANTITIES[sensor === 'gyro' ? 'gyroBias' : 'accelBias'][0];
+export function biasChart(
+  source: CurvesSource,
+  sensor: 'gyro' | 'accel',
+  windows: Windows,
+  chosen: DisplayUnits = {},
+): ChartContent {
+  const unit = displayUnit(sensor === 'gyro' ? 'gyroBias' : 'accelBias', chosen);
   const si = sensor === 'gyro' ? 'rad_s' : 'm_s2';
   const estimate = (key: string) => `${sensor}_bias_${key}_${si}` as StateColumn;
   const specs = axisCurves('bias', 'state', XYZ, (axis) => estimate(axis.key), 1 / unit.toSi);
@@ -125,7 +145,9 @@ export function coastingChart(
   source: CurvesSource,
   direction: 'horizontal' | 'vertical',
   windows: Windows,
+  chosen: DisplayUnits = {},
 ): ChartContent {
+  const scale = scaleOf('length', chosen);
   const error: CurveSpec = {
     id: 'error',
     label: 'error',
@@ -136,14 +158,14 @@ export function coastingChart(
     series: (data) =>
       derivedSeries(data, 'coasting', (run) => {
         const values = run.column('coasting', direction === 'horizontal' ? 'horizontal_m' : 'vertical_m');
-        return (row) => Math.abs(values[row]!);
+        return (row) => scale.factor * Math.abs(values[row]!);
       }),
   };
-  const predicted = (data: RunData | null) => predicted95(data, direction);
+  const predicted = (data: RunData | null) => predicted95(data, direction, scale.factor);
   return {
     id: `coasting.${direction}`,
     title: direction === 'horizontal' ? 'Coasting error, horizontal' : 'Coasting error, vertical',
-    unit: 'm',
+    unit: scale.symbol,
     remark: () => referenceWords(source),
     layers: [
       {
@@ -163,8 +185,8 @@ export function coastingChart(
       const all = [predicted(current), ...allRuns(source, [error]), predicted(previous)];
       return fromZero(all, fromS, toS);
     },
-    annotations: () => coastingNotes(source, error.series, predicted, direction),
-    sentence: () => coastingSentence(source),
+    annotations: () => coastingNotes(source, error.series, predicted, direction, scale),
+    sentence: () => coastingSentence(source, scale),
   };
 }
 
@@ -172,8 +194,12 @@ export function coastingChart(
  * Radius (horizontal) or half-width (vertical) that 95 % of errors should stay below. The ellipse's shape comes from the
  * state at the same time; its size from the coasting table.
  */
-function predicted95(data: RunData | null, direction: 'horizontal' | 'vertical'): TimeSeries | null {
-  if (direction === 'vertical') return seriesOf(data, 'coasting', 'predicted_vertical_m', 1.96);
+function predicted95(
+  data: RunData | null,
+  direction: 'horizontal' | 'vertical',
+  factor: number,
+): TimeSeries | null {
+  if (direction === 'vertical') return seriesOf(data, 'coasting', 'predicted_vertical_m', 1.96 * factor);
   return derivedSeries(data, 'coasting', (run) => {
     const time = run.column('coasting', 'time_s');
     const drms = run.column('coasting', 'predicted_horizontal_m');
@@ -182,7 +208,7 @@ function predicted95(data: RunData | null, direction: 'horizontal' | 'vertical')
     return (row) => {
       const state = stateRowAt(run, time[row]!);
       const ratio = state < 0 ? 1 : axisRatio(n[state]!, e[state]!, cov[state]!);
-      return drms[row]! * radius95OverDrms(ratio);
+      return factor * drms[row]! * radius95OverDrms(ratio);
     };
   });
 }
@@ -201,6 +227,7 @@ function coastingNotes(
   error: (data: RunData | null) => TimeSeries | null,
   predicted: (data: RunData | null) => TimeSeries | null,
   direction: 'horizontal' | 'vertical',
+  { symbol, factor }: Scaled,
 ): Annotation[] {
   const { current } = source.curves();
   const series = error(current);
@@ -216,7 +243,8 @@ function coastingNotes(
     const last = row + 1 === series.length || outage[row + 1] !== outage[row];
     if (!last) continue;
     const timeS = series.time[row]!;
-    const text = `${formatNumber(endErrors?.[outage[row]!] ?? series.at(row))} m`;
+    const end = endErrors?.[outage[row]!];
+    const text = `${formatNumber(end === undefined ? series.at(row) : end * factor)} ${symbol}`;
     notes.push({
       timeS,
       value: series.at(row),
@@ -241,16 +269,16 @@ function referenceWords(source: CurvesSource): string {
   return reference === 'truth' ? 'against the truth' : 'against the fully aided solution';
 }
 
-function coastingSentence(source: CurvesSource): string {
+function coastingSentence(source: CurvesSource, { symbol, factor }: Scaled): string {
   const outages = source.summary()?.outages ?? [];
   if (outages.length === 0) return 'No outage window yet: draw one on the strip.';
   return outages
     .map(({ points, startS, endS }) => {
       const last = points[points.length - 1];
       return last
-        ? `After ${formatNumber(endS - startS)} s the error is ${formatNumber(last.horizontalM)} m horizontally, ${formatNumber(
-            last.predictedHorizontalM,
-          )} m were predicted (1σ).`
+        ? `After ${formatNumber(endS - startS)} s the error is ${formatNumber(last.horizontalM * factor)} ${symbol} horizontally, ${formatNumber(
+            last.predictedHorizontalM * factor,
+          )} ${symbol} were predicted (1σ).`
         : '';
     })
     .filter(Boolean)

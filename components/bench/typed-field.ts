@@ -1,5 +1,6 @@
 /** A typed parameter: what stands in its field, and what a text means. Pure. */
 import { parseNumber } from '@/components/forms/parse-number';
+import type { DisplayUnits } from '@/shared/display-units';
 import { formatNumber } from '@/shared/format';
 import { fromDisplay, toDisplay } from '@/shared/units';
 import { fieldUnit, type ParameterField } from '@/shared/parameters/parameter-field';
@@ -10,9 +11,9 @@ import { parseTyped } from './slider-model';
 export type TypedResult = { value: number | null } | { message: string };
 
 /** The value as it stands in the field, in the display unit: as short as it can be told, four digits where it is endless. */
-export function fieldText(field: ParameterField, value: ParameterValue): string {
+export function fieldText(field: ParameterField, value: ParameterValue, chosen: DisplayUnits = {}): string {
   if (typeof value !== 'number') return '';
-  const unit = fieldUnit(field);
+  const unit = fieldUnit(field, chosen);
   const exact = unit ? toDisplay(value, unit) : value;
   const short = [1, 2, 3, 4, 5, 6, 7]
     .map((digits) => Number(exact.toPrecision(digits)))
@@ -24,8 +25,13 @@ export function fieldText(field: ParameterField, value: ParameterValue): string 
  * What was typed, SI; null where the field was emptied and may be. With or without a unit of the field's kind; without one
  * it is in the unit shown. What cannot be read or lies outside the contract's bounds is said in words.
  */
-export function readField(field: ParameterField, leaf: ParameterLeaf, text: string): TypedResult {
-  const unit = fieldUnit(field) ?? { symbol: '', toSi: 1 };
+export function readField(
+  field: ParameterField,
+  leaf: ParameterLeaf,
+  text: string,
+  chosen: DisplayUnits = {},
+): TypedResult {
+  const unit = fieldUnit(field, chosen) ?? { symbol: '', toSi: 1 };
   if (text.trim() === '')
     return leaf.optional
       ? { value: null }

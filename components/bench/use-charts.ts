@@ -1,19 +1,29 @@
 /** The chart contents of a bench, made once. */
 import { useEffect, useMemo, useRef } from 'react';
 import type { TrackContent } from '@/components/charts/model/track-drawing';
+import { useDisplayUnits } from '@/hooks/preferences';
 import { useRecordingSeries } from '@/hooks/recordings';
-import { useGnssOnlyTrack } from '@/hooks/runs';
+import { useGnssOnlyTrack, useRunCurves } from '@/hooks/runs';
+import { useLive } from '@/hooks/use-live-run';
 import { formatNumber } from '@/shared/format';
 import { makeTimeCharts, type TimeCharts } from './chart-views';
 import { stateRowAt } from './curves';
-import { fixTrack, gnssOnlyTrack, isCoasting, referenceTrack, stateTrack } from './track-content';
+import {
+  fixTrack,
+  gnssOnlyTrack,
+  isCoasting,
+  referenceTrack,
+  smoothedTrack,
+  stateTrack,
+} from './track-content';
 import type { Bench } from './use-bench';
 
 const FIX_POINTS = 4000;
 
 export function useTimeCharts(bench: Bench): TimeCharts {
   const windows = useLatest(bench.config.outages);
-  return useMemo(() => makeTimeCharts(bench.source, windows), [bench.source, windows]);
+  const units = useDisplayUnits();
+  return useMemo(() => makeTimeCharts(bench.source, windows, units), [bench.source, windows, units]);
 }
 
 /** The plan view's content; fixes and the GNSS-only track come from the recording. */
@@ -24,7 +34,8 @@ export function useTrackContent(bench: Bench): TrackContent {
   const windows = useLatest(bench.config.outages);
   const { source } = bench;
   const { group } = bench;
-  useEffect(() => group.invalidate(), [group, fixes, gnssOnly]);
+  const smoothed = useSmoothedCurves(bench);
+  useEffect(() => group.invalidate(), [group, fixes, gnssOnly, smoothed]);
   return useMemo<TrackContent>(() => {
     // While a newer run has drawn little, the one before still shows the whole track.
     const run = () => {
@@ -35,15 +46,25 @@ export function useTrackContent(bench: Bench): TrackContent {
       solution: () => stateTrack(run()),
       isCoasting: (timeS) => isCoasting(windows(), timeS),
       ghost: () => stateTrack(source.curves().ghost),
-      smoothed: () => stateTrack(null),
+      smoothed: () => smoothedTrack(smoothed && run()?.runId === smoothed.runId ? smoothed : null),
       fixes: () => fixTrack(fixes, gnssOnly, run()),
       gnssOnly: () => gnssOnlyTrack(gnssOnly, run()),
       reference: () => referenceTrack(run()),
       pointAt: (timeS) => pointAt(run(), timeS),
       sentence: () => trackSentence(run()),
     };
-  }, [source, fixes, gnssOnly, windows]);
+  }, [source, fixes, gnssOnly, smoothed, windows]);
 }
+
+/** Frames carry no smoothed track: it is fetched when a run that made one is done. */
+function useSmoothedCurves({ live }: Bench) {
+  const runId = useLive(live, (state) =>
+    state.phase === 'done' && state.summaryRequest?.smooth ? state.summaryRunId : null,
+  );
+  return useRunCurves(runId, SMOOTHED_POINTS).data ?? null;
+}
+
+const SMOOTHED_POINTS = 3000;
 
 function pointAt(data: ReturnType<Bench['source']['curves']>['current'], timeS: number) {
   if (!data) return null;

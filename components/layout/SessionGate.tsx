@@ -26,6 +26,7 @@ export function SessionGate({ children }: { children: ReactNode }) {
     if (!person || !workspace) return null;
     return {
       user: person.user,
+      preferences: person.preferences,
       workspace,
       workspaces: person.workspaces,
       switchWorkspace: (id) => {

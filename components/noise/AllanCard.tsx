@@ -6,8 +6,10 @@ import { VisuallyHidden } from '@/components/charts/VisuallyHidden';
 import { Card } from '@/components/ui/Card';
 import { Skeleton } from '@/components/ui/Skeleton';
 import { Text } from '@/components/ui/Text';
+import { useDisplayUnits } from '@/hooks/preferences';
 import type { NoiseAnalysis } from '@/shared/contracts/noise';
 import type { SensorFigures } from '@/shared/contracts/vehicles';
+import { displayUnit } from '@/shared/display-units';
 import { formatNumber } from '@/shared/format';
 import { allanCurves, datasheetCurve } from './allan-content';
 import { SENSORS, type Sensor } from './sensors';
@@ -28,16 +30,18 @@ export interface AllanCardProps {
 /** Allan deviation of a sensor's three axes over the averaging time, with what was fitted and what the datasheet says. */
 export function AllanCard({ sensor, analysis, datasheet }: AllanCardProps) {
   const [width, setWidth] = useState(0);
+  const chosen = useDisplayUnits();
   const { title, deviation } = SENSORS[sensor];
-  const curves = useMemo(() => allanCurves(analysis, sensor), [analysis, sensor]);
+  const unit = displayUnit(deviation, chosen).symbol;
+  const curves = useMemo(() => allanCurves(analysis, sensor, chosen), [analysis, sensor, chosen]);
   const expected = useMemo(() => {
     const taus = curves.flatMap(({ points }) => points.map(({ tauS }) => tauS));
-    return datasheetCurve(datasheet, sensor, [Math.min(...taus), Math.max(...taus)]);
-  }, [curves, datasheet, sensor]);
+    return datasheetCurve(datasheet, sensor, [Math.min(...taus), Math.max(...taus)], chosen);
+  }, [curves, datasheet, sensor, chosen]);
   const heading = `${title}: Allan deviation`;
-  const sentences = curves.map((curve) => sentence(curve, deviation.symbol)).join(' ');
+  const sentences = curves.map((curve) => sentence(curve, unit)).join(' ');
   const save = allanSave(
-    { curves, expected, unit: deviation.symbol },
+    { curves, expected, unit },
     { title: heading, aside: 'bars 68 %', sentence: sentences },
   );
   return (
@@ -52,13 +56,7 @@ export function AllanCard({ sensor, analysis, datasheet }: AllanCardProps) {
         {width > 0 ? (
           <View aria-hidden>
             <Suspense fallback={<Skeleton height={HEIGHT} />}>
-              <AllanChart
-                curves={curves}
-                expected={expected}
-                unit={deviation.symbol}
-                width={width}
-                height={HEIGHT}
-              />
+              <AllanChart curves={curves} expected={expected} unit={unit} width={width} height={HEIGHT} />
             </Suspense>
           </View>
         ) : null}

@@ -13,10 +13,12 @@ import { Quantity } from '@/components/ui/Quantity';
 import { Text } from '@/components/ui/Text';
 import { useToast } from '@/components/ui/ToastProvider';
 import { space } from '@/constants/theme';
+import { useDisplayUnits } from '@/hooks/preferences';
 import { usePatchVehicle } from '@/hooks/vehicles';
 import { sensorFiguresSchema, type SensorModel, type Vehicle } from '@/shared/contracts/vehicles';
 import { formatClock } from '@/shared/format';
-import { defaultUnit, fromDisplay } from '@/shared/units';
+import { displayUnit, type DisplayUnits } from '@/shared/display-units';
+import { fromDisplay } from '@/shared/units';
 import { SENSOR_NAMES, SENSORS, shownFigure, type Sensor } from './sensors';
 
 const shown = z.record(
@@ -30,14 +32,15 @@ type SensorForm = z.infer<typeof formSchema>;
 export function SensorCard({ vehicle, readOnly }: { vehicle: Vehicle; readOnly: boolean }) {
   const patch = usePatchVehicle(vehicle.id);
   const toast = useToast();
+  const units = useDisplayUnits();
   const { control, handleSubmit, setError, formState, reset } = useForm<SensorForm>({
     resolver: zodResolver(formSchema),
-    defaultValues: formOf(vehicle.sensor),
+    defaultValues: formOf(vehicle.sensor, units),
   });
   const submit = handleSubmit(async (form) => {
     try {
       const measured = vehicle.sensor?.measured ?? null;
-      await patch.mutateAsync({ sensor: { name: form.name, datasheet: figuresOf(form), measured } });
+      await patch.mutateAsync({ sensor: { name: form.name, datasheet: figuresOf(form, units), measured } });
       reset(form);
       toast({ message: 'The datasheet’s figures are saved.' });
     } catch (error) {
@@ -66,7 +69,7 @@ export function SensorCard({ vehicle, readOnly }: { vehicle: Vehicle; readOnly: 
                   control={control}
                   name={`${sensor}.${spec.field}`}
                   label={spec.label}
-                  unit={defaultUnit(spec.quantity).symbol}
+                  unit={displayUnit(spec.quantity, units).symbol}
                   editable={!readOnly}
                 />
               </View>
@@ -86,6 +89,7 @@ export function SensorCard({ vehicle, readOnly }: { vehicle: Vehicle; readOnly: 
 }
 
 function Measured({ measured }: { measured: NonNullable<SensorModel['measured']> }) {
+  const units = useDisplayUnits();
   return (
     <View style={styles.sensor}>
       <Text variant="label" strong level={3}>
@@ -97,14 +101,14 @@ function Measured({ measured }: { measured: NonNullable<SensorModel['measured']>
       <View style={styles.fields}>
         {SENSOR_NAMES.flatMap((sensor) =>
           SENSORS[sensor].figures.flatMap((spec) => {
-            const value = shownFigure(measured, sensor, spec);
+            const value = shownFigure(measured, sensor, spec, units);
             if (value === null) return [];
             return [
               <View key={`${sensor}.${spec.field}`} style={styles.field}>
                 <Text variant="small" tone="soft">
                   {`${SENSORS[sensor].title}: ${spec.label}`}
                 </Text>
-                <Quantity value={value} unit={defaultUnit(spec.quantity).symbol} size="label" />
+                <Quantity value={value} unit={displayUnit(spec.quantity, units).symbol} size="label" />
               </View>,
             ];
           }),
@@ -114,24 +118,24 @@ function Measured({ measured }: { measured: NonNullable<SensorModel['measured']>
   );
 }
 
-function formOf(model: SensorModel | null): SensorForm {
+function formOf(model: SensorModel | null, units: DisplayUnits): SensorForm {
   const fields = (sensor: Sensor) =>
     Object.fromEntries(
       SENSORS[sensor].figures.map((spec) => [
         spec.field,
-        round(shownFigure(model?.datasheet ?? null, sensor, spec)),
+        round(shownFigure(model?.datasheet ?? null, sensor, spec, units)),
       ]),
     );
   return { name: model?.name ?? '', gyro: fields('gyro'), accel: fields('accel') };
 }
 
 /** Null where nothing is filled in. */
-function figuresOf(form: SensorForm): SensorModel['datasheet'] {
+function figuresOf(form: SensorForm, units: DisplayUnits): SensorModel['datasheet'] {
   const si = (sensor: Sensor) =>
     Object.fromEntries(
       SENSORS[sensor].figures.map(({ field, quantity }) => {
         const value = form[sensor][field];
-        return [field, value === undefined ? null : fromDisplay(value, defaultUnit(quantity))];
+        return [field, value === undefined ? null : fromDisplay(value, displayUnit(quantity, units))];
       }),
     );
   const figures = sensorFiguresSchema.parse({ gyro: si('gyro'), accel: si('accel') });

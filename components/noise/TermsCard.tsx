@@ -4,9 +4,11 @@ import { Quantity } from '@/components/ui/Quantity';
 import { Text } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { hairline, space } from '@/constants/theme';
+import { useDisplayUnits } from '@/hooks/preferences';
 import type { NoiseAnalysis } from '@/shared/contracts/noise';
 import type { SensorFigures } from '@/shared/contracts/vehicles';
-import { defaultUnit, toDisplay } from '@/shared/units';
+import { displayUnit } from '@/shared/display-units';
+import { toDisplay } from '@/shared/units';
 import { SENSORS, shownFigure, type FigureSpec, type Sensor } from './sensors';
 
 export interface TermsCardProps {
@@ -31,9 +33,10 @@ export function TermsCard({ sensor, analysis, datasheet }: TermsCardProps) {
 
 function Term({ sensor, spec, analysis, datasheet }: TermsCardProps & { spec: FigureSpec }) {
   const { palette } = useTheme();
-  const unit = defaultUnit(spec.quantity);
+  const chosen = useDisplayUnits();
+  const unit = displayUnit(spec.quantity, chosen);
   const axes = analysis.axes.filter(({ channel }) => channel.startsWith(sensor));
-  const promised = shownFigure(datasheet, sensor, spec);
+  const promised = shownFigure(datasheet, sensor, spec, chosen);
   return (
     <View style={[styles.term, { borderTopColor: palette.rule }]}>
       <Text variant="label" strong>

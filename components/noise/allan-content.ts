@@ -1,6 +1,7 @@
 /** An analysis as the curves of one sensor's chart, in its display unit. */
 import type { NoiseAnalysis } from '@/shared/contracts/noise';
 import type { SensorFigures } from '@/shared/contracts/vehicles';
+import { displayUnit, type DisplayUnits } from '@/shared/display-units';
 import { figureOf, SENSORS, type Sensor } from './sensors';
 
 export interface AllanCurve {
@@ -8,8 +9,12 @@ export interface AllanCurve {
   points: { tauS: number; deviation: number; low: number; high: number; model: number }[];
 }
 
-export function allanCurves(analysis: NoiseAnalysis, sensor: Sensor): AllanCurve[] {
-  const { toSi } = SENSORS[sensor].deviation;
+export function allanCurves(
+  analysis: NoiseAnalysis,
+  sensor: Sensor,
+  chosen: DisplayUnits = {},
+): AllanCurve[] {
+  const { toSi } = displayUnit(SENSORS[sensor].deviation, chosen);
   return analysis.axes
     .filter(({ channel }) => channel.startsWith(sensor))
     .map(({ channel, points }) => ({
@@ -29,16 +34,18 @@ export function datasheetCurve(
   figures: SensorFigures | null,
   sensor: Sensor,
   [fromS, toS]: readonly [number, number],
+  chosen: DisplayUnits = {},
 ): { tauS: number; deviation: number }[] | null {
   const [white, wander] = SENSORS[sensor].figures;
   const n = figureOf(figures, sensor, white!.field);
   const b = figureOf(figures, sensor, wander!.field);
   if (n === null && b === null) return null;
   const plateau = (b ?? 0) * Math.sqrt((2 * Math.LN2) / Math.PI);
+  const { toSi } = displayUnit(SENSORS[sensor].deviation, chosen);
   const steps = 40;
   return Array.from({ length: steps + 1 }, (_, i) => {
     const tauS = fromS * (toS / fromS) ** (i / steps);
     const deviation = Math.hypot((n ?? 0) / Math.sqrt(tauS), plateau);
-    return { tauS, deviation: deviation / SENSORS[sensor].deviation.toSi };
+    return { tauS, deviation: deviation / toSi };
   });
 }

@@ -1,7 +1,8 @@
 /** The two sensors of an IMU as the noise pages show them: units, names of terms, where the figures go. */
 import type { NoiseTerm } from '@/shared/contracts/noise';
 import type { SensorFigures } from '@/shared/contracts/vehicles';
-import { defaultUnit, toDisplay, type DisplayUnit, type Quantity } from '@/shared/units';
+import { displayUnit, type DisplayUnits } from '@/shared/display-units';
+import { toDisplay, type Quantity } from '@/shared/units';
 
 export type Sensor = keyof SensorFigures;
 
@@ -16,15 +17,15 @@ export interface FigureSpec {
 
 interface SensorSpec {
   title: string;
-  /** Unit that the deviation is drawn in. */
-  deviation: DisplayUnit;
+  /** What the deviation is drawn as. */
+  deviation: Quantity;
   figures: readonly FigureSpec[];
 }
 
 export const SENSORS: Record<Sensor, SensorSpec> = {
   gyro: {
     title: 'Gyro',
-    deviation: defaultUnit('gyroBias'),
+    deviation: 'gyroBias',
     figures: [
       { field: 'whiteNoiseRadPerSqrtS', label: 'White noise N (ARW)', quantity: 'angleRandomWalk', term: 'white' },
       { field: 'biasInstabilityRadPerS', label: 'Bias instability B', quantity: 'gyroBias', term: 'biasInstability' },
@@ -35,7 +36,7 @@ export const SENSORS: Record<Sensor, SensorSpec> = {
   },
   accel: {
     title: 'Accelerometer',
-    deviation: defaultUnit('accelBias'),
+    deviation: 'accelBias',
     figures: [
       { field: 'whiteNoiseMPerSPerSqrtS', label: 'White noise N (VRW)', quantity: 'velocityRandomWalk', term: 'white' },
       { field: 'biasInstabilityMPerS2', label: 'Bias instability B', quantity: 'accelBias', term: 'biasInstability' },
@@ -49,9 +50,14 @@ export const SENSORS: Record<Sensor, SensorSpec> = {
 export const SENSOR_NAMES = Object.keys(SENSORS) as Sensor[];
 
 /** A figure in its display unit; null where it is not known. */
-export function shownFigure(figures: SensorFigures | null, sensor: Sensor, spec: FigureSpec): number | null {
+export function shownFigure(
+  figures: SensorFigures | null,
+  sensor: Sensor,
+  spec: FigureSpec,
+  chosen: DisplayUnits = {},
+): number | null {
   const si = figureOf(figures, sensor, spec.field);
-  return si === null ? null : toDisplay(si, defaultUnit(spec.quantity));
+  return si === null ? null : toDisplay(si, displayUnit(spec.quantity, chosen));
 }
 
 /** In SI. */

@@ -9,6 +9,7 @@ import { Figures } from '@/components/ui/Figures';
 import { formatMoment } from '@/components/ui/format-day';
 import { Text } from '@/components/ui/Text';
 import { space } from '@/constants/theme';
+import { useDisplayUnits } from '@/hooks/preferences';
 import { useRecording } from '@/hooks/recordings';
 import type { ParameterSetDetail, ParameterSetVersion } from '@/shared/contracts/parameter-sets';
 import { changeCount, parameterSections } from './parameter-rows';
@@ -23,7 +24,7 @@ export interface VersionCardProps {
 /** One version: why, by whom, what it holds, and what it changed. */
 export function VersionCard({ set, version }: VersionCardProps) {
   const parent = set.versions.find((other) => other.number === version.parentNumber) ?? null;
-  const sections = parameterSections(version.parameters, parent?.parameters ?? null);
+  const sections = parameterSections(version.parameters, parent?.parameters ?? null, useDisplayUnits());
   const { word, tone } = VERSION_STATES[version.state];
   return (
     <>

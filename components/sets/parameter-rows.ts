@@ -3,6 +3,7 @@ import { FIELD_GROUPS, type FieldGroup } from '@/shared/parameters/parameter-fie
 import { PARAMETER_LIST } from '@/shared/parameters/parameter-list';
 import { readPath } from '@/shared/parameters/parameter-path';
 import { shownValue, unitSymbol } from '@/shared/parameters/parameter-words';
+import type { DisplayUnits } from '@/shared/display-units';
 import type { Parameters } from '@/shared/contracts/parameters';
 
 export interface ParameterRow {
@@ -21,7 +22,11 @@ export interface ParameterSection {
 }
 
 /** Sections in the order of the bench; `parent` null: a first version. Rows that were never set are left out. */
-export function parameterSections(parameters: Parameters, parent: Parameters | null): ParameterSection[] {
+export function parameterSections(
+  parameters: Parameters,
+  parent: Parameters | null,
+  chosen: DisplayUnits = {},
+): ParameterSection[] {
   const sections = new Map<FieldGroup, ParameterRow[]>();
   for (const spec of PARAMETER_LIST) {
     const now = readPath(parameters, spec.path);
@@ -32,9 +37,9 @@ export function parameterSections(parameters: Parameters, parent: Parameters | n
     rows.push({
       path: spec.path,
       label: spec.label,
-      unit: unitSymbol(spec),
-      value: shownValue(spec, now),
-      before: shownValue(spec, then),
+      unit: unitSymbol(spec, chosen),
+      value: shownValue(spec, now, chosen),
+      before: shownValue(spec, then, chosen),
       changed: parent !== null && JSON.stringify(now) !== JSON.stringify(then),
     });
   }

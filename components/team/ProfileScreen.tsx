@@ -9,6 +9,7 @@ import { Text } from '@/components/ui/Text';
 import { useTheme, type ThemeChoice } from '@/components/ui/ThemeProvider';
 import { useSession, useSignOut } from '@/hooks/session';
 import { ROLE_SUMMARY } from '@/shared/contracts/roles';
+import { UnitsCard } from './UnitsCard';
 
 const THEMES: { value: ThemeChoice; label: string }[] = [
   { value: 'system', label: 'As the device' },
@@ -50,6 +51,7 @@ export function ProfileScreen() {
       <Card title="Look">
         <Choice label="Theme" shape="segments" options={THEMES} value={choice} onChange={setChoice} />
       </Card>
+      <UnitsCard />
       <View style={{ flexDirection: 'row' }}>
         <Button label="Sign out" icon="leave" busy={signOut.isPending} onPress={() => signOut.mutate()} />
       </View>

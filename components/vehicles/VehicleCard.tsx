@@ -4,12 +4,15 @@ import { CardLink } from '@/components/ui/CardLink';
 import { Figures } from '@/components/ui/Figures';
 import { Text } from '@/components/ui/Text';
 import { space } from '@/constants/theme';
+import { useDisplayUnits } from '@/hooks/preferences';
 import type { Vehicle } from '@/shared/contracts/vehicles';
+import { scaleOf, type DisplayUnits } from '@/shared/display-units';
 import { axesSentence } from './axes';
 import { KINDS } from './vehicle-words';
 
 /** One vehicle in the list. */
 export function VehicleCard({ vehicle, current }: { vehicle: Vehicle; current?: boolean }) {
+  const units = useDisplayUnits();
   const count = `${vehicle.recordingCount} ${vehicle.recordingCount === 1 ? 'recording' : 'recordings'}`;
   return (
     <CardLink
@@ -24,16 +27,19 @@ export function VehicleCard({ vehicle, current }: { vehicle: Vehicle; current?: 
         <Figures tone="soft">{count}</Figures>
       </View>
       <Figures tone="soft">{`${KINDS[vehicle.kind]} · IMU ${axesSentence(vehicle.axes)}`}</Figures>
-      <Figures tone="soft">{`antenna ${leverArmLine(vehicle.leverArmM)}`}</Figures>
+      <Figures tone="soft">{`antenna ${leverArmLine(vehicle.leverArmM, units)}`}</Figures>
     </CardLink>
   );
 }
 
 /** "0.4 m forward, 0 m right, −1.2 m down" */
-export const leverArmLine = (arm: Vehicle['leverArmM']): string =>
-  `${asTyped(arm[0])} m forward, ${asTyped(arm[1])} m right, ${asTyped(arm[2])} m down`;
+export function leverArmLine(arm: Vehicle['leverArmM'], chosen: DisplayUnits = {}): string {
+  const { symbol, factor } = scaleOf('length', chosen);
+  const [forward, right, down] = arm.map((metres) => `${asTyped(metres * factor)} ${symbol}`);
+  return `${forward} forward, ${right} right, ${down} down`;
+}
 
-const asTyped = (value: number) => String(value).replace('-', '−');
+const asTyped = (value: number) => String(Number(value.toPrecision(4))).replace('-', '−');
 
 const styles = StyleSheet.create({
   head: {

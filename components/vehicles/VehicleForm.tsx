@@ -11,7 +11,8 @@ import { Button } from '@/components/ui/Button';
 import { Card } from '@/components/ui/Card';
 import { Text } from '@/components/ui/Text';
 import { space } from '@/constants/theme';
-import { nameSchema } from '@/shared/contracts/common';
+import { useDisplayUnits } from '@/hooks/preferences';
+import { nameSchema, type Vector3 } from '@/shared/contracts/common';
 import {
   axisMapSchema,
   IDENTITY_AXES,
@@ -19,14 +20,17 @@ import {
   type Vehicle,
   type VehicleInput,
 } from '@/shared/contracts/vehicles';
+import { displayUnit } from '@/shared/display-units';
+import { fromDisplay, toDisplay } from '@/shared/units';
 import { AxisPicker } from './AxisPicker';
 import { KINDS } from './vehicle-words';
 
-const metres = z.number({ error: 'Write a number in metres, for instance −1.2.' });
+const distance = z.number({ error: 'Write a number, for instance −1.2.' });
 const formSchema = z.object({
   name: nameSchema,
   kind: vehicleSchema.shape.kind,
-  leverArmM: z.tuple([metres, metres, metres]),
+  /** In the person's unit of length. */
+  leverArm: z.tuple([distance, distance, distance]),
   axes: axisMapSchema,
   notes: z.string().max(2000, 'At most 2000 characters.'),
 });
@@ -43,19 +47,21 @@ export interface VehicleFormProps {
 
 /** Name, lever arm and axes of a platform. */
 export function VehicleForm({ vehicle, saveLabel, onSave, readOnly }: VehicleFormProps) {
+  const length = displayUnit('length', useDisplayUnits());
   const { control, handleSubmit, setError, formState, reset } = useForm<VehicleFormValue>({
     resolver: zodResolver(formSchema),
     defaultValues: {
       name: vehicle?.name ?? '',
       kind: vehicle?.kind ?? 'other',
-      leverArmM: vehicle?.leverArmM ?? [0, 0, 0],
+      leverArm: mapped(vehicle?.leverArmM ?? [0, 0, 0], (metres) => tidy(toDisplay(metres, length))),
       axes: vehicle?.axes ?? IDENTITY_AXES,
       notes: vehicle?.notes ?? '',
     },
   });
   const submit = handleSubmit(async (value) => {
     try {
-      await onSave(value);
+      const { leverArm, ...rest } = value;
+      await onSave({ ...rest, leverArmM: mapped(leverArm, (shown) => tidy(fromDisplay(shown, length))) });
       reset(value);
     } catch (error) {
       showProblem(error, ['name', 'kind', 'notes'], setError);
@@ -91,9 +97,9 @@ export function VehicleForm({ vehicle, saveLabel, onSave, readOnly }: VehicleFor
             <View key={side} style={styles.cell}>
               <FormNumber
                 control={control}
-                name={`leverArmM.${i as 0 | 1 | 2}`}
+                name={`leverArm.${i as 0 | 1 | 2}`}
                 label={side}
-                unit="m"
+                unit={length.symbol}
                 editable={editable}
               />
             </View>
@@ -131,6 +137,10 @@ export function VehicleForm({ vehicle, saveLabel, onSave, readOnly }: VehicleFor
     </View>
   );
 }
+
+const mapped = ([a, b, c]: Vector3, by: (value: number) => number): Vector3 => [by(a), by(b), by(c)];
+/** Without the conversion's last digits. */
+const tidy = (value: number) => Number(value.toPrecision(10));
 
 const styles = StyleSheet.create({
   row: { flexDirection: 'row', flexWrap: 'wrap', gap: space.m },

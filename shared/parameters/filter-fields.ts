@@ -46,7 +46,7 @@ const gnssFields: readonly ParameterField[] = [
     quantity: 'time',
     hint: 'positive: a fix speaks of an earlier moment than its stamp',
   },
-  { path: 'leverArmM', group: 'gnss', label: 'Lever arm: forward, right, down', unit: 'm' },
+  { path: 'leverArmM', group: 'gnss', label: 'Lever arm: forward, right, down', quantity: 'length' },
   { path: 'gate.enabled', group: 'gate', label: 'χ² gate' },
   { path: 'gate.probability', group: 'gate', label: 'Gate probability', quantity: 'percent' },
 ];

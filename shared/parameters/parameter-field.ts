@@ -1,5 +1,6 @@
 /** A parameter that is typed, switched or chosen rather than slid: its name of the trade, its unit, what it hangs on. */
-import { defaultUnit, QUANTITIES, type DisplayUnit, type Quantity } from '@/shared/units';
+import { chosenUnit, unitsOf, type DisplayUnits } from '@/shared/display-units';
+import { defaultUnit, type DisplayUnit, type Quantity } from '@/shared/units';
 
 export type FieldGroup =
   | 'gyro'
@@ -46,9 +47,12 @@ export interface ParameterField {
   needs?: readonly string[];
 }
 
-/** The unit that a field is shown in; null: it has none. */
-export function fieldUnit({ quantity, unit }: ParameterField): DisplayUnit | null {
+/** The unit that a field is shown in: the one that was chosen for its quantity, else its own; null: it has none. */
+export function fieldUnit({ quantity, unit }: ParameterField, chosen: DisplayUnits = {}): DisplayUnit | null {
   if (!quantity) return unit ? { symbol: unit, toSi: 1 } : null;
-  const units: readonly DisplayUnit[] = QUANTITIES[quantity];
-  return units.find((one) => one.symbol === unit) ?? defaultUnit(quantity);
+  return (
+    chosenUnit(quantity, chosen) ??
+    unitsOf(quantity).find((one) => one.symbol === unit) ??
+    defaultUnit(quantity)
+  );
 }

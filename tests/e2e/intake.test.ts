@@ -130,7 +130,7 @@ describe.each<ViewportName>(['phone', 'wide'])('on the %s screen', (viewport) =>
       .getByRole('link', { name: /Crawler 1/ })
       .first()
       .click();
-    await page.getByText(`Nameless logger, ${viewport}`).waitFor();
+    await page.getByRole('main').getByText(`Nameless logger, ${viewport}`).last().waitFor();
     await picture(page, 'intake', `${viewport}-templates`);
   });
 

@@ -4,13 +4,15 @@ import type { ReactElement, ReactNode } from 'react';
 import { ThemeProvider } from '@/components/ui/ThemeProvider';
 import { ToastProvider } from '@/components/ui/ToastProvider';
 import { SessionContext, type Session } from '@/hooks/session';
+import { HINTS, type Preferences } from '@/shared/contracts/preferences';
 import type { Role } from '@/shared/contracts/roles';
 
 /** A signed-in person of the given role. */
-export function sessionOf(role: Role): Session {
+export function sessionOf(role: Role, preferences: Partial<Preferences> = {}): Session {
   const workspace = { id: '4f0c8a52-0f4e-4a1c-9a55-3d1f0f3b7e01', name: 'Harbour survey', role };
   return {
     user: { id: '4f0c8a52-0f4e-4a1c-9a55-3d1f0f3b7e02', email: 'maren@kelmar.test', name: 'Maren Holt' },
+    preferences: { units: {}, hintsSeen: [...HINTS], ...preferences },
     workspace,
     workspaces: [workspace],
     switchWorkspace: () => undefined,
@@ -18,19 +20,30 @@ export function sessionOf(role: Role): Session {
 }
 
 /** Everything that a screen stands in, but the router. */
-export function Around({ role = 'engineer', children }: { role?: Role; children: ReactNode }) {
+export function Around({
+  role = 'engineer',
+  preferences,
+  children,
+}: {
+  role?: Role;
+  preferences?: Partial<Preferences>;
+  children: ReactNode;
+}) {
   const client = new QueryClient({ defaultOptions: { queries: { retry: false, gcTime: Infinity } } });
   return (
     <ThemeProvider>
       <QueryClientProvider client={client}>
         <ToastProvider>
-          <SessionContext.Provider value={sessionOf(role)}>{children}</SessionContext.Provider>
+          <SessionContext.Provider value={sessionOf(role, preferences)}>{children}</SessionContext.Provider>
         </ToastProvider>
       </QueryClientProvider>
     </ThemeProvider>
   );
 }
 
-/** Renders `element` as a person of `role` sees it. */
-export const renderAs = (element: ReactElement, role: Role = 'engineer') =>
-  render(<Around role={role}>{element}</Around>);
+/** Renders `element` as a person of `role` sees it; hints have been read unless `preferences` say otherwise. */
+export const renderAs = (
+  element: ReactElement,
+  role: Role = 'engineer',
+  preferences: Partial<Preferences> = {},
+) => render(<Around {...{ role, preferences }}>{element}</Around>);
