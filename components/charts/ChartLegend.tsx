@@ -28,7 +28,7 @@ export function ChartLegend({ content, group, aside, narrow, action }: ChartLege
   const cursor = useSyncExternalStore(group.cursor.subscribe, () => group.cursor.current);
   const detail = useSyncExternalStore(group.detail.subscribe, () => group.detail.current);
   const legend = (
-    <View style={[styles.legend, narrow ? styles.wholeLine : null]}>
+    <View style={styles.legend}>
       {legendOrder(content.layers).map((layer) => (
         <View key={layer.id} style={styles.entry}>
           <Sample layer={layer} />
@@ -40,19 +40,34 @@ export function ChartLegend({ content, group, aside, narrow, action }: ChartLege
       ))}
     </View>
   );
-  return (
-    <View style={styles.row}>
-      <Text variant="label" strong level={3}>
-        {content.title}
-      </Text>
-      {narrow ? null : legend}
+  const title = (
+    <Text variant="label" strong level={3} style={styles.title}>
+      {content.title}
+    </Text>
+  );
+  const end = (
+    <>
       <Text variant="small" tone="soft" style={styles.unit}>
         {[DETAIL[detail], cursor === null ? aside : `at ${formatAxisTime(cursor, 0.1)}`, content.unit]
           .filter(Boolean)
           .join(' · ')}
       </Text>
       {action}
-      {narrow ? legend : null}
+    </>
+  );
+  return narrow ? (
+    <View>
+      <View style={styles.line}>
+        {title}
+        {end}
+      </View>
+      {legend}
+    </View>
+  ) : (
+    <View style={styles.row}>
+      {title}
+      {legend}
+      {end}
     </View>
   );
 }
@@ -92,8 +107,9 @@ function Sample({ layer }: { layer: Layer }) {
 const styles = StyleSheet.create({
   row: { flexDirection: 'row', flexWrap: 'wrap', alignItems: 'center', columnGap: space.m, minHeight: 24 },
   legend: { flexDirection: 'row', flexWrap: 'wrap', flexGrow: 1, columnGap: space.m, alignItems: 'center' },
-  wholeLine: { width: '100%' },
+  line: { flexDirection: 'row', alignItems: 'center', columnGap: space.m, minHeight: 24 },
+  title: { flexShrink: 1 },
   entry: { flexDirection: 'row', alignItems: 'center', gap: space.xs },
-  unit: { marginLeft: 'auto' },
+  unit: { marginLeft: 'auto', flexShrink: 1, textAlign: 'right' },
   number: { fontFamily: fonts.number },
 });
