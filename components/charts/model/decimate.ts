@@ -1,7 +1,8 @@
 /**
  * Min–max decimation: one stroke a pixel column. Of all points in a column the first, the least, the largest and the last
  * are kept, in their order, so that the drawn line covers the same pixels as the whole one would and a one-sample
- * spike in millions stays in sight.
+ * spike in millions stays in sight. Where many points share a column the first and the last fall within the stroke from
+ * least to largest, give or take a pixel, and are left out.
  */
 import { visibleRange, type TimeSeries } from './series';
 
@@ -67,8 +68,12 @@ export function decimate(input: DecimateInput, out: Polyline): Polyline {
   return out;
 }
 
+/** From this many points a column is crowded. */
+const CROWD = 4;
+
 interface Column {
   pixel: number;
+  count: number;
   firstX: number;
   firstY: number;
   lastX: number;
@@ -81,7 +86,19 @@ interface Column {
 
 function extend(column: Column | null, pixel: number, x: number, y: number): Column {
   if (!column)
-    return { pixel, firstX: x, firstY: y, lastX: x, lastY: y, lowX: x, lowY: y, highX: x, highY: y };
+    return {
+      pixel,
+      count: 1,
+      firstX: x,
+      firstY: y,
+      lastX: x,
+      lastY: y,
+      lowX: x,
+      lowY: y,
+      highX: x,
+      highY: y,
+    };
+  column.count++;
   if (y < column.lowY) [column.lowX, column.lowY] = [x, y];
   if (y > column.highY) [column.highX, column.highY] = [x, y];
   [column.lastX, column.lastY] = [x, y];
@@ -90,11 +107,12 @@ function extend(column: Column | null, pixel: number, x: number, y: number): Col
 
 function flush(column: Column | null, out: Polyline): void {
   if (!column) return;
-  push(out, column.firstX, column.firstY);
+  const crowded = column.count >= CROWD;
+  if (!crowded) push(out, column.firstX, column.firstY);
   const lowFirst = column.lowX <= column.highX;
   pushNew(out, lowFirst ? column.lowX : column.highX, lowFirst ? column.lowY : column.highY);
   pushNew(out, lowFirst ? column.highX : column.lowX, lowFirst ? column.highY : column.lowY);
-  pushNew(out, column.lastX, column.lastY);
+  if (!crowded) pushNew(out, column.lastX, column.lastY);
 }
 
 /** Leaves out a point that repeats the one before. */

@@ -26,3 +26,14 @@ export function hatchPath(
 
 /** A pixel with one decimal: finer is not seen and only lengthens the string. */
 export const px = (value: number): number => Math.round(value * 10) / 10;
+
+/** The same as text. Writing a fraction costs far more than finding it: each is written once. */
+export function pxText(value: number): string {
+  const tenths = Math.round(value * 10);
+  if (!(tenths >= 0 && tenths < MOST_TENTHS)) return String(tenths / 10);
+  return (written[tenths] ??= String(tenths / 10));
+}
+
+/** A screen of 4000 px: more than that is off it. */
+const MOST_TENTHS = 40_000;
+const written: string[] = [];

@@ -1,5 +1,5 @@
 /** Path strings of lines, bands, areas and marks. Coordinates are pixels with one decimal. */
-import { px } from './hatch';
+import { px, pxText } from './hatch';
 import type { Polyline } from './decimate';
 
 /** An open line; NaN breaks it. A point alone becomes a dot (a stroke of no length with round caps). */
@@ -12,7 +12,7 @@ export function linePath(line: Polyline): string {
       open = false;
       continue;
     }
-    const point = `${px(line.x[i]!)} ${px(y)}`;
+    const point = `${pxText(line.x[i]!)} ${pxText(y)}`;
     const alone = !open && (i + 1 >= line.length || Number.isNaN(line.y[i + 1]!));
     path += alone ? `M${point}h0` : (open ? 'L' : 'M') + point;
     open = true;
@@ -41,7 +41,7 @@ export function areaPath(line: Polyline, baseY: number): string {
 /** Small filled discs. Strokes of no length with round caps: as short as a mark can be written. */
 export function dotsPath(xs: ArrayLike<number>, ys: ArrayLike<number>, count: number): string {
   let path = '';
-  for (let i = 0; i < count; i++) path += `M${px(xs[i]!)} ${px(ys[i]!)}h0`;
+  for (let i = 0; i < count; i++) path += `M${pxText(xs[i]!)} ${pxText(ys[i]!)}h0`;
   return path;
 }
 
@@ -86,4 +86,4 @@ function pieces(line: Polyline): Point[][] {
 }
 
 const joined = (points: Point[]) =>
-  points.map((p, i) => `${i === 0 ? 'M' : 'L'}${px(p.x)} ${px(p.y)}`).join('');
+  points.map((p, i) => `${i === 0 ? 'M' : 'L'}${pxText(p.x)} ${pxText(p.y)}`).join('');
