@@ -1,6 +1,7 @@
 /** Every route of the API, version 1. */
 import { accountRoutes } from './accounts';
 import { mapTemplateRoutes } from './map-templates';
+import { exportRoutes } from './exports';
 import { parameterSetRoutes } from './parameter-sets';
 import { recordingFileRoutes } from './recording-files';
 import { recordingRoutes } from './recordings';
@@ -26,4 +27,5 @@ export const ROUTES: readonly Route[] = [
   ...versionRoutes,
   ...requirementRoutes,
   ...verificationRoutes,
+  ...exportRoutes,
 ];

@@ -51,9 +51,8 @@ export function whatChanged(
   if (a.engineVersion !== b.engineVersion) {
     reasons.push(`the engine is version ${b.engineVersion} now, and was ${a.engineVersion}`);
   }
-  const { schedule: _then, ...asked } = then.definition;
-  const { schedule: _now, ...asks } = now.definition;
-  if (!same(asked, asks)) reasons.push('the requirement was changed');
+  const asks = ({ metric, comparison, limit }: Definition) => ({ metric, comparison, limit });
+  if (!same(asks(then.definition), asks(now.definition))) reasons.push('the requirement was changed');
   return reasons;
 }
 

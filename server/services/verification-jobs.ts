@@ -3,7 +3,7 @@
  * another takes the row up (recovery.ts). The same row names the same run, so that no run is made or counted twice.
  */
 import type { Transaction } from 'sequelize';
-import { JobCancelled, JobFailed, storeKeys, type VerificationRunResult, WorkerCrashed } from '@/workers';
+import { JobFailed, storeKeys, type VerificationRunResult, WorkerCrashed } from '@/workers';
 import type { JobContext } from '../context';
 import { persist } from '../database-state';
 import type { Run } from '../models/run';

@@ -90,6 +90,8 @@ const TABLE: Record<string, string> = {
   'post /parameter-sets/:id/versions/:n/release': APPROVERS,
   'get /parameter-sets/:id/versions/:n/verification': ALL,
   'post /parameter-sets/:id/versions/:n/verify': TUNERS,
+  'get /parameter-sets/:id/versions/:n/export': ALL,
+  'get /vehicles/:id/released-set': ALL,
   'post /parameter-sets/:id/versions/:n/waivers': APPROVERS,
   'get /parameter-sets/:id/versions/:n/differences': ALL,
   'get /parameter-sets/:id/versions/:n/history': ALL,
