@@ -11,6 +11,8 @@ import type { Run } from '@/shared/contracts/runs';
 import { formatDuration } from '@/shared/format';
 import { HistoryActions, SaveAction } from './BenchActions';
 import type { BenchStart } from './bench-start';
+import { CompanyBar } from './CompanyBar';
+import { followWords, useFollow, useFollowed } from './use-follow';
 import { WIDE_VIEWS, type ViewId } from './chart-views';
 import { PhoneBench } from './PhoneBench';
 import { RunStatus } from './RunStatus';
@@ -32,7 +34,9 @@ export interface BenchViewProps {
 export function BenchView({ start, locked, shown, own }: BenchViewProps) {
   const { wide } = useBreakpoint();
   const toast = useToast();
-  const bench = useBench(start, locked, shown);
+  const [followed, setFollowed] = useFollowed();
+  const bench = useBench(start, locked ?? (followed ? followWords(followed) : null), shown);
+  const company = useFollow(bench, followed, setFollowed);
   const [view, setView] = useState<ViewId>(
     () => WIDE_VIEWS.find((one) => one.id === start.view)?.id ?? 'overview',
   );
@@ -71,6 +75,7 @@ export function BenchView({ start, locked, shown, own }: BenchViewProps) {
       scroll={false}
     >
       <ChartOrigin.Provider value={origin}>
+        <CompanyBar company={company} followed={followed} />
         <Body bench={bench} view={view} onView={setView} />
       </ChartOrigin.Provider>
     </Screen>

@@ -13,6 +13,8 @@ import { useFinerCurves, type FinerCurves } from './use-finer-curves';
 import { writePath, type ParameterValue } from '@/shared/parameters/parameter-path';
 
 export interface Bench {
+  /** Its runs are known by it. */
+  id: string;
   start: BenchStart;
   config: BenchConfig;
   /** `settled` false: still dragging. */
@@ -32,6 +34,10 @@ export interface Bench {
   /** The baseline's figures for the same windows; null while they are not known. */
   baselineSummary: RunSummary | null;
   pinCurrent: () => void;
+  /** Shows somebody else's run and takes over what they set: one step of the history, however many runs follow. */
+  adopt: (run: Run) => void;
+  /** Ends that step. */
+  settle: () => void;
   /** Why nothing can be changed; null: all can. */
   locked: string | null;
 }
@@ -59,7 +65,8 @@ export function useBench(start: BenchStart, locked: string | null, shown: Run | 
   const config = history.present;
   const settled = history.open === null;
 
-  useOwnRuns(live, start.recording.id, config, settled, locked, shown);
+  const [id] = useState(makeId);
+  useOwnRuns(live, id, start.recording.id, config, settled, locked, shown);
   const ghosts = useGhost(live, start.recording.id, config, settled, baseline, locked);
   const ghost = useSyncExternalStore(ghosts.subscribe, ghosts.getSnapshot);
   useEffect(() => live.subscribeData(() => group.invalidate()), [live, group]);
@@ -98,7 +105,17 @@ export function useBench(start: BenchStart, locked: string | null, shown: Run | 
     setBaseline({ name: pinnedName(null), parameters: config.parameters, runId: summaryRunId });
   }, [live, config.parameters]);
 
+  const adopt = useCallback(
+    (run: Run) => {
+      const { parameters, outages, smooth, errorBudget } = run;
+      change('followed', false, () => ({ parameters, outages, options: { smooth, errorBudget } }));
+      void live.show(run);
+    },
+    [change, live],
+  );
+
   return {
+    id,
     start,
     config,
     setParameter,
@@ -115,6 +132,8 @@ export function useBench(start: BenchStart, locked: string | null, shown: Run | 
     baseline,
     baselineSummary: comparable(ghost, baseline, config),
     pinCurrent,
+    adopt,
+    settle: useCallback(() => setHistory((old) => ({ ...old, open: null })), []),
     locked,
   };
 }
@@ -130,13 +149,13 @@ function comparable(ghost: Ghost | null, baseline: Baseline, config: BenchConfig
 
 function useOwnRuns(
   live: LiveController,
+  benchId: string,
   recordingId: string,
   config: BenchConfig,
   settled: boolean,
   locked: string | null,
   shown: Run | null,
 ): void {
-  const [benchId] = useState(makeId);
   useEffect(() => {
     if (shown) void live.show(shown);
   }, [live, shown]);

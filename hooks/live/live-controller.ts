@@ -154,11 +154,12 @@ export class LiveController {
     await this.transport?.cancel(runId).catch(() => undefined);
   }
 
-  /** Shows a finished run without starting one: for those who may only look. */
+  /** Shows a run without starting one: a finished one, or one that somebody else has going. */
   async show(run: Run): Promise<void> {
     this.wanted = null;
+    this.startedAt = this.now();
     this.begin(run.id, requestOf(run));
-    await this.finishFrom(run);
+    if (isOver(run)) await this.finishFrom(run);
   }
 
   private pump(): void {

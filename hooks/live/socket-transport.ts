@@ -1,25 +1,13 @@
 /** The live transport over fetch and socket.io; one connection for the whole app. */
-import { io, type Socket } from 'socket.io-client';
 import { decodeFrame } from '@/shared/contracts/frames';
-import {
-  LIVE_NAMESPACE,
-  type ClientToServerEvents,
-  type ServerToClientEvents,
-} from '@/shared/contracts/live';
+import type { ServerToClientEvents } from '@/shared/contracts/live';
 import type { Run } from '@/shared/contracts/runs';
 import { api, apiBytes } from '../api';
 import type { LiveTransport } from './live-controller';
+import { takeLiveSocket, type LiveSocket } from './live-socket';
 
-type LiveSocket = Socket<ServerToClientEvents, ClientToServerEvents>;
-
-let shared: LiveSocket | null = null;
-let users = 0;
-
-/** Opens the connection with the first user of it and closes it after the last. */
 export function openSocketTransport(): LiveTransport {
-  shared ??= io(LIVE_NAMESPACE, { transports: ['websocket', 'polling'], withCredentials: true });
-  const socket = shared;
-  users++;
+  const { socket, release } = takeLiveSocket();
   return {
     create: (request) => api<Run>('/runs', { method: 'POST', body: request }),
     cancel: async (runId) => void (await api(`/runs/${runId}/cancel`, { method: 'POST' })),
@@ -29,12 +17,7 @@ export function openSocketTransport(): LiveTransport {
     follow: (runId) => socket.emit('run:follow', { runId }, () => undefined),
     unfollow: (runId) => socket.emit('run:unfollow', { runId }),
     listen: (handlers) => listen(socket, handlers),
-    close: () => {
-      users--;
-      if (users > 0) return;
-      shared?.disconnect();
-      shared = null;
-    },
+    close: release,
   };
 }
 

@@ -2,7 +2,12 @@
 import type { Namespace } from 'socket.io';
 import { z } from 'zod';
 import { idSchema } from '@/shared/contracts/common';
-import type { ClientToServerEvents, FollowAnswer, ServerToClientEvents } from '@/shared/contracts/live';
+import type {
+  BenchRun,
+  ClientToServerEvents,
+  FollowAnswer,
+  ServerToClientEvents,
+} from '@/shared/contracts/live';
 import type { Context } from '../context';
 import type { LiveSocket, NoEvents, SocketData } from './connection';
 import { rooms } from './rooms';
@@ -42,7 +47,13 @@ async function open(
     return answer({ ok: false, reason: 'There is no such recording in your workspaces.' });
   await close(ctx, live, socket);
   const room = rooms.bench(recording.workspaceId, recordingId);
-  socket.data.bench = { room, recordingId, benchId };
+  const { workspaceId } = recording;
+  const newest = await ctx.db.Run.findOne({
+    where: { workspaceId, benchId },
+    order: [['createdAt', 'DESC']],
+    attributes: ['id'],
+  });
+  socket.data.bench = { room, recordingId, benchId, runId: newest?.id ?? null };
   await socket.join(room);
   answer({ ok: true });
   await tell(live, room, recordingId);
@@ -58,10 +69,17 @@ async function close(ctx: Context, live: LiveNamespace, socket: LiveSocket): Pro
   );
 }
 
+/** A bench starts a run: whoever is on the recording hears of it, now or when they come. */
+export function tellRun(live: LiveNamespace, workspaceId: string, message: BenchRun): void {
+  for (const { data } of live.sockets.values())
+    if (data.bench?.benchId === message.benchId) data.bench.runId = message.runId;
+  live.to(rooms.bench(workspaceId, message.recordingId)).emit('bench:run', message);
+}
+
 async function tell(live: LiveNamespace, room: string, recordingId: string): Promise<void> {
   const sockets = await live.in(room).fetchSockets();
   const visitors = sockets.flatMap(({ data: { userId, name, bench } }) =>
-    bench?.room === room ? [{ userId, name, benchId: bench.benchId }] : [],
+    bench?.room === room ? [{ userId, name, benchId: bench.benchId, runId: bench.runId }] : [],
   );
   live.to(room).emit('bench:company', { recordingId, visitors });
 }

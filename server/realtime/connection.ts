@@ -16,7 +16,7 @@ export interface SocketData {
   name: string;
   workspaceIds: string[];
   /** The bench that is open on this connection. */
-  bench?: { room: string; recordingId: string; benchId: string };
+  bench?: { room: string; recordingId: string; benchId: string; runId: string | null };
   /** Sent, and not yet taken by the transport. */
   framesWaiting: number;
 }

@@ -15,7 +15,7 @@ import type { Context } from '../context';
 import { isOwnOrigin } from '../middleware/cross-site';
 import type { Sessions } from '../middleware/session';
 import { greet, type LiveSocket, type NoEvents, type SocketData } from './connection';
-import { welcomeBenches } from './benches';
+import { tellRun, welcomeBenches } from './benches';
 import { sendFrame } from './frames';
 import { rooms } from './rooms';
 
@@ -55,8 +55,7 @@ export function createLive(): Live {
     failed: (message) => void toRun(message.runId).emit('run:failed', message),
     recordingChanged: (message) =>
       void live.to(rooms.workspace(message.workspaceId)).emit('recording:changed', message),
-    benchRun: (workspaceId, message) =>
-      void live.to(rooms.bench(workspaceId, message.recordingId)).emit('bench:run', message),
+    benchRun: (workspaceId, message) => tellRun(live, workspaceId, message),
     endSession: (sid) => live.in(rooms.session(sid)).disconnectSockets(true),
     endUser: (userId) => live.in(rooms.user(userId)).disconnectSockets(true),
     // The client connects again and finds itself in the workspaces that are left.

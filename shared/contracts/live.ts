@@ -29,6 +29,8 @@ export interface BenchVisitor {
   userId: string;
   name: string;
   benchId: string;
+  /** Its newest run when this was sent; null: none yet. */
+  runId: string | null;
 }
 /** Sent to every bench that is open over the recording when one opens or closes. */
 export interface BenchCompany {

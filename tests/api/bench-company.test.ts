@@ -46,6 +46,12 @@ describe('two people on one bench', () => {
     const { id } = (await engineer.post('/runs', { recordingId, benchId: a })).body as Run;
     await until('the run is heard of', () => two.benchRuns.some(({ runId }) => runId === id));
     expect(two.benchRuns.at(-1)).toEqual({ recordingId, benchId: a, runId: id });
+    const late = await connectLive(colleague);
+    await late.openBench(recordingId, randomUUID());
+    await until('who comes later is told of it', () =>
+      late.company.at(-1)?.visitors.some(({ benchId, runId }) => benchId === a && runId === id),
+    );
+    late.close();
     expect(await two.follow(id)).toEqual({ ok: true });
     await until('its figures come', () => two.summaries.some(({ runId }) => runId === id));
     one.close();

@@ -41,6 +41,7 @@ export function BenchStand({ parameters = defaultParameters(), locked, onBench, 
     parameters: changes.reduce((made, { path, value }) => writePath(made, path, value), from.parameters),
   });
   const bench: Bench = {
+    id: '00000000-0000-4000-8000-000000000000',
     start: {
       recording: { ...recordingOf(), strip: STRIP },
       set: null,
@@ -65,6 +66,8 @@ export function BenchStand({ parameters = defaultParameters(), locked, onBench, 
     baseline: { name: 'start values', parameters, runId: null },
     baselineSummary: null,
     pinCurrent: () => undefined,
+    adopt: () => undefined,
+    settle: () => undefined,
     locked: locked ?? null,
   };
   onBench({ config, live: parts.live, line: parts.line });
