@@ -1,5 +1,10 @@
-import { pageOf, pageQuerySchema } from '@/shared/contracts/common';
-import { vehicleInputSchema, vehiclePatchSchema, vehicleSchema } from '@/shared/contracts/vehicles';
+import { pageOf } from '@/shared/contracts/common';
+import {
+  vehicleInputSchema,
+  vehicleListQuerySchema,
+  vehiclePatchSchema,
+  vehicleSchema,
+} from '@/shared/contracts/vehicles';
 import { presentPage } from '../presenters/page';
 import { presentVehicle } from '../presenters/vehicle';
 import { changeVehicle, createVehicle, deleteVehicle, getVehicle, listVehicles } from '../services/vehicles';
@@ -16,8 +21,13 @@ export const vehicleRoutes: Route[] = [
     tag,
     summary: 'Vehicles of the workspace',
     permission: 'workspace:read',
-    query: pageQuerySchema,
-    success: { status: 200, description: 'By name', schema: pageOf(vehicleSchema), name: 'VehiclePage' },
+    query: vehicleListQuerySchema,
+    success: {
+      status: 200,
+      description: 'By name unless asked otherwise',
+      schema: pageOf(vehicleSchema),
+      name: 'VehiclePage',
+    },
     handle: async ({ ctx, actor, query }) =>
       presentPage(await listVehicles(ctx, actor, query), presentVehicle),
   }),

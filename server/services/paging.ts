@@ -9,6 +9,7 @@ import {
   type WhereOptions,
 } from 'sequelize';
 import { z } from 'zod';
+import type { ListSort } from '@/shared/contracts/common';
 import { invalid } from '../errors';
 
 export interface Found<T> {
@@ -26,6 +27,12 @@ interface Options {
   attributes?: FindOptions['attributes'];
   sort?: Sort;
 }
+
+/** A contract's order of a list, as the pages take it. */
+export const sortOf = (sort: ListSort): Sort => ({
+  by: sort.replace('-', ''),
+  descending: sort.startsWith('-'),
+});
 
 const NEWEST: Sort = { by: 'createdAt', descending: true };
 const cursorSchema = z.tuple([z.string(), z.union([z.string(), z.number()]), z.uuid()]);

@@ -9,8 +9,9 @@ import type {
 import type { Actor, Context } from '../context';
 import { conflict, invalid, noSuch } from '../errors';
 import type { ParameterSet, SetVersion } from '../models/parameter-set';
-import { escapeLike, recordBy } from './audit';
-import { type Found, newestFirst } from './paging';
+import { recordBy } from './audit';
+import { type Found, newestFirst, sortOf } from './paging';
+import { nameOrVehicle } from './search';
 import { addVersion, checkEvidence, PEOPLE } from './versions';
 
 /** A set with its versions, newest first. */
@@ -24,15 +25,16 @@ export async function listSets(
   actor: Actor,
   query: ParameterSetListQuery,
 ): Promise<Found<WholeSet>> {
-  const { search, vehicleId, state } = query;
+  const { search, vehicleId, state, sort } = query;
   const where: WhereOptions<ParameterSet> = {
     workspaceId: actor.workspaceId,
-    ...(search ? { name: { [Op.iLike]: `%${escapeLike(search)}%` } } : {}),
+    ...(await nameOrVehicle(ctx, actor.workspaceId, search)),
     ...(vehicleId ? { vehicleId } : {}),
     ...(state ? { id: { [Op.in]: withVersionIn(ctx, state) } } : {}),
   };
   const { items, nextCursor } = await newestFirst(ctx.db.ParameterSet, query, where, {
     include: ['vehicle', 'createdBy'],
+    sort: sortOf(sort),
   });
   const versions = await ctx.db.SetVersion.findAll({
     where: { setId: items.map((set) => set.id) },

@@ -16,10 +16,11 @@ import { JobCancelled, storeKeys } from '@/workers';
 import type { Actor, Context } from '../context';
 import { conflict, inUse, invalid, noSuch } from '../errors';
 import type { Recording } from '../models/recording';
-import { escapeLike, recordBy } from './audit';
+import { recordBy } from './audit';
 import { announce, decodeJobOf, redecode, sendDecode } from './decoding';
 import { discardFiles } from './discard';
-import { type Found, newestFirst } from './paging';
+import { type Found, newestFirst, sortOf } from './paging';
+import { nameOrVehicle } from './search';
 import { sameAxes } from './vehicles';
 
 /** A file of an upload, received whole into a temporary place. */
@@ -41,24 +42,24 @@ const WITH_NAMES: Includeable[] = [
 const BULKY = ['strip', 'health', 'previews', 'problems', 'channelMap'];
 const VISIBLE = { confirmedAt: { [Op.ne]: null }, deletedAt: null };
 
-export function listRecordings(
+export async function listRecordings(
   ctx: Context,
   actor: Actor,
   query: RecordingListQuery,
 ): Promise<Found<Recording>> {
-  const { search, status, vehicleId, sort } = query;
+  const { search, status, vehicleId, since, sort } = query;
   const where: WhereOptions<Recording> = {
     workspaceId: actor.workspaceId,
     ...VISIBLE,
-    ...(search ? { name: { [Op.iLike]: `%${escapeLike(search)}%` } } : {}),
+    ...(await nameOrVehicle(ctx, actor.workspaceId, search)),
     ...(status ? { status } : {}),
+    ...(since ? { createdAt: { [Op.gte]: new Date(since) } } : {}),
     ...(vehicleId ? { vehicleId } : {}),
   };
-  const by = { by: sort.replace('-', ''), descending: sort.startsWith('-') };
   return newestFirst(ctx.db.Recording, query, where, {
     include: WITH_NAMES,
     attributes: { exclude: ['previews'] },
-    sort: by,
+    sort: sortOf(sort),
   });
 }
 

@@ -1,13 +1,12 @@
 /** Vehicles: what a recording and a run take their axes and lever arm from. */
 import { Op, UniqueConstraintError, type WhereOptions } from 'sequelize';
-import type { PageQuery } from '@/shared/contracts/common';
-import type { AxisMap, VehicleInput, VehiclePatch } from '@/shared/contracts/vehicles';
+import type { AxisMap, VehicleInput, VehicleListQuery, VehiclePatch } from '@/shared/contracts/vehicles';
 import type { Actor, Context } from '../context';
 import { conflict, inUse, noSuch } from '../errors';
 import type { Vehicle } from '../models/vehicle';
 import { escapeLike, recordBy } from './audit';
 import { redecodeOf } from './decoding';
-import { type Found, newestFirst } from './paging';
+import { type Found, newestFirst, sortOf } from './paging';
 
 export interface CountedVehicle {
   vehicle: Vehicle;
@@ -17,13 +16,16 @@ export interface CountedVehicle {
 export async function listVehicles(
   ctx: Context,
   actor: Actor,
-  query: PageQuery,
+  query: VehicleListQuery,
 ): Promise<Found<CountedVehicle>> {
   const { workspaceId } = actor;
-  const where: WhereOptions<Vehicle> = query.search
-    ? { workspaceId, name: { [Op.iLike]: `%${escapeLike(query.search)}%` } }
-    : { workspaceId };
-  const sort = { by: 'name', descending: false };
+  const { search, kind } = query;
+  const where: WhereOptions<Vehicle> = {
+    workspaceId,
+    ...(search ? { name: { [Op.iLike]: `%${escapeLike(search)}%` } } : {}),
+    ...(kind ? { kind } : {}),
+  };
+  const sort = sortOf(query.sort);
   const { items, nextCursor } = await newestFirst(ctx.db.Vehicle, query, where, { sort });
   const counts = await countRecordings(ctx, items.map((vehicle) => vehicle.id)); // prettier-ignore
   return {

@@ -15,10 +15,15 @@ export type Vector3 = z.infer<typeof vector3Schema>;
 
 export const pageQuerySchema = z.object({
   limit: z.coerce.number().int().min(1).max(200).default(50),
-  cursor: z.string().max(200).optional(),
+  // Holds the last row's name where the list is sorted by it, up to four bytes a character, in base64.
+  cursor: z.string().max(800).optional(),
   search: z.string().trim().max(120).optional(),
 });
 export type PageQuery = z.infer<typeof pageQuerySchema>;
+
+/** Orders of a list by a field, with a minus sign for descending. */
+export const listSortSchema = z.enum(['-createdAt', 'createdAt', 'name', '-name']);
+export type ListSort = z.infer<typeof listSortSchema>;
 
 /** A page of `item`s; `nextCursor` is null on the last page. */
 export const pageOf = <T extends z.ZodType>(item: T) =>

@@ -1,6 +1,6 @@
 /** Named, versioned parameter sets. A version is draft, in review, returned, released or superseded. */
 import { z } from 'zod';
-import { idSchema, isoTimeSchema, nameSchema, pageQuerySchema } from './common';
+import { idSchema, isoTimeSchema, listSortSchema, nameSchema, pageQuerySchema } from './common';
 import { parametersSchema } from './parameters';
 import { outagesSchema } from './runs';
 
@@ -45,8 +45,9 @@ export const parameterSetPatchSchema = z.object({
 });
 export type ParameterSetPatch = z.infer<typeof parameterSetPatchSchema>;
 
-/** GET /parameter-sets. `state`: sets that have a version in it. */
+/** GET /parameter-sets. `state`: sets that have a version in it; `search` looks in the name and in the vehicle's. */
 export const parameterSetListQuerySchema = pageQuerySchema.extend({
+  sort: listSortSchema.default('-createdAt'),
   vehicleId: idSchema.optional(),
   state: versionStateSchema.optional(),
 });

@@ -1,6 +1,6 @@
 /** Recordings: upload, channel map, decoding, what the intake found, decimated series. */
 import { z } from 'zod';
-import { idSchema, isoTimeSchema, nameSchema, pageQuerySchema } from './common';
+import { idSchema, isoTimeSchema, listSortSchema, nameSchema, pageQuerySchema } from './common';
 import { axisMapSchema } from './vehicles';
 
 export const recordingStatusSchema = z.enum(['uploaded', 'decoding', 'ready', 'needs-mapping', 'rejected']);
@@ -369,9 +369,10 @@ export const recordingSchema = z.object({
 });
 export type Recording = z.infer<typeof recordingSchema>;
 
-/** GET /recordings. `sort` is a field, with a minus sign for descending. */
+/** GET /recordings. `search` looks in the name and in the vehicle's. */
 export const recordingListQuerySchema = pageQuerySchema.extend({
-  sort: z.enum(['-createdAt', 'createdAt', 'name', '-name']).default('-createdAt'),
+  sort: listSortSchema.default('-createdAt'),
+  since: isoTimeSchema.optional().describe('Only those that arrived then or later.'),
   status: recordingStatusSchema.optional(),
   vehicleId: idSchema.optional(),
 });

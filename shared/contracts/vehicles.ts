@@ -1,6 +1,13 @@
 /** A platform: how its IMU is mounted and where the GNSS antenna sits. */
 import { z } from 'zod';
-import { idSchema, isoTimeSchema, nameSchema, vector3Schema } from './common';
+import {
+  idSchema,
+  isoTimeSchema,
+  listSortSchema,
+  nameSchema,
+  pageQuerySchema,
+  vector3Schema,
+} from './common';
 
 /** A signed sensor axis. */
 export const signedAxisSchema = z.enum(['+x', '-x', '+y', '-y', '+z', '-z']);
@@ -116,3 +123,10 @@ export const vehicleSchema = z.object({
   recordingCount: z.number().int(),
 });
 export type Vehicle = z.infer<typeof vehicleSchema>;
+
+/** GET /vehicles. */
+export const vehicleListQuerySchema = pageQuerySchema.extend({
+  sort: listSortSchema.default('name'),
+  kind: vehicleSchema.shape.kind.optional(),
+});
+export type VehicleListQuery = z.infer<typeof vehicleListQuerySchema>;

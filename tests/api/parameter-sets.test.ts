@@ -130,6 +130,33 @@ describe('parameter sets', () => {
     expect(renamed.body).toMatchObject({ id, name: 'Shore van set' });
   });
 
+  it('are sorted, searched by name or vehicle, and filtered, page by page', async () => {
+    const engineer = await buildMember(api, 'engineer');
+    const vehicle = await buildVehicle(engineer, { name: 'Slow barge' });
+    const { version } = first;
+    await engineer.post('/parameter-sets', { name: 'Open sea', version });
+    await engineer.post('/parameter-sets', { name: 'Quay', vehicleId: vehicle.id, version });
+    await engineer.post('/parameter-sets', { name: 'Inner harbour', version });
+    const names = async (query: string) => {
+      const found: string[] = [];
+      for (let cursor: string | null = ''; cursor !== null;) {
+        const path = `/parameter-sets?${query}&limit=2${cursor ? `&cursor=${cursor}` : ''}`;
+        const page = (await engineer.get(path)).body as {
+          items: { name: string }[];
+          nextCursor: string | null;
+        };
+        found.push(...page.items.map(({ name }) => name));
+        cursor = page.nextCursor;
+      }
+      return found;
+    };
+    expect(await names('')).toEqual(['Inner harbour', 'Quay', 'Open sea']);
+    expect(await names('sort=name')).toEqual(['Inner harbour', 'Open sea', 'Quay']);
+    expect(await names('search=barge')).toEqual(['Quay']);
+    expect(await names(`vehicleId=${vehicle.id}&state=draft`)).toEqual(['Quay']);
+    expect(await names('state=released')).toEqual([]);
+  });
+
   it('answer a missing version and a senseless number plainly', async () => {
     const engineer = await buildMember(api, 'engineer');
     const { id } = (await engineer.post('/parameter-sets', first)).body as ParameterSetDetail;

@@ -71,7 +71,7 @@ describe('recordings', () => {
 
   it('are paged, sorted, searched and filtered', async () => {
     const engineer = await buildMember(api, 'engineer');
-    const vehicle = await buildVehicle(engineer);
+    const vehicle = await buildVehicle(engineer, { name: 'Slow barge' });
     for (const name of ['Loop b', 'Loop a', 'Quay']) await upload(engineer, { name });
     await upload(engineer, { name: 'Loop c', vehicleId: vehicle.id });
     const list = async (query: string) => (await engineer.get(`/recordings?${query}`)).body;
@@ -79,6 +79,10 @@ describe('recordings', () => {
     expect(names(await list('sort=name'))).toEqual(['Loop a', 'Loop b', 'Loop c', 'Quay']);
     expect(names(await list('search=loop&sort=-name'))).toEqual(['Loop c', 'Loop b', 'Loop a']);
     expect(names(await list(`vehicleId=${vehicle.id}`))).toEqual(['Loop c']);
+    expect(names(await list('search=BARGE'))).toEqual(['Loop c']);
+    const { items } = (await list('sort=createdAt')) as { items: Recording[] };
+    expect(names(await list(`since=${encodeURIComponent(items[2]!.createdAt)}`))).toEqual(['Loop c', 'Quay']);
+    expect((await engineer.get('/recordings?since=yesterday')).status).toBe(422);
     const pages: string[] = [];
     let cursor: string | null = '';
     while (cursor !== null) {

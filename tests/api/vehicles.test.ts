@@ -77,6 +77,32 @@ describe('vehicles', () => {
     expect(problemOf(bad).errors?.[0]?.path).toBe('cursor');
   });
 
+  it('sorts and filters by kind', async () => {
+    const engineer = await buildMember(api, 'engineer');
+    for (const [name, kind] of [
+      ['Barge', 'marine'],
+      ['Van', 'road'],
+      ['Coaster', 'marine'],
+    ] as const)
+      // prettier-ignore
+      await buildVehicle(engineer, { name, kind });
+    const names = async (query: string) =>
+      ((await engineer.get(`/vehicles?${query}`)).body as { items: { name: string }[] }).items.map(
+        (item) => item.name,
+      );
+    expect(await names('sort=-createdAt')).toEqual(['Coaster', 'Van', 'Barge']);
+    expect(await names('sort=-name&kind=marine')).toEqual(['Coaster', 'Barge']);
+    expect((await engineer.get('/vehicles?sort=colour')).status).toBe(422);
+  });
+
+  it('pages by names as long as they may be', async () => {
+    const engineer = await buildMember(api, 'engineer');
+    for (const end of ['a', 'b']) await buildVehicle(engineer, { name: 'Ω'.repeat(119) + end });
+    const first = (await engineer.get('/vehicles?limit=1')).body as { nextCursor: string };
+    const second = await engineer.get(`/vehicles?limit=1&cursor=${first.nextCursor}`);
+    expect(second.body).toMatchObject({ items: [{ name: 'Ω'.repeat(119) + 'b' }], nextCursor: null });
+  });
+
   it('lets a viewer read and refuses changes by role', async () => {
     const engineer = await buildMember(api, 'engineer');
     const { id } = await buildVehicle(engineer);
