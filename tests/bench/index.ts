@@ -4,6 +4,7 @@
  */
 import { failWith } from '@/scripts/lib/project';
 import { runBundled } from '@/tests/support/bundled';
+import { benchCharts } from './charts';
 import { benchEngine } from './engine';
 import { benchHealth } from './health';
 import { benchIngest } from './ingest';
@@ -25,6 +26,7 @@ const BENCHES: Record<string, (args: string[]) => void | Promise<void>> = {
   memory: script('memory'),
   search: (args) => benchSearch(count(args)),
   health: (args) => benchHealth(count(args)),
+  charts: benchCharts,
 };
 const BY_DEFAULT = ['engine', 'stack'];
 
