@@ -10,27 +10,26 @@ import { ThemeProvider } from '@/components/ui/ThemeProvider';
 import { splicedSeries, type Piece } from '@/hooks/finer/splice';
 import type { Series } from '@/shared/contracts/recordings';
 import { createRandom } from '@/workers/engine/random';
-import { measured, onLongTask, type UpdateTimes } from './page-timing';
+import { painted } from './painted';
 
 const TONES = ['north', 'east', 'down', 'ink'] as const;
 
-export interface StreamingResult extends UpdateTimes {
-  updates: number;
-  draws: number;
-}
+/** Set up by `stream` or `look`: one update each. */
+let update: (() => void) | null = null;
+let shown: ChartGroup | null = null;
 
-/** `charts` charts of `lines` lines of `points` points; all values change `rateHz` times a second. */
-async function stream(charts: number, lines: number, points: number, rateHz: number, updates: number) {
+/** `charts` charts of `lines` lines of `points` points; each step changes all values. */
+async function stream(charts: number, lines: number, points: number): Promise<void> {
   const random = createRandom(7);
-  const columns = Array.from({ length: charts * lines }, () => new Float32Array(points));
-  const time = Float64Array.from({ length: points }, (_, i) => i);
-  const refill = () => {
-    for (const column of columns) {
+  // Two sets taken in turn: making values is no part of drawing them.
+  const sets = [0, 1].map(() =>
+    Array.from({ length: charts * lines }, () => {
       let value = 0;
-      for (let i = 0; i < points; i++) column[i] = value = 0.98 * value + random.uniform() - 0.5;
-    }
-  };
-  refill();
+      return Float32Array.from({ length: points }, () => (value = 0.98 * value + random.uniform() - 0.5));
+    }),
+  );
+  const time = Float64Array.from({ length: points }, (_, i) => i);
+  let at = 0;
   const contents = Array.from({ length: charts }, (_, chart): ChartContent => ({
     id: `chart-${chart}`,
     title: `Chart ${chart + 1}`,
@@ -40,7 +39,7 @@ async function stream(charts: number, lines: number, points: number, rateHz: num
       id: `line-${line}`,
       label: tone,
       tone,
-      series: () => columnSeries(time, columns[chart * lines + line]!, points),
+      series: () => columnSeries(time, sets[at]![chart * lines + line]!, points),
     })),
     windows: () => [{ startS: points * 0.4, endS: points * 0.5 }],
     domain: () => [-5, 5],
@@ -48,16 +47,19 @@ async function stream(charts: number, lines: number, points: number, rateHz: num
   }));
   const group = new ChartGroup([0, points - 1]);
   await mount(group, contents);
-  const before = group.draws;
-  const times = await measured(updates, 1000 / rateHz, () => {
-    refill();
+  update = () => {
+    at = 1 - at;
     group.invalidate();
-  });
-  return { ...times, updates, draws: group.draws - before } satisfies StreamingResult;
+  };
 }
 
-/** A recording's charts with finer pieces in place; `steps` of a pan or of a zoom. */
-async function look(coarse: Series, pieces: Piece<Series>[], view: [number, number], how: 'pan' | 'zoom') {
+/** A recording's charts with finer pieces in place; each step pans or zooms. */
+async function look(
+  coarse: Series,
+  pieces: Piece<Series>[],
+  view: [number, number],
+  how: 'pan' | 'zoom',
+): Promise<void> {
   const spliced = splicedSeries(
     withGaps(coarse),
     pieces.map((piece) => ({ ...piece, data: withGaps(piece.data) })),
@@ -72,17 +74,22 @@ async function look(coarse: Series, pieces: Piece<Series>[], view: [number, numb
   await frame();
   const span = view[1] - view[0];
   let step = 0;
-  return measured(60, 50, () => {
+  update = () => {
     step++;
     const outwards = step % 20 < 10;
     if (how === 'pan') group.viewport.pan(((outwards ? 1 : -1) * span) / 40);
     else group.viewport.zoom(outwards ? 0.93 : 1 / 0.93, (view[0] + view[1]) / 2);
-  });
+  };
 }
+
+/** One update, until it is laid out and painted. */
+const step = () => painted(update!);
+const draws = () => shown!.draws;
 
 const root = createRoot(document.getElementById('root')!);
 
 async function mount(group: ChartGroup, contents: readonly ChartContent[]): Promise<void> {
+  shown = group;
   root.render(
     <ThemeProvider>
       <View style={{ width: '100%' }}>
@@ -98,8 +105,6 @@ async function mount(group: ChartGroup, contents: readonly ChartContent[]): Prom
 
 const frame = () => new Promise((resolve) => requestAnimationFrame(resolve));
 
-Object.assign(globalThis, { chartsBench: { stream, look, onLongTask } });
-export interface ChartsBench {
-  stream: typeof stream;
-  look: typeof look;
-}
+const chartsBench = { stream, look, step, draws };
+Object.assign(globalThis, { chartsBench });
+export type ChartsBench = typeof chartsBench;
