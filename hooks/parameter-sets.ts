@@ -5,23 +5,30 @@ import type {
   ParameterSet,
   ParameterSetCreateInput,
   ParameterSetDetail,
+  ParameterSetListQuery,
   ParameterSetVersion,
   VersionCreateInput,
 } from '@/shared/contracts/parameter-sets';
 import { api } from './api';
 import { STALE } from './query-client';
 
+/** What a list is narrowed down to; what is left out is the API's default. */
+export type SetFilter = Partial<Pick<ParameterSetListQuery, 'search' | 'vehicleId' | 'state' | 'sort'>>;
+
 export const setKeys = {
   all: ['parameter-sets'] as const,
-  list: (search: string) => ['parameter-sets', 'list', search] as const,
+  list: (filter: SetFilter) => ['parameter-sets', 'list', filter] as const,
   one: (id: string) => ['parameter-sets', 'one', id] as const,
 };
 
-export function useParameterSets(search = '') {
+export function useParameterSets(filter: SetFilter = {}) {
   return useInfiniteQuery({
-    queryKey: setKeys.list(search),
+    queryKey: setKeys.list(filter),
     queryFn: ({ pageParam, signal }) =>
-      api<Page<ParameterSet>>('/parameter-sets', { query: { search, cursor: pageParam, limit: 50 }, signal }),
+      api<Page<ParameterSet>>('/parameter-sets', {
+        query: { ...filter, cursor: pageParam, limit: 50 },
+        signal,
+      }),
     initialPageParam: '',
     getNextPageParam: (page) => page.nextCursor ?? undefined,
     staleTime: STALE.list,

@@ -15,6 +15,7 @@ import type {
   FileRole,
   MapPreview,
   Recording,
+  RecordingListQuery,
   RecordingMeta,
   RecordingPatch,
   Series,
@@ -25,9 +26,14 @@ import type { TileSource } from './finer/use-tiles';
 import { STALE } from './query-client';
 import { useDebounced } from './use-debounced';
 
+/** What a list is narrowed down to; what is left out is the API's default. */
+export type RecordingFilter = Partial<
+  Pick<RecordingListQuery, 'search' | 'vehicleId' | 'status' | 'since' | 'sort'>
+>;
+
 export const recordingKeys = {
   all: ['recordings'] as const,
-  list: (search: string) => ['recordings', 'list', search] as const,
+  list: (filter: RecordingFilter) => ['recordings', 'list', filter] as const,
   one: (id: string) => ['recordings', 'one', id] as const,
   series: (id: string, query: SeriesRequest) => ['recordings', 'series', id, query] as const,
   preview: (id: string, map: string) => ['recordings', 'map-preview', id, map] as const,
@@ -40,12 +46,12 @@ const WATCH_MS = 1000;
 export const isUnderWay = (recording: Pick<Recording, 'status'>): boolean =>
   recording.status === 'uploaded' || recording.status === 'decoding';
 
-/** Newest first, a page at a time; looks again while any of them is being decoded. */
-export function useRecordings(search = '') {
+/** Newest first unless asked otherwise, a page at a time; looks again while any of them is being decoded. */
+export function useRecordings(filter: RecordingFilter = {}) {
   return useInfiniteQuery({
-    queryKey: recordingKeys.list(search),
+    queryKey: recordingKeys.list(filter),
     queryFn: ({ pageParam, signal }) =>
-      api<Page<Recording>>('/recordings', { query: { search, cursor: pageParam, limit: 30 }, signal }),
+      api<Page<Recording>>('/recordings', { query: { ...filter, cursor: pageParam, limit: 30 }, signal }),
     initialPageParam: '',
     getNextPageParam: (page) => page.nextCursor ?? undefined,
     staleTime: STALE.list,

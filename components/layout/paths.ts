@@ -2,10 +2,19 @@
 import type { Href } from 'expo-router';
 import { benchHref } from '@/components/bench/bench-link';
 
-export const recordingPath = (id: string): Href => ({ pathname: '/recordings/[id]', params: { id } });
+type Query = Readonly<Record<string, string>>;
+
+/** `query` of a list that stays beside it. */
+export const recordingPath = (id: string, query?: Query): Href => ({
+  pathname: '/recordings/[id]',
+  params: { ...query, id },
+});
 export const mappingPath = (id: string): Href => ({ pathname: '/recordings/[id]/mapping', params: { id } });
 export const noisePath = (id: string): Href => ({ pathname: '/recordings/[id]/noise', params: { id } });
-export const setPath = (id: string): Href => ({ pathname: '/sets/[id]', params: { id } });
+export const setPath = (id: string, query?: Query): Href => ({
+  pathname: '/sets/[id]',
+  params: { ...query, id },
+});
 export const vehiclePath = (id: string): Href => ({ pathname: '/vehicles/[id]', params: { id } });
 
 /** The bench over a recording, optionally with a version's parameters. */

@@ -13,16 +13,18 @@ import { statusWord } from './status';
 
 export interface RecordingCardProps {
   recording: Recording;
+  /** Parameters of the list's address that its link carries on. */
+  query?: Readonly<Record<string, string>>;
   current?: boolean;
 }
 
 /** One recording in a list: name, whose, when, how long, what it is good for, and its strip. */
-export function RecordingCard({ recording, current }: RecordingCardProps) {
+export function RecordingCard({ recording, query, current }: RecordingCardProps) {
   const { word, tone } = statusWord(recording);
   const line = sourceLine(recording);
   return (
     <CardLink
-      href={recordingPath(recording.id)}
+      href={recordingPath(recording.id, query)}
       label={`${recording.name}, ${word}, ${line}`}
       current={current}
     >

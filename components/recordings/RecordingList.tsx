@@ -1,25 +1,27 @@
 import { router } from 'expo-router';
-import { useState } from 'react';
 import { View } from 'react-native';
+import { ListFilter } from '@/components/lists/ListFilter';
+import { NoMatch } from '@/components/lists/NoMatch';
+import { useAddressFilter } from '@/components/lists/use-address-filter';
 import { Button } from '@/components/ui/Button';
 import { EmptyState } from '@/components/ui/EmptyState';
 import { ErrorState } from '@/components/ui/ErrorState';
-import { Field } from '@/components/ui/Field';
 import { SkeletonList } from '@/components/ui/Skeleton';
-import { Text } from '@/components/ui/Text';
 import { space } from '@/constants/theme';
 import { itemsOf, useRecordings } from '@/hooks/recordings';
 import { useCan } from '@/hooks/session';
-import { useDebounced } from '@/hooks/use-debounced';
+import { useVehicles } from '@/hooks/vehicles';
 import { RecordingCard } from './RecordingCard';
+import { RECORDING_KEYS, recordingChoices, recordingQuery } from './recording-filter';
 
 /** Search and cards; `currentId` is the one that is open beside the list. */
 export function RecordingList({ currentId }: { currentId?: string }) {
-  const [search, setSearch] = useState('');
-  const settled = useDebounced(search.trim());
-  const recordings = useRecordings(settled);
+  const filter = useAddressFilter(RECORDING_KEYS);
+  const recordings = useRecordings(recordingQuery(filter.values));
+  const vehicles = useVehicles();
   const items = itemsOf(recordings.data);
-  if (recordings.isPending && settled === '') return <SkeletonList label="recordings" />;
+  const narrowed = filter.count > 0;
+  if (recordings.isPending && !narrowed) return <SkeletonList label="recordings" />;
   if (recordings.isError)
     return (
       <ErrorState
@@ -28,27 +30,31 @@ export function RecordingList({ currentId }: { currentId?: string }) {
         onRetry={() => void recordings.refetch()}
       />
     );
-  if (items.length === 0 && settled === '' && recordings.isSuccess) return <NoRecordings />;
+  if (items.length === 0 && !narrowed && recordings.isSuccess) return <NoRecordings />;
   return (
     <View style={{ gap: space.m }}>
-      <Field
+      <ListFilter
         label="Search recordings"
-        labelHidden
-        icon="search"
         placeholder="Search name or vehicle"
-        value={search}
-        onChangeText={setSearch}
-        inputMode="search"
+        searchKey="q"
+        choices={recordingChoices(vehicles.data ?? [])}
+        filter={filter}
       />
+      {recordings.isPending ? <SkeletonList label="recordings" rows={3} /> : null}
       {items.length === 0 && recordings.isSuccess ? (
-        <Text tone="soft" role="status">{`Nothing called “${settled}”.`}</Text>
+        <NoMatch what="recordings" onClear={filter.clear} />
       ) : null}
       {items.map((recording) => (
-        <RecordingCard key={recording.id} recording={recording} current={recording.id === currentId} />
+        <RecordingCard
+          key={recording.id}
+          recording={recording}
+          query={filter.values}
+          current={recording.id === currentId}
+        />
       ))}
       {recordings.hasNextPage ? (
         <Button
-          label="Show older recordings"
+          label="Show more recordings"
           busy={recordings.isFetchingNextPage}
           onPress={() => void recordings.fetchNextPage()}
         />

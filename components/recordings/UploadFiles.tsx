@@ -4,7 +4,7 @@ import { Text } from '@/components/ui/Text';
 import { space } from '@/constants/theme';
 import type { FileRole } from '@/shared/contracts/recordings';
 import { FilePick } from './FilePick';
-import { Fold } from './Fold';
+import { Fold } from '@/components/ui/Fold';
 import type { UploadForm } from './UploadScreen';
 
 export interface UploadFilesProps {

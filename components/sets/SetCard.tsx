@@ -8,8 +8,15 @@ import { space } from '@/constants/theme';
 import type { ParameterSet } from '@/shared/contracts/parameter-sets';
 import { VERSION_STATES } from './version-words';
 
+export interface SetCardProps {
+  set: ParameterSet;
+  /** Parameters of the list's address that its link carries on. */
+  query?: Readonly<Record<string, string>>;
+  current?: boolean;
+}
+
 /** One parameter set in a list: its latest version, whose, when, and why. */
-export function SetCard({ set, current }: { set: ParameterSet; current?: boolean }) {
+export function SetCard({ set, query, current }: SetCardProps) {
   const { word, tone } = VERSION_STATES[set.latest.state];
   const line = [
     set.vehicleName,
@@ -20,7 +27,7 @@ export function SetCard({ set, current }: { set: ParameterSet; current?: boolean
     .filter(Boolean)
     .join(' · ');
   return (
-    <CardLink href={setPath(set.id)} label={`${set.name}, ${word}, ${line}`} current={current}>
+    <CardLink href={setPath(set.id, query)} label={`${set.name}, ${word}, ${line}`} current={current}>
       <View style={styles.head}>
         <Text strong style={styles.name}>
           {set.name}

@@ -1,26 +1,28 @@
 import { router } from 'expo-router';
-import { useState } from 'react';
 import { View } from 'react-native';
+import { ListFilter } from '@/components/lists/ListFilter';
+import { NoMatch } from '@/components/lists/NoMatch';
+import { useAddressFilter } from '@/components/lists/use-address-filter';
 import { Button } from '@/components/ui/Button';
 import { EmptyState } from '@/components/ui/EmptyState';
 import { ErrorState } from '@/components/ui/ErrorState';
-import { Field } from '@/components/ui/Field';
 import { SkeletonList } from '@/components/ui/Skeleton';
-import { Text } from '@/components/ui/Text';
 import { space } from '@/constants/theme';
 import { useParameterSets } from '@/hooks/parameter-sets';
 import { itemsOf } from '@/hooks/recordings';
 import { useCan } from '@/hooks/session';
-import { useDebounced } from '@/hooks/use-debounced';
+import { useVehicles } from '@/hooks/vehicles';
 import { SetCard } from './SetCard';
+import { SET_KEYS, setChoices, setQuery } from './set-filter';
 
 /** Search and cards; `currentId` is the set that is open beside the list. */
 export function SetList({ currentId }: { currentId?: string }) {
-  const [search, setSearch] = useState('');
-  const settled = useDebounced(search.trim());
-  const sets = useParameterSets(settled);
+  const filter = useAddressFilter(SET_KEYS);
+  const sets = useParameterSets(setQuery(filter.values));
+  const vehicles = useVehicles();
   const items = itemsOf(sets.data);
-  if (sets.isPending && settled === '') return <SkeletonList label="parameter sets" rows={3} />;
+  const narrowed = filter.count > 0;
+  if (sets.isPending && !narrowed) return <SkeletonList label="parameter sets" rows={3} />;
   if (sets.isError)
     return (
       <ErrorState
@@ -29,23 +31,20 @@ export function SetList({ currentId }: { currentId?: string }) {
         onRetry={() => void sets.refetch()}
       />
     );
-  if (items.length === 0 && settled === '' && sets.isSuccess) return <NoSets />;
+  if (items.length === 0 && !narrowed && sets.isSuccess) return <NoSets />;
   return (
     <View style={{ gap: space.m }}>
-      <Field
+      <ListFilter
         label="Search parameter sets"
-        labelHidden
-        icon="search"
         placeholder="Search name or vehicle"
-        value={search}
-        onChangeText={setSearch}
-        inputMode="search"
+        searchKey="q"
+        choices={setChoices(vehicles.data ?? [])}
+        filter={filter}
       />
-      {items.length === 0 && sets.isSuccess ? (
-        <Text tone="soft" role="status">{`Nothing called “${settled}”.`}</Text>
-      ) : null}
+      {sets.isPending ? <SkeletonList label="parameter sets" rows={3} /> : null}
+      {items.length === 0 && sets.isSuccess ? <NoMatch what="parameter sets" onClear={filter.clear} /> : null}
       {items.map((set) => (
-        <SetCard key={set.id} set={set} current={set.id === currentId} />
+        <SetCard key={set.id} set={set} query={filter.values} current={set.id === currentId} />
       ))}
       {sets.hasNextPage ? (
         <Button label="Show more" busy={sets.isFetchingNextPage} onPress={() => void sets.fetchNextPage()} />

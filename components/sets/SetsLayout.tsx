@@ -1,16 +1,18 @@
+import { useAddressFilter } from '@/components/lists/use-address-filter';
 import { MasterDetail } from '@/components/layout/MasterDetail';
 import { Screen } from '@/components/layout/Screen';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
 import { usePathId } from '@/components/layout/use-path-id';
 import { useParameterSets } from '@/hooks/parameter-sets';
 import { itemsOf } from '@/hooks/recordings';
+import { SET_KEYS, setQuery } from './set-filter';
 import { SetList } from './SetList';
 import { SetScreen } from './SetScreen';
 
 /** The list beside whatever set is open. */
 export function SetsLayout() {
   const opened = usePathId('sets');
-  const first = itemsOf(useParameterSets().data)[0]?.id;
+  const first = useFirstSet();
   return (
     <MasterDetail
       title="Parameter sets"
@@ -23,11 +25,19 @@ export function SetsLayout() {
 /** The phone's list; on wide screens the list stands beside the newest set. */
 export function SetsScreen() {
   const { wide } = useBreakpoint();
-  const newest = itemsOf(useParameterSets().data)[0];
-  if (wide && newest) return <SetScreen id={newest.id} />;
+  const first = useFirstSet();
+  if (wide && first) return <SetScreen id={first} />;
   return (
     <Screen title="Parameter sets">
       <SetList />
     </Screen>
   );
+}
+
+/** Of the list as it is narrowed down, else of all. */
+function useFirstSet(): string | undefined {
+  const filter = useAddressFilter(SET_KEYS);
+  const listed = itemsOf(useParameterSets(setQuery(filter.values)).data)[0];
+  const newest = itemsOf(useParameterSets().data)[0];
+  return (listed ?? newest)?.id;
 }

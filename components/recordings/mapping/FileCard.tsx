@@ -5,7 +5,7 @@ import { Card } from '@/components/ui/Card';
 import { Notice } from '@/components/ui/Notice';
 import { space } from '@/constants/theme';
 import type { FilePreview } from '@/shared/contracts/recordings';
-import { Fold } from '../Fold';
+import { Fold } from '@/components/ui/Fold';
 import { columnParts } from './column-parts';
 import { GnssPart, ReferencePart } from './FileParts';
 import { GuessList, SURE } from './GuessList';

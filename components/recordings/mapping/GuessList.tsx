@@ -4,7 +4,7 @@ import { Text } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { hairline, space } from '@/constants/theme';
 import type { ChannelGuess } from '@/shared/contracts/recordings';
-import { Fold } from '../Fold';
+import { Fold } from '@/components/ui/Fold';
 
 /** Below it a person should look. */
 export const SURE = 0.7;

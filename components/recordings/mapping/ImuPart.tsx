@@ -1,7 +1,7 @@
 import { useWatch } from 'react-hook-form';
 import { View } from 'react-native';
 import { accelUnitSchema, gyroUnitSchema, imuMapSchema } from '@/shared/contracts/recordings';
-import { Fold } from '../Fold';
+import { Fold } from '@/components/ui/Fold';
 import { MountingPart } from './MountingPart';
 import { Column, fields, Group, Pick, plain, type PartProps } from './parts';
 import { SensorMore } from './SensorMore';

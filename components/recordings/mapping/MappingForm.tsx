@@ -10,7 +10,7 @@ import { Card } from '@/components/ui/Card';
 import { Notice } from '@/components/ui/Notice';
 import { space } from '@/constants/theme';
 import type { ChannelMap, Recording } from '@/shared/contracts/recordings';
-import { Fold } from '../Fold';
+import { Fold } from '@/components/ui/Fold';
 import { AidsPart } from './AidsPart';
 import { draftFromMap } from './draft-from-map';
 import { FileCard } from './FileCard';

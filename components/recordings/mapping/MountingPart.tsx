@@ -2,7 +2,7 @@ import { Controller, get, useFormState, useWatch } from 'react-hook-form';
 import { View } from 'react-native';
 import { FormNumber } from '@/components/forms/FormNumber';
 import { AxisPicker } from '@/components/vehicles/AxisPicker';
-import { Fold } from '../Fold';
+import { Fold } from '@/components/ui/Fold';
 import { fields, Group, Pick, type PartProps } from './parts';
 
 const AXES_FROM = [

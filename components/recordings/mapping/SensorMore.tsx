@@ -1,7 +1,7 @@
 import { get, useFormState, useWatch } from 'react-hook-form';
 import { View } from 'react-native';
 import { FormNumber } from '@/components/forms/FormNumber';
-import { Fold } from '../Fold';
+import { Fold } from '@/components/ui/Fold';
 import type { SensorExtras } from './map-draft';
 import { fields, Pick, type PartProps } from './parts';
 

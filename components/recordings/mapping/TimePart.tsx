@@ -3,7 +3,7 @@ import { View } from 'react-native';
 import { FormField } from '@/components/forms/FormField';
 import { FormNumber } from '@/components/forms/FormNumber';
 import { timeMapSchema } from '@/shared/contracts/recordings';
-import { Fold } from '../Fold';
+import { Fold } from '@/components/ui/Fold';
 import { TWO_COLUMN_BASES, type TimeDraft } from './map-draft';
 import { timeExtrasOf } from './map-from-draft';
 import { Column, fields, Group, Pick, plain, type PartProps } from './parts';

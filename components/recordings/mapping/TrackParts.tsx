@@ -6,7 +6,7 @@ import {
   positionUnitSchema,
   speedUnitSchema,
 } from '@/shared/contracts/recordings';
-import { Fold } from '../Fold';
+import { Fold } from '@/components/ui/Fold';
 import { SIGMA_AXES, VELOCITY_AXES } from './column-parts';
 import { Column, fields, Group, Pick, plain, type PartProps } from './parts';
 

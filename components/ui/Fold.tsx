@@ -1,7 +1,7 @@
 import { useState } from 'react';
 import { Pressable, StyleSheet, View } from 'react-native';
-import { Icon } from '@/components/ui/Icon';
-import { Text } from '@/components/ui/Text';
+import { Icon } from './Icon';
+import { Text } from './Text';
 import { space, touchTarget } from '@/constants/theme';
 
 export interface FoldProps {
