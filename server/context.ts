@@ -1,7 +1,7 @@
 /** Everything a service may need from outside, handed down; tests swap members. */
 import type { Logger } from 'pino';
 import type { Preferences } from '@/shared/contracts/preferences';
-import type { Role } from '@/shared/contracts/roles';
+import type { Role, TokenScope } from '@/shared/contracts/roles';
 import type { Pool, Store } from '@/workers';
 import type { Config } from './config';
 import type { Instance } from './instance';
@@ -54,4 +54,6 @@ export interface Actor extends Person {
   workspaceId: string;
   workspaceName: string;
   role: Role;
+  /** Set where a token calls: its scopes count, not a role; `userId` is who made it. */
+  token?: { id: string; name: string; scopes: TokenScope[] };
 }

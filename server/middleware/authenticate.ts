@@ -1,10 +1,11 @@
-/** Who calls, and in which workspace. */
+/** Who calls, and in which workspace: a person by their session's cookie, or a program by its token. */
 import type { Request } from 'express';
 import { WORKSPACE_HEADER } from '@/shared/contracts/common';
-import { can, type Permission, ROLE_SUMMARY } from '@/shared/contracts/roles';
+import { can, type Permission, ROLE_SUMMARY, scopesCan } from '@/shared/contracts/roles';
 import type { Actor, Context, Person } from '../context';
-import { forbidden, notFound, notSignedIn, workspaceRequired } from '../errors';
+import { forbidden, notFound, notSignedIn, outOfScope, workspaceRequired } from '../errors';
 import { loadPerson } from '../services/accounts';
+import { actorOfToken } from '../services/api-tokens';
 import { renewSession } from './session';
 
 /** The person behind the session cookie. Throws 401 when there is none, or the session has ended. */
@@ -17,9 +18,27 @@ export async function authenticate(ctx: Context, req: Request): Promise<Person> 
   return person;
 }
 
+/** The token of a request that carries one; its cookie, if it has any, then counts for nothing. */
+export function bearerToken(req: Request): string | null {
+  const [scheme, token] = (req.get('Authorization') ?? '').split(' ');
+  return scheme?.toLowerCase() === 'bearer' ? (token ?? '') : null;
+}
+
+/** The token as an actor of its workspace. Throws 401 for one that opens nothing, 404 where another workspace is named. */
+export async function authenticateToken(ctx: Context, req: Request, token: string): Promise<Actor> {
+  const actor = await actorOfToken(ctx, token, req.ip ?? null);
+  const named = namedWorkspace(req);
+  if (named && named !== actor.workspaceId) {
+    throw notFound(
+      `The token belongs to another workspace than ${WORKSPACE_HEADER} names; it may be left out.`,
+    );
+  }
+  return actor;
+}
+
 /** Puts the person into the workspace that the request names. Somebody else's is answered as one that does not exist. */
 export function inWorkspace(person: Person, req: Request): Actor {
-  const named = req.get(WORKSPACE_HEADER)?.trim() ?? linkedWorkspace(req);
+  const named = namedWorkspace(req);
   if (!named && person.memberships.length !== 1) throw workspaceRequired(whichWorkspace(person));
   const membership = named
     ? person.memberships.find((candidate) => candidate.workspaceId === named)
@@ -32,14 +51,24 @@ export function inWorkspace(person: Person, req: Request): Actor {
   return { ...person, ...membership };
 }
 
+const namedWorkspace = (req: Request) => req.get(WORKSPACE_HEADER)?.trim() ?? linkedWorkspace(req);
+
 /** A link that a browser follows (a download) cannot carry the header: it names the workspace in its query. */
 function linkedWorkspace(req: Request): string | undefined {
   const { workspace } = req.query;
   return req.method === 'GET' && typeof workspace === 'string' ? workspace : undefined;
 }
 
-/** Throws 403 unless the actor's role grants `permission`. */
+/** Throws 403 unless the actor's role, or the token's scopes, grant `permission`. */
 export function authorise(actor: Actor, permission: Permission): void {
+  const { token } = actor;
+  if (token) {
+    if (scopesCan(token.scopes, permission)) return;
+    const scopes = token.scopes.join(', ');
+    throw outOfScope(
+      `This needs ${permission}; the token “${token.name}” has ${scopes}. An admin can make another.`,
+    );
+  }
   if (can(actor.role, permission)) return;
   const role = actor.role;
   throw forbidden(

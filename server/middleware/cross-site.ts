@@ -1,19 +1,21 @@
 /**
  * Keeps other sites from using a person's cookie. SameSite=Lax stops most; this refuses the rest: a state-changing
  * request that a browser marks as another site's, and one with a session cookie but without the header that a
- * cross-site form cannot send.
+ * cross-site form cannot send. A request with a token is let through: its cookie counts for nothing, and no page of another
+ * site can add the token's header without being asked first, which this server never allows.
  */
 import type { Request, RequestHandler } from 'express';
 import { CSRF_HEADER } from '@/shared/contracts/common';
 import type { Config } from '../config';
 import { crossSite } from '../errors';
+import { bearerToken } from './authenticate';
 import { SESSION_COOKIE } from './session';
 
 const SAFE = new Set(['GET', 'HEAD', 'OPTIONS']);
 
 export function refuseCrossSite(config: Config): RequestHandler {
   return (req, _res, next) => {
-    if (!SAFE.has(req.method)) check(req, config);
+    if (!SAFE.has(req.method) && bearerToken(req) === null) check(req, config);
     next();
   };
 }

@@ -21,6 +21,7 @@ export const answerProblems: ErrorRequestHandler = (error: unknown, req, res, ne
   }
   const known = identify(error);
   if (!known) req.log.error({ err: error }, 'unexpected failure');
+  if (known?.status === 401 && req.get('Authorization')) res.setHeader('WWW-Authenticate', 'Bearer');
   send(res, known ?? UNEXPECTED, req.originalUrl);
 };
 

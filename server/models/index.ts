@@ -3,6 +3,7 @@ import { Sequelize, type Transaction } from 'sequelize';
 import type { Logger } from 'pino';
 import { bindAccounts } from './accounts';
 import { bindMapTemplate } from './map-template';
+import { bindApiToken } from './api-token';
 import { bindMessages } from './messages';
 import { bindParameterSet, bindSetVersion } from './parameter-set';
 import { bindRecording, bindRecordingFile } from './recording';
@@ -46,6 +47,7 @@ function bindModels(sequelize: Sequelize) {
     ParameterSet: bindParameterSet(sequelize),
     SetVersion: bindSetVersion(sequelize),
     Requirement: bindRequirement(sequelize),
+    ApiToken: bindApiToken(sequelize),
     VerificationRun: bindVerificationRun(sequelize),
     VerificationCell: bindVerificationCell(sequelize),
     Waiver: bindWaiver(sequelize),
@@ -73,5 +75,7 @@ function bindModels(sequelize: Sequelize) {
   Requirement.belongsTo(User, { as: 'createdBy', foreignKey: 'createdById' });
   Requirement.hasMany(RequirementRecording, { as: 'recordings', foreignKey: 'requirementId' });
   RequirementRecording.belongsTo(Recording, { as: 'recording', foreignKey: 'recordingId' });
+  models.ApiToken.belongsTo(User, { as: 'createdBy', foreignKey: 'createdById' });
+  models.ApiToken.belongsTo(models.Workspace, { as: 'workspace', foreignKey: 'workspaceId' });
   return models;
 }

@@ -8,6 +8,7 @@ import {
 } from '@asteasolutions/zod-to-openapi';
 import { z } from 'zod';
 import { API_PREFIX, CSRF_HEADER, problemSchema, WORKSPACE_HEADER } from '@/shared/contracts/common';
+import { scopesCan, tokenScopeSchema } from '@/shared/contracts/roles';
 import { ROUTES } from '../routes';
 import type { Route } from '../routes/route';
 import { VERSION } from '../version';
@@ -34,6 +35,11 @@ function generate() {
     name: 'driftwright.sid',
     description: `Set by POST /sessions. Requests that change something carry the header ${CSRF_HEADER} (any value) with it.`,
   });
+  registry.registerComponent('securitySchemes', 'token', {
+    type: 'http',
+    scheme: 'bearer',
+    description: 'An API token made by an admin; its scopes say what it may do.',
+  });
   for (const route of ROUTES) registerRoute(registry, route, problem);
   return new OpenApiGeneratorV31(registry.definitions).generateDocument({
     openapi: '3.1.0',
@@ -58,7 +64,7 @@ function registerRoute(registry: OpenAPIRegistry, route: Route, problem: Respons
     summary,
     description: who(route),
     operationId: operationId(route),
-    security: access === 'public' ? [] : [{ session: [] }],
+    security: securityOf(access),
     request: {
       ...(params ? { params: asObject(params)!.schema } : {}),
       ...(query ? { query: asObject(query)!.schema } : {}),
@@ -67,6 +73,14 @@ function registerRoute(registry: OpenAPIRegistry, route: Route, problem: Respons
     },
     responses: { ...successOf(route), ...failuresOf(route, problem) },
   });
+}
+
+/** Tokens are for what some scope grants. */
+function securityOf(access: Route['access']): Record<string, string[]>[] {
+  if (access === 'public') return [];
+  const byToken =
+    access !== 'signed-in' && tokenScopeSchema.options.some((scope) => scopesCan([scope], access));
+  return byToken ? [{ session: [] }, { token: [] }] : [{ session: [] }];
 }
 
 const inWorkspace = ({ access }: Route) => access !== 'public' && access !== 'signed-in';

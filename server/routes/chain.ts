@@ -1,8 +1,14 @@
 /** The chain that every route runs through: authenticate → authorise → validate → handle → answer. */
 import type { Request, RequestHandler } from 'express';
 import type { Actor, Context, Person } from '../context';
-import { unsupportedMedia } from '../errors';
-import { authenticate, authorise, inWorkspace } from '../middleware/authenticate';
+import { outOfScope, unsupportedMedia } from '../errors';
+import {
+  authenticate,
+  authenticateToken,
+  authorise,
+  bearerToken,
+  inWorkspace,
+} from '../middleware/authenticate';
 import { validate } from '../middleware/validate';
 import { type Route, SENT } from './route';
 
@@ -36,6 +42,13 @@ async function identify(
 ): Promise<{ person: Person | null; actor: Actor | null }> {
   const { access } = route;
   if (access === 'public') return { person: null, actor: null };
+  const token = bearerToken(req);
+  if (token !== null) {
+    const actor = await authenticateToken(ctx, req, token);
+    if (access === 'signed-in') throw outOfScope('This is for people who sign in; a token is nobody.');
+    authorise(actor, access);
+    return { person: actor, actor };
+  }
   const person = await authenticate(ctx, req);
   if (access === 'signed-in') return { person, actor: null };
   const actor = inWorkspace(person, req);

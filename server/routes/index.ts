@@ -10,6 +10,7 @@ import type { Route } from './route';
 import { runRoutes } from './runs';
 import { statusRoutes } from './status';
 import { teamRoutes } from './team';
+import { tokenRoutes } from './tokens';
 import { vehicleRoutes } from './vehicles';
 import { verificationRoutes } from './verification';
 import { versionRoutes } from './versions';
@@ -18,6 +19,7 @@ export const ROUTES: readonly Route[] = [
   ...statusRoutes,
   ...accountRoutes,
   ...teamRoutes,
+  ...tokenRoutes,
   ...vehicleRoutes,
   ...mapTemplateRoutes,
   ...recordingRoutes,

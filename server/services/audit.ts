@@ -8,7 +8,7 @@ import { type Found, newestFirst } from './paging';
 interface Entry {
   workspaceId: string;
   /** Null: the server itself. */
-  by: { userId: string; name: string; address: string | null } | null;
+  by: { userId: string | null; name: string; address: string | null } | null;
   action: string;
   subject: string;
   /** Id of what it was done to, so that its history can be read. */
@@ -32,13 +32,19 @@ export async function record(ctx: Context, entry: Entry, transaction: Transactio
   );
 }
 
-/** What `actor` did in their workspace. */
+/** What `actor` did in their workspace; a token under its own name. */
 export const recordBy = (
   ctx: Context,
   actor: Actor,
   what: Pick<Entry, 'action' | 'subject' | 'subjectId' | 'detail'>,
   transaction: Transaction,
-): Promise<void> => record(ctx, { workspaceId: actor.workspaceId, by: actor, ...what }, transaction);
+): Promise<void> => {
+  const { workspaceId, token } = actor;
+  if (!token) return record(ctx, { workspaceId, by: actor, ...what }, transaction);
+  const by = { userId: null, name: actor.name, address: actor.address };
+  const detail = { ...what.detail, tokenId: token.id };
+  return record(ctx, { workspaceId, by, ...what, detail }, transaction);
+};
 
 export function listAudit(ctx: Context, actor: Actor, query: PageQuery): Promise<Found<AuditEntry>> {
   const pattern = query.search ? `%${escapeLike(query.search)}%` : null;

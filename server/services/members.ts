@@ -4,6 +4,7 @@ import type { Role } from '@/shared/contracts/roles';
 import type { Actor, Context } from '../context';
 import { conflict, noSuch } from '../errors';
 import type { Membership } from '../models/accounts';
+import { revokeTokensOf } from './api-tokens';
 import { recordBy } from './audit';
 
 export const listMembers = (ctx: Context, actor: Actor): Promise<Membership[]> =>
@@ -31,12 +32,13 @@ export async function changeRole(
   });
 }
 
-/** Takes a person out of the workspace; what they made stays. Throws 409 for the last admin. */
+/** Takes a person out of the workspace; what they made stays, but the tokens, which they know. Throws 409 for the last admin. */
 export async function removeMember(ctx: Context, actor: Actor, userId: string): Promise<void> {
   await ctx.db.transaction(async (transaction) => {
     const member = await lockMember(ctx, actor, userId, transaction);
     if (member.role === 'admin') await keepAnAdmin(ctx, actor, userId, transaction);
     await member.destroy({ transaction });
+    await revokeTokensOf(ctx, actor, userId, transaction);
     const subject = member.user?.email ?? userId;
     await recordBy(
       ctx,

@@ -25,6 +25,36 @@ const GRANTS: Record<Role, readonly Permission[]> = {
   admin: [...READ, ...ENGINEER, ...ADMIN],
 };
 
+/** What an API token may be given. A token has no role: only what its scopes grant. */
+export const tokenScopeSchema = z.enum([
+  'released-set:read',
+  'export:read',
+  'workspace:read',
+  'recording:write',
+  'run:create',
+]);
+export type TokenScope = z.infer<typeof tokenScopeSchema>;
+
+const SCOPE_GRANTS: Record<TokenScope, readonly Permission[]> = {
+  'released-set:read': ['released-set:read'],
+  'export:read': ['released-set:read', 'export:read'],
+  'workspace:read': ['released-set:read', 'export:read', 'workspace:read'],
+  'recording:write': ['recording:write'],
+  'run:create': ['run:create'],
+};
+
+export const SCOPE_SUMMARY: Record<TokenScope, string> = {
+  'released-set:read': 'Fetches the released set of a vehicle.',
+  'export:read': 'Fetches files: any version, runs, recordings, the released set.',
+  'workspace:read': 'Reads everything in the workspace but the team’s own pages.',
+  'recording:write': 'Uploads recordings, and renames and maps them.',
+  'run:create': 'Starts runs and verifications.',
+};
+
+/** Whether a token with `scopes` may do `permission`. */
+export const scopesCan = (scopes: readonly TokenScope[], permission: Permission): boolean =>
+  scopes.some((scope) => SCOPE_GRANTS[scope].includes(permission));
+
 /** Whether `role` may do `permission`. */
 export const can = (role: Role, permission: Permission): boolean => GRANTS[role].includes(permission);
 export const permissionsOf = (role: Role): readonly Permission[] => GRANTS[role];
