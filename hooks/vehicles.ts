@@ -1,21 +1,25 @@
 /** Vehicles: IMU mounting and antenna lever arm. */
 import { useMutation, useQuery, useQueryClient } from '@tanstack/react-query';
 import type { Page } from '@/shared/contracts/common';
-import type { Vehicle, VehicleInput, VehiclePatch } from '@/shared/contracts/vehicles';
+import type { Vehicle, VehicleInput, VehicleListQuery, VehiclePatch } from '@/shared/contracts/vehicles';
 import { api } from './api';
 import { STALE } from './query-client';
 
+/** What a list is narrowed down to; what is left out is the API's default. */
+export type VehicleFilter = Partial<Pick<VehicleListQuery, 'search' | 'kind' | 'sort'>>;
+
 export const vehicleKeys = {
   all: ['vehicles'] as const,
-  list: ['vehicles', 'list'] as const,
+  list: (filter: VehicleFilter) => ['vehicles', 'list', filter] as const,
   one: (id: string) => ['vehicles', 'one', id] as const,
 };
 
-export function useVehicles() {
+/** By name unless asked otherwise. */
+export function useVehicles(filter: VehicleFilter = {}) {
   return useQuery({
-    queryKey: vehicleKeys.list,
+    queryKey: vehicleKeys.list(filter),
     queryFn: async ({ signal }) =>
-      (await api<Page<Vehicle>>('/vehicles', { query: { limit: 200 }, signal })).items,
+      (await api<Page<Vehicle>>('/vehicles', { query: { ...filter, limit: 200 }, signal })).items,
     staleTime: STALE.slow,
   });
 }

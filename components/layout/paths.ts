@@ -15,7 +15,10 @@ export const setPath = (id: string, query?: Query): Href => ({
   pathname: '/sets/[id]',
   params: { ...query, id },
 });
-export const vehiclePath = (id: string): Href => ({ pathname: '/vehicles/[id]', params: { id } });
+export const vehiclePath = (id: string, query?: Query): Href => ({
+  pathname: '/vehicles/[id]',
+  params: { ...query, id },
+});
 
 /** The bench over a recording, optionally with a version's parameters. */
 export const benchPath = (recordingId: string, version?: { setId: string; number: number }): Href =>

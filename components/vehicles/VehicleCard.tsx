@@ -10,13 +10,20 @@ import { scaleOf, type DisplayUnits } from '@/shared/display-units';
 import { axesSentence } from './axes';
 import { KINDS } from './vehicle-words';
 
+export interface VehicleCardProps {
+  vehicle: Vehicle;
+  /** Parameters of the list's address that its link carries on. */
+  query?: Readonly<Record<string, string>>;
+  current?: boolean;
+}
+
 /** One vehicle in the list. */
-export function VehicleCard({ vehicle, current }: { vehicle: Vehicle; current?: boolean }) {
+export function VehicleCard({ vehicle, query, current }: VehicleCardProps) {
   const units = useDisplayUnits();
   const count = `${vehicle.recordingCount} ${vehicle.recordingCount === 1 ? 'recording' : 'recordings'}`;
   return (
     <CardLink
-      href={vehiclePath(vehicle.id)}
+      href={vehiclePath(vehicle.id, query)}
       label={`${vehicle.name}, ${KINDS[vehicle.kind]}, ${count}`}
       current={current}
     >

@@ -1,5 +1,8 @@
 import { router } from 'expo-router';
 import { View } from 'react-native';
+import { ListFilter } from '@/components/lists/ListFilter';
+import { NoMatch } from '@/components/lists/NoMatch';
+import { useAddressFilter } from '@/components/lists/use-address-filter';
 import { Button } from '@/components/ui/Button';
 import { EmptyState } from '@/components/ui/EmptyState';
 import { ErrorState } from '@/components/ui/ErrorState';
@@ -8,12 +11,18 @@ import { space } from '@/constants/theme';
 import { useCan } from '@/hooks/session';
 import { useVehicles } from '@/hooks/vehicles';
 import { VehicleCard } from './VehicleCard';
+import { VEHICLE_CHOICES, VEHICLE_KEYS, vehicleQuery } from './vehicle-filter';
+
+/** So few are seen at a glance. */
+const MANY = 6;
 
 /** All vehicles; `currentId` is the one that is open beside the list. */
 export function VehicleList({ currentId }: { currentId?: string }) {
-  const vehicles = useVehicles();
+  const filter = useAddressFilter(VEHICLE_KEYS);
+  const vehicles = useVehicles(vehicleQuery(filter.values));
   const mayWrite = useCan('vehicle:write');
-  if (vehicles.isPending) return <SkeletonList label="vehicles" rows={2} />;
+  const narrowed = filter.count > 0;
+  if (vehicles.isPending && !narrowed) return <SkeletonList label="vehicles" rows={2} />;
   if (vehicles.isError)
     return (
       <ErrorState
@@ -22,7 +31,8 @@ export function VehicleList({ currentId }: { currentId?: string }) {
         onRetry={() => void vehicles.refetch()}
       />
     );
-  if (vehicles.data.length === 0)
+  const found = vehicles.data ?? [];
+  if (found.length === 0 && !narrowed)
     return (
       <EmptyState
         icon="vehicle"
@@ -46,8 +56,24 @@ export function VehicleList({ currentId }: { currentId?: string }) {
     );
   return (
     <View style={{ gap: space.m }}>
-      {vehicles.data.map((vehicle) => (
-        <VehicleCard key={vehicle.id} vehicle={vehicle} current={vehicle.id === currentId} />
+      {narrowed || found.length >= MANY ? (
+        <ListFilter
+          label="Search vehicles"
+          placeholder="Search name"
+          searchKey="q"
+          choices={VEHICLE_CHOICES}
+          filter={filter}
+        />
+      ) : null}
+      {vehicles.isPending ? <SkeletonList label="vehicles" rows={2} /> : null}
+      {vehicles.isSuccess && found.length === 0 ? <NoMatch what="vehicles" onClear={filter.clear} /> : null}
+      {found.map((vehicle) => (
+        <VehicleCard
+          key={vehicle.id}
+          vehicle={vehicle}
+          query={filter.values}
+          current={vehicle.id === currentId}
+        />
       ))}
     </View>
   );
