@@ -252,7 +252,9 @@ function coastingNotes(
       number: true,
       tone: 'ink',
     });
-    notes.push({ timeS, value: bound.at(row), text: '95 % predicted', tone: 'vermilion' });
+    // Said once: of many windows the words would cover the curves.
+    if (notes.length === 1)
+      notes.push({ timeS, value: bound.at(row), text: '95 % predicted', tone: 'vermilion' });
   }
   return notes;
 }

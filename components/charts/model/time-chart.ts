@@ -206,7 +206,8 @@ function placeAnnotations(content: ChartContent, view: Extent, x: Scale, y: Scal
     const clash = () =>
       placed.find((other) => Math.abs(other.y - height) < 15 && Math.abs(other.x - at) < width + 40);
     for (let tries = 0; tries < 4 && clash(); tries++) height = clash()!.y + 15;
-    if (height > box.bottom - 2) continue;
+    // Where many windows crowd the chart, a figure without room of its own stays in the table.
+    if (height > box.bottom - 2 || clash()) continue;
     placed.push({ x: px(anchor === 'end' ? at - 6 : at + 6), y: px(height), anchor, text, number, tone });
   }
   return placed;
