@@ -46,8 +46,20 @@ describe('mouse', () => {
     const { group, stage: at } = stage();
     at.pointer('pointerdown', 150, 20, { shiftKey: true });
     at.pointer('pointermove', 350, 20, { shiftKey: true });
+    expect(group.brush.current).toEqual([200, 600]);
+    expect(group.viewport.zoomed).toBe(false);
     at.pointer('pointerup', 350);
     expect(group.viewport.current).toEqual([200, 600]);
+    expect(group.brush.current).toBeNull();
+  });
+
+  it('a brush that is broken off zooms nothing', () => {
+    const { group, stage: at } = stage();
+    at.pointer('pointerdown', 150, 20, { shiftKey: true });
+    at.pointer('pointermove', 350, 20, { shiftKey: true });
+    at.pointer('pointercancel', 350);
+    expect(group.viewport.zoomed).toBe(false);
+    expect(group.brush.current).toBeNull();
   });
 
   it('a double click shows all again', () => {
