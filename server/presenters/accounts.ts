@@ -42,6 +42,7 @@ export const presentSinkMessage = ({ id, recipient, subject, text, createdAt }: 
 export const presentAuditEntry = ({
   id,
   createdAt,
+  actorId,
   actorName,
   action,
   subject,
@@ -52,6 +53,7 @@ export const presentAuditEntry = ({
   id,
   at: createdAt.toISOString(),
   actor: actorName,
+  actorId,
   action,
   subject,
   subjectId: subjectId ?? null,

@@ -51,6 +51,7 @@ export const ACCESS_TABLE: Readonly<Record<string, AccessRow>> = {
   'post /invitations/:token/accept': ANYBODY,
   'get /mail': MANAGE,
   'get /audit': MANAGE,
+  'get /audit.csv': MANAGE,
   'get /tokens': MANAGE,
   'post /tokens': MANAGE,
   'delete /tokens/:id': MANAGE,

@@ -1,6 +1,7 @@
 /** Every route of the API, version 1. */
 import { accountRoutes } from './accounts';
 import { mapTemplateRoutes } from './map-templates';
+import { auditRoutes } from './audit';
 import { exportRoutes } from './exports';
 import { parameterSetRoutes } from './parameter-sets';
 import { recordingFileRoutes } from './recording-files';
@@ -20,6 +21,7 @@ export const ROUTES: readonly Route[] = [
   ...accountRoutes,
   ...teamRoutes,
   ...tokenRoutes,
+  ...auditRoutes,
   ...vehicleRoutes,
   ...mapTemplateRoutes,
   ...recordingRoutes,

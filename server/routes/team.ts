@@ -1,7 +1,6 @@
-/** Members, invitations, the mail sink and the audit trail. */
+/** Members, invitations and the mail sink. */
 import { z } from 'zod';
 import {
-  auditEntrySchema,
   invitationAcceptSchema,
   invitationCreateSchema,
   invitationPreviewSchema,
@@ -14,14 +13,8 @@ import {
 import { idSchema, pageOf, pageQuerySchema } from '@/shared/contracts/common';
 import type { Context } from '../context';
 import { limitAttempts } from '../middleware/rate-limit';
-import {
-  presentAuditEntry,
-  presentInvitation,
-  presentMember,
-  presentSinkMessage,
-} from '../presenters/accounts';
+import { presentInvitation, presentMember, presentSinkMessage } from '../presenters/accounts';
 import { presentPage, presentWhole } from '../presenters/page';
-import { listAudit } from '../services/audit';
 import {
   acceptInvitation,
   invite,
@@ -166,21 +159,5 @@ export const teamRoutes: Route[] = [
     failures: { 404: 'A mail server is configured: there is no sink' },
     handle: async ({ ctx, actor, query }) =>
       presentPage(await listSinkMail(ctx, actor, query), presentSinkMessage),
-  }),
-  workspaceRoute({
-    method: 'get',
-    path: '/audit',
-    tag,
-    summary: 'Who changed what, when',
-    permission: 'audit:read',
-    query: pageQuerySchema,
-    success: {
-      status: 200,
-      description: 'Newest first',
-      schema: pageOf(auditEntrySchema),
-      name: 'AuditPage',
-    },
-    handle: async ({ ctx, actor, query }) =>
-      presentPage(await listAudit(ctx, actor, query), presentAuditEntry),
   }),
 ];

@@ -1,6 +1,6 @@
 /** The audit trail: written in the transaction of the change itself, read by admins, changed by nobody. */
 import { Op, type Transaction, type WhereOptions } from 'sequelize';
-import type { PageQuery } from '@/shared/contracts/common';
+import type { AuditFilter, AuditQuery } from '@/shared/contracts/accounts';
 import type { Actor, Context } from '../context';
 import type { AuditEntry } from '../models/messages';
 import { type Found, newestFirst } from './paging';
@@ -46,15 +46,43 @@ export const recordBy = (
   return record(ctx, { workspaceId, by, ...what, detail }, transaction);
 };
 
-export function listAudit(ctx: Context, actor: Actor, query: PageQuery): Promise<Found<AuditEntry>> {
-  const pattern = query.search ? `%${escapeLike(query.search)}%` : null;
-  const where: WhereOptions<AuditEntry> = pattern
-    ? {
-        workspaceId: actor.workspaceId,
-        [Op.or]: ['action', 'subject', 'actorName'].map((column) => ({ [column]: { [Op.iLike]: pattern } })),
-      }
-    : { workspaceId: actor.workspaceId };
-  return newestFirst(ctx.db.AuditEntry, query, where);
+export const listAudit = (ctx: Context, actor: Actor, query: AuditQuery): Promise<Found<AuditEntry>> =>
+  newestFirst(ctx.db.AuditEntry, query, narrowed(actor, query));
+
+/** All that the filter lets through, newest first, page by page: the trail may be longer than memory. */
+export async function* allAudit(ctx: Context, actor: Actor, filter: AuditFilter): AsyncGenerator<AuditEntry> {
+  const where = narrowed(actor, filter);
+  let cursor: string | undefined;
+  do {
+    const page = await newestFirst(ctx.db.AuditEntry, { limit: PAGE, cursor }, where);
+    yield* page.items;
+    cursor = page.nextCursor ?? undefined;
+  } while (cursor);
+}
+
+const PAGE = 200;
+
+function narrowed({ workspaceId }: Actor, filter: AuditFilter): WhereOptions<AuditEntry> {
+  const { action, actorId, subjectId, from, to, search } = filter;
+  const pattern = search ? `%${escapeLike(search)}%` : null;
+  const conditions: WhereOptions<AuditEntry>[] = [
+    { workspaceId },
+    ...(action ? [{ action: action.endsWith('.') ? { [Op.like]: `${escapeLike(action)}%` } : action }] : []),
+    ...(actorId ? [{ actorId }] : []),
+    ...(subjectId ? [{ subjectId }] : []),
+    ...(from ? [{ createdAt: { [Op.gte]: new Date(from) } }] : []),
+    ...(to ? [{ createdAt: { [Op.lt]: new Date(to) } }] : []),
+    ...(pattern
+      ? [
+          {
+            [Op.or]: ['action', 'subject', 'actorName'].map((column) => ({
+              [column]: { [Op.iLike]: pattern },
+            })),
+          },
+        ]
+      : []),
+  ];
+  return { [Op.and]: conditions };
 }
 
 /** `text` as it stands inside a LIKE pattern. */

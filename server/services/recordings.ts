@@ -162,7 +162,12 @@ export async function changeRecording(
     await recording.update(patch, { transaction });
     if (turned) await redecode(ctx, id, recording.givenMap, transaction);
     const detail = { before: { name, notes, vehicleId }, after: patch };
-    await recordBy(ctx, actor, { action: 'recording.changed', subject: recording.name, detail }, transaction);
+    await recordBy(
+      ctx,
+      actor,
+      { action: 'recording.changed', subject: recording.name, subjectId: id, detail },
+      transaction,
+    );
   });
   if (!turned) announce(ctx, recording);
   return getRecording(ctx, actor, id);
@@ -182,7 +187,7 @@ export async function mapRecording(
     await recordBy(
       ctx,
       actor,
-      { action: 'recording.mapped', subject: recording.name, detail: { map } },
+      { action: 'recording.mapped', subject: recording.name, subjectId: id, detail: { map } },
       transaction,
     );
   });
@@ -211,7 +216,12 @@ export async function deleteRecording(ctx: Context, actor: Actor, id: string): P
   await ctx.db.transaction(async (transaction) => {
     await refuseWhileRested(ctx, recording, transaction);
     await recording.update({ deletedAt: ctx.clock() }, { transaction });
-    await recordBy(ctx, actor, { action: 'recording.deleted', subject: recording.name }, transaction);
+    await recordBy(
+      ctx,
+      actor,
+      { action: 'recording.deleted', subject: recording.name, subjectId: id },
+      transaction,
+    );
   });
   const { workspaceId } = recording;
   ctx.live.recordingChanged({ workspaceId, recordingId: id, status: null, progress: 0 });
@@ -244,7 +254,7 @@ async function confirm(
     const recording = await ctx.db.Recording.findByPk(id, { transaction, rejectOnEmpty: true });
     await recording.update({ confirmedAt: ctx.clock(), instanceId: null }, { transaction });
     await sendDecode(ctx, recording, transaction);
-    await recordBy(ctx, actor, { action, subject: recording.name }, transaction);
+    await recordBy(ctx, actor, { action, subject: recording.name, subjectId: id }, transaction);
     transaction.afterCommit(() => announce(ctx, recording));
   });
 }

@@ -48,7 +48,12 @@ export async function createVehicle(
   const vehicle = await ctx.db
     .transaction(async (transaction) => {
       const made = await ctx.db.Vehicle.create({ ...input, workspaceId: actor.workspaceId }, { transaction });
-      const what = { action: 'vehicle.created', subject: made.name, detail: { ...input } };
+      const what = {
+        action: 'vehicle.created',
+        subject: made.name,
+        subjectId: made.id,
+        detail: { ...input },
+      };
       await recordBy(ctx, actor, what, transaction);
       return made;
     })
@@ -71,7 +76,8 @@ export async function changeVehicle(
       await vehicle.update(patch, { transaction });
       if (newAxes) await redecodeOf(ctx, vehicle.id, transaction);
       const detail = { before: pick(before, patch), after: patch };
-      await recordBy(ctx, actor, { action: 'vehicle.changed', subject: vehicle.name, detail }, transaction);
+      const what = { action: 'vehicle.changed', subject: vehicle.name, subjectId: id, detail };
+      await recordBy(ctx, actor, what, transaction);
     })
     .catch(nameTaken(patch.name ?? ''));
   return getVehicle(ctx, actor, id);
@@ -89,7 +95,8 @@ export async function deleteVehicle(ctx: Context, actor: Actor, id: string): Pro
       throw inUse(whatUsesIt(vehicle.name, recordings, sets, requirements));
     }
     await vehicle.destroy({ transaction });
-    await recordBy(ctx, actor, { action: 'vehicle.deleted', subject: vehicle.name }, transaction);
+    const what = { action: 'vehicle.deleted', subject: vehicle.name, subjectId: id };
+    await recordBy(ctx, actor, what, transaction);
   });
 }
 

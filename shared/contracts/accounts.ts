@@ -1,6 +1,6 @@
 /** Sign-in, the first admin, invitations, password reset, members. */
 import { z } from 'zod';
-import { idSchema, isoTimeSchema, nameSchema } from './common';
+import { idSchema, isoTimeSchema, nameSchema, pageQuerySchema } from './common';
 import { preferencesSchema } from './preferences';
 import { roleSchema } from './roles';
 
@@ -95,10 +95,29 @@ export const sinkMessageSchema = z.object({
 });
 export type SinkMessage = z.infer<typeof sinkMessageSchema>;
 
+/** What GET /audit and /audit.csv are narrowed by. */
+export const auditFilterSchema = z.object({
+  action: z
+    .string()
+    .max(60)
+    .regex(/^[a-z-]+\.([a-z-]+)?$/, 'An action like version.released, or all of a kind like version.')
+    .optional()
+    .describe('version.released; version. for all of its kind.'),
+  actorId: idSchema.optional().describe('The person.'),
+  subjectId: idSchema.optional().describe('What it was done to.'),
+  from: isoTimeSchema.optional().describe('Not before.'),
+  to: isoTimeSchema.optional().describe('Before.'),
+  search: z.string().trim().max(120).optional().describe('In action, subject or name.'),
+});
+export type AuditFilter = z.infer<typeof auditFilterSchema>;
+export const auditQuerySchema = pageQuerySchema.extend(auditFilterSchema.shape);
+export type AuditQuery = z.infer<typeof auditQuerySchema>;
+
 export const auditEntrySchema = z.object({
   id: idSchema,
   at: isoTimeSchema,
   actor: z.string(),
+  actorId: idSchema.nullable().describe('Null: a token, the server itself, or an account that is gone.'),
   action: z.string(),
   subject: z.string(),
   subjectId: idSchema.nullable().describe('Of what it was done to, where that has an id.'),

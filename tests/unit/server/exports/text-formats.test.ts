@@ -1,7 +1,8 @@
 import Papa from 'papaparse';
 import { parse } from 'yaml';
-import { asCsv, csvCell } from '@/server/exports/as-csv';
+import { asCsv } from '@/server/exports/as-csv';
 import { asYaml } from '@/server/exports/as-yaml';
+import { csvCell } from '@/server/exports/csv-cell';
 import { FORMATS } from '@/server/exports/formats';
 import { exportDocumentSchema } from '@/shared/contracts/exports';
 import { sha256OfJson } from '@/workers';
