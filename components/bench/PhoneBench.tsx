@@ -2,6 +2,7 @@ import { useEffect, useState } from 'react';
 import { ScrollView, StyleSheet, View } from 'react-native';
 import { TimeChart } from '@/components/charts/TimeChart';
 import { VisuallyHidden } from '@/components/charts/VisuallyHidden';
+import { FirstHint } from '@/components/layout/FirstHint';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
 import { around, StripEditor } from '@/components/strip/StripEditor';
 import { Button } from '@/components/ui/Button';
@@ -89,6 +90,7 @@ export function PhoneBench({
       </View>
       {open ? null : (
         <>
+          <FirstHint hint="bench" />
           <Headline bench={bench} columns={2} />
           <RunFigures bench={bench} />
           <Findings bench={bench} />

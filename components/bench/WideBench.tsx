@@ -1,4 +1,5 @@
 import { ScrollView, StyleSheet, View } from 'react-native';
+import { FirstHint } from '@/components/layout/FirstHint';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
 import { StripEditor } from '@/components/strip/StripEditor';
 import { Text } from '@/components/ui/Text';
@@ -32,6 +33,7 @@ export function WideBench({
   const figures = (
     <>
       <RunProblem bench={bench} />
+      <FirstHint hint="bench" />
       <Headline bench={bench} columns={extraWide ? 2 : 3} />
       <RunFigures bench={bench} />
       <Findings bench={bench} />

@@ -1,6 +1,7 @@
 import { useState } from 'react';
 import { StyleSheet, View } from 'react-native';
 import { ChartOrigin, originOf } from '@/components/charts/chart-origin';
+import { FirstHint } from '@/components/layout/FirstHint';
 import { recordingPath } from '@/components/layout/paths';
 import { Screen } from '@/components/layout/Screen';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
@@ -75,6 +76,7 @@ function Loaded({ recording }: { recording: Recording }) {
         ) : undefined
       }
     >
+      <FirstHint hint="noise" />
       <StretchCard
         recording={recording}
         found={longest.data?.stretchesS ?? []}

@@ -1,5 +1,6 @@
 import { router } from 'expo-router';
 import { View } from 'react-native';
+import { FirstHint } from '@/components/layout/FirstHint';
 import { ListFilter } from '@/components/lists/ListFilter';
 import { NoMatch } from '@/components/lists/NoMatch';
 import { useAddressFilter } from '@/components/lists/use-address-filter';
@@ -33,6 +34,7 @@ export function RecordingList({ currentId }: { currentId?: string }) {
   if (items.length === 0 && !narrowed && recordings.isSuccess) return <NoRecordings />;
   return (
     <View style={{ gap: space.m }}>
+      <FirstHint hint="recordings" />
       <ListFilter
         label="Search recordings"
         placeholder="Search name or vehicle"

@@ -1,5 +1,6 @@
 import { router } from 'expo-router';
 import { View } from 'react-native';
+import { FirstHint } from '@/components/layout/FirstHint';
 import { ListFilter } from '@/components/lists/ListFilter';
 import { NoMatch } from '@/components/lists/NoMatch';
 import { useAddressFilter } from '@/components/lists/use-address-filter';
@@ -34,6 +35,7 @@ export function SetList({ currentId }: { currentId?: string }) {
   if (items.length === 0 && !narrowed && sets.isSuccess) return <NoSets />;
   return (
     <View style={{ gap: space.m }}>
+      <FirstHint hint="sets" />
       <ListFilter
         label="Search parameter sets"
         placeholder="Search name or vehicle"
