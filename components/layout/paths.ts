@@ -15,10 +15,18 @@ export const setPath = (id: string, query?: Query): Href => ({
   pathname: '/sets/[id]',
   params: { ...query, id },
 });
+export const versionPath = (setId: string, number: number): Href =>
+  setPath(setId, { version: String(number) });
+export const verificationPath = (setId: string, number: number): Href => ({
+  pathname: '/sets/[id]/verification',
+  params: { id: setId, version: String(number) },
+});
 export const vehiclePath = (id: string, query?: Query): Href => ({
   pathname: '/vehicles/[id]',
   params: { ...query, id },
 });
+
+export const requirementPath = (id: string): Href => ({ pathname: '/requirements/[id]', params: { id } });
 
 /** The bench over a recording, optionally with a version's parameters. */
 export const benchPath = (recordingId: string, version?: { setId: string; number: number }): Href =>

@@ -22,6 +22,7 @@ export const MAIN_PLACES: readonly Place[] = [
 /** Under More on the phone, in the lower part of the rail when wide. */
 export const MORE_PLACES: readonly Place[] = [
   { name: 'vehicles', label: 'Vehicles', href: '/vehicles', icon: 'vehicle' },
+  { name: 'requirements', label: 'Requirements', href: '/requirements', icon: 'check' },
   { name: 'team', label: 'Team', href: '/team', icon: 'team', needs: 'team:manage' },
   { name: 'mail', label: 'Mail', href: '/mail', icon: 'mail', needs: 'mail:read' },
   { name: 'profile', label: 'Profile', href: '/profile', icon: 'person' },

@@ -1,8 +1,8 @@
 import { StyleSheet, View } from 'react-native';
 import { Card } from '@/components/ui/Card';
+import { FileLink } from '@/components/ui/FileLink';
 import { Text } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
-import { web } from '@/components/ui/web-props';
 import { hairline, space, touchTarget } from '@/constants/theme';
 import { decodedUrl, healthFileUrl } from '@/hooks/recording-files';
 import type { DecodedChannel } from '@/shared/contracts/recording-files';
@@ -57,21 +57,6 @@ function Row({ title, holds, first = false, children }: RowProps) {
   );
 }
 
-/** The browser fetches it by itself, and shows how far it is in its own way. */
-const FileLink = ({ href, label, of }: { href: string; label: string; of: string }) => (
-  <Text
-    variant="label"
-    strong
-    tone="petrol"
-    role="link"
-    aria-label={`${of} as ${label}`}
-    style={styles.link}
-    {...web({ href, hrefAttrs: { download: true } })}
-  >
-    {label}
-  </Text>
-);
-
 const styles = StyleSheet.create({
   row: {
     flexDirection: 'row',
@@ -81,5 +66,4 @@ const styles = StyleSheet.create({
     paddingVertical: space.xs,
   },
   words: { flex: 1, minWidth: 0 },
-  link: { paddingVertical: (touchTarget - 20) / 2 },
 });

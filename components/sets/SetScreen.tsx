@@ -68,7 +68,7 @@ function Loaded({ set }: { set: ParameterSetDetail }) {
           />
         </View>
         <View style={extraWide ? styles.main : styles.stack}>
-          <VersionCard set={set} version={open} />
+          <VersionCard key={open.id} set={set} version={open} />
         </View>
       </View>
     </Screen>

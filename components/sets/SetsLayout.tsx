@@ -1,3 +1,4 @@
+import { usePathname } from 'expo-router';
 import { useAddressFilter } from '@/components/lists/use-address-filter';
 import { MasterDetail } from '@/components/layout/MasterDetail';
 import { Screen } from '@/components/layout/Screen';
@@ -13,11 +14,12 @@ import { SetScreen } from './SetScreen';
 export function SetsLayout() {
   const opened = usePathId('sets');
   const first = useFirstSet();
+  const whole = usePathname().endsWith('/verification');
   return (
     <MasterDetail
       title="Parameter sets"
       list={<SetList currentId={opened ?? first} />}
-      showList={first !== undefined}
+      showList={!whole && first !== undefined}
     />
   );
 }

@@ -4,13 +4,20 @@ import { StyleSheet, View } from 'react-native';
 import { benchPath } from '@/components/layout/paths';
 import { RecordingPicker } from '@/components/recordings/RecordingPicker';
 import { Button } from '@/components/ui/Button';
+import { CommentsCard } from '@/components/review/CommentsCard';
+import { ExportCard } from '@/components/review/ExportCard';
+import { HistoryCard } from '@/components/review/HistoryCard';
+import { ReviewCard } from '@/components/review/ReviewCard';
 import { Card } from '@/components/ui/Card';
+import { Choice } from '@/components/ui/Choice';
 import { Figures } from '@/components/ui/Figures';
 import { formatMoment } from '@/components/ui/format-day';
 import { Text } from '@/components/ui/Text';
 import { space } from '@/constants/theme';
 import { useDisplayUnits } from '@/hooks/preferences';
 import { useRecording } from '@/hooks/recordings';
+import { exportUrl } from '@/hooks/versions';
+import { VerificationCard } from '@/components/verification/VerificationCard';
 import type { ParameterSetDetail, ParameterSetVersion } from '@/shared/contracts/parameter-sets';
 import { changeCount, parameterSections } from './parameter-rows';
 import { ParameterTable } from './ParameterTable';
@@ -21,9 +28,15 @@ export interface VersionCardProps {
   version: ParameterSetVersion;
 }
 
-/** One version: why, by whom, what it holds, and what it changed. */
+/** One version: why, by whom, where it stands, what it holds, what it changed, and what is said of it. */
 export function VersionCard({ set, version }: VersionCardProps) {
-  const parent = set.versions.find((other) => other.number === version.parentNumber) ?? null;
+  const others = set.versions.filter(({ number }) => number !== version.number);
+  const [against, setAgainst] = useState<number | null>(null);
+  const parent =
+    others.find(({ number }) => number === against) ??
+    others.find(({ number }) => number === version.parentNumber) ??
+    null;
+  const of = { setId: set.id, number: version.number };
   const sections = parameterSections(version.parameters, parent?.parameters ?? null, useDisplayUnits());
   const { word, tone } = VERSION_STATES[version.state];
   return (
@@ -41,9 +54,29 @@ export function VersionCard({ set, version }: VersionCardProps) {
         <Text>{version.note}</Text>
         <Tuned version={version} setId={set.id} />
       </Card>
+      <ReviewCard set={set} version={version} />
+      <VerificationCard of={of} />
       <Card title="Parameters" action={<Summary parent={parent} changes={changeCount(sections)} />}>
+        {others.length > 1 ? (
+          <Choice
+            label="Compared with"
+            shape="select"
+            placeholder="Choose a version"
+            value={parent ? String(parent.number) : ''}
+            options={others.map(({ number }) => ({ value: String(number), label: `version ${number}` }))}
+            onChange={(number) => setAgainst(Number(number))}
+          />
+        ) : null}
         <ParameterTable sections={sections} parentName={parent ? `version ${parent.number}` : null} />
       </Card>
+      <CommentsCard of={of} />
+      <ExportCard
+        title="Export"
+        name={`${set.name} v${version.number}`}
+        urlOf={(format) => exportUrl(of, format)}
+        unreleased={version.state !== 'released'}
+      />
+      <HistoryCard of={of} />
     </>
   );
 }

@@ -11,6 +11,7 @@ import { can } from '@/shared/contracts/roles';
 
 const LINES: Record<string, string> = {
   vehicles: 'IMU mounting and antenna lever arms',
+  requirements: 'Limits that a set must keep before it is released',
   team: 'Members, roles, invitations',
   mail: 'Letters of this installation',
   profile: 'Theme, workspace, sign out',

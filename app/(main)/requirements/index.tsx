@@ -1,0 +1,1 @@
+export { RequirementsScreen as default } from '@/components/requirements/RequirementsScreen';

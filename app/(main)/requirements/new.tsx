@@ -1,0 +1,1 @@
+export { NewRequirementScreen as default } from '@/components/requirements/EditRequirementScreen';
