@@ -2,9 +2,10 @@
  * What a quiet chart consists of: two axes, linear or logarithmic, and marks in the axes' units. The page draws it with
  * Victory (quiet/QuietPlot.tsx), a saved picture through figure/plot-figure.ts. Pure.
  */
-import { scaleLinear } from 'd3-scale';
+import { formatNumber } from '@/shared/format';
 import type { Tone } from '../figure/shapes';
 import type { Extent } from './scale';
+import { valueTicks } from './ticks';
 
 export interface PlotAxis {
   title: string;
@@ -43,12 +44,11 @@ export interface PlotModel {
 
 /** An axis with about `count` round ticks. */
 export function linearAxis(title: string, domain: Extent, count: number): PlotAxis {
-  const scale = scaleLinear().domain([domain[0], domain[1]]);
-  const format = scale.tickFormat(count);
+  const ticks = valueTicks(domain[0], domain[1], count);
   return {
     title,
     domain,
-    ticks: scale.ticks(count),
-    written: (value) => format(value).replace('-', '−'),
+    ticks: ticks.map(({ value }) => value),
+    written: (value) => ticks.find((tick) => tick.value === value)?.label ?? formatNumber(value, 3),
   };
 }

@@ -1,5 +1,4 @@
-/** Linear maps between values and pixels. */
-import { scaleLinear, scaleLog, type ScaleContinuousNumeric } from 'd3-scale';
+/** Maps between values and pixels. */
 
 export type Extent = readonly [number, number];
 
@@ -24,18 +23,12 @@ export function linearScale(domain: Extent, range: Extent): Scale {
   });
 }
 
-/** Logarithmic map; both ends of `domain` are above zero. */
+/** Logarithmic map; both ends of `domain` are above zero. What is not above zero has no place: −∞ or NaN. */
 export function logScale(domain: Extent, range: Extent): Scale {
-  const inner: ScaleContinuousNumeric<number, number> = scaleLog().domain(domain).range(range);
-  return Object.assign((value: number) => inner(value), {
+  const inner = linearScale([Math.log(domain[0]), Math.log(domain[1])], range);
+  return Object.assign((value: number) => inner(Math.log(value)), {
     domain,
     range,
-    invert: (pixel: number) => inner.invert(pixel),
+    invert: (pixel: number) => Math.exp(inner.invert(pixel)),
   });
-}
-
-/** `extent` widened to round values. */
-export function niceExtent(extent: Extent, count = 4): Extent {
-  const [low, high] = scaleLinear().domain(extent).nice(count).domain();
-  return [low!, high!];
 }

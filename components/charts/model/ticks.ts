@@ -1,6 +1,6 @@
 /** Where axes are ruled and what is written there. */
-import { scaleLinear } from 'd3-scale';
 import { formatClock, formatNumber } from '@/shared/format';
+import { decimalsOf, niceTicks } from './nice';
 
 export interface Tick {
   value: number;
@@ -39,9 +39,9 @@ export function formatAxisTime(seconds: number, stepS: number): string {
 /** Ticks of a linear value axis: round values, about `count` of them, labels with one common number of decimals. */
 export function valueTicks(low: number, high: number, count: number): Tick[] {
   if (!(high > low)) return [];
-  const values = scaleLinear().domain([low, high]).ticks(count);
+  const values = niceTicks(low, high, count);
   const step = values.length > 1 ? values[1]! - values[0]! : high - low;
-  const decimals = Math.max(0, Math.min(9, -Math.floor(Math.log10(step) + 1e-9)));
+  const decimals = decimalsOf(step);
   return values.map((value) => ({ value, label: fixed(value, decimals) }));
 }
 

@@ -3,7 +3,8 @@ import { decimate, polylineBuffer, type Polyline } from './decimate';
 import { hatchPath, px } from './hatch';
 import type { ChartContent, ChartTone, Layer, MarksLayer, TimeWindow } from './layers';
 import { areaPath, bandPath, diamondsPath, dotsPath, linePath, rulePath } from './paths';
-import { linearScale, niceExtent, type Extent, type Scale } from './scale';
+import { niceExtent } from './nice';
+import { linearScale, type Extent, type Scale } from './scale';
 import { lowerBound, type TimeSeries } from './series';
 import { timeTicks, valueTicks } from './ticks';
 

@@ -1,6 +1,6 @@
 /** Stems of an autocorrelation chart: side by side at each lag, one path an axis. Pure. */
-import { scaleLinear } from 'd3-scale';
 import { px } from '../model/hatch';
+import { niceTicks } from '../model/nice';
 import { linearScale } from '../model/scale';
 
 export interface Stems {
@@ -47,5 +47,5 @@ export function correlationStems(
       })
       .join(''),
   }));
-  return { low, high, ticks: scaleLinear().domain([low, high]).ticks(4), stems };
+  return { low, high, ticks: niceTicks(low, high, 4), stems };
 }
