@@ -8,7 +8,7 @@ import {
   type InfiniteData,
   type QueryClient,
 } from '@tanstack/react-query';
-import { useState } from 'react';
+import { useEffect, useState } from 'react';
 import type { Page } from '@/shared/contracts/common';
 import type {
   ChannelMap,
@@ -31,6 +31,10 @@ export type RecordingFilter = Partial<
   Pick<RecordingListQuery, 'search' | 'vehicleId' | 'status' | 'since' | 'sort'>
 >;
 
+/** What somebody may have to do something about, or wait for. */
+export const NOT_READY: RecordingFilter = { status: ['uploaded', 'decoding', 'needs-mapping', 'rejected'] };
+export const READY: RecordingFilter = { status: ['ready'] };
+
 export const recordingKeys = {
   all: ['recordings'] as const,
   list: (filter: RecordingFilter) => ['recordings', 'list', filter] as const,
@@ -51,12 +55,23 @@ export function useRecordings(filter: RecordingFilter = {}) {
   return useInfiniteQuery({
     queryKey: recordingKeys.list(filter),
     queryFn: ({ pageParam, signal }) =>
-      api<Page<Recording>>('/recordings', { query: { ...filter, cursor: pageParam, limit: 30 }, signal }),
+      api<Page<Recording>>('/recordings', {
+        query: { ...filter, status: filter.status?.join(','), cursor: pageParam, limit: 30 },
+        signal,
+      }),
     initialPageParam: '',
     getNextPageParam: (page) => page.nextCursor ?? undefined,
     staleTime: STALE.list,
     refetchInterval: (query) => (itemsOf(query.state.data).some(isUnderWay) ? WATCH_MS : false),
   });
+}
+
+/** Looks again for decoded recordings whenever another number is under way: one of them may have become ready. */
+export function useFreshReady(underWay: number): void {
+  const client = useQueryClient();
+  useEffect(() => {
+    void client.invalidateQueries({ queryKey: recordingKeys.list(READY) });
+  }, [client, underWay]);
 }
 
 /** All items of the pages that were fetched so far. */

@@ -29,12 +29,13 @@ export function recordingQuery(
   values: Partial<Record<RecordingKey, string>>,
   now = new Date(),
 ): RecordingFilter {
+  const status = recordingStatusSchema.safeParse(values.status);
   const span = SPANS[values.since ?? ''];
   const midnight = new Date(now.getFullYear(), now.getMonth(), now.getDate()).getTime();
   return {
     search: values.q?.slice(0, 120),
     vehicleId: idSchema.safeParse(values.vehicle).data,
-    status: recordingStatusSchema.safeParse(values.status).data,
+    status: status.success ? [status.data] : undefined,
     since: span ? new Date(midnight - span.days * DAY_MS).toISOString() : undefined,
     sort: listSortSchema.safeParse(values.sort).data,
   };

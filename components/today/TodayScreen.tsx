@@ -11,24 +11,25 @@ import { Text } from '@/components/ui/Text';
 import { TextLink } from '@/components/ui/TextLink';
 import { space } from '@/constants/theme';
 import { useParameterSets } from '@/hooks/parameter-sets';
-import { itemsOf, useRecordings } from '@/hooks/recordings';
+import { itemsOf, READY, useRecordings } from '@/hooks/recordings';
 import { useCan, useSession } from '@/hooks/session';
 import { FirstSteps } from './FirstSteps';
-import { waitingFor } from './waiting';
+import { LastBench } from './LastBench';
+import { useWaiting } from './use-waiting';
 import { WaitingList } from './WaitingList';
 
 const SHOWN = 4;
 
-/** What waits for me, what came last, what is being drafted. */
+/** What waits for me, the last bench, what came last, what is being drafted. */
 export function TodayScreen() {
   const session = useSession();
-  const recordings = useRecordings();
-  const sets = useParameterSets();
+  const recordings = useRecordings(READY);
+  const sets = useParameterSets({ state: 'draft' });
+  const { waiting, pending, error, retry } = useWaiting();
   const mayUpload = useCan('recording:write');
-  const all = itemsOf(recordings.data);
-  const latest = all.filter((recording) => recording.status === 'ready');
+  const latest = itemsOf(recordings.data);
   const drafts = itemsOf(sets.data).filter((set) => set.latest.state === 'draft');
-  const empty = recordings.isSuccess && all.length === 0;
+  const empty = recordings.isSuccess && !pending && !error && latest.length + waiting.length === 0;
   return (
     <Screen
       title="Today"
@@ -53,7 +54,11 @@ export function TodayScreen() {
         />
       ) : null}
       {empty ? <FirstSteps mayUpload={mayUpload} /> : null}
-      {all.length > 0 ? <WaitingList waiting={waitingFor(all, mayUpload)} mayWrite={mayUpload} /> : null}
+      {error ? <ErrorState title="Not all that waits could be loaded" error={error} onRetry={retry} /> : null}
+      {empty || pending || (error && waiting.length === 0) ? null : (
+        <WaitingList waiting={waiting} mayWrite={mayUpload} />
+      )}
+      <LastBench />
       {latest.length > 0 ? (
         <Section title="Latest recordings" link={<TextLink href="/recordings" label="All recordings" />}>
           {latest.slice(0, SHOWN).map((recording) => (

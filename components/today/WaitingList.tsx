@@ -1,7 +1,5 @@
 import { Link } from 'expo-router';
 import { Pressable, StyleSheet, View } from 'react-native';
-import { mappingPath, recordingPath } from '@/components/layout/paths';
-import { statusWord } from '@/components/recordings/status';
 import { Icon } from '@/components/ui/Icon';
 import { Progress } from '@/components/ui/Progress';
 import { Text } from '@/components/ui/Text';
@@ -17,12 +15,14 @@ export function WaitingList({ waiting, mayWrite }: { waiting: readonly Waiting[]
       <Text variant="heading">Waiting</Text>
       {waiting.length === 0 ? (
         <Text tone="soft">
-          {mayWrite ? 'Nothing waits: every recording is decoded.' : 'Nothing is being decoded just now.'}
+          {mayWrite
+            ? 'Nothing waits: every recording is decoded, no version is in review, no run has failed lately.'
+            : 'Nothing is being decoded just now.'}
         </Text>
       ) : (
         <View style={[styles.list, { backgroundColor: palette.sheet, borderColor: palette.rule }]}>
           {waiting.map((item, at) => (
-            <Row key={item.recording.id} item={item} first={at === 0} />
+            <Row key={item.key} item={item} first={at === 0} />
           ))}
         </View>
       )}
@@ -32,11 +32,10 @@ export function WaitingList({ waiting, mayWrite }: { waiting: readonly Waiting[]
 
 function Row({ item, first }: { item: Waiting; first: boolean }) {
   const { palette } = useTheme();
-  const { recording, sentence, tone, progress, toMapping } = item;
-  const { word } = statusWord(recording);
+  const { name, word, sentence, tone, progress, href } = item;
   return (
-    <Link href={toMapping ? mappingPath(recording.id) : recordingPath(recording.id)} asChild>
-      <Pressable aria-label={`${recording.name}, ${word}: ${sentence}`}>
+    <Link href={href} asChild>
+      <Pressable aria-label={`${name}, ${word}: ${sentence}`}>
         <View
           style={[
             styles.row,
@@ -47,7 +46,7 @@ function Row({ item, first }: { item: Waiting; first: boolean }) {
           <View style={styles.words}>
             <View style={styles.head}>
               <Text strong style={styles.name}>
-                {recording.name}
+                {name}
               </Text>
               <Text variant="label" strong tone={tone}>
                 {word}
@@ -58,7 +57,7 @@ function Row({ item, first }: { item: Waiting; first: boolean }) {
                 {sentence}
               </Text>
             ) : (
-              <Progress label={`${sentence}: ${recording.name}`} value={progress} labelHidden />
+              <Progress label={`${sentence}: ${name}`} value={progress} labelHidden />
             )}
           </View>
           <Icon name="forward" tone="soft" size={20} />

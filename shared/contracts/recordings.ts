@@ -373,7 +373,12 @@ export type Recording = z.infer<typeof recordingSchema>;
 export const recordingListQuerySchema = pageQuerySchema.extend({
   sort: listSortSchema.default('-createdAt'),
   since: isoTimeSchema.optional().describe('Only those that arrived then or later.'),
-  status: recordingStatusSchema.optional(),
+  status: z
+    .string()
+    .transform((text) => text.split(','))
+    .pipe(z.array(recordingStatusSchema))
+    .optional()
+    .describe('One or several with commas between them.'),
   vehicleId: idSchema.optional(),
 });
 export type RecordingListQuery = z.infer<typeof recordingListQuerySchema>;

@@ -80,6 +80,8 @@ describe('recordings', () => {
     expect(names(await list('search=loop&sort=-name'))).toEqual(['Loop c', 'Loop b', 'Loop a']);
     expect(names(await list(`vehicleId=${vehicle.id}`))).toEqual(['Loop c']);
     expect(names(await list('search=BARGE'))).toEqual(['Loop c']);
+    expect(names(await list('status=uploaded,decoding,ready,needs-mapping,rejected'))).toHaveLength(4);
+    expect((await engineer.get('/recordings?status=ready,lost')).status).toBe(422);
     const { items } = (await list('sort=createdAt')) as { items: Recording[] };
     expect(names(await list(`since=${encodeURIComponent(items[2]!.createdAt)}`))).toEqual(['Loop c', 'Quay']);
     expect((await engineer.get('/recordings?since=yesterday')).status).toBe(422);

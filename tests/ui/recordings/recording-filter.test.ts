@@ -6,7 +6,7 @@ const VEHICLE = '4f0c8a52-0f4e-4a1c-9a55-3d1f0f3b7e30';
 test('an address becomes the query of the API', () => {
   const values = { q: 'loop', vehicle: VEHICLE, status: 'ready', sort: '-name' };
   expect(recordingQuery(values)).toEqual({
-    search: 'loop', vehicleId: VEHICLE, status: 'ready', since: undefined, sort: '-name',
+    search: 'loop', vehicleId: VEHICLE, status: ['ready'], since: undefined, sort: '-name',
   }); // prettier-ignore
   expect(setQuery({ state: 'released' })).toMatchObject({ state: 'released', sort: undefined });
 });
