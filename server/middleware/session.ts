@@ -11,12 +11,20 @@ declare module 'express-session' {
     userId: string;
     /** When the cookie was last given its full life, ms since 1970. */
     renewedAt: number;
+    /** When it began, and when it was last used (to ten minutes), ms since 1970. Left out by sessions of older versions. */
+    startedAt?: number;
+    seenAt?: number;
+    /** Where from, and with which browser, when it began. */
+    address?: string | null;
+    userAgent?: string;
   }
 }
 
 export const SESSION_COOKIE = 'driftwright.sid';
 const LIFE_MS = 7 * 24 * 3_600_000;
 const RENEW_AFTER_MS = 24 * 3_600_000;
+const SEEN_EVERY_MS = 10 * 60_000;
+const LONGEST_USER_AGENT = 300;
 
 export interface Sessions {
   middleware: RequestHandler;
@@ -81,14 +89,17 @@ export function openSessions(config: Config, log: Logger): Sessions {
 export async function beginSession(req: Request, userId: string, now: Date): Promise<void> {
   await settle((done) => req.session.regenerate(done));
   req.session.userId = userId;
-  req.session.renewedAt = now.getTime();
+  const at = now.getTime();
+  Object.assign(req.session, { renewedAt: at, startedAt: at, seenAt: at, address: req.ip ?? null });
+  req.session.userAgent = (req.get('User-Agent') ?? '').slice(0, LONGEST_USER_AGENT);
   await settle((done) => req.session.save(done));
 }
 
 export const endSession = (req: Request): Promise<void> => settle((done) => req.session.destroy(done));
 
-/** Gives a session in use its full life again, once a day. */
+/** Gives a session in use its full life again, once a day, and notes now and then that it is used. */
 export function renewSession(req: Request, now: Date): void {
+  if (now.getTime() - (req.session.seenAt ?? 0) >= SEEN_EVERY_MS) req.session.seenAt = now.getTime();
   const age = now.getTime() - (req.session.renewedAt ?? 0);
   if (age < RENEW_AFTER_MS) return;
   req.session.renewedAt = now.getTime();

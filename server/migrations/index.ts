@@ -9,6 +9,7 @@ import { addSmoothingAndBudget } from './2026-12-01-add-smoothing-and-budget';
 import { allowSecondImuFile } from './2026-12-01-allow-second-imu-file';
 import { createVerification } from './2026-12-01-create-verification';
 import { createApiTokens } from './2026-12-01-create-api-tokens';
+import { createDiscards } from './2026-12-01-create-discards';
 import { createRequirements } from './2026-12-01-create-requirements';
 import { createMapTemplates } from './2026-12-01-create-map-templates';
 import { reviewVersions } from './2026-12-01-review-versions';
@@ -30,6 +31,7 @@ export const MIGRATIONS: readonly Migration[] = [
   createRequirements,
   createVerification,
   createApiTokens,
+  createDiscards,
 ];
 
 /** Brings the database at `url` up to date; answers the names that were applied. */

@@ -4,6 +4,7 @@ import type { Logger } from 'pino';
 import { bindAccounts } from './accounts';
 import { bindMapTemplate } from './map-template';
 import { bindApiToken } from './api-token';
+import { bindDiscard } from './discard';
 import { bindMessages } from './messages';
 import { bindParameterSet, bindSetVersion } from './parameter-set';
 import { bindRecording, bindRecordingFile } from './recording';
@@ -47,6 +48,7 @@ function bindModels(sequelize: Sequelize) {
     ParameterSet: bindParameterSet(sequelize),
     SetVersion: bindSetVersion(sequelize),
     Requirement: bindRequirement(sequelize),
+    Discard: bindDiscard(sequelize),
     ApiToken: bindApiToken(sequelize),
     VerificationRun: bindVerificationRun(sequelize),
     VerificationCell: bindVerificationCell(sequelize),

@@ -22,7 +22,7 @@ const FETCH_RELEASED: AccessRow = {
   people: MEMBERS,
   scopes: ['released-set:read', 'export:read', 'workspace:read'],
 };
-const COMMENT: AccessRow = { people: MEMBERS, scopes: [] };
+const MEMBER: AccessRow = { people: MEMBERS, scopes: [] };
 const UPLOAD: AccessRow = { people: TUNERS, scopes: ['recording:write'] };
 const RUN: AccessRow = { people: TUNERS, scopes: ['run:create'] };
 const TUNE: AccessRow = { people: TUNERS, scopes: [] };
@@ -41,7 +41,12 @@ export const ACCESS_TABLE: Readonly<Record<string, AccessRow>> = {
   'patch /me/preferences': PERSON,
   'post /password-resets': ANYBODY,
   'post /password-resets/complete': ANYBODY,
+  'get /sessions': PERSON,
+  'delete /sessions': PERSON,
+  'delete /sessions/:id': PERSON,
   'get /members': READ,
+  'post /workspace/leave': MEMBER,
+  'post /workspace/delete': MANAGE,
   'patch /members/:userId': MANAGE,
   'delete /members/:userId': MANAGE,
   'get /invitations': MANAGE,
@@ -105,7 +110,7 @@ export const ACCESS_TABLE: Readonly<Record<string, AccessRow>> = {
   'get /parameter-sets/:id/versions/:n/differences': READ,
   'get /parameter-sets/:id/versions/:n/history': READ,
   'get /parameter-sets/:id/versions/:n/comments': READ,
-  'post /parameter-sets/:id/versions/:n/comments': COMMENT,
+  'post /parameter-sets/:id/versions/:n/comments': MEMBER,
   'get /requirements': READ,
   'post /requirements': TUNE,
   'get /requirements/:id': READ,

@@ -9,17 +9,21 @@ import { recordingRoutes } from './recordings';
 import { requirementRoutes } from './requirements';
 import type { Route } from './route';
 import { runRoutes } from './runs';
+import { sessionRoutes } from './sessions';
 import { statusRoutes } from './status';
 import { teamRoutes } from './team';
 import { tokenRoutes } from './tokens';
 import { vehicleRoutes } from './vehicles';
 import { verificationRoutes } from './verification';
 import { versionRoutes } from './versions';
+import { workspaceRoutes } from './workspace';
 
 export const ROUTES: readonly Route[] = [
   ...statusRoutes,
   ...accountRoutes,
+  ...sessionRoutes,
   ...teamRoutes,
+  ...workspaceRoutes,
   ...tokenRoutes,
   ...auditRoutes,
   ...vehicleRoutes,

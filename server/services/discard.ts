@@ -12,3 +12,11 @@ export async function discardFiles(ctx: JobContext, prefix: string): Promise<voi
   }, SETTLE_MS);
   again.unref();
 }
+
+/** Removes what rows that are gone have left in the store. May be repeated: a kill in between leaves the rest for later. */
+export async function finishDiscards(ctx: JobContext): Promise<void> {
+  for (const row of await ctx.db.Discard.findAll()) {
+    await discardFiles(ctx, row.prefix);
+    await row.destroy();
+  }
+}

@@ -50,6 +50,20 @@ export async function removeMember(ctx: Context, actor: Actor, userId: string): 
   ctx.live.leaveWorkspace(userId, actor.workspaceId);
 }
 
+/** The actor's own way out; what they made stays, but their tokens. Throws 409 for the last admin. */
+export async function leaveWorkspace(ctx: Context, actor: Actor): Promise<void> {
+  const { userId } = actor;
+  await ctx.db.transaction(async (transaction) => {
+    const member = await lockMember(ctx, actor, userId, transaction);
+    if (member.role === 'admin') await keepAnAdmin(ctx, actor, userId, transaction);
+    await member.destroy({ transaction });
+    await revokeTokensOf(ctx, actor, userId, transaction);
+    const what = { action: 'member.left', subject: actor.email, subjectId: userId };
+    await recordBy(ctx, actor, { ...what, detail: { role: member.role } }, transaction);
+  });
+  ctx.live.leaveWorkspace(userId, actor.workspaceId);
+}
+
 /** All members are locked, so that two admins who demote each other at once cannot both succeed. */
 async function lockMember(ctx: Context, actor: Actor, userId: string, transaction: Transaction) {
   const { workspaceId } = actor;

@@ -5,7 +5,7 @@ import { storeKeys } from '@/workers';
 import type { Context, JobContext } from '../context';
 import { isDatabaseAway, pause } from '../database-state';
 import { announce, sendDecode } from './decoding';
-import { discardFiles } from './discard';
+import { discardFiles, finishDiscards } from './discard';
 import { forget } from './recordings';
 import { launch, RESTARTED } from './run-launch';
 import { verifyAgain } from './verification-jobs';
@@ -49,6 +49,7 @@ const findDead = async (ctx: JobContext): Promise<string[]> => ctx.instance.dead
 export async function clearUpAfter(ctx: Context, dead: string[]): Promise<void> {
   await dropUnconfirmed(ctx, dead);
   await finishDeletions(ctx);
+  await finishDiscards(ctx);
   await takeUpJobs(ctx, dead);
   await endRuns(ctx, dead);
 }

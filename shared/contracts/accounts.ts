@@ -48,6 +48,17 @@ export const meSchema = z.object({
 });
 export type Me = z.infer<typeof meSchema>;
 
+/** GET /sessions: where the person is signed in. */
+export const signedInSessionSchema = z.object({
+  id: z.string().describe('Names the session; opens nothing.'),
+  current: z.boolean().describe('The one that asks.'),
+  startedAt: isoTimeSchema.nullable(),
+  seenAt: isoTimeSchema.nullable().describe('To ten minutes.'),
+  address: z.string().nullable().describe('Where it began from.'),
+  browser: z.string().nullable().describe('As the browser names itself.'),
+});
+export type SignedInSession = z.infer<typeof signedInSessionSchema>;
+
 export const resetRequestSchema = z.object({ email: emailSchema });
 export const resetSchema = z.object({ token: z.string().min(20).max(200), password: passwordSchema });
 export type PasswordReset = z.infer<typeof resetSchema>;
@@ -83,6 +94,11 @@ export const memberSchema = z.object({
   joinedAt: isoTimeSchema,
 });
 export type Member = z.infer<typeof memberSchema>;
+/** POST /workspace/leave: said on purpose. */
+export const workspaceLeaveSchema = z.object({ confirm: z.literal(true) });
+/** POST /workspace/delete: its name, typed; all of its data go with it. */
+export const workspaceDeleteSchema = z.object({ name: z.string().max(200) });
+
 export const memberPatchSchema = z.object({ role: roleSchema });
 
 /** A message held by the local mail sink (GET /mail, admins only). */

@@ -4,7 +4,13 @@ import { z } from 'zod';
 export const roleSchema = z.enum(['viewer', 'engineer', 'approver', 'admin']);
 export type Role = z.infer<typeof roleSchema>;
 
-const READ = ['workspace:read', 'export:read', 'released-set:read', 'comment:write'] as const;
+const READ = [
+  'workspace:read',
+  'export:read',
+  'released-set:read',
+  'comment:write',
+  'workspace:leave',
+] as const;
 const ENGINEER = [
   'recording:write',
   'vehicle:write',
@@ -13,7 +19,14 @@ const ENGINEER = [
   'requirement:write',
 ] as const;
 const APPROVER = ['set:review'] as const;
-const ADMIN = ['team:manage', 'token:manage', 'audit:read', 'mail:read', 'recording:delete'] as const;
+const ADMIN = [
+  'team:manage',
+  'token:manage',
+  'audit:read',
+  'mail:read',
+  'recording:delete',
+  'workspace:delete',
+] as const;
 
 export type Permission =
   (typeof READ)[number] | (typeof ENGINEER)[number] | (typeof APPROVER)[number] | (typeof ADMIN)[number];
