@@ -71,17 +71,22 @@ describe('a verification in two processes', () => {
       verdict,
       value,
     }));
-  const begin = async () => {
-    const { path: of, setId } = await buildDraft(admin, (await buildVehicle(admin)).id);
-    await admin.post(`${of}/verify`);
-    const { id: versionId } = (await db.SetVersion.findOne({ where: { setId } }))!;
-    return { of, versionId };
+  const MOST_ROUNDS = 8;
+  /** Who takes which run is for them to settle: verifications are begun until one of its runs falls to `who`. */
+  const beginIn = async ({ instanceId }: OwnProcess) => {
+    for (let round = 0; round < MOST_ROUNDS; round += 1) {
+      const { path: of, setId } = await buildDraft(admin, (await buildVehicle(admin)).id);
+      await admin.post(`${of}/verify`);
+      const { id: versionId } = (await db.SetVersion.findOne({ where: { setId } }))!;
+      const seen = await until('somebody computes', async () => {
+        const rows = await db.VerificationRun.findAll({ where: { versionId } });
+        if (rows.some((row) => row.state === 'running' && row.instanceId === instanceId)) return 'here';
+        return rows.every(({ state }) => state === 'done') && 'elsewhere';
+      });
+      if (seen === 'here') return { of, versionId };
+    }
+    throw new Error(`In ${MOST_ROUNDS} rounds the process took nothing.`);
   };
-  const heldBy = (versionId: string, { instanceId }: OwnProcess) =>
-    until(
-      'it computes',
-      async () => (await db.VerificationRun.count({ where: { versionId, instanceId } })) > 0,
-    );
   const expectOnce = async (versionId: string) => {
     const rows = await db.VerificationRun.findAll({ where: { versionId } });
     expect(rows.map(({ state }) => state)).toEqual(Array(6).fill('done'));
@@ -103,8 +108,7 @@ describe('a verification in two processes', () => {
   });
 
   it('ends with the same verdicts when the process beside is killed', async () => {
-    const { of, versionId } = await begin();
-    await heldBy(versionId, consumer);
+    const { of, versionId } = await beginIn(consumer);
     await consumer.kill();
     expect(figures(await verificationEnds(admin, of))).toEqual(figures(calm));
     await expectOnce(versionId);
@@ -112,8 +116,7 @@ describe('a verification in two processes', () => {
   });
 
   it('ends with the same verdicts when the server is killed', async () => {
-    const { of, versionId } = await begin();
-    await heldBy(versionId, server);
+    const { of, versionId } = await beginIn(server);
     await server.kill();
     await until(
       'the process beside has ended it',
