@@ -6,6 +6,8 @@ import { BUILD } from '../lib/project';
 export interface ServerOptions {
   logFile: string;
   env: Record<string, string>;
+  /** Left out: the server itself. */
+  entry?: string;
 }
 
 const READY_LIMIT_MS = 180_000; // the first start makes the demo's recordings
@@ -13,7 +15,7 @@ const READY_LIMIT_MS = 180_000; // the first start makes the demo's recordings
 /** Starts the server; its log goes to `logFile`. Over the channel it notices when we are gone, and ends. */
 export function launchServer(options: ServerOptions): ChildProcess {
   const log = openSync(options.logFile, 'a', 0o600);
-  const child = spawn(process.execPath, ['--enable-source-maps', BUILD.server], {
+  const child = spawn(process.execPath, ['--enable-source-maps', options.entry ?? BUILD.server], {
     env: { ...process.env, NODE_ENV: 'production', ...options.env },
     stdio: ['ignore', log, log, 'ipc'],
     // A Ctrl-C in the terminal reaches us alone; we tell the server when its turn has come.

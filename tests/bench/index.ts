@@ -10,6 +10,7 @@ import { benchHealth } from './health';
 import { benchIngest } from './ingest';
 import { benchSearch } from './search';
 import { benchStack } from './stack';
+import { benchVerification } from './verification';
 
 const script = (file: string) => (args: string[]) => void runBundled(`tests/bench/${file}.ts`, args);
 const count = (args: string[]) => (args[0] === undefined ? undefined : Number(args[0]));
@@ -27,6 +28,7 @@ const BENCHES: Record<string, (args: string[]) => void | Promise<void>> = {
   search: (args) => benchSearch(count(args)),
   health: (args) => benchHealth(count(args)),
   charts: benchCharts,
+  verification: benchVerification,
 };
 const BY_DEFAULT = ['engine', 'stack'];
 

@@ -22,6 +22,7 @@ const STOP_LIMIT_MS = 10_000;
 
 export class Stack {
   private server: ChildProcess | undefined;
+  private readonly beside: ChildProcess[] = [];
 
   private constructor(
     readonly url: string,
@@ -68,6 +69,14 @@ export class Stack {
     await serverReady(this.server, this.logFile);
   }
 
+  /** A process without an HTTP side that takes jobs too, with as many worker processes. */
+  async startBeside(): Promise<void> {
+    const logFile = path.join(this.folder, `consumer-${this.beside.length + 1}.log`);
+    const child = launchServer({ logFile, env: this.env, entry: BUILD.consumer });
+    this.beside.push(child);
+    await serverReady(child, logFile);
+  }
+
   /** kill -9 of the server. */
   async kill(): Promise<void> {
     if (!this.server) return;
@@ -88,6 +97,7 @@ export class Stack {
   }
 
   async stop(): Promise<void> {
+    for (const child of this.beside) await endProcess(child, STOP_LIMIT_MS);
     if (this.server) await endProcess(this.server, STOP_LIMIT_MS);
     await sql(this.database.adminUrl, `DROP DATABASE IF EXISTS ${this.database.name} WITH (FORCE)`);
     rmSync(this.folder, { recursive: true, force: true });
