@@ -70,7 +70,8 @@ function siSymbol({ quantity, unit }: ParameterField): string {
   return units.find(({ toSi }) => toSi === 1)?.symbol ?? '1';
 }
 
-function noticeOf({ set, version }: Exported): string {
+/** Whether the version may be used, in words. */
+export function noticeOf({ set, version }: Exported): string {
   const vehicle = version.evidence?.vehicle.name ?? set.vehicle?.name ?? '';
   const day = version.reviewedAt?.toISOString().slice(0, 10);
   switch (version.state) {

@@ -120,5 +120,7 @@ export const ACCESS_TABLE: Readonly<Record<string, AccessRow>> = {
   'post /parameter-sets/:id/versions/:n/verify': RUN,
   'post /parameter-sets/:id/versions/:n/waivers': REVIEW,
   'get /parameter-sets/:id/versions/:n/export': FETCH,
+  'get /parameter-sets/:id/versions/:n/report': FETCH,
+  'get /parameter-sets/:id/versions/:n/report.pdf': FETCH,
   'get /vehicles/:id/released-set': FETCH_RELEASED,
 };

@@ -6,6 +6,7 @@ import { exportRoutes } from './exports';
 import { parameterSetRoutes } from './parameter-sets';
 import { recordingFileRoutes } from './recording-files';
 import { recordingRoutes } from './recordings';
+import { reportRoutes } from './report';
 import { requirementRoutes } from './requirements';
 import type { Route } from './route';
 import { runRoutes } from './runs';
@@ -36,4 +37,5 @@ export const ROUTES: readonly Route[] = [
   ...requirementRoutes,
   ...verificationRoutes,
   ...exportRoutes,
+  ...reportRoutes,
 ];

@@ -66,9 +66,9 @@ export function requirementSentence(metric: Metric, comparison: Comparison, limi
 
 /** A limit as it was typed, with its unit; shares in percent. */
 export function limitWords(metric: Metric, limit: number): string {
-  if (isShare(metric)) return `${asTyped(limit * 100)} %`;
+  if (isShare(metric)) return `${asTyped(limit * 100)}\u00a0%`;
   const unit = metricUnit(metric);
-  return unit ? `${asTyped(limit)} ${unit}` : asTyped(limit);
+  return unit ? `${asTyped(limit)}\u00a0${unit}` : asTyped(limit);
 }
 
 /** A measured value of the metric with its unit; shares in percent. */
