@@ -1,7 +1,8 @@
-import { lazy, useMemo } from 'react';
+import { useMemo } from 'react';
 import { StyleSheet, View } from 'react-native';
 import Svg, { Path, Rect } from 'react-native-svg';
-import { hatchPath } from '@/components/charts/model/hatch';
+import { hatchPath } from '@/shared/charts/model/hatch';
+import { BudgetChart } from '@/components/charts/quiet/BudgetChart';
 import { budgetSave } from '@/components/charts/quiet/quiet-saves';
 import { sourceInk } from '@/components/charts/quiet/source-ink';
 import { Button } from '@/components/ui/Button';
@@ -12,11 +13,6 @@ import { formatNumber } from '@/shared/format';
 import { errorBudget, type Budget } from './budget-data';
 import { QuietFrame } from './QuietFrame';
 import { useSummary, type Bench } from './use-bench';
-
-// By dynamic import, with the other quiet charts: they stay out of the first chunk.
-const BudgetChart = lazy(async () => ({
-  default: (await import('@/components/charts/quiet/quiet-charts')).BudgetChart,
-}));
 
 export interface BudgetViewProps {
   bench: Bench;

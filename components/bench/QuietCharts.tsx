@@ -1,4 +1,6 @@
-import { lazy, useMemo } from 'react';
+import { useMemo } from 'react';
+import { DriftGrowthChart } from '@/components/charts/quiet/DriftGrowthChart';
+import { HistogramChart } from '@/components/charts/quiet/HistogramChart';
 import { driftGrowthSave, histogramSave } from '@/components/charts/quiet/quiet-saves';
 import { useLive } from '@/hooks/use-live-run';
 import { useRunCurves } from '@/hooks/runs';
@@ -7,11 +9,6 @@ import type { InnovationGroup } from './innovation-charts';
 import { driftGrowth, innovationDistribution, unitNormal, type Distribution } from './quiet-data';
 import { QuietFrame } from './QuietFrame';
 import { useSummary, type Bench } from './use-bench';
-
-// By dynamic import: the library behind them stays out of the first chunk.
-const quiet = () => import('@/components/charts/quiet/quiet-charts');
-const DriftGrowthChart = lazy(async () => ({ default: (await quiet()).DriftGrowthChart }));
-const HistogramChart = lazy(async () => ({ default: (await quiet()).HistogramChart }));
 
 const EXPECTED = Array.from({ length: 81 }, (_, i) => ({ x: -4 + i / 10, density: unitNormal(-4 + i / 10) }));
 

@@ -1,7 +1,7 @@
 import { memo } from 'react';
 import Svg, { Path, Rect } from 'react-native-svg';
-import { logMarks } from '@/components/charts/model/ticks';
-import { px } from '@/components/charts/model/hatch';
+import { logMarks } from '@/shared/charts/model/ticks';
+import { px } from '@/shared/charts/model/hatch';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { toDisplay, type DisplayUnit } from '@/shared/units';
 import type { LogRange } from '@/shared/parameters/parameter-specs';

@@ -1,5 +1,6 @@
-import { lazy, useMemo } from 'react';
+import { useMemo } from 'react';
 import { StyleSheet, View } from 'react-native';
+import { AutocorrelationChart } from '@/components/charts/quiet/AutocorrelationChart';
 import { correlationSave } from '@/components/charts/quiet/quiet-saves';
 import { Text } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
@@ -8,11 +9,6 @@ import type { InnovationGroup } from './innovation-charts';
 import { QuietFrame } from './QuietFrame';
 import { useSummary, type Bench } from './use-bench';
 import { axisWords, whiteness, whitenessSentence, type Whiteness } from './whiteness-data';
-
-// By dynamic import, with the other quiet charts: they stay out of the first chunk.
-const AutocorrelationChart = lazy(async () => ({
-  default: (await import('@/components/charts/quiet/quiet-charts')).AutocorrelationChart,
-}));
 
 export interface WhitenessViewProps {
   bench: Bench;

@@ -1,8 +1,8 @@
 /** Layers that several of the bench's charts are made of. */
 import { axisDash } from '@/constants/theme';
 import type { FrameColumn, FrameTable } from '@/shared/contracts/frames';
-import type { BandLayer, ChartTone, Layer, LineLayer } from '@/components/charts/model/layers';
-import { absoluteQuantile, valueExtent, type TimeSeries } from '@/components/charts/model/series';
+import type { BandLayer, ChartTone, Layer, LineLayer } from '@/shared/charts/model/layers';
+import { absoluteQuantile, valueExtent, type TimeSeries } from '@/shared/charts/model/series';
 import type { RunData } from '@/hooks/live/run-data';
 import { seriesOf, type Curves, type CurvesSource } from './curves';
 

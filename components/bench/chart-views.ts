@@ -1,5 +1,5 @@
 /** Which charts there are, and how they are gathered into views: several stacked when wide, one at a time on the phone. */
-import type { ChartContent, TimeWindow } from '@/components/charts/model/layers';
+import type { ChartContent, TimeWindow } from '@/shared/charts/model/layers';
 import type { DisplayUnits } from '@/shared/display-units';
 import type { CurvesSource } from './curves';
 import { innovationChart, nisChart } from './innovation-charts';

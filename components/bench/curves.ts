@@ -2,7 +2,7 @@
 import type { FrameColumn, FrameTable } from '@/shared/contracts/frames';
 import type { RunSummary } from '@/shared/contracts/runs';
 import type { RunData } from '@/hooks/live/run-data';
-import { columnSeries, lowerBound, type TimeSeries } from '@/components/charts/model/series';
+import { columnSeries, lowerBound, type TimeSeries } from '@/shared/charts/model/series';
 
 export interface Curves {
   current: RunData | null;

@@ -4,9 +4,9 @@ import type { OutageResult } from '@/shared/contracts/runs';
 import { formatNumber } from '@/shared/format';
 import { displayUnit, scaleOf, type DisplayUnits } from '@/shared/display-units';
 import { RAD_PER_DEG } from '@/shared/units';
-import { radius95OverDrms } from '@/components/charts/model/chi-square';
-import type { Annotation, ChartContent, TimeWindow } from '@/components/charts/model/layers';
-import type { TimeSeries } from '@/components/charts/model/series';
+import { radius95OverDrms } from '@/shared/charts/model/chi-square';
+import type { Annotation, ChartContent, TimeWindow } from '@/shared/charts/model/layers';
+import type { TimeSeries } from '@/shared/charts/model/series';
 import type { RunData } from '@/hooks/live/run-data';
 import { derivedSeries, seriesOf, stateRowAt, type CurvesSource } from './curves';
 import {

@@ -1,7 +1,7 @@
 /** What the plan view shows of a bench: tracks, fixes, ellipses, gathered from the run and the recording. */
 import type { BaselineTrack, Series } from '@/shared/contracts/recordings';
 import type { Outage } from '@/shared/contracts/runs';
-import { planeOf, type PlanePoints } from '@/components/charts/model/track';
+import { planeOf, type PlanePoints } from '@/shared/charts/model/track';
 import type { RunData } from '@/hooks/live/run-data';
 
 /** Positions of the filter, north and east of the run's origin. */

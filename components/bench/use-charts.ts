@@ -1,6 +1,6 @@
 /** The chart contents of a bench, made once. */
 import { useEffect, useMemo, useRef } from 'react';
-import type { TrackContent } from '@/components/charts/model/track-drawing';
+import type { TrackContent } from '@/shared/charts/model/track-drawing';
 import { useDisplayUnits } from '@/hooks/preferences';
 import { useRecordingSeries } from '@/hooks/recordings';
 import { useGnssOnlyTrack, useRunCurves } from '@/hooks/runs';

@@ -1,5 +1,5 @@
 import { useMemo } from 'react';
-import type { Origin } from '@/components/charts/figure/sheet';
+import type { Origin } from '@/shared/charts/figure/sheet';
 import { useLive } from '@/hooks/use-live-run';
 import { useSummary, type Bench } from './use-bench';
 

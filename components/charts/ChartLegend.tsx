@@ -6,11 +6,11 @@ import { useTheme } from '@/components/ui/ThemeProvider';
 import { fonts, space } from '@/constants/theme';
 import { formatNumber } from '@/shared/format';
 import type { ChartGroup } from './chart-group';
-import { inkOf } from './drawing/layer-style';
-import type { ChartContent, Layer } from './model/layers';
-import { legendOrder, samplePath } from './model/legend';
+import { inkOf } from '@/shared/charts/model/layer-style';
+import type { ChartContent, Layer } from '@/shared/charts/model/layers';
+import { legendOrder, samplePath } from '@/shared/charts/model/legend';
 import { readLayer } from './table-rows';
-import { formatAxisTime } from './model/ticks';
+import { formatAxisTime } from '@/shared/charts/model/ticks';
 
 export interface ChartLegendProps {
   content: ChartContent;

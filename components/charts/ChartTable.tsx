@@ -1,7 +1,7 @@
 import { useSyncExternalStore } from 'react';
 import type { ChartGroup } from './chart-group';
-import type { ChartContent } from './model/layers';
-import { formatAxisTime } from './model/ticks';
+import type { ChartContent } from '@/shared/charts/model/layers';
+import { formatAxisTime } from '@/shared/charts/model/ticks';
 import { tableRows } from './table-rows';
 import { VisuallyHidden } from './VisuallyHidden';
 

@@ -8,10 +8,10 @@ import { Text } from '@/components/ui/Text';
 import { useToast } from '@/components/ui/ToastProvider';
 import { palettes } from '@/constants/theme';
 import { useChartOrigin } from './chart-origin';
-import { csvText, type CsvTable } from './figure/csv';
-import { download, fileName, pngOf } from './figure/files';
-import { figureSheet, type ChartFigure, type Origin } from './figure/sheet';
-import { sheetSvg } from './figure/svg';
+import { csvText, type CsvTable } from '@/shared/charts/figure/csv';
+import { download, fileName, pngOf } from './save-files';
+import { figureSheet, type ChartFigure, type Origin } from '@/shared/charts/figure/sheet';
+import { sheetSvg } from '@/shared/charts/figure/svg';
 
 export interface SaveControlProps {
   /** The chart's title; part of the file's name. */

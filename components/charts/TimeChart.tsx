@@ -9,14 +9,14 @@ import type { ChartGroup } from './chart-group';
 import { ChartLegend } from './ChartLegend';
 import { ChartTable } from './ChartTable';
 import { ChartAnnotations, ChartAxes, type AxesDrawing } from './drawing/ChartAxes';
-import { inkOf } from './drawing/layer-style';
+import { inkOf } from '@/shared/charts/model/layer-style';
 import { ShapeSet } from './drawing/shape-set';
-import { timeFigure } from './figure/time-figure';
-import { timeTables } from './figure/time-tables';
-import { asideOf } from './model/aside';
-import { emptyWords } from './model/empty';
-import type { ChartContent, Layer } from './model/layers';
-import { chartBuffers, drawChart, type LayerPaths, type PlotBox } from './model/time-chart';
+import { timeFigure } from '@/shared/charts/figure/time-figure';
+import { timeTables } from '@/shared/charts/figure/time-tables';
+import { asideOf } from '@/shared/charts/model/aside';
+import { emptyWords } from '@/shared/charts/model/empty';
+import type { ChartContent, Layer } from '@/shared/charts/model/layers';
+import { chartBuffers, drawChart, type LayerPaths, type PlotBox } from '@/shared/charts/model/time-chart';
 import { SaveControl } from './SaveControl';
 
 export interface TimeChartProps {

@@ -9,8 +9,8 @@ import { chartKey } from './chart-gestures';
 import type { ChartGroup } from './chart-group';
 import { Shapes, svgInk } from './drawing/Shapes';
 import { ShapeSet } from './drawing/shape-set';
-import { scaleAndNorth, trackFigure, trackSample } from './figure/track-figure';
-import { trackTables } from './figure/track-tables';
+import { scaleAndNorth, trackFigure, trackSample } from '@/shared/charts/figure/track-figure';
+import { trackTables } from '@/shared/charts/figure/track-tables';
 import {
   nearestTime,
   TRACK_LAYERS,
@@ -18,8 +18,8 @@ import {
   trackLegend,
   trackPaths,
   type TrackContent,
-} from './model/track-drawing';
-import { scaleBar } from './model/track';
+} from '@/shared/charts/model/track-drawing';
+import { scaleBar } from '@/shared/charts/model/track';
 import { bindPlanGestures, PlanView } from './plan-view';
 import { SaveControl } from './SaveControl';
 

@@ -1,6 +1,6 @@
 /** Pointer, wheel and touch on a chart turned into moves of the shared view and cursor. Web events, bound once an element. */
 import type { ChartGroup } from './chart-group';
-import { linearScale } from './model/scale';
+import { linearScale } from '@/shared/charts/model/scale';
 
 export interface PlotEdges {
   left: number;

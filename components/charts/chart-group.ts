@@ -1,6 +1,6 @@
 /** Charts that share time, cursor and redraws: what changes raises a flag, one animation callback draws all that is flagged. */
-import { Brush, Cursor, Detail, Viewport } from './model/viewport';
-import type { Extent } from './model/scale';
+import { Brush, Cursor, Detail, Viewport } from '@/shared/charts/model/viewport';
+import type { Extent } from '@/shared/charts/model/scale';
 
 type Draw = () => void;
 

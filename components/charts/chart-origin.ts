@@ -1,6 +1,6 @@
 /** Whence the charts below come: for footers and file names of what is saved. Null: nothing can be saved here. */
 import { createContext, useContext } from 'react';
-import type { Origin } from './figure/sheet';
+import type { Origin } from '@/shared/charts/figure/sheet';
 
 export const ChartOrigin = createContext<Origin | null>(null);
 

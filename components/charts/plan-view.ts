@@ -1,5 +1,5 @@
 /** The plan view's own zoom over its fit, and its gestures: wheel and pinch zoom, drag pans, double tap fits again. */
-import type { TrackFrame } from './model/track';
+import type { TrackFrame } from '@/shared/charts/model/track';
 
 export class PlanView {
   private zoom = 1;

@@ -1,7 +1,7 @@
 /** A chart's figures in words: what the cursor reads and what the table for the screen reader says. Pure. */
 import { formatNumber } from '@/shared/format';
-import type { ChartContent, Layer } from './model/layers';
-import { absoluteQuantile, nearestIndex, valueExtent } from './model/series';
+import type { ChartContent, Layer } from '@/shared/charts/model/layers';
+import { absoluteQuantile, nearestIndex, valueExtent } from '@/shared/charts/model/series';
 
 /** Rows of the text alternative; figures carry their unit. */
 export function tableRows(

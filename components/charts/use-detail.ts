@@ -1,7 +1,7 @@
 /** The zoomed stretch for those who fetch finer points of it, and what they say of it on all charts of the group. */
 import { useEffect, useState } from 'react';
 import type { ChartGroup } from './chart-group';
-import type { Extent } from './model/scale';
+import type { Extent } from '@/shared/charts/model/scale';
 
 /** A view that moves is waited for, ms. */
 export const PAUSE_MS = 150;

@@ -1,8 +1,8 @@
 /** Charts of a comparison: one quantity each, one line an entry. */
 import { fromZero, around } from '@/components/bench/chart-parts';
 import { derivedSeries, filtered, seriesOf } from '@/components/bench/curves';
-import type { ChartContent, ChartTone, LineLayer, TimeWindow } from '@/components/charts/model/layers';
-import type { TimeSeries } from '@/components/charts/model/series';
+import type { ChartContent, ChartTone, LineLayer, TimeWindow } from '@/shared/charts/model/layers';
+import type { TimeSeries } from '@/shared/charts/model/series';
 import type { RunData } from '@/hooks/live/run-data';
 import { QUANTITIES } from '@/shared/units';
 

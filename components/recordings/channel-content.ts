@@ -1,8 +1,8 @@
 /** What the plots of a recording's channels draw: three axes of one sensor a chart. */
-import { lowerBound, type TimeSeries } from '@/components/charts/model/series';
-import type { ChartContent, ChartTone } from '@/components/charts/model/layers';
-import { niceExtent } from '@/components/charts/model/nice';
-import type { Extent } from '@/components/charts/model/scale';
+import { lowerBound, type TimeSeries } from '@/shared/charts/model/series';
+import type { ChartContent, ChartTone } from '@/shared/charts/model/layers';
+import { niceExtent } from '@/shared/charts/model/nice';
+import type { Extent } from '@/shared/charts/model/scale';
 import { axisDash } from '@/constants/theme';
 import { formatNumber } from '@/shared/format';
 import type { Series, SeriesChannel } from '@/shared/contracts/recordings';

@@ -2,7 +2,7 @@ import { useMemo } from 'react';
 import { View } from 'react-native';
 import Svg, { G, Path, Rect, Text as SvgText } from 'react-native-svg';
 import type { Strip as StripData } from '@/shared/contracts/recordings';
-import { hatchPath } from '@/components/charts/model/hatch';
+import { hatchPath } from '@/shared/charts/model/hatch';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { fonts, typeScale } from '@/constants/theme';
 import { placeLabels } from './labels';

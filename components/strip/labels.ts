@@ -1,6 +1,6 @@
 /** Labels under the strip that never touch each other: lengths of windows first, then the clock where room is left. */
-import { timeTicks } from '@/components/charts/model/ticks';
-import type { Scale } from '@/components/charts/model/scale';
+import { timeTicks } from '@/shared/charts/model/ticks';
+import type { Scale } from '@/shared/charts/model/scale';
 
 export interface PlacedLabel {
   text: string;

@@ -1,5 +1,5 @@
 /** Where a dragged edge comes to rest: at another window's edge, at a whole second, at the GNSS epoch nearest to it. Pure. */
-import { lowerBound } from '@/components/charts/model/series';
+import { lowerBound } from '@/shared/charts/model/series';
 import type { WindowLimits } from './window-model';
 
 export interface SnapInput {

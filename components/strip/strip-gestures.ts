@@ -1,5 +1,5 @@
 /** Pointer on the full-width strip: draws on empty ground, moves by the body, resizes by the edges, moves the cursor. */
-import type { Scale } from '@/components/charts/model/scale';
+import type { Scale } from '@/shared/charts/model/scale';
 import {
   FINE_S,
   SNAP_S,

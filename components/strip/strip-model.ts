@@ -1,7 +1,7 @@
 /** The strip's geometry: a thin drawing of a whole recording. Pure; Strip.tsx and StripEditor.tsx only draw what is said here. */
 import type { Strip } from '@/shared/contracts/recordings';
-import { px } from '@/components/charts/model/hatch';
-import { linearScale, type Scale } from '@/components/charts/model/scale';
+import { px } from '@/shared/charts/model/hatch';
+import { linearScale, type Scale } from '@/shared/charts/model/scale';
 
 export interface StripLayout {
   width: number;

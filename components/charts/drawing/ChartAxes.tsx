@@ -2,7 +2,7 @@ import { memo } from 'react';
 import { G, Path, Text as SvgText } from 'react-native-svg';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { fonts, typeScale } from '@/constants/theme';
-import type { ChartDrawing, PlotBox } from '../model/time-chart';
+import type { ChartDrawing, PlotBox } from '@/shared/charts/model/time-chart';
 
 export type AxesDrawing = Pick<ChartDrawing, 'valueTicks' | 'timeTicks' | 'annotations'>;
 

@@ -2,7 +2,7 @@ import { memo } from 'react';
 import { G, Path, Rect, Text as SvgText } from 'react-native-svg';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { fonts, type Palette } from '@/constants/theme';
-import type { Inked, Shape } from '../figure/shapes';
+import type { Inked, Shape } from '@/shared/charts/figure/shapes';
 
 const FACES = { label: fonts.label, strong: fonts.labelStrong, number: fonts.number } as const;
 

@@ -1,6 +1,6 @@
 import { useMemo } from 'react';
-import { allanPlot, type AllanData } from './plots';
-import { QuietPlot } from './QuietPlot';
+import { allanPlot, type AllanData } from '@/shared/charts/plots';
+import { FetchedPlot } from './FetchedPlot';
 
 export interface AllanChartProps extends AllanData {
   width: number;
@@ -10,5 +10,5 @@ export interface AllanChartProps extends AllanData {
 /** Deviation over averaging time, both logarithmic. */
 export function AllanChart({ curves, expected, unit, width, height }: AllanChartProps) {
   const model = useMemo(() => allanPlot({ curves, expected, unit }), [curves, expected, unit]);
-  return <QuietPlot model={model} width={width} height={height} />;
+  return <FetchedPlot model={model} width={width} height={height} />;
 }

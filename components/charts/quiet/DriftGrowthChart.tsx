@@ -1,6 +1,6 @@
 import { useMemo } from 'react';
-import { driftGrowthPlot, type DriftGrowthData } from './plots';
-import { QuietPlot } from './QuietPlot';
+import { driftGrowthPlot, type DriftGrowthData } from '@/shared/charts/plots';
+import { FetchedPlot } from './FetchedPlot';
 
 export interface DriftGrowthChartProps extends DriftGrowthData {
   width: number;
@@ -14,5 +14,5 @@ export function DriftGrowthChart(props: DriftGrowthChartProps) {
     () => driftGrowthPlot({ windows, predicted, longestS }),
     [windows, predicted, longestS],
   );
-  return <QuietPlot model={model} width={width} height={height} />;
+  return <FetchedPlot model={model} width={width} height={height} />;
 }

@@ -1,6 +1,6 @@
 import { useMemo } from 'react';
-import { histogramPlot, type HistogramData } from './plots';
-import { QuietPlot } from './QuietPlot';
+import { histogramPlot, type HistogramData } from '@/shared/charts/plots';
+import { FetchedPlot } from './FetchedPlot';
 
 export interface HistogramChartProps extends HistogramData {
   width: number;
@@ -10,5 +10,5 @@ export interface HistogramChartProps extends HistogramData {
 /** A distribution as bars, and the curve that it should follow. */
 export function HistogramChart({ bins, expected, xLabel, width, height }: HistogramChartProps) {
   const model = useMemo(() => histogramPlot({ bins, expected, xLabel }), [bins, expected, xLabel]);
-  return <QuietPlot model={model} width={width} height={height} />;
+  return <FetchedPlot model={model} width={width} height={height} />;
 }

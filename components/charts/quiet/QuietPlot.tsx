@@ -10,7 +10,7 @@ import {
 } from 'victory-native';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import type { Palette } from '@/constants/theme';
-import type { PlotAxis, PlotMark, PlotModel } from '../model/plot';
+import type { PlotAxis, PlotMark, PlotModel } from '@/shared/charts/model/plot';
 import { quietAxis, QUIET_PADDING } from './quiet-style';
 
 export interface QuietPlotProps {

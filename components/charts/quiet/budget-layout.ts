@@ -1,5 +1,5 @@
 /** Where the bars of an error budget stand. Pure; BudgetChart.tsx only draws what is said here. */
-import { linearScale } from '../model/scale';
+import { linearScale } from '@/shared/charts/model/scale';
 
 export interface BudgetBar {
   /** Index of the source, from the largest. */

@@ -1,8 +1,8 @@
 /** The error budget as shapes: shares of the predicted variance, a column a drift point, the total's 1σ above each. Pure. */
 import { formatNumber } from '@/shared/format';
-import type { Box, Shape } from '../figure/shapes';
-import { number } from '../figure/time-figure';
-import { hatchPath } from '../model/hatch';
+import type { Box, Shape } from '@/shared/charts/figure/shapes';
+import { number } from '@/shared/charts/figure/time-figure';
+import { hatchPath } from '@/shared/charts/model/hatch';
 import { budgetLayout, type BudgetBar } from './budget-layout';
 import { sourceInk } from './source-ink';
 

@@ -1,7 +1,7 @@
 /** The autocorrelation chart as shapes: the page and the saved picture draw the same. Pure. */
-import { AXIS_TITLE_PX, type Box, type Shape } from '../figure/shapes';
-import { number } from '../figure/time-figure';
-import { linearScale } from '../model/scale';
+import { AXIS_TITLE_PX, type Box, type Shape } from '@/shared/charts/figure/shapes';
+import { number } from '@/shared/charts/figure/time-figure';
+import { linearScale } from '@/shared/charts/model/scale';
 import { correlationStems } from './correlation-stems';
 
 export interface CorrelationData {

@@ -1,7 +1,7 @@
 /** Stems of an autocorrelation chart: side by side at each lag, one path an axis. Pure. */
-import { px } from '../model/hatch';
-import { niceTicks } from '../model/nice';
-import { linearScale } from '../model/scale';
+import { px } from '@/shared/charts/model/hatch';
+import { niceTicks } from '@/shared/charts/model/nice';
+import { linearScale } from '@/shared/charts/model/scale';
 
 export interface Stems {
   low: number;

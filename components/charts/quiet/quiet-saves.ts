@@ -1,7 +1,7 @@
 /** What the quiet charts save: their figures and their tables. Pure. */
-import { columnName, type CsvTable } from '../figure/csv';
-import { plotFigure } from '../figure/plot-figure';
-import type { ChartFigure } from '../figure/sheet';
+import { columnName, type CsvTable } from '@/shared/charts/figure/csv';
+import { plotFigure } from '@/shared/charts/figure/plot-figure';
+import type { ChartFigure } from '@/shared/charts/figure/sheet';
 import { budgetShapes, sourceShapes, type BudgetColumns } from './budget-shapes';
 import { correlationShapes, type CorrelationData } from './correlation-shapes';
 import {
@@ -11,7 +11,7 @@ import {
   type AllanData,
   type DriftGrowthData,
   type HistogramData,
-} from './plots';
+} from '@/shared/charts/plots';
 
 type Words = Pick<ChartFigure, 'title' | 'aside' | 'sentence'>;
 /** What SaveControl takes of a chart. */

@@ -1,9 +1,9 @@
 import { memo } from 'react';
 import { View } from 'react-native';
 import Svg, { Path, Text as SvgText } from 'react-native-svg';
-import { linePath } from '@/components/charts/model/paths';
-import { niceExtent } from '@/components/charts/model/nice';
-import { linearScale } from '@/components/charts/model/scale';
+import { linePath } from '@/shared/charts/model/paths';
+import { niceExtent } from '@/shared/charts/model/nice';
+import { linearScale } from '@/shared/charts/model/scale';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { Text } from '@/components/ui/Text';
 import { fonts, typeScale } from '@/constants/theme';

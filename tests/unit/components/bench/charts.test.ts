@@ -2,8 +2,8 @@ import { coastingChart, axisRatio, sigmaChart } from '@/components/bench/state-c
 import { innovationChart, nisChart } from '@/components/bench/innovation-charts';
 import { driftGrowth, innovationDistribution } from '@/components/bench/quiet-data';
 import type { Curves, CurvesSource } from '@/components/bench/curves';
-import { chartBuffers, drawChart, type PlotBox } from '@/components/charts/model/time-chart';
-import type { ChartContent } from '@/components/charts/model/layers';
+import { chartBuffers, drawChart, type PlotBox } from '@/shared/charts/model/time-chart';
+import type { ChartContent } from '@/shared/charts/model/layers';
 import { tableRows } from '@/components/charts/table-rows';
 import { RunData } from '@/hooks/live/run-data';
 import { FRAME_TABLES, type FrameTable } from '@/shared/contracts/frames';

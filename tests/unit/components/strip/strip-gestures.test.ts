@@ -2,7 +2,7 @@ import { bindStripGestures, hitWindow } from '@/components/strip/strip-gestures'
 import { windowKey } from '@/components/strip/window-keys';
 import { stretchAt, type Stretch } from '@/components/strip/stretches';
 import { drawOutage, drawWindow, type WindowLimits } from '@/components/strip/window-model';
-import { linearScale } from '@/components/charts/model/scale';
+import { linearScale } from '@/shared/charts/model/scale';
 import type { Outage } from '@/shared/contracts/runs';
 import { Stage } from '../pointer-stage';
 

@@ -1,6 +1,6 @@
 import { placeLabels } from '@/components/strip/labels';
 import { stripGeometry, stripLayout, stripSentence } from '@/components/strip/strip-model';
-import { linearScale } from '@/components/charts/model/scale';
+import { linearScale } from '@/shared/charts/model/scale';
 import type { Strip } from '@/shared/contracts/recordings';
 
 const buckets = 100;

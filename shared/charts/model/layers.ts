@@ -1,5 +1,5 @@
 /** What a chart over time consists of: said by its owner, turned into pixels by time-chart.ts. */
-import type { Palette } from '@/constants/theme';
+import type { Palette } from '@/shared/tokens';
 import type { Extent } from './scale';
 import type { TimeSeries } from './series';
 

@@ -1,4 +1,4 @@
-import { nisBounds95, radius95OverDrms } from '@/components/charts/model/chi-square';
+import { nisBounds95, radius95OverDrms } from '@/shared/charts/model/chi-square';
 
 /** Lower incomplete gamma of χ² with 1, 2, 3 degrees, closed forms by the error function (Abramowitz & Stegun 26.4). */
 function chiSquareBelow(x: number, degrees: number): number {

@@ -1,5 +1,5 @@
-import { polylineBuffer, type Polyline } from '@/components/charts/model/decimate';
-import { hatchPath } from '@/components/charts/model/hatch';
+import { polylineBuffer, type Polyline } from '@/shared/charts/model/decimate';
+import { hatchPath } from '@/shared/charts/model/hatch';
 import {
   areaPath,
   bandPath,
@@ -7,7 +7,7 @@ import {
   dotsPath,
   ellipsePath,
   linePath,
-} from '@/components/charts/model/paths';
+} from '@/shared/charts/model/paths';
 
 function polyline(points: [number, number][]): Polyline {
   const line = polylineBuffer(points.length);

@@ -1,4 +1,4 @@
-import { formatAxisTime, logMarks, timeTicks, valueTicks } from '@/components/charts/model/ticks';
+import { formatAxisTime, logMarks, timeTicks, valueTicks } from '@/shared/charts/model/ticks';
 
 describe('timeTicks', () => {
   it.each([

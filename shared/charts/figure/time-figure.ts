@@ -1,6 +1,6 @@
 /** A chart over time as a figure: the same drawing as on the screen, for the same stretch of time. Pure. */
-import { typeScale } from '@/constants/theme';
-import { layerInk } from '../drawing/layer-style';
+import { typeScale } from '@/shared/tokens';
+import { layerInk } from '../model/layer-style';
 import { asideOf } from '../model/aside';
 import type { ChartContent, Layer } from '../model/layers';
 import { legendOrder, samplePath } from '../model/legend';

@@ -1,8 +1,8 @@
 /** Reads a saved picture back as a viewer would. */
 import { XMLParser, XMLValidator } from 'fast-xml-parser';
 import { palettes } from '@/constants/theme';
-import { figureSheet, type ChartFigure, type Origin, type Sheet } from '@/components/charts/figure/sheet';
-import { sheetSvg } from '@/components/charts/figure/svg';
+import { figureSheet, type ChartFigure, type Origin, type Sheet } from '@/shared/charts/figure/sheet';
+import { sheetSvg } from '@/shared/charts/figure/svg';
 
 export interface SvgNode {
   name: string;

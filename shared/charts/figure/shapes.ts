@@ -2,7 +2,7 @@
  * A drawing as data: paths, rectangles and words, inked by the names of the palette. The page draws them through React
  * (drawing/Shapes.tsx), a saved picture as SVG text (svg.ts): both show the same.
  */
-import type { Palette } from '@/constants/theme';
+import type { Palette } from '@/shared/tokens';
 
 export type Tone = keyof Palette;
 

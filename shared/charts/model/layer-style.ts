@@ -1,7 +1,7 @@
 /** How each kind of layer is inked. */
-import type { Palette } from '@/constants/theme';
+import type { Palette } from '@/shared/tokens';
 import type { Inked } from '../figure/shapes';
-import type { Layer } from '../model/layers';
+import type { Layer } from './layers';
 
 export interface Ink {
   stroke: string;

@@ -1,7 +1,7 @@
-import { originLine } from '@/components/charts/figure/sheet';
-import { timeFigure } from '@/components/charts/figure/time-figure';
-import type { ChartContent } from '@/components/charts/model/layers';
-import { columnSeries, type TimeSeries } from '@/components/charts/model/series';
+import { originLine } from '@/shared/charts/figure/sheet';
+import { timeFigure } from '@/shared/charts/figure/time-figure';
+import type { ChartContent } from '@/shared/charts/model/layers';
+import { columnSeries, type TimeSeries } from '@/shared/charts/model/series';
 import { palettes } from '@/constants/theme';
 import { documentOf, ORIGIN, pathPoints } from './document';
 

@@ -6,7 +6,7 @@ import {
   trackFrame,
   trackPath,
   type PlanePoints,
-} from '@/components/charts/model/track';
+} from '@/shared/charts/model/track';
 
 const track = (points: [number, number][]): PlanePoints => ({
   length: points.length,

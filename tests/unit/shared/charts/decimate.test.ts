@@ -1,6 +1,6 @@
-import { decimate, polylineBuffer } from '@/components/charts/model/decimate';
-import { columnSeries } from '@/components/charts/model/series';
-import { linearScale } from '@/components/charts/model/scale';
+import { decimate, polylineBuffer } from '@/shared/charts/model/decimate';
+import { columnSeries } from '@/shared/charts/model/series';
+import { linearScale } from '@/shared/charts/model/scale';
 
 const x = linearScale([0, 1000], [0, 100]);
 const y = linearScale([-10, 10], [200, 0]);

@@ -1,9 +1,9 @@
 import Papa from 'papaparse';
-import { columnName, csvText } from '@/components/charts/figure/csv';
-import { fileName } from '@/components/charts/figure/files';
-import { timeColumns, timeTables } from '@/components/charts/figure/time-tables';
-import type { ChartContent } from '@/components/charts/model/layers';
-import { columnSeries } from '@/components/charts/model/series';
+import { columnName, csvText } from '@/shared/charts/figure/csv';
+import { fileName } from '@/components/charts/save-files';
+import { timeColumns, timeTables } from '@/shared/charts/figure/time-tables';
+import type { ChartContent } from '@/shared/charts/model/layers';
+import { columnSeries } from '@/shared/charts/model/series';
 import { ORIGIN } from './document';
 
 const column = (time: number[], values: number[]) =>

@@ -1,7 +1,7 @@
-import { chartBuffers, coastingGround, drawChart, type PlotBox } from '@/components/charts/model/time-chart';
-import type { ChartContent, Layer } from '@/components/charts/model/layers';
-import { linearScale } from '@/components/charts/model/scale';
-import { columnSeries, type TimeSeries } from '@/components/charts/model/series';
+import { chartBuffers, coastingGround, drawChart, type PlotBox } from '@/shared/charts/model/time-chart';
+import type { ChartContent, Layer } from '@/shared/charts/model/layers';
+import { linearScale } from '@/shared/charts/model/scale';
+import { columnSeries, type TimeSeries } from '@/shared/charts/model/series';
 
 const box: PlotBox = { left: 40, top: 10, right: 240, bottom: 110 };
 /** Domain −10…10 over 100 px, 0…100 s over 200 px: 5 px a unit, 2 px a second. */

@@ -1,5 +1,5 @@
 /** The plan view as a figure, with scale bar and north. Pure. */
-import { typeScale } from '@/constants/theme';
+import { typeScale } from '@/shared/tokens';
 import { scaleBar } from '../model/track';
 import {
   TRACK_LAYERS,

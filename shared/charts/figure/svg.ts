@@ -1,5 +1,5 @@
 /** A sheet as an SVG document that stands by itself: no style sheet, no script, fonts by name with others behind them. */
-import { pictureFonts, type Palette } from '@/constants/theme';
+import { pictureFonts, type Palette } from '@/shared/tokens';
 import { px } from '../model/hatch';
 import type { Shape, TextShape, Tone } from './shapes';
 import type { Sheet } from './sheet';

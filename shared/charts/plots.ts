@@ -1,7 +1,7 @@
 /** The quiet charts as plots. Pure. */
-import { axisDash } from '@/constants/theme';
+import { axisDash } from '@/shared/tokens';
 import { formatNumber } from '@/shared/format';
-import { linearAxis, type PlotAxis, type PlotMark, type PlotModel } from '../model/plot';
+import { linearAxis, type PlotAxis, type PlotMark, type PlotModel } from './model/plot';
 
 export interface AllanData {
   curves: readonly {

@@ -1,5 +1,5 @@
 /** Saved charts as files: their names, the picture's pixels, and the way to the person's disk. */
-import type { Origin } from './sheet';
+import type { Origin } from '@/shared/charts/figure/sheet';
 
 /** "harbour-survey_position-innovation_run-4f0c8a52.svg" */
 export function fileName(origin: Origin, chart: string, part: string, ending: 'svg' | 'png' | 'csv'): string {

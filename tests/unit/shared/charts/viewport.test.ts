@@ -1,4 +1,4 @@
-import { Cursor, LEAST_SPAN_S, Viewport } from '@/components/charts/model/viewport';
+import { Cursor, LEAST_SPAN_S, Viewport } from '@/shared/charts/model/viewport';
 
 describe('Viewport', () => {
   it('zooms about a time that stays where it is', () => {

@@ -1,6 +1,6 @@
 import { scaleLinear } from 'd3-scale';
-import { decimalsOf, niceExtent, niceStep, niceTicks } from '@/components/charts/model/nice';
-import { logScale } from '@/components/charts/model/scale';
+import { decimalsOf, niceExtent, niceStep, niceTicks } from '@/shared/charts/model/nice';
+import { logScale } from '@/shared/charts/model/scale';
 
 const EXTENTS: [number, number][] = [
   [0, 1], [-10, 10], [0.003, 0.0071], [-0.5, 1234], [12, 13], [-7.3e-5, 2.1e-6], [0, 9.99e6], [359, 361],

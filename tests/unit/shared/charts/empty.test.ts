@@ -1,6 +1,6 @@
-import { emptyWords } from '@/components/charts/model/empty';
-import type { ChartContent, Layer } from '@/components/charts/model/layers';
-import { columnSeries } from '@/components/charts/model/series';
+import { emptyWords } from '@/shared/charts/model/empty';
+import type { ChartContent, Layer } from '@/shared/charts/model/layers';
+import { columnSeries } from '@/shared/charts/model/series';
 
 const content = (layers: Layer[], empty?: () => string): ChartContent => ({
   id: 'c',

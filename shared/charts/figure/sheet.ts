@@ -1,5 +1,5 @@
 /** A chart as a picture by itself: title, legend, plot with titled axes, and whence it comes. Pure. */
-import { typeScale } from '@/constants/theme';
+import { typeScale } from '@/shared/tokens';
 import { AXIS_TITLE_PX, type Box, type Shape } from './shapes';
 
 export interface LegendEntry {
