@@ -30,12 +30,20 @@ const cache = path.join(__dirname, 'node_modules/.cache/metro');
 config.cacheStores = [new FileStore({ root: cache })];
 config.fileMapCacheDirectory = cache;
 
-// zod's index re-exports every locale, and Metro does not drop unused re-exports: keep English alone.
+// zod's index re-exports every locale and the way to and from JSON Schema, and Metro does not drop unused re-exports:
+// of the locales English alone is kept, of the others nothing.
+const unusedOfZod = /(locales\/index|from-json-schema|json-schema-processors|core\/compile|\.\/compile)\.js$/;
+// Likewise of react-native-web's index what neither we nor the router use: long lists, and controls that we have of our own.
+const unusedOfWeb =
+  /\/(FlatList|SectionList|VirtualizedList|VirtualizedSectionList|CheckBox|Switch|Picker|ProgressBar|Modal|TouchableHighlight|ImageBackground|KeyboardAvoidingView)(\/index(\.js)?)?$/;
 const upstream = config.resolver.resolveRequest;
 config.resolver.resolveRequest = (context, name, platform) => {
-  if (/locales\/index\.js$/.test(name) && /[\\/]node_modules[\\/]zod[\\/]/.test(context.originModulePath)) {
+  if (unusedOfZod.test(name) && /[\\/]node_modules[\\/]zod[\\/]/.test(context.originModulePath)) {
+    if (!name.endsWith('locales/index.js')) return { type: 'empty' };
     return { type: 'sourceFile', filePath: path.join(__dirname, 'shared/zod-locales.js') };
   }
+  if (unusedOfWeb.test(name) && /[\\/]node_modules[\\/]react-native-web[\\/]/.test(context.originModulePath))
+    return { type: 'empty' };
   return (upstream ?? context.resolveRequest)(context, name, platform);
 };
 

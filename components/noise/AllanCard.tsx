@@ -1,5 +1,6 @@
-import { lazy, Suspense, useMemo, useState } from 'react';
+import { Suspense, useMemo, useState } from 'react';
 import { View } from 'react-native';
+import { AllanChart } from '@/components/charts/quiet/AllanChart';
 import { allanSave } from '@/components/charts/quiet/quiet-saves';
 import { SaveControl } from '@/components/charts/SaveControl';
 import { VisuallyHidden } from '@/components/charts/VisuallyHidden';
@@ -13,11 +14,6 @@ import { displayUnit } from '@/shared/display-units';
 import { formatNumber } from '@/shared/format';
 import { allanCurves, datasheetCurve } from './allan-content';
 import { SENSORS, type Sensor } from './sensors';
-
-// By dynamic import: the library behind it stays out of the first chunk.
-const AllanChart = lazy(async () => ({
-  default: (await import('@/components/charts/quiet/quiet-charts')).AllanChart,
-}));
 
 const HEIGHT = 320;
 

@@ -23,7 +23,7 @@ export interface ChannelChartsProps {
 const POINTS = 1500;
 
 /** All channels over time; what is zoomed into is fetched again in finer steps. */
-export default function ChannelCharts({ recordingId, extentS, hasVelocity, focus }: ChannelChartsProps) {
+export function ChannelCharts({ recordingId, extentS, hasVelocity, focus }: ChannelChartsProps) {
   const [from, to] = extentS;
   const group = useMemo(() => new ChartGroup([from, to]), [from, to]);
   const view = useSettledView(group);

@@ -5,7 +5,7 @@ import { Skeleton } from '@/components/ui/Skeleton';
 import type { ChannelChartsProps } from './ChannelCharts';
 
 // The charts come in a piece of their own: a list of recordings does without them.
-const ChannelCharts = lazy(() => import('./ChannelCharts'));
+const ChannelCharts = lazy(async () => ({ default: (await import('@/components/lab')).ChannelCharts }));
 
 /** Plots of the decoded channels. */
 export function ChannelsCard(props: ChannelChartsProps) {

@@ -1,7 +1,7 @@
 import { Screen } from '@/components/layout/Screen';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
 import { RecordingList } from './RecordingList';
-import { RecordingScreen } from './RecordingScreen';
+import { RecordingScreen } from '@/components/layout/fetched-screens';
 import { useFirstRecording } from './use-first-recording';
 import { UploadButton } from './UploadButton';
 

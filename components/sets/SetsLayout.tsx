@@ -8,7 +8,7 @@ import { useParameterSets } from '@/hooks/parameter-sets';
 import { itemsOf } from '@/hooks/recordings';
 import { SET_KEYS, setQuery } from './set-filter';
 import { SetList } from './SetList';
-import { SetScreen } from './SetScreen';
+import { SetScreen } from '@/components/layout/fetched-screens';
 
 /** The list beside whatever set is open. */
 export function SetsLayout() {

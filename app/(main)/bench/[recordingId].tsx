@@ -1,5 +1,5 @@
 import { useLocalSearchParams } from 'expo-router';
-import { BenchScreen } from '@/components/bench/BenchScreen';
+import { BenchScreen } from '@/components/layout/fetched-screens';
 import type { BenchQuery } from '@/components/bench/bench-link';
 
 type Search = { recordingId: string } & Partial<Record<keyof BenchQuery, string>>;

@@ -1,5 +1,5 @@
 import { useLocalSearchParams } from 'expo-router';
-import { CompareScreen } from '@/components/compare/CompareScreen';
+import { CompareScreen } from '@/components/layout/fetched-screens';
 import type { CompareQuery } from '@/components/compare/compare-link';
 
 export default function Compare() {

@@ -1,5 +1,5 @@
 import { useLocalSearchParams } from 'expo-router';
-import { EditRequirementScreen } from '@/components/requirements/EditRequirementScreen';
+import { EditRequirementScreen } from '@/components/layout/fetched-screens';
 
 export default function Requirement() {
   const { id } = useLocalSearchParams<{ id: string }>();

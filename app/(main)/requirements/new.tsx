@@ -1,1 +1,1 @@
-export { NewRequirementScreen as default } from '@/components/requirements/EditRequirementScreen';
+export { NewRequirementScreen as default } from '@/components/layout/fetched-screens';

@@ -1,5 +1,5 @@
 import { useLocalSearchParams } from 'expo-router';
-import { VehicleScreen } from '@/components/vehicles/VehicleScreen';
+import { VehicleScreen } from '@/components/layout/fetched-screens';
 
 export default function VehicleRoute() {
   const { id } = useLocalSearchParams<{ id: string }>();

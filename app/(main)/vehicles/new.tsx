@@ -1,1 +1,1 @@
-export { NewVehicleScreen as default } from '@/components/vehicles/VehicleScreen';
+export { NewVehicleScreen as default } from '@/components/layout/fetched-screens';

@@ -2,8 +2,8 @@
 import { createRoot } from 'react-dom/client';
 import { View } from 'react-native';
 import { ChartGroup } from '@/components/charts/chart-group';
-import type { ChartContent } from '@/components/charts/model/layers';
-import { columnSeries } from '@/components/charts/model/series';
+import type { ChartContent } from '@/shared/charts/model/layers';
+import { columnSeries } from '@/shared/charts/model/series';
 import { TimeChart } from '@/components/charts/TimeChart';
 import { CHANNEL_CHARTS, channelContent, withGaps } from '@/components/recordings/channel-content';
 import { ThemeProvider } from '@/components/ui/ThemeProvider';

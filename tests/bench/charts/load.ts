@@ -46,7 +46,7 @@ async function measureLoad(browser: Browser, server: string, what: string, route
       what === 'bench' ? '' : 'goal ≤ 450 kB',
     );
     line(`${what}: until it can be used`, `${(readyMs / 1000).toFixed(2)} s`);
-    const charts = scripts.filter((file) => /quiet-charts|recordingId|ChannelCharts/.test(file));
+    const charts = scripts.filter((file) => /\/(lab|QuietPlot)-/.test(file));
     if (what !== 'bench') line(`${what}: chunks of charts among them`, String(charts.length), 'goal: none');
     await fresh.page.context().close();
   } finally {

@@ -1,5 +1,5 @@
 import { useLocalSearchParams } from 'expo-router';
-import { RecordingScreen } from '@/components/recordings/RecordingScreen';
+import { RecordingScreen } from '@/components/layout/fetched-screens';
 
 export default function RecordingRoute() {
   const { id } = useLocalSearchParams<{ id: string }>();

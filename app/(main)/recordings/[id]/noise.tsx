@@ -1,5 +1,5 @@
 import { useLocalSearchParams } from 'expo-router';
-import { NoiseScreen } from '@/components/noise/NoiseScreen';
+import { NoiseScreen } from '@/components/layout/fetched-screens';
 
 export default function NoiseRoute() {
   const { id } = useLocalSearchParams<{ id: string }>();

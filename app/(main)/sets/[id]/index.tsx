@@ -1,5 +1,5 @@
 import { useLocalSearchParams } from 'expo-router';
-import { SetScreen } from '@/components/sets/SetScreen';
+import { SetScreen } from '@/components/layout/fetched-screens';
 
 export default function SetRoute() {
   const { id } = useLocalSearchParams<{ id: string }>();

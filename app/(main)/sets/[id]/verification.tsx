@@ -1,5 +1,5 @@
 import { useLocalSearchParams } from 'expo-router';
-import { MatrixScreen } from '@/components/verification/MatrixScreen';
+import { MatrixScreen } from '@/components/layout/fetched-screens';
 
 export default function Verification() {
   const { id, version } = useLocalSearchParams<{ id: string; version?: string }>();
