@@ -217,19 +217,46 @@ export class Sheet {
   /** Words whose Greek letters come from another face. */
   private words(text: string, x: number, y: number, width: number, { face, size, ink, align }: Style): void {
     const { doc } = this;
-    const parts = printable(text)
-      .split(GREEK)
-      .filter((part) => part !== '');
+    const parts = partsOf(text, face);
     doc.fillColor(INK[ink]).fontSize(size);
     for (const [i, part] of parts.entries()) {
-      doc.font(GREEK.test(part) ? 'greek' : face);
-      const continued = i < parts.length - 1;
-      const options = { width, align, continued };
-      if (i === 0) doc.text(part, x, y, options);
-      else doc.text(part, options);
+      doc.font(part.face);
+      const options = { width, align, continued: i < parts.length - 1 };
+      if (i === 0) doc.text(part.text, x, y, options);
+      else doc.text(part.text, options);
+    }
+  }
+
+  /** One line with its baseline at `y`, beginning, centred or ending at `x`. */
+  line(
+    text: string,
+    x: number,
+    y: number,
+    look: { face: Face; size: number; colour: string; anchor: Anchor },
+  ): void {
+    const { doc } = this;
+    doc.fontSize(look.size).fillColor(look.colour);
+    const parts = partsOf(text, look.face).map((part) => ({
+      ...part,
+      width: doc.font(part.face).widthOfString(part.text),
+    }));
+    const width = parts.reduce((sum, part) => sum + part.width, 0);
+    let at = x - { start: 0, middle: width / 2, end: width }[look.anchor];
+    for (const part of parts) {
+      doc.font(part.face).text(part.text, at, y, { lineBreak: false, baseline: 'alphabetic' });
+      at += part.width;
     }
   }
 }
+
+export type Anchor = 'start' | 'middle' | 'end';
+
+/** Greek letters and arrows in a face that has them, all else in `face`. */
+const partsOf = (text: string, face: Face): { text: string; face: Face }[] =>
+  printable(text)
+    .split(GREEK)
+    .filter((part) => part !== '')
+    .map((part) => ({ text: part, face: GREEK.test(part) ? 'greek' : face }));
 
 const CELL_PT = 8.5;
 const CELL_GAP = 3;
