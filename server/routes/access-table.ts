@@ -45,6 +45,7 @@ export const ACCESS_TABLE: Readonly<Record<string, AccessRow>> = {
   'delete /sessions': PERSON,
   'delete /sessions/:id': PERSON,
   'get /members': READ,
+  'get /workspace/export.tar': MANAGE,
   'post /workspace/leave': MEMBER,
   'post /workspace/delete': MANAGE,
   'patch /members/:userId': MANAGE,

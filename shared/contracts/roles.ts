@@ -26,6 +26,7 @@ const ADMIN = [
   'mail:read',
   'recording:delete',
   'workspace:delete',
+  'workspace:export',
 ] as const;
 
 export type Permission =

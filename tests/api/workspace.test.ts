@@ -1,4 +1,9 @@
 /** Leaving a workspace, and deleting it with all its data. */
+import { execFileSync } from 'node:child_process';
+import { createHash } from 'node:crypto';
+import fs from 'node:fs';
+import os from 'node:os';
+import nodePath from 'node:path';
 import type { AuditEntry, Me } from '@/shared/contracts/accounts';
 import { type Api, problemOf, startApi, until } from '../support/api';
 import { buildMember, buildRecording, buildVehicle } from '../support/api-factories';
@@ -29,6 +34,55 @@ describe('the workspace', () => {
     expect(problemOf(last).detail).toContain('only admin');
   });
 
+  it('is taken away whole: uploads as they came, the rest as JSON, and no secret', async () => {
+    const admin = await buildMember(api, 'admin');
+    const vehicle = await buildVehicle(admin);
+    const recording = await buildRecording(admin, { name: 'Breakwater é' });
+    await buildRequirement(admin, [recording.id]);
+    const { setId, path } = await buildDraft(admin, vehicle.id);
+    await verified(admin, path);
+    await admin.post(`${path}/comments`, { text: 'Good.' });
+    const made = (await admin.post('/tokens', { name: 'Build', scopes: ['workspace:read'] })).body as {
+      token: string;
+    };
+    const answer = await admin.get('/workspace/export.tar');
+    expect(answer.status).toBe(200);
+    expect(answer.headers.get('Content-Disposition')).toMatch(/filename="?Workspace-[\w-]+\.tar"?$/);
+
+    const folder = fs.mkdtempSync(nodePath.join(os.tmpdir(), 'driftwright-tar-'));
+    fs.writeFileSync(nodePath.join(folder, 'all.tar'), answer.bytes);
+    execFileSync('tar', ['-xf', 'all.tar'], { cwd: folder });
+    const read = (file: string) => fs.readFileSync(nodePath.join(folder, file), 'utf8');
+    const files = filesBelow(folder).filter((file) => file !== 'all.tar');
+    expect(files.sort()).toEqual([
+      'audit.csv',
+      'members.json',
+      `parameter-sets/${setId}.json`,
+      `recordings/${recording.id}/gnss-gnss.csv`,
+      `recordings/${recording.id}/imu-imu.csv`,
+      'recordings/00001.json',
+      'requirements/00001.json',
+      'runs/00001.json',
+      'vehicles/00001.json',
+      'workspace.json',
+    ].sort()); // prettier-ignore
+    for (const { role, sha256 } of recording.files) {
+      const bytes = fs.readFileSync(nodePath.join(folder, `recordings/${recording.id}/${role}-${role}.csv`));
+      expect(createHash('sha256').update(bytes).digest('hex')).toBe(sha256);
+    }
+    const set = JSON.parse(read(`parameter-sets/${setId}.json`)) as { reviews: { comments: object[] }[] };
+    expect(set.reviews[0]).toMatchObject({
+      comments: [{ text: 'Good.' }],
+      verification: { cells: [{ verdict: 'pass' }] },
+    });
+    expect(JSON.parse(read('recordings/00001.json'))).toMatchObject([{ name: 'Breakwater é' }]);
+    expect(read('audit.csv')).toContain('workspace.exported');
+    const everything = answer.bytes.toString('latin1');
+    expect(everything).not.toContain(made.token);
+    expect(everything).not.toMatch(/argon2|passwordHash|tokenHash/);
+    fs.rmSync(folder, { recursive: true, force: true });
+  });
+
   it('is deleted with everything in it once its name is typed, and nothing else', async () => {
     const admin = await buildMember(api, 'admin');
     const { workspaceId } = admin;
@@ -45,6 +99,9 @@ describe('the workspace', () => {
     await approver.post(`${path}/comments`, { text: 'Good.' });
     await admin.post('/tokens', { name: 'Build', scopes: ['workspace:read'] });
     const { name } = (await api.ctx.db.Workspace.findByPk(workspaceId))!;
+    const runs = await api.ctx.db.Run.findAll({ where: { workspaceId } });
+    const gone = [recording.id, ...runs.map(({ id }) => id)];
+    expect(filesBelow(`${api.dataDir}/store`).filter((file) => file.includes(runs[0]!.id))).not.toEqual([]);
 
     const mistyped = await admin.post('/workspace/delete', { name: 'Workspace' });
     expect(problemOf(mistyped).errors?.[0]).toMatchObject({ path: 'name' });
@@ -62,7 +119,7 @@ describe('the workspace', () => {
     expect(await db.SetVersion.count()).toBeGreaterThan(0); // of the test before
     expect(await db.Discard.count()).toBe(0);
     await until('its files are gone', () =>
-      filesBelow(`${api.dataDir}/store`).every((file) => file.includes(kept.id)),
+      filesBelow(`${api.dataDir}/store`).every((file) => !gone.some((id) => file.includes(id))),
     );
     expect(((await approver.get('/me')).body as Me).workspaces).toEqual([]);
     expect((await neighbour.get(`/recordings/${kept.id}`)).body).toMatchObject({ status: 'ready' });
