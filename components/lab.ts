@@ -6,4 +6,5 @@
 export { BenchScreen } from './bench/BenchScreen';
 export { CompareScreen } from './compare/CompareScreen';
 export { NoiseScreen } from './noise/NoiseScreen';
+export { ReportScreen } from './report/ReportScreen';
 export { ChannelCharts } from './recordings/ChannelCharts';

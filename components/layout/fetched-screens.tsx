@@ -7,6 +7,7 @@ const details = () => import('@/components/details');
 
 export const BenchScreen = fetched('Bench', async () => (await lab()).BenchScreen);
 export const CompareScreen = fetched('Compare', async () => (await lab()).CompareScreen);
+export const ReportScreen = fetched('Report', async () => (await lab()).ReportScreen);
 export const NoiseScreen = fetched('Sensor noise', async () => (await lab()).NoiseScreen);
 
 export const RecordingScreen = fetched('Recording', async () => (await details()).RecordingScreen);

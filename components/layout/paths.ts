@@ -21,6 +21,10 @@ export const verificationPath = (setId: string, number: number): Href => ({
   pathname: '/sets/[id]/verification',
   params: { id: setId, version: String(number) },
 });
+export const reportPath = (setId: string, version: number): Href => ({
+  pathname: '/sets/[id]/report',
+  params: { id: setId, version: String(version) },
+});
 export const vehiclePath = (id: string, query?: Query): Href => ({
   pathname: '/vehicles/[id]',
   params: { ...query, id },

@@ -14,7 +14,7 @@ import { SetScreen } from '@/components/layout/fetched-screens';
 export function SetsLayout() {
   const opened = usePathId('sets');
   const first = useFirstSet();
-  const whole = usePathname().endsWith('/verification');
+  const whole = /\/(verification|report)$/.test(usePathname());
   return (
     <MasterDetail
       title="Parameter sets"

@@ -7,6 +7,7 @@ import { Button } from '@/components/ui/Button';
 import { CommentsCard } from '@/components/review/CommentsCard';
 import { ExportCard } from '@/components/review/ExportCard';
 import { HistoryCard } from '@/components/review/HistoryCard';
+import { ReportCard } from '@/components/report/ReportCard';
 import { ReviewCard } from '@/components/review/ReviewCard';
 import { Card } from '@/components/ui/Card';
 import { Choice } from '@/components/ui/Choice';
@@ -69,6 +70,7 @@ export function VersionCard({ set, version }: VersionCardProps) {
         ) : null}
         <ParameterTable sections={sections} parentName={parent ? `version ${parent.number}` : null} />
       </Card>
+      <ReportCard of={of} name={`${set.name} v${version.number}`} />
       <CommentsCard of={of} />
       <ExportCard
         title="Export"

@@ -219,6 +219,14 @@ export class Sheet {
     const { doc } = this;
     const parts = partsOf(text, face);
     doc.fillColor(INK[ink]).fontSize(size);
+    if (parts.length > 1 && this.widthOf(parts) <= width) {
+      // Faces differ in height: on one baseline they stand as one line.
+      const [at, anchor] = align === 'right' ? ([x + width, 'end'] as const) : ([x, 'start'] as const);
+      this.line(text, at, y + ASCENT * size, { face, size, colour: INK[ink], anchor });
+      doc.x = x;
+      doc.y = y + LINE_HEIGHT * size;
+      return;
+    }
     for (const [i, part] of parts.entries()) {
       doc.font(part.face);
       const options = { width, align, continued: i < parts.length - 1 };
@@ -236,16 +244,17 @@ export class Sheet {
   ): void {
     const { doc } = this;
     doc.fontSize(look.size).fillColor(look.colour);
-    const parts = partsOf(text, look.face).map((part) => ({
-      ...part,
-      width: doc.font(part.face).widthOfString(part.text),
-    }));
-    const width = parts.reduce((sum, part) => sum + part.width, 0);
+    const parts = partsOf(text, look.face);
+    const width = this.widthOf(parts);
     let at = x - { start: 0, middle: width / 2, end: width }[look.anchor];
     for (const part of parts) {
       doc.font(part.face).text(part.text, at, y, { lineBreak: false, baseline: 'alphabetic' });
-      at += part.width;
+      at += doc.widthOfString(part.text);
     }
+  }
+
+  private widthOf(parts: readonly { text: string; face: Face }[]): number {
+    return parts.reduce((sum, part) => sum + this.doc.font(part.face).widthOfString(part.text), 0);
   }
 }
 
@@ -258,6 +267,9 @@ const partsOf = (text: string, face: Face): { text: string; face: Face }[] =>
     .filter((part) => part !== '')
     .map((part) => ({ text: part, face: GREEK.test(part) ? 'greek' : face }));
 
+/** Of the faces of words, in their size. */
+const ASCENT = 1;
+const LINE_HEIGHT = 1.2;
 const CELL_PT = 8.5;
 const CELL_GAP = 3;
 const GUTTER = 8;

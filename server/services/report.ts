@@ -20,7 +20,7 @@ import { findSet, getVersion } from './versions';
 
 /** Throws 404 for a version that is not in the workspace. */
 export async function makeReport(ctx: Context, actor: Actor, setId: string, number: number): Promise<Report> {
-  const set = await findSet(ctx, actor, setId);
+  const set = await (await findSet(ctx, actor, setId)).reload({ include: ['vehicle'] });
   const version = await getVersion(ctx, actor, setId, number);
   const matrix = version.evidence
     ? {

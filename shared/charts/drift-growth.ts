@@ -1,0 +1,25 @@
+/** Drift of a run's windows as its chart takes it. Pure. */
+import type { ReportRun } from '../contracts/report';
+import type { DriftGrowthData } from './plots';
+
+/** Quantile of the Rayleigh distribution over its RMS: 95 % of the errors of a round covariance lie below. */
+const P95_OVER_RMS = Math.sqrt(-Math.log(0.05));
+
+/** Each window from its start; the prediction is the RMS over the windows at each time that they share. */
+export function driftGrowthOf(windows: ReportRun['windows']): DriftGrowthData {
+  const times = [...new Set(windows.flatMap((points) => points.map(({ afterS }) => afterS)))].sort(
+    (a, b) => a - b,
+  );
+  const predicted = times.map((afterS) => {
+    const squares = windows.flatMap((points) =>
+      points.filter((point) => point.afterS === afterS).map(({ predictedM }) => predictedM ** 2),
+    );
+    const sigmaM = Math.sqrt(squares.reduce((sum, square) => sum + square, 0) / squares.length);
+    return { afterS, sigmaM, p95M: P95_OVER_RMS * sigmaM };
+  });
+  return {
+    windows: windows.map((points) => [{ afterS: 0, errorM: 0 }, ...points]),
+    predicted: [{ afterS: 0, sigmaM: 0, p95M: 0 }, ...predicted],
+    longestS: times[times.length - 1] ?? 0,
+  };
+}
