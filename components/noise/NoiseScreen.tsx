@@ -79,7 +79,7 @@ function Loaded({ recording }: { recording: Recording }) {
       <FirstHint hint="noise" />
       <StretchCard
         recording={recording}
-        found={longest.data?.stretchesS ?? []}
+        found={longest.isPending ? null : (longest.data?.stretchesS ?? [])}
         chosen={span}
         analysis={analysis ?? null}
         onChoose={setSpan}

@@ -14,8 +14,8 @@ import { TypedTimes } from './TypedTimes';
 
 export interface StretchCardProps {
   recording: Recording;
-  /** Found at rest, the longest first. */
-  found: readonly Stretch[];
+  /** Found at rest, the longest first; null while they are looked for. */
+  found: readonly Stretch[] | null;
   /** Null: the longest of those found. */
   chosen: Stretch | null;
   /** Of the chosen stretch; null while it is worked out, or where there is none. */
@@ -24,7 +24,8 @@ export interface StretchCardProps {
 }
 
 /** Which stretch is analysed: one of those found at rest, one drawn on the strip, or typed times. */
-export function StretchCard({ recording, found, chosen, analysis, onChoose }: StretchCardProps) {
+export function StretchCard({ recording, found: known, chosen, analysis, onChoose }: StretchCardProps) {
+  const found = known ?? [];
   const [drag, setDrag] = useState<Stretch | null>(null);
   const shown = drag ?? chosen ?? found[0] ?? null;
   const at = shown ? found.findIndex((one) => isSame(one, shown)) : -1;
@@ -43,7 +44,7 @@ export function StretchCard({ recording, found, chosen, analysis, onChoose }: St
             }}
           />
           <Text variant="label" tone="soft">
-            {`${found.length > 0 ? 'Tap a green stretch, found at rest, or drag' : 'Nothing was found at rest. Drag'} across the strip to draw one; its edges resize it.`}
+            {`${howTo(known)} across the strip to draw one; its edges resize it.`}
           </Text>
         </>
       ) : null}
@@ -74,6 +75,10 @@ export function StretchCard({ recording, found, chosen, analysis, onChoose }: St
   );
 }
 
+const howTo = (found: readonly Stretch[] | null) => {
+  if (found === null) return 'Stretches at rest are being looked for. Or drag';
+  return found.length > 0 ? 'Tap a green stretch, found at rest, or drag' : 'Nothing was found at rest. Drag';
+};
 const words = ([from, to]: Stretch) =>
   `${formatClock(from)}–${formatClock(to)} (${formatDuration(to - from)})`;
 const isSame = (a: Stretch, b: Stretch) => a[0] === b[0] && a[1] === b[1];

@@ -122,6 +122,6 @@ const styles = StyleSheet.create({
     columnGap: space.m,
   },
   grid: { flexDirection: 'row', flexWrap: 'wrap', gap: space.m },
-  half: { flexBasis: 400, flexGrow: 1, minWidth: 0 },
+  half: { flexBasis: '45%', flexGrow: 1, minWidth: 0 },
   whole: { width: '100%' },
 });

@@ -31,7 +31,7 @@ export interface WaitingInput {
   now: Date;
 }
 
-/** Under way first, then what needs a hand, then what failed. Readers see what is under way only. */
+/** Under way first, then what needs a hand, what failed, and what others are waited for. Readers see what is under way only. */
 export function waitingFor({ recordings, sets, runs, person, now }: WaitingInput): Waiting[] {
   const { role } = person;
   const items = [
@@ -41,10 +41,11 @@ export function waitingFor({ recordings, sets, runs, person, now }: WaitingInput
   ];
   return items
     .filter(({ progress }) => progress !== null || can(role, 'set:draft'))
-    .sort((a, b) => ORDER.indexOf(a.tone) - ORDER.indexOf(b.tone));
+    .sort((a, b) => rank(a) - rank(b));
 }
 
-const ORDER: readonly WaitingTone[] = ['petrol', 'ochre', 'vermilion'];
+const ORDER: readonly WaitingTone[] = ['ochre', 'vermilion', 'petrol'];
+const rank = ({ progress, tone }: Waiting) => (progress === null ? ORDER.indexOf(tone) : -1);
 
 function recordingItem(recording: Recording): Waiting | null {
   const { id, name, status } = recording;

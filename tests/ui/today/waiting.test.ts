@@ -24,7 +24,7 @@ const found = (input: Partial<WaitingInput>) =>
     recordings: [], sets: [], runs: [], person: { name: 'Tobin', role: 'approver' }, now: NOW, ...input,
   }); // prettier-ignore
 
-test('what is under way comes first, what failed last; each leads on', () => {
+test('what is under way comes first, then what needs a hand, then what failed; each leads on', () => {
   const one = (id: string, status: 'decoding' | 'needs-mapping' | 'rejected' | 'ready') =>
     recordingOf({ id, status, progress: 0.4 });
   const recordings = [
@@ -54,6 +54,9 @@ test('a version waits for an approver who did not write it, and everybody else w
   ] as const)
     // prettier-ignore
     expect(found({ sets, person })[0]!.sentence).toMatch(/Waits for an approver/);
+  const person = { name: 'Ilsa', role: 'engineer' } as const;
+  const all = found({ sets, person, recordings: [recordingOf({ status: 'rejected' })] });
+  expect(all.map(({ word }) => word)).toEqual(['rejected', 'in review']);
 });
 
 test('a returned version says whose it is', () => {
