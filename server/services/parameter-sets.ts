@@ -38,7 +38,7 @@ export async function listSets(
   });
   const versions = await ctx.db.SetVersion.findAll({
     where: { setId: items.map((set) => set.id) },
-    attributes: { exclude: ['parameters', 'outages'] },
+    attributes: { exclude: ['parameters', 'outages', 'evidence'] },
     include: ['createdBy'],
     order: [['number', 'DESC']],
   });

@@ -289,9 +289,24 @@ async function refuseWhileRested(
     },
     transaction,
   });
-  if (!version) return;
-  const set = await ctx.db.ParameterSet.findByPk(version.setId, { transaction });
+  const verified = version ?? (await versionVerifiedOn(ctx, id, transaction));
+  if (!verified) return;
+  const set = await ctx.db.ParameterSet.findByPk(verified.setId, { transaction });
   throw inUse(
-    `“${recording.name}” cannot be deleted: version ${version.number} of “${set?.name}” (${version.state}) rests on it, and its evidence must stay.`,
+    `“${recording.name}” cannot be deleted: version ${verified.number} of “${set?.name}” (${verified.state}) rests on it, and its evidence must stay.`,
   );
+}
+
+/** One that is or was on its way to a vehicle, and was verified on the recording. */
+async function versionVerifiedOn(ctx: Context, recordingId: string, transaction: Transaction) {
+  const runs = await ctx.db.VerificationRun.findAll({
+    where: { recordingId },
+    attributes: ['versionId'],
+    transaction,
+  });
+  const state = ['in-review' as const, 'released' as const, 'superseded' as const];
+  return ctx.db.SetVersion.findOne({
+    where: { id: runs.map(({ versionId }) => versionId), state },
+    transaction,
+  });
 }

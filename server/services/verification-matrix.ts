@@ -47,7 +47,8 @@ export async function loadMatrix(
     order: [['name', 'ASC'], ['id', 'ASC']],
     transaction,
   }); // prettier-ignore
-  const judged = await ctx.db.VerificationCell.findAll({ where, include: ['run'], transaction });
+  const run = { association: 'run', attributes: { exclude: ['parameters', 'biasSigma'] } };
+  const judged = await ctx.db.VerificationCell.findAll({ where, include: [run], transaction });
   const waivers = await ctx.db.Waiver.findAll({ where, include: ['createdBy'], transaction });
   const cells = requirements.flatMap((requirement) =>
     recordings

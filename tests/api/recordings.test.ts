@@ -238,16 +238,23 @@ describe('recordings', () => {
 
   it('stay while a version that was submitted rests on them, and say so', async () => {
     const engineer = await buildMember(api, 'engineer');
-    const { id } = await upload(engineer);
-    const version = { note: 'x', parameters: {}, recordingId: id };
-    await engineer.post('/parameter-sets', { name: 'Harbour set', version });
-    await api.ctx.db.SetVersion.update({ state: 'in-review' }, { where: { recordingId: id } });
-    const refused = await engineer.delete(`/recordings/${id}`);
+    const vehicleId = (await buildVehicle(engineer)).id;
+    const drafted = async (name: string) => {
+      const { id } = await upload(engineer);
+      const version = { note: name, parameters: {}, recordingId: id };
+      const set = (await engineer.post('/parameter-sets', { name, vehicleId, version })).body as {
+        id: string;
+      };
+      return { id, path: `/parameter-sets/${set.id}/versions/1` };
+    };
+    const submitted = await drafted('Harbour set');
+    await engineer.post(`${submitted.path}/submit`);
+    const refused = await engineer.delete(`/recordings/${submitted.id}`);
     expect(refused.status).toBe(409);
     expect(problemOf(refused).detail).toContain('version 1 of “Harbour set”');
-    await api.ctx.db.SetVersion.update({ state: 'draft' }, { where: { recordingId: id } });
-    expect((await engineer.delete(`/recordings/${id}`)).status).toBe(204);
-    expect(await api.ctx.db.SetVersion.count({ where: { recordingId: null, note: 'x' } })).toBe(1);
+    const draft = await drafted('Open draft');
+    expect((await engineer.delete(`/recordings/${draft.id}`)).status).toBe(204);
+    expect((await engineer.get(draft.path)).body).toMatchObject({ recordingId: null, note: 'Open draft' });
   });
 
   it('of another workspace do not exist here, and a viewer changes none', async () => {

@@ -193,6 +193,16 @@ describe('verification', () => {
       ['pass', null],
       ['fail', waiver.text],
     ]);
+
+    for (const { id } of evidence!.requirements) {
+      expect((await engineer.delete(`/requirements/${id}`)).status).toBe(204);
+    }
+    const refused = await engineer.delete(`/recordings/${second.id}`);
+    expect(problemOf(refused)).toMatchObject({
+      status: 409,
+      detail: expect.stringContaining('(released) rests on it'),
+    });
+    expect((await verificationOf(engineer, path)).evidence?.cells).toEqual(evidence!.cells);
   });
 
   it('is replaced by a written reason where there is no requirement', async () => {
