@@ -2,7 +2,6 @@ import { placeOf } from '@/components/recordings/ProblemsCard';
 import { statusWord } from '@/components/recordings/status';
 import { times } from '@/components/recordings/HealthCard';
 import { nameFromFile } from '@/components/recordings/UploadScreen';
-import { waitingFor } from '@/components/today/waiting';
 import { recordingOf } from './fixtures';
 
 test.each([
@@ -38,19 +37,4 @@ test.each([
   ['Quay wall.txt', 'Quay wall'],
 ])('%s suggests the name "%s"', (file, name) => {
   expect(nameFromFile(file)).toBe(name);
-});
-
-describe('what waits', () => {
-  const all = [
-    recordingOf({ name: 'a' }),
-    recordingOf({ name: 'b', status: 'rejected' }),
-    recordingOf({ name: 'c', status: 'needs-mapping' }),
-    recordingOf({ name: 'd', status: 'decoding', progress: 0.5 }),
-  ];
-  test('for those who can do something about it: all but what is ready', () => {
-    expect(waitingFor(all, true).map((item) => item.recording.name)).toEqual(['d', 'c', 'b']);
-  });
-  test('for readers: what is under way', () => {
-    expect(waitingFor(all, false).map((item) => item.recording.name)).toEqual(['d']);
-  });
 });
