@@ -1,6 +1,5 @@
 /** Which unit each quantity is shown in, as a person chose it; what was not chosen has its default. Pure. */
-import { formatNumber } from './format';
-import { defaultUnit, QUANTITIES, toDisplay, type DisplayUnit, type Quantity } from './units';
+import { defaultUnit, QUANTITIES, type DisplayUnit, type Quantity } from './units';
 
 /** Symbol of the unit of each quantity that was chosen. */
 export type DisplayUnits = Partial<Record<Quantity, string>>;
@@ -51,10 +50,4 @@ export function scaleOf(
 ): { symbol: string; factor: number } {
   const { symbol, toSi } = displayUnit(quantity, chosen);
   return { symbol, factor: siPerRaw / toSi };
-}
-
-/** An SI value in words: "0.3 °/√h". */
-export function quantityText(si: number, quantity: Quantity, chosen: DisplayUnits = {}, digits = 3): string {
-  const unit = displayUnit(quantity, chosen);
-  return `${formatNumber(toDisplay(si, unit), digits)} ${unit.symbol}`;
 }

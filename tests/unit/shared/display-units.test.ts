@@ -1,5 +1,5 @@
 import { defaultParameters } from '@/shared/contracts/parameters';
-import { chosenUnit, displayUnit, quantityText, scaleOf } from '@/shared/display-units';
+import { chosenUnit, displayUnit, scaleOf } from '@/shared/display-units';
 import { PARAMETER_LIST } from '@/shared/parameters/parameter-list';
 import { readPath } from '@/shared/parameters/parameter-path';
 import { shownValue, unitSymbol } from '@/shared/parameters/parameter-words';
@@ -8,15 +8,17 @@ import { RAD_PER_DEG } from '@/shared/units';
 const field = (path: string) => PARAMETER_LIST.find((one) => one.path === path)!;
 
 test.each([
-  ['angleRandomWalk', '°/s/√Hz', RAD_PER_DEG, '1.00 °/s/√Hz'],
-  ['gyroBias', 'rad/s', 0.25, '0.250 rad/s'],
-  ['accelBias', 'm/s²', 9.80665, '9.81 m/s²'],
-  ['accelBias', undefined, 9.80665, '1000 mg'],
-  ['angle', 'mrad', 0.002, '2.00 mrad'],
-  ['length', 'ft', 0.3048, '1.00 ft'],
-  ['speed', 'kn', 1852 / 3600, '1.00 kn'],
-] as const)('%s in %s', (quantity, symbol, si, text) => {
-  expect(quantityText(si, quantity, { [quantity]: symbol })).toBe(text);
+  ['angleRandomWalk', '°/s/√Hz', RAD_PER_DEG, 1, '°/s/√Hz'],
+  ['gyroBias', 'rad/s', 0.25, 0.25, 'rad/s'],
+  ['accelBias', 'm/s²', 9.80665, 9.80665, 'm/s²'],
+  ['accelBias', undefined, 9.80665, 1000, 'mg'],
+  ['angle', 'mrad', 0.002, 2, 'mrad'],
+  ['length', 'ft', 0.3048, 1, 'ft'],
+  ['speed', 'kn', 1852 / 3600, 1, 'kn'],
+] as const)('%s in %s', (quantity, chosen, si, value, symbol) => {
+  const scale = scaleOf(quantity, { [quantity]: chosen });
+  expect(scale.symbol).toBe(symbol);
+  expect(si * scale.factor).toBeCloseTo(value, 9);
 });
 
 test('a symbol that the quantity does not have counts as not chosen', () => {
