@@ -54,7 +54,11 @@ afterEach(() => {
 
 test('the bench is held until its recording is known, then opens on it', async () => {
   let answer: (response: Response) => void = () => undefined;
-  globalThis.fetch = () => new Promise((resolve) => (answer = resolve));
+  // What else the card asks for (its history, its comments) stays on its way.
+  globalThis.fetch = (input) =>
+    new Promise((resolve) => {
+      if (String(input).includes('/recordings/')) answer = resolve;
+    });
   show(set(recording.id));
   expect(bench()).toBeDisabled();
   expect(screen.getByRole('button', { name: 'On another recording' })).toBeEnabled();
