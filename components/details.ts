@@ -2,5 +2,6 @@
 export { RecordingScreen } from './recordings/RecordingScreen';
 export { EditRequirementScreen, NewRequirementScreen } from './requirements/EditRequirementScreen';
 export { SetScreen } from './sets/SetScreen';
+export { AuditScreen } from './team/AuditScreen';
 export { NewVehicleScreen, VehicleScreen } from './vehicles/VehicleScreen';
 export { MatrixScreen } from './verification/MatrixScreen';

@@ -10,6 +10,7 @@ export const CompareScreen = fetched('Compare', async () => (await lab()).Compar
 export const ReportScreen = fetched('Report', async () => (await lab()).ReportScreen);
 export const NoiseScreen = fetched('Sensor noise', async () => (await lab()).NoiseScreen);
 
+export const AuditScreen = fetched('Audit trail', async () => (await details()).AuditScreen);
 export const RecordingScreen = fetched('Recording', async () => (await details()).RecordingScreen);
 export const SetScreen = fetched('Parameter set', async () => (await details()).SetScreen);
 export const MatrixScreen = fetched('Verification', async () => (await details()).MatrixScreen);

@@ -25,6 +25,7 @@ export const MORE_PLACES: readonly Place[] = [
   { name: 'requirements', label: 'Requirements', href: '/requirements', icon: 'check' },
   { name: 'team', label: 'Team', href: '/team', icon: 'team', needs: 'team:manage' },
   { name: 'mail', label: 'Mail', href: '/mail', icon: 'mail', needs: 'mail:read' },
+  { name: 'audit', label: 'Audit', href: '/audit', icon: 'file', needs: 'audit:read' },
   { name: 'profile', label: 'Profile', href: '/profile', icon: 'person' },
 ];
 

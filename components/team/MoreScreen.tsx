@@ -14,6 +14,7 @@ const LINES: Record<string, string> = {
   requirements: 'Limits that a set must keep before it is released',
   team: 'Members, roles, invitations',
   mail: 'Letters of this installation',
+  audit: 'Who changed what, when, from where',
   profile: 'Theme, workspace, sign out',
 };
 

@@ -1,3 +1,4 @@
+import { space } from '@/constants/theme';
 import { View } from 'react-native';
 import { Screen } from '@/components/layout/Screen';
 import { useBreakpoint } from '@/components/layout/use-breakpoint';
@@ -9,6 +10,7 @@ import { Text } from '@/components/ui/Text';
 import { useTheme, type ThemeChoice } from '@/components/ui/ThemeProvider';
 import { useSession, useSignOut } from '@/hooks/session';
 import { ROLE_SUMMARY } from '@/shared/contracts/roles';
+import { LeaveButton, SessionsCard } from './SessionsCard';
 import { UnitsCard } from './UnitsCard';
 
 const THEMES: { value: ThemeChoice; label: string }[] = [
@@ -52,8 +54,10 @@ export function ProfileScreen() {
         <Choice label="Theme" shape="segments" options={THEMES} value={choice} onChange={setChoice} />
       </Card>
       <UnitsCard />
-      <View style={{ flexDirection: 'row' }}>
+      <SessionsCard />
+      <View style={{ flexDirection: 'row', flexWrap: 'wrap', gap: space.m }}>
         <Button label="Sign out" icon="leave" busy={signOut.isPending} onPress={() => signOut.mutate()} />
+        <LeaveButton />
       </View>
     </Screen>
   );

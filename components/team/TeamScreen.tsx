@@ -4,6 +4,8 @@ import { NoPermission } from '@/components/ui/NoPermission';
 import { useCan, useSession } from '@/hooks/session';
 import { InvitationsCard } from './InvitationsCard';
 import { MembersCard } from './MembersCard';
+import { TokensCard } from './TokensCard';
+import { WorkspaceCard } from './WorkspaceCard';
 
 /** Who belongs to the workspace, with which role, and who is invited. */
 export function TeamScreen() {
@@ -16,6 +18,8 @@ export function TeamScreen() {
         <>
           <MembersCard />
           <InvitationsCard />
+          <TokensCard />
+          <WorkspaceCard />
         </>
       ) : (
         <NoPermission message="Only an admin manages members, roles and invitations." />

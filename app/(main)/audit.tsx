@@ -1,0 +1,5 @@
+import { AuditScreen } from '@/components/layout/fetched-screens';
+
+export default function Audit() {
+  return <AuditScreen />;
+}
