@@ -39,6 +39,7 @@ const WORDS: Record<string, string> = {
   'version.verification-started': 'Verification started',
   'workspace.created': 'Workspace made',
   'workspace.deleted': 'Workspace deleted',
+  'workspace.exported': 'All data exported',
 };
 
 /** An action without words of its own is told by its name. */
