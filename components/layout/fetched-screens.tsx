@@ -11,6 +11,8 @@ export const ReportScreen = fetched('Report', async () => (await lab()).ReportSc
 export const NoiseScreen = fetched('Sensor noise', async () => (await lab()).NoiseScreen);
 
 export const AuditScreen = fetched('Audit trail', async () => (await details()).AuditScreen);
+export const UploadScreen = fetched('Upload a recording', async () => (await details()).UploadScreen);
+export const MappingScreen = fetched('Mapping', async () => (await details()).MappingScreen);
 export const RecordingScreen = fetched('Recording', async () => (await details()).RecordingScreen);
 export const SetScreen = fetched('Parameter set', async () => (await details()).SetScreen);
 export const MatrixScreen = fetched('Verification', async () => (await details()).MatrixScreen);

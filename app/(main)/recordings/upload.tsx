@@ -1,1 +1,1 @@
-export { UploadScreen as default } from '@/components/recordings/UploadScreen';
+export { UploadScreen as default } from '@/components/layout/fetched-screens';

@@ -1,5 +1,5 @@
 import { useLocalSearchParams } from 'expo-router';
-import { MappingScreen } from '@/components/recordings/mapping/MappingScreen';
+import { MappingScreen } from '@/components/layout/fetched-screens';
 
 export default function MappingRoute() {
   const { id } = useLocalSearchParams<{ id: string }>();
