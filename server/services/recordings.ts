@@ -14,13 +14,14 @@ import type { ScenarioRequest } from '@/shared/contracts/scenarios';
 import { IDENTITY_AXES } from '@/shared/contracts/vehicles';
 import { JobCancelled, storeKeys } from '@/workers';
 import type { Actor, Context } from '../context';
-import { conflict, inUse, invalid, noSuch } from '../errors';
+import { conflict, invalid, noSuch } from '../errors';
 import type { Recording } from '../models/recording';
 import { recordBy } from './audit';
 import { announce, decodeJobOf, redecode, sendDecode } from './decoding';
 import { discardFiles } from './discard';
 import { type Found, newestFirst, sortOf } from './paging';
 import { nameOrVehicle } from './search';
+import { refuseWhileRested } from './recording-rests';
 import { sameAxes } from './vehicles';
 
 /** A file of an upload, received whole into a temporary place. */
@@ -266,47 +267,4 @@ async function checkVehicle(ctx: Context, actor: Actor, vehicleId: string | null
   if (vehicle) return vehicle;
   const message = 'There is no such vehicle in this workspace.';
   throw invalid(message, { errors: [{ path: 'vehicleId', message }] });
-}
-
-async function refuseWhileRested(
-  ctx: Context,
-  recording: Recording,
-  transaction: Transaction,
-): Promise<void> {
-  const { id } = recording;
-  const runs = await ctx.db.Run.findAll({ where: { recordingId: id }, attributes: ['id'], transaction });
-  const judged = await ctx.db.RequirementRecording.findOne({ where: { recordingId: id }, transaction });
-  if (judged) {
-    const requirement = await ctx.db.Requirement.findByPk(judged.requirementId, { transaction });
-    throw inUse(
-      `“${recording.name}” cannot be deleted: the requirement “${requirement?.name}” is judged on it. Take it out of the requirement first.`,
-    );
-  }
-  const version = await ctx.db.SetVersion.findOne({
-    where: {
-      state: { [Op.ne]: 'draft' },
-      [Op.or]: [{ recordingId: id }, { runId: runs.map((run) => run.id) }],
-    },
-    transaction,
-  });
-  const verified = version ?? (await versionVerifiedOn(ctx, id, transaction));
-  if (!verified) return;
-  const set = await ctx.db.ParameterSet.findByPk(verified.setId, { transaction });
-  throw inUse(
-    `“${recording.name}” cannot be deleted: version ${verified.number} of “${set?.name}” (${verified.state}) rests on it, and its evidence must stay.`,
-  );
-}
-
-/** One that is or was on its way to a vehicle, and was verified on the recording. */
-async function versionVerifiedOn(ctx: Context, recordingId: string, transaction: Transaction) {
-  const runs = await ctx.db.VerificationRun.findAll({
-    where: { recordingId },
-    attributes: ['versionId'],
-    transaction,
-  });
-  const state = ['in-review' as const, 'released' as const, 'superseded' as const];
-  return ctx.db.SetVersion.findOne({
-    where: { id: runs.map(({ versionId }) => versionId), state },
-    transaction,
-  });
 }

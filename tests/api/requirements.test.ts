@@ -37,7 +37,7 @@ describe('requirements', () => {
     const requirement = made.body as Requirement;
     expect(requirement).toMatchObject({
       unit: 'm',
-      sentence: 'Horizontal drift after 30 s of coasting, 95th percentile: at most 15 m',
+      sentence: 'Horizontal drift after 30 s of coasting, 95th percentile: at most 15\u00a0m',
       vehicleName: vehicle.name,
       recordings: [{ id: recording.id, name: recording.name }],
       schedule: { kind: 'every', everyS: 60, forS: 30, firstAfterS: 60, withhold: 'gnss' },

@@ -148,10 +148,10 @@ describe('a schedule', () => {
 describe('the words', () => {
   it('give limits with their units, shares in percent', () => {
     expect(requirementSentence(drift('p95', 60), 'at-most', 15)).toBe(
-      'Horizontal drift after 60 s of coasting, 95th percentile: at most 15 m',
+      'Horizontal drift after 60 s of coasting, 95th percentile: at most 15\u00a0m',
     );
     expect(requirementSentence({ kind: 'rejected-share', group: 'position' }, 'at-most', 0.02)).toBe(
-      'Rejected share of position measurements: at most 2 %',
+      'Rejected share of position measurements: at most 2\u00a0%',
     );
     expect(requirementSentence({ kind: 'nis-mean', group: 'velocity' }, 'inside-bounds', null)).toBe(
       'Mean NIS of velocity: inside its 95 % bounds',
