@@ -5,6 +5,7 @@ import {
   type Requirement,
   type RequirementInput,
   requirementInputSchema,
+  scheduleSchema,
 } from '@/shared/contracts/requirements';
 import { isShare } from '@/shared/requirements/metric-words';
 import { requirementFaults } from '@/shared/requirements/requirement-faults';
@@ -136,23 +137,25 @@ export function toInput(form: RequirementForm): { input: RequirementInput } | { 
         },
       ],
     };
+  const metric = metricOf(form);
+  const [comparison, limit] = [comparisonOf(form), limitOf(form)];
   const parsed = requirementInputSchema.safeParse({
     name: form.name,
     vehicleId: form.vehicleId === ANY_VEHICLE ? null : form.vehicleId,
-    metric: metricOf(form),
-    comparison: comparisonOf(form),
-    limit: limitOf(form),
+    metric,
+    comparison,
+    limit,
     recordingIds: form.recordingIds,
     schedule,
   });
-  if (!parsed.success)
-    return {
-      faults: parsed.error.issues.map(({ path, message }) => ({ field: fieldOf(path.join('.')), message })),
-    };
-  const faults = requirementFaults(parsed.data);
-  return faults.length > 0
-    ? { faults: faults.map(({ path, message }) => ({ field: fieldOf(path), message })) }
-    : { input: parsed.data };
+  const told = parsed.success
+    ? []
+    : parsed.error.issues.map(({ path, message }) => ({ field: fieldOf(path.join('.')), message }));
+  const shape = scheduleSchema.safeParse(schedule);
+  // What does not hold together is told with what is missing, all at once.
+  const whole = shape.success ? requirementFaults({ metric, comparison, limit, schedule: shape.data }) : [];
+  const faults = [...told, ...whole.map(({ path, message }) => ({ field: fieldOf(path), message }))];
+  return parsed.success && faults.length === 0 ? { input: parsed.data } : { faults };
 }
 
 function scheduleOf(form: RequirementForm): unknown {

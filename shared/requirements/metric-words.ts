@@ -60,8 +60,9 @@ export function metricWords(metric: Metric): string {
 /** "Horizontal drift after 60 s of coasting, 95th percentile: at most 15 m". */
 export function requirementSentence(metric: Metric, comparison: Comparison, limit: number | null): string {
   const words = metricWords(metric);
-  if (comparison === 'inside-bounds' || limit === null) return `${words}: inside its 95 % bounds`;
-  return `${words}: ${comparison === 'at-most' ? 'at most' : 'at least'} ${limitWords(metric, limit)}`;
+  if (comparison === 'inside-bounds') return `${words}: inside its 95 % bounds`;
+  const amount = limit === null ? '…' : limitWords(metric, limit);
+  return `${words}: ${comparison === 'at-most' ? 'at most' : 'at least'} ${amount}`;
 }
 
 /** A limit as it was typed, with its unit; shares in percent. */
