@@ -1,5 +1,5 @@
 /** The audit trail, newest first. */
-import { useInfiniteQuery } from '@tanstack/react-query';
+import { keepPreviousData, useInfiniteQuery } from '@tanstack/react-query';
 import type { AuditEntry, AuditFilter } from '@/shared/contracts/accounts';
 import type { Page } from '@/shared/contracts/common';
 import { api, downloadUrl } from './api';
@@ -9,6 +9,7 @@ export function useAudit(filter: AuditFilter) {
     queryKey: ['audit', filter],
     queryFn: ({ pageParam, signal }) =>
       api<Page<AuditEntry>>('/audit', { query: { ...filter, cursor: pageParam, limit: 50 }, signal }),
+    placeholderData: keepPreviousData,
     initialPageParam: '',
     getNextPageParam: (page) => page.nextCursor ?? undefined,
   });
