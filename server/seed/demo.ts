@@ -4,11 +4,13 @@ import {
   DEMO_PASSWORD,
   DEMO_PEOPLE,
   DEMO_RECORDINGS,
+  DEMO_REQUIREMENTS,
   DEMO_SETS,
   DEMO_VEHICLES,
   DEMO_WORKSPACE,
 } from '@/fixtures/demo-scenario';
 import { parametersSchema } from '@/shared/contracts/parameters';
+import { requirementInputSchema } from '@/shared/contracts/requirements';
 import { scenarioSchema } from '@/shared/contracts/scenarios';
 import { IDENTITY_AXES } from '@/shared/contracts/vehicles';
 import type { Context } from '../context';
@@ -33,6 +35,7 @@ export async function seedDemo(ctx: Context): Promise<boolean> {
     const vehicles = await seedVehicles(ctx, workspace.id, transaction);
     const recordings = await seedRecordings(ctx, owner, vehicles, transaction);
     await seedSets(ctx, owner, vehicles, recordings, transaction);
+    await seedRequirements(ctx, owner, vehicles, recordings, transaction);
     ctx.log.info({ workspace: DEMO_WORKSPACE }, 'the demonstration was put into the empty database');
     return true;
   });
@@ -115,5 +118,34 @@ async function seedSets(
       },
       { transaction },
     );
+  }
+}
+
+async function seedRequirements(
+  ctx: Context,
+  owner: Owner,
+  vehicles: Ids,
+  recordings: Ids,
+  transaction: Transaction,
+): Promise<void> {
+  for (const { vehicle, recordings: names, requirement } of DEMO_REQUIREMENTS) {
+    const { name, metric, comparison, limit, schedule, recordingIds } = requirementInputSchema.parse({
+      ...requirement,
+      recordingIds: names.map((one) => recordings.get(one)),
+    });
+    const vehicleId = vehicles.get(vehicle) ?? null;
+    const row = {
+      ...owner,
+      vehicleId,
+      name,
+      metric,
+      comparison,
+      limitValue: limit,
+      schedule,
+      changedAt: ctx.clock(),
+    };
+    const { id } = await ctx.db.Requirement.create(row, { transaction });
+    const judgedOn = recordingIds.map((recordingId) => ({ requirementId: id, recordingId }));
+    await ctx.db.RequirementRecording.bulkCreate(judgedOn, { transaction });
   }
 }

@@ -2,6 +2,7 @@ import {
   DEMO_PASSWORD,
   DEMO_PEOPLE,
   DEMO_RECORDINGS,
+  DEMO_REQUIREMENTS,
   DEMO_SETS,
   DEMO_VEHICLES,
 } from '@/fixtures/demo-scenario';
@@ -41,6 +42,8 @@ describe('the demonstration', () => {
     expect(await names('/recordings')).toEqual(DEMO_RECORDINGS.map((recording) => recording.name));
     expect((await names('/vehicles')).sort()).toEqual(DEMO_VEHICLES.map((vehicle) => vehicle.name).sort());
     expect((await names('/parameter-sets')).sort()).toEqual(DEMO_SETS.map((set) => set.name).sort());
+    const required = DEMO_REQUIREMENTS.map(({ requirement }) => requirement.name);
+    expect((await names('/requirements')).sort()).toEqual(required.sort());
   });
 
   it('is put into an empty database alone, and once', async () => {

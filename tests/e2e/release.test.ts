@@ -5,6 +5,7 @@ import { DEMO_PASSWORD, DEMO_PEOPLE } from '@/fixtures/demo-scenario';
 import type { ExportDocument } from '@/shared/contracts/exports';
 import type { Verification } from '@/shared/contracts/verification';
 import type { Role } from '@/shared/contracts/roles';
+import { formatNumber } from '@/shared/format';
 import { launchBrowser, openWindow } from '@/tests/support/browser';
 import { needPoppler, pdfText } from '@/tests/support/pdf-text';
 import { Person } from '@/tests/support/person';
@@ -103,7 +104,7 @@ test('the engineer goes on with a draft from it, verifies and submits', async ()
   await button(page, /^Save$/).click();
   await page.getByText('The same figures, verified.').first().waitFor();
   await button(page, /^Verify$/).click();
-  await settled(page, /^0 of 1 pass, 1 fail$/);
+  await settled(page, /^2 of 3 pass, 1 fail$/);
   await button(page, 'Submit for review').click();
   await settled(page, /^Submitted by/);
 });
@@ -112,7 +113,7 @@ test('the lead cannot release what fails, waives it in writing, and releases', a
   const page = windows.lead;
   await version(page, 2);
   await button(page, /^Release$/).click();
-  await page.getByText('1 of 1 cells stand in the way').waitFor();
+  await page.getByText('1 of 3 cells stand in the way').waitFor();
   await button(page, 'Cancel').click();
   await page.getByRole('link', { name: 'Open the matrix' }).click();
   await button(page, /^Drift after a minute, Breakwater loop 3, fails/).click();
@@ -167,14 +168,15 @@ test('the same is fetched by the page, and the report as a PDF', async () => {
   const { text, pages } = pdfText(readFileSync(await (await report).path()));
   expect(pages.length).toBeGreaterThan(3);
   expect(text).toContain('RELEASED for Crawler 1');
-  expect(text).toContain('0 of 1 cells pass, 1 waived in writing');
+  expect(text).toContain('2 of 3 cells pass, 1 waived in writing');
   expect(text).toContain('The limit was meant in tens of metres; see the drift.');
   const engineer = await Person.signIn(stack.url, emailOf('engineer'), DEMO_PASSWORD);
   const verification = (await engineer.json(
     'GET',
     `/parameter-sets/${setId}/versions/2/verification`,
   )) as Verification;
-  expect(text).toContain(`${Number(verification.evidence!.cells[0]!.value!.toPrecision(3))} m`);
+  const drift = verification.evidence!.cells.find(({ waiver }) => waiver !== null)!;
+  expect(text).toContain(`${formatNumber(drift.value!)} m`);
   await page.getByRole('link', { name: `Read the report of ${SET} v2` }).click();
   await page
     .getByText(/^RELEASED for Crawler 1/)
