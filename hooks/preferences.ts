@@ -7,7 +7,7 @@ import type { DisplayUnits } from '@/shared/display-units';
 import { api } from './api';
 import { SessionContext, sessionKeys } from './session';
 
-const NONE: Preferences = { units: {}, hintsSeen: [] };
+const NONE: Preferences = { units: {}, letters: {}, hintsSeen: [] };
 
 export const usePreferences = (): Preferences => useContext(SessionContext)?.preferences ?? NONE;
 

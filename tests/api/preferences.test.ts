@@ -13,17 +13,21 @@ describe('preferences', () => {
   it('begin empty and are kept with the person, piece by piece', async () => {
     const viewer = await buildMember(api, 'viewer');
     const mine = async () => ((await viewer.get('/me')).body as Me).preferences;
-    expect(await mine()).toEqual({ units: {}, hintsSeen: [] });
+    expect(await mine()).toEqual({ units: {}, letters: {}, hintsSeen: [] });
     const units = { angleRandomWalk: 'rad/√s', length: 'ft' };
     const answer = await viewer.patch('/me/preferences', { units });
     expect(answer.status).toBe(200);
-    expect(preferencesSchema.parse(answer.body)).toEqual({ units, hintsSeen: [] });
+    expect(preferencesSchema.parse(answer.body)).toEqual({ units, letters: {}, hintsSeen: [] });
     await viewer.patch('/me/preferences', { hintsSeen: ['bench'] });
-    expect(await mine()).toEqual({ units, hintsSeen: ['bench'] });
+    expect(await mine()).toEqual({ units, letters: {}, hintsSeen: ['bench'] });
     await viewer.patch('/me/preferences', { units: {} });
-    expect(await mine()).toEqual({ units: {}, hintsSeen: ['bench'] });
+    expect(await mine()).toEqual({ units: {}, letters: {}, hintsSeen: ['bench'] });
     const other = await buildMember(api, 'viewer', viewer.workspaceId);
-    expect(((await other.get('/me')).body as Me).preferences).toEqual({ units: {}, hintsSeen: [] });
+    expect(((await other.get('/me')).body as Me).preferences).toEqual({
+      units: {},
+      letters: {},
+      hintsSeen: [],
+    });
   });
 
   it('two changes at once both hold', async () => {
@@ -34,6 +38,7 @@ describe('preferences', () => {
     ]);
     expect(((await viewer.get('/me')).body as Me).preferences).toEqual({
       units: { speed: 'kn' },
+      letters: {},
       hintsSeen: ['sets'],
     });
   });
@@ -43,7 +48,13 @@ describe('preferences', () => {
     const wrong = await viewer.patch('/me/preferences', { units: { speed: 'furlong' } });
     expect(wrong.status).toBe(422);
     expect(problemOf(wrong).errors?.[0]?.path).toBe('units.speed');
-    for (const body of [{ units: { mass: 'kg' } }, { hintsSeen: ['moon'] }, { theme: 'night' }])
+    for (const body of [
+      { units: { mass: 'kg' } },
+      { hintsSeen: ['moon'] },
+      { theme: 'night' },
+      { letters: { invitation: false } },
+      { letters: { released: 'no' } },
+    ])
       expect((await viewer.patch('/me/preferences', body)).status).toBe(422);
     expect((await api.stranger().patch('/me/preferences', {})).status).toBe(401);
   });
@@ -52,6 +63,10 @@ describe('preferences', () => {
     const viewer = await buildMember(api, 'viewer');
     const preferences = { units: { mass: 'kg' } };
     await api.ctx.db.User.update({ preferences }, { where: { id: viewer.userId } });
-    expect(((await viewer.get('/me')).body as Me).preferences).toEqual({ units: {}, hintsSeen: [] });
+    expect(((await viewer.get('/me')).body as Me).preferences).toEqual({
+      units: {},
+      letters: {},
+      hintsSeen: [],
+    });
   });
 });

@@ -12,7 +12,7 @@ export function sessionOf(role: Role, preferences: Partial<Preferences> = {}): S
   const workspace = { id: '4f0c8a52-0f4e-4a1c-9a55-3d1f0f3b7e01', name: 'Harbour survey', role };
   return {
     user: { id: '4f0c8a52-0f4e-4a1c-9a55-3d1f0f3b7e02', email: 'maren@kelmar.test', name: 'Maren Holt' },
-    preferences: { units: {}, hintsSeen: [...HINTS], ...preferences },
+    preferences: { units: {}, letters: {}, hintsSeen: [...HINTS], ...preferences },
     workspace,
     workspaces: [workspace],
     switchWorkspace: () => undefined,
