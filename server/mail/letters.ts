@@ -44,9 +44,10 @@ export const resetLetter = (to: string, name: string, url: string): Letter =>
       'The link works once, for one hour. If it was not you, do nothing: your password stays as it is.',
   });
 
-function compose({ to, subject, lines, link, closing }: Content): Letter {
+/** A letter in both forms; a line break within a line stays one. */
+export function compose({ to, subject, lines, link, closing }: Content): Letter {
   const text = [...lines, `${link.label}: ${link.url}`, closing].join('\n\n');
-  const paragraph = (words: string) => `<p>${escapeHtml(words)}</p>`;
+  const paragraph = (words: string) => `<p>${escapeHtml(words).replace(/\r?\n/g, '<br>')}</p>`;
   const anchor = `<p><a href="${escapeHtml(link.url)}">${escapeHtml(link.label)}</a></p>`;
   const body = [...lines.map(paragraph), anchor, paragraph(closing)].join('\n');
   const html = `<!doctype html><html lang="en"><body style="font-family: sans-serif">\n${body}\n</body></html>`;

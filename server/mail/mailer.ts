@@ -10,6 +10,7 @@ import { messageOf } from '../error-details';
 import type { Database } from '../models';
 import type { MailMessage } from '../models/messages';
 import type { Letter } from './letters';
+import { queueLetter } from './outbox';
 
 const FIRST_RETRY_MS = 5_000;
 const LONGEST_RETRY_MS = 3_600_000;
@@ -20,8 +21,10 @@ const PATIENCE = { connectionTimeout: 10_000, greetingTimeout: 10_000, socketTim
 const STOP_WAIT_MS = 3_000;
 
 export interface Mailer {
-  /** Queues a letter; it leaves after the transaction is committed. */
-  send(letter: Letter, transaction: Transaction): Promise<void>;
+  /** Queues a letter (outbox.ts); it leaves as soon as the transaction is committed. */
+  send(letter: Letter, transaction: Transaction, workspaceId?: string): Promise<void>;
+  /** Looks at once for what is due, once `transaction` is committed. */
+  wakeAfter(transaction: Transaction): void;
   stop(): Promise<void>;
 }
 
@@ -48,13 +51,13 @@ export function startMailer({ db, smtpUrl, from, log, clock }: MailerOptions): M
       await pause(LOOK_EVERY_MS, AbortSignal.any([wake.signal, stopping.signal]));
     }
   })();
+  const wakeAfter = (transaction: Transaction) => transaction.afterCommit(() => wake.abort());
   return {
-    async send({ to, subject, text, html }, transaction) {
-      const now = clock();
-      const row = { recipient: to, subject, text, html, dueAt: now };
-      await db.MailMessage.create(row, { transaction });
-      transaction.afterCommit(() => wake.abort());
+    async send(letter, transaction, workspaceId) {
+      await queueLetter(db, letter, { workspaceId: workspaceId ?? null, now: clock() }, transaction);
+      wakeAfter(transaction);
     },
+    wakeAfter,
     async stop() {
       stopping.abort();
       await Promise.race([loop, pause(STOP_WAIT_MS, AbortSignal.timeout(STOP_WAIT_MS))]);

@@ -37,6 +37,15 @@ export async function startMailSink(db: Database, log: Logger): Promise<MailSink
 }
 
 async function keep(db: Database, recipients: string[], raw: Buffer): Promise<void> {
-  const { subject, text } = readLetter(raw.toString('latin1'));
-  await db.SinkLetter.bulkCreate(recipients.map((recipient) => ({ recipient, subject, text })));
+  const letter = raw.toString('latin1');
+  const { subject, text } = readLetter(letter);
+  const workspaceId = await workspaceOf(db, letter);
+  await db.SinkLetter.bulkCreate(recipients.map((recipient) => ({ workspaceId, recipient, subject, text })));
+}
+
+/** Of a letter from our own queue, which is named by its row's id. */
+async function workspaceOf(db: Database, letter: string): Promise<string | null> {
+  const id = /^message-id:\s*<([0-9a-f-]{36})@driftwright>/im.exec(letter)?.[1];
+  const row = id && (await db.MailMessage.findByPk(id, { attributes: ['workspaceId'] }));
+  return row ? (row.workspaceId ?? null) : null;
 }

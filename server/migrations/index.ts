@@ -14,6 +14,7 @@ import { createRequirements } from './2026-12-01-create-requirements';
 import { createMapTemplates } from './2026-12-01-create-map-templates';
 import { reviewVersions } from './2026-12-01-review-versions';
 import { addPreferences } from './2026-12-01-add-preferences';
+import { addLetters } from './2026-12-01-add-letters';
 import { runMigrations, type Migration } from './runner';
 
 export const MIGRATIONS: readonly Migration[] = [
@@ -32,6 +33,7 @@ export const MIGRATIONS: readonly Migration[] = [
   createVerification,
   createApiTokens,
   createDiscards,
+  addLetters,
 ];
 
 /** Brings the database at `url` up to date; answers the names that were applied. */

@@ -12,6 +12,7 @@ import { bindRequirement, bindRequirementRecording } from './requirement';
 import { bindRun } from './run';
 import { bindVehicle } from './vehicle';
 import { bindVerificationCell, bindVerificationRun, bindWaiver } from './verification';
+import { bindVerificationWatch } from './verification-watch';
 import { bindVersionComment } from './version-comment';
 
 export type Database = ReturnType<typeof bindModels> & {
@@ -52,6 +53,7 @@ function bindModels(sequelize: Sequelize) {
     ApiToken: bindApiToken(sequelize),
     VerificationRun: bindVerificationRun(sequelize),
     VerificationCell: bindVerificationCell(sequelize),
+    VerificationWatch: bindVerificationWatch(sequelize),
     Waiver: bindWaiver(sequelize),
     RequirementRecording: bindRequirementRecording(sequelize),
     VersionComment: bindVersionComment(sequelize),

@@ -12,6 +12,8 @@ import { bind, idColumn } from './base';
 
 export class MailMessage extends Model<InferAttributes<MailMessage>, InferCreationAttributes<MailMessage>> {
   declare id: CreationOptional<string>;
+  /** Whose work it tells of; null: of a person’s account. */
+  declare workspaceId: CreationOptional<ForeignKey<string | null>>;
   declare recipient: string;
   declare subject: string;
   declare text: string;
@@ -25,6 +27,8 @@ export class MailMessage extends Model<InferAttributes<MailMessage>, InferCreati
 
 export class SinkLetter extends Model<InferAttributes<SinkLetter>, InferCreationAttributes<SinkLetter>> {
   declare id: CreationOptional<string>;
+  /** Of the message that arrived, where it is one of ours. */
+  declare workspaceId: CreationOptional<ForeignKey<string | null>>;
   declare recipient: string;
   declare subject: string;
   declare text: string;
@@ -51,6 +55,7 @@ export function bindMessages(sequelize: Sequelize) {
   return {
     MailMessage: bind(MailMessage, sequelize, 'mail_messages', {
       id: idColumn,
+      workspaceId: DataTypes.UUID,
       recipient: DataTypes.TEXT,
       subject: DataTypes.TEXT,
       text: DataTypes.TEXT,
@@ -63,6 +68,7 @@ export function bindMessages(sequelize: Sequelize) {
     }),
     SinkLetter: bind(SinkLetter, sequelize, 'sink_messages', {
       id: idColumn,
+      workspaceId: DataTypes.UUID,
       recipient: DataTypes.TEXT,
       subject: DataTypes.TEXT,
       text: DataTypes.TEXT,

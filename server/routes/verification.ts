@@ -3,7 +3,7 @@ import { verificationSchema, waiverCreateSchema } from '@/shared/contracts/verif
 import { presentVerification } from '../presenters/verification';
 import { getVerification, startVerification } from '../services/verification';
 import { addWaiver } from '../services/waivers';
-import { versionParams } from './parts';
+import { baseUrl, versionParams } from './parts';
 import { type Route, workspaceRoute } from './route';
 
 const tag = 'Verification';
@@ -31,8 +31,8 @@ export const verificationRoutes: Route[] = [
     params: versionParams,
     success: { status: 202, description: 'The matrix; look again for its progress', ...one },
     failures: { 409: 'No requirement applies' },
-    handle: async ({ ctx, actor, params: { id, n } }) =>
-      presentVerification(await startVerification(ctx, actor, id, n)),
+    handle: async ({ ctx, actor, params: { id, n }, req }) =>
+      presentVerification(await startVerification(ctx, actor, id, n, baseUrl(ctx.config, req))),
   }),
   workspaceRoute({
     method: 'post',

@@ -29,7 +29,7 @@ import {
   versionDifferences,
   versionHistory,
 } from '../services/versions';
-import { idParams, versionParams } from './parts';
+import { baseUrl, idParams, versionParams } from './parts';
 import { type Route, workspaceRoute } from './route';
 
 const tag = 'Parameter sets';
@@ -111,8 +111,8 @@ const reviews: Route[] = [
     params: versionParams,
     success: { status: 200, description: 'The version, in review', ...version },
     failures: { 409: 'It is no draft, or its set has no vehicle' },
-    handle: async ({ ctx, actor, params: { id, n } }) =>
-      presentVersion(await submitVersion(ctx, actor, id, n)),
+    handle: async ({ ctx, actor, params: { id, n }, req }) =>
+      presentVersion(await submitVersion(ctx, actor, id, n, baseUrl(ctx.config, req))),
   }),
   workspaceRoute({
     method: 'post',
@@ -124,8 +124,8 @@ const reviews: Route[] = [
     body: returnSchema,
     success: { status: 200, description: 'The version, returned', ...version },
     failures: reviewFailures,
-    handle: async ({ ctx, actor, params: { id, n }, body }) =>
-      presentVersion(await returnVersion(ctx, actor, id, n, body)),
+    handle: async ({ ctx, actor, params: { id, n }, body, req }) =>
+      presentVersion(await returnVersion(ctx, actor, id, n, body, baseUrl(ctx.config, req))),
   }),
   workspaceRoute({
     method: 'post',
@@ -137,8 +137,8 @@ const reviews: Route[] = [
     body: releaseSchema,
     success: { status: 200, description: 'The version, released', ...version },
     failures: reviewFailures,
-    handle: async ({ ctx, actor, params: { id, n }, body }) =>
-      presentVersion(await releaseVersion(ctx, actor, id, n, body)),
+    handle: async ({ ctx, actor, params: { id, n }, body, req }) =>
+      presentVersion(await releaseVersion(ctx, actor, id, n, body, baseUrl(ctx.config, req))),
   }),
 ];
 

@@ -38,7 +38,8 @@ export async function invite(
       { transaction },
     );
     const url = `${baseUrl}/invitation?token=${token}`;
-    await ctx.mail.send(invitationLetter(email, actor.name, actor.workspaceName, role, url), transaction);
+    const letter = invitationLetter(email, actor.name, actor.workspaceName, role, url);
+    await ctx.mail.send(letter, transaction, workspaceId);
     await recordBy(ctx, actor, { action: 'invitation.sent', subject: email, detail: { role } }, transaction);
     return invitation;
   });

@@ -9,6 +9,7 @@ import { conflict, ownWork } from '../errors';
 import type { ParameterSet, SetVersion } from '../models/parameter-set';
 import { recordBy } from './audit';
 import { passGate } from './release-gate';
+import { tellReleased, tellReturned, tellReviewAsked } from './version-letters';
 import { getVersion, lockVersion, inWords } from './versions';
 
 /** From now on it is never changed. Throws 409 for what is no draft, or whose set has no vehicle. */
@@ -17,6 +18,7 @@ export async function submitVersion(
   actor: Actor,
   setId: string,
   number: number,
+  baseUrl: string,
 ): Promise<SetVersion> {
   await ctx.db.transaction(async (transaction) => {
     const { set, version } = await lockVersion(ctx, actor, setId, number, transaction);
@@ -28,6 +30,7 @@ export async function submitVersion(
     vehicleOf(set);
     const submitted = { state: 'in-review', submittedById: actor.userId, submittedAt: ctx.clock() } as const;
     await version.update(submitted, { transaction });
+    await tellReviewAsked(ctx, { actor, set, version, baseUrl }, transaction);
     await note(ctx, actor, 'version.submitted', set, version, {}, transaction);
   });
   return getVersion(ctx, actor, setId, number);
@@ -40,10 +43,12 @@ export async function returnVersion(
   setId: string,
   number: number,
   { comment }: ReviewReturn,
+  baseUrl: string,
 ): Promise<SetVersion> {
   await ctx.db.transaction(async (transaction) => {
     const { set, version } = await lockForReview(ctx, actor, setId, number, transaction);
     await version.update({ state: 'returned', ...reviewedBy(ctx, actor, comment) }, { transaction });
+    await tellReturned(ctx, { actor, set, version, baseUrl }, comment, transaction);
     await note(ctx, actor, 'version.returned', set, version, { comment }, transaction);
   });
   return getVersion(ctx, actor, setId, number);
@@ -56,6 +61,7 @@ export async function releaseVersion(
   setId: string,
   number: number,
   body: ReviewRelease,
+  baseUrl: string,
 ): Promise<SetVersion> {
   await ctx.db.transaction(async (transaction) => {
     const { set, version } = await lockForReview(ctx, actor, setId, number, transaction);
@@ -68,6 +74,8 @@ export async function releaseVersion(
     const superseded = await supersede(ctx, actor, vehicleId, transaction);
     const released = { state: 'released', vehicleId, evidence, ...reviewedBy(ctx, actor, comment) } as const;
     await version.update(released, { transaction });
+    const done = { actor, set, version, baseUrl };
+    await tellReleased(ctx, done, { comment, superseded }, transaction);
     await note(
       ctx,
       actor,

@@ -12,6 +12,7 @@ import type { JobPayload } from '../queue/queue';
 import { discardFiles } from './discard';
 import { pruneVerification } from './retention';
 import { judgeCells } from './verification-judging';
+import { tellWhenEnded } from './verification-watch';
 
 const OUTPUT_RATE_HZ = 10;
 /** Rows hear of progress no more often than this, ms. */
@@ -176,6 +177,7 @@ function write(ctx: JobContext, id: string, run: Run, outcome: Outcome): Promise
       await row.update({ ...ended, state: 'done', biasSigma: outcome.result.biasSigma }, { transaction });
     }
     await judgeCells(ctx, row, transaction);
+    await tellWhenEnded(ctx, row.versionId, transaction);
     return true;
   });
 }

@@ -7,6 +7,7 @@ import type { VerificationRun } from '../models/verification';
 import { recordBy } from './audit';
 import { judgeCells } from './verification-judging';
 import { loadMatrix, type Matrix, type MatrixCell } from './verification-matrix';
+import { watchVerification } from './verification-watch';
 import { findSet, getVersion, lockVersion } from './versions';
 
 export interface Verification {
@@ -25,19 +26,26 @@ export async function getVerification(
   return { version, matrix: await loadMatrix(ctx, set, version) };
 }
 
-/** Throws 409 when no requirement applies. Runs that failed are tried again. */
+/** Throws 409 when no requirement applies. Runs that failed are tried again. Where runs are going, `actor` hears of the end. */
 export async function startVerification(
   ctx: Context,
   actor: Actor,
   setId: string,
   number: number,
+  baseUrl: string,
 ): Promise<Verification> {
   await ctx.db.transaction(async (transaction) => {
     const { set, version } = await lockVersion(ctx, actor, setId, number, transaction);
     const { cells } = await loadMatrix(ctx, set, version, transaction);
     if (cells.length === 0) throw conflict(noRequirement(set));
     let queued = 0;
-    for (const group of byRun(cells)) queued += await prepare(ctx, actor, version, group, transaction);
+    let going = false;
+    for (const group of byRun(cells)) {
+      const prepared = await prepare(ctx, actor, version, group, transaction);
+      if (prepared.queued) queued += 1;
+      going ||= prepared.going;
+    }
+    if (going) await watchVerification(ctx, actor, version.id, baseUrl, transaction); // after the locks of the runs
     const detail = { number, cells: cells.length, runs: queued };
     const what = { action: 'version.verification-started', subject: set.name, subjectId: version.id, detail };
     await recordBy(ctx, actor, what, transaction);
@@ -58,14 +66,14 @@ function byRun(cells: MatrixCell[]): MatrixCell[][] {
   return [...groups.values()];
 }
 
-/** Sees to the run of a group of cells and to the cells themselves; answers how many runs were queued: 0 or 1. */
+/** Sees to the run of a group of cells and to the cells themselves; answers whether that run was queued, and whether it is yet to end. */
 async function prepare(
   ctx: Context,
   actor: Actor,
   version: SetVersion,
   cells: MatrixCell[],
   transaction: Transaction,
-): Promise<number> {
+): Promise<{ queued: boolean; going: boolean }> {
   const { run, queued } = await runFor(ctx, actor, version, cells[0]!, transaction);
   for (const { requirement, recording, definition, requirementHash, judged, outOfDate } of cells) {
     const holds = judged?.verdict && outOfDate.length === 0 && judged.verificationRunId === run.id;
@@ -88,7 +96,7 @@ async function prepare(
     );
   }
   await judgeCells(ctx, run, transaction);
-  return queued ? 1 : 0;
+  return { queued, going: run.state === 'waiting' || run.state === 'running' };
 }
 
 /** The run made from just these inputs, locked; made and queued where there is none, and where it failed. */
