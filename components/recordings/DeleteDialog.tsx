@@ -1,11 +1,7 @@
 import { router } from 'expo-router';
-import { useState } from 'react';
 import { View } from 'react-native';
-import { ConfirmDialog } from '@/components/ui/Dialog';
-import { messageOf } from '@/components/ui/ErrorState';
-import { Field } from '@/components/ui/Field';
 import { Figures } from '@/components/ui/Figures';
-import { Notice } from '@/components/ui/Notice';
+import { TypedConfirm } from '@/components/ui/TypedConfirm';
 import { useToast } from '@/components/ui/ToastProvider';
 import { space } from '@/constants/theme';
 import { useDeleteRecording } from '@/hooks/recordings';
@@ -16,7 +12,6 @@ import { formatBytes } from '@/shared/format';
 export function DeleteDialog({ recording, onClose }: { recording: Recording; onClose: () => void }) {
   const remove = useDeleteRecording();
   const toast = useToast();
-  const [typed, setTyped] = useState('');
   const bytes = recording.files.reduce((sum, file) => sum + file.bytes, 0);
   const confirm = async () => {
     try {
@@ -28,14 +23,13 @@ export function DeleteDialog({ recording, onClose }: { recording: Recording; onC
     }
   };
   return (
-    <ConfirmDialog
-      open
-      danger
+    <TypedConfirm
+      name={recording.name}
       title={`Delete ${recording.name}?`}
       message="This cannot be undone. It takes with it:"
       confirmLabel="Delete the recording"
       busy={remove.isPending}
-      blocked={typed.trim() !== recording.name}
+      error={remove.error}
       onConfirm={() => void confirm()}
       onClose={onClose}
     >
@@ -50,18 +44,6 @@ export function DeleteDialog({ recording, onClose }: { recording: Recording; onC
           </View>
         ))}
       </View>
-      <Field
-        label={`Type the name to confirm: ${recording.name}`}
-        value={typed}
-        onChangeText={setTyped}
-        autoCapitalize="none"
-        autoComplete="off"
-      />
-      {remove.isError ? (
-        <Notice tone="vermilion" urgent title="Not deleted">
-          {messageOf(remove.error)}
-        </Notice>
-      ) : null}
-    </ConfirmDialog>
+    </TypedConfirm>
   );
 }

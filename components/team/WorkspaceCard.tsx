@@ -3,12 +3,9 @@ import { useState } from 'react';
 import { StyleSheet, View } from 'react-native';
 import { Button } from '@/components/ui/Button';
 import { Card } from '@/components/ui/Card';
-import { ConfirmDialog } from '@/components/ui/Dialog';
-import { messageOf } from '@/components/ui/ErrorState';
-import { Field } from '@/components/ui/Field';
 import { FileLink } from '@/components/ui/FileLink';
-import { Notice } from '@/components/ui/Notice';
 import { Text } from '@/components/ui/Text';
+import { TypedConfirm } from '@/components/ui/TypedConfirm';
 import { space } from '@/constants/theme';
 import { useSession } from '@/hooks/session';
 import { useDeleteWorkspace, workspaceExportUrl } from '@/hooks/workspace';
@@ -37,41 +34,26 @@ export function WorkspaceCard() {
 }
 
 function DeleteWorkspace({ name, onClose }: { name: string; onClose: () => void }) {
-  const [typed, setTyped] = useState('');
   const remove = useDeleteWorkspace();
-  const confirm = async () => {
+  const confirm = async (typed: string) => {
     try {
-      await remove.mutateAsync(typed.trim());
+      await remove.mutateAsync(typed);
       router.replace('/');
     } catch {
-      // shown below from the mutation's own state
+      // shown by the dialog from the mutation's own state
     }
   };
   return (
-    <ConfirmDialog
-      open
-      danger
+    <TypedConfirm
+      name={name}
       title={`Delete ${name}?`}
       message="Its recordings and their files, runs, sets with what was released, requirements, tokens and members: all of it goes, for everybody. This cannot be undone. Export the data first."
       confirmLabel="Delete the workspace"
       busy={remove.isPending}
-      blocked={typed.trim() !== name}
-      onConfirm={() => void confirm()}
+      error={remove.error}
+      onConfirm={(typed) => void confirm(typed)}
       onClose={onClose}
-    >
-      <Field
-        label={`Type the name to confirm: ${name}`}
-        value={typed}
-        onChangeText={setTyped}
-        autoCapitalize="none"
-        autoComplete="off"
-      />
-      {remove.isError ? (
-        <Notice tone="vermilion" urgent title="Not deleted">
-          {messageOf(remove.error)}
-        </Notice>
-      ) : null}
-    </ConfirmDialog>
+    />
   );
 }
 
