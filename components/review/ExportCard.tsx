@@ -1,3 +1,4 @@
+import type { ReactNode } from 'react';
 import { StyleSheet, View } from 'react-native';
 import { FileLink } from '@/components/ui/FileLink';
 import { Card } from '@/components/ui/Card';
@@ -20,6 +21,7 @@ export function ExportCard({
   name,
   urlOf,
   unreleased,
+  children,
 }: {
   title: string;
   /** For the screen reader: what is exported. */
@@ -27,6 +29,8 @@ export function ExportCard({
   urlOf: (format: ExportFormat) => string;
   /** It is not released: each file says so, and so does the card. */
   unreleased: boolean;
+  /** Between the files and the cautions. */
+  children?: ReactNode;
 }) {
   const { palette } = useTheme();
   return (
@@ -47,6 +51,7 @@ export function ExportCard({
           <FileLink href={urlOf(format)} label={label} of={name} />
         </View>
       ))}
+      {children}
       <Cautions />
     </Card>
   );

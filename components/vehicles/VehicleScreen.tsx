@@ -14,6 +14,7 @@ import { useCan } from '@/hooks/session';
 import { useCreateVehicle, useDeleteVehicle, usePatchVehicle, useVehicle } from '@/hooks/vehicles';
 import type { Vehicle } from '@/shared/contracts/vehicles';
 import { SensorCard } from '@/components/noise/SensorCard';
+import { ReleasedSetCard } from './ReleasedSetCard';
 import { TemplatesCard } from './TemplatesCard';
 import { VehicleForm } from './VehicleForm';
 import { KINDS } from './vehicle-words';
@@ -73,6 +74,7 @@ function Loaded({ vehicle, back }: { vehicle: Vehicle; back: '/vehicles' | undef
           toast({ message: 'Saved. Later runs use it; new axes decode its recordings again.' });
         }}
       />
+      <ReleasedSetCard vehicle={vehicle} />
       <SensorCard vehicle={vehicle} readOnly={!mayWrite} />
       <TemplatesCard vehicle={vehicle} readOnly={!mayWrite} />
       {deleting ? <DeleteVehicle vehicle={vehicle} onClose={() => setDeleting(false)} /> : null}
