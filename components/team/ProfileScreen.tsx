@@ -10,6 +10,7 @@ import { Text } from '@/components/ui/Text';
 import { useTheme, type ThemeChoice } from '@/components/ui/ThemeProvider';
 import { useSession, useSignOut } from '@/hooks/session';
 import { ROLE_SUMMARY } from '@/shared/contracts/roles';
+import { MailChoices } from './MailChoices';
 import { LeaveButton, SessionsCard } from './SessionsCard';
 import { UnitsCard } from './UnitsCard';
 
@@ -54,6 +55,7 @@ export function ProfileScreen() {
         <Choice label="Theme" shape="segments" options={THEMES} value={choice} onChange={setChoice} />
       </Card>
       <UnitsCard />
+      <MailChoices />
       <SessionsCard />
       <View style={{ flexDirection: 'row', flexWrap: 'wrap', gap: space.m }}>
         <Button label="Sign out" icon="leave" busy={signOut.isPending} onPress={() => signOut.mutate()} />
