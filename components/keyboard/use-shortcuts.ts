@@ -13,7 +13,9 @@ export function useShortcuts(shortcuts: Shortcuts): void {
     if (!on || typeof window === 'undefined' || !window.addEventListener) return;
     const keys = new ShortcutKeys();
     const onKey = (event: KeyboardEvent) => {
-      if (!event.defaultPrevented && keys.press(event, latest.current)) event.preventDefault();
+      // An open dialog has the page to itself.
+      if (event.defaultPrevented || document.querySelector('dialog[open]')) return;
+      if (keys.press(event, latest.current)) event.preventDefault();
     };
     window.addEventListener('keydown', onKey);
     return () => window.removeEventListener('keydown', onKey);

@@ -7,6 +7,7 @@ import { inRoot } from '@/scripts/lib/project';
 
 export const VIEWPORTS = {
   phone: { width: 390, height: 844 },
+  tablet: { width: 768, height: 1024 },
   wide: { width: 1440, height: 900 },
 } as const;
 export type ViewportName = keyof typeof VIEWPORTS;
