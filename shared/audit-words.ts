@@ -3,6 +3,7 @@
 const WORDS: Record<string, string> = {
   'invitation.sent': 'Invitation sent',
   'invitation.withdrawn': 'Invitation withdrawn',
+  'mail.tried-again': 'Letters tried again',
   'map-template.created': 'Channel map kept as template',
   'map-template.deleted': 'Channel map template deleted',
   'member.joined': 'Member joined',

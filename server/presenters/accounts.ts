@@ -1,8 +1,15 @@
 /** People and messages as the API shows them. */
-import type { AuditEntry, Invitation, Me, Member, SinkMessage } from '@/shared/contracts/accounts';
+import type {
+  AuditEntry,
+  Invitation,
+  Me,
+  Member,
+  QueuedLetter,
+  SinkMessage,
+} from '@/shared/contracts/accounts';
 import type { Person } from '../context';
 import type { Invitation as InvitationRow, Membership } from '../models/accounts';
-import type { AuditEntry as AuditRow, SinkLetter } from '../models/messages';
+import type { AuditEntry as AuditRow, MailMessage, SinkLetter } from '../models/messages';
 
 export const presentMe = ({ userId, email, name, preferences, memberships }: Person): Me => ({
   user: { id: userId, email, name },
@@ -37,6 +44,17 @@ export const presentSinkMessage = ({ id, recipient, subject, text, createdAt }: 
   subject,
   text,
   sentAt: createdAt.toISOString(),
+});
+
+export const presentQueuedLetter = (row: MailMessage): QueuedLetter => ({
+  id: row.id,
+  to: row.recipient,
+  subject: row.subject,
+  state: row.state === 'failed' ? 'failed' : 'waiting',
+  attempts: row.attempts,
+  lastError: row.lastError ?? null,
+  nextTryAt: row.state === 'failed' ? null : row.dueAt.toISOString(),
+  writtenAt: row.createdAt.toISOString(),
 });
 
 export const presentAuditEntry = ({

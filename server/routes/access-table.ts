@@ -56,6 +56,8 @@ export const ACCESS_TABLE: Readonly<Record<string, AccessRow>> = {
   'get /invitations/:token': ANYBODY,
   'post /invitations/:token/accept': ANYBODY,
   'get /mail': MANAGE,
+  'get /mail/queue': MANAGE,
+  'post /mail/queue/retry': MANAGE,
   'get /audit': MANAGE,
   'get /audit.csv': MANAGE,
   'get /tokens': MANAGE,

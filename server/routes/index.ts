@@ -1,5 +1,6 @@
 /** Every route of the API, version 1. */
 import { accountRoutes } from './accounts';
+import { mailRoutes } from './mail';
 import { mapTemplateRoutes } from './map-templates';
 import { auditRoutes } from './audit';
 import { exportRoutes } from './exports';
@@ -24,6 +25,7 @@ export const ROUTES: readonly Route[] = [
   ...accountRoutes,
   ...sessionRoutes,
   ...teamRoutes,
+  ...mailRoutes,
   ...workspaceRoutes,
   ...tokenRoutes,
   ...auditRoutes,

@@ -1,4 +1,4 @@
-/** Members, invitations and the mail sink. */
+/** Members and invitations. */
 import { z } from 'zod';
 import {
   invitationAcceptSchema,
@@ -8,13 +8,12 @@ import {
   memberPatchSchema,
   memberSchema,
   meSchema,
-  sinkMessageSchema,
 } from '@/shared/contracts/accounts';
-import { idSchema, pageOf, pageQuerySchema } from '@/shared/contracts/common';
+import { idSchema, pageOf } from '@/shared/contracts/common';
 import type { Context } from '../context';
 import { limitAttempts } from '../middleware/rate-limit';
-import { presentInvitation, presentMember, presentSinkMessage } from '../presenters/accounts';
-import { presentPage, presentWhole } from '../presenters/page';
+import { presentInvitation, presentMember } from '../presenters/accounts';
+import { presentWhole } from '../presenters/page';
 import {
   acceptInvitation,
   invite,
@@ -23,7 +22,6 @@ import {
   withdrawInvitation,
 } from '../services/invitations';
 import { changeRole, listMembers, removeMember } from '../services/members';
-import { listSinkMail } from '../services/sink-mail';
 import { signedIn } from './accounts';
 import { baseUrl, idParams } from './parts';
 import { publicRoute, type Route, workspaceRoute } from './route';
@@ -142,22 +140,5 @@ export const teamRoutes: Route[] = [
     before: slowly,
     handle: async ({ ctx, params, body, req }) =>
       signedIn(ctx, req, await acceptInvitation(ctx, params.token, body, req.ip ?? null)),
-  }),
-  workspaceRoute({
-    method: 'get',
-    path: '/mail',
-    tag,
-    summary: 'Letters that the local mail sink holds for people of the workspace',
-    permission: 'mail:read',
-    query: pageQuerySchema,
-    success: {
-      status: 200,
-      description: 'Newest first',
-      schema: pageOf(sinkMessageSchema),
-      name: 'SinkMessagePage',
-    },
-    failures: { 404: 'A mail server is configured: there is no sink' },
-    handle: async ({ ctx, actor, query }) =>
-      presentPage(await listSinkMail(ctx, actor, query), presentSinkMessage),
   }),
 ];

@@ -7,10 +7,21 @@ import type { SinkLetter } from '../models/messages';
 import { escapeLike } from './audit';
 import { type Found, newestFirst } from './paging';
 
-/** Letters to members and invited people of the workspace alone. Throws 404 where mail goes to a real server. */
+/** Throws 404 where mail goes to a real server. */
 export async function listSinkMail(ctx: Context, actor: Actor, query: PageQuery): Promise<Found<SinkLetter>> {
   if (ctx.config.smtpUrl) throw notFound('Mail goes to a mail server: nothing is kept here.');
-  const { workspaceId } = actor;
+  const mine = await lettersOf(ctx, actor);
+  const where: WhereOptions<SinkLetter> = query.search
+    ? { ...mine, subject: { [Op.iLike]: `%${escapeLike(query.search)}%` } }
+    : mine;
+  return newestFirst(ctx.db.SinkLetter, query, where);
+}
+
+/**
+ * Letters that are the workspace's to see: those about its work, and those about the account of somebody who belongs to
+ * it or is invited. Never those about another workspace's work, whoever gets them.
+ */
+export async function lettersOf(ctx: Context, { workspaceId }: Actor) {
   const [members, invitations] = await Promise.all([
     ctx.db.Membership.findAll({ where: { workspaceId }, include: ['user'] }),
     ctx.db.Invitation.findAll({ where: { workspaceId }, attributes: ['email'] }),
@@ -19,8 +30,5 @@ export async function listSinkMail(ctx: Context, actor: Actor, query: PageQuery)
     ...members.map((member) => member.user?.email ?? ''),
     ...invitations.map((i) => i.email),
   ];
-  const where: WhereOptions<SinkLetter> = query.search
-    ? { recipient, subject: { [Op.iLike]: `%${escapeLike(query.search)}%` } }
-    : { recipient };
-  return newestFirst(ctx.db.SinkLetter, query, where);
+  return { [Op.or]: [{ workspaceId }, { workspaceId: null, recipient }] };
 }

@@ -111,6 +111,21 @@ export const sinkMessageSchema = z.object({
 });
 export type SinkMessage = z.infer<typeof sinkMessageSchema>;
 
+/** A letter that has not left yet (GET /mail/queue, admins only). What it says is its recipient’s alone. */
+export const queuedLetterSchema = z.object({
+  id: idSchema,
+  to: z.string(),
+  subject: z.string(),
+  state: z.enum(['waiting', 'failed']).describe('failed: given up after three days of trying.'),
+  attempts: z.number().int(),
+  lastError: z.string().nullable().describe('What the mail server, or the way to it, answered last.'),
+  nextTryAt: isoTimeSchema.nullable().describe('Null: none, it was given up.'),
+  writtenAt: isoTimeSchema,
+});
+export type QueuedLetter = z.infer<typeof queuedLetterSchema>;
+/** POST /mail/queue/retry: the letter to try at once; left out: all that have not left. */
+export const letterRetrySchema = z.strictObject({ id: idSchema.optional() });
+
 /** What GET /audit and /audit.csv are narrowed by. */
 export const auditFilterSchema = z.object({
   action: z
