@@ -14,23 +14,38 @@ import { SkeletonList } from '@/components/ui/Skeleton';
 import { Text } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { fonts, space } from '@/constants/theme';
+import { useInstallation } from '@/hooks/accounts';
 import { useCan } from '@/hooks/session';
 import { useSinkMail } from '@/hooks/team';
 import type { SinkMessage } from '@/shared/contracts/accounts';
+import { MailQueue } from './MailQueue';
 import { splitLinks } from './split-links';
 
-/** What the local mail sink caught, for an admin to pass on. */
+const BY_SERVER =
+  'Letters leave by the mail server. One that could not be sent is tried again, for three days.';
+
+/** What has not left yet and, without a mail server, what the local sink caught, for an admin to pass on. */
 export function MailScreen() {
   const { wide } = useBreakpoint();
   const mayRead = useCan('mail:read');
+  const hasSink = useInstallation().data?.mailSink;
   return (
     <Screen
       title="Mail"
-      subtitle="No mail server is set: letters stay here, for an admin to pass on."
+      subtitle={
+        hasSink === false ? BY_SERVER : 'No mail server is set: letters stay here, for an admin to pass on.'
+      }
       back={wide ? undefined : '/more'}
       width="text"
     >
-      {mayRead ? <Letters /> : <NoPermission message="Only an admin reads the installation’s letters." />}
+      {mayRead ? (
+        <>
+          <MailQueue />
+          {hasSink === false ? null : <Letters />}
+        </>
+      ) : (
+        <NoPermission message="Only an admin reads the installation’s letters." />
+      )}
     </Screen>
   );
 }
@@ -51,7 +66,7 @@ function Letters() {
       <EmptyState
         icon="mail"
         title="No letters"
-        message="Invitations and password resets appear here as soon as one is sent."
+        message="Invitations, password resets and letters about versions appear here as soon as one is sent."
       />
     );
   return mail.data.map((message) => <Letter key={message.id} message={message} />);
