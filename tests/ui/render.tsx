@@ -1,6 +1,6 @@
 import { QueryClient, QueryClientProvider } from '@tanstack/react-query';
 import { render } from '@testing-library/react-native';
-import type { ReactElement, ReactNode } from 'react';
+import { useState, type ReactElement, type ReactNode } from 'react';
 import { ThemeProvider } from '@/components/ui/ThemeProvider';
 import { ToastProvider } from '@/components/ui/ToastProvider';
 import { SessionContext, type Session } from '@/hooks/session';
@@ -29,7 +29,13 @@ export function Around({
   preferences?: Partial<Preferences>;
   children: ReactNode;
 }) {
-  const client = new QueryClient({ defaultOptions: { queries: { retry: false, gcTime: Infinity } } });
+  // Without their timers, which would keep jest alive for minutes after the last test.
+  const [client] = useState(
+    () =>
+      new QueryClient({
+        defaultOptions: { queries: { retry: false, gcTime: Infinity }, mutations: { gcTime: Infinity } },
+      }),
+  );
   return (
     <ThemeProvider>
       <QueryClientProvider client={client}>
