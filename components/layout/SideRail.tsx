@@ -32,7 +32,7 @@ export function SideRail({ path, more }: { path: string; more: readonly Place[] 
 }
 
 const styles = StyleSheet.create({
-  rail: { flexGrow: 0, flexShrink: 0, width: 88, borderRightWidth: hairline },
+  rail: { flexGrow: 0, flexShrink: 0, width: 98, borderRightWidth: hairline },
   inner: { paddingHorizontal: space.s, paddingBottom: space.l, gap: space.s, alignItems: 'center' },
   mark: { paddingTop: space.l, paddingBottom: space.s },
   rule: { height: hairline, alignSelf: 'stretch', marginVertical: space.xs },

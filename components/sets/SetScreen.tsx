@@ -86,6 +86,7 @@ function CompareVersions({
   open: ParameterSetVersion;
 }) {
   const [picking, setPicking] = useState(false);
+  const { wide } = useBreakpoint();
   const other =
     versions.find(({ number }) => number === open.parentNumber) ??
     versions.find(({ number }) => number !== open.number);
@@ -93,7 +94,7 @@ function CompareVersions({
   const entries = [other, open].map(({ number }) => ({ set: set.id, version: number }));
   return (
     <>
-      <Button label="Compare" icon="compare" onPress={() => setPicking(true)} />
+      <Button label="Compare" icon="compare" iconOnly={!wide} onPress={() => setPicking(true)} />
       {picking ? (
         <RecordingPicker
           title={`Versions ${other.number} and ${open.number} on which recording?`}
