@@ -24,6 +24,7 @@ export async function deleteWorkspace(ctx: Context, actor: Actor, typed: string)
     ];
     await ctx.db.Discard.bulkCreate(prefixes.map((prefix) => ({ prefix })), { transaction }); // prettier-ignore
     await ctx.db.Workspace.destroy({ where: { id: workspaceId }, transaction });
+    await ctx.db.SinkLetter.destroy({ where: { workspaceId }, transaction });
   });
   ctx.log.info({ workspace: workspaceName, by: actor.email }, 'a workspace was deleted with its data');
   for (const { userId } of members) ctx.live.leaveWorkspace(userId, workspaceId);
