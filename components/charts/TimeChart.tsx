@@ -1,6 +1,7 @@
 import { useCallback, useEffect, useLayoutEffect, useMemo, useRef, useState } from 'react';
 import { StyleSheet, View } from 'react-native';
-import Svg, { ClipPath, Defs, G, Path, Rect } from 'react-native-svg';
+import Svg, { Path } from 'react-native-svg';
+import type { Palette } from '@/constants/theme';
 import { Text } from '@/components/ui/Text';
 import { useTheme } from '@/components/ui/ThemeProvider';
 import { web } from '@/components/ui/web-props';
@@ -10,13 +11,14 @@ import { ChartLegend } from './ChartLegend';
 import { ChartTable } from './ChartTable';
 import { ChartAnnotations, ChartAxes, type AxesDrawing } from './drawing/ChartAxes';
 import { inkOf } from '@/shared/charts/model/layer-style';
+import { CurveCanvas } from './drawing/curve-canvas';
 import { ShapeSet } from './drawing/shape-set';
 import { timeFigure } from '@/shared/charts/figure/time-figure';
 import { timeTables } from '@/shared/charts/figure/time-tables';
 import { asideOf } from '@/shared/charts/model/aside';
 import { emptyWords } from '@/shared/charts/model/empty';
-import type { ChartContent, Layer } from '@/shared/charts/model/layers';
-import { chartBuffers, drawChart, type LayerPaths, type PlotBox } from '@/shared/charts/model/time-chart';
+import type { ChartContent } from '@/shared/charts/model/layers';
+import { chartBuffers, drawChart, type PlotBox } from '@/shared/charts/model/time-chart';
 import { SaveControl } from './SaveControl';
 
 export interface TimeChartProps {
@@ -49,9 +51,9 @@ export function TimeChart({ content, group, height, timeAxis = true }: TimeChart
     [width, plotHeight, timeAxis],
   );
   const [shapes] = useState(() => new ShapeSet());
-  const clipId = `clip-${content.id}`;
+  const [canvas] = useState(() => new CurveCanvas());
   const { surface, onKeyDown } = useChartSurface(group, box);
-  useDrawing({ content, group, box, width, shapes, setAxes });
+  useDrawing({ content, group, box, width, height: plotHeight, palette, canvas, shapes, setAxes });
 
   return (
     <View style={{ height }} onLayout={(event) => setWidth(event.nativeEvent.layout.width)}>
@@ -82,16 +84,6 @@ export function TimeChart({ content, group, height, timeAxis = true }: TimeChart
       >
         {width > 0 ? (
           <Svg width={width} height={plotHeight} aria-hidden>
-            <Defs>
-              <ClipPath id={clipId}>
-                <Rect
-                  x={box.left}
-                  y={box.top}
-                  width={box.right - box.left}
-                  height={Math.max(1, box.bottom - box.top)}
-                />
-              </ClipPath>
-            </Defs>
             <Path ref={shapes.ref('tint')} d="" fill={palette.vermilion} fillOpacity={0.08} />
             <ChartAxes axes={axes} box={box} timeAxis={timeAxis} />
             <Path
@@ -108,29 +100,13 @@ export function TimeChart({ content, group, height, timeAxis = true }: TimeChart
               strokeOpacity={0.5}
               strokeWidth={1}
             />
-            <G clipPath={`url(#${clipId})`}>
-              {content.layers.map((layer) => {
-                const { fill, fillOpacity, ...stroke } = inkOf(layer, palette);
-                return (
-                  <G key={layer.id}>
-                    <Path
-                      ref={shapes.ref(`${layer.id}.fill`)}
-                      d=""
-                      fill={fill}
-                      fillOpacity={fillOpacity}
-                      stroke="none"
-                    />
-                    <Path
-                      ref={shapes.ref(`${layer.id}.stroke`)}
-                      d=""
-                      fill="none"
-                      {...stroke}
-                      strokeLinejoin="round"
-                    />
-                  </G>
-                );
-              })}
-            </G>
+          </Svg>
+        ) : null}
+        {width > 0 ? (
+          <canvas ref={canvas.ref()} aria-hidden style={{ ...OVER, width, height: plotHeight }} />
+        ) : null}
+        {width > 0 ? (
+          <Svg width={width} height={plotHeight} aria-hidden style={styles.over}>
             <ChartAnnotations annotations={axes.annotations} />
             <Path ref={shapes.ref('brush')} d="" fill={palette.petrol} fillOpacity={0.16} />
             <Path ref={shapes.ref('cursor')} d="" stroke={palette.petrol} strokeWidth={1.5} />
@@ -160,13 +136,18 @@ interface DrawingInput {
   content: ChartContent;
   group: ChartGroup;
   box: PlotBox;
+  /** Of the surface, px. */
   width: number;
+  height: number;
+  palette: Palette;
+  canvas: CurveCanvas;
   shapes: ShapeSet;
   setAxes: (axes: DrawnAxes) => void;
 }
 
 /** Draws with the group's frames: paths straight to the page, axes to React only when they differ. */
-function useDrawing({ content, group, box, width, shapes, setAxes }: DrawingInput): void {
+function useDrawing(input: DrawingInput): void {
+  const { content, group, box, width, height, palette, canvas, shapes, setAxes } = input;
   const keep = useRef(chartBuffers());
   const lastAxes = useRef('');
   useLayoutEffect(() => {
@@ -195,7 +176,11 @@ function useDrawing({ content, group, box, width, shapes, setAxes }: DrawingInpu
     };
     const draw = () => {
       const drawing = drawChart(content, group.viewport.current, box, keep.current);
-      for (const layer of content.layers) drawLayer(shapes, layer, drawing.layers[layer.id]);
+      const curves = content.layers.flatMap((layer) => {
+        const paths = drawing.layers[layer.id];
+        return paths ? [{ paths, ink: inkOf(layer, palette) }] : [];
+      });
+      canvas.paint(curves, box, width, height);
       shapes.set('tint', drawing.ground.tint);
       shapes.set('hatch', drawing.ground.hatch);
       shapes.set('edges', drawing.ground.edges);
@@ -219,7 +204,7 @@ function useDrawing({ content, group, box, width, shapes, setAxes }: DrawingInpu
       remove();
       stop.forEach((unsubscribe) => unsubscribe());
     };
-  }, [content, group, box, width, shapes, setAxes]);
+  }, [content, group, box, width, height, palette, canvas, shapes, setAxes]);
 }
 
 function useChartSurface(group: ChartGroup, box: PlotBox) {
@@ -242,20 +227,14 @@ function useChartSurface(group: ChartGroup, box: PlotBox) {
   return { surface, onKeyDown };
 }
 
-function drawLayer(shapes: ShapeSet, layer: Layer, paths: LayerPaths | undefined): void {
-  const stroke = `${layer.id}.stroke`;
-  shapes.set(`${layer.id}.fill`, paths?.fill ?? '');
-  shapes.set(stroke, paths?.stroke ?? '');
-  if (layer.kind !== 'line') return;
-  const dense = paths?.dense ?? false;
-  shapes.attribute(stroke, 'stroke-dasharray', dense || !layer.dash ? 'none' : layer.dash);
-  shapes.attribute(stroke, 'stroke-opacity', String((layer.opacity ?? 1) * (dense ? 0.75 : 1)));
-}
-
 const NO_AXES: DrawnAxes = { valueTicks: [], timeTicks: [], annotations: [], aside: '', empty: '' };
 const KEYS_HINT = 'Arrow keys move the cursor, plus and minus zoom, 0 shows all.';
 
+/** Over the grid, under the cursor. */
+const OVER = { position: 'absolute', left: 0, top: 0, pointerEvents: 'none' } as const;
+
 const styles = StyleSheet.create({
+  over: OVER,
   head: { paddingRight: 10, zIndex: 1 },
   empty: {
     position: 'absolute',

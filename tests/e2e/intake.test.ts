@@ -7,7 +7,7 @@ import type { Browser, Page } from 'playwright-core';
 import { DEMO_PASSWORD, DEMO_PEOPLE } from '@/fixtures/demo-scenario';
 import { inRoot } from '@/scripts/lib/project';
 import { STANDARD_GRAVITY_M_S2 } from '@/shared/units';
-import { launchBrowser, openWindow, picture, type ViewportName } from '@/tests/support/browser';
+import { launchBrowser, openWindow, picture } from '@/tests/support/browser';
 import { writeLogs, type LogFiles } from '@/tests/support/log-files';
 import { Stack } from '@/tests/support/stack';
 import { button, chooseFile, field, heading, signIn, uploadLogs } from './steps';
@@ -51,7 +51,7 @@ function changed(file: string, name: string, row: (cells: string[]) => string[],
   return target;
 }
 
-describe.each<ViewportName>(['phone', 'wide'])('on the %s screen', (viewport) => {
+describe.each(['phone', 'wide'] as const)('on the %s screen', (viewport) => {
   const engineer = DEMO_PEOPLE.find(({ role }) => role === 'engineer')!;
   let page: Page;
   let faults: string[];
