@@ -1,6 +1,6 @@
 /**
  * A verification of 5 requirements over 4 recordings of 20 minutes at 100 Hz, through the whole stack: by a server with one
- * worker process, and with a process beside it that takes jobs too.
+ * worker process, and with a process beside it that takes jobs too; and the report of that matrix.
  */
 import { mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
@@ -88,5 +88,15 @@ async function measure(person: Person, title: string): Promise<unknown> {
   console.log(
     `  ${title}: ${seconds.toFixed(1)} s for ${runs} runs; ${pass} pass, ${fail} fail, ${failed} failed`,
   );
+  await measureReport(person, of);
   return verification.cells.map(({ verdict, value }) => [verdict, value]);
+}
+
+async function measureReport(person: Person, of: string): Promise<void> {
+  const started = performance.now();
+  const answer = await person.request('GET', `${of}/report.pdf`);
+  if (!answer.ok) throw new Error(`The report was answered ${answer.status}: ${await answer.text()}`);
+  const { byteLength } = await answer.arrayBuffer();
+  const seconds = (performance.now() - started) / 1000;
+  console.log(`    its report: ${seconds.toFixed(2)} s, ${Math.round(byteLength / 1000)} kB of PDF`);
 }
