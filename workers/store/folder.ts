@@ -89,7 +89,9 @@ export class FolderStore implements Store {
     try {
       if (prefix.endsWith('/')) {
         assertStorePrefix(prefix);
-        await rm(join(this.root, prefix), { recursive: true, force: true });
+        // A worker that was just told to stop may put one more file in while the folder is being emptied.
+        const again = { maxRetries: 10, retryDelay: 20 };
+        await rm(join(this.root, prefix), { recursive: true, force: true, ...again });
       } else {
         for (const key of await this.list(prefix)) await rm(this.pathOf(key), { force: true });
       }

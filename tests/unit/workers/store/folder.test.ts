@@ -119,3 +119,17 @@ test('a file where a folder belongs is told in plain words', async () => {
   const store = new FolderStore(path.join(at.root, 'blocked'));
   await expect(store.put('a', Buffer.from('x'))).rejects.toThrow('a file stands where a folder belongs');
 });
+
+test('a folder is removed although somebody still puts files into it', async () => {
+  for (let i = 0; i < 200; i++) await at.store.put(`runs/a/${i}.txt`, Buffer.from('x'));
+  let late = 0;
+  const writing = (async () => {
+    for (; late < 60; late++)
+      await at.store.put(`runs/a/late-${late}.txt`, Buffer.from('x')).catch(() => undefined);
+  })();
+  await at.store.removePrefix('runs/a/');
+  await writing;
+  await at.store.removePrefix('runs/a/');
+  expect(late).toBe(60);
+  expect(await at.store.list('runs/a/')).toEqual([]);
+});
