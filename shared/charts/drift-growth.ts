@@ -1,9 +1,10 @@
 /** Drift of a run's windows as its chart takes it. Pure. */
 import type { ReportRun } from '../contracts/report';
+import { radius95OverDrms } from './model/chi-square';
 import type { DriftGrowthData } from './plots';
 
-/** Quantile of the Rayleigh distribution over its RMS: 95 % of the errors of a round covariance lie below. */
-const P95_OVER_RMS = Math.sqrt(-Math.log(0.05));
+/** 95 % of the errors of a round covariance lie below this times their RMS. */
+const P95_OVER_RMS = radius95OverDrms(1);
 
 /** Each window from its start; the prediction is the RMS over the windows at each time that they share. */
 export function driftGrowthOf(windows: ReportRun['windows']): DriftGrowthData {

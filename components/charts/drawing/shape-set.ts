@@ -38,12 +38,6 @@ export class ShapeSet {
     if (handle) apply(handle, d);
   }
 
-  /** Gives the shape `key` another attribute, by its SVG name. Does nothing off the page. */
-  attribute(key: string, name: string, value: string): void {
-    const element = this.handles.get(key)?.elementRef?.current;
-    if (element && element.getAttribute(name) !== value) element.setAttribute(name, value);
-  }
-
   /** The path last given; for tests. */
   get(key: string): string | undefined {
     return this.paths.get(key);
